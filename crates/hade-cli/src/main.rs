@@ -1,0 +1,2 @@
+//! hade
+fn main() { evcxr_hook() } fn evcxr_hook(){}

@@ -1,0 +1,8 @@
+//! Stress in rock: from where it was measured to where it acts, whether the rock fails there, and
+//! results that explain themselves. Conventions: compression positive; north, east, down; see
+//! [`frames`].
+
+pub mod card;
+pub mod error;
+pub mod sheet;
+pub mod units;

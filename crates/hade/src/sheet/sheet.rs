@@ -1,0 +1,255 @@
+//! The sheet itself: what a notebook writes on.
+
+use std::io::Read;
+use std::path::Path;
+
+use sha2::{Digest, Sha256};
+
+use super::record::{Assumption, Entry, Frontmatter, RECORD_SCHEMA, Record};
+use super::{Basis, DataFile, Given, IntoGiven, Source, trace};
+use crate::card::{Card, Explain};
+use crate::error::{Error, Result};
+
+/// A calculation sheet. Running a cell again replaces what it added: givens by symbol, cards by
+/// kind and title, files by path, words by their text.
+#[derive(Clone, Debug)]
+pub struct Sheet {
+    title: String,
+    front: Frontmatter,
+    givens: Vec<Given>,
+    data: Vec<DataFile>,
+    assumptions: Vec<Assumption>,
+    entries: Vec<Written>,
+    conclusions: Vec<String>,
+}
+
+#[derive(Clone, Debug)]
+enum Written {
+    Card { card: Box<Card>, by_sheet: bool },
+    Note(String),
+}
+
+impl Sheet {
+    /// An empty sheet with its title: site, hole and question in one line.
+    pub fn new(title: impl Into<String>) -> Self {
+        Sheet {
+            title: title.into(),
+            front: Frontmatter::default(),
+            givens: Vec::new(),
+            data: Vec::new(),
+            assumptions: Vec::new(),
+            entries: Vec::new(),
+            conclusions: Vec::new(),
+        }
+    }
+
+    /// States a value with its source, and hands it back for the computation.
+    pub fn given<G: IntoGiven>(&mut self, symbol: &str, meaning: &str, value: G, source: Source) -> G::Value {
+        let (value, item, sd) = value.into_given(symbol, meaning);
+        let given = Given {
+            item,
+            give_or_take: sd.as_ref().map(|(_, text)| text.clone()).unwrap_or_default(),
+            sd: sd.map(|(si, _)| si),
+            source,
+        };
+        replace_or_push(&mut self.givens, given, |g| g.item.symbol == symbol);
+        value
+    }
+
+    /// Takes in a data file, which is hashed here and attached to the memo; hands back its path.
+    pub fn data(&mut self, path: &str, about: &str) -> Result<String> {
+        let (sha256, bytes) = hash_file(path)?;
+        let file = DataFile { path: path.to_owned(), about: about.to_owned(), sha256, bytes };
+        replace_or_push(&mut self.data, file, |f| f.path == path);
+        Ok(path.to_owned())
+    }
+
+    /// States an assumption and on what it rests.
+    pub fn assume(&mut self, words: &str, basis: Basis) {
+        replace_or_push(&mut self.assumptions, Assumption { words: words.to_owned(), basis }, |a| a.words == words);
+    }
+
+    /// Adds a result, after the results it stands on that are not on the sheet yet.
+    pub fn add<E: Explain>(&mut self, result: &E) {
+        for card in result.upstream() {
+            let known =
+                self.cards().any(|c| c.kind == card.kind && c.outcome == card.outcome && c.inputs == card.inputs);
+            if !known {
+                self.put(card, true);
+            }
+        }
+        self.put(result.card(), false);
+    }
+
+    fn put(&mut self, card: Card, by_sheet: bool) {
+        let (kind, title) = (card.kind.clone(), card.title().to_owned());
+        let written = Written::Card { card: Box::new(card), by_sheet };
+        replace_or_push(
+            &mut self.entries,
+            written,
+            |e| matches!(e, Written::Card { card, .. } if card.kind == kind && card.title() == title),
+        );
+    }
+
+    fn cards(&self) -> impl Iterator<Item = &Card> {
+        self.entries.iter().filter_map(|e| match e {
+            Written::Card { card, .. } => Some(card.as_ref()),
+            Written::Note(_) => None,
+        })
+    }
+
+    /// A note at this place of the work.
+    pub fn note(&mut self, words: impl AsRef<str>) {
+        let words = words.as_ref();
+        replace_or_push(
+            &mut self.entries,
+            Written::Note(words.to_owned()),
+            |e| matches!(e, Written::Note(w) if w == words),
+        );
+    }
+
+    /// A conclusion; the memo begins with them.
+    pub fn conclude(&mut self, words: impl AsRef<str>) {
+        let words = words.as_ref();
+        replace_or_push(&mut self.conclusions, words.to_owned(), |c| c == words);
+    }
+
+    /// The site.
+    pub fn site(&mut self, name: impl AsRef<str>) {
+        let name = name.as_ref();
+        name.clone_into(&mut self.front.site);
+    }
+    /// The hole, face or fault.
+    pub fn place(&mut self, name: impl AsRef<str>) {
+        let name = name.as_ref();
+        name.clone_into(&mut self.front.place);
+    }
+    /// What the calculation is for.
+    pub fn purpose(&mut self, words: impl AsRef<str>) {
+        let words = words.as_ref();
+        words.clone_into(&mut self.front.purpose);
+    }
+    /// What it covers.
+    pub fn scope(&mut self, words: impl AsRef<str>) {
+        let words = words.as_ref();
+        words.clone_into(&mut self.front.scope);
+    }
+    /// Something it leaves out.
+    pub fn exclude(&mut self, words: impl AsRef<str>) {
+        let words = words.as_ref();
+        replace_or_push(&mut self.front.exclusions, words.to_owned(), |w| w == words);
+    }
+    /// A range over which the conclusions hold (depths, inclinations, mud, time open).
+    pub fn valid_for(&mut self, words: impl AsRef<str>) {
+        let words = words.as_ref();
+        replace_or_push(&mut self.front.valid_for, words.to_owned(), |w| w == words);
+    }
+    /// Something that makes the conclusions void.
+    pub fn void_if(&mut self, words: impl AsRef<str>) {
+        let words = words.as_ref();
+        replace_or_push(&mut self.front.void_if, words.to_owned(), |w| w == words);
+    }
+    /// Data that was left out, and why.
+    pub fn leave_out(&mut self, what: &str, why: &str) {
+        replace_or_push(&mut self.front.left_out, (what.to_owned(), why.to_owned()), |(w, _)| w == what);
+    }
+    /// An open item.
+    pub fn open_item(&mut self, words: impl AsRef<str>) {
+        let words = words.as_ref();
+        replace_or_push(&mut self.front.open_items, words.to_owned(), |w| w == words);
+    }
+    /// Why something was chosen (the criterion, the wall model, a margin).
+    pub fn because(&mut self, topic: &str, reason: &str) {
+        replace_or_push(&mut self.front.design_basis, (topic.to_owned(), reason.to_owned()), |(t, _)| t == topic);
+    }
+
+    /// The record of the sheet as it stands. A card that the sheet added itself and that nothing
+    /// stands on any more (its cell was run again with other numbers) is left out.
+    pub fn record(&self) -> Record {
+        let mut kept: Vec<&Written> = self.entries.iter().collect();
+        while let Some(orphan) = orphan(&kept, &self.givens) {
+            kept.remove(orphan);
+        }
+        let mut earlier: Vec<&Card> = Vec::new();
+        let mut entries = Vec::new();
+        for written in kept {
+            match written {
+                Written::Note(words) => entries.push(Entry::Note { words: words.clone() }),
+                Written::Card { card, by_sheet } => {
+                    let lineage = trace(card, &self.givens, &self.data, &earlier);
+                    entries.push(Entry::Card { card: card.clone(), lineage, added_by_sheet: *by_sheet });
+                    earlier.push(card);
+                }
+            }
+        }
+        Record {
+            schema: RECORD_SCHEMA,
+            program: concat!("hade ", env!("CARGO_PKG_VERSION")).to_owned(),
+            title: self.title.clone(),
+            front: self.front.clone(),
+            givens: self.givens.clone(),
+            data: self.data.clone(),
+            assumptions: self.assumptions.clone(),
+            entries,
+            conclusions: self.conclusions.clone(),
+        }
+    }
+}
+
+/// The place of a card that the sheet added itself and whose results no other card takes in.
+fn orphan(entries: &[&Written], givens: &[Given]) -> Option<usize> {
+    let cards: Vec<(usize, &Card, bool)> = entries
+        .iter()
+        .enumerate()
+        .filter_map(|(i, e)| match e {
+            Written::Card { card, by_sheet } => Some((i, card.as_ref(), *by_sheet)),
+            Written::Note(_) => None,
+        })
+        .collect();
+    let taken = |card: &Card, place: usize| {
+        cards.iter().filter(|(i, ..)| *i > place).any(|(_, other, _)| {
+            other.explanation.inputs.iter().any(|input| {
+                card.explanation.results.iter().any(|result| result.same_value(input))
+                    && !givens.iter().any(|g| g.item.same_value(input) && g.item.symbol == input.symbol)
+            })
+        })
+    };
+    cards.iter().find(|(i, card, by_sheet)| *by_sheet && !taken(card, *i)).map(|(i, ..)| *i)
+}
+
+fn replace_or_push<T>(list: &mut Vec<T>, new: T, same: impl Fn(&T) -> bool) {
+    match list.iter_mut().find(|old| same(old)) {
+        Some(old) => *old = new,
+        None => list.push(new),
+    }
+}
+
+/// The SHA-256 of a file and its size, read in pieces.
+pub(crate) fn hash_file(path: impl AsRef<Path>) -> Result<(String, u64)> {
+    let path = path.as_ref();
+    let unreadable = |e: std::io::Error| Error::Unreadable {
+        path: path.display().to_string(),
+        line: None,
+        column: None,
+        why: e.to_string(),
+        fix: "give the path relative to the notebook's folder".to_owned(),
+    };
+    let mut file = std::fs::File::open(path).map_err(unreadable)?;
+    let mut hasher = Sha256::new();
+    let mut buffer = [0_u8; 65_536];
+    let mut bytes = 0_u64;
+    loop {
+        let n = file.read(&mut buffer).map_err(unreadable)?;
+        if n == 0 {
+            break;
+        }
+        hasher.update(buffer.get(..n).unwrap_or_default());
+        bytes += n as u64;
+    }
+    Ok((hex(&hasher.finalize()), bytes))
+}
+
+/// Lower-case hexadecimal.
+pub(crate) fn hex(bytes: &[u8]) -> String {
+    bytes.iter().map(|b| format!("{b:02x}")).collect()
+}
