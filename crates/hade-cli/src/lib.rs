@@ -1,1 +1,45 @@
-//! hade-cli
+//! The `hade` command: one file a subcommand, and a thin program around [`main`].
+
+mod bar;
+mod kernel;
+mod run;
+
+use std::process::ExitCode;
+
+use clap::{Parser, Subcommand};
+
+pub use bar::Bar;
+
+/// Stress in rock: notebooks that explain themselves, and the memo made from them.
+#[derive(Debug, Parser)]
+#[command(name = "hade", version, about, propagate_version = true)]
+struct Cli {
+    #[command(subcommand)]
+    command: Command,
+}
+
+#[derive(Debug, Subcommand)]
+enum Command {
+    /// Run a notebook from top to bottom and write its outputs back
+    Run(run::RunArgs),
+    /// Prepare or remove the compiled libraries that notebooks use
+    Kernel(kernel::KernelArgs),
+}
+
+/// Why a command did not do its job: printed after `error: `, and the exit code is 1.
+pub type Failure = Box<dyn std::error::Error>;
+
+/// Reads the command line and does what it says.
+pub fn main() -> ExitCode {
+    let done = match Cli::parse().command {
+        Command::Run(args) => run::run(&args),
+        Command::Kernel(args) => kernel::run(&args),
+    };
+    match done {
+        Ok(()) => ExitCode::SUCCESS,
+        Err(failure) => {
+            eprintln!("error: {failure}");
+            ExitCode::FAILURE
+        }
+    }
+}

@@ -1,2 +1,8 @@
-//! hade
-fn main() { evcxr_hook() } fn evcxr_hook(){}
+//! The `hade` command.
+
+use std::process::ExitCode;
+
+fn main() -> ExitCode {
+    hade_kernel::runtime_hook();
+    hade_cli::main()
+}

@@ -4,5 +4,7 @@
 
 pub mod card;
 pub mod error;
+pub mod frames;
 pub mod sheet;
+pub mod stress;
 pub mod units;

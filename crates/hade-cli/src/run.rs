@@ -1,0 +1,103 @@
+//! `hade run`: a notebook from top to bottom, outputs written back.
+
+use std::path::PathBuf;
+use std::time::{Duration, Instant};
+
+use clap::Args;
+use hade_kernel::{NotebookRun, RunOptions, run_notebook};
+
+use crate::bar::Bar;
+use crate::Failure;
+
+/// Arguments of `hade run`.
+#[derive(Debug, Args)]
+pub struct RunArgs {
+    /// The notebook (.ipynb)
+    notebook: PathBuf,
+    /// Write the executed notebook here instead of over the one that was read
+    #[arg(short, long, value_name = "OUT.ipynb")]
+    output: Option<PathBuf>,
+    /// Stop a cell that runs longer than this many seconds
+    #[arg(long, value_name = "SECONDS", value_parser = seconds)]
+    cell_timeout: Option<Duration>,
+    /// Go on after a cell that fails (the exit code is still 1)
+    #[arg(long)]
+    allow_errors: bool,
+}
+
+/// Runs the notebook and writes it.
+pub(crate) fn run(args: &RunArgs) -> Result<(), Failure> {
+    let started = Instant::now();
+    let mut bar = Bar::new();
+    let options = RunOptions {
+        cell_timeout: args.cell_timeout,
+        allow_errors: args.allow_errors,
+    };
+    let run = run_notebook(&args.notebook, &options, &mut bar);
+    bar.clear();
+    let run = run?;
+    let target = args.output.as_ref().unwrap_or(&args.notebook);
+    run.notebook.save(target)?;
+    if run.failure().is_some() {
+        return Err(failures(&run, &target.display().to_string()).into());
+    }
+    eprintln!(
+        "{}: {} cells in {:.1} s",
+        target.display(),
+        run.cells.len(),
+        started.elapsed().as_secs_f64()
+    );
+    Ok(())
+}
+
+/// The message for a notebook with cells that failed.
+fn failures(run: &NotebookRun, target: &str) -> String {
+    let mut message = String::new();
+    for cell in &run.cells {
+        let Some(error) = &cell.outcome.error else {
+            continue;
+        };
+        let failure = hade_kernel::NotebookFailure {
+            number: cell.number,
+            error: error.clone(),
+        };
+        message.push_str(&format!("{failure}\n"));
+        if error.detail.trim() != error.sentence {
+            for line in error.detail.lines() {
+                message.push_str(&format!("    {line}\n"));
+            }
+        }
+    }
+    let all = run.notebook.code_cells().len();
+    if run.cells.len() < all {
+        message.push_str(&format!(
+            "The {} cells after it were not run. ",
+            all - run.cells.len()
+        ));
+    }
+    message.push_str(&format!(
+        "Correct the cell and run again; what ran is in {target}."
+    ));
+    message
+}
+
+fn seconds(text: &str) -> Result<Duration, String> {
+    text.parse::<f64>()
+        .ok()
+        .and_then(|seconds| Duration::try_from_secs_f64(seconds).ok())
+        .filter(|limit| !limit.is_zero())
+        .ok_or_else(|| "give a number of seconds above 0, such as 60".to_owned())
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn a_time_limit_is_a_positive_number() {
+        assert_eq!(seconds("1.5"), Ok(Duration::from_millis(1500)));
+        for bad in ["0", "-1", "NaN", "inf", "a minute", "1e300"] {
+            assert!(seconds(bad).is_err(), "{bad}");
+        }
+    }
+}

@@ -1,0 +1,186 @@
+//! The cache folder: where it is, its lock, and what counts as whole.
+
+use std::fs::{self, File, OpenOptions, TryLockError};
+use std::path::{Path, PathBuf};
+use std::{env, io};
+
+use crate::error::{Error, Result};
+use crate::progress::{Progress, Step};
+
+/// Overrides the place of the cache folder.
+const CACHE_VAR: &str = "HADE_CACHE";
+
+/// Written last; a folder without it is not whole and is made anew.
+const STAMP: &str = "complete";
+
+/// The folder with everything that is compiled once: `$HADE_CACHE`, or `hade` in the user's cache
+/// folder.
+///
+/// # Errors
+/// [`Error::Start`] if the system names no home folder and `HADE_CACHE` is not set.
+pub fn cache_folder() -> Result<PathBuf> {
+    let set = |name| env::var_os(name).filter(|value| !value.is_empty()).map(PathBuf::from);
+    if let Some(folder) = set(CACHE_VAR) {
+        return std::path::absolute(&folder).map_err(Error::file("find", &folder));
+    }
+    let user = match set("XDG_CACHE_HOME").filter(|path| path.is_absolute()) {
+        Some(folder) => Some(folder),
+        None if cfg!(target_os = "macos") => set("HOME").map(|home| home.join("Library/Caches")),
+        None => set("HOME").map(|home| home.join(".cache")),
+    };
+    user.map(|folder| folder.join("hade")).ok_or_else(|| Error::Start {
+        why: format!("the system names no home folder; set {CACHE_VAR} to a folder for compiled libraries"),
+    })
+}
+
+/// What [`clean`] removed.
+#[derive(Debug, Clone, PartialEq, Eq)]
+pub struct CacheReport {
+    /// The cache folder.
+    pub folder: PathBuf,
+    /// How many bytes it held.
+    pub bytes: u64,
+}
+
+/// Removes everything in the cache folder; the next session makes it anew.
+///
+/// # Errors
+/// [`Error::File`] if something in it cannot be removed.
+pub fn clean() -> Result<CacheReport> {
+    let folder = cache_folder()?;
+    let bytes = size_of(&folder);
+    if folder.is_dir() {
+        let _lock = lock(&folder, &mut crate::progress::Silent)?;
+        for entry in fs::read_dir(&folder).map_err(Error::file("read", &folder))? {
+            let path = entry.map_err(Error::file("read", &folder))?.path();
+            // Only what this program makes: the variable may name a folder with other things.
+            if path.is_dir() && name_is_ours(&path) {
+                fs::remove_dir_all(&path).map_err(Error::file("remove", &path))?;
+            }
+        }
+    }
+    Ok(CacheReport { folder, bytes })
+}
+
+fn name_is_ours(path: &Path) -> bool {
+    path.file_name().is_some_and(|name| {
+        let name = name.to_string_lossy();
+        name.starts_with("libraries-") || name.starts_with("session-")
+    })
+}
+
+fn size_of(path: &Path) -> u64 {
+    let Ok(entries) = fs::read_dir(path) else {
+        return 0;
+    };
+    entries
+        .flatten()
+        .map(|entry| match entry.metadata() {
+            Ok(meta) if meta.is_dir() => size_of(&entry.path()),
+            Ok(meta) => meta.len(),
+            Err(_) => 0,
+        })
+        .sum()
+}
+
+/// Holds the cache until the returned file is dropped; a second process waits.
+pub(crate) fn lock(cache: &Path, progress: &mut dyn Progress) -> Result<File> {
+    fs::create_dir_all(cache).map_err(Error::file("make the folder", cache))?;
+    let path = cache.join("lock");
+    let file = OpenOptions::new()
+        .create(true)
+        .truncate(false)
+        .write(true)
+        .open(&path)
+        .map_err(Error::file("open", &path))?;
+    match file.try_lock() {
+        Ok(()) => return Ok(file),
+        Err(TryLockError::WouldBlock) => progress.step(Step::Waiting),
+        Err(TryLockError::Error(error)) => return Err(Error::file("lock", &path)(error)),
+    }
+    file.lock().map_err(Error::file("lock", &path))?;
+    Ok(file)
+}
+
+/// Whether a folder of the cache was finished.
+pub(crate) fn is_whole(folder: &Path) -> bool {
+    folder.join(STAMP).is_file()
+}
+
+/// Removes what an earlier process left unfinished and makes the folder.
+pub(crate) fn begin(folder: &Path) -> Result<()> {
+    match fs::remove_dir_all(folder) {
+        Err(error) if error.kind() != io::ErrorKind::NotFound => {
+            return Err(Error::file("remove", folder)(error));
+        }
+        _ => {}
+    }
+    fs::create_dir_all(folder).map_err(Error::file("make the folder", folder))
+}
+
+/// Declares a folder finished, after everything in it has reached the disk.
+pub(crate) fn finish(folder: &Path) -> Result<()> {
+    let aside = folder.join("complete.part");
+    let write = || -> io::Result<()> {
+        let file = File::create(&aside)?;
+        file.sync_all()?;
+        fs::rename(&aside, folder.join(STAMP))
+    };
+    write().map_err(Error::file("write", folder.join(STAMP)))
+}
+
+/// Copies a folder with its modification times, by which Cargo knows what is fresh.
+pub(crate) fn copy_folder(from: &Path, to: &Path) -> Result<()> {
+    fs::create_dir_all(to).map_err(Error::file("make the folder", to))?;
+    for entry in fs::read_dir(from).map_err(Error::file("read", from))? {
+        let entry = entry.map_err(Error::file("read", from))?;
+        let source = entry.path();
+        let target = to.join(entry.file_name());
+        let meta = entry.metadata().map_err(Error::file("read", &source))?;
+        if meta.is_dir() {
+            copy_folder(&source, &target)?;
+        } else if meta.is_file() {
+            let copy = || -> io::Result<()> {
+                fs::copy(&source, &target)?;
+                OpenOptions::new()
+                    .write(true)
+                    .open(&target)?
+                    .set_modified(meta.modified()?)
+            };
+            copy().map_err(Error::file("copy", &source))?;
+        }
+    }
+    Ok(())
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn a_folder_is_whole_only_when_finished() -> Result<()> {
+        let dir = tempfile::tempdir().map_err(Error::file("make", "a folder"))?;
+        let folder = dir.path().join("session-x");
+        begin(&folder)?;
+        fs::write(folder.join("half"), "made").map_err(Error::file("write", &folder))?;
+        assert!(!is_whole(&folder));
+        begin(&folder)?;
+        assert!(!folder.join("half").exists());
+        finish(&folder)?;
+        assert!(is_whole(&folder));
+        Ok(())
+    }
+
+    #[test]
+    fn a_copy_keeps_the_times() -> io::Result<()> {
+        let dir = tempfile::tempdir()?;
+        let (from, to) = (dir.path().join("a"), dir.path().join("b"));
+        fs::create_dir_all(from.join("deep"))?;
+        fs::write(from.join("deep/file"), "x")?;
+        let old = std::time::SystemTime::UNIX_EPOCH + std::time::Duration::from_secs(1_000_000);
+        File::options().write(true).open(from.join("deep/file"))?.set_modified(old)?;
+        assert!(copy_folder(&from, &to).is_ok());
+        assert_eq!(fs::metadata(to.join("deep/file"))?.modified()?, old);
+        Ok(())
+    }
+}

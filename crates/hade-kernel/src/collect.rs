@@ -1,0 +1,166 @@
+//! Gathers what a cell puts out while the engine runs it.
+
+use std::mem;
+use std::sync::{Arc, Condvar, Mutex, MutexGuard, PoisonError};
+use std::thread;
+use std::time::{Duration, Instant};
+
+use evcxr::EvalContextOutputs;
+
+use crate::cell::{Output, Stream};
+use crate::record::Record;
+
+/// How a cell ended early.
+#[derive(Debug, Clone, PartialEq, Eq)]
+pub(crate) enum Stop {
+    /// It panicked; standard error just before.
+    Panic(String),
+    /// `?` met an `Err`; standard error just before.
+    Early(String),
+}
+
+/// What one cell put out.
+#[derive(Debug, Default)]
+pub(crate) struct Gathered {
+    pub(crate) outputs: Vec<Output>,
+    pub(crate) stop: Option<Stop>,
+    done: bool,
+}
+
+impl Gathered {
+    fn take(&mut self, record: Record) {
+        match record {
+            Record::Out(text) => self.text(Stream::Stdout, &text),
+            Record::Err(text) => self.text(Stream::Stderr, &text),
+            Record::Show(bundle) => {
+                let unit = bundle.len() == 1
+                    && bundle.get("text/plain").is_some_and(|text| text.trim() == "()");
+                if !unit {
+                    self.outputs.push(Output::Display(bundle));
+                }
+            }
+            Record::Panic => self.stop = Some(Stop::Panic(self.last_words())),
+            Record::Early => self.stop = Some(Stop::Early(self.last_words())),
+            Record::Cut(bytes) => self.text(
+                Stream::Stderr,
+                &format!("[{} kB more were printed and are left out here]\n", bytes.div_ceil(1024)),
+            ),
+            Record::Done => self.done = true,
+        }
+    }
+
+    fn text(&mut self, stream: Stream, more: &str) {
+        match self.outputs.last_mut() {
+            Some(Output::Text { stream: last, text }) if *last == stream => text.push_str(more),
+            _ => self.outputs.push(Output::Text {
+                stream,
+                text: more.to_owned(),
+            }),
+        }
+    }
+
+    /// The standard error text at the end of the outputs; it becomes the message.
+    fn last_words(&mut self) -> String {
+        match self.outputs.pop() {
+            Some(Output::Text {
+                stream: Stream::Stderr,
+                text,
+            }) => text.trim_end().to_owned(),
+            Some(other) => {
+                self.outputs.push(other);
+                String::new()
+            }
+            None => String::new(),
+        }
+    }
+}
+
+/// Reads the engine's channels for as long as the session lives.
+pub(crate) struct Collector {
+    shared: Arc<(Mutex<Gathered>, Condvar)>,
+    nothing_waits: Box<dyn Fn() -> bool + Send>,
+}
+
+impl Collector {
+    pub(crate) fn new(outputs: EvalContextOutputs) -> Collector {
+        let shared = Arc::new((Mutex::new(Gathered::default()), Condvar::new()));
+        let EvalContextOutputs { stdout, stderr } = outputs;
+        let waiting = stdout.clone();
+        let out = Arc::clone(&shared);
+        thread::spawn(move || {
+            for line in stdout {
+                let record =
+                    Record::from_line(&line).unwrap_or_else(|| Record::Out(format!("{line}\n")));
+                lock(&out.0).take(record);
+                out.1.notify_all();
+            }
+        });
+        let err = Arc::clone(&shared);
+        thread::spawn(move || {
+            for line in stderr {
+                lock(&err.0).take(Record::Err(format!("{line}\n")));
+            }
+        });
+        Collector {
+            shared,
+            nothing_waits: Box::new(move || waiting.is_empty()),
+        }
+    }
+
+    /// What has come since the last call, once the cell's last record is in. A cell whose process
+    /// died, or that did not compile, has no last record.
+    pub(crate) fn take(&self, wait_for_done: bool) -> Gathered {
+        let limit = Instant::now() + Duration::from_secs(5);
+        let mut gathered = lock(&self.shared.0);
+        while wait_for_done && !gathered.done && Instant::now() < limit {
+            gathered = self
+                .shared
+                .1
+                .wait_timeout(gathered, Duration::from_millis(100))
+                .unwrap_or_else(PoisonError::into_inner)
+                .0;
+        }
+        if !wait_for_done {
+            drop(gathered);
+            while !(self.nothing_waits)() && Instant::now() < limit {
+                thread::sleep(Duration::from_millis(1));
+            }
+            // The reader may still hold the line it took last.
+            thread::sleep(Duration::from_millis(10));
+            gathered = lock(&self.shared.0);
+        }
+        mem::take(&mut *gathered)
+    }
+}
+
+fn lock(shared: &Mutex<Gathered>) -> MutexGuard<'_, Gathered> {
+    shared.lock().unwrap_or_else(PoisonError::into_inner)
+}
+
+#[cfg(test)]
+mod tests {
+    use std::collections::BTreeMap;
+
+    use super::*;
+
+    #[test]
+    fn the_text_before_a_stop_becomes_its_message() {
+        let mut gathered = Gathered::default();
+        gathered.take(Record::Out("a\n".into()));
+        gathered.take(Record::Err("the depth is ".into()));
+        gathered.take(Record::Err("negative\n".into()));
+        gathered.take(Record::Early);
+        assert_eq!(gathered.stop, Some(Stop::Early("the depth is negative".into())));
+        assert_eq!(gathered.outputs.len(), 1);
+    }
+
+    #[test]
+    fn a_unit_value_is_not_shown() {
+        let mut gathered = Gathered::default();
+        gathered.take(Record::Show(BTreeMap::from([(
+            "text/plain".to_owned(),
+            "()".to_owned(),
+        )])));
+        assert!(gathered.outputs.is_empty());
+    }
+}

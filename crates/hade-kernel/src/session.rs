@@ -1,0 +1,322 @@
+//! A session: one notebook engine with `hade` loaded.
+
+use std::fs::{self, File};
+use std::panic::{AssertUnwindSafe, catch_unwind};
+use std::path::{Path, PathBuf};
+use std::sync::{Mutex, PoisonError};
+use std::time::{Duration, Instant};
+use std::{env, process};
+
+use evcxr::{CommandContext, EvalContext, EvalOutputs};
+
+use crate::cache;
+use crate::cell::{CellError, CellOutcome, Output};
+use crate::collect::{Collector, Gathered};
+use crate::error::{Error, Result};
+use crate::hook::OPEN_FLAG_VAR;
+use crate::outcome;
+use crate::prepare::Prepared;
+use crate::probe::{self, Answer};
+use crate::syntax;
+use crate::timer::Timer;
+use crate::wrapper::PLAN_VAR;
+
+/// What every session has before its first cell.
+const PRELUDE: &str = "use hade::prelude::*;";
+
+/// Sends on what a cell printed without a line end.
+const FLUSH: &str = "\nstd::io::Write::flush(&mut std::io::stdout()).ok();";
+
+/// How a session runs.
+#[derive(Debug, Clone, Default)]
+pub struct SessionOptions {
+    /// The folder in which the cells run: the notebook's own. `None`: the current one.
+    pub folder: Option<PathBuf>,
+    /// A cell that runs longer is stopped, and its variables are lost.
+    pub cell_timeout: Option<Duration>,
+}
+
+/// A notebook session with `hade` loaded.
+///
+/// Variables, items and imports of one cell are there in the next. The session's files lie in a
+/// temporary folder that goes with it.
+pub struct Session {
+    // Dropped in this order: the process that runs the cells ends before its folder goes.
+    engine: Engine,
+    options: SessionOptions,
+    _folder: SessionFolder,
+}
+
+impl Session {
+    /// Starts a session.
+    ///
+    /// # Errors
+    /// If the session's folder cannot be made or the engine does not start.
+    pub fn start(prepared: &Prepared, options: SessionOptions) -> Result<Session> {
+        sweep();
+        let folder = SessionFolder::new()?;
+        let work = folder.path().join("work");
+        cache::copy_folder(&prepared.template(), &work)?;
+        let engine = Engine::start(prepared, &work, folder.path(), options.folder.as_deref())?;
+        Ok(Session {
+            engine,
+            options,
+            _folder: folder,
+        })
+    }
+
+    /// Runs a cell. A cell that fails is an outcome with an error; the session goes on.
+    pub fn execute(&mut self, cell: &str) -> CellOutcome {
+        let started = Instant::now();
+        let timer = self
+            .options
+            .cell_timeout
+            .map(|limit| Timer::start(self.engine.context.process_handle(), limit));
+        let before = self.engine.variables();
+        let result = self.engine.run(cell);
+        let timed_out = timer.is_some_and(Timer::stop);
+        let waits = !matches!(result, Ran::Engine(Err(evcxr::Error::SubprocessTerminated(_))))
+            && self.engine.ran_code(&result);
+        let gathered = self.engine.collector.take(waits && !timed_out);
+        let mut outcome = self.outcome(result, gathered, cell, &before);
+        if timed_out {
+            if outcome.error.as_ref().is_none_or(|error| error.name != "ProcessDied") {
+                // Stopped just as it ended: the engine has not noticed yet.
+                let _ = self.engine.context.execute(":restart");
+            }
+            outcome.error = Some(outcome::timeout(self.options.cell_timeout.unwrap_or_default(), &before));
+        }
+        outcome.elapsed = started.elapsed();
+        outcome
+    }
+
+    fn outcome(&self, ran: Ran, gathered: Gathered, cell: &str, before: &[String]) -> CellOutcome {
+        let Gathered { mut outputs, stop, .. } = gathered;
+        let error = match (ran, stop) {
+            (_, Some(stop)) => Some(outcome::stopped(stop, &self.engine.work, cell)),
+            (Ran::Refused(error), None) => Some(error),
+            (Ran::Engine(Ok(shown)), None) => {
+                if !shown.is_empty() {
+                    outputs.push(Output::Display(shown.content_by_mime_type.into_iter().collect()));
+                }
+                None
+            }
+            (Ran::Engine(Err(error)), None) => {
+                Some(outcome::failed(&error, cell, before, &mut outputs))
+            }
+        };
+        CellOutcome {
+            outputs,
+            error,
+            elapsed: Duration::ZERO,
+        }
+    }
+
+    /// The variables the cells so far left behind.
+    pub fn variables(&self) -> Vec<String> {
+        self.engine.variables()
+    }
+}
+
+/// What became of a cell.
+enum Ran {
+    /// The engine's answer.
+    Engine(std::result::Result<EvalOutputs, evcxr::Error>),
+    /// It could not be run, for a reason of ours.
+    Refused(CellError),
+}
+
+/// The embedded engine and what reads its output.
+struct Engine {
+    context: CommandContext,
+    collector: Collector,
+    /// The folder the engine compiles in.
+    work: PathBuf,
+}
+
+impl Engine {
+    /// Starts the engine in `work`, which may hold a copy of the template, with `hade` loaded.
+    fn start(prepared: &Prepared, work: &Path, config: &Path, cwd: Option<&Path>) -> Result<Engine> {
+        let failed = |why: String| Error::Start { why };
+        fs::create_dir_all(work).map_err(Error::file("make the folder", work))?;
+        let settings = config.join("evcxr.toml");
+        let text = format!(
+            "[evcxr]\ntmpdir = {}\noffline_mode = true\nopt_level = \"0\"\n",
+            toml_string(work)
+        );
+        fs::write(&settings, text).map_err(Error::file("write", &settings))?;
+        let flag = config.join("open");
+        let program = env::current_exe().map_err(|error| failed(error.to_string()))?;
+        let mut command = process::Command::new(&program);
+        command.env(OPEN_FLAG_VAR, &flag);
+        if let Some(cwd) = cwd {
+            let cwd = fs::canonicalize(cwd).map_err(Error::file("find the folder", cwd))?;
+            command.current_dir(cwd);
+        }
+        let (context, outputs) = in_controlled_environment(config, prepared, || {
+            EvalContext::with_subprocess_command(command)
+        })?
+        .map_err(|error| failed(error.to_string()))?;
+        open_flag(&flag)?;
+        let mut engine = Engine {
+            context: CommandContext::with_eval_context(context),
+            collector: Collector::new(outputs),
+            work: work.to_path_buf(),
+        };
+        let load = format!(
+            ":build_env RUSTC_WRAPPER={}\n:build_env {PLAN_VAR}={}\n:build_env CARGO_TERM_QUIET=true\n\
+             :dep hade = {{ path = {} }}\n{PRELUDE}",
+            program.display(),
+            prepared.plan().display(),
+            toml_string(&prepared.library()),
+        );
+        let loaded = engine.context.execute(&load);
+        let gathered = engine.collector.take(false);
+        match loaded {
+            Ok(_) => Ok(engine),
+            Err(error) => {
+                let error = outcome::failed(&error, &load, &[], &mut Vec::new());
+                let printed = CellOutcome {
+                    outputs: gathered.outputs,
+                    ..CellOutcome::default()
+                }
+                .text(crate::cell::Stream::Stderr);
+                Err(failed(format!("{}\n{printed}", error.detail).trim().to_owned()))
+            }
+        }
+    }
+
+    fn variables(&self) -> Vec<String> {
+        let mut names: Vec<String> = self
+            .context
+            .variables_and_types()
+            .map(|(name, _)| name.to_owned())
+            .collect();
+        names.sort();
+        names
+    }
+
+    /// Whether the process that runs the cells ran anything, so that its last record will come.
+    fn ran_code(&self, ran: &Ran) -> bool {
+        matches!(ran, Ran::Engine(Ok(shown)) if shown.phases.iter().any(|phase| phase.name == "Execution"))
+    }
+
+    fn run(&mut self, cell: &str) -> Ran {
+        let outline = syntax::outline(cell);
+        let mut code = cell.to_owned();
+        if cell.contains("print!(") && !outline.ends_in_expression && outline.problem.is_none() {
+            code.push_str(FLUSH);
+        }
+        match self.guarded(&code) {
+            Ran::Engine(Err(evcxr::Error::Message(message))) if probe::is_needed(&message) => {
+                match probe::ask(&mut self.context, &self.work, &code) {
+                    Answer::Rewritten(code) => self.guarded(&code),
+                    Answer::Unstorable(variables) => Ran::Refused(outcome::unstorable(&variables)),
+                    Answer::Nothing => Ran::Engine(Err(evcxr::Error::Message(message))),
+                }
+            }
+            other => other,
+        }
+    }
+
+    /// Runs code; a panic of the engine itself becomes an error of the cell.
+    fn guarded(&mut self, code: &str) -> Ran {
+        match catch_unwind(AssertUnwindSafe(|| self.context.execute(code))) {
+            Ok(result) => Ran::Engine(result),
+            Err(_) => Ran::Refused(outcome::engine_failed()),
+        }
+    }
+}
+
+/// Compiles `hade` in the template folder, by a session that is not kept.
+pub(crate) fn make_template(prepared: &Prepared) -> Result<()> {
+    let template = prepared.template();
+    let config = SessionFolder::new()?;
+    let mut engine = Engine::start(prepared, &template, config.path(), None).map_err(|error| match error {
+        Error::Start { why } => Error::Build { why },
+        other => other,
+    })?;
+    // A check compiles the library's interface once; the first failed cell would wait for it.
+    let _ = engine.context.check("let hade_ready = 1;");
+    drop(engine);
+    Ok(())
+}
+
+/// One session's folder, held by a lock so that a later session can tell it from a left-over.
+struct SessionFolder {
+    folder: tempfile::TempDir,
+    _lock: File,
+}
+
+const FOLDER_PREFIX: &str = "hade-session-";
+const FOLDER_LOCK: &str = "lock";
+
+impl SessionFolder {
+    fn new() -> Result<SessionFolder> {
+        let place = env::temp_dir();
+        let folder = tempfile::Builder::new()
+            .prefix(FOLDER_PREFIX)
+            .tempdir()
+            .map_err(Error::file("make a folder in", place))?;
+        let path = folder.path().join(FOLDER_LOCK);
+        let lock = File::create(&path).map_err(Error::file("write", &path))?;
+        lock.lock().map_err(Error::file("lock", &path))?;
+        Ok(SessionFolder { folder, _lock: lock })
+    }
+
+    fn path(&self) -> &Path {
+        self.folder.path()
+    }
+}
+
+/// Removes the folders of sessions that were killed.
+fn sweep() {
+    for entry in fs::read_dir(env::temp_dir()).into_iter().flatten().flatten() {
+        if !entry.file_name().to_string_lossy().starts_with(FOLDER_PREFIX) {
+            continue;
+        }
+        let path = entry.path();
+        if let Ok(lock) = File::open(path.join(FOLDER_LOCK))
+            && lock.try_lock().is_ok()
+        {
+            let _ = fs::remove_dir_all(path);
+        }
+    }
+}
+
+#[cfg(unix)]
+fn open_flag(flag: &Path) -> Result<()> {
+    crate::filter::open(flag).map_err(Error::file("write", flag))
+}
+
+#[cfg(not(unix))]
+fn open_flag(_: &Path) -> Result<()> {
+    Err(Error::Platform)
+}
+
+/// A path as a TOML string.
+fn toml_string(path: &Path) -> String {
+    serde_json::to_string(&path.to_string_lossy()).unwrap_or_default()
+}
+
+/// The engine reads its settings from a variable of this process and, before that, from a file
+/// in the current folder, which must not be the user's.
+fn in_controlled_environment<T>(config: &Path, prepared: &Prepared, start: impl FnOnce() -> T) -> Result<T> {
+    static ONE_AT_A_TIME: Mutex<()> = Mutex::new(());
+    let _guard = ONE_AT_A_TIME.lock().unwrap_or_else(PoisonError::into_inner);
+    // SAFETY: starts are serialised, and no other code of this program reads or writes the
+    // environment while a session starts.
+    unsafe {
+        env::set_var("EVCXR_CONFIG_DIR", config);
+        env::set_var("RUST_SRC_PATH", prepared.ministd());
+    }
+    let here = env::current_dir().ok().filter(|here| here.join("evcxr.toml").exists());
+    if here.is_some() {
+        env::set_current_dir(config).map_err(Error::file("enter the folder", config))?;
+    }
+    let started = start();
+    if let Some(here) = here {
+        env::set_current_dir(&here).map_err(Error::file("enter the folder", &here))?;
+    }
+    Ok(started)
+}

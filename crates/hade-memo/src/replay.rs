@@ -1,0 +1,156 @@
+//! Every calculation item is computed again from its inputs, and its checks are judged again: the
+//! memo believes no verdict that a record brings along.
+
+use hade::card::{Card, Check, Data, Method};
+
+use crate::view::number;
+
+/// How far the printed words may differ in a number that stands in a figure or a matrix.
+const WORDS_TOLERANCE: f64 = 1e-6;
+
+/// A card computed again.
+#[derive(Clone, Debug)]
+pub struct Again {
+    /// The card that the library makes of the same inputs.
+    pub card: Card,
+    /// Where its outcome differs by more than the kind's tolerance.
+    pub difference: Option<String>,
+}
+
+/// What computes a card again; an error when its kind is unknown or its inputs are refused.
+pub type Replayer = fn(&Card) -> hade::error::Result<Again>;
+
+/// The library's own.
+pub(crate) fn by_library(card: &Card) -> hade::error::Result<Again> {
+    Err(hade::error::Error::not_physical(format!("\"{}\"", card.kind), "this kind cannot be computed again"))
+}
+
+/// One line of the table of checks.
+#[derive(Clone, Debug, PartialEq, Eq)]
+pub(crate) struct CheckLine {
+    /// What is compared.
+    pub what: String,
+    /// The difference, with unit.
+    pub difference: String,
+    /// The difference that is allowed, with unit.
+    pub allowed: String,
+    /// The verdict.
+    pub passed: bool,
+}
+
+/// A calculation item, judged.
+#[derive(Clone, Debug)]
+pub(crate) struct Judged {
+    /// Its checks, and the two lines of the replay.
+    pub checks: Vec<CheckLine>,
+    /// The method as the library states it; `None` when the item could not be computed again, so
+    /// that its formulas are only words.
+    pub method: Option<Method>,
+}
+
+/// Computes a card again and judges it.
+pub(crate) fn judge(card: &Card, replayer: Replayer) -> Judged {
+    let again = replayer(card);
+    let mut checks: Vec<CheckLine> = card
+        .checks
+        .iter()
+        .enumerate()
+        .map(|(i, check)| line(check, again.as_ref().ok().map(|a| a.card.checks.get(i))))
+        .collect();
+    if checks.is_empty() {
+        checks.push(words("the item is checked by another route", "no check was made", false));
+    }
+    match again {
+        Err(why) => {
+            checks.push(words("computed again from its inputs", &format!("not possible: {why}"), false));
+            Judged { checks, method: None }
+        }
+        Ok(again) => {
+            let outcome = again.difference.as_deref().unwrap_or("agrees");
+            checks.push(words("computed again from its inputs", outcome, again.difference.is_none()));
+            let printed = card.explanation.write().difference(&again.card.explanation.write(), WORDS_TOLERANCE);
+            let same_words = printed.is_none();
+            checks.push(words(
+                "printed words and numbers are those of the computation",
+                printed.as_deref().unwrap_or("agree"),
+                same_words,
+            ));
+            Judged { checks, method: Some(again.card.explanation.method) }
+        }
+    }
+}
+
+fn words(what: &str, outcome: &str, passed: bool) -> CheckLine {
+    CheckLine { what: what.to_owned(), difference: outcome.to_owned(), allowed: String::new(), passed }
+}
+
+/// A check passes when its own numbers say so, and the same check of the recomputed card passes.
+fn line(check: &Check, again: Option<Option<&Check>>) -> CheckLine {
+    let within = check.difference.is_some_and(|d| d.is_finite() && d <= check.tolerance);
+    let again = again.is_none_or(|same| same.is_some_and(|c| c.passed && c.what == check.what));
+    let difference = match check.difference {
+        Some(d) => number::small_with_unit(d, &check.unit),
+        None => "not a number".to_owned(),
+    };
+    CheckLine {
+        what: check.what.clone(),
+        difference,
+        allowed: number::small_with_unit(check.tolerance, &check.unit),
+        passed: within && check.passed && again,
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use hade::card::Explanation;
+    use hade::card::Json;
+
+    fn card() -> Card {
+        Card {
+            kind: "k".to_owned(),
+            version: 1,
+            inputs: Json::parse("{}").unwrap(),
+            outcome: Json::parse("[1.0]").unwrap(),
+            checks: vec![Check::compare("x by another route", &[1.0], &[1.0], 1e-9, "MPa")],
+            explanation: Explanation { title: "T".to_owned(), ..Explanation::default() },
+        }
+    }
+
+    fn failed(judged: &Judged) -> usize {
+        judged.checks.iter().filter(|c| !c.passed).count()
+    }
+
+    #[test]
+    fn a_card_that_agrees_passes() {
+        let judged = judge(&card(), |c| Ok(Again { card: c.clone(), difference: None }));
+        assert_eq!(failed(&judged), 0);
+        assert!(judged.method.is_some());
+    }
+
+    #[test]
+    fn what_does_not_agree_fails() {
+        let other = |c: &Card| Ok(Again { card: c.clone(), difference: Some("/0: 1 is not 2".to_owned()) });
+        assert_eq!(failed(&judge(&card(), other)), 1);
+        let unknown = judge(&card(), by_library);
+        assert!(failed(&unknown) == 1 && unknown.method.is_none());
+        let reworded = |c: &Card| {
+            let mut card = c.clone();
+            card.explanation.headline = "another".to_owned();
+            Ok(Again { card, difference: None })
+        };
+        assert_eq!(failed(&judge(&card(), reworded)), 1);
+    }
+
+    #[test]
+    fn a_verdict_is_not_believed() {
+        let same: Replayer = |c| Ok(Again { card: c.clone(), difference: None });
+        let mut liar = card();
+        liar.checks[0].difference = Some(1.0);
+        assert_eq!(failed(&judge(&liar, same)), 1, "the difference is larger than allowed");
+        liar.checks[0].difference = None;
+        assert_eq!(failed(&judge(&liar, same)), 1, "no difference is no pass");
+        liar.checks.clear();
+        assert_eq!(failed(&judge(&liar, same)), 1, "a card without a check has not passed");
+    }
+}

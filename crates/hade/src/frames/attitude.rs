@@ -1,0 +1,106 @@
+//! The attitude of a borehole at one depth.
+
+use serde::{Deserialize, Serialize};
+
+use super::azimuth::{TRUE_AZIMUTH, bearing};
+use super::vector::{M3, V3, cross};
+use super::{Azimuth, Chain, Name};
+use crate::card::Item;
+use crate::error::Result;
+use crate::units::{Angle, Quantity, require_between};
+
+/// How a borehole lies at one depth. In a vertical hole the azimuth stays the reference of tool
+/// faces.
+#[derive(Clone, Copy, Debug, PartialEq, Serialize, Deserialize)]
+pub struct Attitude {
+    /// From vertical-down, 0–180°; above 90° the hole rises.
+    pub inclination: Angle,
+    /// The azimuth the hole goes towards.
+    pub azimuth: Azimuth,
+}
+
+/// An attitude with a name ("KF-3 at 2950 m"), so that messages and cards can say which hole.
+#[derive(Clone, Copy, Debug, PartialEq, Serialize, Deserialize)]
+pub struct NamedAttitude {
+    /// The attitude.
+    pub attitude: Attitude,
+    /// The name.
+    pub name: Name,
+}
+
+impl Attitude {
+    /// With a name.
+    pub fn named(self, name: &str) -> NamedAttitude {
+        NamedAttitude { attitude: self, name: Name::new(name) }
+    }
+
+    /// The chain of turns from the geographic frame to this hole's.
+    ///
+    /// # Errors
+    /// When the inclination is outside 0–180° or the azimuth has no true north.
+    pub fn chain(self) -> Result<Chain> {
+        Chain::to_borehole(self, None)
+    }
+
+    /// Inclination and true azimuth in radians, checked.
+    pub(crate) fn angles(self) -> Result<(f64, f64)> {
+        require_between("inclination", self.inclination, Angle::deg(0.0), Angle::deg(180.0))?;
+        Ok((self.inclination.si(), self.azimuth.true_north()?.si()))
+    }
+
+    /// Rows: top of hole, right, along the hole.
+    pub(crate) fn matrix(self) -> Result<M3> {
+        let (i, a) = self.angles()?;
+        Ok(borehole_axes(i, a))
+    }
+
+    /// Whether the top of the hole is undefined, so that tool faces count from the azimuth.
+    pub fn is_vertical(self) -> bool {
+        self.inclination.si().sin().abs() < NEAR_VERTICAL.to_radians().sin()
+    }
+
+    /// The compass bearing of a tool face: of its direction's horizontal part.
+    pub(crate) fn bearing_of(self, toolface: Angle) -> Result<Angle> {
+        let q = self.matrix()?;
+        let (c, s) = (toolface.si().cos(), toolface.si().sin());
+        let v: V3 = [q[0][0] * c + q[1][0] * s, q[0][1] * c + q[1][1] * s, 0.0];
+        Ok(Angle::from_si(super::vector::wrap(v[1].atan2(v[0]))))
+    }
+
+    /// Inclination and azimuth as inputs or results.
+    pub(crate) fn items(self) -> Vec<Item> {
+        let azimuth = match self.azimuth.true_north() {
+            Ok(a) => Item::new("a", "azimuth of the hole", TRUE_AZIMUTH, vec![a.si()], bearing(a)),
+            Err(_) => self.azimuth.item("a", "azimuth of the hole"),
+        };
+        vec![Item::typed("i", "inclination of the hole from vertical", self.inclination), azimuth]
+    }
+
+    /// "inclination 42.0°, azimuth 120.0°".
+    pub fn words(self) -> String {
+        let azimuth = self.azimuth.true_north().unwrap_or(self.azimuth.measured());
+        format!("inclination {:.1}, azimuth {}°", self.inclination, super::azimuth::three_figures(azimuth))
+    }
+}
+
+impl NamedAttitude {
+    /// The chain of turns from the geographic frame to this hole's, under its name.
+    ///
+    /// # Errors
+    /// As [`Attitude::chain`].
+    pub fn chain(self) -> Result<Chain> {
+        Chain::to_borehole(self.attitude, Some(self.name))
+    }
+}
+
+/// Below this inclination (degrees, from vertical up or down) the top of the hole is not a useful
+/// reference, and tool faces are named from the azimuth.
+const NEAR_VERTICAL: f64 = 0.1;
+
+/// Rows: top of hole h, right r = t × h, along the hole t.
+pub(crate) fn borehole_axes(i: f64, a: f64) -> M3 {
+    let ((si, ci), (sa, ca)) = (i.sin_cos(), a.sin_cos());
+    let h = [ci * ca, ci * sa, -si];
+    let t = [si * ca, si * sa, ci];
+    [h, cross(t, h), t]
+}

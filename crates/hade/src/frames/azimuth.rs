@@ -1,0 +1,296 @@
+//! A compass direction with the north it was measured from.
+
+use serde::{Deserialize, Serialize};
+
+use super::vector::wrap;
+use crate::card::{Card, Check, Explain, Explanation, Formula, Item, Method, Step};
+use crate::error::{Error, Result};
+use crate::sheet::IntoGiven;
+use crate::units::{Angle, Quantity, Uncertain, as_typed, require_between, with_typed_unit};
+
+/// The north an azimuth was measured from.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize)]
+#[serde(rename_all = "snake_case")]
+pub enum North {
+    /// The meridian through the site.
+    True,
+    /// The north of a map grid.
+    Grid,
+    /// The magnetic needle.
+    Magnetic,
+}
+
+impl North {
+    /// "true north", "grid north", "magnetic north".
+    pub fn words(self) -> &'static str {
+        match self {
+            North::True => "true north",
+            North::Grid => "grid north",
+            North::Magnetic => "magnetic north",
+        }
+    }
+}
+
+/// An azimuth, clockwise from a stated north seen from above. It remembers what was measured and
+/// what was added, so that the correction is a step of the record.
+#[derive(Clone, Copy, Debug, PartialEq, Serialize, Deserialize)]
+pub struct Azimuth {
+    measured: Angle,
+    north: North,
+    correction: Option<Angle>,
+    turned: Angle,
+}
+
+impl Azimuth {
+    fn measured_from(north: North, measured: Angle) -> Self {
+        Azimuth { measured, north, correction: None, turned: Angle::default() }
+    }
+    /// An azimuth from true north.
+    pub fn from_true_north(angle: Angle) -> Self {
+        Azimuth::measured_from(North::True, angle)
+    }
+    /// An azimuth from the north of a map grid; it needs the grid's convergence before it is used.
+    pub fn from_grid_north(angle: Angle) -> Self {
+        Azimuth::measured_from(North::Grid, angle)
+    }
+    /// An azimuth from magnetic north; it needs the declination before it is used.
+    pub fn from_magnetic_north(angle: Angle) -> Self {
+        Azimuth::measured_from(North::Magnetic, angle)
+    }
+
+    /// With the magnetic declination (east positive): true = magnetic + declination.
+    ///
+    /// # Errors
+    /// When the azimuth is not from magnetic north, or the declination is not within ±180°.
+    pub fn with_declination(self, declination: Angle) -> Result<Self> {
+        self.corrected(North::Magnetic, "the magnetic declination", declination)
+    }
+
+    /// With the grid convergence (angle from true north to grid north, east positive): true = grid
+    /// + convergence.
+    ///
+    /// # Errors
+    /// When the azimuth is not from grid north, or the convergence is not within ±180°.
+    pub fn with_convergence(self, convergence: Angle) -> Result<Self> {
+        self.corrected(North::Grid, "the grid convergence", convergence)
+    }
+
+    fn corrected(self, from: North, what: &str, correction: Angle) -> Result<Self> {
+        if self.north != from {
+            return Err(Error::not_physical(
+                format!("an azimuth from {}", self.north.words()),
+                format!("{what} turns azimuths from {} into true ones; leave it out here.", from.words()),
+            ));
+        }
+        require_between(what, correction, Angle::deg(-180.0), Angle::deg(180.0))?;
+        Ok(Azimuth { correction: Some(correction), ..self })
+    }
+
+    /// The direction at right angles to it, as a line (a breakout's and S_Hmax's azimuths in a
+    /// vertical hole).
+    pub fn perpendicular(self) -> Self {
+        self.turned_by(Angle::deg(90.0))
+    }
+
+    /// Turned clockwise.
+    pub fn turned_by(self, angle: Angle) -> Self {
+        Azimuth { turned: self.turned + angle, ..self }
+    }
+
+    /// One standard deviation.
+    pub fn give_or_take(self, one_sd: Angle) -> Uncertain<Azimuth, Angle> {
+        Uncertain { value: self, give_or_take: one_sd }
+    }
+
+    /// The north it was measured from.
+    pub fn north(self) -> North {
+        self.north
+    }
+
+    /// The angle as it was measured, from its own north.
+    pub fn measured(self) -> Angle {
+        self.measured
+    }
+
+    /// The correction to true north, if one was given.
+    pub fn correction(self) -> Option<Angle> {
+        self.correction
+    }
+
+    /// Whether it was corrected or turned since it was measured.
+    pub(crate) fn has_history(self) -> bool {
+        self.correction.is_some() || self.turned.si() != 0.0
+    }
+
+    /// The angle from true north, 0 ≤ a < 360°.
+    ///
+    /// # Errors
+    /// When it was measured from grid or magnetic north and no correction was given, and for NaN.
+    pub fn true_north(self) -> Result<Angle> {
+        self.measured.finite("azimuth")?;
+        let added = match (self.north, self.correction) {
+            (North::True, _) => 0.0,
+            (_, Some(correction)) => correction.si(),
+            (North::Grid, None) => {
+                return Err(Error::undeclared(
+                    format!("The azimuth {} is from grid north", with_typed_unit(self.measured)),
+                    "give the grid convergence with .with_convergence(angle)?, east positive.",
+                ));
+            }
+            (North::Magnetic, None) => {
+                return Err(Error::undeclared(
+                    format!("The azimuth {} is from magnetic north", with_typed_unit(self.measured)),
+                    "give the declination of the survey with .with_declination(angle)?, east positive.",
+                ));
+            }
+        };
+        let whole = self.measured.si() + added + self.turned.si();
+        // What is already in range keeps its bits, so that the record can follow it.
+        Ok(Angle::from_si(if (0.0..std::f64::consts::TAU).contains(&whole) { whole } else { wrap(whole) }))
+    }
+
+    /// The azimuth as an input or a result, by its true bearing when that is known.
+    pub(crate) fn item(self, symbol: &str, name: &str) -> Item {
+        match self.true_north() {
+            Ok(angle) => Item::new(symbol, name, TRUE_AZIMUTH, vec![angle.si()], bearing(angle)),
+            Err(_) => self.measured_item(symbol, name),
+        }
+    }
+
+    fn measured_item(self, symbol: &str, name: &str) -> Item {
+        let shown = format!("{:0>3}° from {}", as_typed(self.measured.in_deg()), self.north.words());
+        let kind = format!("azimuth from {}", self.north.words());
+        Item::new(symbol, name, kind, vec![self.measured.si()], shown)
+    }
+
+    /// The card of its correction, when there is one to show.
+    pub(crate) fn upstream(self) -> Vec<Card> {
+        if self.has_history() && self.true_north().is_ok() { vec![self.card()] } else { Vec::new() }
+    }
+}
+
+/// The kind under which the record holds azimuths from true north.
+pub(crate) const TRUE_AZIMUTH: &str = "azimuth from true north";
+
+/// "035.0° from true north".
+pub(crate) fn bearing(angle: Angle) -> String {
+    format!("{}° from true north", three_figures(angle))
+}
+
+/// A bearing with three figures before the point: "035.0".
+pub(crate) fn three_figures(angle: Angle) -> String {
+    let text = format!("{:05.1}", wrap(angle.si()).to_degrees());
+    if text == "360.0" { "000.0".to_owned() } else { text }
+}
+
+impl IntoGiven for Azimuth {
+    type Value = Azimuth;
+    fn into_given(self, symbol: &str, meaning: &str) -> (Azimuth, Item, Option<(f64, String)>) {
+        let item = if self.has_history() { self.item(symbol, meaning) } else { self.measured_item(symbol, meaning) };
+        (self, item, None)
+    }
+}
+
+impl IntoGiven for Uncertain<Azimuth, Angle> {
+    type Value = Azimuth;
+    fn into_given(self, symbol: &str, meaning: &str) -> (Azimuth, Item, Option<(f64, String)>) {
+        let (value, item, _) = self.value.into_given(symbol, meaning);
+        (value, item, Some((self.give_or_take.si(), with_typed_unit(self.give_or_take))))
+    }
+}
+
+impl Explain for Azimuth {
+    const KIND: &'static str = "azimuth-to-true-north";
+    type Inputs = Azimuth;
+    type Outcome = Angle;
+
+    fn compute(inputs: Azimuth) -> Result<Self> {
+        inputs.true_north().map(|_| inputs)
+    }
+    fn inputs(&self) -> Azimuth {
+        *self
+    }
+    fn outcome(&self) -> Angle {
+        self.true_north().unwrap_or(Angle::from_si(f64::NAN))
+    }
+
+    /// By another route: the compass direction as a vector, turned step by step.
+    fn check(inputs: &Azimuth, outcome: &Angle) -> Vec<Check> {
+        let turn = |v: (f64, f64), by: f64| (v.0 * by.cos() - v.1 * by.sin(), v.0 * by.sin() + v.1 * by.cos());
+        let correction =
+            if inputs.north == North::True { 0.0 } else { inputs.correction.map_or(f64::NAN, Quantity::si) };
+        let measured = (inputs.measured.si().cos(), inputs.measured.si().sin());
+        let v = turn(turn(measured, correction), inputs.turned.si());
+        vec![Check::compare(
+            "bearing as a unit vector (north, east), turned step by step",
+            &[outcome.si().cos(), outcome.si().sin()],
+            &[v.0, v.1],
+            1e-12,
+            "",
+        )]
+    }
+
+    fn explain(&self) -> Explanation {
+        let (symbol, name) = match self.north {
+            North::True => ("", ""),
+            North::Grid => ("γ", "grid convergence, east positive"),
+            North::Magnetic => ("D", "magnetic declination, east positive"),
+        };
+        let mut inputs = vec![self.measured_item("A_m", "azimuth as measured")];
+        let mut formulas = Vec::new();
+        let mut sum = format!("A = {}°", as_typed(self.measured.in_deg()));
+        if let (Some(correction), true) = (self.correction, self.north != North::True) {
+            inputs.push(Item::typed(symbol, name, correction));
+            formulas.push(Formula::new(
+                if self.north == North::Grid { "A = A_upright(m) + gamma" } else { "A = A_upright(m) + D" },
+                &format!("A = A_m + {symbol}"),
+            ));
+            sum.push_str(&format!(" + ({}°)", as_typed(correction.in_deg())));
+        }
+        if self.turned.si() != 0.0 {
+            inputs.push(Item::typed("t", "turn clockwise, by reasoning stated in the text", self.turned).chosen());
+            formulas.push(Formula::new("A' = A + t", "A' = A + t"));
+            sum.push_str(&format!(" + ({}°)", as_typed(self.turned.in_deg())));
+        }
+        let outcome = self.outcome();
+        sum.push_str(&format!(" = {}°, counted within 0–360°", three_figures(outcome)));
+        Explanation {
+            title: format!("Azimuth {}° from {}, brought to true north", as_typed(self.measured.in_deg()), self.north.words()),
+            headline: bearing(outcome),
+            inputs,
+            results: vec![Item::new("A", "azimuth from true north", TRUE_AZIMUTH, vec![outcome.si()], bearing(outcome))],
+            method: Method {
+                words: "East declination and east convergence are positive, so they are added; a turn is clockwise seen from above.".to_owned(),
+                formulas,
+                ..Method::default()
+            },
+            steps: vec![Step::worked(sum)],
+            topics: vec!["azimuth".to_owned()],
+            ..Explanation::default()
+        }
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::units::Units;
+
+    #[test]
+    fn magnetic_azimuth_needs_its_declination() {
+        let measured = Azimuth::from_magnetic_north(124.deg());
+        assert!(measured.true_north().unwrap_err().to_string().contains("with_declination"));
+        let corrected = measured.with_declination((-3.5).deg()).unwrap();
+        assert!((corrected.true_north().unwrap().in_deg() - 120.5).abs() < 1e-12);
+        assert!(measured.with_convergence(1.deg()).is_err());
+    }
+
+    #[test]
+    fn wraps_and_keeps_bits_in_range() {
+        assert_eq!(Azimuth::from_true_north(35.deg()).true_north().unwrap(), 35.deg());
+        let over = Azimuth::from_grid_north(359.5.deg()).with_convergence(1.deg()).unwrap();
+        assert!((over.true_north().unwrap().in_deg() - 0.5).abs() < 1e-9);
+        assert_eq!(three_figures(359.97.deg()), "000.0");
+        assert!(Azimuth::from_true_north(f64::NAN.deg()).true_north().is_err());
+    }
+}

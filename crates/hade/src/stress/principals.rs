@@ -1,0 +1,207 @@
+//! Principal stresses and their axes.
+
+use serde::{Deserialize, Serialize};
+
+use super::Stress;
+use super::tensor::Tensor;
+use crate::card::{Card, Check, Column, Explain, Explanation, Formula, Item, Method, Reference, Step, Table};
+use crate::error::Result;
+use crate::frames::vector::{M3, dot, scale};
+use crate::frames::{Geographic, Line};
+use crate::units::{Pressure, Quantity, fixed};
+
+/// Principal stresses S1 ≥ S2 ≥ S3 with their axes, lower hemisphere, right-handed.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Principals {
+    stress: Stress<Geographic>,
+    outcome: PrincipalOutcome,
+}
+
+/// What came out: magnitudes in Pa, and axes by rows in north, east, down. An axis whose magnitude
+/// equals another's is not defined.
+#[derive(Clone, Copy, Debug, PartialEq, Serialize, Deserialize)]
+pub struct PrincipalOutcome {
+    magnitudes: [Pressure; 3],
+    axes: [Option<[f64; 3]>; 3],
+}
+
+/// Magnitudes closer than this, relative to the largest, have no axes of their own.
+const EQUAL: f64 = 1e-9;
+
+fn solve(tensor: Tensor) -> PrincipalOutcome {
+    let e = tensor.eigen();
+    let largest = e.values.iter().fold(0.0_f64, |m, v| m.max(v.abs()));
+    let equal = |i: usize, j: usize| (e.values[i] - e.values[j]).abs() <= EQUAL * largest;
+    let defined = [!equal(0, 1), !equal(0, 1) && !equal(1, 2), !equal(1, 2)];
+    let axes = lower_hemisphere(e.axes);
+    PrincipalOutcome {
+        magnitudes: e.values.map(Pressure::from_si),
+        axes: [0, 1, 2].map(|i| defined[i].then_some(axes[i])),
+    }
+}
+
+/// Each axis by its lower end.
+fn lower_hemisphere(axes: M3) -> M3 {
+    axes.map(|v| if v[2] < 0.0 || (v[2] == 0.0 && v[0] < 0.0) { scale(v, -1.0) } else { v })
+}
+
+impl Stress<Geographic> {
+    /// The principal stresses and their axes.
+    pub fn principals(&self) -> Principals {
+        Principals { stress: *self, outcome: solve(self.tensor()) }
+    }
+}
+
+impl Principals {
+    /// The magnitudes, S1 ≥ S2 ≥ S3.
+    pub fn magnitudes(&self) -> [Pressure; 3] {
+        self.outcome.magnitudes
+    }
+
+    /// The axes as lines, lower hemisphere. `None` where the magnitude equals another's: then any
+    /// direction in their common plane is one.
+    pub fn lines(&self) -> [Option<Line>; 3] {
+        self.outcome.axes.map(|axis| axis.map(Line::along))
+    }
+}
+
+impl Explain for Principals {
+    const KIND: &'static str = "principal-stresses";
+    type Inputs = Stress<Geographic>;
+    type Outcome = PrincipalOutcome;
+
+    fn compute(inputs: Stress<Geographic>) -> Result<Self> {
+        Ok(inputs.principals())
+    }
+    fn inputs(&self) -> Stress<Geographic> {
+        self.stress
+    }
+    fn outcome(&self) -> PrincipalOutcome {
+        self.outcome
+    }
+
+    /// Each axis carries its own stress and no shear; the invariants come out as of the tensor.
+    fn check(inputs: &Stress<Geographic>, outcome: &PrincipalOutcome) -> Vec<Check> {
+        let s = inputs.tensor();
+        let largest = s.largest().max(1.0) * 1e-6;
+        let mut got = Vec::new();
+        let mut expected = Vec::new();
+        let mut lengths = Vec::new();
+        for (axis, magnitude) in outcome.axes.iter().zip(outcome.magnitudes) {
+            if let Some(v) = axis {
+                got.extend(s.times(*v).map(|c| c * 1e-6));
+                expected.extend(scale(*v, magnitude.in_mpa()));
+                lengths.push(dot(*v, *v));
+            }
+        }
+        let [a, b, c] = outcome.magnitudes.map(Pressure::in_mpa);
+        let rows = s.scale(1e-6).rows();
+        let minor = |i: usize, j: usize| rows[i][i] * rows[j][j] - rows[i][j] * rows[j][i];
+        let det = dot(rows[0], crate::frames::vector::cross(rows[1], rows[2]));
+        let mut checks = vec![
+            Check::compare(
+                "sum of the magnitudes against the trace of S",
+                &[a + b + c],
+                &[rows[0][0] + rows[1][1] + rows[2][2]],
+                largest * 1e-11,
+                "MPa",
+            ),
+            Check::compare(
+                "sum of their products two by two against the second invariant of S",
+                &[a * b + b * c + c * a],
+                &[minor(0, 1) + minor(1, 2) + minor(0, 2)],
+                largest * largest * 1e-11,
+                "MPa²",
+            ),
+            Check::compare(
+                "their product against the determinant of S",
+                &[a * b * c],
+                &[det],
+                largest * largest * largest * 1e-11,
+                "MPa³",
+            ),
+        ];
+        if !got.is_empty() {
+            checks.push(Check::compare(
+                "traction across each axis against its stress along the axis (no shear)",
+                &got,
+                &expected,
+                largest * 1e-9,
+                "MPa",
+            ));
+            checks.push(Check::compare("length of each axis", &lengths, &vec![1.0; lengths.len()], 1e-12, ""));
+        }
+        checks
+    }
+
+    fn explain(&self) -> Explanation {
+        let lines = self.lines();
+        let mut results = Vec::new();
+        let mut rows = Vec::new();
+        for (i, (magnitude, line)) in self.outcome.magnitudes.iter().zip(lines).enumerate() {
+            let n = i + 1;
+            results.push(Item::computed(&format!("S_{n}"), format!("principal stress {n}"), *magnitude));
+            let (trend, plunge) = match line {
+                Some(line) => {
+                    let angle = line.trend.true_north().unwrap_or_default();
+                    results.push(crate::frames::bearing_item(&format!("T_{n}"), &format!("trend of S_{n}"), angle));
+                    results.push(Item::computed(&format!("P_{n}"), format!("plunge of S_{n}"), line.plunge));
+                    (crate::frames::three_figures(angle), fixed(line.plunge.in_deg(), 1))
+                }
+                None => ("any".to_owned(), "any".to_owned()),
+            };
+            rows.push(vec![format!("S_{n}"), fixed(magnitude.in_mpa(), 3), trend, plunge]);
+        }
+        let mut notes = Vec::new();
+        if lines.iter().all(Option::is_none) {
+            notes.push("All three magnitudes are equal: every direction is a principal direction.".to_owned());
+        } else if lines.iter().any(Option::is_none) {
+            notes.push(
+                "Two magnitudes are equal: any direction in the plane across the third axis is a principal direction."
+                    .to_owned(),
+            );
+        }
+        let [a, b, c] = self.outcome.magnitudes.map(|m| fixed(m.in_mpa(), 2));
+        Explanation {
+            title: "Principal stresses".to_owned(),
+            headline: format!("S_1 {a}, S_2 {b}, S_3 {c} MPa"),
+            inputs: vec![self.stress.item("S", "stress in north, east, down")],
+            results,
+            method: Method {
+                words: "Eigenvalues and eigenvectors of the tensor by cyclic Jacobi turns. By hand: put each value into the characteristic equation, and each axis into S v = S_k v.".to_owned(),
+                formulas: vec![
+                    Formula::new("det(S - S_k I) = 0", "det(S − S_k I) = 0"),
+                    Formula::new("S v_k = S_k v_k", "S v_k = S_k v_k"),
+                ],
+                references: vec![Reference::new(
+                    "Golub, G.H. and Van Loan, C.F. (2013) Matrix Computations, 4th ed., Johns Hopkins, §8.5 (Jacobi methods)",
+                )],
+                ..Method::default()
+            },
+            steps: vec![
+                Step::matrix("S", &self.stress.rows_in_mpa(), 4, "MPa", "north, east, down"),
+                Step::Table {
+                    table: Table {
+                        caption: "Principal stresses; axes by their lower end, trend from true north".to_owned(),
+                        columns: vec![
+                            Column::text("axis"),
+                            Column::number("magnitude", "MPa"),
+                            Column::number("trend", "°"),
+                            Column::number("plunge", "°"),
+                        ],
+                        rows,
+                    },
+                },
+            ],
+            notes,
+            topics: vec!["stress".to_owned()],
+            ..Explanation::default()
+        }
+    }
+
+    fn upstream(&self) -> Vec<Card> {
+        let mut cards = self.stress.upstream();
+        cards.extend(self.stress.stated());
+        cards
+    }
+}
