@@ -5,6 +5,8 @@
 pub mod card;
 pub mod error;
 pub mod frames;
+pub mod prelude;
+pub mod replay;
 pub mod sheet;
 pub mod stress;
 pub mod units;

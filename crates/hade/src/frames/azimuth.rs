@@ -145,8 +145,7 @@ impl Azimuth {
             }
         };
         let whole = self.measured.si() + added + self.turned.si();
-        // What is already in range keeps its bits, so that the record can follow it.
-        Ok(Angle::from_si(if (0.0..std::f64::consts::TAU).contains(&whole) { whole } else { wrap(whole) }))
+        Ok(Angle::from_si(within_a_circle(whole)))
     }
 
     /// The azimuth as an input or a result, by its true bearing when that is known.
@@ -160,13 +159,18 @@ impl Azimuth {
     fn measured_item(self, symbol: &str, name: &str) -> Item {
         let shown = format!("{:0>3}° from {}", as_typed(self.measured.in_deg()), self.north.words());
         let kind = format!("azimuth from {}", self.north.words());
-        Item::new(symbol, name, kind, vec![self.measured.si()], shown)
+        Item::new(symbol, name, kind, vec![within_a_circle(self.measured.si())], shown)
     }
 
     /// The card of its correction, when there is one to show.
     pub(crate) fn upstream(self) -> Vec<Card> {
         if self.has_history() && self.true_north().is_ok() { vec![self.card()] } else { Vec::new() }
     }
+}
+
+/// 0 ≤ a < 2π; what is already in range keeps its bits, so that the record can follow it.
+fn within_a_circle(a: f64) -> f64 {
+    if (0.0..std::f64::consts::TAU).contains(&a) { a } else { wrap(a) }
 }
 
 /// The kind under which the record holds azimuths from true north.
@@ -186,8 +190,8 @@ pub(crate) fn three_figures(angle: Angle) -> String {
 impl IntoGiven for Azimuth {
     type Value = Azimuth;
     fn into_given(self, symbol: &str, meaning: &str) -> (Azimuth, Item, Option<(f64, String)>) {
-        let item = if self.has_history() { self.item(symbol, meaning) } else { self.measured_item(symbol, meaning) };
-        (self, item, None)
+        // What was measured is the given; its correction is a given of its own, and their sum a card.
+        (self, self.measured_item(symbol, meaning), None)
     }
 }
 

@@ -225,6 +225,7 @@ pub(crate) fn bearing_item(symbol: &str, name: &str, angle: Angle) -> Item {
 #[cfg(test)]
 mod tests {
     use super::*;
+    use crate::frames::Azimuth;
     use crate::units::Units;
 
     fn attitude(i: f64, a: f64) -> Attitude {

@@ -210,7 +210,7 @@ fn orphan(entries: &[&Written], givens: &[Given]) -> Option<usize> {
         cards.iter().filter(|(i, ..)| *i > place).any(|(_, other, _)| {
             other.explanation.inputs.iter().any(|input| {
                 card.explanation.results.iter().any(|result| result.same_value(input))
-                    && !givens.iter().any(|g| g.item.same_value(input) && g.item.symbol == input.symbol)
+                    && !givens.iter().any(|g| g.item.same_value(input))
             })
         })
     };
@@ -252,4 +252,86 @@ pub(crate) fn hash_file(path: impl AsRef<Path>) -> Result<(String, u64)> {
 /// Lower-case hexadecimal.
 pub(crate) fn hex(bytes: &[u8]) -> String {
     bytes.iter().map(|b| format!("{b:02x}")).collect()
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::prelude::*;
+    use crate::sheet::Origin;
+
+    fn sheet_with_stress(sheet: &mut Sheet, sv: f64) -> Stress {
+        let sv =
+            sheet.given("S_v", "vertical stress", sv.mpa().give_or_take(1.3.mpa()), Source::measured("density log"));
+        let sh_max =
+            sheet.given("S_Hmax", "larger horizontal stress", 58.2.mpa(), Source::assumed("from breakout width"));
+        let sh_min =
+            sheet.given("S_hmin", "smaller horizontal stress", 47.1.mpa(), Source::measured("extended leak-off"));
+        let measured = sheet.given(
+            "A_b",
+            "breakout azimuth",
+            Azimuth::from_magnetic_north(127.deg()),
+            Source::measured("image log"),
+        );
+        let declination = sheet.given("D", "declination", (-2.5).deg(), Source::measured("survey company"));
+        let sh_max_azimuth = measured.with_declination(declination).unwrap().perpendicular();
+        Stress::from_horizontals(Horizontals { sv, sh_max, sh_min, sh_max_azimuth }).unwrap()
+    }
+
+    #[test]
+    fn every_input_is_traced_without_adding_the_steps_between() {
+        let mut sheet = Sheet::new("test");
+        let s = sheet_with_stress(&mut sheet, 66.9);
+        let i = sheet.given("i", "inclination", 42.deg(), Source::measured("survey"));
+        let a = sheet.given("a", "azimuth", Azimuth::from_true_north((-10).deg()), Source::measured("survey"));
+        let chain = Attitude { inclination: i, azimuth: a }.chain().unwrap();
+        sheet.add(&s.principals());
+        sheet.add(&chain.carry(&s));
+        let record = sheet.record();
+        assert_eq!(record.unknown_inputs(), vec![], "{:#?}", record.unknown_inputs());
+        let kinds: Vec<_> = record.cards().iter().map(|(c, _)| c.kind.clone()).collect();
+        assert_eq!(
+            kinds,
+            ["azimuth-to-true-north", "stress-tensor", "principal-stresses", "rotation-chain", "carried-stress"]
+        );
+        let (_, origins) = record.cards()[1];
+        assert_eq!(origins[0], Origin::Given { symbol: "S_v".to_owned() });
+        assert_eq!(origins[3], Origin::Outcome { card: 1, result: "azimuth from true north".to_owned() });
+    }
+
+    #[test]
+    fn an_input_that_bypasses_the_sheet_is_named() {
+        let mut sheet = Sheet::new("test");
+        let s = sheet_with_stress(&mut sheet, 66.9);
+        sheet.add(&s.mohr().effective(31.5.mpa()).unwrap());
+        let unknown = sheet.record().unknown_inputs();
+        assert_eq!(unknown.len(), 1);
+        assert_eq!(unknown[0].1, "pore pressure = 31.5 MPa");
+        assert_eq!(unknown[0].2, Origin::Unmatched);
+    }
+
+    #[test]
+    fn running_a_cell_again_replaces_what_it_added() {
+        let mut sheet = Sheet::new("test");
+        for sv in [66.9, 65.0] {
+            let s = sheet_with_stress(&mut sheet, sv);
+            sheet.add(&s.principals());
+            sheet.note("looked at");
+        }
+        let record = sheet.record();
+        assert_eq!(record.givens.len(), 5);
+        assert_eq!(record.entries.len(), 4);
+        assert_eq!(record.unknown_inputs(), vec![]);
+        let again = Record::from_json(&record.to_json().unwrap()).unwrap();
+        assert_eq!(again, record);
+        assert_eq!(again.to_json().unwrap(), record.to_json().unwrap());
+    }
+
+    #[test]
+    fn records_of_another_schema_and_other_json_are_refused() {
+        let text = Sheet::new("t").record().to_json().unwrap().replace("\"schema\": 1", "\"schema\": 2");
+        assert!(Record::from_json(&text).unwrap_err().to_string().contains("schema is 2"));
+        assert!(Record::from_json("{}").unwrap_err().to_string().contains("names no schema"));
+        assert!(Record::from_json("not json").is_err());
+    }
 }

@@ -32,8 +32,8 @@ impl Back {
     /// Carries a stress from the hole's axes back: S = Qᵀ S' Q. A stress knows the hole it is in,
     /// and is always turned back by that hole's own attitude.
     pub fn carry(&self, s: &Stress<Borehole>) -> Stress<Geographic> {
-        let q = match s.attitude().map(Attitude::matrix) {
-            Some(Ok(q)) => q,
+        let q = match s.attitude().map(|attitude| Chain::to_borehole(attitude, None)) {
+            Some(Ok(own)) => own.matrix(),
             _ => self.chain.matrix(),
         };
         let tensor = s.tensor.turned(&crate::frames::vector::transpose(&q));
@@ -105,7 +105,7 @@ impl Explain for Stress<Borehole> {
         let Some((geographic, attitude, name)) = self.carried else { return Explanation::default() };
         let s: Stress<Geographic> = Stress::of(geographic, self.made, None);
         let place = name.map_or_else(|| attitude.words(), |n| n.to_string());
-        let q = attitude.matrix().unwrap_or_default();
+        let q = Chain::to_borehole(attitude, name).map(|chain| chain.matrix()).unwrap_or_default();
         Explanation {
             title: format!("Stress in the borehole axes of {place}"),
             headline: self.item("S'", "").shown,

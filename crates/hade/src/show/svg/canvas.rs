@@ -33,13 +33,18 @@ impl Canvas {
 
     /// Lines of one pen.
     pub fn lines(&mut self, lines: &[Vec<Px>], pen: &Pen) {
+        self.strokes(lines, pen, 1.0);
+    }
+
+    /// Lines of one pen, more or less see-through.
+    pub fn strokes(&mut self, lines: &[Vec<Px>], pen: &Pen, opacity: f64) {
         let dash = pen.dash.iter().map(|d| tenths(*d).to_string()).collect::<Vec<_>>().join(" ");
         let attributes = if dash.is_empty() {
             " stroke-linejoin=\"round\" stroke-linecap=\"round\"".to_owned()
         } else {
             format!(" stroke-linejoin=\"round\" stroke-dasharray=\"{dash}\"")
         };
-        let style = style(pen.line, 1.0, pen.width);
+        let style = style(pen.line, opacity, pen.width);
         self.group(&attributes, |backend| {
             for line in lines {
                 // The backend writes into a string, which cannot fail.

@@ -1,0 +1,247 @@
+//! Recomputing a card from its inputs: the table of every kind, used when a record becomes a memo
+//! and when a memo is verified.
+
+use crate::card::{Card, Check, Data, Explain, Json};
+use crate::error::{Error, Result};
+use crate::frames::{Azimuth, Borehole, Chain, Geographic};
+use crate::stress::{MohrCircles, Principals, Stress, Traction};
+
+/// A kind of card: how it is computed and checked.
+#[derive(Clone, Copy)]
+pub struct Kind {
+    /// The kind ([`Explain::KIND`]).
+    pub name: &'static str,
+    /// The version this library writes.
+    pub version: u32,
+    /// The relative tolerance of a replay.
+    pub tolerance: f64,
+    compute: fn(&Json) -> Result<Card>,
+    check: fn(&Json, &Json) -> Result<Vec<Check>>,
+}
+
+/// What a replay found.
+#[derive(Clone, Debug, PartialEq)]
+#[non_exhaustive]
+pub struct Replayed {
+    /// The card as computed now, from the recorded inputs.
+    pub card: Card,
+    /// Where the recorded outcome differs by more than the tolerance.
+    pub difference: Option<String>,
+    /// The relative tolerance that was used.
+    pub tolerance: f64,
+    /// The checks, applied to the recorded outcome.
+    pub checks: Vec<Check>,
+}
+
+impl Replayed {
+    /// Whether the recorded outcome agrees and passes every check.
+    pub fn agrees(&self) -> bool {
+        self.difference.is_none() && !self.checks.is_empty() && self.checks.iter().all(|c| c.passed)
+    }
+}
+
+const fn kind<E: Explain>() -> Kind {
+    Kind {
+        name: E::KIND,
+        version: E::VERSION,
+        tolerance: E::REPLAY_TOLERANCE,
+        compute: |inputs| Ok(E::compute(E::Inputs::read(inputs)?)?.card()),
+        check: |inputs, outcome| Ok(E::check(&E::Inputs::read(inputs)?, &E::Outcome::read(outcome)?)),
+    }
+}
+
+/// Every kind of card there is. A test fails when one is missing.
+pub const KINDS: &[Kind] = &[
+    kind::<Azimuth>(),
+    kind::<Chain>(),
+    kind::<Stress<Geographic>>(),
+    kind::<Stress<Borehole>>(),
+    kind::<Principals>(),
+    kind::<Traction>(),
+    kind::<MohrCircles>(),
+];
+
+fn kind_of(card: &Card) -> Result<&'static Kind> {
+    let known = KINDS.iter().find(|k| k.name == card.kind).ok_or_else(|| Error::Unreadable {
+        path: "the record".to_owned(),
+        line: None,
+        column: None,
+        why: format!(
+            "the card \"{}\" is of kind \"{}\", which this version of Hade does not know",
+            card.title(),
+            card.kind
+        ),
+        fix: "use the version of Hade that wrote it".to_owned(),
+    })?;
+    if known.version != card.version {
+        return Err(Error::Unreadable {
+            path: "the record".to_owned(),
+            line: None,
+            column: None,
+            why: format!(
+                "the card \"{}\" is version {} of its kind, and this version of Hade has version {}",
+                card.title(),
+                card.version,
+                known.version
+            ),
+            fix: "use the version of Hade that wrote it, or run the notebook again".to_owned(),
+        });
+    }
+    Ok(known)
+}
+
+/// Computes a card again from its recorded inputs and holds the recorded outcome against it.
+///
+/// # Errors
+/// When the kind or its version is unknown, or the inputs are refused.
+pub fn replay(card: &Card) -> Result<Replayed> {
+    let kind = kind_of(card)?;
+    let now = (kind.compute)(&card.inputs)?;
+    Ok(Replayed {
+        difference: card.outcome.difference(&now.outcome, kind.tolerance),
+        checks: (kind.check)(&card.inputs, &card.outcome)?,
+        tolerance: kind.tolerance,
+        card: now,
+    })
+}
+
+#[cfg(test)]
+mod tests {
+    use std::collections::BTreeSet;
+    use std::path::Path;
+
+    use super::*;
+    use crate::prelude::*;
+
+    /// One card of every kind, made through the public surface.
+    fn samples() -> Vec<Card> {
+        let breakout = Azimuth::from_magnetic_north(127.deg()).with_declination((-2.5).deg()).unwrap();
+        let s = Stress::from_horizontals(Horizontals {
+            sv: 66.9.mpa(),
+            sh_max: 58.2.mpa(),
+            sh_min: 47.1.mpa(),
+            sh_max_azimuth: breakout.perpendicular(),
+        })
+        .unwrap();
+        let components = Components {
+            nn: 52.mpa(),
+            ee: 66.mpa(),
+            dd: 41.mpa(),
+            ne: (-5.4).mpa(),
+            nd: (-1.9).mpa(),
+            ed: (-2.3).mpa(),
+        };
+        let stated = Stress::from_components(components).unwrap();
+        let turned = Stress::from_tension_positive(components).unwrap();
+        let line = |t: f64, p: f64| Line { trend: Azimuth::from_true_north(t.deg()), plunge: p.deg() };
+        let measured = Stress::from_principals([
+            (60.mpa(), line(35.0, 12.0)),
+            (40.mpa(), line(127.0, 8.0)),
+            (20.mpa(), line(246.0, 75.0)),
+        ])
+        .unwrap();
+        let chain = Attitude { inclination: 42.deg(), azimuth: Azimuth::from_true_north(120.deg()) }
+            .named("KF-3 at 2950 m")
+            .chain()
+            .unwrap();
+        let plane = Plane { strike: Azimuth::from_true_north(45.deg()), dip: 60.deg() };
+        let sh = chain.carry(&s);
+        vec![
+            breakout.perpendicular().card(),
+            s.card(),
+            stated.card(),
+            turned.card(),
+            measured.card(),
+            (s + stated).card(),
+            s.principals().card(),
+            Stress::from_horizontals(Horizontals {
+                sv: 50.mpa(),
+                sh_max: 50.mpa(),
+                sh_min: 40.mpa(),
+                sh_max_azimuth: Azimuth::from_true_north(35.deg()),
+            })
+            .unwrap()
+            .principals()
+            .card(),
+            chain.card(),
+            sh.card(),
+            s.on(plane).unwrap().card(),
+            s.mohr().effective(31.mpa()).unwrap().with_plane(plane).unwrap().card(),
+        ]
+    }
+
+    #[test]
+    fn every_kind_in_the_source_is_in_the_table_and_has_a_sample() {
+        let mut found = BTreeSet::new();
+        kinds_in(Path::new(concat!(env!("CARGO_MANIFEST_DIR"), "/src")), &mut found);
+        let table: BTreeSet<String> = KINDS.iter().map(|k| k.name.to_owned()).collect();
+        assert_eq!(found, table, "kinds in the source against kinds in the table");
+        assert_eq!(table.len(), KINDS.len(), "a kind stands twice");
+        let sampled: BTreeSet<String> = samples().iter().map(|c| c.kind.clone()).collect();
+        assert_eq!(sampled, table, "kinds with a sample");
+    }
+
+    fn kinds_in(folder: &Path, found: &mut BTreeSet<String>) {
+        for entry in std::fs::read_dir(folder).unwrap() {
+            let path = entry.unwrap().path();
+            if path.is_dir() {
+                kinds_in(&path, found);
+            } else if path.extension().is_some_and(|e| e == "rs") && !path.ends_with("replay.rs") {
+                let text = std::fs::read_to_string(&path).unwrap();
+                for rest in text.split("const KIND: &'static str = \"").skip(1) {
+                    if text.contains("Explain for") {
+                        found.insert(rest.split('"').next().unwrap().to_owned());
+                    }
+                }
+            }
+        }
+    }
+
+    #[test]
+    fn every_card_passes_its_checks_and_replays_from_its_text() {
+        for card in samples() {
+            assert!(card.passed(), "{}: {:#?}", card.title(), card.checks);
+            let text = serde_json::to_string(&card).unwrap();
+            let read: Card = serde_json::from_str(&text).unwrap();
+            assert_eq!(read, card, "{}", card.title());
+            let replayed = replay(&read).unwrap();
+            assert!(replayed.agrees(), "{}: {:?}", card.title(), replayed.difference);
+            assert_eq!(replayed.card, card, "{}", card.title());
+        }
+    }
+
+    /// Perturbs every number of every outcome, one at a time, and sees a check go red.
+    #[test]
+    fn every_perturbed_outcome_turns_a_check_red() {
+        for card in samples() {
+            let kind = kind_of(&card).unwrap();
+            let numbers = card.outcome.numbers();
+            assert!(!numbers.is_empty(), "{} has no numbers to check", card.title());
+            let largest = numbers.iter().fold(0.0_f64, |m, (_, n)| m.max(n.abs()));
+            for (place, number) in numbers {
+                // 0.1 % of the number, or of the largest one beside it where it is zero.
+                let step = if number.abs() > 1e-6 * largest { 1e-3 * number.abs() } else { 1e-3 * largest };
+                for wrong in [number + step, number - step] {
+                    let outcome = card.outcome.with_number(&place, wrong);
+                    let checks = (kind.check)(&card.inputs, &outcome).unwrap();
+                    assert!(
+                        checks.iter().any(|c| !c.passed),
+                        "{}: {place} {number} → {wrong} passes every check",
+                        card.title()
+                    );
+                    let tampered = Card { outcome: outcome.clone(), ..card.clone() };
+                    assert!(!replay(&tampered).unwrap().agrees(), "{}: {place} replays", card.title());
+                }
+            }
+        }
+    }
+
+    #[test]
+    fn unknown_kinds_and_versions_are_refused() {
+        let card = samples().remove(0);
+        let unknown = Card { kind: "tea-leaves".to_owned(), ..card.clone() };
+        assert!(replay(&unknown).unwrap_err().to_string().contains("does not know"));
+        let newer = Card { version: 99, ..card };
+        assert!(replay(&newer).unwrap_err().to_string().contains("version 99"));
+    }
+}

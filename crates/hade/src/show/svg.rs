@@ -1,0 +1,309 @@
+//! A figure as SVG.
+
+mod bands;
+mod canvas;
+mod clip;
+mod frame;
+mod labels;
+mod ticks;
+
+use bands::{Band, band};
+use canvas::{Canvas, Hold};
+use clip::{Px, Rect, clip, walk};
+use frame::{Frame, Margins};
+use labels::{Anchor, LINE, Placed, Room, SIZE, Wish, block, moved_into, spread, wrap};
+
+use super::theme::{Palette, Pen, Theme, dark_where_the_page_is};
+use crate::card::{Figure, Layer, Mark, Role};
+
+/// The widest label at the end of a line before it is broken into lines.
+const WIDEST_END_LABEL: f64 = 150.0;
+/// From the end of a line to its label.
+const LEADER: f64 = 16.0;
+
+/// Draws a figure. The same figure gives the same bytes; text stays text; caption and text
+/// alternative are its `<title>` and `<desc>`. Points that are not numbers are left out, and an axis
+/// without extent is given some.
+pub fn svg(figure: &Figure, theme: Theme) -> String {
+    let palette = Palette::of(theme);
+    let frame = Frame::of(figure, margins(figure));
+    let drawings: Vec<Drawing> = figure.layers.iter().map(|l| Drawing::of(l, &frame)).collect();
+    let bands: Vec<Band<'_>> = figure.layers.iter().filter_map(|l| band(l, &frame)).collect();
+    let placed = place_labels(figure, &frame, &palette, &drawings, &bands);
+
+    let mut canvas = Canvas::new();
+    if theme == Theme::Notebook {
+        let whole = Rect { left: 0.0, top: 0.0, right: frame.size.0, bottom: frame.size.1 };
+        canvas.fill(&whole, palette.ground, 1.0);
+    }
+    frame.draw_grid(&mut canvas, &palette);
+    let label_areas: Vec<Rect> = placed.labels.iter().map(|l| l.area).collect();
+    for band in &bands {
+        band.draw(&mut canvas, &palette, &label_areas);
+    }
+    frame.draw_axes(&mut canvas, &palette);
+    for drawing in &drawings {
+        drawing.draw(&mut canvas, &palette);
+    }
+    let thin = Pen { width: 1.0, dash: &[], ..palette.pen(Role::Quiet) };
+    canvas.lines(&placed.leaders, &thin);
+    for label in &placed.labels {
+        let x = match label.hold {
+            Hold::Start => label.area.left,
+            Hold::Middle => (label.area.left + label.area.right) / 2.0,
+            Hold::End => label.area.right,
+        };
+        for (i, line) in label.lines.iter().enumerate() {
+            let y = label.area.top + (i as f64 + 0.5) * LINE;
+            canvas.text(line, [x, y], label.hold, SIZE, label.colour, false);
+        }
+    }
+    let style = if theme == Theme::Notebook { dark_where_the_page_is() } else { String::new() };
+    canvas.finish(frame.size.0, frame.size.1, &figure.caption, &figure.alt, &style)
+}
+
+/// A layer in pixels, cut to the frame.
+enum Drawing {
+    Lines { role: Role, parts: Vec<Vec<Px>> },
+    Marks { role: Role, mark: Mark, places: Vec<Px> },
+    None,
+}
+
+impl Drawing {
+    fn of(layer: &Layer, frame: &Frame) -> Drawing {
+        let reach = frame.area.grown(0.5);
+        match layer {
+            Layer::Line { role, points, .. } => {
+                let line: Vec<Px> = points.iter().map(|p| frame.at(*p)).collect();
+                Drawing::Lines { role: *role, parts: clip(&line, &reach) }
+            }
+            Layer::Circle { role, centre, radius, upper_half, .. } => {
+                let steps = if *upper_half { 120 } else { 240 };
+                let turn = if *upper_half { std::f64::consts::PI } else { std::f64::consts::TAU };
+                let line: Vec<Px> = (0..=steps)
+                    .map(|i| turn * f64::from(i) / f64::from(steps))
+                    .map(|a| frame.at([centre[0] + radius * a.cos(), centre[1] + radius * a.sin()]))
+                    .collect();
+                Drawing::Lines { role: *role, parts: clip(&line, &reach) }
+            }
+            Layer::Points { role, mark, points, .. } => {
+                let places = points.iter().map(|p| frame.at(*p)).filter(|p| reach.holds(*p)).collect();
+                Drawing::Marks { role: *role, mark: *mark, places }
+            }
+            Layer::ColumnBand { .. } | Layer::RowBand { .. } | Layer::Words { .. } => Drawing::None,
+        }
+    }
+
+    fn draw(&self, canvas: &mut Canvas, palette: &Palette) {
+        match self {
+            Drawing::Lines { role, parts } => canvas.lines(parts, &palette.pen(*role)),
+            Drawing::Marks { role, mark, places } => {
+                let pen = Pen { width: 2.0, dash: &[], ..palette.pen(*role) };
+                match mark {
+                    Mark::Dot => canvas.dots(places, 4.5, pen.line),
+                    Mark::Cross => canvas.lines(&shapes(places, &CROSS), &pen),
+                    Mark::Triangle => canvas.lines(&shapes(places, &TRIANGLE), &pen),
+                }
+            }
+            Drawing::None => {}
+        }
+    }
+
+    /// The places that labels keep clear of.
+    fn outline(&self) -> Vec<Px> {
+        match self {
+            Drawing::Lines { parts, .. } => parts.iter().flat_map(|p| walk(p, 4.0)).collect(),
+            Drawing::Marks { places, .. } => places
+                .iter()
+                .flat_map(|p| [[0.0, 0.0], [-4.0, 0.0], [4.0, 0.0], [0.0, -4.0], [0.0, 4.0]].map(|d| [p[0] + d[0], p[1] + d[1]]))
+                .collect(),
+            Drawing::None => Vec::new(),
+        }
+    }
+}
+
+const CROSS: [&[Px]; 2] = [&[[-5.0, 0.0], [5.0, 0.0]], &[[0.0, -5.0], [0.0, 5.0]]];
+const TRIANGLE: [&[Px]; 1] = [&[[-5.0, 4.0], [0.0, -5.0], [5.0, 4.0], [-5.0, 4.0]]];
+
+fn shapes(places: &[Px], strokes: &[&[Px]]) -> Vec<Vec<Px>> {
+    places
+        .iter()
+        .flat_map(|p| strokes.iter().map(move |s| s.iter().map(|d| [p[0] + d[0], p[1] + d[1]]).collect()))
+        .collect()
+}
+
+/// Whether a line is named at its right end, outside the frame.
+fn named_at_its_end(figure: &Figure, points: &[[f64; 2]]) -> bool {
+    let (low, high) = ticks::ends(&figure.x);
+    let (bottom, top) = ticks::ends(&figure.y);
+    let last = points.iter().rev().find(|p| p[0].is_finite() && p[1].is_finite());
+    !figure.y.downward
+        && last.is_some_and(|[x, y]| {
+            *x >= high - 0.02 * (high - low) && *x <= high * (1.0 + 1e-9) + 1e-12 && *y >= bottom && *y <= top
+        })
+}
+
+fn margins(figure: &Figure) -> Margins {
+    let mut out = Margins::default();
+    for layer in &figure.layers {
+        match layer {
+            Layer::Line { label, points, .. } if !label.is_empty() && named_at_its_end(figure, points) => {
+                let (wide, _) = block(&wrap(label, SIZE, WIDEST_END_LABEL), SIZE);
+                out.right = out.right.max(LEADER + wide);
+            }
+            Layer::ColumnBand { label, .. } if !label.is_empty() => out.strip = LINE + 4.0,
+            _ => {}
+        }
+    }
+    out
+}
+
+/// The labels of a figure, and thin lines from ends to labels that had to move.
+struct Labels {
+    labels: Vec<Placed>,
+    leaders: Vec<Vec<Px>>,
+}
+
+fn place_labels(figure: &Figure, frame: &Frame, palette: &Palette, drawings: &[Drawing], bands: &[Band<'_>]) -> Labels {
+    let mut out = Labels { labels: Vec::new(), leaders: Vec::new() };
+    let inside = frame.area.grown(-4.0);
+    let mut room = Room::default();
+    for (owner, drawing) in drawings.iter().enumerate() {
+        room.drawn.extend(drawing.outline().into_iter().map(|p| (owner, p)));
+    }
+    label_upright_bands(frame, palette, bands, &mut out);
+    label_line_ends(figure, frame, palette, drawings, &mut out);
+    for layer in &figure.layers {
+        if let Layer::Words { text, at } = layer {
+            let [x, y] = frame.at(*at);
+            let lines = wrap(text, SIZE, 0.6 * frame.area.width());
+            if !x.is_finite() || !y.is_finite() || lines.is_empty() {
+                continue;
+            }
+            let (w, h) = block(&lines, SIZE);
+            let area = Rect { left: x, right: x + w, top: y - h / 2.0, bottom: y + h / 2.0 };
+            let area = moved_into(area, &inside);
+            room.taken.push(area);
+            out.labels.push(Placed { lines, colour: palette.ink, hold: Hold::Start, area });
+        }
+    }
+    for (owner, (layer, drawing)) in figure.layers.iter().zip(drawings).enumerate() {
+        let (label, gap, anchors) = match (layer, drawing) {
+            (Layer::Line { label, points, .. }, Drawing::Lines { parts, .. })
+                if !named_at_its_end(figure, points) =>
+            {
+                (label, 7.0, along(parts))
+            }
+            (Layer::Circle { label, .. }, Drawing::Lines { parts, .. }) => (label, 6.0, along(parts)),
+            (Layer::Points { label, .. }, Drawing::Marks { places, .. }) => {
+                let anchors = places.iter().enumerate().map(|(i, p)| Anchor { at: *p, cost: 0.2 * i as f64 });
+                (label, 8.0, anchors.take(24).collect())
+            }
+            _ => continue,
+        };
+        let role = match layer {
+            Layer::Line { role, .. } | Layer::Circle { role, .. } | Layer::Points { role, .. } => *role,
+            _ => continue,
+        };
+        if !label.is_empty() {
+            let wish = Wish { owner, text: label.clone(), colour: palette.pen(role).word, gap, anchors };
+            out.labels.extend(room.place(&wish, &inside));
+        }
+    }
+    for (number, band) in bands.iter().enumerate().filter(|(_, b)| !b.upright && !b.label.is_empty()) {
+        let middle = (band.area.top + band.area.bottom) / 2.0;
+        let half = canvas::width(band.label, SIZE) / 2.0;
+        let anchors = [0.97, 0.03, 0.5, 0.75, 0.25]
+            .iter()
+            .enumerate()
+            .map(|(i, share)| {
+                let x = inside.left + half + share * (inside.width() - 2.0 * half);
+                Anchor { at: [x, middle + LINE / 2.0], cost: 2.0 * i as f64 }
+            })
+            .collect();
+        let wish = Wish {
+            owner: drawings.len() + number,
+            text: band.label.to_owned(),
+            colour: palette.pen(band.role).word,
+            gap: 0.0,
+            anchors,
+        };
+        out.labels.extend(room.place(&wish, &inside));
+    }
+    out
+}
+
+/// Anchors along lines: both ends, the highest and the lowest place, and steps between.
+fn along(parts: &[Vec<Px>]) -> Vec<Anchor> {
+    let mut out = Vec::new();
+    for part in parts {
+        let places = walk(part, 14.0);
+        let highest = places.iter().map(|p| p[1]).fold(f64::INFINITY, f64::min);
+        let count = places.len();
+        for (i, at) in places.into_iter().enumerate() {
+            let cost = if at[1] <= highest + 0.5 {
+                0.0
+            } else if i + 1 == count {
+                2.0
+            } else {
+                6.0
+            };
+            out.push(Anchor { at, cost });
+        }
+    }
+    out
+}
+
+fn label_line_ends(figure: &Figure, frame: &Frame, palette: &Palette, drawings: &[Drawing], out: &mut Labels) {
+    let mut ends: Vec<(Px, Placed)> = Vec::new();
+    for (layer, drawing) in figure.layers.iter().zip(drawings) {
+        let (Layer::Line { label, role, points }, Drawing::Lines { parts, .. }) = (layer, drawing) else { continue };
+        if label.is_empty() || !named_at_its_end(figure, points) {
+            continue;
+        }
+        let Some(end) = parts.last().and_then(|p| p.last()).copied() else { continue };
+        let lines = wrap(label, SIZE, WIDEST_END_LABEL);
+        let (w, h) = block(&lines, SIZE);
+        let left = frame.area.right + LEADER;
+        let area = Rect { left, right: left + w, top: end[1] - h / 2.0, bottom: end[1] + h / 2.0 };
+        ends.push((end, Placed { lines, colour: palette.pen(*role).word, hold: Hold::Start, area }));
+    }
+    let wanted: Vec<(f64, f64)> = ends.iter().map(|(end, p)| (end[1], p.area.height() + 2.0)).collect();
+    let slack = 0.6 * LINE;
+    let centres = spread(&wanted, frame.area.top - slack, frame.area.bottom + slack);
+    for ((end, mut placed), centre) in ends.into_iter().zip(centres) {
+        let half = placed.area.height() / 2.0;
+        placed.area = Rect { top: centre - half, bottom: centre + half, ..placed.area };
+        let from = [end[0] + 3.0, end[1]];
+        out.leaders.push(vec![from, [placed.area.left - 4.0, centre]]);
+        out.labels.push(placed);
+    }
+}
+
+fn label_upright_bands(frame: &Frame, palette: &Palette, bands: &[Band<'_>], out: &mut Labels) {
+    let mut named: Vec<&Band<'_>> = bands.iter().filter(|b| b.upright && !b.label.is_empty()).collect();
+    let wide = |b: &&Band<'_>| canvas::width(b.label, SIZE) + 8.0;
+    let room = frame.size.0 - 8.0 - frame.area.left;
+    if named.iter().map(wide).sum::<f64>() > room {
+        // Not enough room to name every band: each name once.
+        let mut seen: Vec<&str> = Vec::new();
+        named.retain(|b| {
+            let new = !seen.contains(&b.label);
+            seen.push(b.label);
+            new
+        });
+    }
+    let wanted: Vec<(f64, f64)> = named.iter().map(|b| ((b.area.left + b.area.right) / 2.0, wide(b))).collect();
+    let centres = spread(&wanted, frame.area.left, frame.size.0 - 8.0);
+    for (band, x) in named.into_iter().zip(centres) {
+        let half = canvas::width(band.label, SIZE) / 2.0;
+        let y = frame.strip();
+        let area = Rect { left: x - half, right: x + half, top: y - LINE / 2.0, bottom: y + LINE / 2.0 };
+        out.labels.push(Placed {
+            lines: vec![band.label.to_owned()],
+            colour: palette.pen(band.role).word,
+            hold: Hold::Middle,
+            area,
+        });
+    }
+}
