@@ -4,6 +4,7 @@
 
 pub mod card;
 pub mod error;
+pub mod faults;
 pub mod frames;
 pub mod prelude;
 pub mod replay;

@@ -2,6 +2,7 @@
 //! a notebook's own code means std's.
 
 pub use crate::card::{Card, Explain};
+pub use crate::faults::FrictionLimit;
 pub use crate::frames::{Attitude, Axis, Azimuth, Borehole, Chain, Geographic, Line, Plane};
 pub use crate::sheet::{Basis, Sheet, Source};
 pub use crate::stress::{Components, EffectiveStress, Horizontals, MohrCircles, Principals, Regime, Stress, Traction};

@@ -3,6 +3,7 @@
 
 use crate::card::{Card, Check, Data, Explain, Json};
 use crate::error::{Error, Result};
+use crate::faults::FrictionLimit;
 use crate::frames::{Azimuth, Borehole, Chain, Geographic};
 use crate::stress::{MohrCircles, Principals, Stress, Traction};
 
@@ -59,6 +60,7 @@ pub const KINDS: &[Kind] = &[
     kind::<Principals>(),
     kind::<Traction>(),
     kind::<MohrCircles>(),
+    kind::<FrictionLimit>(),
 ];
 
 fn kind_of(card: &Card) -> Result<&'static Kind> {
@@ -166,6 +168,7 @@ mod tests {
             chain.card(),
             sh.card(),
             s.on(plane).unwrap().card(),
+            s.frictional_limit(31.mpa(), 0.6).unwrap().card(),
             s.mohr().effective(31.mpa()).unwrap().with_plane(plane).unwrap().card(),
         ]
     }

@@ -25,13 +25,13 @@ pub struct PrincipalOutcome {
     axes: [Option<[f64; 3]>; 3],
 }
 
-/// Magnitudes closer than this, relative to the largest, have no axes of their own.
+/// Magnitudes closer than this, relative to the sum of all three sizes, have no axes of their own.
 const EQUAL: f64 = 1e-9;
 
 fn solve(tensor: Tensor) -> PrincipalOutcome {
     let e = tensor.eigen();
-    let largest = e.values.iter().fold(0.0_f64, |m, v| m.max(v.abs()));
-    let equal = |i: usize, j: usize| (e.values[i] - e.values[j]).abs() <= EQUAL * largest;
+    let sizes: f64 = e.values.iter().map(|v| v.abs()).sum();
+    let equal = |i: usize, j: usize| (e.values[i] - e.values[j]).abs() <= EQUAL * sizes;
     let defined = [!equal(0, 1), !equal(0, 1) && !equal(1, 2), !equal(1, 2)];
     let axes = lower_hemisphere(e.axes);
     PrincipalOutcome {
