@@ -5,9 +5,12 @@
 pub mod card;
 pub mod error;
 pub mod faults;
+pub mod field;
 pub mod frames;
+mod lines;
 pub mod prelude;
 pub mod replay;
 pub mod sheet;
 pub mod stress;
 pub mod units;
+pub mod well;

@@ -381,7 +381,7 @@ fn data(record: &Record) -> Grid {
 #[cfg(test)]
 mod tests {
     use super::*;
-    use crate::show::notebook::sample;
+    use crate::show::sample;
 
     #[test]
     fn templates_render() {

@@ -13,6 +13,8 @@ mod base64;
 mod html;
 mod notebook;
 mod quantities;
+#[cfg(test)]
+mod sample;
 mod svg;
 mod text;
 mod theme;

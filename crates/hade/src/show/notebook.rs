@@ -212,13 +212,10 @@ impl<A: Show, B: Show, C: Show> Show for (A, B, C) {
 }
 
 #[cfg(test)]
-#[path = "sample.rs"]
-pub(super) mod sample;
-
-#[cfg(test)]
 mod tests {
     use super::*;
     use crate::error::Error;
+    use crate::show::sample;
     use crate::units::{Pressure, Units as _};
 
     #[test]

@@ -37,7 +37,7 @@ pub fn svg(figure: &Figure, theme: Theme) -> String {
         canvas.fill(&whole, palette.ground, 1.0);
     }
     frame.draw_grid(&mut canvas, &palette);
-    let label_areas: Vec<Rect> = placed.labels.iter().map(|l| l.area).collect();
+    let label_areas: Vec<Rect> = placed.iter().map(|l| l.area).collect();
     for band in &bands {
         band.draw(&mut canvas, &palette, &label_areas);
     }
@@ -46,8 +46,9 @@ pub fn svg(figure: &Figure, theme: Theme) -> String {
         drawing.draw(&mut canvas, &palette);
     }
     let thin = Pen { width: 1.0, dash: &[], ..palette.pen(Role::Quiet) };
-    canvas.lines(&placed.leaders, &thin);
-    for label in &placed.labels {
+    let leaders: Vec<Vec<Px>> = placed.iter().filter_map(|l| l.leader.map(|ends| ends.to_vec())).collect();
+    canvas.lines(&leaders, &thin);
+    for label in &placed {
         let x = match label.hold {
             Hold::Start => label.area.left,
             Hold::Middle => (label.area.left + label.area.right) / 2.0,
@@ -158,19 +159,14 @@ fn margins(figure: &Figure) -> Margins {
     out
 }
 
-/// The labels of a figure, and thin lines from ends to labels that had to move.
-struct Labels {
-    labels: Vec<Placed>,
-    leaders: Vec<Vec<Px>>,
-}
-
-fn place_labels(figure: &Figure, frame: &Frame, palette: &Palette, drawings: &[Drawing], bands: &[Band<'_>]) -> Labels {
-    let mut out = Labels { labels: Vec::new(), leaders: Vec::new() };
+fn place_labels(figure: &Figure, frame: &Frame, palette: &Palette, drawings: &[Drawing], bands: &[Band<'_>]) -> Vec<Placed> {
+    let mut out = Vec::new();
     let inside = frame.area.grown(-4.0);
     let mut room = Room::default();
     for (owner, drawing) in drawings.iter().enumerate() {
         room.drawn.extend(drawing.outline().into_iter().map(|p| (owner, p)));
     }
+    room.axes = frame.zero_lines().iter().flat_map(|line| walk(line, 6.0)).collect();
     label_upright_bands(frame, palette, bands, &mut out);
     label_line_ends(figure, frame, palette, drawings, &mut out);
     for layer in &figure.layers {
@@ -184,7 +180,7 @@ fn place_labels(figure: &Figure, frame: &Frame, palette: &Palette, drawings: &[D
             let area = Rect { left: x, right: x + w, top: y - h / 2.0, bottom: y + h / 2.0 };
             let area = moved_into(area, &inside);
             room.taken.push(area);
-            out.labels.push(Placed { lines, colour: palette.ink, hold: Hold::Start, area });
+            out.push(Placed { lines, colour: palette.ink, hold: Hold::Start, area, leader: None });
         }
     }
     for (owner, (layer, drawing)) in figure.layers.iter().zip(drawings).enumerate() {
@@ -206,8 +202,15 @@ fn place_labels(figure: &Figure, frame: &Frame, palette: &Palette, drawings: &[D
             _ => continue,
         };
         if !label.is_empty() {
-            let wish = Wish { owner, text: label.clone(), colour: palette.pen(role).word, gap, anchors };
-            out.labels.extend(room.place(&wish, &inside));
+            let wish = Wish {
+                owner,
+                text: label.clone(),
+                colour: palette.pen(role).word,
+                gap,
+                may_stand_off: matches!(layer, Layer::Points { .. }),
+                anchors,
+            };
+            out.extend(room.place(&wish, &inside));
         }
     }
     for (number, band) in bands.iter().enumerate().filter(|(_, b)| !b.upright && !b.label.is_empty()) {
@@ -226,9 +229,10 @@ fn place_labels(figure: &Figure, frame: &Frame, palette: &Palette, drawings: &[D
             text: band.label.to_owned(),
             colour: palette.pen(band.role).word,
             gap: 0.0,
+            may_stand_off: false,
             anchors,
         };
-        out.labels.extend(room.place(&wish, &inside));
+        out.extend(room.place(&wish, &inside));
     }
     out
 }
@@ -254,7 +258,7 @@ fn along(parts: &[Vec<Px>]) -> Vec<Anchor> {
     out
 }
 
-fn label_line_ends(figure: &Figure, frame: &Frame, palette: &Palette, drawings: &[Drawing], out: &mut Labels) {
+fn label_line_ends(figure: &Figure, frame: &Frame, palette: &Palette, drawings: &[Drawing], out: &mut Vec<Placed>) {
     let mut ends: Vec<(Px, Placed)> = Vec::new();
     for (layer, drawing) in figure.layers.iter().zip(drawings) {
         let (Layer::Line { label, role, points }, Drawing::Lines { parts, .. }) = (layer, drawing) else { continue };
@@ -266,7 +270,7 @@ fn label_line_ends(figure: &Figure, frame: &Frame, palette: &Palette, drawings: 
         let (w, h) = block(&lines, SIZE);
         let left = frame.area.right + LEADER;
         let area = Rect { left, right: left + w, top: end[1] - h / 2.0, bottom: end[1] + h / 2.0 };
-        ends.push((end, Placed { lines, colour: palette.pen(*role).word, hold: Hold::Start, area }));
+        ends.push((end, Placed { lines, colour: palette.pen(*role).word, hold: Hold::Start, area, leader: None }));
     }
     let wanted: Vec<(f64, f64)> = ends.iter().map(|(end, p)| (end[1], p.area.height() + 2.0)).collect();
     let slack = 0.6 * LINE;
@@ -275,12 +279,12 @@ fn label_line_ends(figure: &Figure, frame: &Frame, palette: &Palette, drawings: 
         let half = placed.area.height() / 2.0;
         placed.area = Rect { top: centre - half, bottom: centre + half, ..placed.area };
         let from = [end[0] + 3.0, end[1]];
-        out.leaders.push(vec![from, [placed.area.left - 4.0, centre]]);
-        out.labels.push(placed);
+        placed.leader = Some([from, [placed.area.left - 4.0, centre]]);
+        out.push(placed);
     }
 }
 
-fn label_upright_bands(frame: &Frame, palette: &Palette, bands: &[Band<'_>], out: &mut Labels) {
+fn label_upright_bands(frame: &Frame, palette: &Palette, bands: &[Band<'_>], out: &mut Vec<Placed>) {
     let mut named: Vec<&Band<'_>> = bands.iter().filter(|b| b.upright && !b.label.is_empty()).collect();
     let wide = |b: &&Band<'_>| canvas::width(b.label, SIZE) + 8.0;
     let room = frame.size.0 - 8.0 - frame.area.left;
@@ -299,11 +303,12 @@ fn label_upright_bands(frame: &Frame, palette: &Palette, bands: &[Band<'_>], out
         let half = canvas::width(band.label, SIZE) / 2.0;
         let y = frame.strip();
         let area = Rect { left: x - half, right: x + half, top: y - LINE / 2.0, bottom: y + LINE / 2.0 };
-        out.labels.push(Placed {
+        out.push(Placed {
             lines: vec![band.label.to_owned()],
             colour: palette.pen(band.role).word,
             hold: Hold::Middle,
             area,
+            leader: None,
         });
     }
 }

@@ -211,7 +211,7 @@ fn columns(out: &mut Vec<String>, rows: Vec<Vec<String>>) {
 #[cfg(test)]
 mod tests {
     use super::*;
-    use crate::show::notebook::sample;
+    use crate::show::sample;
 
     #[test]
     fn begins_with_title_and_answer_and_lines_columns_up() {

@@ -21,5 +21,5 @@ pub use made::{Components, Made, StatedInputs};
 pub use mohr::{MohrCircles, MohrInputs, MohrOutcome};
 pub use principals::{PrincipalOutcome, Principals};
 pub use regime::Regime;
-pub use stress::{SameAxes, Stress};
+pub use stress::{AddsTo, Stress};
 pub use traction::{Traction, TractionInputs, TractionOutcome};

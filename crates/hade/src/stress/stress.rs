@@ -129,19 +129,32 @@ impl Stress<Borehole> {
     }
 }
 
-/// Holds for frames whose stresses can be added with `+`: both in the geographic frame.
+/// What can be added to a stress in axes `F` with `+`: only another stress in the geographic frame,
+/// because two stresses in borehole axes may belong to different holes.
 #[diagnostic::on_unimplemented(
-    message = "stresses in different axes cannot be added: one is in `{Self}` axes, the other in `{G}` axes",
+    message = "stresses in different axes cannot be added: `{Self}` to a stress in `{F}` axes",
     label = "carry both into one frame first: `chain.carry(&s)` goes to the hole, `chain.back().carry(&sh)` comes back",
     note = "two stresses in borehole axes may belong to different holes or depths: add them with `a.try_add(&b)?`"
 )]
-pub trait SameAxes<G: Frame> {}
-impl SameAxes<Geographic> for Geographic {}
+pub trait AddsTo<F: Frame> {
+    /// The stress that is added.
+    fn stress(self) -> Stress<F>;
+}
+impl AddsTo<Geographic> for Stress<Geographic> {
+    fn stress(self) -> Stress<Geographic> {
+        self
+    }
+}
+impl AddsTo<Geographic> for &Stress<Geographic> {
+    fn stress(self) -> Stress<Geographic> {
+        *self
+    }
+}
 
-impl<F: Frame + SameAxes<G>, G: Frame> std::ops::Add<Stress<G>> for Stress<F> {
+impl<F: Frame, Other: AddsTo<F>> std::ops::Add<Other> for Stress<F> {
     type Output = Stress<F>;
-    fn add(self, other: Stress<G>) -> Stress<F> {
-        Stress::of(self.tensor.add(other.tensor), Made::Combined, None)
+    fn add(self, other: Other) -> Stress<F> {
+        Stress::of(self.tensor.add(other.stress().tensor), Made::Combined, None)
     }
 }
 

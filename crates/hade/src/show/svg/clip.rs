@@ -25,6 +25,7 @@ impl Rect {
     pub fn holds(&self, [x, y]: Px) -> bool {
         x >= self.left && x <= self.right && y >= self.top && y <= self.bottom
     }
+    #[cfg(test)]
     pub fn covers(&self, other: &Rect) -> bool {
         other.left >= self.left && other.right <= self.right && other.top >= self.top && other.bottom <= self.bottom
     }

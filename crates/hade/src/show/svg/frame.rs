@@ -113,6 +113,20 @@ impl Frame {
         if self.downward { self.area.bottom + LINE / 2.0 + 3.0 } else { self.area.top - LINE / 2.0 - 3.0 }
     }
 
+    /// The axes through zero, where zero is within the frame.
+    pub fn zero_lines(&self) -> Vec<Vec<Px>> {
+        let area = self.area;
+        let [x, y] = self.at([0.0, 0.0]);
+        let mut lines = Vec::new();
+        if y > area.top + 1.0 && y < area.bottom - 1.0 {
+            lines.push(vec![[area.left, y], [area.right, y]]);
+        }
+        if x > area.left + 1.0 && x < area.right - 1.0 {
+            lines.push(vec![[x, area.top], [x, area.bottom]]);
+        }
+        lines
+    }
+
     /// Draws the grid, which everything else stands on.
     pub fn draw_grid(&self, canvas: &mut Canvas, palette: &Palette) {
         let area = self.area;
@@ -138,13 +152,7 @@ impl Frame {
             vec![[area.left, area.top], [area.left, area.bottom]],
             vec![[area.left, edge], [area.right, edge]],
         ];
-        let [zero_x, zero_y] = self.at([0.0, 0.0]);
-        if zero_y > area.top + 1.0 && zero_y < area.bottom - 1.0 {
-            lines.push(vec![[area.left, zero_y], [area.right, zero_y]]);
-        }
-        if zero_x > area.left + 1.0 && zero_x < area.right - 1.0 {
-            lines.push(vec![[zero_x, area.top], [zero_x, area.bottom]]);
-        }
+        lines.extend(self.zero_lines());
         for (value, text) in &self.x_ticks {
             let [x, _] = self.at([*value, self.y.0]);
             lines.push(vec![[x, edge], [x, edge + 4.0 * out]]);

@@ -25,6 +25,8 @@ pub(super) struct Wish {
     pub colour: Colour,
     /// The distance kept from the anchor.
     pub gap: f64,
+    /// Whether it may stand further off, tied to its anchor by a thin line.
+    pub may_stand_off: bool,
     pub anchors: Vec<Anchor>,
 }
 
@@ -35,6 +37,8 @@ pub(super) struct Placed {
     pub colour: Colour,
     pub hold: Hold,
     pub area: Rect,
+    /// A thin line from what it names, when it stands further off.
+    pub leader: Option<[Px; 2]>,
 }
 
 /// What labels keep clear of.
@@ -42,6 +46,8 @@ pub(super) struct Placed {
 pub(super) struct Room {
     /// Places along every line, with the number of the layer.
     pub drawn: Vec<(usize, Px)>,
+    /// Places along the axes through zero.
+    pub axes: Vec<Px>,
     /// The labels that have their place.
     pub taken: Vec<Rect>,
 }
@@ -58,59 +64,91 @@ const SIDES: [(f64, f64, f64); 8] = [
     (-1.0, 1.0, 2.4),
 ];
 
+/// Distances beyond the gap at which a label may stand off, and how little it is wanted there.
+const STAND_OFF: [(f64, f64); 4] = [(0.0, 0.0), (18.0, 14.0), (40.0, 20.0), (70.0, 28.0)];
+
+/// The width at which a label is tried in more lines.
+const NARROW: f64 = 100.0;
+
 impl Room {
     /// Finds the best place for a label within the frame and takes it.
     pub fn place(&mut self, wish: &Wish, frame: &Rect) -> Option<Placed> {
-        let lines = wrap(&wish.text, SIZE, 0.5 * frame.width());
-        let (w, h) = block(&lines, SIZE);
-        let mut best: Option<(f64, Rect, Hold)> = None;
-        for anchor in &wish.anchors {
-            for (sx, sy, dislike) in SIDES {
-                let gap = if sx != 0.0 && sy != 0.0 { 0.6 * wish.gap } else { wish.gap };
-                let left = anchor.at[0] + sx * (gap + w / 2.0) - w / 2.0;
-                let top = anchor.at[1] + sy * (gap + h / 2.0) - h / 2.0;
-                let area = moved_into(Rect { left, top, right: left + w, bottom: top + h }, frame);
-                let moved = (area.left - left).hypot(area.top - top);
-                let cost = anchor.cost + dislike + 0.4 * moved + self.trouble(wish, &area);
-                if best.as_ref().is_none_or(|(least, ..)| cost < *least) {
-                    let hold = if sx > 0.0 {
-                        Hold::Start
-                    } else if sx < 0.0 {
-                        Hold::End
-                    } else {
-                        Hold::Middle
-                    };
-                    best = Some((cost, area, hold));
+        let mut shapes = vec![(wrap(&wish.text, SIZE, 0.5 * frame.width()), 0.0)];
+        let narrow = wrap(&wish.text, SIZE, NARROW);
+        if shapes.iter().all(|(lines, _)| *lines != narrow) {
+            shapes.push((narrow, 3.0));
+        }
+        let far = if wish.may_stand_off { STAND_OFF.len() } else { 1 };
+        let mut best: Option<(f64, Placed)> = None;
+        for (lines, broken) in shapes {
+            let (w, h) = block(&lines, SIZE);
+            for anchor in &wish.anchors {
+                for (off, reluctance) in STAND_OFF.iter().take(far) {
+                    for (sx, sy, dislike) in SIDES {
+                        let gap = (wish.gap + off) * if sx != 0.0 && sy != 0.0 { 0.7 } else { 1.0 };
+                        let left = anchor.at[0] + sx * (gap + w / 2.0) - w / 2.0;
+                        let top = anchor.at[1] + sy * (gap + h / 2.0) - h / 2.0;
+                        let area = moved_into(Rect { left, top, right: left + w, bottom: top + h }, frame);
+                        let moved = (area.left - left).hypot(area.top - top);
+                        let tied = *off > 0.0;
+                        let known = broken + anchor.cost + reluctance + dislike + 0.4 * moved;
+                        if best.as_ref().is_some_and(|(least, _)| known >= *least) {
+                            continue;
+                        }
+                        let cost = known + self.trouble(wish.owner, &area, tied);
+                        if best.as_ref().is_none_or(|(least, _)| cost < *least) {
+                            let hold = if sx > 0.0 {
+                                Hold::Start
+                            } else if sx < 0.0 {
+                                Hold::End
+                            } else {
+                                Hold::Middle
+                            };
+                            let leader = tied.then(|| leader(anchor.at, &area));
+                            best = Some((cost, Placed { lines: lines.clone(), colour: wish.colour, hold, area, leader }));
+                        }
+                    }
                 }
             }
         }
-        let (_, area, hold) = best?;
-        self.taken.push(area);
-        Some(Placed { lines, colour: wish.colour, hold, area })
+        let (_, placed) = best?;
+        self.taken.push(placed.area);
+        Some(placed)
     }
 
-    /// What speaks against a place: other labels, lines through it, and a line of another layer
-    /// nearer than its own.
-    fn trouble(&self, wish: &Wish, area: &Rect) -> f64 {
+    /// What speaks against a place: other labels, lines through it, and, unless it is tied to what
+    /// it names, a line of another layer nearer than its own.
+    fn trouble(&self, owner: usize, area: &Rect, tied: bool) -> f64 {
         let near = area.grown(2.0);
         let others = self.taken.iter().filter(|t| t.meets(&near)).count() as f64;
         let (mut own, mut foreign) = (f64::INFINITY, f64::INFINITY);
-        let mut crossed = 0.0;
-        for (owner, place) in &self.drawn {
-            let mine = *owner == wish.owner;
-            if near.holds(*place) {
-                crossed += if mine { 6.0 } else { 9.0 };
-            }
+        let mut crossings = 0_u32;
+        for (whose, place) in &self.drawn {
             let distance = area.distance(*place);
-            if mine {
+            crossings += u32::from(distance <= 2.0);
+            if *whose == owner {
                 own = own.min(distance);
             } else {
                 foreign = foreign.min(distance);
             }
         }
-        let doubtful = if foreign < own { 40.0 } else { (12.0 - (foreign - own)).max(0.0) };
-        400.0 * others + crossed + doubtful
+        let crossed = if crossings > 0 { 60.0 + 6.0 * f64::from(crossings) } else { 0.0 };
+        let axes = self.axes.iter().filter(|p| area.holds(**p)).count() as f64;
+        let doubtful = match foreign - own {
+            _ if tied => (8.0 - foreign).max(0.0),
+            lead if lead < 0.0 => 40.0,
+            lead => (12.0 - lead).max(0.0),
+        };
+        400.0 * others + crossed + 1.5 * axes + doubtful
     }
+}
+
+/// From beside a mark to the nearest side of its label.
+fn leader([x, y]: Px, area: &Rect) -> [Px; 2] {
+    let to = [x.clamp(area.left, area.right), y.clamp(area.top + 2.0, area.bottom - 2.0)];
+    let length = (to[0] - x).hypot(to[1] - y).max(1e-9);
+    let (ux, uy) = ((to[0] - x) / length, (to[1] - y) / length);
+    [[x + 7.0 * ux, y + 7.0 * uy], [to[0] - 2.0 * ux, to[1] - 2.0 * uy]]
 }
 
 /// A rectangle pushed inside another, as far as it fits.
@@ -190,12 +228,13 @@ mod tests {
     fn places_a_label_clear_of_lines_and_labels() {
         let frame = Rect { left: 0.0, top: 0.0, right: 300.0, bottom: 200.0 };
         let line: Vec<(usize, Px)> = (0..300).map(|x| (0, [f64::from(x), 100.0])).collect();
-        let mut room = Room { drawn: line, taken: Vec::new() };
+        let mut room = Room { drawn: line, ..Room::default() };
         let wish = |owner| Wish {
             owner,
             text: "hoop".into(),
             colour: Colour(0, 0, 0),
             gap: 6.0,
+            may_stand_off: false,
             anchors: vec![Anchor { at: [150.0, 100.0], cost: 0.0 }],
         };
         let first = room.place(&wish(0), &frame).unwrap();
