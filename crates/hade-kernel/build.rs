@@ -22,48 +22,27 @@ fn main() -> Result<(), Box<dyn Error>> {
     let workspace: Table = fs::read_to_string(root.join("Cargo.toml"))?.parse()?;
     let manifest: Table = fs::read_to_string(library.join("Cargo.toml"))?.parse()?;
     let standalone = standalone_manifest(&manifest, &workspace)?;
-    fs::write(
-        out.join("standalone.toml"),
-        toml::to_string(&standalone)?,
-    )?;
-    fs::write(
-        out.join("session.toml"),
-        toml::to_string(&session_manifest(&standalone))?,
-    )?;
+    fs::write(out.join("standalone.toml"), toml::to_string(&standalone)?)?;
+    fs::write(out.join("session.toml"), toml::to_string(&session_manifest(&standalone))?)?;
 
     let mut generated = String::from("pub(crate) static LIBRARY: &[(&str, &[u8])] = &[\n");
     for file in files_below(&library)? {
-        let name = file
-            .strip_prefix(&library)?
-            .to_string_lossy()
-            .replace('\\', "/");
+        let name = file.strip_prefix(&library)?.to_string_lossy().replace('\\', "/");
         writeln!(generated, "    ({name:?}, include_bytes!({file:?})),")?;
     }
     generated.push_str("];\n");
     let lock = root.join("Cargo.lock");
-    writeln!(
-        generated,
-        "pub(crate) static LOCK: &[u8] = include_bytes!({lock:?});"
-    )?;
+    writeln!(generated, "pub(crate) static LOCK: &[u8] = include_bytes!({lock:?});")?;
     writeln!(generated, "pub(crate) static MINISTD: &[(&str, &[u8])] = &[")?;
     let ministd = here.join("ministd");
     for file in files_below(&ministd)? {
-        let name = file
-            .strip_prefix(&ministd)?
-            .to_string_lossy()
-            .replace('\\', "/");
+        let name = file.strip_prefix(&ministd)?.to_string_lossy().replace('\\', "/");
         writeln!(generated, "    ({name:?}, include_bytes!({file:?})),")?;
     }
     generated.push_str("];\n");
     fs::write(out.join("packed.rs"), generated)?;
 
-    for watched in [
-        &library,
-        &lock,
-        &root.join("Cargo.toml"),
-        &ministd,
-        &here.join("build.rs"),
-    ] {
+    for watched in [&library, &lock, &root.join("Cargo.toml"), &ministd, &here.join("build.rs")] {
         println!("cargo::rerun-if-changed={}", watched.display());
     }
     Ok(())
@@ -76,11 +55,7 @@ fn files_below(folder: &Path) -> Result<Vec<PathBuf>, Box<dyn Error>> {
     while let Some(dir) = todo.pop() {
         for entry in fs::read_dir(&dir)? {
             let path = entry?.path();
-            let name = path
-                .file_name()
-                .unwrap_or_default()
-                .to_string_lossy()
-                .into_owned();
+            let name = path.file_name().unwrap_or_default().to_string_lossy().into_owned();
             let top = dir == folder;
             if name.starts_with('.')
                 || (top && matches!(&*name, "Cargo.toml" | "Cargo.lock" | "target" | "tests" | "benches" | "examples"))
@@ -108,10 +83,7 @@ fn standalone_manifest(manifest: &Table, workspace: &Table) -> Result<Table, Box
     let mut package = table(manifest.get("package")).ok_or("no [package] in crates/hade")?;
     for (key, value) in package.iter_mut() {
         if value.get("workspace").is_some() {
-            *value = package_defaults
-                .get(key)
-                .ok_or_else(|| format!("workspace.package has no {key}"))?
-                .clone();
+            *value = package_defaults.get(key).ok_or_else(|| format!("workspace.package has no {key}"))?.clone();
         }
     }
     package.remove("build");
@@ -119,9 +91,7 @@ fn standalone_manifest(manifest: &Table, workspace: &Table) -> Result<Table, Box
     let mut dependencies = Table::new();
     for (name, local) in table(manifest.get("dependencies")).unwrap_or_default() {
         let resolved = if local.get("workspace").is_some() {
-            let base = versions
-                .get(&name)
-                .ok_or_else(|| format!("workspace.dependencies has no {name}"))?;
+            let base = versions.get(&name).ok_or_else(|| format!("workspace.dependencies has no {name}"))?;
             merged(base, &local)
         } else {
             local
@@ -168,9 +138,6 @@ fn session_manifest(standalone: &Table) -> Table {
     out.insert("dependencies".into(), Value::Table(Table::new()));
     out.remove("features");
     let kind = Value::Array(vec![Value::String("dylib".into())]);
-    out.insert(
-        "lib".into(),
-        Value::Table(Table::from_iter([("crate-type".to_owned(), kind)])),
-    );
+    out.insert("lib".into(), Value::Table(Table::from_iter([("crate-type".to_owned(), kind)])));
     out
 }

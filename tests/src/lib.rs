@@ -78,6 +78,30 @@ pub fn assert_printed(what: &str, got: f64, printed: &str) {
     assert!(agree(got, want, half * (1.0 + 1e-9)), "{what}: got {got}, printed {printed}");
 }
 
+/// The `hade` command as this build made it, beside the test's own executable.
+pub fn hade_binary() -> PathBuf {
+    let own = std::env::current_exe().expect("the test's own path");
+    let folder = own.ancestors().nth(2).expect("the build folder");
+    let binary = folder.join(format!("hade{}", std::env::consts::EXE_SUFFIX));
+    assert!(binary.is_file(), "{} is missing: run `cargo test --release` from the workspace's root", binary.display());
+    binary
+}
+
+/// The workspace's root.
+pub fn root() -> PathBuf {
+    PathBuf::from(env!("CARGO_MANIFEST_DIR")).parent().expect("the workspace").to_owned()
+}
+
+/// Whether a tool that reads PDFs is here. Where `HADE_REQUIRE_PDF_TOOLS` is set it must be.
+pub fn tool(name: &str) -> bool {
+    let here = std::process::Command::new(name).arg("--version").output().is_ok();
+    if !here {
+        assert!(std::env::var_os("HADE_REQUIRE_PDF_TOOLS").is_none(), "{name} is required and not here");
+        eprintln!("SKIPPED a part: {name} is not installed");
+    }
+    here
+}
+
 #[cfg(test)]
 mod tests {
     use super::*;

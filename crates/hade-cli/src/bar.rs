@@ -19,11 +19,7 @@ impl Bar {
     pub fn new() -> Bar {
         let bar = ProgressBar::new_spinner();
         bar.set_style(style("{spinner} {msg}"));
-        Bar {
-            bar,
-            live: std::io::stderr().is_terminal(),
-            said: String::new(),
-        }
+        Bar { bar, live: std::io::stderr().is_terminal(), said: String::new() }
     }
 
     /// Shows a message of the caller's own.
@@ -77,11 +73,7 @@ impl Progress for Bar {
             Step::Library => self.say("compiling hade for notebooks (once for this version)"),
             Step::Waiting => self.say("another hade is preparing the libraries; waiting for it"),
             Step::Starting => self.say("starting a session"),
-            Step::Cell {
-                number,
-                of,
-                first_line,
-            } => {
+            Step::Cell { number, of, first_line } => {
                 let line = format!("cell {number} of {of}: {}", shortened(first_line));
                 self.count(number - 1, of, &line, &line);
                 if self.live {

@@ -34,11 +34,7 @@ pub(crate) fn run(args: &KernelArgs) -> Result<(), Failure> {
         }
         KernelCommand::Clean => {
             let report = hade_kernel::clean()?;
-            eprintln!(
-                "removed {:.0} MB from {}",
-                report.bytes as f64 / 1e6,
-                report.folder.display()
-            );
+            eprintln!("removed {:.0} MB from {}", report.bytes as f64 / 1e6, report.folder.display());
         }
     }
     Ok(())

@@ -12,7 +12,7 @@ pub use bar::Bar;
 
 /// Stress in rock: notebooks that explain themselves, and the memo made from them.
 #[derive(Debug, Parser)]
-#[command(name = "hade", version, about, propagate_version = true)]
+#[command(name = "hade", version, propagate_version = true)]
 struct Cli {
     #[command(subcommand)]
     command: Command,

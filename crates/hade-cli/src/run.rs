@@ -1,13 +1,13 @@
 //! `hade run`: a notebook from top to bottom, outputs written back.
 
-use std::path::PathBuf;
+use std::path::{Path, PathBuf};
 use std::time::{Duration, Instant};
 
 use clap::Args;
 use hade_kernel::{NotebookRun, RunOptions, run_notebook};
 
-use crate::bar::Bar;
 use crate::Failure;
+use crate::bar::Bar;
 
 /// Arguments of `hade run`.
 #[derive(Debug, Args)]
@@ -28,11 +28,11 @@ pub struct RunArgs {
 /// Runs the notebook and writes it.
 pub(crate) fn run(args: &RunArgs) -> Result<(), Failure> {
     let started = Instant::now();
+    if let Some(target) = &args.output {
+        check_target(target)?;
+    }
     let mut bar = Bar::new();
-    let options = RunOptions {
-        cell_timeout: args.cell_timeout,
-        allow_errors: args.allow_errors,
-    };
+    let options = RunOptions { cell_timeout: args.cell_timeout, allow_errors: args.allow_errors };
     let run = run_notebook(&args.notebook, &options, &mut bar);
     bar.clear();
     let run = run?;
@@ -41,12 +41,22 @@ pub(crate) fn run(args: &RunArgs) -> Result<(), Failure> {
     if run.failure().is_some() {
         return Err(failures(&run, &target.display().to_string()).into());
     }
-    eprintln!(
-        "{}: {} cells in {:.1} s",
-        target.display(),
-        run.cells.len(),
-        started.elapsed().as_secs_f64()
-    );
+    eprintln!("{}: {} cells in {:.1} s", target.display(), run.cells.len(), started.elapsed().as_secs_f64());
+    Ok(())
+}
+
+/// Says before anything runs that the result could not be written.
+fn check_target(target: &Path) -> Result<(), Failure> {
+    let folder = match target.parent() {
+        Some(folder) if !folder.as_os_str().is_empty() => folder,
+        _ => Path::new("."),
+    };
+    if !folder.is_dir() {
+        return Err(format!("the folder {} does not exist; make it first", folder.display()).into());
+    }
+    if target.is_dir() {
+        return Err(format!("{} is a folder; give the name of a file", target.display()).into());
+    }
     Ok(())
 }
 
@@ -57,10 +67,7 @@ fn failures(run: &NotebookRun, target: &str) -> String {
         let Some(error) = &cell.outcome.error else {
             continue;
         };
-        let failure = hade_kernel::NotebookFailure {
-            number: cell.number,
-            error: error.clone(),
-        };
+        let failure = hade_kernel::NotebookFailure { number: cell.number, error: error.clone() };
         message.push_str(&format!("{failure}\n"));
         if error.detail.trim() != error.sentence {
             for line in error.detail.lines() {
@@ -70,14 +77,14 @@ fn failures(run: &NotebookRun, target: &str) -> String {
     }
     let all = run.notebook.code_cells().len();
     if run.cells.len() < all {
-        message.push_str(&format!(
-            "The {} cells after it were not run. ",
-            all - run.cells.len()
-        ));
+        let left = match all - run.cells.len() {
+            1 => "The cell after it was".to_owned(),
+            more => format!("The {more} cells after it were"),
+        };
+        message.push_str(&left);
+        message.push_str(" not run. ");
     }
-    message.push_str(&format!(
-        "Correct the cell and run again; what ran is in {target}."
-    ));
+    message.push_str(&format!("Correct the cell and run again; what ran is in {target}."));
     message
 }
 

@@ -10,8 +10,12 @@ use crate::progress::{Progress, Step};
 /// Overrides the place of the cache folder.
 const CACHE_VAR: &str = "HADE_CACHE";
 
-/// Written last; a folder without it is not whole and is made anew.
+/// Written last; a folder without it is not whole and is made anew. It holds the folder's own
+/// path: what is compiled does not survive a move.
 const STAMP: &str = "complete";
+
+/// Held (shared) by every running session.
+const IN_USE: &str = "in-use";
 
 /// The folder with everything that is compiled once: `$HADE_CACHE`, or `hade` in the user's cache
 /// folder.
@@ -45,12 +49,16 @@ pub struct CacheReport {
 /// Removes everything in the cache folder; the next session makes it anew.
 ///
 /// # Errors
-/// [`Error::File`] if something in it cannot be removed.
+/// [`Error::Busy`] if a session is running, [`Error::File`] if something cannot be removed.
 pub fn clean() -> Result<CacheReport> {
     let folder = cache_folder()?;
     let bytes = size_of(&folder);
     if folder.is_dir() {
         let _lock = lock(&folder, &mut crate::progress::Silent)?;
+        let in_use = open(&folder.join(IN_USE))?;
+        if in_use.try_lock().is_err() {
+            return Err(Error::Busy { path: folder });
+        }
         for entry in fs::read_dir(&folder).map_err(Error::file("read", &folder))? {
             let path = entry.map_err(Error::file("read", &folder))?.path();
             // Only what this program makes: the variable may name a folder with other things.
@@ -87,12 +95,7 @@ fn size_of(path: &Path) -> u64 {
 pub(crate) fn lock(cache: &Path, progress: &mut dyn Progress) -> Result<File> {
     fs::create_dir_all(cache).map_err(Error::file("make the folder", cache))?;
     let path = cache.join("lock");
-    let file = OpenOptions::new()
-        .create(true)
-        .truncate(false)
-        .write(true)
-        .open(&path)
-        .map_err(Error::file("open", &path))?;
+    let file = open(&path)?;
     match file.try_lock() {
         Ok(()) => return Ok(file),
         Err(TryLockError::WouldBlock) => progress.step(Step::Waiting),
@@ -102,9 +105,21 @@ pub(crate) fn lock(cache: &Path, progress: &mut dyn Progress) -> Result<File> {
     Ok(file)
 }
 
-/// Whether a folder of the cache was finished.
+/// Says that a session uses the cache until the returned file is dropped.
+pub(crate) fn hold(cache: &Path) -> Result<File> {
+    let path = cache.join(IN_USE);
+    let file = open(&path)?;
+    file.lock_shared().map_err(Error::file("lock", &path))?;
+    Ok(file)
+}
+
+fn open(path: &Path) -> Result<File> {
+    OpenOptions::new().create(true).truncate(false).write(true).open(path).map_err(Error::file("open", path))
+}
+
+/// Whether a folder of the cache was finished, at the place where it is.
 pub(crate) fn is_whole(folder: &Path) -> bool {
-    folder.join(STAMP).is_file()
+    fs::read(folder.join(STAMP)).is_ok_and(|place| place == folder.as_os_str().as_encoded_bytes())
 }
 
 /// Removes what an earlier process left unfinished and makes the folder.
@@ -122,8 +137,8 @@ pub(crate) fn begin(folder: &Path) -> Result<()> {
 pub(crate) fn finish(folder: &Path) -> Result<()> {
     let aside = folder.join("complete.part");
     let write = || -> io::Result<()> {
-        let file = File::create(&aside)?;
-        file.sync_all()?;
+        fs::write(&aside, folder.as_os_str().as_encoded_bytes())?;
+        File::open(&aside)?.sync_all()?;
         fs::rename(&aside, folder.join(STAMP))
     };
     write().map_err(Error::file("write", folder.join(STAMP)))
@@ -142,10 +157,7 @@ pub(crate) fn copy_folder(from: &Path, to: &Path) -> Result<()> {
         } else if meta.is_file() {
             let copy = || -> io::Result<()> {
                 fs::copy(&source, &target)?;
-                OpenOptions::new()
-                    .write(true)
-                    .open(&target)?
-                    .set_modified(meta.modified()?)
+                OpenOptions::new().write(true).open(&target)?.set_modified(meta.modified()?)
             };
             copy().map_err(Error::file("copy", &source))?;
         }
@@ -168,6 +180,9 @@ mod tests {
         assert!(!folder.join("half").exists());
         finish(&folder)?;
         assert!(is_whole(&folder));
+        let moved = dir.path().join("session-y");
+        fs::rename(&folder, &moved).map_err(Error::file("move", &folder))?;
+        assert!(!is_whole(&moved));
         Ok(())
     }
 

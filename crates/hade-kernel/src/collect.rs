@@ -33,8 +33,7 @@ impl Gathered {
             Record::Out(text) => self.text(Stream::Stdout, &text),
             Record::Err(text) => self.text(Stream::Stderr, &text),
             Record::Show(bundle) => {
-                let unit = bundle.len() == 1
-                    && bundle.get("text/plain").is_some_and(|text| text.trim() == "()");
+                let unit = bundle.len() == 1 && bundle.get("text/plain").is_some_and(|text| text.trim() == "()");
                 if !unit {
                     self.outputs.push(Output::Display(bundle));
                 }
@@ -52,20 +51,14 @@ impl Gathered {
     fn text(&mut self, stream: Stream, more: &str) {
         match self.outputs.last_mut() {
             Some(Output::Text { stream: last, text }) if *last == stream => text.push_str(more),
-            _ => self.outputs.push(Output::Text {
-                stream,
-                text: more.to_owned(),
-            }),
+            _ => self.outputs.push(Output::Text { stream, text: more.to_owned() }),
         }
     }
 
     /// The standard error text at the end of the outputs; it becomes the message.
     fn last_words(&mut self) -> String {
         match self.outputs.pop() {
-            Some(Output::Text {
-                stream: Stream::Stderr,
-                text,
-            }) => text.trim_end().to_owned(),
+            Some(Output::Text { stream: Stream::Stderr, text }) => text.trim_end().to_owned(),
             Some(other) => {
                 self.outputs.push(other);
                 String::new()
@@ -89,8 +82,7 @@ impl Collector {
         let out = Arc::clone(&shared);
         thread::spawn(move || {
             for line in stdout {
-                let record =
-                    Record::from_line(&line).unwrap_or_else(|| Record::Out(format!("{line}\n")));
+                let record = Record::from_line(&line).unwrap_or_else(|| Record::Out(format!("{line}\n")));
                 lock(&out.0).take(record);
                 out.1.notify_all();
             }
@@ -101,10 +93,7 @@ impl Collector {
                 lock(&err.0).take(Record::Err(format!("{line}\n")));
             }
         });
-        Collector {
-            shared,
-            nothing_waits: Box::new(move || waiting.is_empty()),
-        }
+        Collector { shared, nothing_waits: Box::new(move || waiting.is_empty()) }
     }
 
     /// What has come since the last call, once the cell's last record is in. A cell whose process
@@ -157,10 +146,7 @@ mod tests {
     #[test]
     fn a_unit_value_is_not_shown() {
         let mut gathered = Gathered::default();
-        gathered.take(Record::Show(BTreeMap::from([(
-            "text/plain".to_owned(),
-            "()".to_owned(),
-        )])));
+        gathered.take(Record::Show(BTreeMap::from([("text/plain".to_owned(), "()".to_owned())])));
         assert!(gathered.outputs.is_empty());
     }
 }

@@ -12,17 +12,12 @@ const MOST: usize = 8;
 
 /// One error for everything the compiler said about a cell.
 pub(crate) fn render(errors: &[CompilationError], cell: &str) -> CellError {
-    let engine_words = errors
-        .iter()
-        .any(|error| error.message().contains("evcxr_") || error.message().contains("<end of input>"));
+    let engine_words =
+        errors.iter().any(|error| error.message().contains("evcxr_") || error.message().contains("<end of input>"));
     if engine_words && let Some((line, what)) = syntax::outline(cell).problem {
         return unreadable(line, &what, cell);
     }
-    let shown: Vec<&CompilationError> = errors
-        .iter()
-        .filter(|error| error.level() == "error")
-        .take(MOST)
-        .collect();
+    let shown: Vec<&CompilationError> = errors.iter().filter(|error| error.level() == "error").take(MOST).collect();
     let Some(first) = shown.first() else {
         return CellError {
             name: "CompileError".to_owned(),
@@ -43,10 +38,7 @@ pub(crate) fn render(errors: &[CompilationError], cell: &str) -> CellError {
         name: first.code().unwrap_or("CompileError").to_owned(),
         sentence: one_line(&first.message()),
         detail: detail.trim_end().to_owned(),
-        line: first
-            .primary_spanned_message()
-            .and_then(|message| message.span)
-            .map(|span| span.start_line),
+        line: first.primary_spanned_message().and_then(|message| message.span).map(|span| span.start_line),
     }
 }
 

@@ -37,8 +37,22 @@ pub enum Error {
         /// The format it declares.
         found: String,
     },
+    /// The notebook's file was changed while its cells ran.
+    #[error("{} was changed by another program while its cells ran, so nothing was written over it; run again, or write elsewhere with -o", path.display())]
+    Changed {
+        /// The file.
+        path: PathBuf,
+    },
+    /// The cache is in use.
+    #[error("a notebook is running with the libraries in {}; wait for it to end and try again", path.display())]
+    Busy {
+        /// The cache folder.
+        path: PathBuf,
+    },
     /// `cargo` or `rustc` is missing or does not answer.
-    #[error("{tool} was not found or does not run ({why}); a notebook session compiles its cells with it. Install Rust from https://rustup.rs and try again")]
+    #[error(
+        "{tool} was not found or does not run ({why}); a notebook session compiles its cells with it. Install Rust from https://rustup.rs and try again"
+    )]
     Toolchain {
         /// The program.
         tool: &'static str,
@@ -66,11 +80,7 @@ impl Error {
     /// A [`Error::File`] from an I/O error: `.map_err(Error::file("read", &path))`.
     pub(crate) fn file(doing: &'static str, path: impl AsRef<Path>) -> impl FnOnce(io::Error) -> Error {
         let path = path.as_ref().to_path_buf();
-        move |source| Error::File {
-            doing,
-            path,
-            source,
-        }
+        move |source| Error::File { doing, path, source }
     }
 }
 

@@ -143,18 +143,11 @@ fn pipe() -> io::Result<Pipe> {
     let mut ends = [0; 2];
     // SAFETY: the array has room for the two descriptors.
     check(unsafe { libc::pipe(ends.as_mut_ptr()) })?;
-    Ok(Pipe {
-        read: ends[0],
-        write: ends[1],
-    })
+    Ok(Pipe { read: ends[0], write: ends[1] })
 }
 
 fn port(fd: c_int, open: bool, events: i16) -> libc::pollfd {
-    libc::pollfd {
-        fd: if open { fd } else { -1 },
-        events,
-        revents: 0,
-    }
+    libc::pollfd { fd: if open { fd } else { -1 }, events, revents: 0 }
 }
 
 fn close(fd: c_int) {
@@ -163,11 +156,7 @@ fn close(fd: c_int) {
 }
 
 fn check(result: c_int) -> io::Result<c_int> {
-    if result < 0 {
-        Err(io::Error::last_os_error())
-    } else {
-        Ok(result)
-    }
+    if result < 0 { Err(io::Error::last_os_error()) } else { Ok(result) }
 }
 
 /// `None` if there is nothing to read now, `Some(0)` at the end.

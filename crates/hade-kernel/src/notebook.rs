@@ -18,6 +18,8 @@ use crate::error::{Error, Result};
 pub struct Notebook {
     path: PathBuf,
     json: Value,
+    /// The file as it was read, to see whether someone else writes it meanwhile.
+    read: Vec<u8>,
 }
 
 impl Notebook {
@@ -41,21 +43,19 @@ impl Notebook {
     /// As [`Notebook::read`].
     pub fn from_bytes(path: impl AsRef<Path>, bytes: &[u8]) -> Result<Notebook> {
         let path = path.as_ref();
+        let read = bytes.to_vec();
         let bytes = bytes.strip_prefix(b"\xef\xbb\xbf").unwrap_or(bytes);
         if bytes.iter().all(u8::is_ascii_whitespace) {
             return Err(not_one(path, "it is empty"));
         }
-        let mut json: Value = serde_json::from_slice(bytes)
-            .map_err(|error| not_one(path, &format!("it is not JSON ({error})")))?;
+        let mut json: Value =
+            serde_json::from_slice(bytes).map_err(|error| not_one(path, &format!("it is not JSON ({error})")))?;
         let format = &json["nbformat"];
         if format.is_null() || !json.is_object() {
             return Err(not_one(path, "it is JSON without the key \"nbformat\""));
         }
         if format.as_u64() != Some(4) {
-            return Err(Error::NotebookVersion {
-                path: path.to_path_buf(),
-                found: format.to_string(),
-            });
+            return Err(Error::NotebookVersion { path: path.to_path_buf(), found: format.to_string() });
         }
         let Some(cells) = json["cells"].as_array_mut() else {
             return Err(not_one(path, "it has no list of cells"));
@@ -78,10 +78,7 @@ impl Notebook {
         if !json["nbformat_minor"].is_u64() {
             json["nbformat_minor"] = json!(0);
         }
-        Ok(Notebook {
-            path: path.to_path_buf(),
-            json,
-        })
+        Ok(Notebook { path: path.to_path_buf(), json, read })
     }
 
     /// The file it was read from.
@@ -157,9 +154,7 @@ impl Notebook {
         let mut bytes = Vec::new();
         let layout = serde_json::ser::PrettyFormatter::with_indent(b" ");
         let mut serializer = serde_json::Serializer::with_formatter(&mut bytes, layout);
-        self.json
-            .serialize(&mut serializer)
-            .map_err(|error| Error::file("write", &self.path)(error.into()))?;
+        self.json.serialize(&mut serializer).map_err(|error| Error::file("write", &self.path)(error.into()))?;
         bytes.push(b'\n');
         Ok(bytes)
     }
@@ -168,10 +163,15 @@ impl Notebook {
     /// written.
     ///
     /// # Errors
-    /// [`Error::File`] if the folder is missing, not writable or full; the target is unchanged.
+    /// [`Error::File`] if the folder is missing, not writable or full, [`Error::Changed`] if the
+    /// target is the file that was read and is another now; the target is unchanged.
     pub fn save(&self, target: impl AsRef<Path>) -> Result<()> {
         let target = target.as_ref();
         let bytes = self.to_bytes()?;
+        let itself = same_file(target, &self.path);
+        if itself && fs::read(target).is_ok_and(|now| now != self.read) {
+            return Err(Error::Changed { path: target.to_path_buf() });
+        }
         // A link stays a link: what it points to is replaced.
         let target = fs::canonicalize(target).unwrap_or_else(|_| target.to_path_buf());
         let folder = match target.parent() {
@@ -179,10 +179,7 @@ impl Notebook {
             _ => Path::new("."),
         };
         let write = || -> std::io::Result<()> {
-            let mut aside = tempfile::Builder::new()
-                .prefix(".hade-")
-                .suffix(".part")
-                .tempfile_in(folder)?;
+            let mut aside = tempfile::Builder::new().prefix(".hade-").suffix(".part").tempfile_in(folder)?;
             aside.write_all(&bytes)?;
             aside.as_file().sync_all()?;
             let permissions = match fs::metadata(&target) {
@@ -199,6 +196,10 @@ impl Notebook {
     }
 }
 
+fn same_file(a: &Path, b: &Path) -> bool {
+    matches!((fs::canonicalize(a), fs::canonicalize(b)), (Ok(a), Ok(b)) if a == b)
+}
+
 /// A temporary file is private to its owner; a notebook is an ordinary file.
 #[cfg(unix)]
 fn default_permissions() -> Option<fs::Permissions> {
@@ -212,10 +213,7 @@ fn default_permissions() -> Option<fs::Permissions> {
 }
 
 fn not_one(path: &Path, why: &str) -> Error {
-    Error::NotANotebook {
-        path: path.to_path_buf(),
-        why: why.to_owned(),
-    }
+    Error::NotANotebook { path: path.to_path_buf(), why: why.to_owned() }
 }
 
 fn source(cell: &Value) -> Option<String> {
@@ -251,10 +249,8 @@ fn outputs(outcome: &CellOutcome, count: usize) -> Vec<Value> {
                 "text": lines(text),
             }),
             Output::Display(bundle) => {
-                let data: Map<String, Value> = bundle
-                    .iter()
-                    .map(|(mime, content)| (mime.clone(), content_value(mime, content)))
-                    .collect();
+                let data: Map<String, Value> =
+                    bundle.iter().map(|(mime, content)| (mime.clone(), content_value(mime, content))).collect();
                 // The value a cell ends in is its result where it is text alone; anything richer
                 // is a display, which every client shows.
                 let plain = data.len() == 1 && data.contains_key("text/plain");
@@ -317,10 +313,7 @@ mod tests {
     fn outcome() -> CellOutcome {
         CellOutcome {
             outputs: vec![
-                Output::Text {
-                    stream: Stream::Stdout,
-                    text: "a\nb".into(),
-                },
+                Output::Text { stream: Stream::Stdout, text: "a\nb".into() },
                 Output::Display(BTreeMap::from([
                     ("text/html".into(), "<b>".into()),
                     (crate::RECORD_MIME.into(), "{\"x\":0.1}".into()),
@@ -354,17 +347,13 @@ mod tests {
     fn a_filled_notebook_is_one_for_another_reader() -> Result<()> {
         let mut notebook = Notebook::from_bytes("a.ipynb", SMALL.as_bytes())?;
         let mut failed = outcome();
-        failed.error = Some(CellError {
-            name: "Panic".into(),
-            sentence: "no".into(),
-            detail: "no\nnever".into(),
-            line: Some(1),
-        });
+        failed.error =
+            Some(CellError { name: "Panic".into(), sentence: "no".into(), detail: "no\nnever".into(), line: Some(1) });
         notebook.set_outcome(1, 1, &failed);
         let text = String::from_utf8_lossy(&notebook.to_bytes()?).into_owned();
         assert!(text.ends_with("}\n") && text.starts_with("{\n \""));
         assert!(nbformat::parse_notebook(&text).is_ok());
-        assert_eq!(Notebook::from_bytes("a.ipynb", text.as_bytes())?, notebook);
+        assert_eq!(Notebook::from_bytes("a.ipynb", text.as_bytes())?.json, notebook.json);
         Ok(())
     }
 
@@ -395,7 +384,11 @@ mod tests {
         fs::write(&path, SMALL)?;
         let notebook = Notebook::read(&path).map_err(std::io::Error::other)?;
         notebook.save(&path).map_err(std::io::Error::other)?;
-        assert_eq!(Notebook::read(&path).ok(), Some(notebook.clone()));
+        let again = Notebook::read(&path).map_err(std::io::Error::other)?;
+        assert_eq!(again.json, notebook.json);
+        fs::write(&path, "someone else's")?;
+        assert!(matches!(again.save(&path), Err(Error::Changed { .. })));
+        assert_eq!(fs::read(&path)?, b"someone else's");
         assert_eq!(fs::read_dir(dir.path())?.count(), 1);
         assert!(notebook.save(dir.path().join("none/a.ipynb")).is_err());
         Ok(())

@@ -12,26 +12,12 @@ pub(crate) fn stopped(stop: Stop, crate_folder: &Path, cell: &str) -> CellError 
     match stop {
         Stop::Early(words) => {
             let sentence = first_line(&words, "the cell ended early with an error that says nothing");
-            CellError {
-                name: "Error".to_owned(),
-                sentence,
-                detail: words,
-                line: source_map::only_question_mark(cell),
-            }
+            CellError { name: "Error".to_owned(), sentence, detail: words, line: source_map::only_question_mark(cell) }
         }
         Stop::Panic(words) => {
             let (message, line) = source_map::panic(&words, crate_folder, cell);
-            let message = if message.is_empty() {
-                "the cell panicked".to_owned()
-            } else {
-                message
-            };
-            CellError {
-                name: "Panic".to_owned(),
-                sentence: first_line(&message, ""),
-                detail: message,
-                line,
-            }
+            let message = if message.is_empty() { "the cell panicked".to_owned() } else { message };
+            CellError { name: "Panic".to_owned(), sentence: first_line(&message, ""), detail: message, line }
         }
     }
 }
@@ -42,16 +28,8 @@ pub(crate) fn failed(error: &evcxr::Error, cell: &str, before: &[String], output
         evcxr::Error::CompilationErrors(errors) => compile_error::render(errors, cell),
         evcxr::Error::SubprocessTerminated(words) => died(words, before, outputs),
         evcxr::Error::TypeRedefinedVariablesLost(names) => {
-            let sentence = format!(
-                "a type was defined anew, so these variables are lost: {}",
-                names.join(", ")
-            );
-            CellError {
-                name: "CompileError".to_owned(),
-                detail: sentence.clone(),
-                sentence,
-                line: None,
-            }
+            let sentence = format!("a type was defined anew, so these variables are lost: {}", names.join(", "));
+            CellError { name: "CompileError".to_owned(), detail: sentence.clone(), sentence, line: None }
         }
         evcxr::Error::Message(words) => CellError {
             name: "CompileError".to_owned(),
@@ -80,21 +58,13 @@ fn died(words: &str, before: &[String], outputs: &mut Vec<Output>) -> CellError 
         format!("the process of the cells ended unexpectedly ({said})")
     };
     let detail = format!("{what}.{}", lost(before));
-    CellError {
-        name: "ProcessDied".to_owned(),
-        sentence: what,
-        detail,
-        line: None,
-    }
+    CellError { name: "ProcessDied".to_owned(), sentence: what, detail, line: None }
 }
 
 /// Takes the engine's own backtrace away; whether there was one.
 fn cut_backtrace(outputs: &mut Vec<Output>) -> bool {
     for at in 0..outputs.len() {
-        if let Some(Output::Text {
-            stream: Stream::Stderr,
-            text,
-        }) = outputs.get_mut(at)
+        if let Some(Output::Text { stream: Stream::Stderr, text }) = outputs.get_mut(at)
             && let Some(start) = ["Segmentation fault.\n", "Bus error.\n", "Illegal instruction.\n"]
                 .iter()
                 .find_map(|words| text.find(words))
@@ -114,12 +84,7 @@ pub(crate) fn timeout(limit: Duration, before: &[String]) -> CellError {
         "stopped after {} s; allow more with --cell-timeout, or look for a loop without end",
         limit.as_secs_f64()
     );
-    CellError {
-        name: "Timeout".to_owned(),
-        detail: format!("{sentence}.{}", lost(before)),
-        sentence,
-        line: None,
-    }
+    CellError { name: "Timeout".to_owned(), detail: format!("{sentence}.{}", lost(before)), sentence, line: None }
 }
 
 /// Variables whose types cannot be kept between cells.
@@ -130,10 +95,7 @@ pub(crate) fn unstorable(variables: &[(String, String)]) -> CellError {
         names.join(", "),
         if names.len() == 1 { "it is" } else { "they are" }
     );
-    let types: Vec<String> = variables
-        .iter()
-        .map(|(name, kind)| format!("  {name}: {kind}"))
-        .collect();
+    let types: Vec<String> = variables.iter().map(|(name, kind)| format!("  {name}: {kind}")).collect();
     CellError {
         name: "CompileError".to_owned(),
         detail: format!("{sentence}.\n{}", types.join("\n")),
@@ -145,29 +107,15 @@ pub(crate) fn unstorable(variables: &[(String, String)]) -> CellError {
 /// The engine itself failed.
 pub(crate) fn engine_failed() -> CellError {
     let sentence = "the notebook engine failed on this cell; try to write it in smaller steps";
-    CellError {
-        name: "EngineError".to_owned(),
-        sentence: sentence.to_owned(),
-        detail: sentence.to_owned(),
-        line: None,
-    }
+    CellError { name: "EngineError".to_owned(), sentence: sentence.to_owned(), detail: sentence.to_owned(), line: None }
 }
 
 fn lost(before: &[String]) -> String {
-    if before.is_empty() {
-        String::new()
-    } else {
-        format!(" All variables are lost: {}.", before.join(", "))
-    }
+    if before.is_empty() { String::new() } else { format!(" All variables are lost: {}.", before.join(", ")) }
 }
 
 fn first_line(words: &str, otherwise: &str) -> String {
-    words
-        .lines()
-        .map(str::trim)
-        .find(|line| !line.is_empty())
-        .unwrap_or(otherwise)
-        .to_owned()
+    words.lines().map(str::trim).find(|line| !line.is_empty()).unwrap_or(otherwise).to_owned()
 }
 
 #[cfg(test)]
@@ -185,17 +133,9 @@ mod tests {
 
     #[test]
     fn a_backtrace_is_cut() {
-        let mut outputs = vec![Output::Text {
-            stream: Stream::Stderr,
-            text: "mine\nSegmentation fault.\n   0: frames".to_owned(),
-        }];
+        let mut outputs =
+            vec![Output::Text { stream: Stream::Stderr, text: "mine\nSegmentation fault.\n   0: frames".to_owned() }];
         assert!(cut_backtrace(&mut outputs));
-        assert_eq!(
-            outputs,
-            [Output::Text {
-                stream: Stream::Stderr,
-                text: "mine\n".to_owned()
-            }]
-        );
+        assert_eq!(outputs, [Output::Text { stream: Stream::Stderr, text: "mine\n".to_owned() }]);
     }
 }

@@ -20,19 +20,12 @@ pub(crate) fn hash<'a>(pieces: impl IntoIterator<Item = &'a [u8]>) -> String {
         hasher.update((piece.len() as u64).to_le_bytes());
         hasher.update(piece);
     }
-    hasher
-        .finalize()
-        .iter()
-        .take(10)
-        .map(|byte| format!("{byte:02x}"))
-        .collect()
+    hasher.finalize().iter().take(10).map(|byte| format!("{byte:02x}")).collect()
 }
 
 /// The pieces of a packed folder, for [`hash`].
-pub(crate) fn pieces(files: &'static [(&str, &[u8])]) -> impl Iterator<Item = &'static [u8]> {
-    files
-        .iter()
-        .flat_map(|(name, content)| [name.as_bytes(), content])
+pub(crate) fn pieces<'a>(files: &'a [(&str, &[u8])]) -> impl Iterator<Item = &'a [u8]> {
+    files.iter().flat_map(|(name, content)| [name.as_bytes(), content])
 }
 
 /// Writes a packed folder out.

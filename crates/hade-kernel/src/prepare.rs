@@ -21,6 +21,11 @@ pub struct Prepared {
 }
 
 impl Prepared {
+    /// The cache folder.
+    pub(crate) fn cache(&self) -> &Path {
+        self.folder.parent().unwrap_or(&self.folder)
+    }
+
     /// The source of `hade` with the session manifest.
     pub(crate) fn library(&self) -> PathBuf {
         self.folder.join("hade")
@@ -64,9 +69,7 @@ pub fn prepare(progress: &mut dyn Progress) -> Result<Prepared> {
             .chain(packed::pieces(packed::LIBRARY))
             .chain(packed::pieces(packed::MINISTD)),
     );
-    let prepared = Prepared {
-        folder: cache.join(format!("session-{session_key}")),
-    };
+    let prepared = Prepared { folder: cache.join(format!("session-{session_key}")) };
     let whole = || cache::is_whole(&libraries) && cache::is_whole(&prepared.folder);
     if whole() {
         return Ok(prepared);
@@ -85,9 +88,7 @@ pub fn prepare(progress: &mut dyn Progress) -> Result<Prepared> {
 
 fn compile_library(prepared: &Prepared, libraries: &Path) -> Result<()> {
     cache::begin(&prepared.folder)?;
-    let write = |path: PathBuf, content: &[u8]| {
-        fs::write(&path, content).map_err(Error::file("write", &path))
-    };
+    let write = |path: PathBuf, content: &[u8]| fs::write(&path, content).map_err(Error::file("write", &path));
     let library = prepared.library();
     packed::unpack(packed::LIBRARY, &library).map_err(Error::file("write", &library))?;
     write(library.join("Cargo.toml"), packed::SESSION.as_bytes())?;

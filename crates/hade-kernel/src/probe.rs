@@ -47,11 +47,7 @@ pub(crate) fn ask(context: &mut CommandContext, crate_folder: &Path, cell: &str)
     }
     let checked = context.check(&question(cell, &outline));
     let _ = fs::remove_file(&flag);
-    let messages: Vec<String> = checked
-        .unwrap_or_default()
-        .iter()
-        .map(evcxr::CompilationError::message)
-        .collect();
+    let messages: Vec<String> = checked.unwrap_or_default().iter().map(evcxr::CompilationError::message).collect();
     answer(cell, &outline, &types(&messages))
 }
 
@@ -116,9 +112,7 @@ fn answer(cell: &str, outline: &Outline, types: &[(usize, String)]) -> Answer {
 
 /// Whether a type can be written in the source.
 fn is_nameable(name: &str) -> bool {
-    !["{", "'_", "impl ", "fn(", "_>", "<_", " _", "(_"]
-        .iter()
-        .any(|part| name.contains(part))
+    !["{", "'_", "impl ", "fn(", "_>", "<_", " _", "(_"].iter().any(|part| name.contains(part))
         || (name.starts_with("fn(") && !name.contains('{'))
 }
 
@@ -138,8 +132,7 @@ mod tests {
         assert_eq!(
             answer(cell, &outline, &types),
             Answer::Rewritten(
-                "let (a, mut b) = f()?; let mut b: std::vec::Vec<i32> = b; let a: f64 = a;\nlet c = a;\nc"
-                    .into()
+                "let (a, mut b) = f()?; let mut b: std::vec::Vec<i32> = b; let a: f64 = a;\nlet c = a;\nc".into()
             )
         );
     }
@@ -148,10 +141,7 @@ mod tests {
     fn a_closure_is_named_unstorable() {
         let cell = "let f = |x: f64| x;";
         let types = types(&["HADE_TYPE 0 {closure@src/lib.rs:1:1: 1:2}".into()]);
-        assert!(matches!(
-            answer(cell, &syntax::outline(cell), &types),
-            Answer::Unstorable(_)
-        ));
+        assert!(matches!(answer(cell, &syntax::outline(cell), &types), Answer::Unstorable(_)));
     }
 
     #[test]

@@ -33,9 +33,8 @@ impl Record {
     /// The line for this record, with its line end.
     pub(crate) fn to_line(&self) -> String {
         // The engine looks for its own words anywhere in a line; none may appear in a record.
-        let json = serde_json::to_string(self)
-            .unwrap_or_else(|_| "\"Done\"".to_owned())
-            .replace("EVCXR_", "EVCXR\\u005f");
+        let json =
+            serde_json::to_string(self).unwrap_or_else(|_| "\"Done\"".to_owned()).replace("EVCXR_", "EVCXR\\u005f");
         format!("{MARK}{json}\n")
     }
 

@@ -67,12 +67,9 @@ pub struct NotebookRun {
 impl NotebookRun {
     /// The first cell that failed.
     pub fn failure(&self) -> Option<NotebookFailure> {
-        self.cells.iter().find_map(|cell| {
-            cell.outcome.error.clone().map(|error| NotebookFailure {
-                number: cell.number,
-                error,
-            })
-        })
+        self.cells
+            .iter()
+            .find_map(|cell| cell.outcome.error.clone().map(|error| NotebookFailure { number: cell.number, error }))
     }
 
     /// The last output of a mime type, such as [`RECORD_MIME`](crate::RECORD_MIME). JSON types
@@ -97,39 +94,24 @@ impl NotebookRun {
 ///
 /// # Errors
 /// If the file is not a notebook, the libraries cannot be built or the session does not start.
-pub fn run_notebook(
-    path: impl AsRef<Path>,
-    options: &RunOptions,
-    progress: &mut dyn Progress,
-) -> Result<NotebookRun> {
+pub fn run_notebook(path: impl AsRef<Path>, options: &RunOptions, progress: &mut dyn Progress) -> Result<NotebookRun> {
     let mut notebook = Notebook::read(path)?;
     let prepared = prepare(progress)?;
     progress.step(Step::Starting);
     let mut session = Session::start(
         &prepared,
-        SessionOptions {
-            folder: Some(notebook.folder().to_path_buf()),
-            cell_timeout: options.cell_timeout,
-        },
+        SessionOptions { folder: Some(notebook.folder().to_path_buf()), cell_timeout: options.cell_timeout },
     )?;
     notebook.clear_outputs();
     let sources = notebook.code_cells();
     let mut cells = Vec::new();
     for (at, (index, source)) in sources.iter().enumerate() {
         let number = at + 1;
-        progress.step(Step::Cell {
-            number,
-            of: sources.len(),
-            first_line: first_line(source),
-        });
+        progress.step(Step::Cell { number, of: sources.len(), first_line: first_line(source) });
         let outcome = session.execute(source);
         notebook.set_outcome(*index, number, &outcome);
         let failed = outcome.error.is_some();
-        cells.push(CellReport {
-            number,
-            index: *index,
-            outcome,
-        });
+        cells.push(CellReport { number, index: *index, outcome });
         if failed && !options.allow_errors {
             break;
         }

@@ -45,6 +45,7 @@ pub struct Session {
     engine: Engine,
     options: SessionOptions,
     _folder: SessionFolder,
+    _cache: File,
 }
 
 impl Session {
@@ -54,29 +55,23 @@ impl Session {
     /// If the session's folder cannot be made or the engine does not start.
     pub fn start(prepared: &Prepared, options: SessionOptions) -> Result<Session> {
         sweep();
+        let held = cache::hold(prepared.cache())?;
         let folder = SessionFolder::new()?;
         let work = folder.path().join("work");
         cache::copy_folder(&prepared.template(), &work)?;
         let engine = Engine::start(prepared, &work, folder.path(), options.folder.as_deref())?;
-        Ok(Session {
-            engine,
-            options,
-            _folder: folder,
-        })
+        Ok(Session { engine, options, _folder: folder, _cache: held })
     }
 
     /// Runs a cell. A cell that fails is an outcome with an error; the session goes on.
     pub fn execute(&mut self, cell: &str) -> CellOutcome {
         let started = Instant::now();
-        let timer = self
-            .options
-            .cell_timeout
-            .map(|limit| Timer::start(self.engine.context.process_handle(), limit));
+        let timer = self.options.cell_timeout.map(|limit| Timer::start(self.engine.context.process_handle(), limit));
         let before = self.engine.variables();
         let result = self.engine.run(cell);
         let timed_out = timer.is_some_and(Timer::stop);
-        let waits = !matches!(result, Ran::Engine(Err(evcxr::Error::SubprocessTerminated(_))))
-            && self.engine.ran_code(&result);
+        let waits =
+            !matches!(result, Ran::Engine(Err(evcxr::Error::SubprocessTerminated(_)))) && self.engine.ran_code(&result);
         let gathered = self.engine.collector.take(waits && !timed_out);
         let mut outcome = self.outcome(result, gathered, cell, &before);
         if timed_out {
@@ -101,15 +96,9 @@ impl Session {
                 }
                 None
             }
-            (Ran::Engine(Err(error)), None) => {
-                Some(outcome::failed(&error, cell, before, &mut outputs))
-            }
+            (Ran::Engine(Err(error)), None) => Some(outcome::failed(&error, cell, before, &mut outputs)),
         };
-        CellOutcome {
-            outputs,
-            error,
-            elapsed: Duration::ZERO,
-        }
+        CellOutcome { outputs, error, elapsed: Duration::ZERO }
     }
 
     /// The variables the cells so far left behind.
@@ -140,10 +129,7 @@ impl Engine {
         let failed = |why: String| Error::Start { why };
         fs::create_dir_all(work).map_err(Error::file("make the folder", work))?;
         let settings = config.join("evcxr.toml");
-        let text = format!(
-            "[evcxr]\ntmpdir = {}\noffline_mode = true\nopt_level = \"0\"\n",
-            toml_string(work)
-        );
+        let text = format!("[evcxr]\ntmpdir = {}\noffline_mode = true\nopt_level = \"0\"\n", toml_string(work));
         fs::write(&settings, text).map_err(Error::file("write", &settings))?;
         let flag = config.join("open");
         let program = env::current_exe().map_err(|error| failed(error.to_string()))?;
@@ -153,10 +139,9 @@ impl Engine {
             let cwd = fs::canonicalize(cwd).map_err(Error::file("find the folder", cwd))?;
             command.current_dir(cwd);
         }
-        let (context, outputs) = in_controlled_environment(config, prepared, || {
-            EvalContext::with_subprocess_command(command)
-        })?
-        .map_err(|error| failed(error.to_string()))?;
+        let (context, outputs) =
+            in_controlled_environment(config, prepared, || EvalContext::with_subprocess_command(command))?
+                .map_err(|error| failed(error.to_string()))?;
         open_flag(&flag)?;
         let mut engine = Engine {
             context: CommandContext::with_eval_context(context),
@@ -176,22 +161,15 @@ impl Engine {
             Ok(_) => Ok(engine),
             Err(error) => {
                 let error = outcome::failed(&error, &load, &[], &mut Vec::new());
-                let printed = CellOutcome {
-                    outputs: gathered.outputs,
-                    ..CellOutcome::default()
-                }
-                .text(crate::cell::Stream::Stderr);
+                let printed = CellOutcome { outputs: gathered.outputs, ..CellOutcome::default() }
+                    .text(crate::cell::Stream::Stderr);
                 Err(failed(format!("{}\n{printed}", error.detail).trim().to_owned()))
             }
         }
     }
 
     fn variables(&self) -> Vec<String> {
-        let mut names: Vec<String> = self
-            .context
-            .variables_and_types()
-            .map(|(name, _)| name.to_owned())
-            .collect();
+        let mut names: Vec<String> = self.context.variables_and_types().map(|(name, _)| name.to_owned()).collect();
         names.sort();
         names
     }
@@ -254,10 +232,8 @@ const FOLDER_LOCK: &str = "lock";
 impl SessionFolder {
     fn new() -> Result<SessionFolder> {
         let place = env::temp_dir();
-        let folder = tempfile::Builder::new()
-            .prefix(FOLDER_PREFIX)
-            .tempdir()
-            .map_err(Error::file("make a folder in", place))?;
+        let folder =
+            tempfile::Builder::new().prefix(FOLDER_PREFIX).tempdir().map_err(Error::file("make a folder in", place))?;
         let path = folder.path().join(FOLDER_LOCK);
         let lock = File::create(&path).map_err(Error::file("write", &path))?;
         lock.lock().map_err(Error::file("lock", &path))?;

@@ -31,15 +31,10 @@ pub(crate) fn outline(code: &str) -> Outline {
     let rust = without_commands(code);
     let parsed = SourceFile::parse(&format!("{BEFORE}{rust}\n}}"), Edition::Edition2024);
     let problem = parsed.errors().first().map(|error| {
-        let at = usize::from(error.range().start())
-            .saturating_sub(BEFORE.len())
-            .min(rust.len());
+        let at = usize::from(error.range().start()).saturating_sub(BEFORE.len()).min(rust.len());
         (line_of(&rust, at), error.to_string())
     });
-    let mut outline = Outline {
-        problem,
-        ..Outline::default()
-    };
+    let mut outline = Outline { problem, ..Outline::default() };
     let statements = parsed
         .syntax_node()
         .children()
@@ -67,11 +62,7 @@ pub(crate) fn outline(code: &str) -> Outline {
             };
             let name = name.text().to_string();
             outline.bindings.retain(|earlier| earlier.name != name);
-            outline.bindings.push(Binding {
-                name,
-                mutable: ident.mut_token().is_some(),
-                end: end.min(code.len()),
-            });
+            outline.bindings.push(Binding { name, mutable: ident.mut_token().is_some(), end: end.min(code.len()) });
         }
     }
     outline
@@ -82,9 +73,7 @@ fn without_commands(code: &str) -> String {
     code.split_inclusive('\n')
         .map(|line| {
             if line.trim_start().starts_with([':', '!']) {
-                line.chars()
-                    .map(|c| if c == '\n' { "\n".to_owned() } else { " ".repeat(c.len_utf8()) })
-                    .collect()
+                line.chars().map(|c| if c == '\n' { "\n".to_owned() } else { " ".repeat(c.len_utf8()) }).collect()
             } else {
                 line.to_owned()
             }
@@ -94,12 +83,7 @@ fn without_commands(code: &str) -> String {
 
 /// The line, from 1, at a byte offset.
 pub(crate) fn line_of(code: &str, at: usize) -> usize {
-    code.as_bytes()
-        .iter()
-        .take(at)
-        .filter(|&&byte| byte == b'\n')
-        .count()
-        + 1
+    code.as_bytes().iter().take(at).filter(|&&byte| byte == b'\n').count() + 1
 }
 
 #[cfg(test)]

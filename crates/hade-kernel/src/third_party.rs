@@ -23,12 +23,7 @@ const EXTERNS: &str = "externs";
 
 /// Short hash of everything the compiled crates depend on.
 pub(crate) fn key(toolchain: &Toolchain) -> String {
-    packed::hash([
-        b"libraries 1",
-        toolchain.version.as_bytes(),
-        packed::STANDALONE.as_bytes(),
-        packed::LOCK,
-    ])
+    packed::hash([b"libraries 1", toolchain.version.as_bytes(), packed::STANDALONE.as_bytes(), packed::LOCK])
 }
 
 /// Builds into `folder`, which is finished on success. The caller holds the cache's lock.
@@ -49,9 +44,7 @@ pub(crate) fn build(folder: &Path, toolchain: &Toolchain, progress: &mut dyn Pro
     let built = match run(&work, toolchain, true, progress) {
         Ok(built) => built,
         Err(_) => {
-            progress.step(Step::Notice(
-                "some source code is not on this machine yet; fetching it from crates.io",
-            ));
+            progress.step(Step::Notice("some source code is not on this machine yet; fetching it from crates.io"));
             write("Cargo.lock", packed::LOCK)?;
             run(&work, toolchain, false, progress).map_err(|why| Error::Build { why })?
         }
@@ -67,9 +60,7 @@ pub(crate) fn build(folder: &Path, toolchain: &Toolchain, progress: &mut dyn Pro
     let mut externs = String::new();
     for (name, library) in direct {
         let Some(file) = built.by_library.get(&library) else {
-            return Err(Error::Build {
-                why: format!("cargo built no library {library}"),
-            });
+            return Err(Error::Build { why: format!("cargo built no library {library}") });
         };
         externs.push_str(&format!("{name}\t{file}\n"));
     }
@@ -92,17 +83,10 @@ pub(crate) fn plan(folder: &Path) -> Result<Plan> {
         .collect();
     library.push(search.clone());
     // A session compiles cells unoptimised; the library itself is compiled once and should be fast.
-    for option in [
-        "-Copt-level=3",
-        "-Cdebug-assertions=off",
-        "-Coverflow-checks=off",
-    ] {
+    for option in ["-Copt-level=3", "-Cdebug-assertions=off", "-Coverflow-checks=off"] {
         library.push(option.to_owned());
     }
-    Ok(Plan {
-        library,
-        cell: vec![search],
-    })
+    Ok(Plan { library, cell: vec![search] })
 }
 
 #[derive(Debug, Default)]
@@ -157,16 +141,11 @@ fn run(
             continue;
         }
         done += 1;
-        progress.step(Step::Libraries {
-            name,
-            done,
-            total: total.max(done),
-        });
+        progress.step(Step::Libraries { name, done, total: total.max(done) });
         for file in message["filenames"].as_array().into_iter().flatten() {
             let path = PathBuf::from(file.as_str().unwrap_or_default());
-            let wanted = path
-                .extension()
-                .is_some_and(|ending| ["rlib", "so", "dylib"].iter().any(|known| ending == *known));
+            let wanted =
+                path.extension().is_some_and(|ending| ["rlib", "so", "dylib"].iter().any(|known| ending == *known));
             if wanted && let Some(file) = path.file_name() {
                 let id = message["package_id"].as_str().unwrap_or_default();
                 let file = file.to_string_lossy().into_owned();
@@ -180,11 +159,7 @@ fn run(
     }
     let status = child.wait().map_err(|error| error.to_string())?;
     let said = said.join().unwrap_or_default();
-    if status.success() {
-        Ok(built)
-    } else {
-        Err(last_lines(&said, 12))
-    }
+    if status.success() { Ok(built) } else { Err(last_lines(&said, 12)) }
 }
 
 fn metadata(work: &Path, toolchain: &Toolchain, offline: bool) -> std::result::Result<Value, String> {
@@ -210,9 +185,7 @@ fn direct_dependencies(work: &Path, toolchain: &Toolchain) -> Result<Vec<(String
         .into_iter()
         .flatten()
         .find(|node| &node["id"] == root)
-        .ok_or_else(|| Error::Build {
-            why: "cargo did not describe the library's dependencies".to_owned(),
-        })?;
+        .ok_or_else(|| Error::Build { why: "cargo did not describe the library's dependencies".to_owned() })?;
     Ok(node["deps"]
         .as_array()
         .into_iter()

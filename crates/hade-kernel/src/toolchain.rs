@@ -23,10 +23,7 @@ impl Toolchain {
         let said = Command::new(&rustc)
             .arg("-vV")
             .output()
-            .map_err(|error| Error::Toolchain {
-                tool: "rustc",
-                why: error.to_string(),
-            })?;
+            .map_err(|error| Error::Toolchain { tool: "rustc", why: error.to_string() })?;
         let version = String::from_utf8_lossy(&said.stdout).into_owned();
         let host = version
             .lines()
@@ -36,12 +33,7 @@ impl Toolchain {
                 why: String::from_utf8_lossy(&said.stderr).trim().to_owned(),
             })?
             .to_owned();
-        Ok(Toolchain {
-            cargo: tool("cargo"),
-            rustc,
-            version,
-            host,
-        })
+        Ok(Toolchain { cargo: tool("cargo"), rustc, version, host })
     }
 
     /// A Cargo command that no setting of the caller's project reaches.

@@ -53,10 +53,7 @@ impl Plan {
     }
 
     fn additions(&self, args: &[OsString]) -> &[String] {
-        let name = args
-            .iter()
-            .skip_while(|arg| *arg != "--crate-name")
-            .nth(1);
+        let name = args.iter().skip_while(|arg| *arg != "--crate-name").nth(1);
         match name.and_then(|name| name.to_str()) {
             Some("hade") => &self.library,
             Some(CELL_CRATE) => &self.cell,
@@ -84,10 +81,7 @@ pub(crate) fn run(plan: &Path) -> ! {
     let is_cell = args.iter().any(|arg| arg == CELL_CRATE);
     if is_cell && Path::new(FULL_TYPES_FILE).exists() {
         // Names only how types are printed in the messages of this one check.
-        command
-            .arg("--verbose")
-            .arg("-Ztrim-diagnostic-paths=no")
-            .env("RUSTC_BOOTSTRAP", "1");
+        command.arg("--verbose").arg("-Ztrim-diagnostic-paths=no").env("RUSTC_BOOTSTRAP", "1");
     }
     command.env_remove(PLAN_VAR);
     become_command(command)
@@ -117,10 +111,7 @@ mod tests {
     use super::*;
 
     fn plan() -> Plan {
-        Plan {
-            library: vec!["--extern=serde=/a b/libserde.rlib".into()],
-            cell: vec!["-Ldependency=/a b".into()],
-        }
+        Plan { library: vec!["--extern=serde=/a b/libserde.rlib".into()], cell: vec!["-Ldependency=/a b".into()] }
     }
 
     #[test]

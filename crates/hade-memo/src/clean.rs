@@ -105,6 +105,21 @@ fn one(place: &str, text: &str) -> Result<(String, bool)> {
     Ok((clean, removed))
 }
 
+/// Any text made fit to be typeset, without a message: for words that were made from a record that
+/// has already been judged.
+pub(crate) fn lossy(text: &str) -> String {
+    text.chars()
+        .take(MOST_TEXT)
+        .filter_map(|c| match c {
+            '\u{a0}' | '\u{202f}' | '\u{2009}' => Some(c),
+            c if c.is_whitespace() => Some(' '),
+            c if c.is_control() || is_format(c) => None,
+            c if fonts::covers(c) => Some(c),
+            _ => Some('?'),
+        })
+        .collect()
+}
+
 /// Unicode's format characters (general category Cf) and variation selectors: joiners, direction
 /// marks and the like, which can make a text read otherwise than it is.
 fn is_format(c: char) -> bool {

@@ -15,6 +15,8 @@ pub struct Again {
     pub card: Card,
     /// Where its outcome differs by more than the kind's tolerance.
     pub difference: Option<String>,
+    /// The checks, applied to the outcome that the record states.
+    pub checks: Vec<Check>,
 }
 
 /// What computes a card again; an error when its kind is unknown or its inputs are refused.
@@ -22,7 +24,7 @@ pub type Replayer = fn(&Card) -> hade::error::Result<Again>;
 
 /// The library's own.
 pub(crate) fn by_library(card: &Card) -> hade::error::Result<Again> {
-    Err(hade::error::Error::not_physical(format!("\"{}\"", card.kind), "this kind cannot be computed again"))
+    hade::replay::replay(card).map(|r| Again { card: r.card, difference: r.difference, checks: r.checks })
 }
 
 /// One line of the table of checks.
@@ -55,7 +57,7 @@ pub(crate) fn judge(card: &Card, replayer: Replayer) -> Judged {
         .checks
         .iter()
         .enumerate()
-        .map(|(i, check)| line(check, again.as_ref().ok().map(|a| a.card.checks.get(i))))
+        .map(|(i, check)| line(check, again.as_ref().ok().map(|a| a.checks.get(i))))
         .collect();
     if checks.is_empty() {
         checks.push(words("the item is checked by another route", "no check was made", false));
@@ -66,15 +68,16 @@ pub(crate) fn judge(card: &Card, replayer: Replayer) -> Judged {
             Judged { checks, method: None }
         }
         Ok(again) => {
-            let outcome = again.difference.as_deref().unwrap_or("agrees");
-            checks.push(words("computed again from its inputs", outcome, again.difference.is_none()));
             let printed = card.explanation.write().difference(&again.card.explanation.write(), WORDS_TOLERANCE);
-            let same_words = printed.is_none();
-            checks.push(words(
-                "printed words and numbers are those of the computation",
-                printed.as_deref().unwrap_or("agree"),
-                same_words,
-            ));
+            if again.difference.is_none() && printed.is_none() {
+                checks.push(words("computed again from its inputs: outcome, words and printed numbers", "agree", true));
+            }
+            if let Some(difference) = again.difference {
+                checks.push(words("outcome against the one computed again from its inputs", &difference, false));
+            }
+            if let Some(difference) = printed {
+                checks.push(words("words and printed numbers against those of the computation", &difference, false));
+            }
             Judged { checks, method: Some(again.card.explanation.method) }
         }
     }
@@ -84,7 +87,7 @@ fn words(what: &str, outcome: &str, passed: bool) -> CheckLine {
     CheckLine { what: what.to_owned(), difference: outcome.to_owned(), allowed: String::new(), passed }
 }
 
-/// A check passes when its own numbers say so, and the same check of the recomputed card passes.
+/// A check passes when its own numbers say so, and the same check made again passes.
 fn line(check: &Check, again: Option<Option<&Check>>) -> CheckLine {
     let within = check.difference.is_some_and(|d| d.is_finite() && d <= check.tolerance);
     let again = again.is_none_or(|same| same.is_some_and(|c| c.passed && c.what == check.what));
@@ -117,34 +120,37 @@ mod tests {
         }
     }
 
+    fn same(card: &Card) -> hade::error::Result<Again> {
+        Ok(Again { card: card.clone(), difference: None, checks: card.checks.clone() })
+    }
+
     fn failed(judged: &Judged) -> usize {
         judged.checks.iter().filter(|c| !c.passed).count()
     }
 
     #[test]
     fn a_card_that_agrees_passes() {
-        let judged = judge(&card(), |c| Ok(Again { card: c.clone(), difference: None }));
+        let judged = judge(&card(), same);
         assert_eq!(failed(&judged), 0);
         assert!(judged.method.is_some());
     }
 
     #[test]
     fn what_does_not_agree_fails() {
-        let other = |c: &Card| Ok(Again { card: c.clone(), difference: Some("/0: 1 is not 2".to_owned()) });
+        let other = |c: &Card| same(c).map(|a| Again { difference: Some("/0: 1 is not 2".to_owned()), ..a });
         assert_eq!(failed(&judge(&card(), other)), 1);
         let unknown = judge(&card(), by_library);
         assert!(failed(&unknown) == 1 && unknown.method.is_none());
         let reworded = |c: &Card| {
             let mut card = c.clone();
             card.explanation.headline = "another".to_owned();
-            Ok(Again { card, difference: None })
+            same(c).map(|a| Again { card, ..a })
         };
         assert_eq!(failed(&judge(&card(), reworded)), 1);
     }
 
     #[test]
     fn a_verdict_is_not_believed() {
-        let same: Replayer = |c| Ok(Again { card: c.clone(), difference: None });
         let mut liar = card();
         liar.checks[0].difference = Some(1.0);
         assert_eq!(failed(&judge(&liar, same)), 1, "the difference is larger than allowed");

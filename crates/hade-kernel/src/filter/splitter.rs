@@ -75,10 +75,7 @@ struct Block {
 impl Splitter {
     /// Output passes unchanged until the first cell (the engine's own) has ended, unless `open`.
     pub(super) fn new(open: bool) -> Splitter {
-        Splitter {
-            open,
-            ..Splitter::default()
-        }
+        Splitter { open, ..Splitter::default() }
     }
 
     /// Takes what was read from both streams.
@@ -182,18 +179,10 @@ impl Splitter {
                 self.pass_bundle(passed);
             }
             self.pass_out(passed);
-            self.block = Some(Block {
-                mime: mime.to_owned(),
-                content: String::new(),
-                lost: 0,
-            });
+            self.block = Some(Block { mime: mime.to_owned(), content: String::new(), lost: 0 });
             return;
         }
-        for (word, record) in [
-            (PANIC, Record::Panic),
-            (EARLY, Record::Early),
-            (COMPLETE, Record::Done),
-        ] {
+        for (word, record) in [(PANIC, Record::Panic), (EARLY, Record::Early), (COMPLETE, Record::Done)] {
             if let Some(before) = line.strip_suffix(word) {
                 self.text(before, passed);
                 self.pass_bundle(passed);
@@ -201,10 +190,7 @@ impl Splitter {
                 self.pass_err(passed, true);
                 if word == COMPLETE {
                     self.pass_cut(passed);
-                    *self = Splitter {
-                        open: true,
-                        ..Splitter::default()
-                    };
+                    *self = Splitter { open: true, ..Splitter::default() };
                 }
                 passed.record(&record);
                 passed.raw(word);
@@ -225,10 +211,7 @@ impl Splitter {
         if let Some(mut block) = self.block.take() {
             if block.lost > 0 {
                 block.mime = "text/plain".to_owned();
-                block.content = format!(
-                    "[a display of more than {} MB was left out]",
-                    SHOW_LIMIT / 1024 / 1024
-                );
+                block.content = format!("[a display of more than {} MB was left out]", SHOW_LIMIT / 1024 / 1024);
             }
             self.shown += block.content.len();
             self.bundle.insert(block.mime, block.content);
@@ -317,19 +300,11 @@ mod tests {
     use super::*;
 
     fn records(passed: &Passed) -> Vec<Record> {
-        String::from_utf8_lossy(&passed.out)
-            .lines()
-            .filter_map(Record::from_line)
-            .collect()
+        String::from_utf8_lossy(&passed.out).lines().filter_map(Record::from_line).collect()
     }
 
     fn show(pairs: &[(&str, &str)]) -> Record {
-        Record::Show(
-            pairs
-                .iter()
-                .map(|(mime, content)| ((*mime).to_owned(), (*content).to_owned()))
-                .collect(),
-        )
+        Record::Show(pairs.iter().map(|(mime, content)| ((*mime).to_owned(), (*content).to_owned())).collect())
     }
 
     #[test]
@@ -374,12 +349,7 @@ mod tests {
         let passed = splitter.take(b"x\nEVCXR_ERROR_OCCURRED\nEVCXR_EXECUTION_COMPLETE\n", b"no such depth\n");
         assert_eq!(
             records(&passed),
-            [
-                Record::Out("x\n".into()),
-                Record::Err("no such depth\n".into()),
-                Record::Early,
-                Record::Done,
-            ]
+            [Record::Out("x\n".into()), Record::Err("no such depth\n".into()), Record::Early, Record::Done,]
         );
     }
 
@@ -406,10 +376,7 @@ mod tests {
         }
         assert_eq!(got, TEXT_LIMIT);
         let end = records(&splitter.take(b"EVCXR_EXECUTION_COMPLETE\nnext\n", b""));
-        assert_eq!(
-            end,
-            [Record::Cut(2 * 1024 * 1024), Record::Done, Record::Out("next\n".into())]
-        );
+        assert_eq!(end, [Record::Cut(2 * 1024 * 1024), Record::Done, Record::Out("next\n".into())]);
     }
 
     #[test]
@@ -425,9 +392,6 @@ mod tests {
     fn the_last_words_of_a_process_pass() {
         let mut splitter = Splitter::new(true);
         splitter.take(b"half", b"");
-        assert_eq!(
-            records(&splitter.end()),
-            [Record::Out("half".into())]
-        );
+        assert_eq!(records(&splitter.end()), [Record::Out("half".into())]);
     }
 }

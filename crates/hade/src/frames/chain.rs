@@ -185,7 +185,7 @@ impl Explain for Chain {
                 "turn from geographic to borehole axes",
                 "turn",
                 self.q.as_flattened().to_vec(),
-                "3 × 3 matrix, above",
+                "the 3 × 3 matrix Q of the steps",
             )],
             method: Method {
                 words: "The axes are turned first by the azimuth about down, then by the inclination about the axis to the right of the hole. Rows of Q are the new axes in the old frame.".to_owned(),

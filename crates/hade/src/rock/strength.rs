@@ -87,6 +87,16 @@ impl Strength {
         }
     }
 
+    /// tan(45° + φ/2) and UCS = 2 c tan(45° + φ/2), the other form of the same line: q is the
+    /// tangent's square. For checks.
+    pub(crate) fn by_tangent(self) -> (f64, Pressure) {
+        let tangent = (std::f64::consts::FRAC_PI_4 + 0.5 * self.friction_angle().si()).tan();
+        match self.0 {
+            Stated::MohrCoulomb { cohesion, .. } => (tangent, cohesion * (2.0 * tangent)),
+            Stated::MohrCoulombUcs { ucs, .. } => (tangent, ucs),
+        }
+    }
+
     /// The numbers as they were typed.
     pub(crate) fn items(self) -> Vec<Item> {
         let stated = match self.0 {

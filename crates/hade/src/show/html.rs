@@ -197,10 +197,8 @@ impl StepView {
             Step::Words { text } => StepView { words: Some(text.clone()), ..StepView::default() },
             Step::Worked { text } => StepView { worked: Some(text.clone()), ..StepView::default() },
             Step::Matrix { name, rows, decimals, unit, about } => {
-                let rows = rows
-                    .iter()
-                    .map(|row| row.iter().map(|v| fixed(*v, (*decimals).min(17))).collect())
-                    .collect();
+                let rows =
+                    rows.iter().map(|row| row.iter().map(|v| fixed(*v, (*decimals).min(17))).collect()).collect();
                 let matrix = MatrixView { name: name.clone(), rows, unit: unit.clone(), about: about.clone() };
                 StepView { matrix: Some(matrix), ..StepView::default() }
             }

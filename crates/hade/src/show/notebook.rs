@@ -256,8 +256,17 @@ mod tests {
         assert_eq!(vec![1.mpa(), 2.mpa()].text().lines().count(), 2);
         assert_eq!([Some(1.mpa()), None].text().lines().count(), 2);
         assert_eq!((1.deg(), 2.m()).text(), "1°\n2 m (6.56168 ft)");
-        // As the kernel calls it.
-        refused.evcxr_display();
-        vec![Ok::<_, Error>(1.mpa())].evcxr_display();
+    }
+
+    #[test]
+    fn the_kernel_finds_the_method_on_every_value() {
+        // Compiled, not run: it would print into the test's output.
+        let _ = || {
+            1.mpa().evcxr_display();
+            Ok::<_, Error>(1.mpa()).evcxr_display();
+            vec![Some(sample::card())].evcxr_display();
+            [1.0, 2.0].evcxr_display();
+            sample::sheet().evcxr_display();
+        };
     }
 }

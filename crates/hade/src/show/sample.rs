@@ -27,8 +27,20 @@ impl Explain for Limit {
     }
     fn check(inputs: &f64, outcome: &f64) -> Vec<Check> {
         vec![
-            Check::compare("criterion just inside and outside the limit", &[*inputs / 1e6], &[*outcome / 1e6], 1e-6, "MPa"),
-            Check::compare("far field at r = 50 radii gives S back", &[*inputs / 1e6], &[*outcome / 1e6 + 0.004], 1e-6, "MPa"),
+            Check::compare(
+                "criterion just inside and outside the limit",
+                &[*inputs / 1e6],
+                &[*outcome / 1e6],
+                1e-6,
+                "MPa",
+            ),
+            Check::compare(
+                "far field at r = 50 radii gives S back",
+                &[*inputs / 1e6],
+                &[*outcome / 1e6 + 0.004],
+                1e-6,
+                "MPa",
+            ),
         ]
     }
     fn explain(&self) -> Explanation {
@@ -119,7 +131,8 @@ pub fn sheet() -> Sheet {
 pub fn figure() -> Figure {
     let around = |f: fn(f64) -> f64| (0..=180).map(move |i| [f64::from(2 * i), f(f64::from(2 * i).to_radians())]);
     Figure {
-        caption: "Stresses at the wall against tool face at 41.3 MPa wall pressure; the rock fails where hatched.".into(),
+        caption: "Stresses at the wall against tool face at 41.3 MPa wall pressure; the rock fails where hatched."
+            .into(),
         alt: "The hoop stress peaks at 103 MPa at 90° and 270°, where it passes the strength over 58°.".into(),
         x: Axis::new("tool face θ (°, clockwise from the top of the hole)", 0.0, 360.0).ticks_every(30.0),
         y: Axis::new("stress σ' (MPa)", -10.0, 120.0),

@@ -56,7 +56,7 @@ pub fn svg(figure: &Figure, theme: Theme) -> String {
         };
         for (i, line) in label.lines.iter().enumerate() {
             let y = label.area.top + (i as f64 + 0.5) * LINE;
-            canvas.text(line, [x, y], label.hold, SIZE, label.colour, false);
+            canvas.text(line, [x, y], label.hold, SIZE, label.colour);
         }
     }
     let style = if theme == Theme::Notebook { dark_where_the_page_is() } else { String::new() };
@@ -76,7 +76,7 @@ impl Drawing {
         match layer {
             Layer::Line { role, points, .. } => {
                 let line: Vec<Px> = points.iter().map(|p| frame.at(*p)).collect();
-                Drawing::Lines { role: *role, parts: clip(&line, &reach) }
+                Drawing::Lines { role: *role, parts: clip(&thinned(line), &reach) }
             }
             Layer::Circle { role, centre, radius, upper_half, .. } => {
                 let steps = if *upper_half { 120 } else { 240 };
@@ -116,11 +116,30 @@ impl Drawing {
             Drawing::Lines { parts, .. } => parts.iter().flat_map(|p| walk(p, 4.0)).collect(),
             Drawing::Marks { places, .. } => places
                 .iter()
-                .flat_map(|p| [[0.0, 0.0], [-4.0, 0.0], [4.0, 0.0], [0.0, -4.0], [0.0, 4.0]].map(|d| [p[0] + d[0], p[1] + d[1]]))
+                .flat_map(|p| {
+                    [[0.0, 0.0], [-4.0, 0.0], [4.0, 0.0], [0.0, -4.0], [0.0, 4.0]].map(|d| [p[0] + d[0], p[1] + d[1]])
+                })
                 .collect(),
             Drawing::None => Vec::new(),
         }
     }
+}
+
+/// A line without the places that no eye can tell from the one before.
+fn thinned(line: Vec<Px>) -> Vec<Px> {
+    let mut out: Vec<Px> = Vec::with_capacity(line.len());
+    let last = line.last().copied();
+    for place in line {
+        // Not a number is kept: it makes the gap.
+        let near = out.last().is_some_and(|o: &Px| (o[0] - place[0]).hypot(o[1] - place[1]) < 0.3);
+        if !near {
+            out.push(place);
+        }
+    }
+    if out.last() != last.as_ref() {
+        out.extend(last);
+    }
+    out
 }
 
 const CROSS: [&[Px]; 2] = [&[[-5.0, 0.0], [5.0, 0.0]], &[[0.0, -5.0], [0.0, 5.0]]];
@@ -159,14 +178,24 @@ fn margins(figure: &Figure) -> Margins {
     out
 }
 
-fn place_labels(figure: &Figure, frame: &Frame, palette: &Palette, drawings: &[Drawing], bands: &[Band<'_>]) -> Vec<Placed> {
+fn place_labels(
+    figure: &Figure,
+    frame: &Frame,
+    palette: &Palette,
+    drawings: &[Drawing],
+    bands: &[Band<'_>],
+) -> Vec<Placed> {
     let mut out = Vec::new();
     let inside = frame.area.grown(-4.0);
     let mut room = Room::default();
     for (owner, drawing) in drawings.iter().enumerate() {
-        room.drawn.extend(drawing.outline().into_iter().map(|p| (owner, p)));
+        let mut places = drawing.outline();
+        places.sort_by_key(cell);
+        places.dedup_by_key(|p| cell(p));
+        room.drawn.extend(places.into_iter().map(|p| (owner, p)));
     }
-    room.axes = frame.zero_lines().iter().flat_map(|line| walk(line, 6.0)).collect();
+    let edges = frame.zero_lines().into_iter().chain(bands.iter().flat_map(Band::edges));
+    room.edges = edges.flat_map(|line| walk(&line, 6.0)).collect();
     label_upright_bands(frame, palette, bands, &mut out);
     label_line_ends(figure, frame, palette, drawings, &mut out);
     for layer in &figure.layers {
@@ -185,15 +214,14 @@ fn place_labels(figure: &Figure, frame: &Frame, palette: &Palette, drawings: &[D
     }
     for (owner, (layer, drawing)) in figure.layers.iter().zip(drawings).enumerate() {
         let (label, gap, anchors) = match (layer, drawing) {
-            (Layer::Line { label, points, .. }, Drawing::Lines { parts, .. })
-                if !named_at_its_end(figure, points) =>
-            {
+            (Layer::Line { label, points, .. }, Drawing::Lines { parts, .. }) if !named_at_its_end(figure, points) => {
                 (label, 7.0, along(parts))
             }
             (Layer::Circle { label, .. }, Drawing::Lines { parts, .. }) => (label, 6.0, along(parts)),
             (Layer::Points { label, .. }, Drawing::Marks { places, .. }) => {
-                let anchors = places.iter().enumerate().map(|(i, p)| Anchor { at: *p, cost: 0.2 * i as f64 });
-                (label, 8.0, anchors.take(24).collect())
+                let anchors = places.iter().take(24).enumerate();
+                let anchors = anchors.map(|(i, p)| Anchor { at: *p, cost: 0.2 * i as f64 });
+                (label, 10.0, anchors.collect())
             }
             _ => continue,
         };
@@ -202,21 +230,15 @@ fn place_labels(figure: &Figure, frame: &Frame, palette: &Palette, drawings: &[D
             _ => continue,
         };
         if !label.is_empty() {
-            let wish = Wish {
-                owner,
-                text: label.clone(),
-                colour: palette.pen(role).word,
-                gap,
-                may_stand_off: matches!(layer, Layer::Points { .. }),
-                anchors,
-            };
+            let wish =
+                Wish { owner, text: label.clone(), colour: palette.pen(role).word, gap, may_stand_off: true, anchors };
             out.extend(room.place(&wish, &inside));
         }
     }
     for (number, band) in bands.iter().enumerate().filter(|(_, b)| !b.upright && !b.label.is_empty()) {
         let middle = (band.area.top + band.area.bottom) / 2.0;
         let half = canvas::width(band.label, SIZE) / 2.0;
-        let anchors = [0.97, 0.03, 0.5, 0.75, 0.25]
+        let anchors = [0.97, 0.03, 0.5, 0.75, 0.25, 0.87, 0.62, 0.38, 0.13]
             .iter()
             .enumerate()
             .map(|(i, share)| {
@@ -237,11 +259,20 @@ fn place_labels(figure: &Figure, frame: &Frame, palette: &Palette, drawings: &[D
     out
 }
 
-/// Anchors along lines: both ends, the highest and the lowest place, and steps between.
+/// The cell of a fine grid that a place is in; one place a cell is enough to keep clear of.
+fn cell(place: &Px) -> (i64, i64) {
+    ((place[0] / 3.0) as i64, (place[1] / 3.0) as i64)
+}
+
+/// The most anchors that one layer offers.
+const ANCHORS: f64 = 60.0;
+
+/// Anchors along lines: the highest place, the end, and steps between.
 fn along(parts: &[Vec<Px>]) -> Vec<Anchor> {
+    let length: f64 = parts.iter().flat_map(|p| p.windows(2)).map(step_length).sum();
     let mut out = Vec::new();
     for part in parts {
-        let places = walk(part, 14.0);
+        let places = walk(part, (length / ANCHORS).max(12.0));
         let highest = places.iter().map(|p| p[1]).fold(f64::INFINITY, f64::min);
         let count = places.len();
         for (i, at) in places.into_iter().enumerate() {
@@ -256,6 +287,13 @@ fn along(parts: &[Vec<Px>]) -> Vec<Anchor> {
         }
     }
     out
+}
+
+fn step_length(pair: &[Px]) -> f64 {
+    match pair {
+        [a, b] => (b[0] - a[0]).hypot(b[1] - a[1]),
+        _ => 0.0,
+    }
 }
 
 fn label_line_ends(figure: &Figure, frame: &Frame, palette: &Palette, drawings: &[Drawing], out: &mut Vec<Placed>) {
@@ -310,5 +348,143 @@ fn label_upright_bands(frame: &Frame, palette: &Palette, bands: &[Band<'_>], out
             area,
             leader: None,
         });
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::card::Axis;
+    use crate::show::sample;
+
+    const THEMES: [Theme; 4] = [Theme::Notebook, Theme::Light, Theme::Dark, Theme::Print];
+
+    fn empty(x: Axis, y: Axis) -> Figure {
+        Figure { caption: "c".into(), alt: "a".into(), x, y, equal_scale: false, layers: Vec::new() }
+    }
+
+    /// Every tag closed in order, no attribute or text with a bare `<`.
+    fn well_formed(text: &str) -> bool {
+        let mut open: Vec<&str> = Vec::new();
+        for tag in text.split('<').skip(1) {
+            let Some((tag, _)) = tag.split_once('>') else { return false };
+            if let Some(name) = tag.strip_prefix('/') {
+                if open.pop() != Some(name) {
+                    return false;
+                }
+            } else if !tag.ends_with('/') {
+                open.push(tag.split_whitespace().next().unwrap_or_default());
+            }
+        }
+        open.is_empty()
+    }
+
+    #[test]
+    fn draws_the_same_bytes_each_time_with_title_alternative_and_real_text() {
+        for theme in THEMES {
+            let picture = svg(&sample::figure(), theme);
+            assert_eq!(picture, svg(&sample::figure(), theme));
+            assert!(well_formed(&picture));
+            assert!(picture.contains("role=\"img\"") && picture.contains("<title>Stresses at the wall"));
+            assert!(picture.contains("<desc>The hoop stress peaks"));
+            assert!(picture.contains("font-family=\"Inter, Helvetica, Arial, sans-serif\""));
+            for words in ["strength</text>", "fails</text>", "recommended</text>", "peak hoop</text>"] {
+                assert!(picture.contains(words), "{words}");
+            }
+            assert!(picture.contains("hoop σ<tspan"));
+            assert!(!picture.contains("NaN") && !picture.contains("inf"));
+            assert!(!picture.contains(" id="));
+        }
+    }
+
+    #[test]
+    fn only_the_notebook_brings_a_ground() {
+        let whole = |theme| svg(&sample::figure(), theme).contains("fill=\"#FFFFFF\"");
+        assert!(whole(Theme::Notebook));
+        assert!(!whole(Theme::Light) && !whole(Theme::Dark) && !whole(Theme::Print));
+        assert!(svg(&sample::figure(), Theme::Notebook).contains("prefers-color-scheme:dark"));
+        assert!(!svg(&sample::figure(), Theme::Print).contains("<style"));
+    }
+
+    #[test]
+    fn no_two_labels_of_a_full_figure_overlap_and_all_are_inside() {
+        let figure = sample::figure();
+        let frame = Frame::of(&figure, margins(&figure));
+        let drawings: Vec<Drawing> = figure.layers.iter().map(|l| Drawing::of(l, &frame)).collect();
+        let bands: Vec<Band<'_>> = figure.layers.iter().filter_map(|l| band(l, &frame)).collect();
+        let placed = place_labels(&figure, &frame, &Palette::of(Theme::Light), &drawings, &bands);
+        assert_eq!(placed.len(), 9);
+        let whole = Rect { left: 0.0, top: 0.0, right: frame.size.0, bottom: frame.size.1 };
+        for (i, a) in placed.iter().enumerate() {
+            assert!(whole.covers(&a.area), "{:?}", a.lines);
+            assert!(placed.iter().skip(i + 1).all(|b| !a.area.meets(&b.area)), "{:?}", a.lines);
+        }
+    }
+
+    #[test]
+    fn markup_in_a_figure_stays_text() {
+        let evil = "</text><script>x</script>&\"";
+        let mut figure = empty(Axis::new(evil, 0.0, 1.0), Axis::new(evil, 0.0, 1.0));
+        evil.clone_into(&mut figure.caption);
+        evil.clone_into(&mut figure.alt);
+        figure.layers = vec![
+            Layer::line(evil, Role::First, [[0.0, 0.0], [1.0, 1.0]]),
+            Layer::Words { text: evil.into(), at: [0.2, 0.8] },
+            Layer::ColumnBand { label: evil.into(), role: Role::Failing, from: 0.2, to: 0.4 },
+        ];
+        let picture = svg(&figure, Theme::Notebook);
+        assert!(well_formed(&picture) && !picture.contains("<script"));
+        assert_eq!(picture.matches("&lt;script&gt;").count(), 7);
+    }
+
+    #[test]
+    fn nothing_is_too_odd_to_draw() {
+        let odd = [f64::NAN, f64::INFINITY, f64::NEG_INFINITY, 0.0, 1e308, -1e308, 1e-320, 5.0];
+        for a in odd {
+            for b in odd {
+                for equal_scale in [false, true] {
+                    for y in [Axis::new("", b, a), Axis::new("depth", a, b).downward().ticks_every(b)] {
+                        let mut figure = empty(Axis::new("x", a, b).ticks_every(a), y);
+                        figure.equal_scale = equal_scale;
+                        figure.layers = vec![
+                            Layer::Line {
+                                label: "l".into(),
+                                role: Role::Quiet,
+                                points: vec![[a, b], [b, a], [0.0, b], [1.0, 1.0]],
+                            },
+                            Layer::Line { label: "e".into(), role: Role::Limit, points: Vec::new() },
+                            Layer::Circle {
+                                label: "c".into(),
+                                role: Role::Second,
+                                centre: [a, 0.0],
+                                radius: b,
+                                upper_half: true,
+                            },
+                            Layer::ColumnBand { label: "b".into(), role: Role::Range, from: a, to: b },
+                            Layer::RowBand { label: "r".into(), role: Role::Failing, from: b, to: a },
+                            Layer::Points {
+                                label: "p".into(),
+                                role: Role::Third,
+                                mark: Mark::Cross,
+                                points: vec![[a, b], [b, b]],
+                            },
+                            Layer::Words { text: "w".into(), at: [a, b] },
+                        ];
+                        let picture = svg(&figure, Theme::Light);
+                        assert!(well_formed(&picture), "{a} {b}");
+                        assert!(!picture.contains("NaN") && !picture.contains("inf"), "{a} {b}\n{picture}");
+                        assert!(picture.len() < 200_000);
+                    }
+                }
+            }
+        }
+    }
+
+    #[test]
+    fn a_long_line_stays_small() {
+        let mut figure = empty(Axis::new("x", 0.0, 1.0), Axis::new("y", -1.0, 1.0));
+        figure.layers =
+            vec![Layer::line("s", Role::First, (0..100_000).map(|i| [f64::from(i) / 1e5, (f64::from(i) / 3e4).sin()]))];
+        assert!(svg(&figure, Theme::Light).len() < 40_000);
     }
 }

@@ -188,19 +188,28 @@ fn table(out: &mut Vec<String>, table: &Table) {
         .collect();
     let mut rows: Vec<Vec<String>> = vec![heading];
     rows.extend(table.rows.iter().map(|r| r.iter().map(|c| true_minus(c)).collect()));
-    columns(out, rows);
+    let numeric: Vec<bool> = table.columns.iter().map(|c| c.numeric).collect();
+    aligned(out, rows, &numeric);
 }
 
-/// Rows in aligned columns, indented; the last column is not padded.
+/// Rows in aligned columns of words.
 fn columns(out: &mut Vec<String>, rows: Vec<Vec<String>>) {
+    aligned(out, rows, &[]);
+}
+
+/// Rows in aligned columns, indented; columns of numbers stand at their right edge.
+fn aligned(out: &mut Vec<String>, rows: Vec<Vec<String>>, numeric: &[bool]) {
     let count = rows.iter().map(Vec::len).max().unwrap_or(0);
     let widths: Vec<usize> = (0..count)
         .map(|i| rows.iter().filter_map(|r| r.get(i)).map(|c| c.chars().count()).max().unwrap_or(0))
         .collect();
     for row in rows {
         let mut line = String::from(" ");
-        for (cell, width) in row.iter().zip(&widths) {
-            if *width > 0 {
+        for (i, (cell, width)) in row.iter().zip(&widths).enumerate() {
+            let number = numeric.get(i).copied().unwrap_or(false);
+            if *width > 0 && number {
+                line.push_str(&format!(" {cell:>width$} "));
+            } else if *width > 0 {
                 line.push_str(&format!(" {cell:<width$} "));
             }
         }
@@ -219,8 +228,7 @@ mod tests {
         let lines: Vec<&str> = text.lines().collect();
         assert_eq!(lines[0], "Limits of the wall at 2950 m");
         assert!(lines[1].contains("41.3 MPa"), "{text}");
-        let starts: Vec<usize> =
-            lines.iter().filter(|l| l.contains(" MPa ")).filter_map(|l| l.find(" MPa ")).collect();
+        let starts: Vec<usize> = lines.iter().filter(|l| l.contains(" MPa ")).filter_map(|l| l.find(" MPa ")).collect();
         assert!(starts.len() >= 2);
         assert!(text.contains("1 of 2 FAILED"));
         assert!(text.contains("passed") && text.contains("FAILED"));

@@ -189,16 +189,8 @@ mod tests {
     }
 
     const LINES: [Role; 6] = [Role::First, Role::Second, Role::Third, Role::Fourth, Role::Limit, Role::Quiet];
-    const ALL: [Role; 8] = [
-        Role::First,
-        Role::Second,
-        Role::Third,
-        Role::Fourth,
-        Role::Limit,
-        Role::Failing,
-        Role::Range,
-        Role::Quiet,
-    ];
+    const ALL: [Role; 8] =
+        [Role::First, Role::Second, Role::Third, Role::Fourth, Role::Limit, Role::Failing, Role::Range, Role::Quiet];
 
     #[test]
     fn words_and_lines_stand_out_from_their_ground() {

@@ -40,10 +40,10 @@ fn split(text: &str, longest_base: usize) -> Vec<Run> {
     let mut i = 0;
     while let Some(c) = at(i) {
         if c == '_' && base_length(&chars, i).is_some_and(|n| n <= longest_base) {
-            let below: String =
-                chars.iter().skip(i + 1).take_while(|c| c.is_alphanumeric() || is_prime(**c)).collect();
+            let below: String = chars.iter().skip(i + 1).take_while(|c| in_subscript(**c)).collect();
             let end = i + 1 + below.chars().count();
-            let goes_on = at(end) == Some('_') || (at(end) == Some('.') && at(end + 1).is_some_and(char::is_alphanumeric));
+            let goes_on =
+                at(end) == Some('_') || (at(end) == Some('.') && at(end + 1).is_some_and(char::is_alphanumeric));
             if !below.is_empty() && !goes_on {
                 out.push(Run { text: std::mem::take(&mut plain), lowered: false });
                 out.push(Run { text: below, lowered: true });
@@ -59,6 +59,12 @@ fn split(text: &str, longest_base: usize) -> Vec<Run> {
     }
     out.retain(|r| !r.text.is_empty() || !r.lowered);
     out
+}
+
+/// Letters and digits belong to a subscript; a raised digit ("σ_n²") does not.
+fn in_subscript(c: char) -> bool {
+    let raised = matches!(c, '²' | '³' | '¹' | '\u{2070}'..='\u{207f}');
+    (c.is_alphanumeric() && !raised) || is_prime(c)
 }
 
 fn is_prime(c: char) -> bool {
@@ -88,7 +94,9 @@ pub(super) fn true_minus(text: &str) -> String {
     while let Some(c) = rest.next() {
         let sign = c == '-'
             && rest.peek().is_some_and(|n| n.is_ascii_digit())
-            && before.is_none_or(|b| b.is_whitespace() || matches!(b, '(' | '[' | '=' | '<' | '>' | '≤' | '≥' | '±' | '≈' | '·' | '×'));
+            && before.is_none_or(|b| {
+                b.is_whitespace() || matches!(b, '(' | '[' | '=' | '<' | '>' | '≤' | '≥' | '±' | '≈' | '·' | '×')
+            });
         out.push(if sign { '−' } else { c });
         before = Some(c);
     }
@@ -116,9 +124,7 @@ pub(super) fn escape(text: &str) -> String {
 
 /// Runs as HTML with `<sub>`, escaped.
 pub(super) fn runs_html(runs: &[Run]) -> String {
-    runs.iter()
-        .map(|r| if r.lowered { format!("<sub>{}</sub>", escape(&r.text)) } else { escape(&r.text) })
-        .collect()
+    runs.iter().map(|r| if r.lowered { format!("<sub>{}</sub>", escape(&r.text)) } else { escape(&r.text) }).collect()
 }
 
 /// An estimate of how wide a text is, in em of its size, on the wide side of the sans serifs that
@@ -154,9 +160,20 @@ mod tests {
     fn lowers_what_follows_a_symbol_and_nothing_else() {
         assert_eq!(html("S_v = 66.9 MPa"), "S<sub>v</sub> = 66.9 MPa");
         assert_eq!(html("S_Hmax, σ_θ and Δp_w."), "S<sub>Hmax</sub>, σ<sub>θ</sub> and Δp<sub>w</sub>.");
+        assert_eq!(html("τ² = t² − σ_n²"), "τ² = t² − σ<sub>n</sub>²");
         assert_eq!(html("S_Hmax/S_v"), "S<sub>Hmax</sub>/S<sub>v</sub>");
         assert_eq!(html("σ'_1 ≥ σ'_3"), "σ&#39;<sub>1</sub> ≥ σ&#39;<sub>3</sub>");
-        for name in ["data/kf_survey.csv", "data/kf_survey", "kf3_survey", "density_log", "a_b_c", "ab_cd.csv", "_x", "S_ v", "x_"] {
+        for name in [
+            "data/kf_survey.csv",
+            "data/kf_survey",
+            "kf3_survey",
+            "density_log",
+            "a_b_c",
+            "ab_cd.csv",
+            "_x",
+            "S_ v",
+            "x_",
+        ] {
             assert!(!html(name).contains("<sub>"), "{name}");
         }
         assert_eq!(runs_html(&symbol_runs("UCS_lab_2")), "UCS<sub>lab 2</sub>");
@@ -171,7 +188,10 @@ mod tests {
 
     #[test]
     fn escapes_markup_and_drops_what_xml_forbids() {
-        assert_eq!(escape("<script>\"a\" & 'b'\u{0}\u{7}</script>"), "&lt;script&gt;&quot;a&quot; &amp; &#39;b&#39;&lt;/script&gt;");
+        assert_eq!(
+            escape("<script>\"a\" & 'b'\u{0}\u{7}</script>"),
+            "&lt;script&gt;&quot;a&quot; &amp; &#39;b&#39;&lt;/script&gt;"
+        );
         assert_eq!(html("S_<b"), "S_&lt;b");
     }
 }

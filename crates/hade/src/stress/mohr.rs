@@ -236,10 +236,10 @@ impl MohrCircles {
             });
         }
         Figure {
-            caption: format!("Mohr's circles of the {what}; crosses mark {symbol}1, {symbol}2, {symbol}3."),
+            caption: format!("Mohr's circles of the {what}; crosses mark {symbol}_1, {symbol}_2, {symbol}_3."),
             alt: format!(
                 "Three half circles over normal stress. {}",
-                ends.iter().map(|(x, n)| format!("{symbol}{n} = {} MPa", fixed(*x, 2))).collect::<Vec<_>>().join(", ")
+                ends.iter().map(|(x, n)| format!("{symbol}_{n} = {} MPa", fixed(*x, 2))).collect::<Vec<_>>().join(", ")
             ),
             x: Axis::new(&format!("normal {what} (MPa)"), left, right),
             y: Axis::new("shear stress (MPa)", 0.0, r13.max(0.05 * span) * 1.15),

@@ -42,7 +42,7 @@ impl<F: Frame> fmt::Debug for Stress<F> {
 }
 
 impl<F: Frame> Stress<F> {
-    pub(super) fn of(tensor: Tensor, made: Made, carried: Option<(Tensor, Attitude, Option<Name>)>) -> Self {
+    pub(crate) fn of(tensor: Tensor, made: Made, carried: Option<(Tensor, Attitude, Option<Name>)>) -> Self {
         Stress { tensor, made, carried, frame: PhantomData }
     }
 
@@ -99,6 +99,10 @@ impl Stress<Borehole> {
     /// The hole's attitude.
     pub fn attitude(&self) -> Option<Attitude> {
         self.carried.map(|(_, attitude, _)| attitude)
+    }
+    /// The geographic tensor it was carried from.
+    pub(crate) fn geographic(&self) -> Option<Tensor> {
+        self.carried.map(|(geographic, ..)| geographic)
     }
     /// The hole's name, if one was given.
     pub fn name(&self) -> Option<Name> {

@@ -124,7 +124,7 @@ impl Explain for Traction {
                 "MPa",
             ),
             Check::compare(
-                "square of the shear stress from the principal stresses, Σ S_k² l_k² − σn²",
+                "square of the shear stress from the principal stresses, Σ S_k² l_k² − σ_n²",
                 &[outcome.shear.in_mpa().powi(2)],
                 &[(square - normal * normal) * 1e-12],
                 largest * largest * 1e-11 * 1e-12,

@@ -53,13 +53,18 @@ impl Band<'_> {
         };
         let strokes: Vec<Vec<Px>> = strokes.iter().flat_map(|line| around(line, labels)).collect();
         canvas.strokes(&strokes, &Pen { width: 1.1, dash: &[], ..pen }, 0.75);
+        canvas.lines(&self.edges(), &Pen { width: 1.2, dash: &[], ..pen });
+    }
+
+    /// Its two long sides.
+    pub fn edges(&self) -> Vec<Vec<Px>> {
+        let area = self.area;
         let edges = if self.upright {
             [[[area.left, area.top], [area.left, area.bottom]], [[area.right, area.top], [area.right, area.bottom]]]
         } else {
             [[[area.left, area.top], [area.right, area.top]], [[area.left, area.bottom], [area.right, area.bottom]]]
         };
-        let edges: Vec<Vec<Px>> = edges.iter().map(|e| e.to_vec()).collect();
-        canvas.lines(&edges, &Pen { width: 1.2, dash: &[], ..pen });
+        edges.iter().map(|e| e.to_vec()).collect()
     }
 }
 

@@ -8,7 +8,7 @@ use plotters::prelude::{DrawingBackend, RGBAColor, SVGBackend, ShapeStyle};
 
 use super::clip::{Px, Rect};
 use crate::show::theme::{Colour, Pen};
-use crate::show::typeset::{LOWERED, Run, escape, runs, runs_ems};
+use crate::show::typeset::{LOWERED, escape, runs, runs_ems};
 
 /// Steps of the backend in a pixel.
 const FINE: f64 = 10.0;
@@ -73,20 +73,19 @@ impl Canvas {
     }
 
     /// A line of text whose middle is at a height.
-    pub fn text(&mut self, text: &str, at: Px, hold: Hold, size: f64, colour: Colour, bold: bool) {
-        self.runs(&runs(text), at, hold, size, colour, bold);
-    }
-
-    fn runs(&mut self, runs: &[Run], [x, y]: Px, hold: Hold, size: f64, colour: Colour, bold: bool) {
+    pub fn text(&mut self, text: &str, at: Px, hold: Hold, size: f64, colour: Colour) {
+        let [x, y] = at;
         let anchor = match hold {
             Hold::Start => "start",
             Hold::Middle => "middle",
             Hold::End => "end",
         };
-        let weight = if bold { " font-weight=\"600\"" } else { "" };
+        let runs = runs(text);
+        // Some readers drop the blank after a subscript unless they are told to keep it.
+        let keep = if runs.len() > 1 { " xml:space=\"preserve\"" } else { "" };
         let _ = write!(
             self.body,
-            "<text x=\"{x:.1}\" y=\"{:.1}\" text-anchor=\"{anchor}\" font-size=\"{size}\"{weight} fill=\"{}\">",
+            "<text{keep} x=\"{x:.1}\" y=\"{:.1}\" text-anchor=\"{anchor}\" font-size=\"{size}\" fill=\"{}\">",
             y + 0.36 * size,
             colour.hex()
         );

@@ -77,12 +77,9 @@ fn segment(a: Px, b: Px, within: &Rect) -> Option<(Px, Px)> {
     }
     let (dx, dy) = (b[0] - a[0], b[1] - a[1]);
     let (mut from, mut to) = (0.0_f64, 1.0_f64);
-    for (step, room) in [
-        (-dx, a[0] - within.left),
-        (dx, within.right - a[0]),
-        (-dy, a[1] - within.top),
-        (dy, within.bottom - a[1]),
-    ] {
+    for (step, room) in
+        [(-dx, a[0] - within.left), (dx, within.right - a[0]), (-dy, a[1] - within.top), (dy, within.bottom - a[1])]
+    {
         if step == 0.0 {
             if room < 0.0 {
                 return None;
@@ -96,7 +93,15 @@ fn segment(a: Px, b: Px, within: &Rect) -> Option<(Px, Px)> {
     if from > to {
         return None;
     }
-    let at = |t: f64, end: Px| if t == 0.0 { a } else if t == 1.0 { end } else { [a[0] + t * dx, a[1] + t * dy] };
+    let at = |t: f64, end: Px| {
+        if t == 0.0 {
+            a
+        } else if t == 1.0 {
+            end
+        } else {
+            [a[0] + t * dx, a[1] + t * dy]
+        }
+    };
     Some((at(from, b), at(to, b)))
 }
 

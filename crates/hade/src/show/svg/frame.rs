@@ -65,9 +65,7 @@ impl Frame {
                 high = 500.0;
                 wide = (high / ratio).max(60.0);
             }
-            if high < 90.0 {
-                high = 90.0;
-            }
+            high = high.max(140.0);
             // Where a limit of size took hold, the axes take in more instead of losing the scale.
             let unit = wide / (x.1 - x.0);
             y.1 = y.1.max(y.0 + high / unit);
@@ -148,28 +146,26 @@ impl Frame {
         let area = self.area;
         let pen = Pen { dash: &[], width: 1.2, ..palette.pen(Role::Quiet) };
         let (edge, out) = if self.downward { (area.top, -1.0) } else { (area.bottom, 1.0) };
-        let mut lines = vec![
-            vec![[area.left, area.top], [area.left, area.bottom]],
-            vec![[area.left, edge], [area.right, edge]],
-        ];
+        let mut lines =
+            vec![vec![[area.left, area.top], [area.left, area.bottom]], vec![[area.left, edge], [area.right, edge]]];
         lines.extend(self.zero_lines());
         for (value, text) in &self.x_ticks {
             let [x, _] = self.at([*value, self.y.0]);
             lines.push(vec![[x, edge], [x, edge + 4.0 * out]]);
             if !text.is_empty() {
-                canvas.text(text, [x, edge + 14.0 * out], Hold::Middle, NUMBERS, palette.soft, false);
+                canvas.text(text, [x, edge + 14.0 * out], Hold::Middle, NUMBERS, palette.soft);
             }
         }
         for (value, text) in &self.y_ticks {
             let [_, y] = self.at([self.x.0, *value]);
             lines.push(vec![[area.left - 4.0, y], [area.left, y]]);
-            canvas.text(text, [area.left - 8.0, y], Hold::End, NUMBERS, palette.soft, false);
+            canvas.text(text, [area.left - 8.0, y], Hold::End, NUMBERS, palette.soft);
         }
         canvas.lines(&lines, &pen);
 
         for (i, line) in self.y_title.iter().enumerate() {
             let y = EDGE + (i as f64 + 0.5) * LINE;
-            canvas.text(line, [EDGE, y], Hold::Start, SIZE, palette.ink, false);
+            canvas.text(line, [EDGE, y], Hold::Start, SIZE, palette.ink);
         }
         let middle = (area.left + area.right) / 2.0;
         for (i, line) in self.x_title.iter().enumerate() {
@@ -181,7 +177,7 @@ impl Frame {
             } else {
                 area.bottom + 24.0 + (i as f64 + 0.5) * LINE
             };
-            canvas.text(line, [x, y], Hold::Middle, SIZE, palette.ink, false);
+            canvas.text(line, [x, y], Hold::Middle, SIZE, palette.ink);
         }
     }
 }

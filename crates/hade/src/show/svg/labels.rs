@@ -46,8 +46,8 @@ pub(super) struct Placed {
 pub(super) struct Room {
     /// Places along every line, with the number of the layer.
     pub drawn: Vec<(usize, Px)>,
-    /// Places along the axes through zero.
-    pub axes: Vec<Px>,
+    /// Places along the axes through zero and the edges of bands.
+    pub edges: Vec<Px>,
     /// The labels that have their place.
     pub taken: Vec<Rect>,
 }
@@ -105,7 +105,8 @@ impl Room {
                                 Hold::Middle
                             };
                             let leader = tied.then(|| leader(anchor.at, &area));
-                            best = Some((cost, Placed { lines: lines.clone(), colour: wish.colour, hold, area, leader }));
+                            best =
+                                Some((cost, Placed { lines: lines.clone(), colour: wish.colour, hold, area, leader }));
                         }
                     }
                 }
@@ -133,13 +134,14 @@ impl Room {
             }
         }
         let crossed = if crossings > 0 { 60.0 + 6.0 * f64::from(crossings) } else { 0.0 };
-        let axes = self.axes.iter().filter(|p| area.holds(**p)).count() as f64;
+        let edges = self.edges.iter().filter(|p| near.holds(**p)).count() as f64;
+        let edged = if edges > 0.0 { 15.0 + 1.5 * edges } else { 0.0 };
         let doubtful = match foreign - own {
             _ if tied => (8.0 - foreign).max(0.0),
             lead if lead < 0.0 => 40.0,
             lead => (12.0 - lead).max(0.0),
         };
-        400.0 * others + crossed + 1.5 * axes + doubtful
+        400.0 * others + crossed + edged + doubtful
     }
 }
 

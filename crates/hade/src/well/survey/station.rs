@@ -64,7 +64,7 @@ impl Station {
         Ok(Direct { md: self.md.si(), i, a, t: direction(i, a) })
     }
 
-    /// The attitude of the hole here, from true north.
+    /// The attitude of the hole here, its azimuth with the north it was measured from.
     pub fn attitude(&self) -> Attitude {
         Attitude { inclination: self.inclination, azimuth: self.azimuth }
     }

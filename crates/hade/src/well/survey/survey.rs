@@ -150,10 +150,16 @@ impl Survey {
     /// With the place of the first station, for a survey that does not begin at the rotary table.
     ///
     /// # Errors
-    /// When a number is not finite, or a survey that begins at the rotary table is said to begin
+    /// When the survey was read from a file (which states it), a number is not finite, or a survey that begins at the rotary table is said to begin
     /// elsewhere.
     pub fn tied_in(&self, tie_in: TieIn) -> Result<Self> {
         let mut meta = self.data.meta.clone();
+        if meta.source != SurveySource::Typed {
+            return Err(Error::not_physical(
+                "A tie-in of a survey file",
+                "the file itself says where its first station lies; correct it there (tie_in_north, tie_in_east, tie_in_tvd).",
+            ));
+        }
         meta.tie_in = Some(tie_in);
         Survey::build(self.data.stations.clone(), meta)
     }
@@ -285,14 +291,16 @@ impl Survey {
         let d = &self.data;
         match &d.meta.source {
             SurveySource::File { path, sha256 } => Item::file("survey", path.clone(), sha256.clone()),
-            SurveySource::Typed => Item::new(
-                "",
-                "survey stations",
-                "survey stations",
-                d.direct.iter().flat_map(|s| [s.md, s.i, s.a]).collect(),
-                format!("{} stations, to MD {}", d.stations.len(), with_typed_unit(self.last_md())),
-            ),
+            SurveySource::Typed => self.stations_item("", "survey stations"),
         }
+    }
+
+    /// Every station as one value: measured depth, inclination, true azimuth.
+    fn stations_item(&self, symbol: &str, name: &str) -> Item {
+        let d = &self.data;
+        let numbers = d.direct.iter().flat_map(|s| [s.md, s.i, s.a]).collect();
+        let shown = format!("{} stations, to MD {}", d.stations.len(), with_typed_unit(self.last_md()));
+        Item::new(symbol, name, "survey stations", numbers, shown)
     }
 }
 
@@ -313,7 +321,7 @@ fn first_place(first: &Direct, tie_in: Option<TieIn>) -> Result<V3> {
 impl IntoGiven for Survey {
     type Value = Survey;
     fn into_given(self, symbol: &str, meaning: &str) -> (Survey, Item, Option<(f64, String)>) {
-        let item = Item { symbol: symbol.to_owned(), name: meaning.to_owned(), ..self.item() };
+        let item = self.stations_item(symbol, meaning);
         (self, item, None)
     }
 }

@@ -1,0 +1,18 @@
+//! Field data: what an instrument measured, and what is computed from it alone.
+//!
+//! Files are read strictly, line by line, in bounded memory. Nothing is guessed: an unknown unit, an
+//! undeclared datum, a gap or a missing top of the column is an error that says what to state.
+//!
+//! It does not correct logs for the hole's condition, nor match depths between logs.
+
+mod column;
+mod density_log;
+mod las;
+mod las_header;
+mod overburden;
+mod overburden_card;
+mod reduce;
+
+pub use column::DensityColumn;
+pub use density_log::{DensityLog, Gap, LogSource};
+pub use overburden::{Layer, Overburden, OverburdenInputs, OverburdenOutcome, OverburdenRecord, Top};

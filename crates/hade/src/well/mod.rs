@@ -1,0 +1,11 @@
+//! The hole: where it is, the stress at its wall, where the wall fails, and the pressures between which it
+//! stands.
+
+mod survey;
+mod wall;
+
+pub use survey::{
+    Asked, Position, PositionInputs, PositionOutcome, Station, StationPosition, Survey, SurveySource, SurveyTable,
+    SurveyTableInputs, TablePlace, TieIn,
+};
+pub use wall::*;

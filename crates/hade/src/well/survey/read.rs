@@ -1,0 +1,331 @@
+//! Reading a survey from CSV, strictly and line by line.
+
+use std::io::Read;
+use std::path::Path;
+
+use super::read_header::{Declarations, Header};
+use super::station::{Direct, Station, follows};
+use super::survey::{MOST_STATIONS, Meta, Survey, SurveySource};
+use crate::error::Result;
+use crate::lines::{Lines, number, shown};
+use crate::units::Angle;
+
+pub(super) fn read_csv(path: &Path) -> Result<Survey> {
+    read(Lines::open(path)?)
+}
+
+/// The places of the three columns, and how many columns there are.
+struct Columns {
+    md: usize,
+    inclination: usize,
+    azimuth: usize,
+    count: usize,
+}
+
+pub(super) fn read<R: Read>(mut lines: Lines<R>) -> Result<Survey> {
+    let mut declared = Declarations::default();
+    let mut table: Option<(Columns, Header)> = None;
+    let mut stations: Vec<Station> = Vec::new();
+    let mut above: Option<Direct> = None;
+    let mut any = false;
+    while let Some(text) = lines.line()? {
+        let text = text.trim();
+        any |= !text.is_empty();
+        if text.trim_matches([',', ';', ' ', '\t']).is_empty() {
+            continue;
+        }
+        // A spreadsheet may put a remark into quotation marks when it holds a comma.
+        let bare = text.trim_start_matches('"');
+        if bare.starts_with('#') {
+            declared.take(&lines, bare.trim_end_matches('"'), table.is_none())?;
+            continue;
+        }
+        let fields = split(&lines, text)?;
+        match &table {
+            None => {
+                let columns = columns(&lines, text, &fields)?;
+                table = Some((columns, declared.settle(&lines)?));
+            }
+            Some((columns, header)) => {
+                if stations.len() >= MOST_STATIONS {
+                    return Err(lines.bad(
+                        format!("the file holds more than {MOST_STATIONS} stations"),
+                        "keep a station every 10 m or so",
+                    ));
+                }
+                let station = row(&lines, columns, header, &fields)?;
+                above = Some(join(&lines, above.as_ref(), &station)?);
+                stations.push(station);
+            }
+        }
+    }
+    let whole = |why: &str, fix: &str| lines.bad_at(None, None, why, fix);
+    let Some((_, header)) = table else {
+        return Err(match any {
+            false => whole("the file is empty", "give a survey with columns md, inclination, azimuth"),
+            true => whole("the file holds no table", "add the line of column names md,inclination,azimuth and the stations"),
+        });
+    };
+    match stations.as_slice() {
+        [] => return Err(whole("the file holds no station", "add the stations below the column names")),
+        [_] => {
+            return Err(whole(
+                "the file holds one station, and a path needs two",
+                "add the stations down to the depth of interest",
+            ));
+        }
+        [first, ..] if first.md != crate::units::Length::default() && header.tie_in.is_none() => {
+            return Err(whole(
+                &format!("the first station is at measured depth {}, and nothing says where that is", first.md),
+                "begin with a station at measured depth 0, or declare tie_in_north, tie_in_east and tie_in_tvd",
+            ));
+        }
+        _ => {}
+    }
+    let (hole, tie, tie_in) = (header.hole, header.tie, header.tie_in);
+    let path = lines.path().to_owned();
+    let source = SurveySource::File { path: path.clone(), sha256: lines.sha256() };
+    Survey::build(stations, Meta { hole, source, tie, tie_in_file: tie.is_some(), tie_in }).map_err(|e| {
+        crate::error::Error::Unreadable {
+            path,
+            line: None,
+            column: None,
+            why: e.to_string().trim_end_matches('.').to_owned(),
+            fix: "correct the file".to_owned(),
+        }
+    })
+}
+
+/// The fields of one line, by the rules of CSV.
+fn split<R: Read>(lines: &Lines<R>, text: &str) -> Result<Vec<String>> {
+    if !text.contains('"') {
+        return Ok(text.split(',').map(|field| field.trim().to_owned()).collect());
+    }
+    let mut reader = csv::ReaderBuilder::new()
+        .has_headers(false)
+        .flexible(true)
+        .trim(csv::Trim::All)
+        .buffer_capacity(text.len() + 2)
+        .from_reader(text.as_bytes());
+    let mut record = csv::StringRecord::new();
+    match reader.read_record(&mut record) {
+        Ok(_) => Ok(record.iter().map(str::to_owned).collect()),
+        Err(e) => Err(lines.bad(e.to_string(), "write the line as comma-separated values")),
+    }
+}
+
+fn columns<R: Read>(lines: &Lines<R>, text: &str, fields: &[String]) -> Result<Columns> {
+    if fields.len() == 1 && (text.contains(';') || text.contains('\t')) {
+        return Err(lines.bad(
+            "the columns are not separated by commas",
+            "save the table with commas between columns and points in decimals",
+        ));
+    }
+    let names: Vec<String> = fields.iter().map(|f| f.to_lowercase().replace('_', " ")).collect();
+    let find = |wanted: &[&str]| -> Result<usize> {
+        let name = wanted.first().copied().unwrap_or_default();
+        let mut found = names.iter().enumerate().filter(|(_, n)| wanted.contains(&n.as_str())).map(|(i, _)| i);
+        match (found.next(), found.next()) {
+            (Some(place), None) => Ok(place),
+            (Some(_), Some(_)) => {
+                Err(lines.bad_in(name, "two columns have this name", "keep one of them"))
+            }
+            (None, _) => Err(lines.bad_in(
+                name,
+                format!("the column is missing; there are: {}", shown(&fields.join(", "))),
+                "name the columns md, inclination, azimuth in the first line that does not begin with #",
+            )),
+        }
+    };
+    Ok(Columns {
+        md: find(&["md", "measured depth"])?,
+        inclination: find(&["inclination", "incl", "inc"])?,
+        azimuth: find(&["azimuth", "azi", "az"])?,
+        count: fields.len(),
+    })
+}
+
+fn row<R: Read>(lines: &Lines<R>, columns: &Columns, header: &Header, fields: &[String]) -> Result<Station> {
+    if fields.len() > columns.count {
+        return Err(lines.bad(
+            format!("the row has {} values for {} columns", fields.len(), columns.count),
+            "write decimals with a point (a decimal comma splits a number in two), and quote texts that hold commas",
+        ));
+    }
+    let value = |place: usize, name: &str| -> Result<f64> {
+        let Some(text) = fields.get(place) else {
+            return Err(lines.bad_in(name, "the row ends before this column", "fill the value in or remove the row"));
+        };
+        number(text).map_err(|(why, fix)| lines.bad_in(name, why, fix))
+    };
+    let md = value(columns.md, "md")?;
+    if md < 0.0 {
+        return Err(lines.bad_in("md", format!("measured depth {md} is negative"), "count it along the hole from the rotary table"));
+    }
+    let inclination = value(columns.inclination, "inclination")?;
+    if !(0.0..=180.0).contains(&inclination) {
+        return Err(lines.bad_in(
+            "inclination",
+            format!("{inclination}° is not between 0° and 180°"),
+            "give the inclination from vertical-down in degrees",
+        ));
+    }
+    let azimuth = value(columns.azimuth, "azimuth")?;
+    if !(-180.0..=360.0).contains(&azimuth) {
+        return Err(lines.bad_in(
+            "azimuth",
+            format!("{azimuth}° is not between 0° and 360°"),
+            "give the azimuth clockwise from north in degrees",
+        ));
+    }
+    let azimuth = header.azimuth(azimuth).map_err(|e| lines.bad_in("azimuth", e.to_string(), "correct the declarations"))?;
+    Ok(Station { md: header.depth(md), inclination: Angle::deg(inclination), azimuth })
+}
+
+/// Holds a station against the one above it.
+fn join<R: Read>(lines: &Lines<R>, above: Option<&Direct>, station: &Station) -> Result<Direct> {
+    let plain = |e: crate::error::Error| lines.bad(e.to_string().trim_end_matches('.'), "correct the row");
+    let here = station.direct().map_err(plain)?;
+    if let Some(above) = above {
+        follows(above, &here).map_err(|(why, fix)| lines.bad_in("md", why, fix))?;
+    }
+    Ok(here)
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::units::Units;
+    use proptest::prelude::*;
+
+    const HEADER: &str = "# hole: X-1\n# north: grid\n# north_correction: -1.5\n# depth_unit: m\n# angle_unit: deg\n# depth_datum: rotary table\n# rotary_table_above_msl: 32.4 m\n";
+
+    fn parse(text: &str) -> Result<Survey> {
+        read(Lines::over(text.as_bytes(), "s.csv"))
+    }
+    fn with_header(table: &str) -> Result<Survey> {
+        parse(&format!("{HEADER}{table}"))
+    }
+    fn refused(text: &str) -> String {
+        parse(text).unwrap_err().to_string()
+    }
+    fn refused_table(table: &str) -> String {
+        with_header(table).unwrap_err().to_string()
+    }
+
+    const GOOD: &str = "md,inclination,azimuth\n0,0,0\n100,1.5,120\n";
+
+    #[test]
+    fn reads_columns_in_any_order_with_their_declarations() {
+        let survey = with_header("Comment, Azimuth ,MD,Inclination\nstart,121.5,0,0\n\"a, b\",121.5,100.5,2\n").unwrap();
+        let last = survey.at(100.5.m()).unwrap();
+        assert!((last.attitude.azimuth.true_north().unwrap().in_deg() - 120.0).abs() < 1e-12);
+        assert_eq!(survey.hole().unwrap().text(), "X-1");
+        assert_eq!(survey.tie().unwrap().words(), "rotary table 32.4 m above mean sea level");
+        let feet = parse(&format!("{}{GOOD}", HEADER.replace("depth_unit: m", "depth_unit: ft"))).unwrap();
+        assert_eq!(feet.last_md(), 100.ft());
+    }
+
+    #[test]
+    fn byte_order_mark_carriage_returns_and_spreadsheet_padding_are_accepted() {
+        let plain = with_header(GOOD).unwrap();
+        let text = format!("\u{feff}{HEADER}{GOOD}\n,,\n").replace('\n', "\r\n").replace("north: grid", "north: grid,,");
+        assert_eq!(parse(&text).unwrap().stations(), plain.stations());
+    }
+
+    #[test]
+    fn undeclared_north_unit_or_datum_is_refused() {
+        let without = |key: &str| {
+            let header: String = HEADER.lines().filter(|l| !l.contains(key)).map(|l| format!("{l}\n")).collect();
+            refused(&format!("{header}{GOOD}"))
+        };
+        assert!(without("# north:").contains("from which north"), "{}", without("# north:"));
+        assert!(without("north_correction").contains("how grid north lies"));
+        assert!(without("depth_unit").starts_with("s.csv, line 7: the file does not say the unit of its depths; add a line"));
+        assert!(without("angle_unit").contains("unit of its angles"));
+        assert!(without("depth_datum").contains("depths count from"));
+        assert!(with_header(GOOD).is_ok());
+        let with = |from: &str, to: &str| refused(&format!("{HEADER}{GOOD}").replace(from, to));
+        assert!(with("north: grid", "north: east").contains("is no north"));
+        assert!(with("north: grid", "north: magnetic\n# north: grid").contains("declared again"));
+        assert!(with("north: grid", "north: true").contains("need no correction"));
+        assert!(with("-1.5", "-1,5").contains("decimal comma"));
+        assert!(with("-1.5", "999").contains("between -180"));
+        assert!(with("depth_unit: m", "depth_unit: fathom").contains("write m or ft"));
+        assert!(with("depth_unit: m", "depth_unit:").contains("has no value"));
+        assert!(with("angle_unit: deg", "angle_unit: grad").contains("convert them to degrees"));
+        assert!(with("datum: rotary table", "datum: sea").contains("are not read"));
+        assert!(with("32.4 m", "32.4").contains("has no unit"));
+        assert!(with("32.4 m", "high m").contains("not a number"));
+        assert!(with("# rotary_table", "# ground").contains("not of the rotary table"));
+        assert!(with("# hole: X-1", "# tie_in_tvd: 3 m").contains("tie-in is not whole"));
+        assert!(with("32.4 m", "32.4 m\n# ground_above_msl: 50 m").contains("above the rotary table"));
+        assert!(refused(&format!("{HEADER}{GOOD}# north: true\n")).contains("below the column names"));
+    }
+
+    #[test]
+    fn every_bad_row_says_where_and_what_to_do() {
+        assert_eq!(
+            refused_table("md,inclination,azimuth\n0,0,0\n200,1,120\n100,1,120\n"),
+            "s.csv, line 11, column \"md\": measured depth 100 m comes after 200 m, so the stations are not sorted; sort the stations by measured depth."
+        );
+        assert!(refused_table("md,inclination,azimuth\n0,0,0\n100,1,1\n100,1,2\n").contains("stands twice"));
+        assert!(refused_table("md,inclination,azimuth\n0,0,0\n").contains("one station"));
+        assert!(refused_table("md,inclination,azimuth\n").contains("no station"));
+        assert!(refused_table("md,azimuth\n0,0\n").contains("column \"inclination\": the column is missing"));
+        assert!(refused_table("md,md,inclination,azimuth\n0,0,0,0\n").contains("two columns"));
+        assert!(refused_table("0,0,0\n100,1,2\n").contains("column \"md\": the column is missing"));
+        assert!(refused_table("md;inclination;azimuth\n0;0;0\n").contains("not separated by commas"));
+        assert!(refused_table("md,inclination,azimuth\n0,0,0\n100,12,5,120\n").contains("4 values for 3 columns"));
+        assert_eq!(
+            refused_table("md,inclination,azimuth\n0,0,0\n100,\"12,5\",120\n"),
+            "s.csv, line 10, column \"inclination\": \"12,5\" has a decimal comma; write decimals with a point."
+        );
+        assert!(refused_table("md,inclination,azimuth\n0,0,0\n100,twelve,120\n").contains("\"twelve\" is not a number"));
+        assert!(refused_table("md,inclination,azimuth\n0,0,0\n100,,120\n").contains("value is missing"));
+        assert!(refused_table("md,inclination,azimuth\n0,0,0\n100,12\n").contains("ends before this column"));
+        assert!(refused_table("md,inclination,azimuth\n0,0,0\n100,181,120\n").contains("between 0° and 180°"));
+        assert!(refused_table("md,inclination,azimuth\n0,0,0\n100,-1,120\n").contains("between 0° and 180°"));
+        assert!(refused_table("md,inclination,azimuth\n0,0,0\n100,1,720\n").contains("between 0° and 360°"));
+        assert!(refused_table("md,inclination,azimuth\n0,0,0\n100,NaN,120\n").contains("not a finite number"));
+        assert!(refused_table("md,inclination,azimuth\n-5,0,0\n100,1,120\n").contains("is negative"));
+        assert!(refused_table("md,inclination,azimuth\n50,0,0\n100,1,120\n").contains("tie_in_tvd"));
+        assert_eq!(
+            refused(""),
+            "s.csv: the file is empty; give a survey with columns md, inclination, azimuth."
+        );
+        assert!(refused("# north: true\n").contains("holds no table"));
+        assert!(Survey::read_csv("no/such/file.csv").unwrap_err().to_string().contains("relative to the notebook"));
+    }
+
+    #[test]
+    fn a_file_may_begin_below_the_rotary_table() {
+        let header = HEADER.replace("# hole: X-1", "# tie_in_north: 1 m\n# tie_in_east: 2 m\n# tie_in_tvd: 49 m");
+        let survey = parse(&format!("{header}md,inclination,azimuth\n50,0,0\n100,1,120\n")).unwrap();
+        assert_eq!(survey.at(50.m()).unwrap().tvd, 49.m());
+        let far = header.replace("tie_in_tvd: 49 m", "tie_in_tvd: 490 m");
+        assert!(refused(&format!("{far}md,inclination,azimuth\n50,0,0\n100,1,120\n")).contains("farther than"));
+    }
+
+    #[test]
+    fn a_survey_without_end_is_refused_in_bounded_memory() {
+        let mut text = format!("{HEADER}md,inclination,azimuth\n");
+        for k in 0..=MOST_STATIONS {
+            text.push_str(&format!("{k},1,1\n"));
+        }
+        assert!(refused(&text).contains("more than 100000 stations"));
+    }
+
+    proptest! {
+        #[test]
+        fn never_panics_on_any_bytes(bytes in proptest::collection::vec(any::<u8>(), 0..2000)) {
+            let _ = read(Lines::over(bytes.as_slice(), "x"));
+        }
+
+        #[test]
+        fn never_panics_on_near_misses(table in "([a-z0-9,;.\"\\-# :]{0,30}\n){0,12}") {
+            let _ = with_header(&format!("md,inclination,azimuth\n{table}"));
+            let _ = parse(&table);
+        }
+    }
+}

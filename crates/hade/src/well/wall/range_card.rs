@@ -1,0 +1,405 @@
+//! The card of a recommended range.
+
+use super::limits::shown;
+use super::range::{RangeEnd, RangeInputs, RangeOutcome, RecommendedRange, WIDTHS};
+use super::second_route::ByVectors;
+use super::wall::Wall;
+use super::{direction, method};
+use crate::card::{
+    Axis, Card, Check, Column, Explain, Explanation, Figure, Formula, Item, Layer, Mark, Reference, Role, Step, Table,
+};
+use crate::error::Result;
+use crate::units::{Angle, GRAVITY, Pressure, Quantity, as_typed, fixed, with_typed_unit};
+
+impl Explain for RecommendedRange {
+    const KIND: &'static str = "recommended-range";
+    /// The search for an allowed width rests on iterations.
+    const REPLAY_TOLERANCE: f64 = 1e-8;
+    type Inputs = RangeInputs;
+    type Outcome = RangeOutcome;
+
+    fn compute(inputs: RangeInputs) -> Result<Self> {
+        Wall::new(inputs.wall)?.recommended(inputs.choices)
+    }
+    fn inputs(&self) -> RangeInputs {
+        RangeInputs { wall: self.wall.inputs, choices: self.choices }
+    }
+    fn outcome(&self) -> RangeOutcome {
+        RangeOutcome { bottom: self.bottom, top: self.top, at_widths: self.at_widths, breadth: self.breadth() }
+    }
+
+    /// Each condition that sets an end, by the second route, just inside and just outside it.
+    fn check(inputs: &RangeInputs, outcome: &RangeOutcome) -> Vec<Check> {
+        let Some(route) = ByVectors::new(&inputs.wall) else { return Vec::new() };
+        let mut checks = Vec::new();
+        if let Some(end) = outcome.bottom {
+            checks.extend(check_bottom(&route, inputs, end.pressure.si()));
+            checks.push(check_weights(inputs, "bottom", &end));
+        }
+        if let Some(end) = outcome.top {
+            checks.extend(check_top(&route, inputs, end.pressure.si()));
+            checks.push(check_weights(inputs, "top", &end));
+        }
+        if let (Some(bottom), Some(top), Some(breadth)) = (outcome.bottom, outcome.top, outcome.breadth) {
+            checks.push(Check::compare(
+                "bottom and breadth together make the top",
+                &[(bottom.pressure + breadth).in_mpa()],
+                &[top.pressure.in_mpa()],
+                route.size() * 1e-6 * 1e-12,
+                "MPa",
+            ));
+        }
+        for (pressure, degrees) in outcome.at_widths.iter().zip(WIDTHS) {
+            let Some(pressure) = pressure else { continue };
+            let [inside, outside] = width_held(&route, pressure.si(), Angle::deg(degrees).si());
+            checks.push(Check::holds(
+                format!("lower shear limit at {degrees}°: arcs just above it are within the width, looking all round"),
+                inside,
+                1e-9,
+                "rad",
+            ));
+            checks.push(Check::holds(
+                format!("lower shear limit at {degrees}°: arcs just below it are not"),
+                outside,
+                0.0,
+                "rad",
+            ));
+        }
+        if checks.is_empty() {
+            checks.push(Check::holds(
+                "no pressure between zero and twice the largest stress keeps the arcs within the width",
+                -tightest(&route, inputs),
+                0.0,
+                "rad",
+            ));
+        }
+        checks
+    }
+
+    fn explain(&self) -> Explanation {
+        let choices = self.choices;
+        let mut inputs = self.wall.items();
+        inputs.extend([
+            Item::typed("TVD", "true vertical depth below the rotary table", choices.tvd_below_rotary),
+            Item::typed("w", "allowed width of a failing arc, per lobe", choices.allowed_width).chosen(),
+            Item::typed("m_b", "margin over the pore pressure at the bottom", choices.margin_bottom).chosen(),
+            Item::typed("m_t", "margin under the lowest upper limit at the top", choices.margin_top).chosen(),
+        ]);
+        let mut results = Vec::new();
+        for (end, at, name) in [(self.bottom, "b", "bottom"), (self.top, "t", "top")] {
+            let Some(end) = end else { continue };
+            results.extend([
+                Item::computed(&format!("p_{at}"), format!("{name} of the recommended range"), end.pressure),
+                Item::computed(&format!("g_{at}"), format!("{name}, gradient from the rotary table"), end.gradient),
+                Item::computed(&format!("ρ_{at}"), format!("{name}, mud weight at TVD below rotary"), end.mud_weight),
+            ]);
+        }
+        let mut method = method::with_strength(
+            &self.wall,
+            "The limits of the wall, with the width of failing arc that is allowed and the margins that were chosen. Pressure, mean gradient and static mud weight refer to true vertical depth below the rotary table.",
+        );
+        method.formulas.extend([
+            Formula::new("p_b = max(p_(l s)(w), P_p + m_b)", "p_b = max(p_ls(w), P_p + m_b)"),
+            Formula::new("p_t = min(S_3, p_i, p_(u s)) - m_t", "p_t = min(S_3, p_i, p_us) − m_t"),
+            Formula::new("rho = p / (g \"TVD\")", "ρ = p / (g TVD)"),
+        ]);
+        method.references.push(Reference::new(
+            "Zoback, M.D. (2007) Reservoir Geomechanics, Cambridge University Press, ch. 10 (mud weights from limits of the wall)",
+        ));
+        Explanation {
+            title: format!("Recommended range of pressure for {}", self.wall.place()),
+            headline: self.headline(),
+            inputs,
+            results,
+            method,
+            steps: self.steps(),
+            figures: vec![self.figure()],
+            notes: self.notes(),
+            topics: ["mud-weight", "limits", "breakout", "wall", "elastic"].map(str::to_owned).to_vec(),
+        }
+    }
+
+    fn upstream(&self) -> Vec<Card> {
+        self.wall.upstream()
+    }
+}
+
+fn line(end: &RangeEnd) -> String {
+    format!("{} ({}, {})", end.pressure, end.mud_weight, end.gradient)
+}
+
+impl RecommendedRange {
+    fn headline(&self) -> String {
+        match (self.bottom, self.top) {
+            (Some(bottom), Some(top)) if self.is_empty() => format!(
+                "no range: the bottom {} is not below the top {}",
+                line(&bottom),
+                line(&top)
+            ),
+            (Some(bottom), Some(top)) => format!("{} to {}", line(&bottom), line(&top)),
+            (None, _) => "no range: no pressure keeps failing arcs within the allowed width".to_owned(),
+            (Some(_), None) => "no range: no pressure is safe against parting or shear at the top".to_owned(),
+        }
+    }
+
+    fn notes(&self) -> Vec<String> {
+        let mut notes = Vec::new();
+        if let Some(bottom) = self.bottom {
+            notes.push(format!("At the bottom {}.", bottom.governed_by.words()));
+        }
+        if let Some(top) = self.top {
+            notes.push(format!("At the top {}.", top.governed_by.words()));
+        }
+        if self.is_empty() {
+            notes.push("The range is empty: with these choices no mud weight is recommended. Change the hole's direction, the allowed width or a margin, or better the inputs; each is the engineer's decision.".to_owned());
+        }
+        if self.limits.initiation.pressure().is_none() {
+            notes.push("At no pressure is the wall safe from both parting and spalling.".to_owned());
+        }
+        if self.limits.upper_shear.pressure().is_none() {
+            notes.push("At no pressure is the whole wall within its shear strength.".to_owned());
+        }
+        notes.push("Hold static density less swab against the bottom, and circulating density and surge against the top.".to_owned());
+        notes.push(direction::reference(self.wall.attitude));
+        notes
+    }
+
+    fn steps(&self) -> Vec<Step> {
+        let c = &self.choices;
+        let mut steps = self.wall.inputs.rock.strength.steps();
+        let mpa = |p: Pressure| fixed(p.in_mpa(), 4);
+        steps.push(Step::worked(format!(
+            "p_b: lower shear limit at {}° = {}; P_p + m_b = {} + {} = {} MPa",
+            as_typed(c.allowed_width.in_deg()),
+            shown(&self.limits.lower_shear),
+            mpa(self.wall.inputs.pore),
+            mpa(c.margin_bottom),
+            mpa(self.wall.inputs.pore + c.margin_bottom)
+        )));
+        steps.push(Step::worked(format!(
+            "p_t: S_3 = {}, p_i = {}, p_us = {}; the lowest less m_t = {}",
+            shown(&self.limits.least_stress),
+            shown(&self.limits.initiation),
+            shown(&self.limits.upper_shear),
+            with_typed_unit(c.margin_top)
+        )));
+        for (end, name) in [(self.bottom, "bottom"), (self.top, "top")] {
+            let Some(end) = end else { continue };
+            steps.push(Step::worked(format!(
+                "{name}: ρ = {} · 10⁶ / ({GRAVITY} · {}) = {} kg/m³ = {}",
+                mpa(end.pressure),
+                as_typed(c.tvd_below_rotary.in_m()),
+                fixed(end.mud_weight.in_kg_m3(), 2),
+                end.mud_weight
+            )));
+        }
+        steps.push(Step::Table { table: self.ends_table() });
+        steps.push(Step::Table { table: self.widths_table() });
+        steps
+    }
+
+    fn ends_table(&self) -> Table {
+        let row = |name: &str, end: Option<RangeEnd>| {
+            let Some(end) = end else {
+                return vec![
+                    name.to_owned(),
+                    "none".to_owned(),
+                    "–".to_owned(),
+                    "–".to_owned(),
+                    "no pressure is safe".to_owned(),
+                ];
+            };
+            vec![
+                name.to_owned(),
+                fixed(end.pressure.in_mpa(), 2),
+                fixed(end.gradient.in_mpa_per_km(), 2),
+                fixed(end.mud_weight.in_sg(), 3),
+                end.governed_by.words().to_owned(),
+            ]
+        };
+        Table {
+            caption: if self.is_empty() {
+                "Recommended range: EMPTY with these choices".to_owned()
+            } else {
+                "Recommended range".to_owned()
+            },
+            columns: vec![
+                Column::text("end"),
+                Column::number("pressure", "MPa"),
+                Column::number("gradient", "MPa/km"),
+                Column::number("mud weight", "sg"),
+                Column::text("what governs"),
+            ],
+            rows: vec![row("top", self.top), row("bottom", self.bottom)],
+        }
+    }
+
+    fn widths_table(&self) -> Table {
+        let tvd = self.choices.tvd_below_rotary;
+        let mut rows: Vec<(Angle, Option<Pressure>)> = self.lower_shear_at_widths().to_vec();
+        let chosen = self.choices.allowed_width;
+        if !rows.iter().any(|(width, _)| *width == chosen) {
+            rows.push((chosen, self.limits.lower_shear.pressure()));
+            rows.sort_by(|a, b| a.0.si().total_cmp(&b.0.si()));
+        }
+        let cells = |p: Option<Pressure>| match p {
+            Some(p) => [
+                fixed(p.in_mpa(), 2),
+                fixed(p.gradient_over(tvd).in_mpa_per_km(), 2),
+                fixed(p.mud_weight_at(tvd).in_sg(), 3),
+            ],
+            None => ["none".to_owned(), "–".to_owned(), "–".to_owned()],
+        };
+        Table {
+            caption: "Lower shear limit at widths of failing arc, per lobe".to_owned(),
+            columns: vec![
+                Column::number("width", "°"),
+                Column::number("pressure", "MPa"),
+                Column::number("gradient", "MPa/km"),
+                Column::number("mud weight", "sg"),
+                Column::text("choice"),
+            ],
+            rows: rows
+                .into_iter()
+                .map(|(width, p)| {
+                    let [a, b, c] = cells(p);
+                    let mark = if width == chosen { "allowed" } else { "" };
+                    vec![as_typed(width.in_deg()), a, b, c, mark.to_owned()]
+                })
+                .collect(),
+        }
+    }
+
+    /// Pressure against allowed width: the lower limit as a curve, the others as levels, the range
+    /// as a band.
+    fn figure(&self) -> Figure {
+        let wall = &self.wall;
+        let curve: Vec<[f64; 2]> = (0..=18)
+            .map(|k| f64::from(k) * 5.0)
+            .filter_map(|degrees| {
+                let at = wall.limits_at_width(Angle::deg(degrees)).ok()?;
+                Some([degrees, at.lower_shear.pressure()?.in_mpa()])
+            })
+            .collect();
+        let mut levels = vec![("P_p", Role::Quiet, wall.inputs.pore.in_mpa())];
+        for (limit, label, role) in [
+            (self.limits.least_stress, "S_3", Role::Second),
+            (self.limits.initiation, "initiation", Role::Third),
+            (self.limits.upper_shear, "upper shear", Role::Fourth),
+        ] {
+            if let Some(p) = limit.pressure() {
+                levels.push((label, role, p.in_mpa()));
+            }
+        }
+        let (mut low, mut high) = (f64::INFINITY, f64::NEG_INFINITY);
+        for y in curve.iter().map(|[_, y]| *y).chain(levels.iter().map(|(.., y)| *y)) {
+            low = low.min(y);
+            high = high.max(y);
+        }
+        let room = 0.08 * (high - low).max(1.0);
+        let mut layers = Vec::new();
+        if let (Some(bottom), Some(top), false) = (self.bottom, self.top, self.is_empty()) {
+            layers.push(Layer::RowBand {
+                label: "recommended".to_owned(),
+                role: Role::Range,
+                from: bottom.pressure.in_mpa(),
+                to: top.pressure.in_mpa(),
+            });
+        }
+        for (label, role, y) in levels {
+            layers.push(Layer::line(label, role, [[0.0, y], [90.0, y]]));
+        }
+        if !curve.is_empty() {
+            layers.push(Layer::line("lower shear", Role::First, curve));
+        }
+        let allowed = self.choices.allowed_width.in_deg();
+        if let Some(p) = self.limits.lower_shear.pressure().filter(|_| allowed <= 90.0) {
+            layers.push(Layer::Points {
+                label: "allowed".to_owned(),
+                role: Role::Limit,
+                mark: Mark::Dot,
+                points: vec![[allowed, p.in_mpa()]],
+            });
+        }
+        Figure {
+            caption: "Limits of pressure in the hole against the allowed width of a failing arc; the band is the recommended range.".to_owned(),
+            alt: format!(
+                "Lower shear limit falling with allowed width, other limits as level lines. {}.",
+                self.headline()
+            ),
+            x: Axis::new("allowed width of a failing arc (°)", 0.0, 90.0).ticks_every(30.0),
+            y: Axis::new("pressure in the hole (MPa)", low - room, high + room),
+            equal_scale: false,
+            layers,
+        }
+    }
+}
+
+/// By how much the widest arc just above a pressure is beyond a width, and just below it within.
+fn width_held(route: &ByVectors, pressure: f64, width: f64) -> [f64; 2] {
+    let nudge = 1e-6 * route.size();
+    // An arc too narrow for the looks still shows in the worst excess.
+    let over = |p: f64| {
+        let wider = (route.widest(p) - width).clamp(-10.0, 10.0);
+        if width == 0.0 && wider <= 0.0 && route.worst(p) > 1e-11 * route.size() { 1e-9 } else { wider }
+    };
+    [over(pressure + nudge), -over(pressure - nudge)]
+}
+
+/// The bottom holds both conditions just above it and breaks one of them just below.
+fn check_bottom(route: &ByVectors, inputs: &RangeInputs, bottom: f64) -> [Check; 2] {
+    let nudge = 1e-6 * route.size();
+    let balance = inputs.wall.pore.si() + inputs.choices.margin_bottom.si();
+    let [inside, outside] = width_held(route, bottom, inputs.choices.allowed_width.si());
+    let above = inside.max((balance - bottom - nudge) / route.size());
+    // Below the bottom either the arcs are too wide (outside < 0) or the margin is lost.
+    let below = outside.min((bottom - nudge - balance) / route.size());
+    [
+        Check::holds("bottom: arcs within the allowed width and the margin kept, just above it", above, 1e-9, ""),
+        Check::holds("bottom: one of the two lost just below it", below, 0.0, ""),
+    ]
+}
+
+/// The top with its margin holds the three upper conditions just below, and breaks one just above.
+fn check_top(route: &ByVectors, inputs: &RangeInputs, top: f64) -> [Check; 2] {
+    let size = route.size();
+    let nudge = 1e-6 * size;
+    let bare = top + inputs.choices.margin_top.si();
+    let tensile = inputs.wall.rock.tensile_strength.si();
+    let [.., s3] = route.far().values_by_invariants();
+    let broken = |p: f64| {
+        ((p - s3) / size).max((-tensile - route.least_round(p)) / size).max(route.worst_of_side(p, 1.0) / size)
+    };
+    [
+        Check::holds(
+            "top: S3, parting and shear all kept just below it (with its margin put back)",
+            broken(bare - nudge),
+            1e-9,
+            "",
+        ),
+        Check::holds("top: one of the three lost just above it", -broken(bare + nudge), 0.0, ""),
+    ]
+}
+
+/// ρ g TVD and gradient · TVD give the pressure back.
+fn check_weights(inputs: &RangeInputs, name: &str, end: &RangeEnd) -> Check {
+    let tvd = inputs.choices.tvd_below_rotary;
+    let pressure = end.pressure.in_mpa();
+    Check::compare(
+        format!("{name}: the column of its mud weight, and its gradient times TVD, give the pressure back"),
+        &[end.mud_weight.column(tvd).in_mpa(), (end.gradient * tvd).in_mpa()],
+        &[pressure, pressure],
+        1e-12 * pressure.abs().max(1e-6),
+        "MPa",
+    )
+}
+
+/// By how much the tightest of many pressures misses the allowed width.
+fn tightest(route: &ByVectors, inputs: &RangeInputs) -> f64 {
+    let width = inputs.choices.allowed_width.si();
+    (0..=400)
+        .map(|k| route.widest(f64::from(k) * route.size() / 200.0))
+        .fold(f64::INFINITY, f64::min)
+        .min(10.0)
+        - width
+}

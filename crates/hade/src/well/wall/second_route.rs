@@ -1,0 +1,228 @@
+//! The second route of the checks: the wall rebuilt from the geographic tensor and the hole's axis
+//! vectors, its strength by eigenvalues of the whole tensor, its worst place by looking everywhere.
+//!
+//! In vectors, with n the direction of the tool face, m the one around and t along the hole:
+//! σθ = 3 (tr S − t·S t) − 4 n·S n − p, σz = t·S t − ν (4 n·S n − 2 (tr S − t·S t)), τθz = 2 t·S m.
+//! A transposed turn, a tool face of the wrong sense and a mistaken component all show here.
+
+use std::f64::consts::PI;
+
+use super::wall::WallInputs;
+use crate::frames::vector::{M3, V3, add, dot, scale};
+use crate::stress::tensor::Tensor;
+use crate::units::Quantity;
+
+/// A wall by vectors, in Pa and radians.
+#[derive(Clone, Copy, Debug)]
+pub(super) struct ByVectors {
+    far: Tensor,
+    top: V3,
+    right: V3,
+    along: V3,
+    poisson: f64,
+    pore: f64,
+    /// tan(45° + φ/2), from which this route has q and UCS.
+    tangent: f64,
+    ucs: f64,
+}
+
+/// How finely the second route looks round the hole.
+const LOOKS: u32 = 720;
+
+impl ByVectors {
+    pub fn new(inputs: &WallInputs) -> Option<Self> {
+        let far = inputs.stress.geographic()?;
+        let [top, right, along] = inputs.stress.attitude()?.matrix().ok()?;
+        let (tangent, ucs) = inputs.rock.strength.by_tangent();
+        Some(ByVectors {
+            far,
+            top,
+            right,
+            along,
+            poisson: inputs.rock.poisson,
+            pore: inputs.pore.si(),
+            tangent,
+            ucs: ucs.si(),
+        })
+    }
+
+    /// A size for tolerances.
+    pub fn size(&self) -> f64 {
+        (self.far.largest() + self.pore.abs() + self.ucs).max(1.0)
+    }
+
+    pub fn direction(&self, theta: f64) -> V3 {
+        add(scale(self.top, theta.cos()), scale(self.right, theta.sin()))
+    }
+
+    /// Along the hole.
+    pub fn direction_along(&self) -> V3 {
+        self.along
+    }
+
+    fn around(&self, theta: f64) -> V3 {
+        add(scale(self.top, -theta.sin()), scale(self.right, theta.cos()))
+    }
+
+    /// Radial, hoop, axial and τθz.
+    pub fn parts(&self, theta: f64, pressure: f64) -> [f64; 4] {
+        let (n, m, t) = (self.direction(theta), self.around(theta), self.along);
+        let traction = self.far.times(t);
+        let axial = dot(t, traction);
+        let [a, b, c, ..] = self.far.0;
+        let across = a + b + c - axial;
+        let normal = dot(n, self.far.times(n));
+        [
+            pressure,
+            3.0 * across - 4.0 * normal - pressure,
+            axial - self.poisson * (4.0 * normal - 2.0 * across),
+            2.0 * dot(m, traction),
+        ]
+    }
+
+    /// The total stress at the wall in north, east, down, as a whole tensor.
+    pub fn tensor(&self, theta: f64, pressure: f64) -> Tensor {
+        let [radial, hoop, axial, shear] = self.parts(theta, pressure);
+        self.put_together(theta, radial, hoop, axial, shear)
+    }
+
+    fn put_together(&self, theta: f64, radial: f64, hoop: f64, axial: f64, shear: f64) -> Tensor {
+        let axes: M3 = [self.direction(theta), self.around(theta), self.along];
+        let plain = Tensor::from_axes([radial, hoop, axial], &axes);
+        // τ (m tᵀ + t mᵀ) as two dyads.
+        let root = std::f64::consts::FRAC_1_SQRT_2;
+        let [n, m, t] = axes;
+        let tilted = [n, scale(add(m, t), root), scale(add(m, scale(t, -1.0)), root)];
+        plain.add(Tensor::from_axes([0.0, shear, -shear], &tilted))
+    }
+
+    /// Effective principal stresses by the whole tensor's eigenvalues.
+    pub fn effective(&self, theta: f64, pressure: f64) -> [f64; 3] {
+        self.tensor(theta, pressure).eigen().values.map(|v| v - self.pore)
+    }
+
+    /// σ1' − q σ3' − UCS.
+    pub fn excess(&self, theta: f64, pressure: f64) -> f64 {
+        let [s1, _, s3] = self.effective(theta, pressure);
+        s1 - self.tangent * self.tangent * s3 - self.ucs
+    }
+
+    /// The least effective principal stress within the wall: the radial stress is put out of the way
+    /// first.
+    fn least_in_wall(&self, theta: f64, pressure: f64) -> f64 {
+        let [_, hoop, axial, shear] = self.parts(theta, pressure);
+        let aside = hoop.max(axial) + shear.abs();
+        self.put_together(theta, aside, hoop, axial, shear).eigen().values[2] - self.pore
+    }
+
+    /// The greatest value of a function over tool faces 0–180° and where, by looking everywhere and
+    /// closing in on the best look.
+    pub fn greatest(&self, f: impl Fn(f64) -> f64) -> (f64, f64) {
+        let step = PI / f64::from(LOOKS);
+        let (mut best, mut place) = (f64::NEG_INFINITY, 0.0);
+        for k in 0..LOOKS {
+            let theta = f64::from(k) * step;
+            let value = f(theta);
+            if value > best {
+                (best, place) = (value, theta);
+            }
+        }
+        // Golden section between the neighbours.
+        let ratio = 0.5 * (5.0_f64.sqrt() - 1.0);
+        let (mut low, mut high) = (place - step, place + step);
+        for _ in 0..60 {
+            let (a, b) = (high - ratio * (high - low), low + ratio * (high - low));
+            if f(a) > f(b) { high = b } else { low = a }
+        }
+        let middle = 0.5 * (low + high);
+        if f(middle) > best { (f(middle), middle) } else { (best, place) }
+    }
+
+    /// The worst excess round the hole at a pressure.
+    pub fn worst(&self, pressure: f64) -> f64 {
+        self.greatest(|theta| self.excess(theta, pressure)).0
+    }
+
+    /// The worst excess among places that more pressure makes worse (side +1) or better (side −1).
+    pub fn worst_of_side(&self, pressure: f64, side: f64) -> f64 {
+        let nudge = 1e-6 * self.size();
+        self.greatest(|theta| {
+            let now = self.excess(theta, pressure);
+            if (self.excess(theta, pressure + nudge) - now) * side > 0.0 { now } else { -self.size() }
+        })
+        .0
+    }
+
+    /// The least effective principal stress round the hole.
+    pub fn least_round(&self, pressure: f64) -> f64 {
+        -self.greatest(|theta| -self.effective(theta, pressure)[2]).0
+    }
+
+    /// The same within the wall alone, the stress across it put out of the way.
+    pub fn least_in_wall_round(&self, pressure: f64) -> f64 {
+        -self.greatest(|theta| -self.least_in_wall(theta, pressure)).0
+    }
+
+    /// The widest failing arc at a pressure, by looking everywhere and halving at its edges;
+    /// infinite when all looks fail. An arc narrower than a look may be missed.
+    pub fn widest(&self, pressure: f64) -> f64 {
+        let step = PI / f64::from(LOOKS);
+        let noise = 1e-11 * self.size();
+        let fails = |theta: f64| self.excess(theta, pressure) > noise;
+        let looks: Vec<bool> = (0..LOOKS).map(|k| fails(f64::from(k) * step)).collect();
+        let Some(sound) = (0..LOOKS).find(|k| !looks.get(*k as usize).copied().unwrap_or(false)) else {
+            return f64::INFINITY;
+        };
+        let edge = |inside: f64, outside: f64| {
+            let (mut inside, mut outside) = (inside, outside);
+            for _ in 0..60 {
+                let middle = 0.5 * (inside + outside);
+                if fails(middle) { inside = middle } else { outside = middle }
+            }
+            0.5 * (inside + outside)
+        };
+        let (mut widest, mut from) = (0.0_f64, None);
+        for k in sound + 1..=sound + LOOKS {
+            let now = looks.get((k % LOOKS) as usize).copied().unwrap_or(false);
+            let (here, before) = (f64::from(k) * step, (f64::from(k) - 1.0) * step);
+            match (now, from) {
+                (true, None) => from = Some(edge(here, before)),
+                (false, Some(start)) => {
+                    widest = widest.max(edge(before, here) - start);
+                    from = None;
+                }
+                _ => {}
+            }
+        }
+        widest
+    }
+
+    /// The whole elastic field at a tool face and a distance of `ratio` radii, in north, east, down
+    /// (Hiramatsu and Oka 1962): the wall's stresses at 1, the far field a long way off.
+    pub fn field(&self, theta: f64, ratio: f64, pressure: f64) -> Tensor {
+        let component = |a: V3, b: V3| dot(a, self.far.times(b));
+        let (h, r, t) = (self.top, self.right, self.along);
+        let (x, y, z) = (component(h, h), component(r, r), component(t, t));
+        let (xy, yz, xz) = (component(h, r), component(r, t), component(h, t));
+        let (s2, c2) = (2.0 * theta).sin_cos();
+        let (s, c) = theta.sin_cos();
+        let k2 = 1.0 / (ratio * ratio);
+        let k4 = k2 * k2;
+        let (mean, half) = (0.5 * (x + y), 0.5 * (x - y));
+        let wave = half * c2 + xy * s2;
+        let radial = mean * (1.0 - k2) + wave * (1.0 + 3.0 * k4 - 4.0 * k2) + pressure * k2;
+        let hoop = mean * (1.0 + k2) - wave * (1.0 + 3.0 * k4) - pressure * k2;
+        let axial = z - 4.0 * self.poisson * wave * k2;
+        let r_hoop = (xy * c2 - half * s2) * (1.0 - 3.0 * k4 + 2.0 * k2);
+        let hoop_z = (yz * c - xz * s) * (1.0 + k2);
+        let r_z = (xz * c + yz * s) * (1.0 - k2);
+        let local = Tensor([radial, hoop, axial, r_hoop, hoop_z, r_z]);
+        let axes = [self.direction(theta), self.around(theta), self.along];
+        local.turned(&crate::frames::vector::transpose(&axes))
+    }
+
+    /// The far field in north, east, down.
+    pub fn far(&self) -> Tensor {
+        self.far
+    }
+}

@@ -1,0 +1,76 @@
+//! The lowest pressure at which no failing arc is wider than an allowed width.
+
+use super::circle::greatest;
+use super::shear::{ShearWall, Window};
+
+/// What the search found.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub(crate) enum AtWidth {
+    At(f64),
+    /// No pressure keeps every failing arc within the width.
+    Never,
+}
+
+impl ShearWall {
+    /// The lowest pressure at which the widest failing arc is at most `width` (tool face, radians,
+    /// more than zero). A wall that fails all round is wider than any width.
+    ///
+    /// Where the whole wall holds between two pressures, everything that fails below the lower of
+    /// them fails there by closing in, and the arcs only grow as the pressure falls: the width is
+    /// bracketed by that limit and the pressure at which the last place fails. Where the whole wall
+    /// holds at no pressure, arcs of two kinds grow in opposite senses, so the pressures around the
+    /// least bad one are looked through from below.
+    pub fn lower_at_width(&self, width: f64) -> AtWidth {
+        match self.window() {
+            Window::Open { lower, .. } => {
+                let least = greatest(|c, s| self.lower_at(c, s).negated(), self.scale());
+                let fine = |p: f64| self.failing(p).widest() <= width;
+                AtWidth::At(self.boundary(-least.value - 1e-9 * self.scale(), lower.value, fine))
+            }
+            Window::Closed { .. } => self.lower_of_closed(width),
+        }
+    }
+
+    fn lower_of_closed(&self, width: f64) -> AtWidth {
+        const PIECES: u32 = 512;
+        let fine = |p: f64| self.failing(p).widest() <= width;
+        let middle = self.least_bad().pressure;
+        let all = |p: f64| self.failing(p).whole;
+        let (mut low, mut high, mut step) = (middle, middle, 0.01 * self.scale().max(1.0));
+        for _ in 0..60 {
+            low = middle - step;
+            high = middle + step;
+            if all(low) && all(high) {
+                break;
+            }
+            step *= 2.0;
+        }
+        let place = |k: u32| low + (high - low) * f64::from(k) / f64::from(PIECES);
+        let first = (0..=PIECES).find(|k| fine(place(*k)));
+        match first {
+            Some(0) => AtWidth::At(low),
+            Some(k) => AtWidth::At(self.boundary(place(k - 1), place(k), fine)),
+            None if fine(middle) => {
+                let below = (0..=PIECES).rev().map(place).find(|p| *p < middle).unwrap_or(low);
+                AtWidth::At(self.boundary(below, middle, fine))
+            }
+            None => AtWidth::Never,
+        }
+    }
+
+    /// The edge between a pressure that is not fine and a higher one that is, on the fine side.
+    fn boundary(&self, mut bad: f64, mut good: f64, fine: impl Fn(f64) -> bool) -> f64 {
+        for _ in 0..200 {
+            let middle = 0.5 * (bad + good);
+            if fine(middle) {
+                good = middle;
+            } else {
+                bad = middle;
+            }
+            if good - bad <= 1e-13 * self.scale() {
+                break;
+            }
+        }
+        good
+    }
+}

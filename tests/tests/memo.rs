@@ -1,0 +1,8 @@
+//! The main job, end to end: the demo notebook becomes a memo, through the `hade` command alone.
+
+#[path = "memo/demo.rs"]
+mod demo;
+#[path = "memo/refusals.rs"]
+mod refusals;
+#[path = "memo/support.rs"]
+mod support;
