@@ -1,4 +1,4 @@
-//! Packs the source of the `hade` library and the workspace's lock file into this crate, so that
+//! Packs the source of the `hade` library and its part of the workspace's lock file into this crate, so that
 //! an installed `hade` can compile the library with the user's own compiler.
 //!
 //! Two manifests are made from `crates/hade/Cargo.toml`: the *stand-alone* one (workspace
@@ -32,7 +32,8 @@ fn main() -> Result<(), Box<dyn Error>> {
     }
     generated.push_str("];\n");
     let lock = root.join("Cargo.lock");
-    writeln!(generated, "pub(crate) static LOCK: &[u8] = include_bytes!({lock:?});")?;
+    let locked: Table = fs::read_to_string(&lock)?.parse()?;
+    fs::write(out.join("Cargo.lock"), toml::to_string(&pruned_lock(&locked, &standalone)?)?)?;
     writeln!(generated, "pub(crate) static MINISTD: &[(&str, &[u8])] = &[")?;
     let ministd = here.join("ministd");
     for file in files_below(&ministd)? {
@@ -130,6 +131,55 @@ fn merged(base: &Value, local: &Value) -> Value {
         }
     }
     Value::Table(result)
+}
+
+/// The part of the workspace's lock file that `hade` needs. Other crates' versions then do not
+/// make a session's libraries stale.
+fn pruned_lock(lock: &Table, standalone: &Table) -> Result<Table, Box<dyn Error>> {
+    let packages = lock.get("package").and_then(Value::as_array).ok_or("no packages in Cargo.lock")?;
+    let text = |package: &Value, key: &str| package.get(key).and_then(Value::as_str).unwrap_or_default().to_owned();
+    let needs = |package: &Value| -> Vec<String> {
+        let list = package.get("dependencies").and_then(Value::as_array);
+        list.into_iter().flatten().filter_map(Value::as_str).map(str::to_owned).collect()
+    };
+    // `name`, `name version` or `name version (source)`.
+    let find = |spec: &str| {
+        let mut parts = spec.split(' ');
+        let (name, version) = (parts.next().unwrap_or_default(), parts.next());
+        packages
+            .iter()
+            .position(|package| text(package, "name") == name && version.is_none_or(|v| text(package, "version") == v))
+    };
+    let mut root = find("hade").map(|at| packages[at].clone()).ok_or("hade is not in Cargo.lock")?;
+    // The lock file does not tell dev-dependencies apart; the manifest does.
+    let direct: Vec<String> = standalone
+        .get("dependencies")
+        .and_then(Value::as_table)
+        .into_iter()
+        .flatten()
+        .map(|(key, value)| value.get("package").and_then(Value::as_str).unwrap_or(key).to_owned())
+        .collect();
+    let kept: Vec<String> = needs(&root)
+        .into_iter()
+        .filter(|spec| direct.iter().any(|name| spec.split(' ').next() == Some(name)))
+        .collect();
+    let mut wanted = std::collections::BTreeSet::new();
+    let mut todo = kept.clone();
+    while let Some(spec) = todo.pop() {
+        let at = find(&spec).ok_or_else(|| format!("{spec} is not in Cargo.lock"))?;
+        if wanted.insert(at) {
+            todo.extend(needs(&packages[at]));
+        }
+    }
+    if let Some(root) = root.as_table_mut() {
+        root.insert("dependencies".into(), Value::Array(kept.into_iter().map(Value::String).collect()));
+    }
+    let mut list = vec![root];
+    list.extend(wanted.into_iter().map(|at| packages[at].clone()));
+    let mut out = Table::new();
+    out.insert("version".into(), lock.get("version").cloned().ok_or("Cargo.lock has no version")?);
+    out.insert("package".into(), Value::Array(list));
+    Ok(out)
 }
 
 /// The manifest a session sees: nothing to resolve, nothing for the analyser to parse.

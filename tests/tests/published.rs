@@ -2,3 +2,7 @@
 
 #[path = "published/stress.rs"]
 mod stress;
+#[path = "published/survey.rs"]
+mod survey;
+#[path = "published/overburden.rs"]
+mod overburden;

@@ -2,3 +2,7 @@
 
 #[path = "reference/stress.rs"]
 mod stress;
+#[path = "reference/survey.rs"]
+mod survey;
+#[path = "reference/overburden.rs"]
+mod overburden;

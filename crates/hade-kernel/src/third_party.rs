@@ -23,7 +23,7 @@ const EXTERNS: &str = "externs";
 
 /// Short hash of everything the compiled crates depend on.
 pub(crate) fn key(toolchain: &Toolchain) -> String {
-    packed::hash([b"libraries 1", toolchain.version.as_bytes(), packed::STANDALONE.as_bytes(), packed::LOCK])
+    packed::hash([b"libraries 1", toolchain.version.as_bytes(), packed::STANDALONE.as_bytes(), packed::LOCK.as_bytes()])
 }
 
 /// Builds into `folder`, which is finished on success. The caller holds the cache's lock.
@@ -37,7 +37,7 @@ pub(crate) fn build(folder: &Path, toolchain: &Toolchain, progress: &mut dyn Pro
     let src = work.join("src");
     fs::create_dir_all(&src).map_err(Error::file("make the folder", &src))?;
     write("Cargo.toml", packed::STANDALONE.as_bytes())?;
-    write("Cargo.lock", packed::LOCK)?;
+    write("Cargo.lock", packed::LOCK.as_bytes())?;
     // An empty library with the dependencies of `hade`: Cargo builds them all the same.
     write("src/lib.rs", b"")?;
 
@@ -45,7 +45,7 @@ pub(crate) fn build(folder: &Path, toolchain: &Toolchain, progress: &mut dyn Pro
         Ok(built) => built,
         Err(_) => {
             progress.step(Step::Notice("some source code is not on this machine yet; fetching it from crates.io"));
-            write("Cargo.lock", packed::LOCK)?;
+            write("Cargo.lock", packed::LOCK.as_bytes())?;
             run(&work, toolchain, false, progress).map_err(|why| Error::Build { why })?
         }
     };

@@ -172,12 +172,15 @@ pub(crate) fn number(text: &str) -> std::result::Result<f64, (String, String)> {
     match text.parse::<f64>() {
         Ok(value) if value.is_finite() => Ok(value),
         Ok(_) => Err((format!("\"{}\" is not a finite number", shown(text)), "leave such rows out".to_owned())),
-        Err(_) if text.is_empty() => Err(("the value is missing".to_owned(), "fill it in or remove the row".to_owned())),
-        Err(_) if text.replacen(',', ".", 1).parse::<f64>().is_ok() => Err((
-            format!("\"{}\" has a decimal comma", shown(text)),
-            "write decimals with a point".to_owned(),
-        )),
-        Err(_) => Err((format!("\"{}\" is not a number", shown(text)), "write a number, with a decimal point".to_owned())),
+        Err(_) if text.is_empty() => {
+            Err(("the value is missing".to_owned(), "fill it in or remove the row".to_owned()))
+        }
+        Err(_) if text.replacen(',', ".", 1).parse::<f64>().is_ok() => {
+            Err((format!("\"{}\" has a decimal comma", shown(text)), "write decimals with a point".to_owned()))
+        }
+        Err(_) => {
+            Err((format!("\"{}\" is not a number", shown(text)), "write a number, with a decimal point".to_owned()))
+        }
     }
 }
 

@@ -4,8 +4,12 @@
 use crate::card::{Card, Check, Data, Explain, Json};
 use crate::error::{Error, Result};
 use crate::faults::FrictionLimit;
+use crate::field::Overburden;
 use crate::frames::{Azimuth, Borehole, Chain, Geographic};
 use crate::stress::{MohrCircles, Principals, Stress, Traction};
+use crate::well::{
+    FailingArcs, Limits, MudPressure, Position, RecommendedRange, SurveyTable, WallAround, WallStress,
+};
 
 /// A kind of card: how it is computed and checked.
 #[derive(Clone, Copy)]
@@ -61,6 +65,15 @@ pub const KINDS: &[Kind] = &[
     kind::<Traction>(),
     kind::<MohrCircles>(),
     kind::<FrictionLimit>(),
+    kind::<SurveyTable>(),
+    kind::<Position>(),
+    kind::<Overburden>(),
+    kind::<MudPressure>(),
+    kind::<WallStress>(),
+    kind::<WallAround>(),
+    kind::<FailingArcs>(),
+    kind::<Limits>(),
+    kind::<RecommendedRange>(),
 ];
 
 fn kind_of(card: &Card) -> Result<&'static Kind> {
@@ -148,7 +161,8 @@ mod tests {
             .unwrap();
         let plane = Plane { strike: Azimuth::from_true_north(45.deg()), dip: 60.deg() };
         let sh = chain.carry(&s);
-        vec![
+        let mut cards = well_samples(sh);
+        cards.extend([
             breakout.perpendicular().card(),
             s.card(),
             stated.card(),
@@ -170,6 +184,61 @@ mod tests {
             s.on(plane).unwrap().card(),
             s.frictional_limit(31.mpa(), 0.6).unwrap().card(),
             s.mohr().effective(31.mpa()).unwrap().with_plane(plane).unwrap().card(),
+        ]);
+        cards
+    }
+
+    fn well_samples(sh: Stress<Borehole>) -> Vec<Card> {
+        let station = |md: f64, i: f64, a: f64| Station {
+            md: md.m(),
+            inclination: i.deg(),
+            azimuth: Azimuth::from_grid_north(a.deg()).with_convergence(0.8.deg()).unwrap(),
+        };
+        let survey =
+            Survey::from_stations(&[station(0.0, 0.0, 118.0), station(700.0, 0.5, 118.0), station(1300.0, 24.0, 120.0), station(2000.0, 42.0, 121.0), station(3500.0, 42.3, 119.5)])
+                .unwrap();
+        let tie = DatumTie::rotary_table_at(32.4.m()).unwrap().with_ground_at(25.m()).unwrap();
+        let log = DensityLog::from_samples(
+            &[(250.m(), 2.0.g_cm3()), (900.m(), 2.2.g_cm3()), (1800.m(), 2.4.g_cm3()), (3100.m(), 2.5.g_cm3())],
+            Datum::RotaryTable,
+        )
+        .unwrap()
+        .tied(tie)
+        .unwrap();
+        let overburden = log
+            .overburden(OverburdenInputs {
+                depth: Depth::below_rotary_table(2950.m()),
+                hole: tie,
+                top: Top::Land { mean_density: 1.9.g_cm3() },
+            })
+            .unwrap();
+        let strength = Strength::mohr_coulomb(12.mpa(), 32.deg());
+        let rock = Rock { poisson: 0.25, tensile_strength: 2.mpa(), strength };
+        let wall = Wall::new(WallInputs { stress: sh, pore: 31.2.mpa(), rock }).unwrap();
+        let weak = Rock { strength: Strength::mohr_coulomb_ucs(1.mpa(), 15.deg()), ..rock };
+        let weak = Wall::new(WallInputs { stress: sh, pore: 31.2.mpa(), rock: weak }).unwrap();
+        let choices = RangeChoices {
+            allowed_width: 60.deg(),
+            margin_bottom: 1.mpa(),
+            margin_top: 1.5.mpa(),
+            tvd_below_rotary: 2950.m(),
+        };
+        vec![
+            survey.table().unwrap().card(),
+            survey.at(2600.m()).unwrap().card(),
+            survey.at_tvd(2950.m()).unwrap().card(),
+            overburden.card(),
+            MudColumn { density: 1.3.sg(), tvd_below_rotary: 2950.m() }.pressure().unwrap().card(),
+            wall.stress_at(37.6.mpa(), 25.deg()).unwrap().card(),
+            wall.around(33.mpa()).unwrap().card(),
+            wall.failing_arcs(33.mpa()).unwrap().card(),
+            wall.failing_arcs(45.mpa()).unwrap().card(),
+            wall.failing_arcs(5.mpa()).unwrap().card(),
+            wall.limits().card(),
+            wall.limits_at_width(60.deg()).unwrap().card(),
+            weak.limits().card(),
+            wall.recommended(choices).unwrap().card(),
+            weak.recommended(choices).unwrap().card(),
         ]
     }
 
@@ -189,7 +258,7 @@ mod tests {
             let path = entry.unwrap().path();
             if path.is_dir() {
                 kinds_in(&path, found);
-            } else if path.extension().is_some_and(|e| e == "rs") && !path.ends_with("replay.rs") {
+            } else if path.extension().is_some_and(|e| e == "rs") && !path.ends_with("replay.rs") && !path.ends_with("sample.rs") {
                 let text = std::fs::read_to_string(&path).unwrap();
                 for rest in text.split("const KIND: &'static str = \"").skip(1) {
                     if text.contains("Explain for") {

@@ -1,7 +1,9 @@
 //! The weight of a column of rock from densities at depths: plain arithmetic, without a file.
 
 use crate::error::{Error, Result};
-use crate::units::{Density, GRAVITY, Length, Pressure, Quantity, require_between, require_not_negative, with_typed_unit};
+use crate::units::{
+    Density, GRAVITY, Length, Pressure, Quantity, require_between, require_not_negative, with_typed_unit,
+};
 
 /// Density of sea water, kg/m³: the usual value of the trade (the open ocean's lies between 1020 and
 /// 1030; Gill, A.E. (1982) Atmosphere–Ocean Dynamics, Academic Press, cited from memory).
@@ -50,7 +52,10 @@ impl DensityColumn {
                 if z <= z0 {
                     return Err(Error::not_physical(
                         format!("Depth {}", with_typed_unit(*tvd)),
-                        format!("it does not lie below the one before, {}; sort the column by depth.", with_typed_unit(Length::m(z0))),
+                        format!(
+                            "it does not lie below the one before, {}; sort the column by depth.",
+                            with_typed_unit(Length::m(z0))
+                        ),
                     ));
                 }
                 stress += 0.5 * (rho0 + rho) * GRAVITY * (z - z0);
@@ -99,9 +104,14 @@ mod tests {
     fn refuses_what_cannot_be_a_column() {
         let refused = |c: DensityColumn| c.vertical_stress().unwrap_err().to_string();
         assert!(refused(DensityColumn { tvd: vec![1.m()], ..column() }).contains("1 depths and 3 densities"));
-        assert!(refused(DensityColumn { tvd: vec![100.m(), 100.m(), 400.m()], ..column() }).contains("does not lie below"));
+        assert!(
+            refused(DensityColumn { tvd: vec![100.m(), 100.m(), 400.m()], ..column() }).contains("does not lie below")
+        );
         // g/cm³ taken for kg/m³ (traps.md 30).
-        assert!(refused(DensityColumn { density: vec![2.0.kg_m3(), 2.2.kg_m3(), 2.4.kg_m3()], ..column() }).contains("2 kg/m³"));
+        assert!(
+            refused(DensityColumn { density: vec![2.0.kg_m3(), 2.2.kg_m3(), 2.4.kg_m3()], ..column() })
+                .contains("2 kg/m³")
+        );
         assert!(refused(DensityColumn { density: vec![(-2000).kg_m3(); 3], ..column() }).contains("bulk density"));
         assert!(refused(DensityColumn { water_depth: (-1).m(), ..column() }).contains("water depth"));
         assert!(refused(DensityColumn { stress_at_top: f64::NAN.mpa(), ..column() }).contains("stress at the top"));

@@ -120,11 +120,7 @@ impl DensityLog {
 
     fn build(about: LogAbout, depths: Vec<f64>, densities: Vec<f64>, gaps: Vec<Gap>) -> Result<Self> {
         if depths.len() < 2 {
-            return Err(Error::out_of_range(
-                "the number of density samples",
-                depths.len().to_string(),
-                "two or more",
-            ));
+            return Err(Error::out_of_range("the number of density samples", depths.len().to_string(), "two or more"));
         }
         for end in [depths.first(), depths.last()].into_iter().flatten() {
             require_between("depth of the log", Length::m(*end), Length::m(-DEEPEST), Length::m(DEEPEST))?;
@@ -265,7 +261,12 @@ fn from_curve(curve: Curve, name: &str, datum: Datum) -> Result<DensityLog> {
         densities.push(density);
     }
     if depths.len() < 2 {
-        return Err(bad(None, name, format!("the curve holds {} values", depths.len()), "give a curve with at least two"));
+        return Err(bad(
+            None,
+            name,
+            format!("the curve holds {} values", depths.len()),
+            "give a curve with at least two",
+        ));
     }
     let entry = |e: &Entry, why: String, fix: &str| bad(Some(e.line), &e.mnemonic, why, fix);
     if let Some(reference) = find(&curve.parameters, "DREF") {
@@ -294,14 +295,19 @@ fn from_curve(curve: Curve, name: &str, datum: Datum) -> Result<DensityLog> {
                 _ => return Err(entry(e, "the elevation has no unit".to_owned(), "write its unit as M or FT")),
             };
             if let Some((other, _)) = found.filter(|(other, _)| *other != value) {
-                return Err(entry(e, format!("the elevation is {value} here and {other} above"), "keep one of the two"));
+                return Err(entry(
+                    e,
+                    format!("the elevation is {value} here and {other} above"),
+                    "keep one of the two",
+                ));
             }
             found = Some((value, e));
         }
         Ok(found)
     };
     let reference: &[&str] = if datum == Datum::RotaryTable { &["EREF", "EKB", "EDF"] } else { &["EKB", "EDF"] };
-    let plain = |e: &Entry, error: Error| entry(e, error.to_string().trim_end_matches('.').to_owned(), "correct the elevation");
+    let plain =
+        |e: &Entry, error: Error| entry(e, error.to_string().trim_end_matches('.').to_owned(), "correct the elevation");
     let (rotary, ground) = (level(reference)?, level(&["EGL"])?);
     let tie = match rotary {
         None => None,
@@ -354,7 +360,8 @@ pub(super) mod tests {
         assert_eq!(log_g.tie().unwrap().words(), "rotary table 31.8 m and ground 25.0 m above mean sea level");
         assert_eq!(log_g.data().about.hole.unwrap().text(), "X-1");
         assert_eq!(log_g.range(), (100.m(), 103.m()));
-        let log_k = log(&GOOD.replace("G/C3", "K/M3").replace(" 2.", " 2").replace("VERS. 20 ", "VERS. 2.0 ")).unwrap_err();
+        let log_k =
+            log(&GOOD.replace("G/C3", "K/M3").replace(" 2.", " 2").replace("VERS. 20 ", "VERS. 2.0 ")).unwrap_err();
         assert!(log_k.to_string().contains("20 kg/m³"), "{log_k}");
         assert!(log(&GOOD.replace("EREF.M 31.8", "EREF.FT 104.33")).is_ok());
     }
@@ -392,7 +399,9 @@ pub(super) mod tests {
     fn samples_are_held_to_the_same_rules() {
         let make = |s: &[(Length, Density)]| DensityLog::from_samples(s, Datum::Ground);
         assert!(make(&[(1.m(), 2000.kg_m3())]).is_err());
-        assert!(make(&[(1.m(), 2000.kg_m3()), (1.m(), 2000.kg_m3())]).unwrap_err().to_string().contains("sort the samples"));
+        assert!(
+            make(&[(1.m(), 2000.kg_m3()), (1.m(), 2000.kg_m3())]).unwrap_err().to_string().contains("sort the samples")
+        );
         assert!(make(&[(1.m(), 2.kg_m3()), (2.m(), 2.kg_m3())]).is_err());
         let log = make(&[(1.m(), 2000.kg_m3()), (2.m(), 2000.kg_m3())]).unwrap();
         assert!(log.bridge_gaps_up_to((-1).m()).is_err());

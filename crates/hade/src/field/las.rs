@@ -60,7 +60,9 @@ pub(super) fn read<R: Read>(mut lines: Lines<R>, curve: &str) -> Result<Curve> {
             continue;
         }
         if line.starts_with('~') {
-            return Err(lines.bad(format!("\"{}\" stands after the data", shown(line)), "keep ~A as the last section, once"));
+            return Err(
+                lines.bad(format!("\"{}\" stands after the data", shown(line)), "keep ~A as the last section, once")
+            );
         }
         let values = line.split_whitespace();
         if !layout.wrapped {
@@ -120,7 +122,12 @@ fn miscounted<R: Read>(lines: &Lines<R>, got: usize, count: usize, line: &str) -
 fn layout<R: Read>(lines: &Lines<R>, header: &Header, curve: &str) -> Result<Layout> {
     let of = |entries: &[Entry], name: &str, section: &str| -> Result<Entry> {
         find(entries, name).cloned().ok_or_else(|| {
-            lines.bad_at(None, None, format!("{name} is missing in section {section}"), format!("add the line {name} to {section}"))
+            lines.bad_at(
+                None,
+                None,
+                format!("{name} is missing in section {section}"),
+                format!("add the line {name} to {section}"),
+            )
         })
     };
     let value = |entry: &Entry| -> Result<f64> {
@@ -169,7 +176,8 @@ fn layout<R: Read>(lines: &Lines<R>, header: &Header, curve: &str) -> Result<Lay
     };
     let (start, stop, step) =
         (of(&header.well, "STRT", "~W")?, of(&header.well, "STOP", "~W")?, of(&header.well, "STEP", "~W")?);
-    let same = |unit: &str| unit.to_uppercase().trim_end_matches('T') == index.unit.to_uppercase().trim_end_matches('T');
+    let same =
+        |unit: &str| unit.to_uppercase().trim_end_matches('T') == index.unit.to_uppercase().trim_end_matches('T');
     if let Some(other) = [&start, &stop, &step].into_iter().find(|e| !same(&e.unit)) {
         return Err(lines.bad_at(
             Some(other.line),
@@ -183,7 +191,12 @@ fn layout<R: Read>(lines: &Lines<R>, header: &Header, curve: &str) -> Result<Lay
     let place = match (places.next(), places.next()) {
         (Some((place, _)), None) => place,
         (Some(_), Some((_, second))) => {
-            return Err(lines.bad_at(Some(second.line), Some(curve), "two curves have this name", "rename one of them"));
+            return Err(lines.bad_at(
+                Some(second.line),
+                Some(curve),
+                "two curves have this name",
+                "rename one of them",
+            ));
         }
         (None, _) => {
             let names: Vec<&str> = header.curves.iter().skip(1).take(30).map(|e| e.mnemonic.as_str()).collect();
@@ -197,7 +210,12 @@ fn layout<R: Read>(lines: &Lines<R>, header: &Header, curve: &str) -> Result<Lay
     };
     let step_value = value(&step)?;
     if step_value < 0.0 {
-        return Err(lines.bad_at(Some(step.line), Some("STEP"), "the log runs upward", "write the rows with depth rising, and STEP positive"));
+        return Err(lines.bad_at(
+            Some(step.line),
+            Some("STEP"),
+            "the log runs upward",
+            "write the rows with depth rising, and STEP positive",
+        ));
     }
     Ok(Layout {
         wrapped,
@@ -245,10 +263,16 @@ impl<'a> Rows<'a> {
         }
         match self.last {
             None if (depth - l.start).abs() > self.slack() => {
-                return Err(bad(format!("the data begin at {depth} {0} and STRT says {1} {0}", l.unit_name, l.start), "correct STRT or get the file again"));
+                return Err(bad(
+                    format!("the data begin at {depth} {0} and STRT says {1} {0}", l.unit_name, l.start),
+                    "correct STRT or get the file again",
+                ));
             }
             Some(above) if depth <= above => {
-                return Err(bad(format!("depth {depth} does not lie below {above}"), "sort the rows by depth and keep one for each"));
+                return Err(bad(
+                    format!("depth {depth} does not lie below {above}"),
+                    "sort the rows by depth and keep one for each",
+                ));
             }
             Some(above) if l.step > 0.0 && (depth - above - l.step).abs() > self.slack() => {
                 return Err(bad(
@@ -270,7 +294,9 @@ impl<'a> Rows<'a> {
     fn finish<R: Read>(&self, lines: &Lines<R>) -> Result<()> {
         let l = self.layout;
         match self.last {
-            None => Err(lines.bad_at(None, None, "the data section ~A is empty", "get the file again; it is cut short")),
+            None => {
+                Err(lines.bad_at(None, None, "the data section ~A is empty", "get the file again; it is cut short"))
+            }
             Some(last) if (last - l.stop).abs() > self.slack() => Err(lines.bad_at(
                 Some(lines.number()),
                 Some("DEPT"),
@@ -312,7 +338,13 @@ pub(super) mod tests {
             .replace("101.0 51 2.1", "101.0\n51 2.1");
         assert_eq!(parse(&wrapped).unwrap().values, plain.values);
         assert_eq!(parse(&GOOD.replace('\n', "\r\n")).unwrap().values, plain.values);
-        let feet = parse(&GOOD.replace("STRT.M", "STRT.F").replace("STOP.M", "STOP.FT").replace("STEP.M", "STEP.FT").replace("DEPT.M", "DEPT.FT"));
+        let feet = parse(
+            &GOOD
+                .replace("STRT.M", "STRT.F")
+                .replace("STOP.M", "STOP.FT")
+                .replace("STEP.M", "STEP.FT")
+                .replace("DEPT.M", "DEPT.FT"),
+        );
         assert!((feet.unwrap().depths[3] - 103.0 * 0.3048).abs() < 1e-12);
         let nulls = parse(&GOOD.replace("51 2.1", "51 -999.25")).unwrap();
         assert!(nulls.values[1].is_nan());
@@ -331,7 +363,10 @@ pub(super) mod tests {
         assert!(with("WRAP. NO", "WRAP. MAYBE").contains("neither YES nor NO"));
         assert!(with("~PARAMETER", "~TOPS").contains("no section of LAS 2.0"));
         assert!(with("~PARAMETER", "~CURVE").contains("stands twice"));
-        assert!(with("STRT.M", "STRT").contains("\"STRT 100.0 : START\" has no colon") || with("STRT.M 100.0 : START", "STRT M 100 : START").contains("has no dot"));
+        assert!(
+            with("STRT.M", "STRT").contains("\"STRT 100.0 : START\" has no colon")
+                || with("STRT.M 100.0 : START", "STRT M 100 : START").contains("has no dot")
+        );
         assert!(with("STRT.M 100.0 : START", "STRT.M 100.0").contains("no colon"));
         assert!(with("STRT.M", "STRT.F").contains("is not the depth's"));
         assert!(with("DEPT.M", "DEPT.KM").contains("depth in \"KM\" is not read"));
@@ -346,7 +381,10 @@ pub(super) mod tests {
     fn curves_and_rows_that_do_not_fit_are_refused() {
         assert!(with("RHOB.", "RHOZ.").contains("column \"RHOB\": there is no such curve; there are: GR, RHOZ"));
         assert!(with("GR.GAPI", "RHOB.K/M3").contains("two curves"));
-        assert!(with("103.0 53 2.3\n", "103.0 53").starts_with("l.las, line 23: the row has 2 values for 3 curves; get the file again"));
+        assert!(
+            with("103.0 53 2.3\n", "103.0 53")
+                .starts_with("l.las, line 23: the row has 2 values for 3 curves; get the file again")
+        );
         assert!(with("103.0 53 2.3\n", "").contains("the data end at 102 m and STOP says 103 m"));
         assert!(with("102.0 52", "102.0 52 7").contains("list every curve"));
         assert!(with("102.0 52 2.2", "102,0;52;2,2").contains("separate values by spaces"));

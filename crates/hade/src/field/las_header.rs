@@ -63,7 +63,8 @@ impl Header {
                 continue;
             }
             if lines.number() > MOST_LINES {
-                return Err(lines.bad(format!("the header is longer than {MOST_LINES} lines"), "check that it is a LAS 2.0 file"));
+                return Err(lines
+                    .bad(format!("the header is longer than {MOST_LINES} lines"), "check that it is a LAS 2.0 file"));
             }
             if line.starts_with('~') {
                 let Some(section) = Section::named(line) else {
@@ -76,7 +77,9 @@ impl Header {
                     return Err(not_las(lines));
                 }
                 if seen.contains(&section) {
-                    return Err(lines.bad(format!("the section \"{}\" stands twice", shown(line)), "keep one of the two"));
+                    return Err(
+                        lines.bad(format!("the section \"{}\" stands twice", shown(line)), "keep one of the two")
+                    );
                 }
                 seen.push(section);
                 if section == Section::Data {
@@ -113,10 +116,7 @@ pub(super) fn find<'a>(entries: &'a [Entry], mnemonic: &str) -> Option<&'a Entry
 /// The delimiters of the standard: the first dot, the first space after it, the last colon.
 fn entry<R: Read>(lines: &Lines<R>, line: &str) -> Result<Entry> {
     let broken = |what: &str| {
-        lines.bad(
-            format!("\"{}\" has no {what}", shown(line)),
-            "write header lines as MNEM.UNIT value : description",
-        )
+        lines.bad(format!("\"{}\" has no {what}", shown(line)), "write header lines as MNEM.UNIT value : description")
     };
     let (mnemonic, rest) = line.split_once('.').ok_or_else(|| broken("dot after its name"))?;
     let (rest, _) = rest.rsplit_once(':').ok_or_else(|| broken("colon before its description"))?;

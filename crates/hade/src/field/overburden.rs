@@ -218,12 +218,18 @@ impl Explain for Overburden {
         let first = record.first_sample();
         let last = record.layers.last().map_or(f64::NAN, |l| l.bottom.si());
         if record.layers.len() > MOST_LAYERS || !((last - log_depth.si()).abs() < MEET) {
-            return Err(Error::not_physical("The layers of a density log", "they do not reach the depth asked for; make the record again."));
+            return Err(Error::not_physical(
+                "The layers of a density log",
+                "they do not reach the depth asked for; make the record again.",
+            ));
         }
         if first < surface {
             return Err(Error::not_physical(
                 format!("The first value of the log, at {first} below its datum"),
-                format!("it lies above {}, at {surface}; check the datum and the levels of the log.", record.top.surface().words()),
+                format!(
+                    "it lies above {}, at {surface}; check the datum and the levels of the log.",
+                    record.top.surface().words()
+                ),
             ));
         }
         let mut rock = record.top.mean_density().si() * (first - surface).si();
@@ -232,7 +238,10 @@ impl Explain for Overburden {
         for layer in &record.layers {
             require_rock(layer.density)?;
             if layer.top != reached || !(layer.bottom > layer.top) {
-                return Err(Error::not_physical("The layers of a density log", "they do not follow one another; make the record again."));
+                return Err(Error::not_physical(
+                    "The layers of a density log",
+                    "they do not follow one another; make the record again.",
+                ));
             }
             rock += layer.density.si() * (layer.bottom - layer.top).si();
             reached = layer.bottom;
@@ -240,7 +249,11 @@ impl Explain for Overburden {
         let stress = Pressure::from_si(GRAVITY * (SEA_WATER * water.si() + rock));
         let below_rotary = record.below_rotary()?;
         if !(below_rotary.si() > 0.0) {
-            return Err(Error::out_of_range("the depth below the rotary table", with_typed_unit(below_rotary), "positive"));
+            return Err(Error::out_of_range(
+                "the depth below the rotary table",
+                with_typed_unit(below_rotary),
+                "positive",
+            ));
         }
         Ok(Overburden {
             stress,
@@ -305,7 +318,13 @@ impl Explain for Overburden {
                 size,
                 "MPa",
             ),
-            Check::compare("stress at the first value of the log", &[mpa(outcome.top_stress)], &[mpa(top)], size, "MPa"),
+            Check::compare(
+                "stress at the first value of the log",
+                &[mpa(outcome.top_stress)],
+                &[mpa(top)],
+                size,
+                "MPa",
+            ),
             Check::compare(
                 "mean gradient times the depth below the rotary table",
                 &[mpa(outcome.gradient * (rotary - point))],
@@ -360,7 +379,8 @@ mod tests {
         let tie = DatumTie::rotary_table_at(20.m()).unwrap().with_mudline_at((-60).m()).unwrap();
         let log = log(&text).unwrap().tied(tie).unwrap();
         let top = Top::Sea { mean_density: 1800.kg_m3() };
-        let sv = log.overburden(OverburdenInputs { depth: Depth::below_rotary_table(101.m()), hole: tie, top }).unwrap();
+        let sv =
+            log.overburden(OverburdenInputs { depth: Depth::below_rotary_table(101.m()), hole: tie, top }).unwrap();
         let expected = 9.806_65 * (1025.0 * 60.0 + 1800.0 * 20.0 + 2050.0);
         assert!((sv.stress.in_pa() - expected).abs() < 1e-3);
         let on_land = OverburdenInputs { hole: tie, top: Top::Land { mean_density: 1800.kg_m3() }, ..asked(101.0) };

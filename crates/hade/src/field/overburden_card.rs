@@ -77,7 +77,10 @@ pub(super) fn explain(sv: &Overburden) -> Explanation {
         .collect();
     steps.push(Step::Table {
         table: Table {
-            caption: format!("The column above the depth asked for; depths below {datum} of {}; added = ρ g (to − from)", hole_words(record)),
+            caption: format!(
+                "The column above the depth asked for; depths below {datum} of {}; added = ρ g (to − from)",
+                hole_words(record)
+            ),
             columns: vec![
                 Column::text("stretch"),
                 Column::number("from", "m"),
@@ -97,8 +100,17 @@ pub(super) fn explain(sv: &Overburden) -> Explanation {
         fixed(sv.gradient.in_mpa_per_km(), 3)
     )));
     Explanation {
-        title: format!("Vertical stress at TVD {} m from the density log of {}", as_typed(record.depth.tvd.in_m()), hole_words(record)),
-        headline: format!("S_v = {} at TVD {} m below {below} ({})", sv.stress, as_typed(record.depth.tvd.in_m()), sv.gradient),
+        title: format!(
+            "Vertical stress at TVD {} m from the density log of {}",
+            as_typed(record.depth.tvd.in_m()),
+            hole_words(record)
+        ),
+        headline: format!(
+            "S_v = {} at TVD {} m below {below} ({})",
+            sv.stress,
+            as_typed(record.depth.tvd.in_m()),
+            sv.gradient
+        ),
         inputs: inputs(record),
         results: vec![
             Item::computed("S_v", "total vertical stress", sv.stress),
@@ -139,7 +151,11 @@ fn inputs(record: &OverburdenRecord) -> Vec<Item> {
     let mut items = Vec::new();
     match &record.about.source {
         LogSource::File { path, sha256, curve } => {
-            items.push(Item::file(format!("density log of {}, curve {curve}", hole_words(record)), path.clone(), sha256.clone()));
+            items.push(Item::file(
+                format!("density log of {}, curve {curve}", hole_words(record)),
+                path.clone(),
+                sha256.clone(),
+            ));
         }
         LogSource::Typed => items.push(Item::new(
             "",
@@ -190,8 +206,12 @@ fn inputs(record: &OverburdenRecord) -> Vec<Item> {
 fn notes(record: &OverburdenRecord) -> Vec<String> {
     let mut notes = Vec::new();
     if !record.gaps.is_empty() {
-        let gaps: Vec<String> =
-            record.gaps.iter().take(10).map(|g| format!("{}–{} m", fixed(g.top.si(), 1), fixed(g.bottom.si(), 1))).collect();
+        let gaps: Vec<String> = record
+            .gaps
+            .iter()
+            .take(10)
+            .map(|g| format!("{}–{} m", fixed(g.top.si(), 1), fixed(g.bottom.si(), 1)))
+            .collect();
         notes.push(format!(
             "The log has no values at {}{}; straight lines were put across.",
             gaps.join(", "),
@@ -199,7 +219,8 @@ fn notes(record: &OverburdenRecord) -> Vec<String> {
         ));
     }
     if record.hole != record.log_tie {
-        notes.push("The depth belongs to another hole than the log and was carried over at equal elevation.".to_owned());
+        notes
+            .push("The depth belongs to another hole than the log and was carried over at equal elevation.".to_owned());
     }
     notes
 }
@@ -253,7 +274,10 @@ fn densities(sv: &Overburden) -> Figure {
         caption: "Density of the column: the log, put together to layers, and what was stated above it.".to_owned(),
         alt: format!(
             "Density against depth, between {} and {} g/cm³, mean {} g/cm³ over the rock above {} m.",
-            fixed(least, 2), fixed(most, 2), grams(sv.mean_density, 3), fixed(sv.log_depth().si(), 1)
+            fixed(least, 2),
+            fixed(most, 2),
+            grams(sv.mean_density, 3),
+            fixed(sv.log_depth().si(), 1)
         ),
         x: Axis::new("density (g/cm³)", (least - 0.1).max(0.0), most + 0.1),
         y: depth_axis(record, sv.log_depth()),
@@ -277,7 +301,9 @@ fn stresses(sv: &Overburden) -> Figure {
         caption: "Total vertical stress against depth; the dot is the depth asked for.".to_owned(),
         alt: format!(
             "Vertical stress rises from {} MPa at the first value of the log to {} MPa at {} m below the log's datum.",
-            fixed(sv.top_stress().in_mpa(), 2), fixed(sv.stress.in_mpa(), 2), fixed(sv.log_depth().si(), 1)
+            fixed(sv.top_stress().in_mpa(), 2),
+            fixed(sv.stress.in_mpa(), 2),
+            fixed(sv.log_depth().si(), 1)
         ),
         x: Axis::new("total vertical stress S_v (MPa)", 0.0, 1.15 * sv.stress.in_mpa()),
         y: depth_axis(record, sv.log_depth()),

@@ -6,8 +6,7 @@ use crate::units::{Density, Length};
 /// A record holds no more layers than this.
 pub(super) const MOST_LAYERS: usize = 40;
 /// The thicknesses layers are given, metres.
-const THICKNESSES: [f64; 14] =
-    [0.1, 0.5, 1.0, 2.0, 5.0, 10.0, 20.0, 25.0, 50.0, 100.0, 200.0, 250.0, 500.0, 1000.0];
+const THICKNESSES: [f64; 14] = [0.1, 0.5, 1.0, 2.0, 5.0, 10.0, 20.0, 25.0, 50.0, 100.0, 200.0, 250.0, 500.0, 1000.0];
 
 /// The layers of a log from its first sample down to a depth, with edges at round depths, each with
 /// the mean of the straight lines between samples; and the integral of density over the same

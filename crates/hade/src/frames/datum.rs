@@ -172,7 +172,10 @@ fn level(what: &str, elevation: Length) -> Result<Length> {
 }
 
 fn both() -> Error {
-    Error::not_physical("A hole with a ground and a mudline", "state the ground on land or the mudline at sea, not both.")
+    Error::not_physical(
+        "A hole with a ground and a mudline",
+        "state the ground on land or the mudline at sea, not both.",
+    )
 }
 
 #[cfg(test)]

@@ -35,13 +35,3 @@ impl<I: Iterator + ?Sized> Iterator for Box<I> {
     type Item = I::Item;
     fn next(&mut self) -> Option<I::Item> { loop {} }
 }
-impl<Args: core::marker::Tuple, F: FnOnce<Args> + ?Sized> FnOnce<Args> for Box<F> {
-    type Output = <F as FnOnce<Args>>::Output;
-    extern "rust-call" fn call_once(self, args: Args) -> Self::Output { loop {} }
-}
-impl<Args: core::marker::Tuple, F: FnMut<Args> + ?Sized> FnMut<Args> for Box<F> {
-    extern "rust-call" fn call_mut(&mut self, args: Args) -> Self::Output { loop {} }
-}
-impl<Args: core::marker::Tuple, F: Fn<Args> + ?Sized> Fn<Args> for Box<F> {
-    extern "rust-call" fn call(&self, args: Args) -> Self::Output { loop {} }
-}

@@ -51,12 +51,7 @@ impl Arc {
 
     /// The part of the arc up to a share of it; it lies on the same circle.
     pub fn up_to(&self, share: f64) -> Arc {
-        Arc {
-            from: self.from,
-            to: self.direction_at(share),
-            beta: share * self.beta,
-            length: share * self.length,
-        }
+        Arc { from: self.from, to: self.direction_at(share), beta: share * self.beta, length: share * self.length }
     }
 
     /// The share at which the hole is horizontal, if it turns from descending to rising or back
@@ -103,7 +98,12 @@ mod tests {
 
     #[test]
     fn the_turning_point_is_where_the_hole_is_horizontal() {
-        let arc = Arc { from: direction(1.3, 0.4), to: direction(1.9, 0.6), beta: dogleg([1.3, 0.4], [1.9, 0.6]), length: 30.0 };
+        let arc = Arc {
+            from: direction(1.3, 0.4),
+            to: direction(1.9, 0.6),
+            beta: dogleg([1.3, 0.4], [1.9, 0.6]),
+            length: 30.0,
+        };
         let share = arc.turning_share().unwrap();
         assert!(arc.direction_at(share)[2].abs() < 1e-14);
         let rising = Arc { from: direction(1.9, 0.6), to: direction(1.3, 0.4), ..arc };

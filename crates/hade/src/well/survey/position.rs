@@ -99,18 +99,14 @@ impl Position {
         require_few(used, &format!("down to MD {}", with_typed_unit(md)))?;
         let at_bottom = md.si() == leg.bottom.md;
         let part = if at_bottom { leg.arc } else { leg.arc.up_to(share) };
-        let [north, east, down] =
-            if at_bottom { leg.end } else { add(leg.start, part.displacement()) };
+        let [north, east, down] = if at_bottom { leg.end } else { add(leg.start, part.displacement()) };
         let (i, a) = attitude(&leg, share, md.si(), part.to);
         Ok(Position {
             md,
             tvd: tvd.unwrap_or(Length::m(down)),
             north: Length::m(north),
             east: Length::m(east),
-            attitude: Attitude {
-                inclination: Angle::from_si(i),
-                azimuth: Azimuth::from_true_north(Angle::from_si(a)),
-            },
+            attitude: Attitude { inclination: Angle::from_si(i), azimuth: Azimuth::from_true_north(Angle::from_si(a)) },
             dogleg: Angle::from_si(part.beta),
             dogleg_in_30_m: Angle::from_si(leg.arc.beta / leg.arc.length * SEVERITY_LENGTH),
             survey: survey.clone(),
@@ -374,7 +370,11 @@ mod tests {
             station(2500.0, 41.5, 119.0),
             station(3600.0, 42.3, 120.5),
         ];
-        Survey::from_stations(&stations).unwrap().named("X-1").tied(DatumTie::rotary_table_at(32.4.m()).unwrap()).unwrap()
+        Survey::from_stations(&stations)
+            .unwrap()
+            .named("X-1")
+            .tied(DatumTie::rotary_table_at(32.4.m()).unwrap())
+            .unwrap()
     }
 
     /// Every number of an outcome, moved, turns a check red; unmoved, all are green; and a replay
@@ -434,13 +434,21 @@ mod tests {
         );
         assert!(survey.at((-1).m()).is_err());
         assert!(survey.at(f64::NAN.m()).is_err());
-        assert!(survey.at_tvd(5000.m()).unwrap_err().to_string().starts_with("No measured depth at TVD 5000 m was found"));
+        assert!(
+            survey.at_tvd(5000.m()).unwrap_err().to_string().starts_with("No measured depth at TVD 5000 m was found")
+        );
         assert!(survey.at_tvd(f64::NAN.m()).is_err());
     }
 
     #[test]
     fn a_depth_passed_twice_is_refused() {
-        let stations = [station(0.0, 0.0, 0.0), station(1000.0, 90.0, 0.0), station(1500.0, 100.0, 0.0), station(1800.0, 80.0, 0.0), station(1900.0, 80.0, 0.0)];
+        let stations = [
+            station(0.0, 0.0, 0.0),
+            station(1000.0, 90.0, 0.0),
+            station(1500.0, 100.0, 0.0),
+            station(1800.0, 80.0, 0.0),
+            station(1900.0, 80.0, 0.0),
+        ];
         let survey = Survey::from_stations(&stations).unwrap();
         let twice = survey.at(1300.m()).unwrap().tvd;
         let e = survey.at_tvd(twice).unwrap_err().to_string();
@@ -459,7 +467,10 @@ mod tests {
     fn a_vertical_hole_keeps_the_azimuth_of_the_nearer_station() {
         let survey = Survey::from_stations(&[station(0.0, 0.0, 30.0), station(100.0, 0.0, 123.0)]).unwrap();
         let azimuth = |md: f64| survey.at(md.m()).unwrap().attitude.azimuth.true_north().unwrap().in_deg();
-        assert_eq!([azimuth(0.0), azimuth(40.0), azimuth(60.0), azimuth(100.0)].map(f64::round), [30.0, 30.0, 123.0, 123.0]);
+        assert_eq!(
+            [azimuth(0.0), azimuth(40.0), azimuth(60.0), azimuth(100.0)].map(f64::round),
+            [30.0, 30.0, 123.0, 123.0]
+        );
         holds(&survey.at(60.m()).unwrap());
         // The hole leaves the vertical towards the next station at once (design §2, traps.md 5).
         let leaving = Survey::from_stations(&[station(0.0, 0.0, 30.0), station(100.0, 5.0, 123.0)]).unwrap();

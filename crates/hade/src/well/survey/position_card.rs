@@ -4,9 +4,7 @@
 use super::position::{Asked, Position};
 use super::survey::{Leg, Survey, SurveySource};
 use super::table::{rows, station_columns};
-use crate::card::{
-    Axis, Explanation, Figure, Formula, Item, Layer, Mark, Method, Reference, Role, Step, Table,
-};
+use crate::card::{Axis, Explanation, Figure, Formula, Item, Layer, Mark, Method, Reference, Role, Step, Table};
 use crate::frames::vector::{V3, add, wrap};
 use crate::frames::{Datum, North, bearing_item, three_figures};
 use crate::units::{Angle, Length, Quantity, as_typed, fixed};
@@ -73,7 +71,9 @@ pub(super) fn declarations(survey: &Survey) -> String {
         SurveySource::Typed => "As stated with the stations: ".to_owned(),
     };
     let first = data.stations.first().map(|s| s.azimuth);
-    let same = first.filter(|f| data.stations.iter().all(|s| s.azimuth.north() == f.north() && s.azimuth.correction() == f.correction()));
+    let same = first.filter(|f| {
+        data.stations.iter().all(|s| s.azimuth.north() == f.north() && s.azimuth.correction() == f.correction())
+    });
     let north = match same {
         None => "azimuths from several norths, each with its own correction".to_owned(),
         Some(azimuth) => match (azimuth.north(), azimuth.correction()) {
@@ -90,10 +90,9 @@ pub(super) fn declarations(survey: &Survey) -> String {
     };
     let levels = data.meta.tie.map(|t| format!("; {}", t.words())).unwrap_or_default();
     let begin = match data.meta.tie_in {
-        Some(t) => format!(
-            "; the first station lies {} north and {} east of the wellhead at TVD {}",
-            t.north, t.east, t.tvd
-        ),
+        Some(t) => {
+            format!("; the first station lies {} north and {} east of the wellhead at TVD {}", t.north, t.east, t.tvd)
+        }
         None => String::new(),
     };
     format!("{by}{north}; depths from the rotary table{levels}{begin}.")
@@ -105,9 +104,7 @@ fn inputs(p: &Position) -> Vec<Item> {
     items.extend(stated_items(survey));
     items.push(match p.asked() {
         Asked::MeasuredDepth(md) => Item::typed("MD", "measured depth asked for", md),
-        Asked::TrueVerticalDepth(tvd) => {
-            Item::typed("z", "true vertical depth asked for, below the rotary table", tvd)
-        }
+        Asked::TrueVerticalDepth(tvd) => Item::typed("z", "true vertical depth asked for, below the rotary table", tvd),
     });
     items
 }
@@ -132,7 +129,13 @@ fn results(p: &Position) -> Vec<Item> {
         Item::computed("z", "true vertical depth below the rotary table", p.tvd)
     } else {
         let words = format!("{} below the first station", p.tvd);
-        Item::new("z", "true vertical depth below the first station", "depth below the first station", vec![p.tvd.si()], words)
+        Item::new(
+            "z",
+            "true vertical depth below the first station",
+            "depth below the first station",
+            vec![p.tvd.si()],
+            words,
+        )
     };
     let mut items = vec![
         Item::computed("MD", "measured depth", p.md),
@@ -141,13 +144,23 @@ fn results(p: &Position) -> Vec<Item> {
         Item::computed("E", "east of the wellhead", p.east),
         Item::computed("i", "inclination of the hole from vertical", p.attitude.inclination),
         bearing_item("a", "azimuth of the hole", p.attitude.azimuth.measured()),
-        Item::computed("β", "change of direction from the station above", p.dogleg),
+        Item::new(
+            "β",
+            "change of direction from the station above",
+            Angle::KIND,
+            vec![p.dogleg.si()],
+            format!("{}°", fixed(p.dogleg.in_deg(), 3)),
+        ),
         Item::new(
             "D_30",
             "dogleg severity",
             "dogleg severity",
             vec![p.dogleg_in_30_m.si()],
-            format!("{}° in 30 m ({}° in 100 ft)", fixed(p.dogleg_in_30_m.in_deg(), 2), fixed(p.dogleg_in_100_ft().in_deg(), 2)),
+            format!(
+                "{}° in 30 m ({}° in 100 ft)",
+                fixed(p.dogleg_in_30_m.in_deg(), 2),
+                fixed(p.dogleg_in_100_ft().in_deg(), 2)
+            ),
         ),
     ];
     if let Some(level) = level(p.survey()) {
@@ -191,16 +204,30 @@ fn last_arc(p: &Position) -> Vec<Step> {
             fixed(length / leg.arc.length, 6)
         ),
     })];
-    let [t1, t2] = [leg.top.t, crate::well::survey::arc::direction(p.attitude.inclination.si(), p.attitude.azimuth.measured().si())];
+    let [t1, t2] = [
+        leg.top.t,
+        crate::well::survey::arc::direction(p.attitude.inclination.si(), p.attitude.azimuth.measured().si()),
+    ];
     steps.push(Step::worked(format!(
         "sin²(β/2) = sin²(({} − {}) / 2) + sin {} sin {} sin²(({} − {}) / 2), so β = {}°",
-        fixed(i2, 3), fixed(i1, 3), fixed(i1, 3), fixed(i2, 3), fixed(a2, 3), fixed(a1, 3), fixed(p.dogleg.in_deg(), 4)
+        fixed(i2, 3),
+        fixed(i1, 3),
+        fixed(i1, 3),
+        fixed(i2, 3),
+        fixed(a2, 3),
+        fixed(a1, 3),
+        fixed(p.dogleg.in_deg(), 4)
     )));
     steps.push(Step::worked(format!("RF = (2 / β) tan(β / 2) = {}, β in radians", fixed(factor, 8))));
     let line = |name: &str, what: &str, from: f64, to: f64, start: f64, sum: f64| {
         Step::worked(format!(
             "{name} = {} + {} / 2 × {what} × RF = {0} + {1} / 2 × ({} + {}) × {} = {} m",
-            fixed(start, 3), fixed(length, 3), fixed(from, 6), fixed(to, 6), fixed(factor, 6), fixed(start + sum, 3)
+            fixed(start, 3),
+            fixed(length, 3),
+            fixed(from, 6),
+            fixed(to, 6),
+            fixed(factor, 6),
+            fixed(start + sum, 3)
         ))
     };
     let [n0, e0, d0] = leg.start;
@@ -291,13 +318,23 @@ fn side_view(p: &Position) -> Figure {
     let (top, bottom) = span(path.iter().map(|q| q[1]).chain([here[1], 0.0]), 50.0);
     let towards = three_figures(Angle::from_si(azimuth));
     Figure {
-        caption: format!("Side view of the hole, looking across azimuth {towards}°; crosses are stations, the dot is {}.", p.name()),
+        caption: format!(
+            "Side view of the hole, looking across azimuth {towards}°; crosses are stations, the dot is {}.",
+            p.name()
+        ),
         alt: format!(
             "Path of the hole from the first station down to TVD {} m at {} m from the wellhead towards {towards}°, where it lies at {}.",
-            fixed(here[1], 1), fixed(here[0], 1), p.attitude.words()
+            fixed(here[1], 1),
+            fixed(here[0], 1),
+            p.attitude.words()
         ),
         x: Axis::new(&format!("distance from the wellhead towards {towards}° (m)"), left, right),
-        y: Axis::new(if p.survey().is_tied_in() { "TVD below the rotary table (m)" } else { "TVD below the first station (m)" }, top, bottom).downward(),
+        y: Axis::new(
+            if p.survey().is_tied_in() { "TVD below the rotary table (m)" } else { "TVD below the first station (m)" },
+            top,
+            bottom,
+        )
+        .downward(),
         equal_scale: true,
         layers: layers(&path, &stations, here, &format!("{} m", fixed(p.tvd.si(), 1))),
     }
@@ -314,7 +351,8 @@ fn plan_view(p: &Position) -> Figure {
         caption: format!("The hole from above, true north up; the dot is {}.", p.name()),
         alt: format!(
             "Plan of the hole: it ends {} m north and {} m east of the wellhead.",
-            fixed(p.north.si(), 1), fixed(p.east.si(), 1)
+            fixed(p.north.si(), 1),
+            fixed(p.east.si(), 1)
         ),
         x: Axis::new("east of the wellhead (m)", left, right),
         y: Axis::new("north of the wellhead, true north (m)", low, high),

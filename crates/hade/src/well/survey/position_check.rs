@@ -35,7 +35,13 @@ fn along(from: V3, to: V3, length: f64, share: f64) -> V3 {
     let panels = 2 * (8 + (64.0 * angle(from, to) * share) as usize);
     let mut sum = [0.0; 3];
     for k in 0..=panels {
-        let weight = if k == 0 || k == panels { 1.0 } else if k % 2 == 1 { 4.0 } else { 2.0 };
+        let weight = if k == 0 || k == panels {
+            1.0
+        } else if k % 2 == 1 {
+            4.0
+        } else {
+            2.0
+        };
         sum = add(sum, scale(turned(from, to, share * k as f64 / panels as f64), weight));
     }
     scale(sum, share * length / (3.0 * panels as f64))

@@ -63,7 +63,9 @@ pub(super) fn read<R: Read>(mut lines: Lines<R>) -> Result<Survey> {
     let Some((_, header)) = table else {
         return Err(match any {
             false => whole("the file is empty", "give a survey with columns md, inclination, azimuth"),
-            true => whole("the file holds no table", "add the line of column names md,inclination,azimuth and the stations"),
+            true => {
+                whole("the file holds no table", "add the line of column names md,inclination,azimuth and the stations")
+            }
         });
     };
     match stations.as_slice() {
@@ -127,9 +129,7 @@ fn columns<R: Read>(lines: &Lines<R>, text: &str, fields: &[String]) -> Result<C
         let mut found = names.iter().enumerate().filter(|(_, n)| wanted.contains(&n.as_str())).map(|(i, _)| i);
         match (found.next(), found.next()) {
             (Some(place), None) => Ok(place),
-            (Some(_), Some(_)) => {
-                Err(lines.bad_in(name, "two columns have this name", "keep one of them"))
-            }
+            (Some(_), Some(_)) => Err(lines.bad_in(name, "two columns have this name", "keep one of them")),
             (None, _) => Err(lines.bad_in(
                 name,
                 format!("the column is missing; there are: {}", shown(&fields.join(", "))),
@@ -160,7 +160,11 @@ fn row<R: Read>(lines: &Lines<R>, columns: &Columns, header: &Header, fields: &[
     };
     let md = value(columns.md, "md")?;
     if md < 0.0 {
-        return Err(lines.bad_in("md", format!("measured depth {md} is negative"), "count it along the hole from the rotary table"));
+        return Err(lines.bad_in(
+            "md",
+            format!("measured depth {md} is negative"),
+            "count it along the hole from the rotary table",
+        ));
     }
     let inclination = value(columns.inclination, "inclination")?;
     if !(0.0..=180.0).contains(&inclination) {
@@ -178,7 +182,8 @@ fn row<R: Read>(lines: &Lines<R>, columns: &Columns, header: &Header, fields: &[
             "give the azimuth clockwise from north in degrees",
         ));
     }
-    let azimuth = header.azimuth(azimuth).map_err(|e| lines.bad_in("azimuth", e.to_string(), "correct the declarations"))?;
+    let azimuth =
+        header.azimuth(azimuth).map_err(|e| lines.bad_in("azimuth", e.to_string(), "correct the declarations"))?;
     Ok(Station { md: header.depth(md), inclination: Angle::deg(inclination), azimuth })
 }
 
@@ -217,7 +222,8 @@ mod tests {
 
     #[test]
     fn reads_columns_in_any_order_with_their_declarations() {
-        let survey = with_header("Comment, Azimuth ,MD,Inclination\nstart,121.5,0,0\n\"a, b\",121.5,100.5,2\n").unwrap();
+        let survey =
+            with_header("Comment, Azimuth ,MD,Inclination\nstart,121.5,0,0\n\"a, b\",121.5,100.5,2\n").unwrap();
         let last = survey.at(100.5.m()).unwrap();
         assert!((last.attitude.azimuth.true_north().unwrap().in_deg() - 120.0).abs() < 1e-12);
         assert_eq!(survey.hole().unwrap().text(), "X-1");
@@ -229,7 +235,8 @@ mod tests {
     #[test]
     fn byte_order_mark_carriage_returns_and_spreadsheet_padding_are_accepted() {
         let plain = with_header(GOOD).unwrap();
-        let text = format!("\u{feff}{HEADER}{GOOD}\n,,\n").replace('\n', "\r\n").replace("north: grid", "north: grid,,");
+        let text =
+            format!("\u{feff}{HEADER}{GOOD}\n,,\n").replace('\n', "\r\n").replace("north: grid", "north: grid,,");
         assert_eq!(parse(&text).unwrap().stations(), plain.stations());
     }
 
@@ -241,7 +248,10 @@ mod tests {
         };
         assert!(without("# north:").contains("from which north"), "{}", without("# north:"));
         assert!(without("north_correction").contains("how grid north lies"));
-        assert!(without("depth_unit").starts_with("s.csv, line 7: the file does not say the unit of its depths; add a line"));
+        assert!(
+            without("depth_unit")
+                .starts_with("s.csv, line 7: the file does not say the unit of its depths; add a line")
+        );
         assert!(without("angle_unit").contains("unit of its angles"));
         assert!(without("depth_datum").contains("depths count from"));
         assert!(with_header(GOOD).is_ok());
@@ -281,7 +291,9 @@ mod tests {
             refused_table("md,inclination,azimuth\n0,0,0\n100,\"12,5\",120\n"),
             "s.csv, line 10, column \"inclination\": \"12,5\" has a decimal comma; write decimals with a point."
         );
-        assert!(refused_table("md,inclination,azimuth\n0,0,0\n100,twelve,120\n").contains("\"twelve\" is not a number"));
+        assert!(
+            refused_table("md,inclination,azimuth\n0,0,0\n100,twelve,120\n").contains("\"twelve\" is not a number")
+        );
         assert!(refused_table("md,inclination,azimuth\n0,0,0\n100,,120\n").contains("value is missing"));
         assert!(refused_table("md,inclination,azimuth\n0,0,0\n100,12\n").contains("ends before this column"));
         assert!(refused_table("md,inclination,azimuth\n0,0,0\n100,181,120\n").contains("between 0° and 180°"));
@@ -290,10 +302,7 @@ mod tests {
         assert!(refused_table("md,inclination,azimuth\n0,0,0\n100,NaN,120\n").contains("not a finite number"));
         assert!(refused_table("md,inclination,azimuth\n-5,0,0\n100,1,120\n").contains("is negative"));
         assert!(refused_table("md,inclination,azimuth\n50,0,0\n100,1,120\n").contains("tie_in_tvd"));
-        assert_eq!(
-            refused(""),
-            "s.csv: the file is empty; give a survey with columns md, inclination, azimuth."
-        );
+        assert_eq!(refused(""), "s.csv: the file is empty; give a survey with columns md, inclination, azimuth.");
         assert!(refused("# north: true\n").contains("holds no table"));
         assert!(Survey::read_csv("no/such/file.csv").unwrap_err().to_string().contains("relative to the notebook"));
     }

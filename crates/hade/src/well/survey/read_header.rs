@@ -85,13 +85,11 @@ impl Declarations {
     /// The declarations as the table needs them; `lines` stands at the column names.
     pub fn settle<R: Read>(&self, lines: &Lines<R>) -> Result<Header> {
         let lacking = |what: &str, write: &str| {
-            lines.bad(
-                format!("the file does not say {what}"),
-                format!("add a line \"{write}\" above the column names"),
-            )
+            lines.bad(format!("the file does not say {what}"), format!("add a line \"{write}\" above the column names"))
         };
-        let (north_line, north) =
-            self.get("north").ok_or_else(|| lacking("from which north its azimuths are", "# north: true | grid | magnetic"))?;
+        let (north_line, north) = self
+            .get("north")
+            .ok_or_else(|| lacking("from which north its azimuths are", "# north: true | grid | magnetic"))?;
         let north = north.to_lowercase();
         let maker = match north.trim_end_matches(" north") {
             "true" => Azimuth::from_true_north,
@@ -120,10 +118,16 @@ impl Declarations {
                 ));
             }
             (crate::frames::North::Grid, None) => {
-                return Err(lacking("how grid north lies to true north", "# north_correction: <convergence in degrees, east positive>"));
+                return Err(lacking(
+                    "how grid north lies to true north",
+                    "# north_correction: <convergence in degrees, east positive>",
+                ));
             }
             (crate::frames::North::Magnetic, None) => {
-                return Err(lacking("how magnetic north lies to true north", "# north_correction: <declination in degrees, east positive>"));
+                return Err(lacking(
+                    "how magnetic north lies to true north",
+                    "# north_correction: <declination in degrees, east positive>",
+                ));
             }
             _ => {}
         }
@@ -170,8 +174,8 @@ impl Declarations {
 
     fn degrees<R: Read>(&self, lines: &Lines<R>, line: usize, text: &str) -> Result<f64> {
         let digits = text.trim_end_matches("degrees").trim_end_matches("deg").trim_end_matches('°').trim();
-        let value = number(digits)
-            .map_err(|(why, fix)| lines.bad_at(Some(line), Some("north_correction"), why, fix))?;
+        let value =
+            number(digits).map_err(|(why, fix)| lines.bad_at(Some(line), Some("north_correction"), why, fix))?;
         if value.abs() > 180.0 {
             return Err(lines.bad_at(
                 Some(line),
@@ -206,7 +210,12 @@ impl Declarations {
     fn tie<R: Read>(&self, lines: &Lines<R>) -> Result<Option<DatumTie>> {
         let of = |key: &str| -> Result<Option<Length>> { self.length(lines, key) };
         let place = |key: &str, e: Error| {
-            lines.bad_at(self.get(key).map(|(line, _)| line), Some(key), e.to_string().trim_end_matches('.'), "correct the elevation")
+            lines.bad_at(
+                self.get(key).map(|(line, _)| line),
+                Some(key),
+                e.to_string().trim_end_matches('.'),
+                "correct the elevation",
+            )
         };
         let (ground, mudline) = (of("ground_above_msl")?, of("mudline_above_msl")?);
         let Some(rotary) = of("rotary_table_above_msl")? else {
@@ -229,12 +238,18 @@ impl Declarations {
     }
 
     fn tie_in<R: Read>(&self, lines: &Lines<R>) -> Result<Option<TieIn>> {
-        let [north, east, tvd] =
-            [self.length(lines, "tie_in_north")?, self.length(lines, "tie_in_east")?, self.length(lines, "tie_in_tvd")?];
+        let [north, east, tvd] = [
+            self.length(lines, "tie_in_north")?,
+            self.length(lines, "tie_in_east")?,
+            self.length(lines, "tie_in_tvd")?,
+        ];
         match (north, east, tvd) {
             (Some(north), Some(east), Some(tvd)) => Ok(Some(TieIn { north, east, tvd })),
             (None, None, None) => Ok(None),
-            _ => Err(lines.bad("the tie-in is not whole", "state tie_in_north, tie_in_east and tie_in_tvd, or none of them")),
+            _ => {
+                Err(lines
+                    .bad("the tie-in is not whole", "state tie_in_north, tie_in_east and tie_in_tvd, or none of them"))
+            }
         }
     }
 }

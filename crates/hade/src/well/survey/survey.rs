@@ -179,8 +179,9 @@ impl Survey {
             let here = station.direct()?;
             match (direct.last(), places.last()) {
                 (Some(above), Some(place)) => {
-                    let beta = follows(above, &here)
-                        .map_err(|(why, fix)| Error::not_physical(format!("Survey station {number}"), format!("{why}; {fix}.")))?;
+                    let beta = follows(above, &here).map_err(|(why, fix)| {
+                        Error::not_physical(format!("Survey station {number}"), format!("{why}; {fix}."))
+                    })?;
                     let arc = Arc { from: above.t, to: here.t, beta, length: here.md - above.md };
                     places.push(add(*place, arc.displacement()));
                     doglegs.push(beta);
@@ -257,7 +258,10 @@ impl Survey {
         }
         let first = self.data.direct.first().map_or(0.0, |s| s.md);
         Err(Error::undeclared(
-            format!("The survey begins at measured depth {} m, and its true vertical depth there is unknown", as_typed(first)),
+            format!(
+                "The survey begins at measured depth {} m, and its true vertical depth there is unknown",
+                as_typed(first)
+            ),
             "begin with a station at measured depth 0, or state it with .tied_in(TieIn { north, east, tvd })?.",
         ))
     }
@@ -283,7 +287,14 @@ impl Survey {
         let d = &self.data;
         let (top, bottom) = (d.direct.get(above)?, d.direct.get(above + 1)?);
         let arc = Arc { from: top.t, to: bottom.t, beta: *d.doglegs.get(above + 1)?, length: bottom.md - top.md };
-        Some(Leg { above, arc, top: *top, bottom: *bottom, start: *d.places.get(above)?, end: *d.places.get(above + 1)? })
+        Some(Leg {
+            above,
+            arc,
+            top: *top,
+            bottom: *bottom,
+            start: *d.places.get(above)?,
+            end: *d.places.get(above + 1)?,
+        })
     }
 
     /// The survey as an input of a card: its file, or its stations as they were typed.

@@ -181,13 +181,21 @@ impl Explain for SurveyTable {
         let [north, east, tvd] = data.places.last().copied().unwrap_or_default();
         let bearing = three_figures(Angle::rad(east.atan2(north)));
         let places = path(&self.survey, data.stations.len());
-        let (deep, far) = (places.iter().map(|p| p[2]).fold(1.0, f64::max), places.iter().map(|p| p[0].hypot(p[1])).fold(1.0, f64::max));
+        let (deep, far) = (
+            places.iter().map(|p| p[2]).fold(1.0, f64::max),
+            places.iter().map(|p| p[0].hypot(p[1])).fold(1.0, f64::max),
+        );
         let shallow = places.iter().map(|p| p[2]).fold(0.0, f64::min);
         let mut inputs = vec![self.survey.item()];
         inputs.extend(stated_items(&self.survey));
         Explanation {
             title: format!("Survey of {hole}, station by station"),
-            headline: format!("{} stations, to MD {} and TVD {}", data.stations.len(), self.survey.last_md(), Length::m(tvd)),
+            headline: format!(
+                "{} stations, to MD {} and TVD {}",
+                data.stations.len(),
+                self.survey.last_md(),
+                Length::m(tvd)
+            ),
             inputs,
             results: vec![
                 Item::computed("N", "north of the wellhead at the last station", Length::m(north)),
@@ -207,7 +215,11 @@ impl Explain for SurveyTable {
             ],
             figures: vec![Figure {
                 caption: format!("{hole}: depth against horizontal distance from the wellhead."),
-                alt: format!("The hole ends at TVD {} m, {} m from the wellhead towards {bearing}°.", fixed(tvd, 1), fixed(north.hypot(east), 1)),
+                alt: format!(
+                    "The hole ends at TVD {} m, {} m from the wellhead towards {bearing}°.",
+                    fixed(tvd, 1),
+                    fixed(north.hypot(east), 1)
+                ),
                 x: Axis::new("horizontal distance from the wellhead (m)", 0.0, 1.08 * far.max(50.0)),
                 y: Axis::new("TVD (m)", 1.05 * shallow, 1.05 * deep).downward(),
                 equal_scale: true,

@@ -12,14 +12,18 @@ pub(crate) const SAMPLES: usize = 72;
 /// The distance of two samples in φ.
 pub(crate) const STEP: f64 = TAU / SAMPLES as f64;
 
-/// cos φ and sin φ of each sample.
-pub(crate) static CIRCLE: LazyLock<[[f64; 2]; SAMPLES]> = LazyLock::new(|| {
-    let mut table = [[0.0; 2]; SAMPLES];
-    for (k, cell) in table.iter_mut().enumerate() {
-        let (s, c) = (k as f64 * STEP).sin_cos();
-        *cell = [c, s];
+/// cos φ and sin φ of every sample, each in a row of its own.
+pub(crate) struct Circle {
+    pub cos: [f64; SAMPLES],
+    pub sin: [f64; SAMPLES],
+}
+
+pub(crate) static CIRCLE: LazyLock<Circle> = LazyLock::new(|| {
+    let mut circle = Circle { cos: [0.0; SAMPLES], sin: [0.0; SAMPLES] };
+    for ((k, c), s) in circle.cos.iter_mut().enumerate().zip(&mut circle.sin) {
+        (*s, *c) = (k as f64 * STEP).sin_cos();
     }
-    table
+    circle
 });
 
 /// A value with its first and second derivative by φ.
@@ -35,13 +39,26 @@ impl Jet {
     pub fn negated(self) -> Jet {
         Jet { value: -self.value, slope: -self.slope, bend: -self.bend }
     }
+}
+
+/// A function of cos φ and sin φ. The value alone is what the scan asks for, seventy-two times; the
+/// derivatives only the climb.
+pub(crate) trait OnCircle {
+    fn value(&self, c: f64, s: f64) -> f64;
+    fn jet(&self, c: f64, s: f64) -> Jet;
+}
+
+/// The function turned upside down.
+pub(crate) struct Below<F>(pub F);
+
+impl<F: OnCircle> OnCircle for Below<F> {
     #[inline(always)]
-    pub fn larger(self, other: Jet) -> Jet {
-        if other.value > self.value { other } else { self }
+    fn value(&self, c: f64, s: f64) -> f64 {
+        -self.0.value(c, s)
     }
     #[inline(always)]
-    pub fn smaller(self, other: Jet) -> Jet {
-        if other.value < self.value { other } else { self }
+    fn jet(&self, c: f64, s: f64) -> Jet {
+        self.0.jet(c, s).negated()
     }
 }
 
@@ -63,29 +80,30 @@ const SAME: f64 = 1e-11;
 /// leaves a factor of a hundred for sharper hills.
 const SLACK: f64 = 0.05;
 
-/// The greatest value of `f(cos φ, sin φ)`; `scale` is the size of the numbers in it.
+/// The greatest value of a function; `scale` is the size of the numbers in it.
 #[inline]
-pub(crate) fn greatest(f: impl Fn(f64, f64) -> Jet, scale: f64) -> Peak {
+pub(crate) fn greatest(f: &impl OnCircle, scale: f64) -> Peak {
     let mut values = [0.0; SAMPLES];
+    let circle = &*CIRCLE;
+    for ((value, c), s) in values.iter_mut().zip(&circle.cos).zip(&circle.sin) {
+        *value = f.value(*c, *s);
+    }
     let (mut top, mut bottom) = (f64::NEG_INFINITY, f64::INFINITY);
-    for (value, [c, s]) in values.iter_mut().zip(CIRCLE.iter()) {
-        *value = f(*c, *s).value;
-        top = top.max(*value);
-        bottom = bottom.min(*value);
+    for value in values {
+        top = if value > top { value } else { top };
+        bottom = if value < bottom { value } else { bottom };
     }
     if top - bottom <= SAME * scale {
         return Peak { phi: 0.0, value: top, flat: true };
     }
     let enough = top - SLACK * (top - bottom);
     let mut best = Peak { phi: 0.0, value: f64::NEG_INFINITY, flat: false };
-    let [mut before, ..] = values;
-    if let Some(last) = values.last() {
-        before = *last;
-    }
+    let [first, .., last] = values;
+    let mut before = last;
     for (k, value) in values.iter().enumerate() {
-        let after = values.get(k + 1).or(values.first()).copied().unwrap_or(f64::NAN);
+        let after = values.get(k + 1).copied().unwrap_or(first);
         if *value >= enough && *value >= before && *value >= after {
-            let hill = climb(&f, k as f64 * STEP);
+            let hill = climb(f, k as f64 * STEP);
             if hill.value > best.value + SAME * scale
                 || (hill.value >= best.value - SAME * scale && hill.phi < best.phi)
             {
@@ -97,14 +115,20 @@ pub(crate) fn greatest(f: impl Fn(f64, f64) -> Jet, scale: f64) -> Peak {
     best
 }
 
-/// The top of the hill around a sample: Newton on the slope, halving where Newton leaves the hill.
+/// The smallest value of a function.
 #[inline]
-fn climb(f: &impl Fn(f64, f64) -> Jet, start: f64) -> Peak {
+pub(crate) fn smallest(f: impl OnCircle, scale: f64) -> Peak {
+    let peak = greatest(&Below(f), scale);
+    Peak { value: -peak.value, ..peak }
+}
+
+/// The top of the hill around a sample: Newton on the slope, halving where Newton leaves the hill.
+fn climb(f: &impl OnCircle, start: f64) -> Peak {
     let (mut left, mut right, mut x) = (start - STEP, start + STEP, start);
     let mut best = Peak { phi: x, value: f64::NEG_INFINITY, flat: false };
     for _ in 0..60 {
         let (s, c) = x.sin_cos();
-        let jet = f(c, s);
+        let jet = f.jet(c, s);
         if jet.value >= best.value {
             best = Peak { phi: x, value: jet.value, flat: false };
         }
@@ -119,10 +143,10 @@ fn climb(f: &impl Fn(f64, f64) -> Jet, start: f64) -> Peak {
         let next = if jet.bend < 0.0 && newton > left && newton < right { newton } else { 0.5 * (left + right) };
         let moved = (next - x).abs();
         x = next;
-        // Newton doubles the digits: after a step this small the rest is below the last bit.
+        // Newton doubles the digits: after a step this small the rest is below the last bit, in the
+        // place as in the value.
         if moved < 1e-9 {
-            let (s, c) = x.sin_cos();
-            best = Peak { phi: x, value: f(c, s).value.max(best.value), flat: false };
+            best = Peak { phi: x, ..best };
             break;
         }
     }
@@ -137,21 +161,28 @@ pub(crate) fn on_circle(phi: f64) -> f64 {
 
 #[cfg(test)]
 mod tests {
+    use super::super::kirsch::Wave;
     use super::*;
 
-    fn wave(amplitude: f64, at: f64) -> impl Fn(f64, f64) -> Jet {
-        let (s0, c0) = at.sin_cos();
-        move |c, s| Jet {
-            value: amplitude * (c * c0 + s * s0),
-            slope: amplitude * (c * s0 - s * c0),
-            bend: -amplitude * (c * c0 + s * s0),
+    fn wave(amplitude: f64, at: f64) -> Wave {
+        Wave { mean: 0.0, cos: amplitude * at.cos(), sin: amplitude * at.sin() }
+    }
+
+    /// sin 2φ, with two hills of one height.
+    struct Two;
+    impl OnCircle for Two {
+        fn value(&self, c: f64, s: f64) -> f64 {
+            2.0 * s * c
+        }
+        fn jet(&self, c: f64, s: f64) -> Jet {
+            Jet { value: 2.0 * s * c, slope: 2.0 * (c * c - s * s), bend: -8.0 * s * c }
         }
     }
 
     #[test]
     fn finds_a_peak_between_samples_to_the_last_bits() {
         for at in [0.0, 0.01, 1.234_567, 3.0, 6.28] {
-            let peak = greatest(wave(40.0, at), 40.0);
+            let peak = greatest(&wave(40.0, at), 40.0);
             assert!((peak.phi - at).abs() < 1e-9, "{} {at}", peak.phi);
             assert!((peak.value - 40.0).abs() < 1e-13);
         }
@@ -159,8 +190,8 @@ mod tests {
 
     #[test]
     fn equal_hills_give_the_first_and_a_flat_function_none() {
-        let two = |c: f64, s: f64| Jet { value: 2.0 * s * c, slope: 2.0 * (c * c - s * s), bend: -8.0 * s * c };
-        assert!((greatest(two, 1.0).phi - std::f64::consts::FRAC_PI_4).abs() < 1e-9);
-        assert!(greatest(|_, _| Jet { value: 7.0, slope: 0.0, bend: 0.0 }, 7.0).flat);
+        assert!((greatest(&Two, 1.0).phi - std::f64::consts::FRAC_PI_4).abs() < 1e-9);
+        assert!((smallest(Two, 1.0).phi - 3.0 * std::f64::consts::FRAC_PI_4).abs() < 1e-9);
+        assert!(greatest(&Wave { mean: 7.0, cos: 0.0, sin: 0.0 }, 7.0).flat);
     }
 }

@@ -6,6 +6,7 @@
 //! the hole. In φ = 2θ the hoop and axial stresses and the *square* of the shear are each one wave
 //! round the hole, and every limit of the wall is found on that circle.
 
+use super::circle::{Jet, OnCircle};
 use crate::stress::tensor::Tensor;
 
 /// A wave on the circle: mean + cos · cos φ + sin · sin φ.
@@ -39,6 +40,17 @@ impl Wave {
     #[inline(always)]
     pub fn scaled(self, factor: f64, offset: f64) -> Wave {
         Wave { mean: offset + factor * self.mean, cos: factor * self.cos, sin: factor * self.sin }
+    }
+}
+
+impl OnCircle for Wave {
+    #[inline(always)]
+    fn value(&self, c: f64, s: f64) -> f64 {
+        self.at(c, s)
+    }
+    #[inline(always)]
+    fn jet(&self, c: f64, s: f64) -> Jet {
+        Jet { value: self.at(c, s), slope: self.slope(c, s), bend: self.bend(c, s) }
     }
 }
 

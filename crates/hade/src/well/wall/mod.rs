@@ -21,6 +21,7 @@ mod around;
 mod breakout;
 mod circle;
 mod direction;
+mod ends;
 mod kirsch;
 mod limit;
 mod limits;

@@ -6,8 +6,8 @@
 //! pressure. Across the wall the effective stress is p − P_p, so below P_p − T₀ it spalls; where it
 //! parts below that pressure already, no pressure is safe.
 
-use super::circle::{Jet, Peak, greatest};
-use super::kirsch::Kirsch;
+use super::circle::{Jet, OnCircle, Peak, smallest};
+use super::kirsch::{Kirsch, Wave};
 
 /// At which pressure a wall parts.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -67,23 +67,33 @@ fn in_the_wall(kirsch: &Kirsch, pore: f64, tensile: f64) -> Option<Peak> {
         return None;
     }
     let scale = kirsch.scale() + pore.abs() + tensile;
-    let t = kirsch.shear_squared;
-    let peak = greatest(
-        |c, s| {
-            let (d, d1, d2) = (room.at(c, s), room.slope(c, s), room.bend(c, s));
-            let (v, v1, v2) = (t.at(c, s).max(0.0), t.slope(c, s), t.bend(c, s));
-            let share = v / d;
-            let share1 = (v1 - share * d1) / d;
-            let share2 = (v2 - 2.0 * share1 * d1 - share * d2) / d;
-            Jet {
-                value: -(kirsch.hoop.at(c, s) - pore + tensile - share),
-                slope: -(kirsch.hoop.slope(c, s) - share1),
-                bend: -(kirsch.hoop.bend(c, s) - share2),
-            }
-        },
-        scale,
-    );
-    Some(Peak { value: -peak.value, ..peak })
+    Some(smallest(Place { hoop: kirsch.hoop.scaled(1.0, tensile - pore), room, shear_squared: kirsch.shear_squared }, scale))
+}
+
+/// A − P_p + T₀ − τθz² / (σz − P_p + T₀): the parting pressure round the hole.
+struct Place {
+    hoop: Wave,
+    room: Wave,
+    shear_squared: Wave,
+}
+
+impl OnCircle for Place {
+    #[inline(always)]
+    fn value(&self, c: f64, s: f64) -> f64 {
+        self.hoop.at(c, s) - self.shear_squared.at(c, s).max(0.0) / self.room.at(c, s)
+    }
+    fn jet(&self, c: f64, s: f64) -> Jet {
+        let (d, d1, d2) = (self.room.at(c, s), self.room.slope(c, s), self.room.bend(c, s));
+        let t = self.shear_squared;
+        let share = t.at(c, s).max(0.0) / d;
+        let share1 = (t.slope(c, s) - share * d1) / d;
+        let share2 = (t.bend(c, s) - 2.0 * share1 * d1 - share * d2) / d;
+        Jet {
+            value: self.hoop.at(c, s) - share,
+            slope: self.hoop.slope(c, s) - share1,
+            bend: self.hoop.bend(c, s) - share2,
+        }
+    }
 }
 
 /// The parting pressure of one place, not a number where it is parted at any.

@@ -60,7 +60,7 @@ impl Trigonometric {
         let reach = 1.000_1 * curvature * STEP * STEP / 8.0;
         let mut previous: Option<(f64, f64)> = None;
         for k in 0..=SAMPLES {
-            let Some([c, s]) = CIRCLE.get(k % SAMPLES) else { continue };
+            let (Some(c), Some(s)) = (CIRCLE.cos.get(k % SAMPLES), CIRCLE.sin.get(k % SAMPLES)) else { continue };
             let (x, value) = (k as f64 * STEP, self.at(*c, *s));
             if let Some((before_x, before)) = previous {
                 if (before > 0.0) != (value > 0.0) {

@@ -1,6 +1,6 @@
 //! The lowest pressure at which no failing arc is wider than an allowed width.
 
-use super::circle::greatest;
+use super::circle::smallest;
 use super::shear::{ShearWall, Window};
 
 /// What the search found.
@@ -23,9 +23,9 @@ impl ShearWall {
     pub fn lower_at_width(&self, width: f64) -> AtWidth {
         match self.window() {
             Window::Open { lower, .. } => {
-                let least = greatest(|c, s| self.lower_at(c, s).negated(), self.scale());
+                let last = smallest(self.lower_end(), self.scale());
                 let fine = |p: f64| self.failing(p).widest() <= width;
-                AtWidth::At(self.boundary(-least.value - 1e-9 * self.scale(), lower.value, fine))
+                AtWidth::At(self.boundary(last.value - 1e-9 * self.scale(), lower.value, fine))
             }
             Window::Closed { .. } => self.lower_of_closed(width),
         }

@@ -1,0 +1,259 @@
+//! The two ends of the safe pressures of one place of a wall, in closed form, round the hole.
+//!
+//! With σθ = A − p, σz = Z, τθz² = T² and b = UCS − (q − 1) P_p:
+//! - closing in: (p − (A − b)/(1 + q)) (p − (Z − b)/q) ≥ T² / (q (1 + q)), above both roots;
+//! - within the wall: |q (A − Z − p) − (q − 1) G / 2| ≤ ½ (1 + q) √(G² − 4 q T²), with
+//!   G = UCS + (q − 1)(Z − P_p);
+//! - pushed out: the first with the roles of the stress across the wall and of those in it changed.
+
+use super::circle::{Jet, OnCircle};
+use super::kirsch::{Kirsch, Wave};
+use crate::rock::MohrCoulomb;
+
+/// ½ (x + y) ± √((½ (x − y))² + v), with x, y, v as waves.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub(crate) struct Root {
+    mean: Wave,
+    half: Wave,
+    v: Wave,
+}
+
+impl Root {
+    pub fn new(x: Wave, y: Wave, v: Wave) -> Self {
+        let join = |k: f64| Wave {
+            mean: 0.5 * (x.mean + k * y.mean),
+            cos: 0.5 * (x.cos + k * y.cos),
+            sin: 0.5 * (x.sin + k * y.sin),
+        };
+        Root { mean: join(1.0), half: join(-1.0), v }
+    }
+
+    /// The root itself. The square of a shear is not negative; its wave may be by a last bit.
+    #[inline(always)]
+    fn radius(&self, c: f64, s: f64) -> f64 {
+        let (m, v) = (self.half.at(c, s), self.v.at(c, s));
+        (m * m + if v > 0.0 { v } else { 0.0 }).sqrt()
+    }
+
+    /// The larger and the smaller.
+    #[inline(always)]
+    pub fn both(&self, c: f64, s: f64) -> (f64, f64) {
+        let (mean, r) = (self.mean.at(c, s), self.radius(c, s));
+        (mean + r, mean - r)
+    }
+
+    /// The share of x in the larger one's axis.
+    pub fn share(&self, c: f64, s: f64) -> f64 {
+        let r = self.radius(c, s);
+        if r > 0.0 { 0.5 * (1.0 + self.half.at(c, s) / r) } else { 0.5 }
+    }
+
+    pub fn jet(&self, sign: f64, c: f64, s: f64) -> Jet {
+        let (m, m1, m2) = (self.half.at(c, s), self.half.slope(c, s), self.half.bend(c, s));
+        let r = self.radius(c, s);
+        let (r1, r2) = if r > 0.0 {
+            let r1 = (m * m1 + 0.5 * self.v.slope(c, s)) / r;
+            (r1, (m1 * m1 + m * m2 + 0.5 * self.v.bend(c, s) - r1 * r1) / r)
+        } else {
+            (0.0, 0.0)
+        };
+        Jet {
+            value: self.mean.at(c, s) + sign * r,
+            slope: self.mean.slope(c, s) + sign * r1,
+            bend: self.mean.bend(c, s) + sign * r2,
+        }
+    }
+}
+
+/// G² − 4 q T²: no pressure holds within the wall where it is negative.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub(crate) struct Discriminant {
+    pub within: Wave,
+    pub shear_squared: Wave,
+    pub q4: f64,
+}
+
+impl OnCircle for Discriminant {
+    #[inline(always)]
+    fn value(&self, c: f64, s: f64) -> f64 {
+        let g = self.within.at(c, s);
+        g * g - self.q4 * self.shear_squared.at(c, s)
+    }
+    #[inline(always)]
+    fn jet(&self, c: f64, s: f64) -> Jet {
+        let (g, t) = (self.within, self.shear_squared);
+        let (g0, g1, g2) = (g.at(c, s), g.slope(c, s), g.bend(c, s));
+        Jet {
+            value: g0 * g0 - self.q4 * t.at(c, s),
+            slope: 2.0 * g0 * g1 - self.q4 * t.slope(c, s),
+            bend: 2.0 * (g1 * g1 + g0 * g2) - self.q4 * t.bend(c, s),
+        }
+    }
+}
+
+/// An end within the wall: middle ± share · √discriminant.
+#[derive(Clone, Copy, Debug, PartialEq)]
+struct Within {
+    middle: Wave,
+    share: f64,
+    discriminant: Discriminant,
+}
+
+impl Within {
+    fn new(kirsch: &Kirsch, line: MohrCoulomb, discriminant: Discriminant, sign: f64) -> Self {
+        let (a, z, g) = (kirsch.hoop, kirsch.axial, discriminant.within.scaled(0.5 * (line.q - 1.0) / line.q, 0.0));
+        Within {
+            middle: Wave {
+                mean: a.mean - z.mean - g.mean,
+                cos: a.cos - z.cos - g.cos,
+                sin: a.sin - z.sin - g.sin,
+            },
+            share: sign * 0.5 * (1.0 + line.q) / line.q,
+            discriminant,
+        }
+    }
+
+    #[inline(always)]
+    fn value(&self, c: f64, s: f64) -> f64 {
+        let d = self.discriminant.value(c, s);
+        self.middle.at(c, s) + self.share * (if d > 0.0 { d } else { 0.0 }).sqrt()
+    }
+
+    fn jet(&self, c: f64, s: f64) -> Jet {
+        let d = self.discriminant.jet(c, s);
+        let r = d.value.max(0.0).sqrt();
+        let (r1, r2) = if r > 0.0 {
+            let r1 = 0.5 * d.slope / r;
+            (r1, (0.5 * d.bend - r1 * r1) / r)
+        } else {
+            (0.0, 0.0)
+        };
+        Jet {
+            value: self.middle.at(c, s) + self.share * r,
+            slope: self.middle.slope(c, s) + self.share * r1,
+            bend: self.middle.bend(c, s) + self.share * r2,
+        }
+    }
+}
+
+/// The lowest pressure that holds: the larger of two lower ends.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub(crate) struct LowerEnd {
+    closing: Root,
+    within: Within,
+}
+
+impl LowerEnd {
+    pub fn new(kirsch: &Kirsch, line: MohrCoulomb, pore: f64, discriminant: Discriminant) -> Self {
+        let q = line.q;
+        let b = line.ucs - (q - 1.0) * pore;
+        let (by_hoop, by_axial) = (1.0 / (1.0 + q), 1.0 / q);
+        LowerEnd {
+            closing: Root::new(
+                kirsch.hoop.scaled(by_hoop, -b * by_hoop),
+                kirsch.axial.scaled(by_axial, -b * by_axial),
+                kirsch.shear_squared.scaled(by_hoop * by_axial, 0.0),
+            ),
+            within: Within::new(kirsch, line, discriminant, -1.0),
+        }
+    }
+}
+
+impl OnCircle for LowerEnd {
+    #[inline(always)]
+    fn value(&self, c: f64, s: f64) -> f64 {
+        let (closing, within) = (self.closing.both(c, s).0, self.within.value(c, s));
+        if within > closing { within } else { closing }
+    }
+    fn jet(&self, c: f64, s: f64) -> Jet {
+        let (closing, within) = (self.closing.jet(1.0, c, s), self.within.jet(c, s));
+        if within.value > closing.value { within } else { closing }
+    }
+}
+
+/// The highest pressure that holds: the smaller of two upper ends.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub(crate) struct UpperEnd {
+    pushed: Root,
+    within: Within,
+}
+
+impl UpperEnd {
+    pub fn new(kirsch: &Kirsch, line: MohrCoulomb, pore: f64, discriminant: Discriminant) -> Self {
+        let q = line.q;
+        let h = (pore + line.ucs) / q - pore;
+        let share = q / (1.0 + q);
+        UpperEnd {
+            pushed: Root::new(
+                kirsch.hoop.scaled(share, h * share),
+                kirsch.axial.scaled(q, h * q),
+                kirsch.shear_squared.scaled(q * share, 0.0),
+            ),
+            within: Within::new(kirsch, line, discriminant, 1.0),
+        }
+    }
+}
+
+impl OnCircle for UpperEnd {
+    #[inline(always)]
+    fn value(&self, c: f64, s: f64) -> f64 {
+        let (pushed, within) = (self.pushed.both(c, s).1, self.within.value(c, s));
+        if within < pushed { within } else { pushed }
+    }
+    fn jet(&self, c: f64, s: f64) -> Jet {
+        let (pushed, within) = (self.pushed.jet(-1.0, c, s), self.within.jet(c, s));
+        if within.value < pushed.value { within } else { pushed }
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::super::kirsch::Kirsch;
+    use super::super::shear::ShearWall;
+    use super::*;
+    use crate::stress::tensor::Tensor;
+
+    /// Each end is where the criterion, by eigenvalues of the wall's tensor, is just met.
+    #[test]
+    fn the_ends_meet_the_criterion_and_hold_between() {
+        let wall = ShearWall {
+            kirsch: Kirsch::new(Tensor([52.0, 44.0, 63.0, 3.0, 5.0, -4.0]), 0.27),
+            line: MohrCoulomb { ucs: 40.0, q: 3.2 },
+            pore: 21.0,
+        };
+        let excess = |phi: f64, p: f64| {
+            let [s1, _, s3] = wall.at(phi, p).tensor().eigen().values;
+            s1 - 21.0 - 3.2 * (s3 - 21.0) - 40.0
+        };
+        for k in 0..72 {
+            let phi = f64::from(k) * 0.09;
+            let (s, c) = phi.sin_cos();
+            let (lower, upper) = wall.interval_at(c, s).unwrap();
+            assert!(excess(phi, lower).abs() < 1e-11 && excess(phi, upper).abs() < 1e-11, "{phi}");
+            assert!(excess(phi, 0.5 * (lower + upper)) < 0.0);
+            assert!(excess(phi, lower - 1e-6) > 0.0 && excess(phi, upper + 1e-6) > 0.0);
+        }
+    }
+
+    #[test]
+    fn jets_are_the_derivatives() {
+        let wall = ShearWall {
+            kirsch: Kirsch::new(Tensor([52.0, 44.0, 63.0, 3.0, 5.0, -4.0]), 0.27),
+            line: MohrCoulomb { ucs: 10.0, q: 2.5 },
+            pore: 21.0,
+        };
+        let (lower, upper) = (wall.lower_end(), wall.upper_end());
+        for k in 0..40 {
+            let (x, h) = (f64::from(k) * 0.157, 1e-4);
+            for end in [&lower as &dyn OnCircle, &upper] {
+                let at = |x: f64| end.jet(x.cos(), x.sin());
+                let (a, b, c) = (at(x - h), at(x), at(x + h));
+                assert!((b.value - end.value(x.cos(), x.sin())).abs() < 1e-12);
+                let slope = (c.value - a.value) / (2.0 * h);
+                assert!((slope - b.slope).abs() < 1e-5, "{x}: {slope} {}", b.slope);
+                let bend = (c.slope - a.slope) / (2.0 * h);
+                assert!((bend - b.bend).abs() < 1e-4, "{x}: {bend} {}", b.bend);
+            }
+        }
+    }
+}
