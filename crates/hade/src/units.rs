@@ -28,6 +28,8 @@ pub trait Quantity: Copy + PartialEq + std::fmt::Debug + 'static {
     const KIND: &'static str;
     /// The unit that results are shown in.
     const SHOWN_IN: &'static str;
+    /// The decimals that results are shown with.
+    const DECIMALS: usize;
     /// The SI number.
     fn si(self) -> f64;
     /// From the SI number.
@@ -56,6 +58,7 @@ macro_rules! quantity {
         impl Quantity for $name {
             const KIND: &'static str = $kind;
             const SHOWN_IN: &'static str = $shown;
+            const DECIMALS: usize = $decimals;
             fn si(self) -> f64 { self.0 }
             fn from_si(si: f64) -> Self { Self(si) }
             fn shown(self) -> f64 { self.0 / $factor }
@@ -179,6 +182,7 @@ impl Density {
 impl Quantity for f64 {
     const KIND: &'static str = "number";
     const SHOWN_IN: &'static str = "";
+    const DECIMALS: usize = 4;
     fn si(self) -> f64 {
         self
     }
@@ -298,9 +302,12 @@ pub fn require_not_negative<Q: Quantity>(what: &str, value: Q) -> Result<Q> {
     Err(Error::out_of_range(what, with_typed_unit(value), "zero or more"))
 }
 
-/// A quantity as it was typed, with its unit.
+/// A quantity as it was typed, with its unit. A number of more than seven figures was computed, not
+/// typed, and is shown with the usual decimals of its kind.
 pub fn with_typed_unit<Q: Quantity>(value: Q) -> String {
-    let number = as_typed(value.shown());
+    let typed = as_typed(value.shown());
+    let figures = typed.chars().filter(char::is_ascii_digit).count();
+    let number = if figures > 7 { fixed(value.shown(), Q::DECIMALS) } else { typed };
     match Q::SHOWN_IN {
         "" => number,
         "°" => format!("{number}°"),
@@ -329,6 +336,7 @@ mod tests {
         assert_eq!(as_typed(66.9.mpa().in_mpa()), "66.9");
         assert_eq!(as_typed(42.deg().in_deg()), "42");
         assert_eq!(with_typed_unit(35.deg()), "35°");
+        assert_eq!(with_typed_unit(1.32.sg().column(2950.m())), "38.19 MPa");
         assert_eq!(format!("{}", (-0.001).mpa()), "0.00 MPa");
     }
 

@@ -239,7 +239,7 @@ fn from_curve(curve: Curve, name: &str, datum: Datum) -> Result<DensityLog> {
     let mut densities = Vec::with_capacity(curve.depths.len());
     let mut gaps = Vec::new();
     let mut missing = false;
-    for (depth, value) in curve.depths.iter().zip(&curve.values) {
+    for ((depth, value), line) in curve.depths.iter().zip(&curve.values).zip(&curve.lines) {
         if value.is_nan() {
             missing = true;
             continue;
@@ -247,7 +247,7 @@ fn from_curve(curve: Curve, name: &str, datum: Datum) -> Result<DensityLog> {
         let density = value * unit;
         if !(LIGHTEST..=HEAVIEST).contains(&density) {
             return Err(bad(
-                None,
+                Some(*line as usize),
                 name,
                 format!("at depth {depth} m the density is {density} kg/m³, and rock has {LIGHTEST} to {HEAVIEST}"),
                 "correct the unit of the curve, or mark bad values with NULL",
@@ -376,7 +376,8 @@ pub(super) mod tests {
         assert!(with("EREF.M 31.8", "EREF.M high").contains("not a number"));
         assert!(with("EGL.M 25.0", "EGL.M 50").contains("above the rotary table"));
         assert!(with("EGL.M 25.0", "EKB.M 30").contains("31.8 m above"));
-        assert!(with("51 2.1", "51 0.0021").contains("mark bad values with NULL"));
+        let heavy = with("51 2.1", "51 0.0021");
+        assert!(heavy.starts_with("l.las, line 21") && heavy.contains("mark bad values with NULL"), "{heavy}");
         let loose = log(&GOOD.replace("EREF.M 31.8", "NOTE.M 31.8")).unwrap();
         assert!(loose.tie().unwrap_err().to_string().contains("EREF"));
         let tie = DatumTie::rotary_table_at(31.8.m()).unwrap();

@@ -20,8 +20,8 @@ pub(super) const MOST_ROWS: usize = 2_000_000;
 pub(super) struct Curve {
     pub depths: Vec<f64>,
     pub values: Vec<f64>,
-    /// The line each row began on; kept for the first row only, rows follow one another.
-    pub first_line: usize,
+    /// The line each row began on.
+    pub lines: Vec<u32>,
     pub unit: String,
     pub unit_line: usize,
     pub parameters: Vec<Entry>,
@@ -101,7 +101,7 @@ pub(super) fn read<R: Read>(mut lines: Lines<R>, curve: &str) -> Result<Curve> {
     Ok(Curve {
         depths: rows.depths,
         values: rows.values,
-        first_line: rows.first_line,
+        lines: rows.lines,
         unit: unit.map(|e| e.unit.clone()).unwrap_or_default(),
         unit_line: unit.map_or(0, |e| e.line),
         parameters: header.parameters,
@@ -235,13 +235,13 @@ struct Rows<'a> {
     layout: &'a Layout,
     depths: Vec<f64>,
     values: Vec<f64>,
-    first_line: usize,
+    lines: Vec<u32>,
     last: Option<f64>,
 }
 
 impl<'a> Rows<'a> {
     fn new(layout: &'a Layout) -> Self {
-        Rows { layout, depths: Vec::new(), values: Vec::new(), first_line: 0, last: None }
+        Rows { layout, depths: Vec::new(), values: Vec::new(), lines: Vec::new(), last: None }
     }
 
     /// How far a depth may lie from where STRT, STOP and STEP put it, in the file's unit.
@@ -282,9 +282,7 @@ impl<'a> Rows<'a> {
             }
             _ => {}
         }
-        if self.depths.is_empty() {
-            self.first_line = line;
-        }
+        self.lines.push(u32::try_from(line).unwrap_or(u32::MAX));
         self.last = Some(depth);
         self.depths.push((l.depth_unit)(depth).in_m());
         self.values.push(if value == l.null { f64::NAN } else { value });
@@ -331,7 +329,8 @@ pub(super) mod tests {
         let plain = parse(GOOD).unwrap();
         assert_eq!(plain.values, [2.0, 2.1, 2.2, 2.3]);
         assert_eq!(plain.depths, [100.0, 101.0, 102.0, 103.0]);
-        assert_eq!((plain.unit.as_str(), plain.first_line), ("G/C3", 20));
+        assert_eq!(plain.unit, "G/C3");
+        assert_eq!(plain.lines, [20, 21, 22, 23]);
         let wrapped = GOOD
             .replace("WRAP. NO", "WRAP. YES")
             .replace("100.0 50 2.0", "100.0\n50\n2.0")

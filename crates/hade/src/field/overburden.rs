@@ -217,7 +217,8 @@ impl Explain for Overburden {
         let (log_depth, surface, water) = (record.log_depth()?, record.surface()?, record.water()?);
         let first = record.first_sample();
         let last = record.layers.last().map_or(f64::NAN, |l| l.bottom.si());
-        if record.layers.len() > MOST_LAYERS || !((last - log_depth.si()).abs() < MEET) {
+        let reached_depth = (last - log_depth.si()).abs() < MEET;
+        if record.layers.len() > MOST_LAYERS || !reached_depth {
             return Err(Error::not_physical(
                 "The layers of a density log",
                 "they do not reach the depth asked for; make the record again.",
@@ -237,18 +238,19 @@ impl Explain for Overburden {
         let mut reached = first;
         for layer in &record.layers {
             require_rock(layer.density)?;
-            if layer.top != reached || !(layer.bottom > layer.top) {
+            let thickness = (layer.bottom - layer.top).finite("thickness of a layer")?;
+            if layer.top != reached || thickness.si() <= 0.0 {
                 return Err(Error::not_physical(
                     "The layers of a density log",
                     "they do not follow one another; make the record again.",
                 ));
             }
-            rock += layer.density.si() * (layer.bottom - layer.top).si();
+            rock += layer.density.si() * thickness.si();
             reached = layer.bottom;
         }
         let stress = Pressure::from_si(GRAVITY * (SEA_WATER * water.si() + rock));
         let below_rotary = record.below_rotary()?;
-        if !(below_rotary.si() > 0.0) {
+        if below_rotary.si() <= 0.0 {
             return Err(Error::out_of_range(
                 "the depth below the rotary table",
                 with_typed_unit(below_rotary),

@@ -207,7 +207,9 @@ impl WallAround {
         let pore = self.wall.inputs.pore;
         let cell = |p: Pressure| fixed(p.in_mpa(), 2);
         Table {
-            caption: "Round the wall, effective stresses (total − P_p); from 180° on it repeats, τθz with the other sign".to_owned(),
+            caption:
+                "Round the wall, effective stresses (total − P_p); from 180° on it repeats, τθz with the other sign"
+                    .to_owned(),
             columns: vec![
                 Column::number("tool face", "°"),
                 Column::number("bearing", "°"),

@@ -193,12 +193,7 @@ pub(super) fn check_arcs(route: &ByVectors, pressure: f64, outcome: &ArcsOutcome
             "MPa",
         ));
     }
-    checks.push(Check::holds(
-        "fails just inside each edge and holds just outside",
-        sides,
-        unit * 1e-9,
-        "MPa",
-    ));
+    checks.push(Check::holds("fails just inside each edge and holds just outside", sides, unit * 1e-9, "MPa"));
     let listed = |theta: f64| {
         arcs.iter().any(|arc| {
             let off = (theta - arc.centre.si()).rem_euclid(PI);
@@ -289,7 +284,8 @@ impl Explain for FailingArcs {
             steps,
             notes: vec![
                 direction::reference(attitude),
-                "Each arc stands for two: the same fails on the far side of the hole, 180° of tool face away.".to_owned(),
+                "Each arc stands for two: the same fails on the far side of the hole, 180° of tool face away."
+                    .to_owned(),
             ],
             topics: ["wall", "breakout", "elastic"].map(str::to_owned).to_vec(),
             ..Explanation::default()

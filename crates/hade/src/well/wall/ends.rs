@@ -103,11 +103,7 @@ impl Within {
     fn new(kirsch: &Kirsch, line: MohrCoulomb, discriminant: Discriminant, sign: f64) -> Self {
         let (a, z, g) = (kirsch.hoop, kirsch.axial, discriminant.within.scaled(0.5 * (line.q - 1.0) / line.q, 0.0));
         Within {
-            middle: Wave {
-                mean: a.mean - z.mean - g.mean,
-                cos: a.cos - z.cos - g.cos,
-                sin: a.sin - z.sin - g.sin,
-            },
+            middle: Wave { mean: a.mean - z.mean - g.mean, cos: a.cos - z.cos - g.cos, sin: a.sin - z.sin - g.sin },
             share: sign * 0.5 * (1.0 + line.q) / line.q,
             discriminant,
         }

@@ -183,12 +183,7 @@ impl Limit {
     }
 
     /// No pressure is safe; this one is least bad.
-    pub(super) fn none_safe(
-        wall: &Wall,
-        kind: LimitKind,
-        least: LeastBad,
-        own_side: Option<f64>,
-    ) -> Self {
+    pub(super) fn none_safe(wall: &Wall, kind: LimitKind, least: LeastBad, own_side: Option<f64>) -> Self {
         Limit {
             own_side: own_side.map(Pressure::from_si),
             least_bad: Some(Pressure::from_si(least.pressure)),

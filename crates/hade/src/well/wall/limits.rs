@@ -139,14 +139,7 @@ impl Limits {
 
     /// All of them, in the order they are printed.
     pub fn all(&self) -> [Limit; 6] {
-        [
-            self.lower_shear,
-            self.upper_shear,
-            self.initiation,
-            self.reopening,
-            self.least_stress,
-            self.pore_pressure,
-        ]
+        [self.lower_shear, self.upper_shear, self.initiation, self.reopening, self.least_stress, self.pore_pressure]
     }
 }
 
@@ -308,9 +301,7 @@ impl Limits {
                     limit.kind().words()
                 ));
             }
-            if limit.pressure().is_some_and(|p| p < self.wall.inputs.pore)
-                && limit.kind() == LimitKind::LowerShear
-            {
+            if limit.pressure().is_some_and(|p| p < self.wall.inputs.pore) && limit.kind() == LimitKind::LowerShear {
                 notes.push("The lower shear limit is below the pore pressure: the formation's fluid, not the rock, sets the lowest pressure; below P_p − T₀ the wall spalls.".to_owned());
             }
         }

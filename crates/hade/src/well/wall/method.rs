@@ -78,10 +78,7 @@ pub(super) fn worked(wall: &Wall, theta: f64, pressure: f64) -> Vec<Step> {
             fixed(theta.to_degrees(), 4)
         )),
         Step::worked(format!("σr = p = {p} MPa")),
-        Step::worked(format!(
-            "σθ = {x} + {y} − 2 ({x} − {y}) ({c2}) − 4 ({xy}) ({s2}) − {p} = {} MPa",
-            mpa(at.hoop)
-        )),
+        Step::worked(format!("σθ = {x} + {y} − 2 ({x} − {y}) ({c2}) − 4 ({xy}) ({s2}) − {p} = {} MPa", mpa(at.hoop))),
         Step::worked(format!("σzw = {z} − {nu} [2 ({x} − {y}) ({c2}) + 4 ({xy}) ({s2})] = {} MPa", mpa(at.axial))),
         Step::worked(format!("τθz = 2 (−({xz}) ({s}) + ({yz}) ({c})) = {} MPa", mpa(at.shear))),
         Step::worked(principal_line(at, wall.shear.pore)),

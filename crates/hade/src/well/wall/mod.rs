@@ -32,6 +32,8 @@ mod second_route;
 mod shear;
 mod stress_at;
 mod tension;
+#[cfg(test)]
+mod tests;
 mod trigonometric;
 #[allow(clippy::module_inception)]
 mod wall;

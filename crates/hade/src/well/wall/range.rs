@@ -111,12 +111,7 @@ impl Wall {
     /// # Errors
     /// When the width is outside 0–180°, a margin is negative, or the depth is not above zero.
     pub fn recommended(&self, choices: RangeChoices) -> Result<RecommendedRange> {
-        require_between(
-            "allowed width of a failing arc",
-            choices.allowed_width,
-            Angle::deg(0.0),
-            Angle::deg(180.0),
-        )?;
+        require_between("allowed width of a failing arc", choices.allowed_width, Angle::deg(0.0), Angle::deg(180.0))?;
         require_not_negative("margin at the bottom", choices.margin_bottom)?;
         require_not_negative("margin at the top", choices.margin_top)?;
         let tvd = choices.tvd_below_rotary;
@@ -159,9 +154,7 @@ fn bottom(limits: &Limits, balance: Pressure) -> Option<(Pressure, Governs)> {
 
 fn top(limits: &Limits) -> Option<(Pressure, Governs)> {
     let mut least = (limits.least_stress.pressure()?, Governs::LeastStress);
-    for (limit, governs) in
-        [(&limits.initiation, Governs::Initiation), (&limits.upper_shear, Governs::UpperShear)]
-    {
+    for (limit, governs) in [(&limits.initiation, Governs::Initiation), (&limits.upper_shear, Governs::UpperShear)] {
         let pressure = limit.pressure()?;
         if pressure < least.0 {
             least = (pressure, governs);

@@ -131,11 +131,9 @@ fn line(end: &RangeEnd) -> String {
 impl RecommendedRange {
     fn headline(&self) -> String {
         match (self.bottom, self.top) {
-            (Some(bottom), Some(top)) if self.is_empty() => format!(
-                "no range: the bottom {} is not below the top {}",
-                line(&bottom),
-                line(&top)
-            ),
+            (Some(bottom), Some(top)) if self.is_empty() => {
+                format!("no range: the bottom {} is not below the top {}", line(&bottom), line(&top))
+            }
             (Some(bottom), Some(top)) => format!("{} to {}", line(&bottom), line(&top)),
             (None, _) => "no range: no pressure keeps failing arcs within the allowed width".to_owned(),
             (Some(_), None) => "no range: no pressure is safe against parting or shear at the top".to_owned(),
@@ -159,7 +157,10 @@ impl RecommendedRange {
         if self.limits.upper_shear.pressure().is_none() {
             notes.push("At no pressure is the whole wall within its shear strength.".to_owned());
         }
-        notes.push("Hold static density less swab against the bottom, and circulating density and surge against the top.".to_owned());
+        notes.push(
+            "Hold static density less swab against the bottom, and circulating density and surge against the top."
+                .to_owned(),
+        );
         notes.push(direction::reference(self.wall.attitude));
         notes
     }
@@ -397,9 +398,5 @@ fn check_weights(inputs: &RangeInputs, name: &str, end: &RangeEnd) -> Check {
 /// By how much the tightest of many pressures misses the allowed width.
 fn tightest(route: &ByVectors, inputs: &RangeInputs) -> f64 {
     let width = inputs.choices.allowed_width.si();
-    (0..=400)
-        .map(|k| route.widest(f64::from(k) * route.size() / 200.0))
-        .fold(f64::INFINITY, f64::min)
-        .min(10.0)
-        - width
+    (0..=400).map(|k| route.widest(f64::from(k) * route.size() / 200.0)).fold(f64::INFINITY, f64::min).min(10.0) - width
 }

@@ -25,10 +25,15 @@ pub(crate) struct ShearWall {
 /// The pressures between which the whole wall holds.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub(crate) enum Window {
-    Open { lower: Peak, upper: Peak },
+    Open {
+        lower: Peak,
+        upper: Peak,
+    },
     /// At no pressure does the whole wall hold. Where each place does at some, the two ends are
     /// given all the same, lower above upper: (lower, upper).
-    Closed { crossed: Option<(f64, f64)> },
+    Closed {
+        crossed: Option<(f64, f64)>,
+    },
 }
 
 /// The pressure at which the wall fails least.

@@ -178,7 +178,11 @@ impl Explain for WallStress {
             Item::computed("τ_θz", "shear stress in the wall", self.shear),
         ];
         for (value, n) in self.effective.principal().into_iter().zip(1..) {
-            results.push(Item::computed(&format!("σ_{n}'"), format!("effective principal stress {n} at the wall"), value));
+            results.push(Item::computed(
+                &format!("σ_{n}'"),
+                format!("effective principal stress {n} at the wall"),
+                value,
+            ));
         }
         if let Some(bearing) = self.bearing {
             results.push(crate::frames::bearing_item("β", "bearing of the tool face", bearing));

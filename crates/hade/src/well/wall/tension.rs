@@ -67,7 +67,10 @@ fn in_the_wall(kirsch: &Kirsch, pore: f64, tensile: f64) -> Option<Peak> {
         return None;
     }
     let scale = kirsch.scale() + pore.abs() + tensile;
-    Some(smallest(Place { hoop: kirsch.hoop.scaled(1.0, tensile - pore), room, shear_squared: kirsch.shear_squared }, scale))
+    Some(smallest(
+        Place { hoop: kirsch.hoop.scaled(1.0, tensile - pore), room, shear_squared: kirsch.shear_squared },
+        scale,
+    ))
 }
 
 /// A − P_p + T₀ − τθz² / (σz − P_p + T₀): the parting pressure round the hole.
