@@ -2,7 +2,8 @@
 
 use std::fs::{self, File, OpenOptions, TryLockError};
 use std::path::{Path, PathBuf};
-use std::{env, io};
+use std::time::Duration;
+use std::{env, io, thread};
 
 use crate::error::{Error, Result};
 use crate::progress::{Progress, Step};
@@ -124,11 +125,16 @@ pub(crate) fn is_whole(folder: &Path) -> bool {
 
 /// Removes what an earlier process left unfinished and makes the folder.
 pub(crate) fn begin(folder: &Path) -> Result<()> {
-    match fs::remove_dir_all(folder) {
-        Err(error) if error.kind() != io::ErrorKind::NotFound => {
-            return Err(Error::file("remove", folder)(error));
+    // A compiler left over from a process that was killed may still write for a moment.
+    let mut tries = 0;
+    loop {
+        match fs::remove_dir_all(folder) {
+            Ok(()) => break,
+            Err(error) if error.kind() == io::ErrorKind::NotFound => break,
+            Err(_) if tries < 20 => thread::sleep(Duration::from_millis(250)),
+            Err(error) => return Err(Error::file("remove", folder)(error)),
         }
-        _ => {}
+        tries += 1;
     }
     fs::create_dir_all(folder).map_err(Error::file("make the folder", folder))
 }

@@ -29,7 +29,7 @@ pub(crate) fn key(toolchain: &Toolchain) -> String {
 /// Builds into `folder`, which is finished on success. The caller holds the cache's lock.
 pub(crate) fn build(folder: &Path, toolchain: &Toolchain, progress: &mut dyn Progress) -> Result<()> {
     cache::begin(folder)?;
-    let work = folder.join("build");
+    let work = folder.join(format!("build-{}", std::process::id()));
     let write = |name: &str, content: &[u8]| {
         let path = work.join(name);
         fs::write(&path, content).map_err(Error::file("write", &path))
@@ -43,10 +43,11 @@ pub(crate) fn build(folder: &Path, toolchain: &Toolchain, progress: &mut dyn Pro
 
     let built = match run(&work, toolchain, true, progress) {
         Ok(built) => built,
+        Err(why) if !why.contains("offline") => return Err(Error::Build { why: plain(why, folder) }),
         Err(_) => {
             progress.step(Step::Notice("some source code is not on this machine yet; fetching it from crates.io"));
             write("Cargo.lock", packed::LOCK.as_bytes())?;
-            run(&work, toolchain, false, progress).map_err(|why| Error::Build { why })?
+            run(&work, toolchain, false, progress).map_err(|why| Error::Build { why: plain(why, folder) })?
         }
     };
 
@@ -194,7 +195,40 @@ fn direct_dependencies(work: &Path, toolchain: &Toolchain) -> Result<Vec<(String
         .collect())
 }
 
+/// The end of what Cargo said, without its progress.
 fn last_lines(text: &str, count: usize) -> String {
-    let lines: Vec<&str> = text.lines().filter(|line| !line.trim().is_empty()).collect();
+    let progress = ["Compiling", "Checking", "Blocking", "Downloading", "Downloaded", "Updating", "Locking"];
+    let lines: Vec<&str> = text
+        .lines()
+        .filter(|line| !line.trim().is_empty() && !progress.iter().any(|word| line.trim_start().starts_with(word)))
+        .collect();
     lines[lines.len().saturating_sub(count)..].join("\n")
+}
+
+/// Two causes a user can act on, said plainly; anything else as Cargo says it.
+fn plain(why: String, folder: &Path) -> String {
+    if why.contains("No space left on device") {
+        return format!("the disk is full; free some 500 MB for {}", folder.display());
+    }
+    if why.contains("failed to download") || why.contains("Could not resolve host") || why.contains("spurious network")
+    {
+        return format!(
+            "their source is not on this machine and crates.io was not reached; connect once to fetch it.\n{why}"
+        );
+    }
+    why
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn causes_are_said_plainly() {
+        let folder = Path::new("/cache/libraries-x");
+        let full = plain("error: No space left on device (os error 28)".into(), folder);
+        assert!(full.starts_with("the disk is full") && full.contains("/cache/libraries-x"));
+        assert_eq!(plain("error: odd".into(), folder), "error: odd");
+        assert_eq!(last_lines("   Compiling a v1\nerror: odd\n\n", 5), "error: odd");
+    }
 }

@@ -3,7 +3,7 @@
 use serde::{Deserialize, Serialize};
 
 use super::azimuth::{TRUE_AZIMUTH, bearing};
-use super::vector::{M3, V3, cross};
+use super::vector::{M3, cross};
 use super::{Azimuth, Chain, Name};
 use crate::card::Item;
 use crate::error::Result;
@@ -57,14 +57,6 @@ impl Attitude {
     /// Whether the top of the hole is undefined, so that tool faces count from the azimuth.
     pub fn is_vertical(self) -> bool {
         self.inclination.si().sin().abs() < NEAR_VERTICAL.to_radians().sin()
-    }
-
-    /// The compass bearing of a tool face: of its direction's horizontal part.
-    pub(crate) fn bearing_of(self, toolface: Angle) -> Result<Angle> {
-        let q = self.matrix()?;
-        let (c, s) = (toolface.si().cos(), toolface.si().sin());
-        let v: V3 = [q[0][0] * c + q[1][0] * s, q[0][1] * c + q[1][1] * s, 0.0];
-        Ok(Angle::from_si(super::vector::wrap(v[1].atan2(v[0]))))
     }
 
     /// Inclination and azimuth as inputs or results.

@@ -92,11 +92,6 @@ impl Chain {
             },
         ]
     }
-
-    /// What the frame it leads to is called in messages.
-    pub(crate) fn frame_words(&self) -> String {
-        frame_words(self.attitude, self.name)
-    }
 }
 
 /// "the borehole frame of KF-3 at 2950 m (inclination 42.0°, azimuth 120.0°)".

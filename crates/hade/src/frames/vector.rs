@@ -24,9 +24,6 @@ pub fn add(a: V3, b: V3) -> V3 {
 pub fn angle_between_lines(a: V3, b: V3) -> f64 {
     norm(cross(a, b)).atan2(dot(a, b).abs())
 }
-pub fn apply(q: &M3, v: V3) -> V3 {
-    [dot(q[0], v), dot(q[1], v), dot(q[2], v)]
-}
 pub fn transpose(q: &M3) -> M3 {
     [[q[0][0], q[1][0], q[2][0]], [q[0][1], q[1][1], q[2][1]], [q[0][2], q[1][2], q[2][2]]]
 }

@@ -294,15 +294,16 @@ fn span(values: impl Iterator<Item = f64>, least: f64) -> (f64, f64) {
 }
 
 fn layers(path: &[[f64; 2]], stations: &[[f64; 2]], here: [f64; 2], label: &str) -> Vec<Layer> {
-    let mut layers = vec![Layer::line("", Role::First, path.iter().copied())];
+    let mut layers = Vec::new();
     if stations.len() <= 150 {
         layers.push(Layer::Points {
             label: String::new(),
-            role: Role::First,
+            role: Role::Quiet,
             mark: Mark::Cross,
             points: stations.to_vec(),
         });
     }
+    layers.push(Layer::line("", Role::First, path.iter().copied()));
     layers.push(Layer::Points { label: label.to_owned(), role: Role::Limit, mark: Mark::Dot, points: vec![here] });
     layers
 }
@@ -328,7 +329,7 @@ fn side_view(p: &Position) -> Figure {
             fixed(here[0], 1),
             p.attitude.words()
         ),
-        x: Axis::new(&format!("distance from the wellhead towards {towards}° (m)"), left, right),
+        x: Axis::new(&format!("distance towards {towards}° (m)"), left, right),
         y: Axis::new(
             if p.survey().is_tied_in() { "TVD below the rotary table (m)" } else { "TVD below the first station (m)" },
             top,
@@ -336,7 +337,7 @@ fn side_view(p: &Position) -> Figure {
         )
         .downward(),
         equal_scale: true,
-        layers: layers(&path, &stations, here, &format!("{} m", fixed(p.tvd.si(), 1))),
+        layers: layers(&path, &stations, here, &format!("TVD {} m", fixed(p.tvd.si(), 1))),
     }
 }
 

@@ -65,6 +65,23 @@ impl Root {
     }
 }
 
+/// One of the two values of a root.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub(crate) struct Signed {
+    root: Root,
+    sign: f64,
+}
+
+impl OnCircle for Signed {
+    #[inline(always)]
+    fn value(&self, c: f64, s: f64) -> f64 {
+        self.root.mean.at(c, s) + self.sign * self.root.radius(c, s)
+    }
+    fn jet(&self, c: f64, s: f64) -> Jet {
+        self.root.jet(self.sign, c, s)
+    }
+}
+
 /// G² − 4 q T²: no pressure holds within the wall where it is negative.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub(crate) struct Discriminant {
@@ -153,6 +170,11 @@ impl LowerEnd {
             within: Within::new(kirsch, line, discriminant, -1.0),
         }
     }
+
+    /// The lowest pressure at which the place does not close in.
+    pub fn closing(&self) -> Signed {
+        Signed { root: self.closing, sign: 1.0 }
+    }
 }
 
 impl OnCircle for LowerEnd {
@@ -187,6 +209,11 @@ impl UpperEnd {
             ),
             within: Within::new(kirsch, line, discriminant, 1.0),
         }
+    }
+
+    /// The highest pressure at which the place is not pushed out.
+    pub fn pushed(&self) -> Signed {
+        Signed { root: self.pushed, sign: -1.0 }
     }
 }
 

@@ -574,7 +574,7 @@ fn check_width(route: &ByVectors, limit: &Limit, width: f64) -> Vec<Check> {
         ),
         Check::holds(
             format!("{what}: the widest arc just below it is beyond the allowed width"),
-            -over(pressure - nudge),
+            if over(pressure - nudge) > 0.0 { 0.0 } else { 1.0 },
             0.0,
             "rad",
         ),

@@ -344,7 +344,9 @@ fn width_held(route: &ByVectors, pressure: f64, width: f64) -> [f64; 2] {
         let wider = (route.widest(p) - width).clamp(-10.0, 10.0);
         if width == 0.0 && wider <= 0.0 && route.worst(p) > 1e-11 * route.size() { 1e-9 } else { wider }
     };
-    [over(pressure + nudge), -over(pressure - nudge)]
+    // What is just below must be wider, not merely no narrower.
+    let below = over(pressure - nudge);
+    [over(pressure + nudge), if below > 0.0 { -below } else { 1.0 - below }]
 }
 
 /// The bottom holds both conditions just above it and breaks one of them just below.

@@ -107,12 +107,13 @@ impl ByVectors {
         s1 - self.tangent * self.tangent * s3 - self.ucs
     }
 
-    /// The least effective principal stress within the wall: the radial stress is put out of the way
-    /// first.
-    fn least_in_wall(&self, theta: f64, pressure: f64) -> f64 {
+    /// The effective principal stresses within the wall: the stress across it is put out of the way
+    /// of the eigenvalues first.
+    fn in_the_wall(&self, theta: f64, pressure: f64) -> [f64; 2] {
         let [_, hoop, axial, shear] = self.parts(theta, pressure);
         let aside = hoop.max(axial) + shear.abs();
-        self.put_together(theta, aside, hoop, axial, shear).eigen().values[2] - self.pore
+        let [_, e1, e2] = self.put_together(theta, aside, hoop, axial, shear).eigen().values;
+        [e1 - self.pore, e2 - self.pore]
     }
 
     /// The greatest value of a function over tool faces 0–180° and where, by looking everywhere and
@@ -143,12 +144,19 @@ impl ByVectors {
         self.greatest(|theta| self.excess(theta, pressure)).0
     }
 
-    /// The worst excess among places that more pressure makes worse (side +1) or better (side −1).
+    /// The worst excess of one side round the hole: side −1 what too little pressure does (the hole
+    /// closes in), +1 what too much does (it is pushed out). Failure within the wall belongs to the
+    /// side on which a little more pressure makes it better, or worse.
     pub fn worst_of_side(&self, pressure: f64, side: f64) -> f64 {
         let nudge = 1e-6 * self.size();
+        let q = self.tangent * self.tangent;
+        let across = pressure - self.pore;
         self.greatest(|theta| {
-            let now = self.excess(theta, pressure);
-            if (self.excess(theta, pressure + nudge) - now) * side > 0.0 { now } else { -self.size() }
+            let [e1, e2] = self.in_the_wall(theta, pressure);
+            let [more1, more2] = self.in_the_wall(theta, pressure + nudge);
+            let of_side = if side < 0.0 { e1 - q * across } else { across - q * e2 };
+            let within = if ((more1 - q * more2) - (e1 - q * e2)) * side > 0.0 { e1 - q * e2 } else { of_side };
+            of_side.max(within) - self.ucs
         })
         .0
     }
@@ -160,7 +168,7 @@ impl ByVectors {
 
     /// The same within the wall alone, the stress across it put out of the way.
     pub fn least_in_wall_round(&self, pressure: f64) -> f64 {
-        -self.greatest(|theta| -self.least_in_wall(theta, pressure)).0
+        -self.greatest(|theta| -self.in_the_wall(theta, pressure)[1]).0
     }
 
     /// The widest failing arc at a pressure, by looking everywhere and halving at its edges;

@@ -104,7 +104,7 @@ fn hold<E: Explain>(name: &str, result: &E) {
     let largest = numbers.iter().fold(0.0_f64, |m, (_, n)| m.max(n.abs()));
     for (place, number) in numbers {
         let step = if number.abs() > 1e-6 * largest { 1e-3 * number.abs() } else { 1e-3 * largest };
-        let small = if number.abs() < 10.0 { 1e-3 } else { 1e-5 * number.abs() };
+        let small = if number.abs() > 1e-6 * largest { 1e-5 * number.abs() } else { step };
         for wrong in [number + step, number - step, number + small, number - small] {
             let outcome = E::Outcome::read(&card.outcome.with_number(&place, wrong)).unwrap();
             let checks = E::check(result_inputs::<E>(&card), &outcome);
@@ -243,9 +243,9 @@ fn all_widths_up_to_the_whole_wall() {
 }
 
 fn any_wall() -> impl Strategy<Value = Wall> {
-    let stress = (20.0..80.0, 20.0..80.0, 20.0..80.0, -6.0..6.0, -6.0..6.0, -6.0..6.0);
-    let at = (0.0..180.0, 0.0..360.0, 5.0..25.0);
-    let rock = (0.0..0.5, 0.0..8.0, 2.0..40.0, 0.0..50.0);
+    let stress = (20.0..80.0_f64, 20.0..80.0_f64, 20.0..80.0_f64, -6.0..6.0_f64, -6.0..6.0_f64, -6.0..6.0_f64);
+    let at = (0.0..180.0_f64, 0.0..360.0_f64, 5.0..25.0_f64);
+    let rock = (0.0..0.5_f64, 0.0..8.0_f64, 2.0..40.0_f64, 0.0..50.0_f64);
     (stress, at, rock).prop_map(|((nn, ee, dd, ne, ed, nd), (i, a, pore), (poisson, tensile, c, phi))| {
         let strength = Strength::mohr_coulomb(c.mpa(), phi.deg());
         let rock = Rock { poisson, tensile_strength: tensile.mpa(), strength };
@@ -254,10 +254,10 @@ fn any_wall() -> impl Strategy<Value = Wall> {
 }
 
 proptest! {
-    #![proptest_config(ProptestConfig::with_cases(64))]
+    #![proptest_config(ProptestConfig::with_cases(32))]
 
     #[test]
-    fn every_wall_passes_its_own_checks(wall in any_wall(), width in 1.0..170.0, pressure in 0.0..70.0) {
+    fn every_wall_passes_its_own_checks(wall in any_wall(), width in 1.0..170.0_f64, pressure in 0.0..70.0_f64) {
         for card in [
             wall.limits().card(),
             wall.limits_at_width(width.deg()).unwrap().card(),
@@ -273,8 +273,8 @@ proptest! {
 proptest! {
     #[test]
     fn limits_stay_when_hole_and_stress_turn_together(
-        s in (20.0..80.0, 20.0..80.0, 20.0..80.0, -6.0..6.0, -6.0..6.0, -6.0..6.0),
-        i in 0.0..180.0, a in 0.0..360.0, turn in 0.0..360.0_f64,
+        s in (20.0..80.0_f64, 20.0..80.0_f64, 20.0..80.0_f64, -6.0..6.0_f64, -6.0..6.0_f64, -6.0..6.0_f64),
+        i in 0.0..180.0_f64, a in 0.0..360.0_f64, turn in 0.0..360.0_f64,
     ) {
         let six = [s.0, s.1, s.2, s.3, s.4, s.5];
         let [nn, ee, dd, ne, ed, nd] = six;
@@ -292,7 +292,7 @@ proptest! {
     }
 
     #[test]
-    fn stresses_repeat_on_the_far_side_but_for_the_sign_of_the_shear(wall in any_wall(), theta in 0.0..180.0) {
+    fn stresses_repeat_on_the_far_side_but_for_the_sign_of_the_shear(wall in any_wall(), theta in 0.0..180.0_f64) {
         let at = |t: f64| wall.stress_at(30.mpa(), t.deg()).unwrap();
         let (near, far) = (at(theta), at(theta + 180.0));
         let small = 1e-6.pa();
@@ -304,7 +304,7 @@ proptest! {
     }
 
     #[test]
-    fn a_stronger_rock_holds_from_a_lower_pressure(wall in any_wall(), c in 2.0..30.0, more in 0.1..10.0) {
+    fn a_stronger_rock_holds_from_a_lower_pressure(wall in any_wall(), c in 2.0..30.0_f64, more in 0.1..10.0_f64) {
         let with = |c: f64| {
             let strength = Strength::mohr_coulomb(c.mpa(), 30.deg());
             let inputs = WallInputs { rock: Rock { strength, ..wall.inputs.rock }, ..wall.inputs };

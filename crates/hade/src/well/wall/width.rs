@@ -1,6 +1,6 @@
 //! The lowest pressure at which no failing arc is wider than an allowed width.
 
-use super::circle::smallest;
+use super::circle::{greatest, smallest};
 use super::shear::{ShearWall, Window};
 
 /// What the search found.
@@ -18,8 +18,8 @@ impl ShearWall {
     /// Where the whole wall holds between two pressures, everything that fails below the lower of
     /// them fails there by closing in, and the arcs only grow as the pressure falls: the width is
     /// bracketed by that limit and the pressure at which the last place fails. Where the whole wall
-    /// holds at no pressure, arcs of two kinds grow in opposite senses, so the pressures around the
-    /// least bad one are looked through from below.
+    /// holds at no pressure, arcs of two kinds grow in opposite senses, so the pressures between which
+    /// any place holds are looked through from below.
     pub fn lower_at_width(&self, width: f64) -> AtWidth {
         match self.window() {
             Window::Open { lower, .. } => {
@@ -33,28 +33,22 @@ impl ShearWall {
 
     fn lower_of_closed(&self, width: f64) -> AtWidth {
         const PIECES: u32 = 512;
+        let scale = self.scale();
+        // Below the first every place closes in, above the second every place is pushed out.
+        let low = smallest(self.lower_end().closing(), scale).value - 1e-9 * scale;
+        let high = greatest(&self.upper_end().pushed(), scale).value + 1e-9 * scale;
         let fine = |p: f64| self.failing(p).widest() <= width;
-        let middle = self.least_bad().pressure;
-        let all = |p: f64| self.failing(p).whole;
-        let (mut low, mut high, mut step) = (middle, middle, 0.01 * self.scale().max(1.0));
-        for _ in 0..60 {
-            low = middle - step;
-            high = middle + step;
-            if all(low) && all(high) {
-                break;
-            }
-            step *= 2.0;
-        }
         let place = |k: u32| low + (high - low) * f64::from(k) / f64::from(PIECES);
-        let first = (0..=PIECES).find(|k| fine(place(*k)));
-        match first {
-            Some(0) => AtWidth::At(low),
+        match (1..=PIECES).find(|k| low < high && fine(place(*k))) {
             Some(k) => AtWidth::At(self.boundary(place(k - 1), place(k), fine)),
-            None if fine(middle) => {
-                let below = (0..=PIECES).rev().map(place).find(|p| *p < middle).unwrap_or(low);
-                AtWidth::At(self.boundary(below, middle, fine))
+            None => {
+                let middle = self.least_bad().pressure;
+                if low < middle && fine(middle) {
+                    let below = (0..PIECES).rev().map(place).find(|p| *p < middle).unwrap_or(low);
+                    return AtWidth::At(self.boundary(below, middle, fine));
+                }
+                AtWidth::Never
             }
-            None => AtWidth::Never,
         }
     }
 
