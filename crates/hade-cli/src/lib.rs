@@ -2,6 +2,7 @@
 
 mod bar;
 mod kernel;
+mod memo;
 mod run;
 
 use std::process::ExitCode;
@@ -22,6 +23,8 @@ struct Cli {
 enum Command {
     /// Run a notebook from top to bottom and write its outputs back
     Run(run::RunArgs),
+    /// Run a notebook from a clean start and write its calculation memo
+    Memo(memo::MemoArgs),
     /// Prepare or remove the compiled libraries that notebooks use
     Kernel(kernel::KernelArgs),
 }
@@ -33,6 +36,7 @@ pub type Failure = Box<dyn std::error::Error>;
 pub fn main() -> ExitCode {
     let done = match Cli::parse().command {
         Command::Run(args) => run::run(&args),
+        Command::Memo(args) => memo::run(&args),
         Command::Kernel(args) => kernel::run(&args),
     };
     match done {

@@ -56,8 +56,10 @@ pub(crate) fn run(args: &MemoArgs) -> Result<(), Failure> {
     let bytes = run.to_bytes()?;
     let input =
         MemoInput { record_json: &record, notebook: (&name, &bytes), folder: &folder, project: project.as_ref() };
-    let mut options = MemoOptions::default();
-    options.template.clone_from(&args.template);
+    let options = match &args.template {
+        Some(folder) => MemoOptions::default().with_template(folder),
+        None => MemoOptions::default(),
+    };
     let memo = build(&input, &options);
     bar.clear();
     let memo = memo?;

@@ -12,18 +12,24 @@ use crate::third_party;
 use crate::toolchain::Toolchain;
 
 /// The version of what is in a session folder; raise it when the layout changes.
-const LAYOUT: &[u8] = b"session 1, evcxr 0.22";
+const LAYOUT: &[u8] = b"session 2, evcxr 0.22";
 
 /// Everything a session starts from.
 #[derive(Debug, Clone)]
 pub struct Prepared {
     folder: PathBuf,
+    shared: PathBuf,
 }
 
 impl Prepared {
     /// The cache folder.
     pub(crate) fn cache(&self) -> &Path {
         self.folder.parent().unwrap_or(&self.folder)
+    }
+
+    /// The folder of the compiler's shared standard library.
+    pub(crate) fn shared(&self) -> &Path {
+        &self.shared
     }
 
     /// The source of `hade` with the session manifest.
@@ -69,7 +75,7 @@ pub fn prepare(progress: &mut dyn Progress) -> Result<Prepared> {
             .chain(packed::pieces(packed::LIBRARY))
             .chain(packed::pieces(packed::MINISTD)),
     );
-    let prepared = Prepared { folder: cache.join(format!("session-{session_key}")) };
+    let prepared = Prepared { folder: cache.join(format!("session-{session_key}")), shared: toolchain.shared.clone() };
     let whole = || cache::is_whole(&libraries) && cache::is_whole(&prepared.folder);
     if whole() {
         return Ok(prepared);

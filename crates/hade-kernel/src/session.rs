@@ -135,6 +135,7 @@ impl Engine {
         let program = env::current_exe().map_err(|error| failed(error.to_string()))?;
         let mut command = process::Command::new(&program);
         command.env(OPEN_FLAG_VAR, &flag);
+        command.env(LOADER_PATH_VAR, loader_path(prepared.shared()));
         if let Some(cwd) = cwd {
             let cwd = fs::canonicalize(cwd).map_err(Error::file("find the folder", cwd))?;
             command.current_dir(cwd);
@@ -277,6 +278,18 @@ fn toml_string(path: &Path) -> String {
 
 /// The engine reads its settings from a variable of this process and, before that, from a file
 /// in the current folder, which must not be the user's.
+/// Where the loader looks for shared libraries first.
+const LOADER_PATH_VAR: &str = if cfg!(target_os = "macos") { "DYLD_LIBRARY_PATH" } else { "LD_LIBRARY_PATH" };
+
+/// The loader's path with the compiler's shared standard library in front. Cells carry a path to it
+/// that is relative to where they were linked, and are loaded from elsewhere.
+fn loader_path(shared: &Path) -> std::ffi::OsString {
+    let rest = env::var_os(LOADER_PATH_VAR).unwrap_or_default();
+    let folders =
+        std::iter::once(shared.to_path_buf()).chain(env::split_paths(&rest).filter(|p| !p.as_os_str().is_empty()));
+    env::join_paths(folders).unwrap_or_else(|_| shared.as_os_str().to_owned())
+}
+
 fn in_controlled_environment<T>(config: &Path, prepared: &Prepared, start: impl FnOnce() -> T) -> Result<T> {
     static ONE_AT_A_TIME: Mutex<()> = Mutex::new(());
     let _guard = ONE_AT_A_TIME.lock().unwrap_or_else(PoisonError::into_inner);

@@ -14,6 +14,8 @@ pub(crate) struct Toolchain {
     pub(crate) version: String,
     /// The target it compiles for.
     pub(crate) host: String,
+    /// The folder of its shared standard library, which every cell loads.
+    pub(crate) shared: PathBuf,
 }
 
 impl Toolchain {
@@ -33,7 +35,12 @@ impl Toolchain {
                 why: String::from_utf8_lossy(&said.stderr).trim().to_owned(),
             })?
             .to_owned();
-        Ok(Toolchain { cargo: tool("cargo"), rustc, version, host })
+        let shared = Command::new(&rustc)
+            .args(["--print", "target-libdir"])
+            .output()
+            .map_err(|error| Error::Toolchain { tool: "rustc", why: error.to_string() })?;
+        let shared = PathBuf::from(String::from_utf8_lossy(&shared.stdout).trim());
+        Ok(Toolchain { cargo: tool("cargo"), rustc, version, host, shared })
     }
 
     /// A Cargo command that no setting of the caller's project reaches.

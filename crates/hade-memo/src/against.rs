@@ -17,8 +17,7 @@ pub(crate) fn list(
     let mut list = Vec::new();
     for (i, (card, judged)) in cards.iter().zip(judged).enumerate() {
         for check in judged.checks.iter().filter(|c| !c.passed) {
-            let allowed =
-                if check.allowed.is_empty() { String::new() } else { format!(", allowed {}", check.allowed) };
+            let allowed = if check.allowed.is_empty() { String::new() } else { format!(", allowed {}", check.allowed) };
             list.push(format!(
                 "Item {} ({}): failed check \u{2013} {}: {}{allowed}.",
                 i + 1,

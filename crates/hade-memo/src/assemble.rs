@@ -30,10 +30,16 @@ pub struct MemoInput<'a> {
 
 /// How a memo is made.
 #[derive(Clone, Debug, Default)]
-#[non_exhaustive]
 pub struct MemoOptions {
     /// The template's folder; the packed template when `None`.
-    pub template: Option<PathBuf>,
+    template: Option<PathBuf>,
+}
+
+impl MemoOptions {
+    /// With the template in a folder.
+    pub fn with_template(self, folder: impl Into<PathBuf>) -> Self {
+        MemoOptions { template: Some(folder.into()) }
+    }
 }
 
 /// A memo.
@@ -74,9 +80,9 @@ pub fn build_with(input: &MemoInput<'_>, options: &MemoOptions, replayer: Replay
     let settings = template.settings(&project.template)?;
 
     let recorded = Record::from_json(input.record_json)?;
-    let clean::Cleaned { value, mut warnings } = clean::record(input.record_json)?;
-    let record: Record =
-        serde_json::from_value(value).map_err(|e| Error::Defect { what: "the cleaning of records", why: e.to_string() })?;
+    let clean::Cleaned { value, longest, mut warnings } = clean::record(input.record_json)?;
+    let record: Record = serde_json::from_value(value)
+        .map_err(|e| Error::Defect { what: "the cleaning of records", why: e.to_string() })?;
 
     let judged: Vec<Judged> = recorded.cards().iter().map(|(card, _)| judge(card, replayer)).collect();
     let cards: Vec<&Card> = record.cards().iter().map(|(card, _)| *card).collect();
@@ -101,6 +107,7 @@ pub fn build_with(input: &MemoInput<'_>, options: &MemoOptions, replayer: Replay
         date,
         attachments: &attachments,
         against: &against,
+        longest,
         template: &template,
         settings,
     })?;

@@ -83,8 +83,7 @@ fn read_data(file: &DataFile, folder: &Path) -> Result<Vec<u8>> {
         std::io::ErrorKind::NotFound => bad("there is no such file beside the notebook".to_owned()),
         _ => bad(format!("it cannot be read: {e}")),
     })?;
-    let changed =
-        "it is not the file the record was made from (its SHA-256 differs); run the notebook again, and do not change data while it runs";
+    let changed = "it is not the file the record was made from (its SHA-256 differs); run the notebook again, and do not change data while it runs";
     if about.len() != file.bytes {
         return Err(bad(changed.to_owned()));
     }

@@ -61,8 +61,8 @@ fn concerns(topics: &[String], wanted: &BTreeSet<&str>) -> bool {
 
 /// The cautions for these topics, the gravest first.
 pub(crate) fn cautions(topics: &BTreeSet<&str>) -> Result<Vec<Caution>> {
-    let file: CautionFile = toml::from_str(CAUTIONS)
-        .map_err(|e| Error::Defect { what: "the file of cautions", why: e.to_string() })?;
+    let file: CautionFile =
+        toml::from_str(CAUTIONS).map_err(|e| Error::Defect { what: "the file of cautions", why: e.to_string() })?;
     let mut chosen: Vec<Caution> = file.caution.into_iter().filter(|c| concerns(&c.topics, topics)).collect();
     chosen.sort_by_key(|c| c.severity);
     Ok(chosen)

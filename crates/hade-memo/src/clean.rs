@@ -20,6 +20,8 @@ const NOT_TYPESET: [&str; 2] = ["/card/inputs", "/card/outcome"];
 pub(crate) struct Cleaned {
     /// The value.
     pub value: Value,
+    /// Bytes of the longest text that is typeset.
+    pub longest: usize,
     /// Where something was taken out.
     pub warnings: Vec<String>,
 }
@@ -29,12 +31,11 @@ pub(crate) fn record(json: &str) -> Result<Cleaned> {
     if json.len() > MOST_RECORD {
         return Err(Error::unsettable("it", format!("is {} bytes long; the most is {MOST_RECORD}", json.len())));
     }
-    let value: Value = serde_json::from_str(json).map_err(|e| Error::unsettable("it", format!("is not JSON: {e}")))?;
-    let mut cleaned = Cleaned { value, warnings: Vec::new() };
-    let mut warnings = Vec::new();
-    walk(&mut cleaned.value, &mut String::new(), &mut warnings)?;
-    cleaned.warnings = warnings;
-    Ok(cleaned)
+    let mut value: Value =
+        serde_json::from_str(json).map_err(|e| Error::unsettable("it", format!("is not JSON: {e}")))?;
+    let mut cleaned = Cleaned { value: Value::Null, longest: 0, warnings: Vec::new() };
+    walk(&mut value, &mut String::new(), &mut cleaned)?;
+    Ok(Cleaned { value, ..cleaned })
 }
 
 /// Cleans one text that does not come from the record; `place` is what a message names.
@@ -43,7 +44,7 @@ pub(crate) fn text(place: &str, text: &str) -> Result<String> {
     Ok(clean)
 }
 
-fn walk(value: &mut Value, place: &mut String, warnings: &mut Vec<String>) -> Result<()> {
+fn walk(value: &mut Value, place: &mut String, found: &mut Cleaned) -> Result<()> {
     if place.matches('/').count() == 4 && NOT_TYPESET.iter().any(|end| place.ends_with(end)) {
         return Ok(());
     }
@@ -52,8 +53,9 @@ fn walk(value: &mut Value, place: &mut String, warnings: &mut Vec<String>) -> Re
         Value::String(text) => {
             let (clean, removed) = one(place, text)?;
             if removed {
-                warnings.push(format!("invisible characters were left out of the record's {place}"));
+                found.warnings.push(format!("invisible characters were left out of the record's {place}"));
             }
+            found.longest = found.longest.max(clean.len());
             *text = clean;
         }
         Value::Array(list) => {
@@ -63,14 +65,14 @@ fn walk(value: &mut Value, place: &mut String, warnings: &mut Vec<String>) -> Re
             }
             for (i, entry) in list.iter_mut().enumerate() {
                 place.push_str(&format!("/{i}"));
-                walk(entry, place, warnings)?;
+                walk(entry, place, found)?;
                 place.truncate(length);
             }
         }
         Value::Object(map) => {
             for (key, entry) in map.iter_mut() {
                 place.push_str(&format!("/{}", key.replace('~', "~0").replace('/', "~1")));
-                walk(entry, place, warnings)?;
+                walk(entry, place, found)?;
                 place.truncate(length);
             }
         }
@@ -137,7 +139,10 @@ mod tests {
     fn markup_stays_as_it_is() {
         let probe = "#panic(\\\"x\\\") $x^2$ @ref <lab> \\\\ [ { <script> `r` // /* ~ --";
         let cleaned = record(&format!("{{\"title\":\"{probe}\"}}")).unwrap();
-        assert_eq!(cleaned.value["title"].as_str().unwrap(), "#panic(\"x\") $x^2$ @ref <lab> \\ [ { <script> `r` // /* ~ --");
+        assert_eq!(
+            cleaned.value["title"].as_str().unwrap(),
+            "#panic(\"x\") $x^2$ @ref <lab> \\ [ { <script> `r` // /* ~ --"
+        );
         assert!(cleaned.warnings.is_empty());
     }
 

@@ -8,6 +8,8 @@ use crate::world::library;
 
 /// Longest formula.
 const MOST: usize = 4000;
+/// Names that mathematics defines and a formula has no use for: elsewhere they load things.
+const UNWANTED: [&str; 1] = ["image"];
 
 /// Says why a formula cannot be typeset: a syntax error, code, or a name that mathematics does not
 /// define.
@@ -28,13 +30,17 @@ fn walk(node: &SyntaxNode) -> Result<(), String> {
         SyntaxKind::Hash | SyntaxKind::Dollar | SyntaxKind::Raw => {
             Err(format!("it holds \"{}\", which begins code", node.leaf_text()))
         }
-        SyntaxKind::MathIdent if library().math.scope().get(node.leaf_text()).is_none() => {
+        SyntaxKind::MathIdent if !is_mathematics(node.leaf_text()) => {
             Err(format!("it uses \"{}\", which mathematics does not define", node.leaf_text()))
         }
         // Of `arrow.r` only the first word is looked up.
         SyntaxKind::MathFieldAccess => node.children().next().map_or(Ok(()), walk),
         _ => node.children().try_for_each(walk),
     }
+}
+
+fn is_mathematics(name: &str) -> bool {
+    !UNWANTED.contains(&name) && library().math.scope().get(name).is_some()
 }
 
 #[cfg(test)]

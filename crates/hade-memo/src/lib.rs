@@ -21,8 +21,8 @@
 //! [hade_replay]: https://docs.rs/hade
 
 mod against;
-mod attach;
 mod assemble;
+mod attach;
 mod cautions;
 mod clean;
 mod digest;

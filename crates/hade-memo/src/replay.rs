@@ -28,7 +28,7 @@ pub(crate) fn by_library(card: &Card) -> hade::error::Result<Again> {
 }
 
 /// One line of the table of checks.
-#[derive(Clone, Debug, PartialEq, Eq)]
+#[derive(Clone, Debug, PartialEq)]
 pub(crate) struct CheckLine {
     /// What is compared.
     pub what: String,
@@ -36,6 +36,8 @@ pub(crate) struct CheckLine {
     pub difference: String,
     /// The difference that is allowed, with unit.
     pub allowed: String,
+    /// The difference as a part of what is allowed; 0 for a verdict in words.
+    pub part: f64,
     /// The verdict.
     pub passed: bool,
 }
@@ -84,7 +86,7 @@ pub(crate) fn judge(card: &Card, replayer: Replayer) -> Judged {
 }
 
 fn words(what: &str, outcome: &str, passed: bool) -> CheckLine {
-    CheckLine { what: what.to_owned(), difference: outcome.to_owned(), allowed: String::new(), passed }
+    CheckLine { what: what.to_owned(), difference: outcome.to_owned(), allowed: String::new(), part: 0.0, passed }
 }
 
 /// A check passes when its own numbers say so, and the same check made again passes.
@@ -99,6 +101,11 @@ fn line(check: &Check, again: Option<Option<&Check>>) -> CheckLine {
         what: check.what.clone(),
         difference,
         allowed: number::small_with_unit(check.tolerance, &check.unit),
+        part: match check.difference {
+            Some(d) if d <= 0.0 => 0.0,
+            Some(d) if d.is_finite() => d / check.tolerance.max(f64::MIN_POSITIVE),
+            _ => f64::INFINITY,
+        },
         passed: within && check.passed && again,
     }
 }

@@ -168,9 +168,18 @@ fn an_item_that_cannot_be_computed_again_stands_against_issue_and_evaluates_noth
         }
     }
     let json = record.to_json().unwrap();
-    let input = hade_memo::MemoInput { record_json: &json, notebook: ("n.ipynb", support::NOTEBOOK), folder: &folder, project: Some(&project()) };
+    let input = hade_memo::MemoInput {
+        record_json: &json,
+        notebook: ("n.ipynb", support::NOTEBOOK),
+        folder: &folder,
+        project: Some(&project()),
+    };
     let memo = hade_memo::build(&input, &MemoOptions::default()).unwrap();
-    assert!(memo.against_issue.iter().any(|a| a.contains("Item 1") && a.contains("not possible")), "{:#?}", memo.against_issue);
+    assert!(
+        memo.against_issue.iter().any(|a| a.contains("Item 1") && a.contains("not possible")),
+        "{:#?}",
+        memo.against_issue
+    );
     assert_printed(&pages(&memo.pdf), "S′ = Q S Qᵀ");
 }
 
@@ -198,7 +207,13 @@ fn a_memo_of_nothing_says_what_is_missing() {
     let project = Project::parse("[memo]\ndate = 2026-01-02\n", Path::new("hade.toml")).unwrap();
     let memo = memo(&empty.to_json().unwrap(), &folder, Some(&project), &MemoOptions::default(), AGREES).unwrap();
     std::fs::write(folder.join("memo.pdf"), &memo.pdf).unwrap();
-    for words in ["No conclusion is drawn", "memo number, revision, project, client, site, hole", "prepared, checked, approved", "range of validity", "no calculation item"] {
+    for words in [
+        "No conclusion is drawn",
+        "memo number, revision, project, client, site, hole",
+        "prepared, checked, approved",
+        "range of validity",
+        "no calculation item",
+    ] {
         assert!(memo.against_issue.iter().any(|a| a.contains(words)), "{words}: {:#?}", memo.against_issue);
     }
 }
@@ -208,7 +223,18 @@ fn two_thousand_rows_and_one_column_too_many_are_typeset() {
     let memo = made("long", |r| {
         let Some(Entry::Card { card, .. }) = r.entries.first_mut() else { return };
         let Some(hade::card::Step::Table { table }) = card.explanation.steps.get_mut(1) else { return };
-        table.rows = (0..2000).map(|i| vec![i.to_string(), format!("{i}.5"), "-1.25".to_owned(), "3".to_owned(), "x".to_owned(), "extra".to_owned()]).collect();
+        table.rows = (0..2000)
+            .map(|i| {
+                vec![
+                    i.to_string(),
+                    format!("{i}.5"),
+                    "-1.25".to_owned(),
+                    "3".to_owned(),
+                    "x".to_owned(),
+                    "extra".to_owned(),
+                ]
+            })
+            .collect();
     });
     assert!(memo.pages > 40);
 }
@@ -217,12 +243,15 @@ fn two_thousand_rows_and_one_column_too_many_are_typeset() {
 fn letter_paper_is_a_setting() {
     let folder = folder("letter");
     let json = record(&folder).to_json().unwrap();
-    let project = Project::parse(&format!("{}\n[template]\npaper = \"us-letter\"\n", support::PROJECT), Path::new("hade.toml")).unwrap();
+    let project =
+        Project::parse(&format!("{}\n[template]\npaper = \"us-letter\"\n", support::PROJECT), Path::new("hade.toml"))
+            .unwrap();
     let memo = memo(&json, &folder, Some(&project), &MemoOptions::default(), AGREES).unwrap();
     std::fs::write(folder.join("memo.pdf"), &memo.pdf).unwrap();
     let document = Document::load_mem(&memo.pdf).unwrap();
     let page = document.get_pages()[&1];
-    let size = document.get_dictionary(page).unwrap().get(b"MediaBox").unwrap().as_array().unwrap()[2].as_float().unwrap();
+    let size =
+        document.get_dictionary(page).unwrap().get(b"MediaBox").unwrap().as_array().unwrap()[2].as_float().unwrap();
     assert!((size - 612.0).abs() < 0.5, "{size}");
 }
 
@@ -257,7 +286,11 @@ fn data_that_changed_or_went_is_named() {
     let folder = folder("data");
     let json = record(&folder).to_json().unwrap();
     let file = folder.join("data/kf3-survey.csv");
-    for (bytes, words) in [(Some("md_m,inc_deg,azi_deg\n0,0,0\n1500,12.5,118\n2950,42,121\n"), "SHA-256"), (Some("short"), "SHA-256"), (None, "no such file")] {
+    for (bytes, words) in [
+        (Some("md_m,inc_deg,azi_deg\n0,0,0\n1500,12.5,118\n2950,42,121\n"), "SHA-256"),
+        (Some("short"), "SHA-256"),
+        (None, "no such file"),
+    ] {
         match bytes {
             Some(bytes) => std::fs::write(&file, bytes).unwrap(),
             None => std::fs::remove_file(&file).unwrap(),
@@ -274,7 +307,11 @@ fn a_check_is_judged_again() {
             card.checks = vec![Check { difference: Some(5.0), passed: true, ..card.checks[0].clone() }];
         }
     });
-    assert!(memo.against_issue.iter().any(|a| a.contains("Item 1") && a.contains("failed check")), "{:#?}", memo.against_issue);
+    assert!(
+        memo.against_issue.iter().any(|a| a.contains("Item 1") && a.contains("failed check")),
+        "{:#?}",
+        memo.against_issue
+    );
 }
 
 #[test]

@@ -7,7 +7,8 @@ use std::path::{Path, PathBuf};
 use hade_memo::MemoOptions;
 use support::{AGREES, folder, memo, project, record};
 
-const MANIFEST: &str = "name = \"mine\"\nversion = \"1\"\nentry = \"memo.typ\"\nrecord_schema = 1\nfonts = [\"Inter\"]\n";
+const MANIFEST: &str =
+    "name = \"mine\"\nversion = \"1\"\nentry = \"memo.typ\"\nrecord_schema = 1\nfonts = [\"Inter\"]\n";
 
 /// What the exporter needs of any template.
 const HEAD: &str = "#let M = json(\"memo.json\")\n#set document(title: M.memo.title)\n#set text(lang: \"en\")\n";
@@ -22,8 +23,7 @@ fn template(name: &str, manifest: &str, body: &str) -> PathBuf {
 fn with(template: &Path) -> hade_memo::Result<hade_memo::Memo> {
     let folder = folder(&format!("{}-work", template.file_name().unwrap().to_string_lossy()));
     let json = record(&folder).to_json().unwrap();
-    let mut options = MemoOptions::default();
-    options.template = Some(template.to_path_buf());
+    let options = MemoOptions::default().with_template(template);
     memo(&json, &folder, Some(&project()), &options, AGREES)
 }
 
@@ -61,8 +61,14 @@ fn a_missing_part_is_named() {
 fn nothing_outside_the_folder_is_read() {
     let secret = folder("outside").join("secret.txt");
     std::fs::write(&secret, "secret").unwrap();
-    refused(&template("dots", MANIFEST, &format!("{HEAD}#read(\"../outside/secret.txt\")")), &["memo.typ:4:", "escape"]);
-    refused(&template("absolute", MANIFEST, &format!("{HEAD}#read(\"{}\")", secret.display())), &["memo.typ:4:", "not found"]);
+    refused(
+        &template("dots", MANIFEST, &format!("{HEAD}#read(\"../outside/secret.txt\")")),
+        &["memo.typ:4:", "escape"],
+    );
+    refused(
+        &template("absolute", MANIFEST, &format!("{HEAD}#read(\"{}\")", secret.display())),
+        &["memo.typ:4:", "not found"],
+    );
     refused(&template("package", MANIFEST, "#import \"@preview/cetz:0.3.0\"\n"), &["memo.typ:1:", "no packages"]);
     #[cfg(unix)]
     {
@@ -84,7 +90,10 @@ fn there_is_no_clock() {
 
 #[test]
 fn a_manifest_is_judged() {
-    refused(&template("newer-schema", &MANIFEST.replace("record_schema = 1", "record_schema = 7"), HEAD), &["schema 7"]);
+    refused(
+        &template("newer-schema", &MANIFEST.replace("record_schema = 1", "record_schema = 7"), HEAD),
+        &["schema 7"],
+    );
     refused(&template("no-font", &MANIFEST.replace("Inter", "Comic Sans MS"), HEAD), &["Comic Sans MS"]);
     refused(&template("no-entry", &MANIFEST.replace("memo.typ", "other.typ"), HEAD), &["other.typ"]);
     refused(&template("bad-entry", &MANIFEST.replace("memo.typ", "../../etc/passwd"), HEAD), &["escapes"]);

@@ -8,22 +8,33 @@ use super::text::plain;
 use crate::attach::Attachment;
 use crate::cautions::{Caution, Severity};
 use crate::project::{Project, Role};
+use crate::replay::CheckLine;
 
-/// A check with its item.
+/// The checks of one item in a line, and those that failed.
 #[derive(Serialize)]
 pub(crate) struct CheckView {
     item: usize,
-    #[serde(flatten)]
-    row: CheckRow,
+    made: usize,
+    passed: usize,
+    closest: Option<CheckRow>,
+    failed: Vec<CheckRow>,
 }
 
-/// The checks of all items.
+/// The checks of all items: how many were made and passed, the one that came closest to what is
+/// allowed, and each that failed.
 pub(crate) fn checks(sources: &Sources<'_>) -> Vec<CheckView> {
+    let by_part = |a: &&CheckLine, b: &&CheckLine| a.part.total_cmp(&b.part);
     sources
         .judged
         .iter()
         .enumerate()
-        .flat_map(|(i, judged)| judged.checks.iter().map(move |line| CheckView { item: i + 1, row: check(line) }))
+        .map(|(i, judged)| CheckView {
+            item: i + 1,
+            made: judged.checks.len(),
+            passed: judged.checks.iter().filter(|c| c.passed).count(),
+            closest: judged.checks.iter().filter(|c| c.passed).max_by(by_part).map(check),
+            failed: judged.checks.iter().filter(|c| !c.passed).map(check).collect(),
+        })
         .collect()
 }
 

@@ -65,10 +65,7 @@ pub(crate) fn memo(sources: &Sources<'_>) -> MemoView {
         title: if title.trim().is_empty() { "Calculation without a title".to_owned() } else { plain(title) },
         running_title: shortened(title, 80),
         document_title: format!("{number} revision {revision}: {}", shortened(title, 200)),
-        author: project
-            .person(crate::project::Role::Prepared)
-            .map(|p| shortened(&p.name, 80))
-            .unwrap_or_default(),
+        author: project.person(crate::project::Role::Prepared).map(|p| shortened(&p.name, 80)).unwrap_or_default(),
         number,
         revision,
         date: date.clone(),
@@ -169,9 +166,8 @@ pub(crate) fn givens(sources: &Sources<'_>) -> Vec<GivenView> {
         .givens
         .iter()
         .map(|given| {
-            let used: Vec<usize> = users(sources, |origin| {
-                matches!(origin, Origin::Given { symbol } if *symbol == given.item.symbol)
-            });
+            let used: Vec<usize> =
+                users(sources, |origin| matches!(origin, Origin::Given { symbol } if *symbol == given.item.symbol));
             GivenView {
                 symbol: symbol(&given.item.symbol),
                 name: rich(&given.item.name),
@@ -251,13 +247,7 @@ pub(crate) fn assumptions(record: &Record) -> Vec<AssumptionView> {
 
 /// The items that have an input of such an origin.
 fn users(sources: &Sources<'_>, wanted: impl Fn(&Origin) -> bool) -> Vec<usize> {
-    sources
-        .lineage
-        .iter()
-        .enumerate()
-        .filter(|(_, origins)| origins.iter().any(&wanted))
-        .map(|(i, _)| i + 1)
-        .collect()
+    sources.lineage.iter().enumerate().filter(|(_, origins)| origins.iter().any(&wanted)).map(|(i, _)| i + 1).collect()
 }
 
 /// Item numbers in words.

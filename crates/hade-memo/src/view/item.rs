@@ -197,7 +197,9 @@ impl<'a> Maker<'a> {
             Origin::Unmatched => "NOT ON THE SHEET".to_owned(),
         };
         let value = match item.standing {
-            Standing::File => format!("SHA-256 {}\u{2026}", item.sha256.iter().flat_map(|h| h.chars()).take(16).collect::<String>()),
+            Standing::File => {
+                format!("SHA-256 {}\u{2026}", item.sha256.iter().flat_map(|h| h.chars()).take(16).collect::<String>())
+            }
             _ => item.shown.clone(),
         };
         InputView {
@@ -221,10 +223,8 @@ impl<'a> Maker<'a> {
                 FormulaView { math: Some(self.formulas.len() - 1), words }
             }
             Err(why) => {
-                self.warnings.push(format!(
-                    "item {number}: the formula \"{}\" is printed as text, because {why}",
-                    formula.text
-                ));
+                self.warnings
+                    .push(format!("item {number}: the formula \"{}\" is printed as text, because {why}", formula.text));
                 FormulaView { math: None, words }
             }
         }

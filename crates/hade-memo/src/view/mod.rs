@@ -22,6 +22,9 @@ use crate::project::{Date, Project};
 use crate::replay::Judged;
 use crate::template::Template;
 
+/// Bytes of a text that still fits a sheet when it stands in a narrow column.
+const LONGEST_IN_WHOLE_ROW: usize = 900;
+
 /// Everything the view is made of.
 pub(crate) struct Sources<'a> {
     /// The record, cleaned.
@@ -40,6 +43,8 @@ pub(crate) struct Sources<'a> {
     pub attachments: &'a [Attachment],
     /// What stands against issue.
     pub against: &'a [String],
+    /// Bytes of the longest text.
+    pub longest: usize,
     /// The template.
     pub template: &'a Template,
     /// Its settings.
@@ -69,6 +74,8 @@ enum EntryView {
 #[derive(Serialize)]
 struct Whole {
     memo: front::MemoView,
+    /// Whether a row of a table can be kept on one sheet: no text is longer than a sheet.
+    whole_rows: bool,
     settings: BTreeMap<String, String>,
     against: Vec<Vec<text::Run>>,
     conclusions: Vec<Vec<text::Run>>,
@@ -116,6 +123,7 @@ pub(crate) fn make(sources: &Sources<'_>) -> Result<View> {
     let item::Made { formulas, figures, references, warnings } = maker.done();
     let whole = Whole {
         memo: front::memo(sources),
+        whole_rows: sources.longest <= LONGEST_IN_WHOLE_ROW,
         settings: sources.settings.clone(),
         against: sources.against.iter().map(|s| text::rich(s)).collect(),
         conclusions: record.conclusions.iter().map(|s| text::rich(s)).collect(),

@@ -17,7 +17,9 @@ const CHARACTER: f64 = 0.63;
 /// Sizes of the face that are tried on an upright page, then on a turned one.
 const SIZES: [(bool, f64); 6] = [(false, 8.0), (false, 7.4), (false, 6.8), (true, 8.0), (true, 7.4), (true, 6.8)];
 /// A column of words no wider than this does not share the free width.
-const NARROW: usize = 16;
+const NARROW: usize = 24;
+/// Length of text from which a column gets no more of it.
+const MOST_SHARE: usize = 60;
 /// Most columns of a matrix that is set as one; more are a table.
 const MATRIX_COLUMNS: usize = 8;
 /// Most rows of the same.
@@ -29,7 +31,8 @@ pub(crate) struct ColumnView {
     heading: Vec<Run>,
     unit: String,
     numeric: bool,
-    narrow: bool,
+    /// Its share of the free width; 0 for a column as wide as its cells.
+    share: usize,
 }
 
 /// A table.
@@ -104,9 +107,15 @@ fn view(table: &Table, turned: bool, size: f64) -> TableView {
         heading: rich(&c.heading),
         unit: plain(&c.unit),
         numeric: c.numeric,
-        narrow: table.rows.iter().filter_map(|row| row.get(i)).all(|text| text.chars().count() <= NARROW),
+        share: share(table, i, c),
     });
     TableView { caption: rich(&table.caption), columns: columns.collect(), rows, size, turned }
+}
+
+/// The share of the free width of a column: as its longest text, within reason.
+fn share(table: &Table, i: usize, column: &Column) -> usize {
+    let longest = table.rows.iter().filter_map(|row| row.get(i)).map(|text| text.chars().count()).max().unwrap_or(0);
+    if column.numeric || longest <= NARROW { 0 } else { longest.clamp(NARROW, MOST_SHARE) }
 }
 
 /// The first size in which a table fits.
@@ -114,12 +123,13 @@ fn fit(table: &Table) -> Option<(bool, f64)> {
     SIZES.into_iter().find(|(turned, size)| width(table, *size) <= if *turned { TURNED } else { UPRIGHT })
 }
 
-/// The least width of a table: numbers do not wrap, words do between words.
+/// The least width of a table: numbers and short words do not wrap, longer texts do.
 fn width(table: &Table, size: f64) -> f64 {
     let longest_word = |text: &str| text.split_whitespace().map(|w| w.chars().count().min(24)).max().unwrap_or(0);
     let characters = |i: usize, column: &Column| {
         let cells = table.rows.iter().filter_map(|row| row.get(i));
-        let widest = cells.map(|text| if column.numeric { text.chars().count() } else { longest_word(text) }).max();
+        let whole = share(table, i, column) == 0;
+        let widest = cells.map(|text| if whole { text.chars().count() } else { longest_word(text) }).max();
         widest.unwrap_or(0).max(longest_word(&column.heading)).max(column.unit.chars().count() + 2)
     };
     let columns = table.columns.iter().enumerate();

@@ -118,7 +118,8 @@ pub(crate) fn rich(text: &str) -> Vec<Run> {
     let mut at = 0;
     while let Some(&c) = chars.get(at) {
         let before = at.checked_sub(1).and_then(|i| chars.get(i));
-        match symbol_at(&chars, at).filter(|_| !before.is_some_and(|b| b.is_alphanumeric() || "_./\\-@#".contains(*b))) {
+        match symbol_at(&chars, at).filter(|_| !before.is_some_and(|b| b.is_alphanumeric() || "_./\\-@#".contains(*b)))
+        {
             Some((base, sub, next)) => {
                 if !words.is_empty() {
                     runs.push(Run::Words { words: plain(&std::mem::take(&mut words)) });
@@ -186,7 +187,17 @@ mod tests {
     fn symbols_in_a_sentence_get_their_subscripts() {
         assert_eq!(spelled("S_v = 66.9 MPa, σ_1' > T_0."), "<S|v> = 66.9 MPa, <σ′|1> > <T|0>.");
         assert_eq!(spelled("(S_1 − P_p) / r_max"), "(<S|1> − <P|p>) / <r|max>");
-        for same in ["kf3_survey.csv", "a_b.csv", "x _e_ y", "S_", "my_name", "data/a_b/c", "A_verylongsubscript", "read_csv()", "f_x(1)"] {
+        for same in [
+            "kf3_survey.csv",
+            "a_b.csv",
+            "x _e_ y",
+            "S_",
+            "my_name",
+            "data/a_b/c",
+            "A_verylongsubscript",
+            "read_csv()",
+            "f_x(1)",
+        ] {
             assert_eq!(spelled(same), same);
         }
     }
@@ -203,7 +214,10 @@ mod tests {
 
     #[test]
     fn numbers_get_their_minus_and_dates_keep_their_hyphens() {
-        assert_eq!(with_minus("-0.65 MPa (-2.5°) at 2026-05-14, KF-3, a - 1, 5-6"), "−0.65 MPa (−2.5°) at 2026-05-14, KF-3, a - 1, 5-6");
+        assert_eq!(
+            with_minus("-0.65 MPa (-2.5°) at 2026-05-14, KF-3, a - 1, 5-6"),
+            "−0.65 MPa (−2.5°) at 2026-05-14, KF-3, a - 1, 5-6"
+        );
     }
 
     #[test]
@@ -211,7 +225,10 @@ mod tests {
         assert_eq!(plain("a short text"), "a short text");
         let hash = plain(&"a".repeat(64));
         assert_eq!(hash.matches(BREAK).count(), 4);
-        assert_eq!(plain("data/of/this/very/long/path/file.csv").replace(BREAK, ""), "data/of/this/very/long/path/file.csv");
+        assert_eq!(
+            plain("data/of/this/very/long/path/file.csv").replace(BREAK, ""),
+            "data/of/this/very/long/path/file.csv"
+        );
     }
 
     #[test]

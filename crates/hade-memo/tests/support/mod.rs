@@ -8,7 +8,9 @@ use hade::card::{
     Axis, Card, Check, Column, Explanation, Figure, Formula, Item, Json, Layer, Mark, Method, Reference, Role, Step,
     Table,
 };
-use hade::sheet::{Assumption, Basis, DataFile, Entry, Frontmatter, Given, Grade, RECORD_SCHEMA, Record, Source, trace};
+use hade::sheet::{
+    Assumption, Basis, DataFile, Entry, Frontmatter, Given, Grade, RECORD_SCHEMA, Record, Source, trace,
+};
 use hade_memo::{Again, Memo, MemoInput, MemoOptions, Project, Replayer, build_with};
 use sha2::{Digest, Sha256};
 
@@ -149,8 +151,19 @@ fn figure() -> Figure {
             Layer::RowBand { label: "reservoir".to_owned(), role: Role::Range, from: 2800.0, to: 3000.0 },
             Layer::ColumnBand { label: "σ".to_owned(), role: Role::Quiet, from: 60.0, to: 66.0 },
             Layer::line("S_v", Role::First, (0..50).map(|i| [1.36 * f64::from(i), 60.0 * f64::from(i)])),
-            Layer::Circle { label: "c".to_owned(), role: Role::Limit, centre: [40.0, 1500.0], radius: 10.0, upper_half: false },
-            Layer::Points { label: "tests".to_owned(), role: Role::Failing, mark: Mark::Triangle, points: vec![[50.0, 2400.0]] },
+            Layer::Circle {
+                label: "c".to_owned(),
+                role: Role::Limit,
+                centre: [40.0, 1500.0],
+                radius: 10.0,
+                upper_half: false,
+            },
+            Layer::Points {
+                label: "tests".to_owned(),
+                role: Role::Failing,
+                mark: Mark::Triangle,
+                points: vec![[50.0, 2400.0]],
+            },
             Layer::Words { text: "<b>#x</b>".to_owned(), at: [10.0, 500.0] },
         ],
     }
@@ -164,7 +177,13 @@ fn rotation() -> Card {
         version: 1,
         inputs: Json::parse("{}").unwrap(),
         outcome: Json::parse("[1.0]").unwrap(),
-        checks: vec![Check::compare("S′ rebuilt from dot products of the axis vectors", &[1.0], &[1.0 + 7e-15], 1e-9, "MPa")],
+        checks: vec![Check::compare(
+            "S′ rebuilt from dot products of the axis vectors",
+            &[1.0],
+            &[1.0 + 7e-15],
+            1e-9,
+            "MPa",
+        )],
         explanation: Explanation {
             title: "Stress in the axes of the hole KF-3 at 2950 m".to_owned(),
             headline: "In borehole axes σx = 58.31, σy = 49.88, σz = 61.02 MPa.".to_owned(),
@@ -174,9 +193,13 @@ fn rotation() -> Card {
                 pressure("S_hmin", "least horizontal stress", 51.2),
                 pressure("P_p", "pore pressure that never was stated", 31.234_567),
             ],
-            results: vec![
-                Item::new("S'", "stress in borehole axes", "stress", vec![1.0, 2.0], "(58.31, 49.88, 61.02; −3.10, 0.42, −2.77) MPa: xx, yy, zz; xy, yz, xz"),
-            ],
+            results: vec![Item::new(
+                "S'",
+                "stress in borehole axes",
+                "stress",
+                vec![1.0, 2.0],
+                "(58.31, 49.88, 61.02; −3.10, 0.42, −2.77) MPa: xx, yy, zz; xy, yz, xz",
+            )],
             method: Method {
                 words: "The tensor is turned by the product of two elementary turns.".to_owned(),
                 formulas: vec![
@@ -192,8 +215,12 @@ fn rotation() -> Card {
                     ("a".to_owned(), "azimuth from true north".to_owned()),
                 ],
                 references: vec![
-                    Reference::new("Zoback, M.D. (2007) Reservoir Geomechanics, Cambridge University Press, eq. 1.5, p. 8"),
-                    Reference::new("Jaeger, Cook & Zimmerman (2007) Fundamentals of Rock Mechanics, 4th ed., Blackwell, section 2.7"),
+                    Reference::new(
+                        "Zoback, M.D. (2007) Reservoir Geomechanics, Cambridge University Press, eq. 1.5, p. 8",
+                    ),
+                    Reference::new(
+                        "Jaeger, Cook & Zimmerman (2007) Fundamentals of Rock Mechanics, 4th ed., Blackwell, section 2.7",
+                    ),
                 ],
                 assumptions: Vec::new(),
             },
@@ -201,8 +228,16 @@ fn rotation() -> Card {
                 Step::words("First the turn by 120° about down, then by 42° about the right axis."),
                 Step::matrix("Q", &q, 6, "", "rows: top of hole, right, along the hole; columns: north, east, down"),
                 Step::matrix("S", &s, 2, "MPa", "geographic axes: north, east, down"),
-                Step::worked("S′_xx = 0.643787² · 48.20 + 2 · 0.643787 · (−0.643582) · (−5.10) + (−0.643582)² · 54.10 + (−0.669131)² · 66.90 = 58.31 MPa, and this line goes on for so long that it has to wrap on any paper"),
-                Step::Matrix { name: "W".to_owned(), rows: vec![vec![-1.5; 10]; 2], decimals: 3, unit: "MPa".to_owned(), about: "ten columns, set as a table".to_owned() },
+                Step::worked(
+                    "S′_xx = 0.643787² · 48.20 + 2 · 0.643787 · (−0.643582) · (−5.10) + (−0.643582)² · 54.10 + (−0.669131)² · 66.90 = 58.31 MPa, and this line goes on for so long that it has to wrap on any paper",
+                ),
+                Step::Matrix {
+                    name: "W".to_owned(),
+                    rows: vec![vec![-1.5; 10]; 2],
+                    decimals: 3,
+                    unit: "MPa".to_owned(),
+                    about: "ten columns, set as a table".to_owned(),
+                },
                 Step::Table {
                     table: Table {
                         caption: "A table that is too wide for an upright page".to_owned(),
@@ -232,7 +267,13 @@ fn limits() -> Card {
             title: "Limits of the wall".to_owned(),
             headline: "No shear failure anywhere from 36.12 MPa (1.249 sg) to 44.80 MPa (1.549 sg).".to_owned(),
             inputs: vec![
-                Item::new("S'", "stress in borehole axes", "stress", vec![1.0, 2.0], "(58.31, 49.88, 61.02; −3.10, 0.42, −2.77) MPa"),
+                Item::new(
+                    "S'",
+                    "stress in borehole axes",
+                    "stress",
+                    vec![1.0, 2.0],
+                    "(58.31, 49.88, 61.02; −3.10, 0.42, −2.77) MPa",
+                ),
                 pressure("c", "cohesion", 10.0),
                 Item::typed("", "allowed width of a failing arc", hade::units::Angle::deg(60.0)).chosen(),
                 Item::choice("", "wall", "impermeable"),
@@ -259,11 +300,31 @@ pub fn record(folder: &Path) -> Record {
         bytes: SURVEY.len() as u64,
     }];
     let givens = vec![
-        given(pressure("S_Hmax", "greatest horizontal stress at 2950 m TVD", 61.5), "3.1 MPa", Source::correlation("frictional limit and breakout width in KF-1, report KF-1-GM-004, section 3")),
-        given(pressure("S_hmin", "least horizontal stress at 2950 m TVD", 51.2), "0.8 MPa", Source::measured("extended leak-off test, closure of cycle 2, 2026-03-02")),
+        given(
+            pressure("S_Hmax", "greatest horizontal stress at 2950 m TVD", 61.5),
+            "3.1 MPa",
+            Source::correlation("frictional limit and breakout width in KF-1, report KF-1-GM-004, section 3"),
+        ),
+        given(
+            pressure("S_hmin", "least horizontal stress at 2950 m TVD", 51.2),
+            "0.8 MPa",
+            Source::measured("extended leak-off test, closure of cycle 2, 2026-03-02"),
+        ),
         given(pressure("c", "cohesion of the shale", 10.0), "", Source::assumed("")),
-        given(Item::typed("z", "depth of the calculation, TVD below rotary table", hade::units::Length::m(2950.0)), "", Source::measured("definitive survey")),
-        given(pressure("T_0", "tensile strength, said to be of a very longlonglonglonglonglonglongword/path/without/blanks", 2.0), "", Source { grade: Grade::Offset, words: PROBE.to_owned() }),
+        given(
+            Item::typed("z", "depth of the calculation, TVD below rotary table", hade::units::Length::m(2950.0)),
+            "",
+            Source::measured("definitive survey"),
+        ),
+        given(
+            pressure(
+                "T_0",
+                "tensile strength, said to be of a very longlonglonglonglonglonglongword/path/without/blanks",
+                2.0,
+            ),
+            "",
+            Source { grade: Grade::Offset, words: PROBE.to_owned() },
+        ),
     ];
     let mut entries = Vec::new();
     let cards = [overburden(&sha256), rotation(), limits()];
@@ -286,9 +347,16 @@ pub fn record(folder: &Path) -> Record {
             purpose: "To say which mud weight keeps the wall of the 8½ in section standing at 2950 m TVD.".to_owned(),
             scope: "The 8½ in section of KF-3 at 2950 m TVD, drilled at 42° towards 120°.".to_owned(),
             exclusions: lines(&["well control and kick tolerance", "time-dependent failure of the shale"]),
-            valid_for: lines(&["depths from 2900 m to 3000 m TVD below the rotary table", "inclinations from 38° to 46°", "water-based mud, open less than five days"]),
+            valid_for: lines(&[
+                "depths from 2900 m to 3000 m TVD below the rotary table",
+                "inclinations from 38° to 46°",
+                "water-based mud, open less than five days",
+            ]),
             void_if: lines(&["the pore pressure is found to differ by more than 1 MPa", PROBE]),
-            left_out: vec![("leak-off test of KF-2 at 1210 m".to_owned(), "the casing shoe was suspected to leak".to_owned())],
+            left_out: vec![(
+                "leak-off test of KF-2 at 1210 m".to_owned(),
+                "the casing shoe was suspected to leak".to_owned(),
+            )],
             open_items: lines(&["core tests of the shale are expected in June"]),
             design_basis: vec![
                 ("Criterion".to_owned(), "Mohr–Coulomb, because only cohesion and friction angle are known".to_owned()),
@@ -298,9 +366,19 @@ pub fn record(folder: &Path) -> Record {
         givens,
         data,
         assumptions: vec![
-            Assumption { words: "rock is isotropic and linear elastic".to_owned(), basis: Basis::unverified("no core from this interval") },
-            Assumption { words: "the vertical stress is principal".to_owned(), basis: Basis::unverified("flat layers").to_be_verified_by("C. Approver", "image log of the next section") },
-            Assumption { words: "the pore pressure is hydrostatic".to_owned(), basis: Basis::verified("two pressure points of 2026-02-11 agree within 0.2 MPa") },
+            Assumption {
+                words: "rock is isotropic and linear elastic".to_owned(),
+                basis: Basis::unverified("no core from this interval"),
+            },
+            Assumption {
+                words: "the vertical stress is principal".to_owned(),
+                basis: Basis::unverified("flat layers")
+                    .to_be_verified_by("C. Approver", "image log of the next section"),
+            },
+            Assumption {
+                words: "the pore pressure is hydrostatic".to_owned(),
+                basis: Basis::verified("two pressure points of 2026-02-11 agree within 0.2 MPa"),
+            },
         ],
         entries,
         conclusions: lines(&[
@@ -315,7 +393,13 @@ pub fn record(folder: &Path) -> Record {
 pub const AGREES: Replayer = |card| Ok(Again { card: card.clone(), difference: None, checks: card.checks.clone() });
 
 /// The memo of a record.
-pub fn memo(record_json: &str, folder: &Path, project: Option<&Project>, options: &MemoOptions, replayer: Replayer) -> hade_memo::Result<Memo> {
+pub fn memo(
+    record_json: &str,
+    folder: &Path,
+    project: Option<&Project>,
+    options: &MemoOptions,
+    replayer: Replayer,
+) -> hade_memo::Result<Memo> {
     let input = MemoInput { record_json, notebook: ("kf3.ipynb", NOTEBOOK), folder, project };
     build_with(&input, options, replayer)
 }

@@ -100,6 +100,8 @@ pub struct RangeOutcome {
     pub(super) top: Option<RangeEnd>,
     /// Lower shear limits at 0°, 30°, 60°, 90°.
     pub(super) at_widths: [Option<Pressure>; 4],
+    /// The least bad pressure in shear, where no pressure keeps the arcs within the allowed width.
+    pub(super) least_bad: Option<Pressure>,
     /// How far the top is above the bottom; negative: the range is empty.
     pub(super) breadth: Option<Pressure>,
 }
@@ -189,6 +191,11 @@ impl RecommendedRange {
             *pair = (Angle::deg(degrees), pressure);
         }
         pairs
+    }
+
+    /// The least bad pressure in shear, when no pressure keeps failing arcs within the allowed width.
+    pub fn least_bad(&self) -> Option<Pressure> {
+        if self.bottom.is_none() { self.limits.lower_shear.least_bad() } else { None }
     }
 
     pub(super) fn breadth(&self) -> Option<Pressure> {

@@ -1,8 +1,7 @@
 //! The card of a recommended range.
 
-use super::limits::shown;
-use super::range::{RangeEnd, RangeInputs, RangeOutcome, RecommendedRange, WIDTHS};
-use super::second_route::ByVectors;
+use super::limits_card::shown;
+use super::range::{RangeEnd, RangeInputs, RangeOutcome, RecommendedRange};
 use super::wall::Wall;
 use super::{direction, method};
 use crate::card::{
@@ -25,55 +24,17 @@ impl Explain for RecommendedRange {
         RangeInputs { wall: self.wall.inputs, choices: self.choices }
     }
     fn outcome(&self) -> RangeOutcome {
-        RangeOutcome { bottom: self.bottom, top: self.top, at_widths: self.at_widths, breadth: self.breadth() }
+        RangeOutcome {
+            bottom: self.bottom,
+            top: self.top,
+            at_widths: self.at_widths,
+            least_bad: self.least_bad(),
+            breadth: self.breadth(),
+        }
     }
 
-    /// Each condition that sets an end, by the second route, just inside and just outside it.
     fn check(inputs: &RangeInputs, outcome: &RangeOutcome) -> Vec<Check> {
-        let Some(route) = ByVectors::new(&inputs.wall) else { return Vec::new() };
-        let mut checks = Vec::new();
-        if let Some(end) = outcome.bottom {
-            checks.extend(check_bottom(&route, inputs, end.pressure.si()));
-            checks.push(check_weights(inputs, "bottom", &end));
-        }
-        if let Some(end) = outcome.top {
-            checks.extend(check_top(&route, inputs, end.pressure.si()));
-            checks.push(check_weights(inputs, "top", &end));
-        }
-        if let (Some(bottom), Some(top), Some(breadth)) = (outcome.bottom, outcome.top, outcome.breadth) {
-            checks.push(Check::compare(
-                "bottom and breadth together make the top",
-                &[(bottom.pressure + breadth).in_mpa()],
-                &[top.pressure.in_mpa()],
-                route.size() * 1e-6 * 1e-12,
-                "MPa",
-            ));
-        }
-        for (pressure, degrees) in outcome.at_widths.iter().zip(WIDTHS) {
-            let Some(pressure) = pressure else { continue };
-            let [inside, outside] = width_held(&route, pressure.si(), Angle::deg(degrees).si());
-            checks.push(Check::holds(
-                format!("lower shear limit at {degrees}°: arcs just above it are within the width, looking all round"),
-                inside,
-                1e-9,
-                "rad",
-            ));
-            checks.push(Check::holds(
-                format!("lower shear limit at {degrees}°: arcs just below it are not"),
-                outside,
-                0.0,
-                "rad",
-            ));
-        }
-        if checks.is_empty() {
-            checks.push(Check::holds(
-                "no pressure between zero and twice the largest stress keeps the arcs within the width",
-                -tightest(&route, inputs),
-                0.0,
-                "rad",
-            ));
-        }
-        checks
+        super::range_check::check(inputs, outcome)
     }
 
     fn explain(&self) -> Explanation {
@@ -147,6 +108,9 @@ impl RecommendedRange {
         }
         if let Some(top) = self.top {
             notes.push(format!("At the top {}.", top.governed_by.words()));
+        }
+        if let Some(least) = self.least_bad() {
+            notes.push(format!("The least bad pressure in shear is {least}; arcs wider than allowed fail at it."));
         }
         if self.is_empty() {
             notes.push("The range is empty: with these choices no mud weight is recommended. Change the hole's direction, the allowed width or a margin, or better the inputs; each is the engineer's decision.".to_owned());
@@ -334,71 +298,4 @@ impl RecommendedRange {
             layers,
         }
     }
-}
-
-/// By how much the widest arc just above a pressure is beyond a width, and just below it within.
-fn width_held(route: &ByVectors, pressure: f64, width: f64) -> [f64; 2] {
-    let nudge = 1e-6 * route.size();
-    // An arc too narrow for the looks still shows in the worst excess.
-    let over = |p: f64| {
-        let wider = (route.widest(p) - width).clamp(-10.0, 10.0);
-        if width == 0.0 && wider <= 0.0 && route.worst(p) > 1e-11 * route.size() { 1e-9 } else { wider }
-    };
-    // What is just below must be wider, not merely no narrower.
-    let below = over(pressure - nudge);
-    [over(pressure + nudge), if below > 0.0 { -below } else { 1.0 - below }]
-}
-
-/// The bottom holds both conditions just above it and breaks one of them just below.
-fn check_bottom(route: &ByVectors, inputs: &RangeInputs, bottom: f64) -> [Check; 2] {
-    let nudge = 1e-6 * route.size();
-    let balance = inputs.wall.pore.si() + inputs.choices.margin_bottom.si();
-    let [inside, outside] = width_held(route, bottom, inputs.choices.allowed_width.si());
-    let above = inside.max((balance - bottom - nudge) / route.size());
-    // Below the bottom either the arcs are too wide (outside < 0) or the margin is lost.
-    let below = outside.min((bottom - nudge - balance) / route.size());
-    [
-        Check::holds("bottom: arcs within the allowed width and the margin kept, just above it", above, 1e-9, ""),
-        Check::holds("bottom: one of the two lost just below it", below, 0.0, ""),
-    ]
-}
-
-/// The top with its margin holds the three upper conditions just below, and breaks one just above.
-fn check_top(route: &ByVectors, inputs: &RangeInputs, top: f64) -> [Check; 2] {
-    let size = route.size();
-    let nudge = 1e-6 * size;
-    let bare = top + inputs.choices.margin_top.si();
-    let tensile = inputs.wall.rock.tensile_strength.si();
-    let [.., s3] = route.far().values_by_invariants();
-    let broken = |p: f64| {
-        ((p - s3) / size).max((-tensile - route.least_round(p)) / size).max(route.worst_of_side(p, 1.0) / size)
-    };
-    [
-        Check::holds(
-            "top: S3, parting and shear all kept just below it (with its margin put back)",
-            broken(bare - nudge),
-            1e-9,
-            "",
-        ),
-        Check::holds("top: one of the three lost just above it", -broken(bare + nudge), 0.0, ""),
-    ]
-}
-
-/// ρ g TVD and gradient · TVD give the pressure back.
-fn check_weights(inputs: &RangeInputs, name: &str, end: &RangeEnd) -> Check {
-    let tvd = inputs.choices.tvd_below_rotary;
-    let pressure = end.pressure.in_mpa();
-    Check::compare(
-        format!("{name}: the column of its mud weight, and its gradient times TVD, give the pressure back"),
-        &[end.mud_weight.column(tvd).in_mpa(), (end.gradient * tvd).in_mpa()],
-        &[pressure, pressure],
-        1e-12 * pressure.abs().max(1e-6),
-        "MPa",
-    )
-}
-
-/// By how much the tightest of many pressures misses the allowed width.
-fn tightest(route: &ByVectors, inputs: &RangeInputs) -> f64 {
-    let width = inputs.choices.allowed_width.si();
-    (0..=400).map(|k| route.widest(f64::from(k) * route.size() / 200.0)).fold(f64::INFINITY, f64::min).min(10.0) - width
 }

@@ -26,8 +26,8 @@ pub(super) struct ByVectors {
     ucs: f64,
 }
 
-/// How finely the second route looks round the hole.
-const LOOKS: u32 = 720;
+/// How finely the second route looks round the hole: every half degree.
+const LOOKS: u32 = 360;
 
 impl ByVectors {
     pub fn new(inputs: &WallInputs) -> Option<Self> {
@@ -128,15 +128,8 @@ impl ByVectors {
                 (best, place) = (value, theta);
             }
         }
-        // Golden section between the neighbours.
-        let ratio = 0.5 * (5.0_f64.sqrt() - 1.0);
-        let (mut low, mut high) = (place - step, place + step);
-        for _ in 0..60 {
-            let (a, b) = (high - ratio * (high - low), low + ratio * (high - low));
-            if f(a) > f(b) { high = b } else { low = a }
-        }
-        let middle = 0.5 * (low + high);
-        if f(middle) > best { (f(middle), middle) } else { (best, place) }
+        let (value, at) = peak_between(&f, place - step, place + step);
+        if value > best { (value, at) } else { (best, place) }
     }
 
     /// The worst excess round the hole at a pressure.
@@ -148,17 +141,18 @@ impl ByVectors {
     /// closes in), +1 what too much does (it is pushed out). Failure within the wall belongs to the
     /// side on which a little more pressure makes it better, or worse.
     pub fn worst_of_side(&self, pressure: f64, side: f64) -> f64 {
+        self.greatest(|theta| self.excess_of_side(theta, pressure, side)).0
+    }
+
+    fn excess_of_side(&self, theta: f64, pressure: f64, side: f64) -> f64 {
         let nudge = 1e-6 * self.size();
         let q = self.tangent * self.tangent;
         let across = pressure - self.pore;
-        self.greatest(|theta| {
-            let [e1, e2] = self.in_the_wall(theta, pressure);
-            let [more1, more2] = self.in_the_wall(theta, pressure + nudge);
-            let of_side = if side < 0.0 { e1 - q * across } else { across - q * e2 };
-            let within = if ((more1 - q * more2) - (e1 - q * e2)) * side > 0.0 { e1 - q * e2 } else { of_side };
-            of_side.max(within) - self.ucs
-        })
-        .0
+        let [e1, e2] = self.in_the_wall(theta, pressure);
+        let [more1, more2] = self.in_the_wall(theta, pressure + nudge);
+        let of_side = if side < 0.0 { e1 - q * across } else { across - q * e2 };
+        let within = if ((more1 - q * more2) - (e1 - q * e2)) * side > 0.0 { e1 - q * e2 } else { of_side };
+        of_side.max(within) - self.ucs
     }
 
     /// The least effective principal stress round the hole.
@@ -171,32 +165,53 @@ impl ByVectors {
         -self.greatest(|theta| -self.in_the_wall(theta, pressure)[1]).0
     }
 
-    /// The widest failing arc at a pressure, by looking everywhere and halving at its edges;
-    /// infinite when all looks fail. An arc narrower than a look may be missed.
+    /// The widest failing arc at a pressure, by looking everywhere, closer where the excess turns, and
+    /// halving at the edges; infinite when all looks fail.
     pub fn widest(&self, pressure: f64) -> f64 {
+        self.widest_where(|theta| self.excess(theta, pressure))
+    }
+
+    /// The widest arc that too little pressure makes fail.
+    pub fn widest_closing(&self, pressure: f64) -> f64 {
+        self.widest_where(|theta| self.excess_of_side(theta, pressure, -1.0))
+    }
+
+    fn widest_where(&self, excess: impl Fn(f64) -> f64) -> f64 {
         let step = PI / f64::from(LOOKS);
+        let mut looks: Vec<(f64, f64)> = (0..LOOKS).map(|k| f64::from(k) * step).map(|t| (t, excess(t))).collect();
+        // An arc, or a sound gap, narrower than a look is at a turning point.
+        let mut turns = Vec::new();
+        let cyclic = looks.iter().zip(looks.iter().cycle().skip(1)).zip(looks.iter().cycle().skip(2));
+        for (((_, a), (t, b)), (_, c)) in cyclic {
+            for sign in [1.0, -1.0] {
+                if (b - a) * sign >= 0.0 && (b - c) * sign >= 0.0 {
+                    let (value, at) = peak_between(&|x| sign * excess(x), t - step, t + step);
+                    turns.push((at.rem_euclid(PI), sign * value));
+                }
+            }
+        }
+        looks.extend(turns);
+        looks.sort_by(|a, b| a.0.total_cmp(&b.0));
         let noise = 1e-11 * self.size();
-        let fails = |theta: f64| self.excess(theta, pressure) > noise;
-        let looks: Vec<bool> = (0..LOOKS).map(|k| fails(f64::from(k) * step)).collect();
-        let Some(sound) = (0..LOOKS).find(|k| !looks.get(*k as usize).copied().unwrap_or(false)) else {
-            return f64::INFINITY;
-        };
+        let fails = |(_, excess): &(f64, f64)| *excess > noise;
+        let Some(sound) = looks.iter().position(|look| !fails(look)) else { return f64::INFINITY };
+        looks.rotate_left(sound);
         let edge = |inside: f64, outside: f64| {
             let (mut inside, mut outside) = (inside, outside);
             for _ in 0..60 {
                 let middle = 0.5 * (inside + outside);
-                if fails(middle) { inside = middle } else { outside = middle }
+                if excess(middle) > noise { inside = middle } else { outside = middle }
             }
             0.5 * (inside + outside)
         };
         let (mut widest, mut from) = (0.0_f64, None);
-        for k in sound + 1..=sound + LOOKS {
-            let now = looks.get((k % LOOKS) as usize).copied().unwrap_or(false);
-            let (here, before) = (f64::from(k) * step, (f64::from(k) - 1.0) * step);
-            match (now, from) {
-                (true, None) => from = Some(edge(here, before)),
+        for (before, now) in looks.iter().zip(looks.iter().cycle().skip(1)) {
+            let here = if now.0 < before.0 { now.0 + PI } else { now.0 };
+            match (fails(now), from) {
+                (true, None) => from = Some(edge(here, before.0)),
                 (false, Some(start)) => {
-                    widest = widest.max(edge(before, here) - start);
+                    let end: f64 = edge(before.0, here);
+                    widest = widest.max((end - start).rem_euclid(PI));
                     from = None;
                 }
                 _ => {}
@@ -233,4 +248,15 @@ impl ByVectors {
     pub fn far(&self) -> Tensor {
         self.far
     }
+}
+
+/// The greatest value between two places with one hill between them, and where (golden section).
+fn peak_between(f: &impl Fn(f64) -> f64, mut low: f64, mut high: f64) -> (f64, f64) {
+    let ratio = 0.5 * (5.0_f64.sqrt() - 1.0);
+    for _ in 0..60 {
+        let (a, b) = (high - ratio * (high - low), low + ratio * (high - low));
+        if f(a) > f(b) { high = b } else { low = a }
+    }
+    let middle = 0.5 * (low + high);
+    (f(middle), middle)
 }
