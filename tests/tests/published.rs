@@ -6,3 +6,5 @@ mod stress;
 mod survey;
 #[path = "published/overburden.rs"]
 mod overburden;
+#[path = "published/wall.rs"]
+mod wall;

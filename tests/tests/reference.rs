@@ -6,3 +6,7 @@ mod stress;
 mod survey;
 #[path = "reference/overburden.rs"]
 mod overburden;
+#[path = "reference/wall.rs"]
+mod wall;
+#[path = "reference/wall_traps.rs"]
+mod wall_traps;

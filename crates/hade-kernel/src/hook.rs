@@ -17,11 +17,10 @@ const ENGINE_CHILD_VAR: &str = "EVCXR_IS_RUNTIME";
 /// own program again in two roles: as the process that loads and runs the compiled cells, and as
 /// the wrapper that adds the prebuilt libraries to the compiler's command line.
 ///
-/// ```no_run
-/// fn main() {
-///     hade_kernel::runtime_hook();
-///     // … the program itself
-/// }
+/// ```
+/// // first in `main`:
+/// hade_kernel::runtime_hook();
+/// // … then the program itself
 /// ```
 pub fn runtime_hook() {
     if let Some(plan) = env::var_os(wrapper::PLAN_VAR) {

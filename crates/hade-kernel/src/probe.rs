@@ -59,10 +59,10 @@ fn question(cell: &str, outline: &Outline) -> String {
         code.push(';');
     }
     for (number, binding) in outline.bindings.iter().enumerate() {
-        let _ = write!(
+        let _ = writeln!(
             code,
             "{{ #[diagnostic::on_unimplemented(message = \"{WORD} {number} {{Self}}\")] trait HadeType {{}} \
-             fn hade_type<T: HadeType>(_: &T) {{}} hade_type(&{}); }};\n",
+             fn hade_type<T: HadeType>(_: &T) {{}} hade_type(&{}); }};",
             binding.name
         );
     }

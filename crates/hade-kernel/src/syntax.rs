@@ -101,7 +101,7 @@ mod tests {
             .collect();
         assert_eq!(names.len(), 3);
         assert_eq!(names[0], ("a", false, ":dep x\nlet (a, mut b) = f();"));
-        assert_eq!(names[1].1, true);
+        assert!(names[1].1);
         assert!(names[2].2.ends_with("let c = 2;"));
         assert!(outline.ends_in_expression);
         assert_eq!(outline.problem, None);

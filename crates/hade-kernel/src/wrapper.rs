@@ -16,6 +16,9 @@ pub(crate) const PLAN_VAR: &str = "HADE_RUSTC_PLAN";
 /// While this file lies beside the cell's manifest, types in messages are written in full.
 pub(crate) const FULL_TYPES_FILE: &str = ".full-types";
 
+/// The crate name of the library.
+const LIBRARY_CRATE: &str = "hade";
+
 /// The crate name the engine gives a cell.
 const CELL_CRATE: &str = "ctx";
 
@@ -52,13 +55,31 @@ impl Plan {
         plan
     }
 
-    fn additions(&self, args: &[OsString]) -> &[String] {
-        let name = args.iter().skip_while(|arg| *arg != "--crate-name").nth(1);
-        match name.and_then(|name| name.to_str()) {
-            Some("hade") => &self.library,
+    /// The compiler's arguments with what the plan adds.
+    fn completed(&self, mut args: Vec<OsString>) -> Vec<OsString> {
+        let added = match crate_name(&args) {
+            Some(LIBRARY_CRATE) => {
+                // Compiled once and never again in this folder, which is copied for each session.
+                drop_incremental(&mut args);
+                &self.library
+            }
             Some(CELL_CRATE) => &self.cell,
-            _ => &[],
-        }
+            _ => return args,
+        };
+        args.extend(added.iter().map(OsString::from));
+        args
+    }
+}
+
+fn crate_name(args: &[OsString]) -> Option<&str> {
+    args.iter().skip_while(|arg| *arg != "--crate-name").nth(1)?.to_str()
+}
+
+fn drop_incremental(args: &mut Vec<OsString>) {
+    let place =
+        args.windows(2).position(|pair| pair[0] == "-C" && pair[1].to_string_lossy().starts_with("incremental="));
+    if let Some(at) = place {
+        args.drain(at..at + 2);
     }
 }
 
@@ -77,8 +98,8 @@ pub(crate) fn run(plan: &Path) -> ! {
         }
     };
     let mut command = Command::new(args.remove(0));
-    command.args(&args).args(plan.additions(&args));
-    let is_cell = args.iter().any(|arg| arg == CELL_CRATE);
+    let is_cell = crate_name(&args) == Some(CELL_CRATE);
+    command.args(plan.completed(args));
     if is_cell && Path::new(FULL_TYPES_FILE).exists() {
         // Names only how types are printed in the messages of this one check.
         command.arg("--verbose").arg("-Ztrim-diagnostic-paths=no").env("RUSTC_BOOTSTRAP", "1");
@@ -121,10 +142,15 @@ mod tests {
 
     #[test]
     fn only_hade_gets_the_libraries() {
-        let args = |name: &str| ["--crate-name", name, "src/lib.rs"].map(OsString::from).to_vec();
-        assert_eq!(plan().additions(&args("hade")), plan().library);
-        assert_eq!(plan().additions(&args("ctx")), plan().cell);
-        assert!(plan().additions(&args("serde")).is_empty());
-        assert!(plan().additions(&[OsString::from("-vV")]).is_empty());
+        let args =
+            |name: &str| ["--crate-name", name, "-C", "incremental=x", "-C", "metadata=y"].map(OsString::from).to_vec();
+        let hade = plan().completed(args("hade"));
+        assert!(hade.contains(&"--extern=serde=/a b/libserde.rlib".into()));
+        assert!(!hade.contains(&"incremental=x".into()) && hade.contains(&"metadata=y".into()));
+        let cell = plan().completed(args("ctx"));
+        assert_eq!(cell[..6], args("ctx"));
+        assert_eq!(cell[6], "-Ldependency=/a b");
+        assert_eq!(plan().completed(args("serde")), args("serde"));
+        assert_eq!(plan().completed(vec!["-vV".into()]), ["-vV"]);
     }
 }

@@ -2,7 +2,7 @@
 //! redo by hand, and sign.
 //!
 //! - [`build`] takes a record, its notebook and the project's `hade.toml`, and gives the PDF: every
-//!   calculation item is computed again ([`replay`](hade_replay)), the origin of every input is
+//!   calculation item is computed again ([`hade::replay`]), the origin of every input is
 //!   traced again, and what stands against issue is listed on page 1 and handed back.
 //! - [`Project`] reads `hade.toml`: number, revision, date, people. No date comes from a clock.
 //! - Templates are folders of Typst files; the default one is packed into the program.
@@ -17,8 +17,6 @@
 //! # What it does not do
 //! It signs nothing and puts no seal: the sign-off is boxes. It runs no notebook. It does not judge
 //! an assumption; it prints each with its basis.
-//!
-//! [hade_replay]: https://docs.rs/hade
 
 mod against;
 mod assemble;

@@ -91,13 +91,8 @@ fn the_margin_falls_on_both_sides() {
 /// Trap 4: an arc through the top of the hole is one arc.
 #[test]
 fn an_arc_through_zero_is_centred_there() {
-    let wall = Case {
-        sh_max: 56.0,
-        azimuth: 90.0,
-        strength: Strength::mohr_coulomb(9.mpa(), 32.deg()),
-        ..state_b()
-    }
-    .wall();
+    let wall =
+        Case { sh_max: 56.0, azimuth: 90.0, strength: Strength::mohr_coulomb(9.mpa(), 32.deg()), ..state_b() }.wall();
     let arc = wall.breakout(27.mpa()).unwrap().unwrap();
     let centre = arc.centre.in_deg();
     assert!(centre.min(180.0 - centre) < 1e-9, "{centre}");

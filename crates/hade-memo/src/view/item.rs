@@ -84,6 +84,8 @@ pub(crate) struct ItemView {
     method: Vec<Run>,
     references: Vec<usize>,
     formulas: Vec<FormulaView>,
+    /// Which equations of earlier items apply too, as words; empty for none.
+    repeated: String,
     symbols: Vec<SymbolView>,
     assumptions: Vec<Vec<Run>>,
     steps: Vec<StepView>,
@@ -158,6 +160,7 @@ impl<'a> Maker<'a> {
         let said = &card.explanation;
         let method: &Method = judged.method.as_ref().unwrap_or(&said.method);
         let trusted = judged.method.is_some();
+        let (formulas, repeated) = self.formulas(&method.formulas, trusted, number);
         Some(ItemView {
             number,
             title: rich(card.title()),
@@ -166,7 +169,8 @@ impl<'a> Maker<'a> {
             inputs: said.inputs.iter().zip(origins).map(|(item, origin)| self.input(item, origin)).collect(),
             method: rich(&method.words),
             references: method.references.iter().map(|r| self.references.cite(&r.citation, number)).collect(),
-            formulas: method.formulas.iter().map(|f| self.formula(f, trusted, number)).collect(),
+            formulas,
+            repeated: equations(&repeated),
             symbols: method
                 .symbols
                 .iter()
@@ -211,6 +215,21 @@ impl<'a> Maker<'a> {
         }
     }
 
+    /// The formulas to print, and the numbers of those that an earlier item has printed already.
+    fn formulas(&mut self, formulas: &[Formula], trusted: bool, number: usize) -> (Vec<FormulaView>, Vec<usize>) {
+        let known = self.formulas.len();
+        let earlier = |f: &Formula, all: &[String]| all.iter().take(known).position(|math| *math == f.math);
+        let mut printed = Vec::new();
+        let mut repeated = Vec::new();
+        for formula in formulas {
+            match earlier(formula, &self.formulas).filter(|_| trusted) {
+                Some(place) => repeated.push(place + 1),
+                None => printed.push(self.formula(formula, trusted, number)),
+            }
+        }
+        (printed, repeated)
+    }
+
     /// Mathematics only of a method that the library itself has just stated, and only past the lint.
     fn formula(&mut self, formula: &Formula, trusted: bool, number: usize) -> FormulaView {
         let words = plain(&formula.text);
@@ -238,6 +257,26 @@ impl<'a> Maker<'a> {
     }
 }
 
+/// Numbers of equations in words: "(3), (5) to (8)".
+fn equations(numbers: &[usize]) -> String {
+    let mut ranges: Vec<(usize, usize)> = Vec::new();
+    let mut sorted = numbers.to_vec();
+    sorted.sort_unstable();
+    sorted.dedup();
+    for number in sorted {
+        match ranges.last_mut() {
+            Some((_, last)) if *last + 1 == number => *last = number,
+            _ => ranges.push((number, number)),
+        }
+    }
+    let words = |(first, last): &(usize, usize)| match last - first {
+        0 => format!("({first})"),
+        1 => format!("({first}), ({last})"),
+        _ => format!("({first}) to ({last})"),
+    };
+    ranges.iter().map(words).collect::<Vec<_>>().join(", ")
+}
+
 fn step(step: &Step) -> StepView {
     match step {
         Step::Words { text } => StepView::Words { words: rich(text) },
@@ -247,5 +286,14 @@ fn step(step: &Step) -> StepView {
             Err(tables) => StepView::Tables { tables },
         },
         Step::Table { table } => StepView::Tables { tables: tables(table) },
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    #[test]
+    fn equations_are_named_in_ranges() {
+        assert_eq!(super::equations(&[]), "");
+        assert_eq!(super::equations(&[5, 3, 4, 7, 9, 10]), "(3) to (5), (7), (9), (10)");
     }
 }

@@ -75,9 +75,11 @@ pub(crate) struct Peak {
 /// Values closer than this share of the scale are one value: hills of equal height are reported by
 /// the smallest φ, and a function that varies by no more is flat.
 const SAME: f64 = 1e-11;
-/// A hill whose best sample is lower than the best of all by more than this share of the range
-/// cannot hold the peak: between samples a wave rises by at most STEP²/8 of its amplitude, and this
-/// leaves a factor of a hundred for sharper hills.
+/// A value is not lower than another by this share of the scale.
+const ROUNDING: f64 = 1e-14;
+/// A sample lower than the best of all by more than this share of the range is not beside the peak:
+/// within a step a wave rises by at most STEP²/2 of its amplitude, and this leaves a factor of
+/// twenty-five for sharper hills.
 const SLACK: f64 = 0.05;
 
 /// The greatest value of a function; `scale` is the size of the numbers in it.
@@ -98,19 +100,29 @@ pub(crate) fn greatest(f: &impl OnCircle, scale: f64) -> Peak {
     }
     let enough = top - SLACK * (top - bottom);
     let mut best = Peak { phi: 0.0, value: f64::NEG_INFINITY, flat: false };
+    // A function that is the larger of two smooth ones may have two hills between two samples, so a
+    // climb starts at every high sample from which Newton sees a top within one step.
     let [first, .., last] = values;
     let mut before = last;
-    for (k, value) in values.iter().enumerate() {
+    for (((k, value), c), s) in values.iter().enumerate().zip(&circle.cos).zip(&circle.sin) {
         let after = values.get(k + 1).copied().unwrap_or(first);
-        if *value >= enough && *value >= before && *value >= after {
-            let hill = climb(f, k as f64 * STEP);
+        let highest_here = *value >= before && *value >= after;
+        before = *value;
+        if *value < enough {
+            continue;
+        }
+        let start = k as f64 * STEP;
+        let jet = f.jet(*c, *s);
+        let newton = jet.slope / jet.bend;
+        let near = jet.bend < 0.0 && newton.abs() <= STEP;
+        if near || highest_here {
+            let hill = climb(f, start, jet, scale);
             if hill.value > best.value + SAME * scale
                 || (hill.value >= best.value - SAME * scale && hill.phi < best.phi)
             {
                 best = hill;
             }
         }
-        before = *value;
     }
     best
 }
@@ -122,16 +134,15 @@ pub(crate) fn smallest(f: impl OnCircle, scale: f64) -> Peak {
     Peak { value: -peak.value, ..peak }
 }
 
-/// The top of the hill around a sample: Newton on the slope, halving where Newton leaves the hill.
-fn climb(f: &impl OnCircle, start: f64) -> Peak {
-    let (mut left, mut right, mut x) = (start - STEP, start + STEP, start);
-    let mut best = Peak { phi: x, value: f64::NEG_INFINITY, flat: false };
-    for _ in 0..60 {
+/// The top of the hill around a sample: Newton on the slope, halving where Newton leaves the hill. No
+/// step goes down, since beyond a dip another hill may begin.
+fn climb(f: &impl OnCircle, start: f64, mut jet: Jet, scale: f64) -> Peak {
+    let at = |x: f64| {
         let (s, c) = x.sin_cos();
-        let jet = f.jet(c, s);
-        if jet.value >= best.value {
-            best = Peak { phi: x, value: jet.value, flat: false };
-        }
+        f.jet(c, s)
+    };
+    let (mut left, mut right, mut x) = (start - STEP, start + STEP, start);
+    for _ in 0..60 {
         if jet.slope > 0.0 {
             left = x;
         } else if jet.slope < 0.0 {
@@ -140,17 +151,23 @@ fn climb(f: &impl OnCircle, start: f64) -> Peak {
             break;
         }
         let newton = x - jet.slope / jet.bend;
-        let next = if jet.bend < 0.0 && newton > left && newton < right { newton } else { 0.5 * (left + right) };
-        let moved = (next - x).abs();
-        x = next;
+        let step = if jet.bend < 0.0 && newton > left && newton < right { newton } else { 0.5 * (left + right) } - x;
         // Newton doubles the digits: after a step this small the rest is below the last bit, in the
         // place as in the value.
-        if moved < 1e-9 {
-            best = Peak { phi: x, ..best };
+        if step.abs() < 1e-9 {
+            x += step;
             break;
         }
+        let mut share = 1.0;
+        let mut next = at(x + step);
+        while next.value < jet.value - ROUNDING * scale && share > 1e-6 {
+            share *= 0.5;
+            next = at(x + share * step);
+        }
+        x += share * step;
+        jet = next;
     }
-    Peak { phi: on_circle(best.phi), ..best }
+    Peak { phi: on_circle(x), value: jet.value, flat: false }
 }
 
 /// φ brought to 0 ≤ φ < 2π; the last bits either side of zero are zero.

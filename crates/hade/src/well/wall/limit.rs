@@ -140,16 +140,18 @@ impl Limit {
         let directions = self.mode.map_or_else(String::new, |mode| {
             let [a, b, c] = mode.directions.map(WallDirection::word);
             let near = if mode.turned { "nearest " } else { "" };
-            format!("; σ1' {near}{a}, σ2' {b}, σ3' {c}")
+            let at = if self.pressure.is_none() { "at the least bad, " } else { "" };
+            format!("; {at}σ1' {near}{a}, σ2' {b}, σ3' {c}")
         });
         let mark = if self.in_tension() { " (in tension)" } else { "" };
         match self.kind {
-            LimitKind::LowerShear if self.pressure.is_none() => format!("no safe pressure in shear{directions}{mark}"),
-            LimitKind::UpperShear if self.pressure.is_none() => format!("no safe pressure in shear{directions}{mark}"),
+            LimitKind::LowerShear | LimitKind::UpperShear if self.pressure.is_none() => {
+                format!("no safe pressure in shear{directions}{mark}")
+            }
             LimitKind::LowerShear => format!("shear, the hole closes in{directions}{mark}"),
             LimitKind::UpperShear => format!("shear, the hole is pushed out{directions}{mark}"),
             LimitKind::Initiation | LimitKind::Reopening if self.pressure.is_none() => {
-                "no safe pressure: parted or spalled at any".to_owned()
+                format!("no safe pressure: parted or spalled at any{directions}")
             }
             LimitKind::Initiation => format!("parting at −T₀{directions}"),
             LimitKind::Reopening => format!("parting at zero{directions}"),

@@ -230,36 +230,37 @@ impl Limits {
     fn figure(&self) -> Figure {
         let wall = &self.wall;
         let tensile = wall.inputs.rock.tensile_strength.si();
-        let places = || (0..=120).map(|k| f64::from(k) * 3.0);
-        let both = |f: &dyn Fn(f64, f64) -> f64| -> Vec<[f64; 2]> {
-            places()
-                .map(|degrees| {
-                    let (s, c) = (2.0 * degrees.to_radians()).sin_cos();
-                    [degrees, f(c, s) * 1e-6]
-                })
-                .filter(|[_, y]| y.is_finite())
-                .collect()
+        let curve = |f: &dyn Fn(f64, f64) -> f64| {
+            pieces((0..=120).map(|k| f64::from(k) * 3.0).map(|degrees| {
+                let (s, c) = (2.0 * degrees.to_radians()).sin_cos();
+                [degrees, f(c, s) * 1e-6]
+            }))
         };
         let holds = |c: f64, s: f64| wall.shear.interval_at(c, s);
-        let lower = both(&|c, s| holds(c, s).map_or(f64::NAN, |(lower, _)| lower));
-        let upper = both(&|c, s| holds(c, s).map_or(f64::NAN, |(_, upper)| upper));
-        let part = both(&|c, s| super::tension::at_place(&wall.shear.kirsch, wall.shear.pore, tensile, c, s));
-        let (mut low, mut high) = (f64::INFINITY, f64::NEG_INFINITY);
-        for [_, y] in lower.iter().chain(&upper) {
+        let lower = curve(&|c, s| holds(c, s).map_or(f64::NAN, |(lower, _)| lower));
+        let upper = curve(&|c, s| holds(c, s).map_or(f64::NAN, |(_, upper)| upper));
+        let part = curve(&|c, s| super::tension::at_place(&wall.shear.kirsch, wall.shear.pore, tensile, c, s));
+        let least = self.least_stress.pressure().unwrap_or_default().in_mpa();
+        let (mut low, mut high) = (least, least);
+        for [_, y] in lower.iter().chain(&upper).flatten() {
             low = low.min(*y);
             high = high.max(*y);
         }
-        let least = self.least_stress.pressure().unwrap_or_default().in_mpa();
-        let (low, high) = (low.min(least), high.max(least));
         let room = 0.06 * (high - low).max(1.0);
         let level = |y: f64| [[0.0, y], [360.0, y]];
-        let mut layers = vec![
-            Layer::line("holds above", Role::First, lower),
-            Layer::line("holds below", Role::Second, upper),
-            Layer::line("parts above", Role::Third, part),
-            Layer::line("S_3", Role::Quiet, level(least)),
-            Layer::line("P_p", Role::Quiet, level(self.wall.inputs.pore.in_mpa())),
-        ];
+        let mut layers = Vec::new();
+        for (label, role, curve) in [
+            ("holds above", Role::First, lower),
+            ("holds below", Role::Second, upper),
+            ("parts above", Role::Third, part),
+        ] {
+            let last = curve.len();
+            for (piece, k) in curve.into_iter().zip(1..) {
+                layers.push(Layer::line(if k == last { label } else { "" }, role, piece));
+            }
+        }
+        layers.push(Layer::line("S_3", Role::Quiet, level(least)));
+        layers.push(Layer::line("P_p", Role::Quiet, level(self.wall.inputs.pore.in_mpa())));
         for limit in [self.lower_shear, self.upper_shear, self.initiation] {
             if let (Some(p), Some(t)) = (limit.pressure(), limit.toolface()) {
                 let (p, t) = (p.in_mpa(), t.in_deg());
@@ -288,4 +289,20 @@ impl Limits {
 fn capitalised(words: &str) -> String {
     let mut letters = words.chars();
     letters.next().map_or_else(String::new, |first| first.to_uppercase().chain(letters).collect())
+}
+
+/// A curve in pieces, broken where it is not a number.
+fn pieces(points: impl Iterator<Item = [f64; 2]>) -> Vec<Vec<[f64; 2]>> {
+    let mut pieces: Vec<Vec<[f64; 2]>> = Vec::new();
+    let mut open = false;
+    for point in points {
+        let finite = point[1].is_finite();
+        match pieces.last_mut() {
+            Some(piece) if finite && open => piece.push(point),
+            _ if finite => pieces.push(vec![point]),
+            _ => {}
+        }
+        open = finite;
+    }
+    pieces
 }

@@ -78,7 +78,8 @@ pub struct RangeEnd {
 pub struct RecommendedRange {
     /// The bottom; `None` when no pressure keeps failing arcs within the allowed width.
     pub bottom: Option<RangeEnd>,
-    /// The top; `None` when no pressure is safe against parting, or none against shear.
+    /// The top; `None` when no pressure is safe against parting, or some place of the wall fails in
+    /// shear at any.
     pub top: Option<RangeEnd>,
     pub(super) at_widths: [Option<Pressure>; 4],
     pub(super) limits: Limits,
@@ -157,7 +158,10 @@ fn bottom(limits: &Limits, balance: Pressure) -> Option<(Pressure, Governs)> {
 fn top(limits: &Limits) -> Option<(Pressure, Governs)> {
     let mut least = (limits.least_stress.pressure()?, Governs::LeastStress);
     for (limit, governs) in [(&limits.initiation, Governs::Initiation), (&limits.upper_shear, Governs::UpperShear)] {
-        let pressure = limit.pressure()?;
+        // Where the shear limits have crossed, nothing is pushed out below the upper one all the same,
+        // and what fails below it fails in arcs that the bottom keeps within the allowed width.
+        let crossed = limit.own_side().filter(|_| governs == Governs::UpperShear);
+        let pressure = limit.pressure().or(crossed)?;
         if pressure < least.0 {
             least = (pressure, governs);
         }

@@ -120,6 +120,12 @@ impl RecommendedRange {
         }
         if self.limits.upper_shear.pressure().is_none() {
             notes.push("At no pressure is the whole wall within its shear strength.".to_owned());
+            if !self.is_empty() {
+                notes.push(
+                    "In the range nothing is pushed out, and what fails by closing in stays within the allowed width."
+                        .to_owned(),
+                );
+            }
         }
         notes.push(
             "Hold static density less swab against the bottom, and circulating density and surge against the top."
@@ -145,7 +151,7 @@ impl RecommendedRange {
             "p_t: S_3 = {}, p_i = {}, p_us = {}; the lowest less m_t = {}",
             shown(&self.limits.least_stress),
             shown(&self.limits.initiation),
-            shown(&self.limits.upper_shear),
+            self.limits.upper_shear.own_side().map_or_else(|| shown(&self.limits.upper_shear), |p| p.to_string()),
             with_typed_unit(c.margin_top)
         )));
         for (end, name) in [(self.bottom, "bottom"), (self.top, "top")] {
@@ -252,7 +258,7 @@ impl RecommendedRange {
             (self.limits.initiation, "initiation", Role::Third),
             (self.limits.upper_shear, "upper shear", Role::Fourth),
         ] {
-            if let Some(p) = limit.pressure() {
+            if let Some(p) = limit.pressure().or(limit.own_side()) {
                 levels.push((label, role, p.in_mpa()));
             }
         }

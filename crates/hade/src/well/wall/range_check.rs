@@ -124,7 +124,7 @@ fn check_top(route: &ByVectors, inputs: &RangeInputs, top: f64) -> [Check; 2] {
     let tensile = inputs.wall.rock.tensile_strength.si();
     let [.., s3] = route.far().values_by_invariants();
     let broken = |p: f64| {
-        ((p - s3) / size).max((-tensile - route.least_round(p)) / size).max(route.worst_of_side(p, 1.0) / size)
+        ((p - s3) / size).max((-tensile - route.least_in_wall_round(p)) / size).max(route.worst_of_side(p, 1.0) / size)
     };
     [
         Check::holds(

@@ -117,19 +117,23 @@ impl ByVectors {
     }
 
     /// The greatest value of a function over tool faces 0–180° and where, by looking everywhere and
-    /// closing in on the best look.
+    /// closing in on every look that is higher than its neighbours and may be beside the greatest.
     pub fn greatest(&self, f: impl Fn(f64) -> f64) -> (f64, f64) {
         let step = PI / f64::from(LOOKS);
-        let (mut best, mut place) = (f64::NEG_INFINITY, 0.0);
-        for k in 0..LOOKS {
-            let theta = f64::from(k) * step;
-            let value = f(theta);
-            if value > best {
-                (best, place) = (value, theta);
+        let looks: Vec<(f64, f64)> = (0..LOOKS).map(|k| f64::from(k) * step).map(|t| (f(t), t)).collect();
+        let top = looks.iter().fold(f64::NEG_INFINITY, |m, (v, _)| m.max(*v));
+        let bottom = looks.iter().fold(f64::INFINITY, |m, (v, _)| m.min(*v));
+        let mut best = looks.iter().copied().fold((f64::NEG_INFINITY, 0.0), |a, b| if b.0 > a.0 { b } else { a });
+        let cyclic = looks.iter().zip(looks.iter().cycle().skip(1)).zip(looks.iter().cycle().skip(2));
+        for (((a, _), (b, t)), (c, _)) in cyclic {
+            if b >= a && b >= c && *b > top - 0.01 * (top - bottom) {
+                for (low, high) in [(t - step, *t), (*t, t + step)] {
+                    let peak = peak_between(&f, low, high);
+                    best = if peak.0 > best.0 { peak } else { best };
+                }
             }
         }
-        let (value, at) = peak_between(&f, place - step, place + step);
-        if value > best { (value, at) } else { (best, place) }
+        best
     }
 
     /// The worst excess round the hole at a pressure.
