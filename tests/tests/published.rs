@@ -1,10 +1,10 @@
 //! Checks against published values, each with its citation.
 
+#[path = "published/overburden.rs"]
+mod overburden;
 #[path = "published/stress.rs"]
 mod stress;
 #[path = "published/survey.rs"]
 mod survey;
-#[path = "published/overburden.rs"]
-mod overburden;
 #[path = "published/wall.rs"]
 mod wall;

@@ -1,11 +1,11 @@
 //! Checks against values worked out outside this project.
 
+#[path = "reference/overburden.rs"]
+mod overburden;
 #[path = "reference/stress.rs"]
 mod stress;
 #[path = "reference/survey.rs"]
 mod survey;
-#[path = "reference/overburden.rs"]
-mod overburden;
 #[path = "reference/wall.rs"]
 mod wall;
 #[path = "reference/wall_traps.rs"]

@@ -10,9 +10,7 @@ pub use crate::frames::{
 pub use crate::rock::{Rock, Strength};
 pub use crate::sheet::{Basis, Sheet, Source};
 pub use crate::show::{NotebookDisplay, Show};
-pub use crate::stress::{
-    Components, EffectiveStress, Horizontals, MohrCircles, Principals, Regime, Stress, Traction,
-};
+pub use crate::stress::{Components, EffectiveStress, Horizontals, MohrCircles, Principals, Regime, Stress, Traction};
 pub use crate::units::{Angle, Density, Gradient, Length, Pressure, Uncertain, Units, Warming};
 pub use crate::well::{
     Breakout, FailingArcs, Limit, Limits, MudColumn, MudPressure, Position, RangeChoices, RecommendedRange, Station,

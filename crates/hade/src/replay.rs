@@ -7,9 +7,7 @@ use crate::faults::FrictionLimit;
 use crate::field::Overburden;
 use crate::frames::{Azimuth, Borehole, Chain, Geographic};
 use crate::stress::{MohrCircles, Principals, Stress, Traction};
-use crate::well::{
-    FailingArcs, Limits, MudPressure, Position, RecommendedRange, SurveyTable, WallAround, WallStress,
-};
+use crate::well::{FailingArcs, Limits, MudPressure, Position, RecommendedRange, SurveyTable, WallAround, WallStress};
 
 /// A kind of card: how it is computed and checked.
 #[derive(Clone, Copy)]
@@ -194,9 +192,14 @@ mod tests {
             inclination: i.deg(),
             azimuth: Azimuth::from_grid_north(a.deg()).with_convergence(0.8.deg()).unwrap(),
         };
-        let survey =
-            Survey::from_stations(&[station(0.0, 0.0, 118.0), station(700.0, 0.5, 118.0), station(1300.0, 24.0, 120.0), station(2000.0, 42.0, 121.0), station(3500.0, 42.3, 119.5)])
-                .unwrap();
+        let survey = Survey::from_stations(&[
+            station(0.0, 0.0, 118.0),
+            station(700.0, 0.5, 118.0),
+            station(1300.0, 24.0, 120.0),
+            station(2000.0, 42.0, 121.0),
+            station(3500.0, 42.3, 119.5),
+        ])
+        .unwrap();
         let tie = DatumTie::rotary_table_at(32.4.m()).unwrap().with_ground_at(25.m()).unwrap();
         let log = DensityLog::from_samples(
             &[(250.m(), 2.0.g_cm3()), (900.m(), 2.2.g_cm3()), (1800.m(), 2.4.g_cm3()), (3100.m(), 2.5.g_cm3())],
@@ -258,7 +261,10 @@ mod tests {
             let path = entry.unwrap().path();
             if path.is_dir() {
                 kinds_in(&path, found);
-            } else if path.extension().is_some_and(|e| e == "rs") && !path.ends_with("replay.rs") && !path.ends_with("sample.rs") {
+            } else if path.extension().is_some_and(|e| e == "rs")
+                && !path.ends_with("replay.rs")
+                && !path.ends_with("sample.rs")
+            {
                 let text = std::fs::read_to_string(&path).unwrap();
                 for rest in text.split("const KIND: &'static str = \"").skip(1) {
                     if text.contains("Explain for") {

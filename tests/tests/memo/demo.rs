@@ -6,7 +6,8 @@ use hade::sheet::Record;
 use super::support::{assert_success, attachments, demo_copy, memo, text};
 
 fn record(pdf: &std::path::Path) -> Record {
-    let (_, bytes) = attachments(pdf).into_iter().find(|(name, _)| name == "record.json").expect("record.json is attached");
+    let (_, bytes) =
+        attachments(pdf).into_iter().find(|(name, _)| name == "record.json").expect("record.json is attached");
     Record::from_json(std::str::from_utf8(&bytes).expect("UTF-8")).expect("a record")
 }
 
@@ -38,8 +39,23 @@ fn the_demo_becomes_a_memo_that_a_checker_can_follow() {
     if hade_tests::tool("pdftotext") {
         let text = text(&first);
         for words in [
-            "DRAFT", "Kestrel Flat", "KF-3", "2950", "vertical stress", "Principal stresses", "Turn from north, east, down", "fracture initiation",
-            "lower shear", "recommended", "sg", "Cautions", "Prepared", "Checked", "Approved", "measured", "KF-1",
+            "DRAFT",
+            "Kestrel Flat",
+            "KF-3",
+            "2950",
+            "vertical stress",
+            "Principal stresses",
+            "Turn from north, east, down",
+            "fracture initiation",
+            "lower shear",
+            "recommended",
+            "sg",
+            "Cautions",
+            "Prepared",
+            "Checked",
+            "Approved",
+            "measured",
+            "KF-1",
         ] {
             assert!(text.to_lowercase().contains(&words.to_lowercase()), "\"{words}\" is printed in\n{text}");
         }

@@ -11,14 +11,17 @@ fn refused(cell: &str) -> String {
     notebook(folder.path(), "faulty.ipynb", &[OPENING, cell, "sheet"]);
     let output = memo(folder.path(), "faulty.ipynb", "out.pdf");
     assert!(!output.status.success(), "{}", said(&output));
-    let left: Vec<_> = std::fs::read_dir(folder.path()).unwrap().map(|e| e.unwrap().file_name().into_string().unwrap()).collect();
+    let left: Vec<_> =
+        std::fs::read_dir(folder.path()).unwrap().map(|e| e.unwrap().file_name().into_string().unwrap()).collect();
     assert_eq!(left, ["faulty.ipynb"], "only the notebook is left");
     said(&output)
 }
 
 #[test]
 fn a_cell_that_ends_in_an_error_names_the_cell_and_the_sentence() {
-    let said = refused("let hole = Attitude { inclination: 190.deg(), azimuth: Azimuth::from_true_north(0.deg()) };\nlet chain = hole.chain()?;");
+    let said = refused(
+        "let hole = Attitude { inclination: 190.deg(), azimuth: Azimuth::from_true_north(0.deg()) };\nlet chain = hole.chain()?;",
+    );
     assert!(said.contains("cell 2"), "{said}");
     assert!(said.contains("inclination is 190°, but it must be between 0° and 180°."), "{said}");
 }
@@ -62,12 +65,20 @@ fn an_input_that_bypasses_the_sheet_is_named() {
             "sheet",
         ],
     );
-    std::fs::write(folder.path().join("hade.toml"), "[memo]\nnumber = \"T-1\"\nrevision = \"A\"\ndate = \"2026-03-01\"\n").unwrap();
+    std::fs::write(
+        folder.path().join("hade.toml"),
+        "[memo]\nnumber = \"T-1\"\nrevision = \"A\"\ndate = \"2026-03-01\"\n",
+    )
+    .unwrap();
     let output = memo(folder.path(), "bypass.ipynb", "out.pdf");
     assert_success(&output);
     assert!(said(&output).contains("larger horizontal stress = 55.25 MPa"), "{}", said(&output));
     let attached = attachments(&folder.path().join("out.pdf"));
-    assert!(attached.iter().any(|(name, _)| name == "record.json"), "{:?}", attached.iter().map(|(n, _)| n).collect::<Vec<_>>());
+    assert!(
+        attached.iter().any(|(name, _)| name == "record.json"),
+        "{:?}",
+        attached.iter().map(|(n, _)| n).collect::<Vec<_>>()
+    );
     if hade_tests::tool("pdftotext") {
         let text = super::support::text(&folder.path().join("out.pdf"));
         assert!(text.contains("larger horizontal stress"), "{text}");

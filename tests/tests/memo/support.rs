@@ -28,13 +28,22 @@ fn copy(from: &Path, to: &Path) {
 
 /// `hade memo NOTEBOOK -o OUT` in a folder.
 pub fn memo(folder: &Path, notebook: &str, out: &str) -> Output {
-    Command::new(hade_binary()).args(["memo", notebook, "-o", out]).current_dir(folder).output().expect("the hade command runs")
+    Command::new(hade_binary())
+        .args(["memo", notebook, "-o", out])
+        .current_dir(folder)
+        .output()
+        .expect("the hade command runs")
 }
 
 /// Fails with what the command said unless it succeeded.
 #[track_caller]
 pub fn assert_success(output: &Output) {
-    assert!(output.status.success(), "{}\n{}", String::from_utf8_lossy(&output.stdout), String::from_utf8_lossy(&output.stderr));
+    assert!(
+        output.status.success(),
+        "{}\n{}",
+        String::from_utf8_lossy(&output.stdout),
+        String::from_utf8_lossy(&output.stderr)
+    );
 }
 
 /// What the command said, both streams.
@@ -63,7 +72,12 @@ pub fn attachments(pdf: &Path) -> Vec<(String, Vec<u8>)> {
 
 /// The text of a PDF as pdftotext lays it out.
 pub fn text(pdf: &Path) -> String {
-    let output = Command::new("pdftotext").args(["-layout", "-enc", "UTF-8"]).arg(pdf).arg("-").output().expect("pdftotext runs");
+    let output = Command::new("pdftotext")
+        .args(["-layout", "-enc", "UTF-8"])
+        .arg(pdf)
+        .arg("-")
+        .output()
+        .expect("pdftotext runs");
     assert!(output.status.success());
     String::from_utf8(output.stdout).expect("UTF-8")
 }

@@ -14,7 +14,13 @@ fn azimuth(degrees: f64) -> Azimuth {
 /// E, Example 5.8: S1 = SHmax = 60 at azimuth 135, Sv = 40, S3 = 35.
 #[test]
 fn espinoza_example_5_8_tensor_of_a_strike_slip_state() {
-    let s = Stress::from_horizontals(Horizontals { sv: 40.mpa(), sh_max: 60.mpa(), sh_min: 35.mpa(), sh_max_azimuth: azimuth(135.0) }).unwrap();
+    let s = Stress::from_horizontals(Horizontals {
+        sv: 40.mpa(),
+        sh_max: 60.mpa(),
+        sh_min: 35.mpa(),
+        sh_max_azimuth: azimuth(135.0),
+    })
+    .unwrap();
     assert_printed("S_nn", s.component(Axis::X, Axis::X).in_mpa(), "47.5");
     assert_printed("S_ee", s.component(Axis::Y, Axis::Y).in_mpa(), "47.5");
     assert_printed("S_ne", s.component(Axis::X, Axis::Y).in_mpa(), "-12.5");
@@ -26,7 +32,13 @@ fn espinoza_example_5_8_tensor_of_a_strike_slip_state() {
 /// down: Sn 3870 for exactly 3875, t_E 1840 for 1837.1. The exact values are held to.
 #[test]
 fn espinoza_example_5_11_traction_on_a_fault() {
-    let s = Stress::from_horizontals(Horizontals { sv: 5000.psi(), sh_max: 4000.psi(), sh_min: 3000.psi(), sh_max_azimuth: azimuth(0.0) }).unwrap();
+    let s = Stress::from_horizontals(Horizontals {
+        sv: 5000.psi(),
+        sh_max: 4000.psi(),
+        sh_min: 3000.psi(),
+        sh_max_azimuth: azimuth(0.0),
+    })
+    .unwrap();
     let t = s.on(Plane { strike: azimuth(45.0), dip: 60.deg() }).unwrap();
     let close = |what: &str, got: f64, want: f64| assert!(agree(got, want, 0.05), "{what}: got {got}, want {want}");
     close("Sn", t.normal.in_psi(), 3875.0);
@@ -50,7 +62,13 @@ fn espinoza_example_5_11_traction_on_a_fault() {
 /// exactly 1441.5, 160.7, 488.3, 18.22, 0.5133).
 #[test]
 fn espinoza_example_5_12_reverse_fault_traction() {
-    let s = Stress::from_horizontals(Horizontals { sv: 1000.psi(), sh_max: 2400.psi(), sh_min: 1200.psi(), sh_max_azimuth: azimuth(150.0) }).unwrap();
+    let s = Stress::from_horizontals(Horizontals {
+        sv: 1000.psi(),
+        sh_max: 2400.psi(),
+        sh_min: 1200.psi(),
+        sh_max_azimuth: azimuth(150.0),
+    })
+    .unwrap();
     let t = s.on(Plane { strike: azimuth(120.0), dip: 70.deg() }).unwrap();
     assert_printed("S_nn", s.component(Axis::X, Axis::X).in_psi(), "2100");
     assert_printed("Sn", t.normal.in_psi(), "1441.5");

@@ -23,7 +23,10 @@ pub fn true_azimuth(degrees: f64) -> Azimuth {
 fn a_tensor_carried_to_a_hole() {
     for case in cases("tensor_to_well_frame") {
         let s = stress_of(&numbers(&case.inputs, "stress_ned"));
-        let hole = Attitude { inclination: number(&case.inputs, "inclination").deg(), azimuth: true_azimuth(number(&case.inputs, "azimuth")) };
+        let hole = Attitude {
+            inclination: number(&case.inputs, "inclination").deg(),
+            azimuth: true_azimuth(number(&case.inputs, "azimuth")),
+        };
         let chain = hole.chain().unwrap();
         let carried = chain.carry(&s);
         assert_all_close(&case.id, &six_of(&carried), &numbers(&case.outputs, "stress_well"), RELATIVE);
@@ -72,8 +75,14 @@ fn principal_stresses_and_their_axes() {
             let trend = line.trend.true_north().unwrap().in_rad();
             let plunge = line.plunge.in_rad();
             let ours = [plunge.cos() * trend.cos(), plunge.cos() * trend.sin(), plunge.sin()];
-            let theirs: Vec<f64> = axes[k].as_array().expect("axis").iter().map(|v| v.as_f64().expect("number")).collect();
-            let gap = values.iter().enumerate().filter(|(j, _)| *j != k).map(|(_, v)| (v - values[k]).abs()).fold(f64::INFINITY, f64::min);
+            let theirs: Vec<f64> =
+                axes[k].as_array().expect("axis").iter().map(|v| v.as_f64().expect("number")).collect();
+            let gap = values
+                .iter()
+                .enumerate()
+                .filter(|(j, _)| *j != k)
+                .map(|(_, v)| (v - values[k]).abs())
+                .fold(f64::INFINITY, f64::min);
             // An axis is as good as the gap to its neighbour allows.
             let tolerance = 1e-9_f64.max(1e-14 * largest / gap);
             let along: f64 = ours.iter().zip(&theirs).map(|(a, b)| a * b).sum();

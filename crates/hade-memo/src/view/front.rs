@@ -175,7 +175,10 @@ pub(crate) fn givens(sources: &Sources<'_>) -> Vec<GivenView> {
                 give_or_take: plain(&given.give_or_take),
                 grade: given.source.grade.word(),
                 sourced: given.source.grade != Grade::Unsourced,
-                source: plain(&given.source.words),
+                source: match given.source.file.as_str() {
+                    "" => plain(&given.source.words),
+                    file => plain(&format!("{}; file {file}", given.source.words)),
+                },
                 used_in: numbers(&used),
             }
         })
@@ -203,9 +206,26 @@ pub(crate) fn data(sources: &Sources<'_>) -> Vec<DataView> {
             about: plain(&file.about),
             size: bytes(file.bytes),
             sha256: crate::clean::lossy(&file.sha256),
-            used_in: numbers(&users(sources, |o| matches!(o, Origin::Data { path } if *path == file.path))),
+            used_in: uses(sources, &file.path),
         })
         .collect()
+}
+
+/// What rests on a file: the items that read it, and the givens that were taken from it.
+fn uses(sources: &Sources<'_>, file: &str) -> String {
+    let items = users(sources, |o| matches!(o, Origin::Data { path } if path == file));
+    let givens: Vec<String> = sources
+        .record
+        .givens
+        .iter()
+        .filter(|given| given.source.file == file)
+        .map(|given| plain(&given.item.symbol).replacen('_', "\u{2009}", 1))
+        .collect();
+    match (items.as_slice(), givens.as_slice()) {
+        (_, []) => numbers(&items),
+        ([], _) => format!("given {}", givens.join(", ")),
+        _ => format!("{}; given {}", numbers(&items), givens.join(", ")),
+    }
 }
 
 /// An assumption.

@@ -116,8 +116,20 @@ impl Explain for FrictionLimit {
         let (normal, shear) = (centre - radius * phi.sin(), radius * phi.cos());
         let largest = at_limit.abs().max(1.0) * 1e-6;
         vec![
-            Check::compare("largest ratio against tan²(45° + φ/2), φ = atan μ", &[outcome.allowed], &[by_angle], by_angle * 1e-12, ""),
-            Check::compare("ratio from the roots of the characteristic equation", &[outcome.ratio], &[s1 / s3], s1.abs() / s3.abs() * 1e-7, ""),
+            Check::compare(
+                "largest ratio against tan²(45° + φ/2), φ = atan μ",
+                &[outcome.allowed],
+                &[by_angle],
+                by_angle * 1e-12,
+                "",
+            ),
+            Check::compare(
+                "ratio from the roots of the characteristic equation",
+                &[outcome.ratio],
+                &[s1 / s3],
+                s1.abs() / s3.abs() * 1e-7,
+                "",
+            ),
             Check::compare(
                 "shear on the best oriented plane at the limit against μ times its normal stress",
                 &[shear * 1e-6],
@@ -200,7 +212,11 @@ mod tests {
     fn outside_is_a_warning_with_the_bound_and_open_fractures_are_refused() {
         let outside = stress(30.0).frictional_limit(20.mpa(), 0.6).unwrap();
         assert!(!outside.is_within());
-        assert!(outside.card().explanation.notes[0].contains("S_1 could be 51.19 MPa at most"), "{:?}", outside.card().explanation.notes);
+        assert!(
+            outside.card().explanation.notes[0].contains("S_1 could be 51.19 MPa at most"),
+            "{:?}",
+            outside.card().explanation.notes
+        );
         assert!(stress(40.0).frictional_limit(20.mpa(), 0.6).unwrap().is_within());
         // Effective S3 of zero or less has no ratio (trap 35).
         assert!(stress(18.0).frictional_limit(20.mpa(), 0.6).is_err());

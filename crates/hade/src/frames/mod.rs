@@ -26,8 +26,8 @@ pub(crate) mod vector;
 
 pub use attitude::{Attitude, NamedAttitude};
 pub use axes::{Axis, Borehole, FaultAxes, Frame, Geographic, Local, WallAxes};
-pub use azimuth::{Azimuth, North};
 pub(crate) use azimuth::three_figures;
+pub use azimuth::{Azimuth, North};
 pub use chain::{Chain, ChainInputs, Turn};
 pub(crate) use chain::{bearing_item, frame_words};
 pub use datum::{Datum, DatumTie, Depth};

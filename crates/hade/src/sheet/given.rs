@@ -41,13 +41,16 @@ pub struct Source {
     pub grade: Grade,
     /// The source in words: test, depth, date, report.
     pub words: String,
+    /// The data file of the sheet that holds it, as the sheet names it; empty when there is none.
+    #[serde(default, skip_serializing_if = "String::is_empty")]
+    pub file: String,
 }
 
 impl Source {
     fn of(grade: Grade, words: impl Into<String>) -> Self {
         let words = words.into();
         let grade = if words.trim().is_empty() { Grade::Unsourced } else { grade };
-        Source { grade, words }
+        Source { grade, words, file: String::new() }
     }
     /// Measured in this hole.
     pub fn measured(words: impl Into<String>) -> Self {
@@ -64,6 +67,10 @@ impl Source {
     /// Assumed, with the reason.
     pub fn assumed(words: impl Into<String>) -> Self {
         Source::of(Grade::Assumed, words)
+    }
+    /// With the data file that holds it, by the path under which the sheet has it.
+    pub fn in_file(self, path: &str) -> Self {
+        Source { file: path.to_owned(), ..self }
     }
 }
 

@@ -307,15 +307,15 @@ fn explain_horizontals(given: Horizontals) -> Explanation {
         },
         steps: vec![
             Step::worked(format!(
-                "S_nn = {} · {}² + {} · {}² = {} MPa",
+                "S_nn = {} · ({})² + {} · ({})² = {} MPa",
                 fixed(big, 3), fixed(c, 6), fixed(small, 3), fixed(s, 6), fixed(big * c * c + small * s * s, 4)
             )),
             Step::worked(format!(
-                "S_ee = {} · {}² + {} · {}² = {} MPa",
+                "S_ee = {} · ({})² + {} · ({})² = {} MPa",
                 fixed(big, 3), fixed(s, 6), fixed(small, 3), fixed(c, 6), fixed(big * s * s + small * c * c, 4)
             )),
             Step::worked(format!(
-                "S_ne = ({} − {}) · {} · {} = {} MPa",
+                "S_ne = ({} − {}) · ({}) · ({}) = {} MPa",
                 fixed(big, 3), fixed(small, 3), fixed(s, 6), fixed(c, 6), fixed((big - small) * s * c, 4)
             )),
         ],

@@ -2,7 +2,7 @@
 
 use serde::{Deserialize, Serialize};
 
-use crate::frames::vector::{M3, V3, cross, multiply, norm, scale, transpose};
+use crate::frames::vector::{M3, V3, add, cross, multiply, norm, scale, transpose};
 
 /// A symmetric tensor: xx, yy, zz, xy, yz, xz. For stresses, in pascals.
 #[derive(Clone, Copy, Debug, PartialEq, Serialize, Deserialize)]
@@ -89,11 +89,9 @@ impl Tensor {
                 a[p][r] = a[r][p];
                 a[r][q] = s * arp + c * arq;
                 a[q][r] = a[r][q];
-                for k in 0..3 {
-                    let (vp, vq) = (v[p][k], v[q][k]);
-                    v[p][k] = c * vp - s * vq;
-                    v[q][k] = s * vp + c * vq;
-                }
+                let (vp, vq) = (v[p], v[q]);
+                v[p] = add(scale(vp, c), scale(vq, -s));
+                v[q] = add(scale(vp, s), scale(vq, c));
             }
             if !turned {
                 break;

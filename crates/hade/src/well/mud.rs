@@ -4,7 +4,9 @@ use serde::{Deserialize, Serialize};
 
 use crate::card::{Check, Explain, Explanation, Formula, Item, Method, Reference, Step};
 use crate::error::{Error, Result};
-use crate::units::{Density, GRAVITY, Length, Pressure, Quantity, as_typed, fixed, require_not_negative, with_typed_unit};
+use crate::units::{
+    Density, GRAVITY, Length, Pressure, Quantity, as_typed, fixed, require_not_negative, with_typed_unit,
+};
 
 /// A static mud column: its density and the true vertical depth below the rotary table.
 #[derive(Clone, Copy, Debug, PartialEq, Serialize, Deserialize)]

@@ -8,7 +8,7 @@ use super::wall::{AtPressure, Wall, pressure_item};
 use super::{direction, method, second_route::ByVectors};
 use crate::card::{Axis, Card, Check, Column, Explain, Explanation, Figure, Item, Layer, Role, Step, Table};
 use crate::error::Result;
-use crate::units::{Angle, Pressure, Quantity, as_typed, fixed};
+use crate::units::{Angle, Pressure, Quantity, fixed, with_typed_unit};
 
 /// Places of the table: every 15° of tool face up to 180°, where everything repeats (τθz with the
 /// other sign).
@@ -176,7 +176,7 @@ impl Explain for WallAround {
         steps.push(method::worked_strength(&self.wall, method::effective(&self.wall, place.si(), p.si())));
         steps.push(Step::Table { table: self.table() });
         Explanation {
-            title: format!("Wall of {} all round at {} MPa", self.wall.place(), as_typed(p.in_mpa())),
+            title: format!("Wall of {} all round at {}", self.wall.place(), with_typed_unit(p)),
             headline: format!(
                 "hoop stress {} to {} (total); margin {} at the worst place",
                 self.outcome.least_hoop,
@@ -286,8 +286,8 @@ impl WallAround {
         ]);
         Figure {
             caption: format!(
-                "Effective hoop (σθ'), axial (σz') and radial (σr') stress and the largest principal stress σ1' against tool face at {} MPa in the hole, with the σ1' the rock bears there; failing arcs are shaded. {}",
-                as_typed(self.inputs.pressure.in_mpa()),
+                "Effective hoop (σθ'), axial (σz') and radial (σr') stress and the largest principal stress σ1' against tool face at {} in the hole, with the σ1' the rock bears there; failing arcs are shaded. {}",
+                with_typed_unit(self.inputs.pressure),
                 direction::reference(wall.attitude)
             ),
             alt: format!(

@@ -8,7 +8,7 @@ use super::wall::{AtPressure, Wall, pressure_item};
 use super::{direction, method, second_route::ByVectors};
 use crate::card::{Card, Check, Column, Explain, Explanation, Item, Reference, Step, Table};
 use crate::error::Result;
-use crate::units::{Angle, Pressure, Quantity, as_typed, fixed};
+use crate::units::{Angle, Pressure, Quantity, fixed, with_typed_unit};
 
 /// An arc of the wall that fails in shear. It stands for two: the same fails on the far side.
 #[derive(Clone, Copy, Debug, PartialEq, Serialize, Deserialize)]
@@ -276,7 +276,7 @@ impl Explain for FailingArcs {
             "Zoback, M.D. (2007) Reservoir Geomechanics, Cambridge University Press, ch. 6 (breakouts as arcs of the wall beyond strength)",
         ));
         Explanation {
-            title: format!("Failing arcs of the wall of {} at {} MPa", self.wall.place(), as_typed(p.in_mpa())),
+            title: format!("Failing arcs of the wall of {} at {}", self.wall.place(), with_typed_unit(p)),
             headline: self.headline(),
             inputs,
             results,

@@ -9,7 +9,7 @@ use crate::error::Result;
 use crate::frames::vector::wrap;
 use crate::frames::{Geographic, WallAxes};
 use crate::stress::{EffectiveStress, Made, Stress};
-use crate::units::{Angle, Pressure, Quantity, as_typed};
+use crate::units::{Angle, Pressure, Quantity, with_typed_unit};
 
 /// The total stress at one tool face of the wall, in wall axes, and what of it is effective.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -197,10 +197,10 @@ impl Explain for WallStress {
         steps.extend(method::worked(&self.wall, theta.si(), p.si()));
         Explanation {
             title: format!(
-                "Stress at the wall of {} at tool face {}°, {} MPa",
+                "Stress at the wall of {} at tool face {}, {}",
                 self.wall.place(),
-                as_typed(theta.in_deg()),
-                as_typed(p.in_mpa())
+                with_typed_unit(theta),
+                with_typed_unit(p)
             ),
             headline: format!(
                 "radial {}, hoop {}, axial {}, shear {} (total) at tool face {}",
