@@ -8,9 +8,7 @@ use hade::card::{
     Axis, Card, Check, Column, Explanation, Figure, Formula, Item, Json, Layer, Mark, Method, Reference, Role, Step,
     Table,
 };
-use hade::sheet::{
-    Assumption, Basis, DataFile, Entry, Frontmatter, Given, Grade, RECORD_SCHEMA, Record, Source, trace,
-};
+use hade::sheet::{Assumption, Basis, DataFile, Entry, Frontmatter, Given, RECORD_SCHEMA, Record, Source, trace};
 use hade_memo::{Again, Memo, MemoInput, MemoOptions, Project, Replayer, build_with};
 use sha2::{Digest, Sha256};
 
@@ -323,7 +321,7 @@ pub fn record(folder: &Path) -> Record {
                 2.0,
             ),
             "",
-            Source { grade: Grade::Offset, words: PROBE.to_owned() },
+            Source::offset(PROBE),
         ),
     ];
     let mut entries = Vec::new();

@@ -32,7 +32,7 @@ impl LimitKind {
         match self {
             LimitKind::LowerShear => "lower shear limit",
             LimitKind::UpperShear => "upper shear limit",
-            LimitKind::Initiation => "initiation of parting",
+            LimitKind::Initiation => "fracture initiation",
             LimitKind::Reopening => "reopening",
             LimitKind::LeastStress => "least stress",
             LimitKind::PorePressure => "pore pressure",

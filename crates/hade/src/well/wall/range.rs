@@ -38,7 +38,7 @@ pub enum Governs {
     PorePressure,
     /// The least far-field stress S3.
     LeastStress,
-    /// Initiation of parting at the wall.
+    /// Fracture initiation at the wall.
     Initiation,
     /// The upper shear limit.
     UpperShear,
