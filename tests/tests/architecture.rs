@@ -62,12 +62,17 @@ fn dependencies_point_one_way() {
     for (module, file) in sources() {
         let own = place.get(module.as_str()).unwrap_or_else(|| panic!("{module} has no place in the order"));
         let text = std::fs::read_to_string(&file).expect("a source file");
-        let code: String = without_tests(&text).lines().filter(|l| !l.trim_start().starts_with("//")).collect::<Vec<_>>().join("\n");
+        let code: String =
+            without_tests(&text).lines().filter(|l| !l.trim_start().starts_with("//")).collect::<Vec<_>>().join("\n");
         for rest in code.split("crate::").skip(1) {
             let name: String = rest.chars().take_while(|c| c.is_ascii_alphanumeric() || *c == '_').collect();
             let Some(other) = place.get(name.as_str()) else { continue };
             seen += 1;
-            assert!(name == module || other < own, "{} imports {name}, which stands beside or after {module}", file.display());
+            assert!(
+                name == module || other < own,
+                "{} imports {name}, which stands beside or after {module}",
+                file.display()
+            );
         }
     }
     assert!(seen > 100, "only {seen} imports seen");
@@ -77,7 +82,8 @@ fn dependencies_point_one_way() {
 /// that names one would be unknown to the analyser and to a user's cell.
 #[test]
 fn public_signatures_name_only_std_and_our_own_types() {
-    let foreign = ["nalgebra::", "serde_json::", "plotters::", "tera::", "csv::", "rayon::", "sha2::", "Matrix3", "Vector3"];
+    let foreign =
+        ["nalgebra::", "serde_json::", "plotters::", "tera::", "csv::", "rayon::", "sha2::", "Matrix3", "Vector3"];
     let mut seen = 0;
     for (_, file) in sources() {
         let text = std::fs::read_to_string(&file).expect("a source file");
@@ -86,7 +92,13 @@ fn public_signatures_name_only_std_and_our_own_types() {
             if line.starts_with("pub fn") || line.starts_with("pub const") || line.starts_with("pub trait") {
                 seen += 1;
                 let named = foreign.iter().find(|name| line.contains(**name));
-                assert!(named.is_none(), "{}:{}: {} in a public signature", file.display(), number + 1, named.unwrap_or(&""));
+                assert!(
+                    named.is_none(),
+                    "{}:{}: {} in a public signature",
+                    file.display(),
+                    number + 1,
+                    named.unwrap_or(&"")
+                );
             }
         }
     }

@@ -34,11 +34,17 @@ fn state_b() -> Stress {
     .expect("a possible stress")
 }
 
+/// The text of a card without its checks, whose last digits are a machine's own.
+fn words(card: &Card) -> String {
+    card_text(card).split("Checks:").next().unwrap_or_default().trim_end().to_owned()
+}
+
 #[test]
 fn a_card_as_text() {
-    insta::assert_snapshot!("principals", card_text(&state_b().principals().card()));
-    let chain = Attitude { inclination: 35.deg(), azimuth: Azimuth::from_true_north(70.deg()) }.chain().expect("a hole");
-    insta::assert_snapshot!("chain", card_text(&chain.card()));
+    insta::assert_snapshot!("principals", words(&state_b().principals().card()));
+    let chain =
+        Attitude { inclination: 35.deg(), azimuth: Azimuth::from_true_north(70.deg()) }.chain().expect("a hole");
+    insta::assert_snapshot!("chain", words(&chain.card()));
 }
 
 #[test]
