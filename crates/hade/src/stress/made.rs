@@ -357,3 +357,66 @@ fn explain_principals(measured: &[(Pressure, Line); 3]) -> Explanation {
         ..Explanation::default()
     }
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::frames::Azimuth;
+    use crate::units::{Angle, Units};
+
+    fn line(trend: f64, plunge: f64) -> Line {
+        Line { trend: Azimuth::from_true_north(trend.deg()), plunge: plunge.deg() }
+    }
+
+    #[test]
+    fn exchanged_horizontal_stresses_and_nan_are_refused_by_name() {
+        let given = Horizontals {
+            sv: 60.mpa(),
+            sh_max: 40.mpa(),
+            sh_min: 55.mpa(),
+            sh_max_azimuth: Azimuth::from_true_north(30.deg()),
+        };
+        let said = Stress::from_horizontals(given).unwrap_err().to_string();
+        assert!(said.starts_with("S_Hmax 40 MPa is smaller than S_hmin 55 MPa"), "{said}");
+        let said = Stress::from_horizontals(Horizontals { sv: f64::NAN.mpa(), ..given }).unwrap_err().to_string();
+        assert!(said.contains("vertical stress S_v is NaN"), "{said}");
+        let grid = Horizontals { sh_max: 56.mpa(), sh_max_azimuth: Azimuth::from_grid_north(30.deg()), ..given };
+        assert!(Stress::from_horizontals(grid).unwrap_err().to_string().contains("with_convergence"));
+    }
+
+    /// Lines have no sign (trap 8): the other end of a line gives the same tensor.
+    #[test]
+    fn either_end_of_a_measured_line_gives_the_same_tensor() {
+        let measured = [(60.mpa(), line(35.0, 12.0)), (40.mpa(), line(127.0, 8.0)), (20.mpa(), line(250.0, 75.5))];
+        let s = Stress::from_principals(measured).unwrap();
+        let mut turned = measured;
+        turned[2].1 = Line { trend: measured[2].1.trend.turned_by(180.deg()), plunge: -measured[2].1.plunge };
+        assert!(Stress::from_principals(turned).unwrap().is_close(&s, 1.pa()));
+        assert!(s.card().explanation.notes[0].contains("the largest angle from a measured line"));
+    }
+
+    #[test]
+    fn axes_too_far_from_right_angles_are_refused_with_the_angles() {
+        let said = Stress::from_principals([
+            (60.mpa(), line(35.0, 12.0)),
+            (40.mpa(), line(105.0, 8.0)),
+            (20.mpa(), line(200.0, 72.0)),
+        ])
+        .unwrap_err()
+        .to_string();
+        assert!(said.contains("within 15° of right angles") && said.contains("1–2"), "{said}");
+        let dip = Line { plunge: Angle::deg(100.0), ..line(0.0, 0.0) };
+        assert!(
+            Stress::from_principals([(1.mpa(), dip), (1.mpa(), line(90.0, 0.0)), (1.mpa(), line(0.0, 90.0))]).is_err()
+        );
+    }
+
+    #[test]
+    fn tension_positive_components_change_their_sign_and_say_so() {
+        let c = Components { nn: (-40).mpa(), ee: (-50).mpa(), dd: (-60).mpa(), ne: 1.mpa(), nd: 2.mpa(), ed: 3.mpa() };
+        let s = Stress::from_tension_positive(c).unwrap();
+        assert_eq!(s.component(crate::frames::Axis::Z, crate::frames::Axis::Z), 60.mpa());
+        assert_eq!(s.component(crate::frames::Axis::X, crate::frames::Axis::Y), (-1).mpa());
+        assert!(s.card().explanation.notes[0].contains("Signs were turned"));
+    }
+}
