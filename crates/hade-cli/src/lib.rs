@@ -1,6 +1,7 @@
 //! The `hade` command: one file a subcommand, and a thin program around [`main`].
 
 mod bar;
+mod cells;
 mod kernel;
 mod memo;
 mod run;

@@ -2,7 +2,7 @@
 
 use std::ffi::OsString;
 use std::fs::{self, File};
-use std::io::Write as _;
+use std::io::{Read as _, Write as _};
 use std::path::{Path, PathBuf};
 use std::time::{Duration, Instant};
 
@@ -13,6 +13,7 @@ use hade_memo::{MemoInput, MemoOptions, Project, build};
 
 use crate::Failure;
 use crate::bar::Bar;
+use crate::cells::{cell_failure, seconds};
 
 /// Arguments of `hade memo`.
 #[derive(Debug, Args)]
@@ -38,7 +39,11 @@ pub(crate) fn run(args: &MemoArgs) -> Result<(), Failure> {
     let folder = Notebook::read(&args.notebook)?.folder().to_path_buf();
     let project = Project::read_beside(&folder)?;
     if project.as_ref().is_none_or(|p| p.date.is_none()) {
-        eprintln!("note: there is no date in {}, and a memo needs one", folder.join("hade.toml").display());
+        return Err(format!(
+            "a memo needs a date, and the clock is never asked; write into {}:\n    [memo]\n    date = \"2026-06-01\"",
+            folder.join("hade.toml").display()
+        )
+        .into());
     }
 
     let mut bar = Bar::new();
@@ -94,13 +99,8 @@ fn record_text(run: &NotebookRun, notebook: &Path) -> Result<String, Failure> {
 /// What to say of the cell that failed, when one did.
 fn failed_cell(run: &NotebookRun) -> Option<String> {
     let failure = run.failure()?;
-    let mut message = format!("{failure}\n");
-    if failure.error.detail.trim() != failure.error.sentence {
-        for line in failure.error.detail.lines() {
-            message.push_str(&format!("    {line}\n"));
-        }
-    }
-    message.push_str("No memo was written. Correct the cell and run again.");
+    let mut message = cell_failure(&failure);
+    message.push_str("No memo was written; an earlier one stays as it was. Correct the cell and run again.");
     Some(message)
 }
 
@@ -109,10 +109,23 @@ fn check_target(target: &Path) -> Result<(), Failure> {
     if target.is_dir() {
         return Err(format!("{} is a folder; name a file for the memo", target.display()).into());
     }
+    if target.exists() && !is_pdf(target) {
+        return Err(format!(
+            "{} is there and is no PDF; it stays as it is. Name another file for the memo",
+            target.display()
+        )
+        .into());
+    }
     if !parent(target).is_dir() {
         return Err(format!("the folder {} does not exist; make it first", parent(target).display()).into());
     }
     Ok(())
+}
+
+/// Whether a file begins as a PDF does. Nothing else is ever written over.
+fn is_pdf(file: &Path) -> bool {
+    let mut head = [0_u8; 5];
+    File::open(file).and_then(|mut f| f.read_exact(&mut head)).is_ok() && &head == b"%PDF-"
 }
 
 /// Writes beside the target and renames, so that the target is never half written.
@@ -136,12 +149,4 @@ fn parent(target: &Path) -> &Path {
         Some(folder) if !folder.as_os_str().is_empty() => folder,
         _ => Path::new("."),
     }
-}
-
-fn seconds(text: &str) -> Result<Duration, String> {
-    text.parse::<f64>()
-        .ok()
-        .and_then(|seconds| Duration::try_from_secs_f64(seconds).ok())
-        .filter(|limit| !limit.is_zero())
-        .ok_or_else(|| "give a number of seconds above 0, such as 60".to_owned())
 }

@@ -8,6 +8,7 @@ use hade_kernel::{NotebookRun, RunOptions, run_notebook};
 
 use crate::Failure;
 use crate::bar::Bar;
+use crate::cells::{cell_failure, seconds};
 
 /// Arguments of `hade run`.
 #[derive(Debug, Args)]
@@ -67,13 +68,7 @@ fn failures(run: &NotebookRun, target: &str) -> String {
         let Some(error) = &cell.outcome.error else {
             continue;
         };
-        let failure = hade_kernel::NotebookFailure { number: cell.number, error: error.clone() };
-        message.push_str(&format!("{failure}\n"));
-        if error.detail.trim() != error.sentence {
-            for line in error.detail.lines() {
-                message.push_str(&format!("    {line}\n"));
-            }
-        }
+        message.push_str(&cell_failure(&hade_kernel::NotebookFailure { number: cell.number, error: error.clone() }));
     }
     let all = run.notebook.code_cells().len();
     if run.cells.len() < all {
@@ -86,25 +81,4 @@ fn failures(run: &NotebookRun, target: &str) -> String {
     }
     message.push_str(&format!("Correct the cell and run again; what ran is in {target}."));
     message
-}
-
-fn seconds(text: &str) -> Result<Duration, String> {
-    text.parse::<f64>()
-        .ok()
-        .and_then(|seconds| Duration::try_from_secs_f64(seconds).ok())
-        .filter(|limit| !limit.is_zero())
-        .ok_or_else(|| "give a number of seconds above 0, such as 60".to_owned())
-}
-
-#[cfg(test)]
-mod tests {
-    use super::*;
-
-    #[test]
-    fn a_time_limit_is_a_positive_number() {
-        assert_eq!(seconds("1.5"), Ok(Duration::from_millis(1500)));
-        for bad in ["0", "-1", "NaN", "inf", "a minute", "1e300"] {
-            assert!(seconds(bad).is_err(), "{bad}");
-        }
-    }
 }

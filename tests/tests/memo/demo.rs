@@ -92,3 +92,24 @@ fn one_changed_number_in_the_survey_changes_the_memo() {
     assert_ne!(outcomes(&before), outcomes(&after));
     assert_ne!(before.data[0].sha256, after.data[0].sha256);
 }
+
+#[test]
+fn the_minimal_notebook_becomes_a_memo_with_every_input_known() {
+    let demo = demo_copy();
+    assert_success(&memo(demo.path(), "minimal.ipynb", "minimal.pdf"));
+    let record = record(&demo.path().join("minimal.pdf"));
+    assert_eq!(record.unknown_inputs(), vec![]);
+    // A vertical hole by hand: Kirsch and Mohr–Coulomb give 25.64 MPa for no failing arc, and
+    // initiation at 3 S_hmin − S_Hmax − P_p + T_0 = 37.00 MPa.
+    let limits = record.cards().into_iter().find(|(c, _)| c.kind == "wall-limits").expect("the limits").0.clone();
+    let shown =
+        |symbol: &str| limits.explanation.results.iter().find(|r| r.symbol == symbol).expect("a limit").si[0] * 1e-6;
+    let (q, ucs) =
+        ((1.0 + 28_f64.to_radians().sin()) / (1.0 - 28_f64.to_radians().sin()), 12.0 * (59_f64).to_radians().tan());
+    assert!(
+        (shown("p_ls") - (3.0 * 38.0 - 31.0 - 19.0 - ucs + q * 19.0) / (1.0 + q)).abs() < 1e-4,
+        "{}",
+        shown("p_ls")
+    );
+    assert!((shown("p_i") - (3.0 * 31.0 - 38.0 - 19.0 + 1.0)).abs() < 1e-4, "{}", shown("p_i"));
+}

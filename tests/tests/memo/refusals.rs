@@ -4,16 +4,28 @@ use super::support::{assert_success, attachments, memo, notebook, said};
 
 const OPENING: &str = "let mut sheet = Sheet::new(\"A test\");\nlet sv = sheet.given(\"S_v\", \"vertical stress\", 60.mpa(), Source::measured(\"a log\"));";
 
+/// A folder with a project file that states a date.
+fn dated_folder() -> tempfile::TempDir {
+    let folder = tempfile::tempdir().unwrap();
+    std::fs::write(
+        folder.path().join("hade.toml"),
+        "[memo]\nnumber = \"T-1\"\nrevision = \"A\"\ndate = \"2026-03-01\"\n",
+    )
+    .unwrap();
+    folder
+}
+
 /// Runs a notebook whose second cell is at fault and returns what was said.
 #[track_caller]
 fn refused(cell: &str) -> String {
-    let folder = tempfile::tempdir().unwrap();
+    let folder = dated_folder();
     notebook(folder.path(), "faulty.ipynb", &[OPENING, cell, "sheet"]);
     let output = memo(folder.path(), "faulty.ipynb", "out.pdf");
     assert!(!output.status.success(), "{}", said(&output));
     let left: Vec<_> =
         std::fs::read_dir(folder.path()).unwrap().map(|e| e.unwrap().file_name().into_string().unwrap()).collect();
-    assert_eq!(left, ["faulty.ipynb"], "only the notebook is left");
+    left.sort();
+    assert_eq!(left, ["faulty.ipynb", "hade.toml"], "no part of a memo is left");
     said(&output)
 }
 
@@ -41,7 +53,7 @@ fn a_cell_that_does_not_compile_names_the_cell_and_the_mistake() {
 
 #[test]
 fn a_notebook_without_a_sheet_and_a_file_that_is_no_notebook_are_refused() {
-    let folder = tempfile::tempdir().unwrap();
+    let folder = dated_folder();
     notebook(folder.path(), "bare.ipynb", &["let x = 1.0;"]);
     let output = memo(folder.path(), "bare.ipynb", "out.pdf");
     assert!(!output.status.success());
@@ -55,7 +67,7 @@ fn a_notebook_without_a_sheet_and_a_file_that_is_no_notebook_are_refused() {
 
 #[test]
 fn an_input_that_bypasses_the_sheet_is_named() {
-    let folder = tempfile::tempdir().unwrap();
+    let folder = dated_folder();
     notebook(
         folder.path(),
         "bypass.ipynb",
@@ -84,4 +96,21 @@ fn an_input_that_bypasses_the_sheet_is_named() {
         assert!(text.contains("larger horizontal stress"), "{text}");
         assert!(text.to_lowercase().contains("not on the sheet"), "{text}");
     }
+}
+
+#[test]
+fn nothing_but_a_memo_is_written_over_and_a_missing_date_is_said_before_anything_runs() {
+    let folder = dated_folder();
+    let path = notebook(folder.path(), "mine.ipynb", &[OPENING, "sheet"]);
+    let before = std::fs::read(&path).unwrap();
+    for target in ["mine.ipynb", "hade.toml"] {
+        let output = memo(folder.path(), "mine.ipynb", target);
+        assert!(!output.status.success());
+        assert!(said(&output).contains("is no PDF; it stays as it is"), "{}", said(&output));
+    }
+    assert_eq!(std::fs::read(&path).unwrap(), before);
+    std::fs::remove_file(folder.path().join("hade.toml")).unwrap();
+    let output = memo(folder.path(), "mine.ipynb", "out.pdf");
+    assert!(!output.status.success());
+    assert!(said(&output).contains("a memo needs a date") && !said(&output).contains("cell 1"), "{}", said(&output));
 }

@@ -193,7 +193,9 @@ impl<'a> Maker<'a> {
 
     fn input(&self, item: &Item, origin: &Origin) -> InputView {
         let words = match origin {
-            Origin::Given { symbol } => format!("given {symbol}"),
+            Origin::Given { symbol } if *symbol == item.symbol => format!("given {symbol}"),
+            // Only the value and its kind tie the two; the reader judges whether it is the same thing.
+            Origin::Given { symbol } => format!("equals given {symbol}"),
             Origin::Outcome { card, result } => format!("item {card}: {result}"),
             Origin::Data { path } => format!("file {path}"),
             Origin::Choice => "choice".to_owned(),

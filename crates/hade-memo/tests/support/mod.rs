@@ -384,6 +384,7 @@ pub fn record(folder: &Path) -> Record {
             "Below 1.25 sg the wall fails in shear over more than 60° of arc on each side, at tool faces 95° and 275°.",
             PROBE,
         ]),
+        conflicts: Vec::new(),
     }
 }
 

@@ -230,15 +230,18 @@ fn method() -> Method {
         words: "The weight of everything above the depth: a stated mean density from the surface to the first value of the log, then the log, density running straight between its values (trapezoids). Air between rotary table and ground weighs nothing; the sea is counted with 1025 kg/m³.".to_owned(),
         formulas: vec![
             Formula::new(
-                "S_v = g (rho_w d_w + rho_upright(top) h_upright(top) + integral rho d z)",
+                "S_v = g (rho_w d_w + rho_\"top\" h_\"top\" + integral rho d z)",
                 "S_v = g (ρ_w d_w + ρ_top h_top + ∫ ρ dz)",
             ),
             Formula::new("integral rho d z = sum rho_k (z_(k+1) - z_k)", "∫ ρ dz = Σ ρ_k (z_(k+1) − z_k), ρ_k the mean density of a layer"),
         ],
         symbols: vec![
-            ("ρ_w, d_w".to_owned(), "density and depth of the sea; none on land".to_owned()),
-            ("ρ_top, h_top".to_owned(), "mean density and height of the rock above the first value of the log".to_owned()),
-            ("g".to_owned(), format!("{GRAVITY} m/s²")),
+            ("ρ_w".to_owned(), "density of sea water".to_owned()),
+            ("d_w".to_owned(), "depth of the sea, none on land".to_owned()),
+            ("ρ_top".to_owned(), "mean density above the first value of the log".to_owned()),
+            ("h_top".to_owned(), "height of the rock above the first value of the log".to_owned()),
+            ("ρ_k".to_owned(), "density at the depth z_k of the log".to_owned()),
+            ("g".to_owned(), format!("standard gravity, {GRAVITY} m/s²")),
         ],
         references: vec![Reference::new(
             "Zoback, M.D. (2007) Reservoir Geomechanics, Cambridge University Press, ch. 1 (vertical stress by integrating density; cited from memory)",

@@ -86,10 +86,14 @@ impl Azimuth {
         Ok(Azimuth { correction: Some(correction), ..self })
     }
 
-    /// The direction at right angles to it, as a line (a breakout's and S_Hmax's azimuths in a
-    /// vertical hole).
+    /// The direction at right angles to it, as a line by its end in 0–180° (in a vertical hole,
+    /// S_Hmax from the azimuth of breakouts).
     pub fn perpendicular(self) -> Self {
-        self.turned_by(Angle::deg(90.0))
+        let bearing = self.true_north().unwrap_or(self.measured).si().rem_euclid(std::f64::consts::PI);
+        let other_end = self.true_north().unwrap_or(self.measured).si() - bearing;
+        let quarter = if bearing < std::f64::consts::FRAC_PI_2 { 90.0 } else { -90.0 };
+        let turned = self.turned_by(Angle::deg(quarter));
+        if other_end.abs() > 1.0 { turned.turned_by(Angle::deg(-180.0)) } else { turned }
     }
 
     /// Turned clockwise.
@@ -176,6 +180,19 @@ fn within_a_circle(a: f64) -> f64 {
 /// The kind under which the record holds azimuths from true north.
 pub(crate) const TRUE_AZIMUTH: &str = "azimuth from true north";
 
+/// Whether a turn leads to the direction across, as a line.
+fn is_quarter(turn: Angle) -> bool {
+    (turn.in_deg().rem_euclid(180.0) - 90.0).abs() < 1e-9
+}
+
+fn turn_words(turn: Angle) -> &'static str {
+    if is_quarter(turn) {
+        "turn to the direction across it (in a vertical hole breakouts form across S_Hmax)"
+    } else {
+        "turn clockwise"
+    }
+}
+
 /// "035.0° from true north".
 pub(crate) fn bearing(angle: Angle) -> String {
     format!("{}° from true north", three_figures(angle))
@@ -241,31 +258,33 @@ impl Explain for Azimuth {
             North::Magnetic => ("D", "magnetic declination, east positive"),
         };
         let mut inputs = vec![self.measured_item("A_m", "azimuth as measured")];
-        let mut formulas = Vec::new();
         let mut sum = format!("A = {}°", as_typed(self.measured.in_deg()));
         if let (Some(correction), true) = (self.correction, self.north != North::True) {
             inputs.push(Item::typed(symbol, name, correction));
-            formulas.push(Formula::new(
-                if self.north == North::Grid { "A = A_upright(m) + gamma" } else { "A = A_upright(m) + D" },
-                &format!("A = A_m + {symbol}"),
-            ));
             sum.push_str(&format!(" + ({}°)", as_typed(correction.in_deg())));
         }
         if self.turned.si() != 0.0 {
-            inputs.push(Item::typed("t", "turn clockwise, by reasoning stated in the text", self.turned).chosen());
-            formulas.push(Formula::new("A' = A + t", "A' = A + t"));
+            inputs.push(Item::typed("t", turn_words(self.turned), self.turned).chosen());
             sum.push_str(&format!(" + ({}°)", as_typed(self.turned.in_deg())));
         }
+        let (math, text) = match (self.north, self.turned.si() != 0.0) {
+            (North::True, _) => ("A = A_upright(m) + t", "A = A_m + t"),
+            (North::Grid, false) => ("A = A_upright(m) + gamma", "A = A_m + γ"),
+            (North::Grid, true) => ("A = A_upright(m) + gamma + t", "A = A_m + γ + t"),
+            (North::Magnetic, false) => ("A = A_upright(m) + D", "A = A_m + D"),
+            (North::Magnetic, true) => ("A = A_upright(m) + D + t", "A = A_m + D + t"),
+        };
+        let across = if is_quarter(self.turned) { ", and the direction across it" } else { "" };
         let outcome = self.outcome();
         sum.push_str(&format!(" = {}°, counted within 0–360°", three_figures(outcome)));
         Explanation {
-            title: format!("Azimuth {}° from {}, brought to true north", as_typed(self.measured.in_deg()), self.north.words()),
+            title: format!("Azimuth {}° from {} as a true azimuth{across}", as_typed(self.measured.in_deg()), self.north.words()),
             headline: bearing(outcome),
             inputs,
             results: vec![Item::new("A", "azimuth from true north", TRUE_AZIMUTH, vec![outcome.si()], bearing(outcome))],
             method: Method {
                 words: "East declination and east convergence are positive, so they are added; a turn is clockwise seen from above.".to_owned(),
-                formulas,
+                formulas: vec![Formula::new(math, text)],
                 ..Method::default()
             },
             steps: vec![Step::worked(sum)],

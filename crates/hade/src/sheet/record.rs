@@ -86,6 +86,9 @@ pub struct Record {
     pub entries: Vec<Entry>,
     /// The conclusions.
     pub conclusions: Vec<String>,
+    /// Symbols that were given two meanings, each in a sentence.
+    #[serde(default, skip_serializing_if = "Vec::is_empty")]
+    pub conflicts: Vec<String>,
 }
 
 impl Record {

@@ -21,6 +21,7 @@ pub struct Sheet {
     assumptions: Vec<Assumption>,
     entries: Vec<Written>,
     conclusions: Vec<String>,
+    conflicts: Vec<String>,
 }
 
 #[derive(Clone, Debug)]
@@ -40,10 +41,12 @@ impl Sheet {
             assumptions: Vec::new(),
             entries: Vec::new(),
             conclusions: Vec::new(),
+            conflicts: Vec::new(),
         }
     }
 
-    /// States a value with its source, and hands it back for the computation.
+    /// States a value with its source, and hands it back for the computation. A symbol that is
+    /// given again with another meaning replaces the first, and the sheet says so.
     pub fn given<G: IntoGiven>(&mut self, symbol: &str, meaning: &str, value: G, source: Source) -> G::Value {
         let (value, item, sd) = value.into_given(symbol, meaning);
         let given = Given {
@@ -52,6 +55,13 @@ impl Sheet {
             sd: sd.map(|(si, _)| si),
             source,
         };
+        if let Some(old) = self.givens.iter().find(|g| g.item.symbol == symbol && g.item.name != given.item.name) {
+            let conflict = format!(
+                "{symbol} is given twice, as \"{}\" ({}) and as \"{}\" ({}); only the second is kept",
+                old.item.name, old.item.shown, given.item.name, given.item.shown
+            );
+            replace_or_push(&mut self.conflicts, conflict.clone(), |c| *c == conflict);
+        }
         replace_or_push(&mut self.givens, given, |g| g.item.symbol == symbol);
         value
     }
@@ -192,6 +202,7 @@ impl Sheet {
             assumptions: self.assumptions.clone(),
             entries,
             conclusions: self.conclusions.clone(),
+            conflicts: self.conflicts.clone(),
         }
     }
 }
@@ -297,6 +308,19 @@ mod tests {
         let (_, origins) = record.cards()[1];
         assert_eq!(origins[0], Origin::Given { symbol: "S_v".to_owned() });
         assert_eq!(origins[3], Origin::Outcome { card: 1, result: "azimuth from true north".to_owned() });
+    }
+
+    #[test]
+    fn a_symbol_with_two_meanings_is_said() {
+        let mut sheet = Sheet::new("test");
+        for _ in 0..2 {
+            sheet.given("P_p", "pore pressure", 31.mpa(), Source::measured("a test"));
+        }
+        assert!(sheet.record().conflicts.is_empty());
+        sheet.given("P_p", "cohesion", 6.mpa(), Source::measured("a core"));
+        let said = sheet.record().conflicts;
+        assert_eq!(said.len(), 1);
+        assert!(said[0].contains("\"pore pressure\" (31 MPa) and as \"cohesion\" (6 MPa)"), "{said:?}");
     }
 
     #[test]

@@ -146,7 +146,10 @@ impl Explain for Principals {
                     let angle = line.trend.true_north().unwrap_or_default();
                     results.push(crate::frames::bearing_item(&format!("T_{n}"), &format!("trend of S_{n}"), angle));
                     results.push(Item::computed(&format!("P_{n}"), format!("plunge of S_{n}"), line.plunge));
-                    (crate::frames::three_figures(angle), fixed(line.plunge.in_deg(), 1))
+                    // A vertical line has no trend of its own.
+                    let vertical = line.plunge.in_deg() > 89.95;
+                    let trend = if vertical { "–".to_owned() } else { crate::frames::three_figures(angle) };
+                    (trend, fixed(line.plunge.in_deg(), 1))
                 }
                 None => ("any".to_owned(), "any".to_owned()),
             };

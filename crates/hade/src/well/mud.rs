@@ -90,7 +90,7 @@ impl Explain for MudPressure {
             method: Method {
                 words: "The weight of a static column from the rotary table down. Circulation adds to it, swabbing takes from it.".to_owned(),
                 formulas: vec![Formula::new("p_upright(w) = rho_upright(m) g z", "p_w = ρ_m g z")],
-                symbols: vec![("g".to_owned(), format!("{GRAVITY} m/s² (standard gravity)"))],
+                symbols: vec![("g".to_owned(), format!("standard gravity, {GRAVITY} m/s²"))],
                 references: vec![Reference::new(
                     "NIST Special Publication 811 (2008), appendix B.8 (units and standard gravity)",
                 )],

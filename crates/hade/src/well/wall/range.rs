@@ -8,6 +8,7 @@ use super::wall::{Wall, WallInputs};
 use crate::error::{Error, Result};
 use crate::units::{
     Angle, Density, Gradient, Length, Pressure, Quantity, require_between, require_not_negative, with_typed_unit,
+    with_unit,
 };
 
 /// The widths that are always shown beside the chosen one, in degrees.
@@ -69,6 +70,27 @@ pub struct RangeEnd {
     pub mud_weight: Density,
     /// What sets it.
     pub governed_by: Governs,
+}
+
+impl RangeEnd {
+    /// A number of this end as it is printed: rounded into the range, never out of it.
+    pub(super) fn inward<Q: Quantity>(self, value: Q, decimals: usize) -> String {
+        let places = 10_f64.powi(decimals as i32);
+        let number = value.shown() * places;
+        // What is a round number up to its last bits stays that number.
+        let near = 1e-6;
+        let rounded = match self.governed_by {
+            Governs::LowerShear | Governs::PorePressure => (number - near).ceil(),
+            Governs::LeastStress | Governs::Initiation | Governs::UpperShear => (number + near).floor(),
+        };
+        with_unit(rounded / places, decimals, Q::SHOWN_IN)
+    }
+
+    /// "40.18 MPa (1.390 sg, 13.62 MPa/km)", each rounded into the range.
+    pub fn words(&self) -> String {
+        let (p, w, g) = (self.inward(self.pressure, 2), self.inward(self.mud_weight, 3), self.inward(self.gradient, 2));
+        format!("{p} ({w}, {g})")
+    }
 }
 
 /// The recommended range of wall pressures. Static density and swab are held against the bottom,

@@ -50,9 +50,9 @@ impl Explain for RecommendedRange {
         for (end, at, name) in [(self.bottom, "b", "bottom"), (self.top, "t", "top")] {
             let Some(end) = end else { continue };
             results.extend([
-                Item::computed(&format!("p_{at}"), format!("{name} of the recommended range"), end.pressure),
-                Item::computed(&format!("g_{at}"), format!("{name}, gradient from the rotary table"), end.gradient),
-                Item::computed(&format!("ρ_{at}"), format!("{name}, mud weight at TVD below rotary"), end.mud_weight),
+                end_item(end, &format!("p_{at}"), format!("{name} of the recommended range"), end.pressure, 2),
+                end_item(end, &format!("g_{at}"), format!("{name}, gradient from the rotary table"), end.gradient, 2),
+                end_item(end, &format!("ρ_{at}"), format!("{name}, mud weight at TVD below rotary"), end.mud_weight, 3),
             ]);
         }
         let mut method = method::with_strength(
@@ -85,17 +85,23 @@ impl Explain for RecommendedRange {
     }
 }
 
-fn line(end: &RangeEnd) -> String {
-    format!("{} ({}, {})", end.pressure, end.mud_weight, end.gradient)
+/// The number of a text with its unit.
+fn number(text: String) -> String {
+    text.split(' ').next().unwrap_or_default().to_owned()
+}
+
+/// A number of an end, rounded into the range.
+fn end_item<Q: Quantity>(end: RangeEnd, symbol: &str, name: String, value: Q, decimals: usize) -> Item {
+    Item::new(symbol, name, Q::KIND, vec![value.si()], end.inward(value, decimals))
 }
 
 impl RecommendedRange {
     fn headline(&self) -> String {
         match (self.bottom, self.top) {
             (Some(bottom), Some(top)) if self.is_empty() => {
-                format!("no range: the bottom {} is not below the top {}", line(&bottom), line(&top))
+                format!("no range: the bottom {} is not below the top {}", bottom.words(), top.words())
             }
-            (Some(bottom), Some(top)) => format!("{} to {}", line(&bottom), line(&top)),
+            (Some(bottom), Some(top)) => format!("{} to {}", bottom.words(), top.words()),
             (None, _) => "no range: no pressure keeps failing arcs within the allowed width".to_owned(),
             (Some(_), None) => "no range: no pressure is safe against parting or shear at the top".to_owned(),
         }
@@ -182,9 +188,9 @@ impl RecommendedRange {
             };
             vec![
                 name.to_owned(),
-                fixed(end.pressure.in_mpa(), 2),
-                fixed(end.gradient.in_mpa_per_km(), 2),
-                fixed(end.mud_weight.in_sg(), 3),
+                number(end.inward(end.pressure, 2)),
+                number(end.inward(end.gradient, 2)),
+                number(end.inward(end.mud_weight, 3)),
                 end.governed_by.words().to_owned(),
             ]
         };
