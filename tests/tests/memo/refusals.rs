@@ -22,7 +22,7 @@ fn refused(cell: &str) -> String {
     notebook(folder.path(), "faulty.ipynb", &[OPENING, cell, "sheet"]);
     let output = memo(folder.path(), "faulty.ipynb", "out.pdf");
     assert!(!output.status.success(), "{}", said(&output));
-    let left: Vec<_> =
+    let mut left: Vec<_> =
         std::fs::read_dir(folder.path()).unwrap().map(|e| e.unwrap().file_name().into_string().unwrap()).collect();
     left.sort();
     assert_eq!(left, ["faulty.ipynb", "hade.toml"], "no part of a memo is left");

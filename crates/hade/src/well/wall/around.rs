@@ -152,7 +152,7 @@ impl Explain for WallAround {
         let mut results = vec![
             Item::computed("σ_θmax", "largest hoop stress at the wall, total", self.outcome.most_hoop),
             Item::computed("σ_θmin", "smallest hoop stress at the wall, total", self.outcome.least_hoop),
-            Item::computed("m", "margin UCS + q σ3' − σ1' at the worst place", self.outcome.arcs.least_margin()),
+            Item::computed("m", "margin UCS + q σ'_3 − σ'_1 at the worst place", self.outcome.arcs.least_margin()),
         ];
         if let Some(at) = self.outcome.most_hoop_at {
             results.extend(direction::items(attitude, "the largest hoop stress", "max", at));
@@ -208,16 +208,16 @@ impl WallAround {
         let cell = |p: Pressure| fixed(p.in_mpa(), 2);
         Table {
             caption:
-                "Round the wall, effective stresses (total − P_p); from 180° on it repeats, τθz with the other sign"
+                "Round the wall, effective stresses (total − P_p); from 180° on it repeats, τ_θz with the other sign"
                     .to_owned(),
             columns: vec![
                 Column::number("tool face", "°"),
                 Column::number("bearing", "°"),
                 Column::number("hoop", "MPa"),
                 Column::number("axial", "MPa"),
-                Column::number("τθz", "MPa"),
-                Column::number("σ1'", "MPa"),
-                Column::number("σ3'", "MPa"),
+                Column::number("τ_θz", "MPa"),
+                Column::number("σ'_1", "MPa"),
+                Column::number("σ'_3", "MPa"),
                 Column::number("margin", "MPa"),
             ],
             rows: self
@@ -278,15 +278,15 @@ impl WallAround {
             }
         }
         layers.extend([
-            Layer::line("σr'", Role::Quiet, radial),
-            Layer::line("σz'", Role::Second, axial),
-            Layer::line("σθ'", Role::First, hoop),
-            Layer::line("σ1'", Role::Third, largest),
+            Layer::line("σ'_r", Role::Quiet, radial),
+            Layer::line("σ'_z", Role::Second, axial),
+            Layer::line("σ'_θ", Role::First, hoop),
+            Layer::line("σ'_1", Role::Third, largest),
             Layer::line("strength", Role::Limit, bears),
         ]);
         Figure {
             caption: format!(
-                "Effective hoop (σθ'), axial (σz') and radial (σr') stress and the largest principal stress σ1' against tool face at {} in the hole, with the σ1' the rock bears there; failing arcs are shaded. {}",
+                "Effective hoop (σ'_θ), axial (σ'_z) and radial (σ'_r) stress and the largest principal stress σ'_1 against tool face at {} in the hole, with the σ'_1 the rock bears there; failing arcs are shaded. {}",
                 with_typed_unit(self.inputs.pressure),
                 direction::reference(wall.attitude)
             ),

@@ -242,7 +242,7 @@ impl Explain for FailingArcs {
         let mut inputs = self.wall.items();
         inputs.push(pressure_item(p));
         let mut results =
-            vec![Item::computed("m", "margin UCS + q σ3' − σ1' at the worst place", self.outcome.least_margin)];
+            vec![Item::computed("m", "margin UCS + q σ'_3 − σ'_1 at the worst place", self.outcome.least_margin)];
         for (arc, n) in self.arcs().into_iter().zip(1..) {
             results.extend(direction::items(attitude, &format!("the middle of arc {n}"), &n.to_string(), arc.centre));
             results.push(Item::computed(&format!("w_{n}"), format!("width of arc {n}"), arc.width));

@@ -141,7 +141,7 @@ impl Limit {
             let [a, b, c] = mode.directions.map(WallDirection::word);
             let near = if mode.turned { "nearest " } else { "" };
             let at = if self.pressure.is_none() { "at the least bad, " } else { "" };
-            format!("; {at}σ1' {near}{a}, σ2' {b}, σ3' {c}")
+            format!("; {at}σ'_1 {near}{a}, σ'_2 {b}, σ'_3 {c}")
         });
         let mark = if self.in_tension() { " (in tension)" } else { "" };
         match self.kind {

@@ -47,7 +47,7 @@ impl Explain for Limits {
         );
         method.formulas.push(crate::card::Formula::new(
             "(sigma_theta - P_p + T_0)(sigma_(z w) - P_p + T_0) = tau_(theta z)^2",
-            "parting: (σθ − P_p + T₀)(σzw − P_p + T₀) = τθz²",
+            "parting: (σ_θ − P_p + T₀)(σ_zw − P_p + T₀) = τ_θz²",
         ));
         method.references.push(Reference::new(
             "Zoback, M.D. (2007) Reservoir Geomechanics, Cambridge University Press, ch. 6, 8 and 10 (breakouts, tensile fractures at deviated holes, wellbore stability)",
@@ -114,7 +114,7 @@ impl Limits {
             (self.lower_shear.pressure(), self.lower_shear.least_bad(), self.lower_shear.short_by())
         {
             notes.push(format!(
-                "No pressure keeps the wall within its shear strength: the least bad is {least}, where the worst place still exceeds it by {short} in σ1'."
+                "No pressure keeps the wall within its shear strength: the least bad is {least}, where the worst place still exceeds it by {short} in σ'_1."
             ));
             if let (Some(lower), Some(upper)) = (self.lower_shear.own_side(), self.upper_shear.own_side()) {
                 notes.push(format!(
@@ -135,7 +135,7 @@ impl Limits {
                 && matches!(limit.kind(), LimitKind::LowerShear | LimitKind::UpperShear)
             {
                 notes.push(format!(
-                    "The {} stands in tension (σ3' < 0): the shear criterion is used beyond its range there, and rock spalls or parts first.",
+                    "The {} stands in tension (σ'_3 < 0): the shear criterion is used beyond its range there, and rock spalls or parts first.",
                     limit.kind().words()
                 ));
             }
@@ -198,9 +198,9 @@ impl Limits {
                 Column::number("pressure", "MPa"),
                 Column::number("tool face", "°"),
                 Column::number("bearing", "°"),
-                Column::number("σ1'", "MPa"),
-                Column::number("σ2'", "MPa"),
-                Column::number("σ3'", "MPa"),
+                Column::number("σ'_1", "MPa"),
+                Column::number("σ'_2", "MPa"),
+                Column::number("σ'_3", "MPa"),
                 Column::text("what happens"),
             ],
             rows: self

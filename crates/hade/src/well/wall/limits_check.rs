@@ -51,7 +51,7 @@ fn check_place(route: &ByVectors, limit: &Limit, pressure: f64) -> Vec<Check> {
     let mut checks = Vec::new();
     if let Some(effective) = limit.effective() {
         checks.push(Check::compare(
-            format!("{what}: σ1', σ2', σ3' there by eigenvalues of the whole tensor"),
+            format!("{what}: σ'_1, σ'_2, σ'_3 there by eigenvalues of the whole tensor"),
             &effective.map(Pressure::in_mpa),
             &route.effective(theta, pressure).map(|v| v * 1e-6),
             unit * 1e-9,
@@ -81,7 +81,7 @@ fn check_shear(route: &ByVectors, limit: &Limit) -> Vec<Check> {
         let beyond = if limit.kind() == LimitKind::UpperShear { nudge } else { -nudge };
         let mut checks = vec![
             Check::compare(
-                format!("{what}: σ1' − q σ3' − UCS is zero at its tool face"),
+                format!("{what}: σ'_1 − q σ'_3 − UCS is zero at its tool face"),
                 &[route.excess(theta, pressure) * 1e-6],
                 &[0.0],
                 unit * 1e-9,

@@ -10,29 +10,29 @@ pub(super) fn wall_stresses() -> Method {
     Method {
         words: "Stress at the wall of a round hole in elastic rock, from the far-field stress in the hole's axes and the pressure in the hole.".to_owned(),
         formulas: vec![
-            Formula::new("sigma_r = p", "σr = p"),
+            Formula::new("sigma_r = p", "σ_r = p"),
             Formula::new(
                 "sigma_theta = sigma_x + sigma_y - 2 (sigma_x - sigma_y) cos 2 theta - 4 tau_(x y) sin 2 theta - p",
-                "σθ = σx + σy − 2 (σx − σy) cos 2θ − 4 τxy sin 2θ − p",
+                "σ_θ = σ_x + σ_y − 2 (σ_x − σ_y) cos 2θ − 4 τ_xy sin 2θ − p",
             ),
             Formula::new(
                 "sigma_(z w) = sigma_z - nu [2 (sigma_x - sigma_y) cos 2 theta + 4 tau_(x y) sin 2 theta]",
-                "σzw = σz − ν [2 (σx − σy) cos 2θ + 4 τxy sin 2θ]",
+                "σ_zw = σ_z − ν [2 (σ_x − σ_y) cos 2θ + 4 τ_xy sin 2θ]",
             ),
             Formula::new(
                 "tau_(theta z) = 2 (-tau_(x z) sin theta + tau_(y z) cos theta)",
-                "τθz = 2 (−τxz sin θ + τyz cos θ)",
+                "τ_θz = 2 (−τ_xz sin θ + τ_yz cos θ)",
             ),
             Formula::new(
                 "sigma_(1,2) = (sigma_theta + sigma_(z w)) / 2 plus.minus sqrt(((sigma_theta - sigma_(z w)) / 2)^2 + tau_(theta z)^2)",
-                "principal stresses in the wall: (σθ + σzw) / 2 ± √(((σθ − σzw) / 2)² + τθz²)",
+                "principal stresses in the wall: (σ_θ + σ_zw) / 2 ± √(((σ_θ − σ_zw) / 2)² + τ_θz²)",
             ),
             Formula::new("sigma' = sigma - P_p", "σ' = σ − P_p"),
         ],
         symbols: vec![
-            ("σx, σy, σz, τxy, τyz, τxz".to_owned(), "components of S' in the hole's axes".to_owned()),
+            ("σ_x".to_owned(), "with σ_y, σ_z, τ_xy, τ_yz, τ_xz the components of S' in the hole's axes".to_owned()),
             ("θ".to_owned(), "tool face, clockwise from the top of the hole looking down it".to_owned()),
-            ("σzw".to_owned(), "axial stress at the wall".to_owned()),
+            ("σ_zw".to_owned(), "axial stress at the wall".to_owned()),
             ("p".to_owned(), "pressure in the hole".to_owned()),
         ],
         references: [
@@ -77,10 +77,10 @@ pub(super) fn worked(wall: &Wall, theta: f64, pressure: f64) -> Vec<Step> {
             "θ = {}°: cos 2θ = {c2}, sin 2θ = {s2}, cos θ = {c}, sin θ = {s}",
             fixed(theta.to_degrees(), 4)
         )),
-        Step::worked(format!("σr = p = {p} MPa")),
-        Step::worked(format!("σθ = {x} + {y} − 2 ({x} − {y}) ({c2}) − 4 ({xy}) ({s2}) − {p} = {} MPa", mpa(at.hoop))),
-        Step::worked(format!("σzw = {z} − {nu} [2 ({x} − {y}) ({c2}) + 4 ({xy}) ({s2})] = {} MPa", mpa(at.axial))),
-        Step::worked(format!("τθz = 2 (−({xz}) ({s}) + ({yz}) ({c})) = {} MPa", mpa(at.shear))),
+        Step::worked(format!("σ_r = p = {p} MPa")),
+        Step::worked(format!("σ_θ = {x} + {y} − 2 ({x} − {y}) ({c2}) − 4 ({xy}) ({s2}) − {p} = {} MPa", mpa(at.hoop))),
+        Step::worked(format!("σ_zw = {z} − {nu} [2 ({x} − {y}) ({c2}) + 4 ({xy}) ({s2})] = {} MPa", mpa(at.axial))),
+        Step::worked(format!("τ_θz = 2 (−({xz}) ({s}) + ({yz}) ({c})) = {} MPa", mpa(at.shear))),
         Step::worked(principal_line(at, wall.shear.pore)),
     ]
 }
@@ -104,7 +104,7 @@ pub(super) fn worked_strength(wall: &Wall, [s1, _, s3]: [f64; 3]) -> Step {
     let line = wall.shear.line;
     let mpa = |c: f64| fixed(c * 1e-6, 4);
     Step::worked(format!(
-        "UCS + q σ3' − σ1' = {} + {} · ({}) − ({}) = {} MPa",
+        "UCS + q σ'_3 − σ'_1 = {} + {} · ({}) − ({}) = {} MPa",
         mpa(line.ucs),
         fixed(line.q, 5),
         mpa(s3),
