@@ -130,7 +130,7 @@ impl Strength {
 
     pub(crate) fn formulas(self) -> Vec<Formula> {
         vec![
-            Formula::new("sigma_1' = upright(\"UCS\") + q sigma_3'", "σ'_1 = UCS + q σ'_3"),
+            Formula::new("sigma'_1 = upright(\"UCS\") + q sigma'_3", "σ'_1 = UCS + q σ'_3"),
             Formula::new("q = (1 + sin phi) / (1 - sin phi)", "q = (1 + sin φ) / (1 − sin φ)"),
             Formula::new("upright(\"UCS\") = (2 c cos phi) / (1 - sin phi)", "UCS = 2 c cos φ / (1 − sin φ)"),
         ]

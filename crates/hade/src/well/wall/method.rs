@@ -30,7 +30,7 @@ pub(super) fn wall_stresses() -> Method {
             Formula::new("sigma' = sigma - P_p", "σ' = σ − P_p"),
         ],
         symbols: vec![
-            ("σ_x".to_owned(), "with σ_y, σ_z, τ_xy, τ_yz, τ_xz the components of S' in the hole's axes".to_owned()),
+            ("σ_x".to_owned(), "and σ_y, σ_z, τ_xy, τ_yz, τ_xz: components of S' in the hole's axes".to_owned()),
             ("θ".to_owned(), "tool face, clockwise from the top of the hole looking down it".to_owned()),
             ("σ_zw".to_owned(), "axial stress at the wall".to_owned()),
             ("p".to_owned(), "pressure in the hole".to_owned()),
