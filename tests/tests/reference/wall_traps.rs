@@ -49,7 +49,7 @@ fn mpa(p: Option<Pressure>) -> f64 {
     p.expect("a pressure").in_mpa()
 }
 
-/// Trap 1: shear limits the pressure from above as well. The recommended top is S3 here.
+/// Shear limits the pressure from above as well. The recommended top is S3 here.
 #[test]
 fn shear_is_the_upper_limit_before_parting() {
     let wall = Case { inclination: 35.0, hole_azimuth: 70.0, ..state_b() }.wall();
@@ -69,7 +69,7 @@ fn shear_is_the_upper_limit_before_parting() {
     assert!(agree(top.pressure.in_mpa(), 40.0, 1e-9));
 }
 
-/// Trap 2: the axial stress may exceed the hoop stress; assuming hoop > axial > radial gives 24.340.
+/// The axial stress may exceed the hoop stress; assuming hoop > axial > radial gives 24.340.
 #[test]
 fn the_order_of_wall_stresses_is_looked_up() {
     let limits = Case { sv: 75.0, sh_max: 44.0, sh_min: 40.0, ..state_b() }.wall().limits();
@@ -78,7 +78,7 @@ fn the_order_of_wall_stresses_is_looked_up() {
     assert_eq!(mode.directions, [WallDirection::Axial, WallDirection::Hoop, WallDirection::Radial]);
 }
 
-/// Trap 3: the worst excess at 0, 40 and 80 MPa is +130.4, −17.1, +130.4.
+/// The worst excess at 0, 40 and 80 MPa is +130.4, −17.1, +130.4.
 #[test]
 fn the_margin_falls_on_both_sides() {
     let wall = state_b().wall();
@@ -88,7 +88,7 @@ fn the_margin_falls_on_both_sides() {
     }
 }
 
-/// Trap 4: an arc through the top of the hole is one arc.
+/// An arc through the top of the hole is one arc.
 #[test]
 fn an_arc_through_zero_is_centred_there() {
     let wall =
@@ -99,7 +99,7 @@ fn an_arc_through_zero_is_centred_there() {
     assert_printed("half width", 0.5 * arc.width.in_deg(), "39.364");
 }
 
-/// Trap 5: in a vertical hole the tool face counts from the azimuth that was given.
+/// In a vertical hole the tool face counts from the azimuth that was given.
 #[test]
 fn the_same_vertical_hole_under_two_azimuths() {
     for (hole_azimuth, toolface) in [(0.0, 120.0), (123.0, 177.0)] {
@@ -109,7 +109,7 @@ fn the_same_vertical_hole_under_two_azimuths() {
     }
 }
 
-/// Traps 24 and 25: parting needs the least principal stress in the wall, not the hoop alone (which
+/// Parting needs the least principal stress in the wall, not the hoop alone (which
 /// gives 50.552), and through the axial stress Poisson's ratio has a say; not in a vertical hole in a
 /// stress with a vertical axis.
 #[test]
@@ -141,7 +141,7 @@ fn parting_is_a_principal_stress_and_poissons_ratio_counts() {
     assert!(agree(vertical(0.0), vertical(0.4), 1e-12));
 }
 
-/// Trap 34: a limit may be below the pore pressure or negative; it is reported as it is, and the
+/// A limit may be below the pore pressure or negative; it is reported as it is, and the
 /// range says that the pore pressure governs.
 #[test]
 fn strong_rock_has_limits_below_the_pore_pressure() {

@@ -218,7 +218,7 @@ mod tests {
             outside.card().explanation.notes
         );
         assert!(stress(40.0).frictional_limit(20.mpa(), 0.6).unwrap().is_within());
-        // Effective S3 of zero or less has no ratio (trap 35).
+        // Effective S3 of zero or less has no ratio.
         assert!(stress(18.0).frictional_limit(20.mpa(), 0.6).is_err());
     }
 }

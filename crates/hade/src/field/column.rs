@@ -23,7 +23,7 @@ pub struct DensityColumn {
     /// The depth of the sea above the rock; zero on land. Counted with 1025 kg/m³.
     pub water_depth: Length,
     /// The vertical stress at the first depth without the sea: the weight of the rock above the
-    /// first density. It is never assumed to be zero (traps: a log begins below the surface).
+    /// first density. It is never assumed to be zero (a log begins below the surface).
     pub stress_at_top: Pressure,
 }
 
@@ -107,7 +107,7 @@ mod tests {
         assert!(
             refused(DensityColumn { tvd: vec![100.m(), 100.m(), 400.m()], ..column() }).contains("does not lie below")
         );
-        // g/cm³ taken for kg/m³ (traps.md 30).
+        // g/cm³ taken for kg/m³ (a slip of the unit).
         assert!(
             refused(DensityColumn { density: vec![2.0.kg_m3(), 2.2.kg_m3(), 2.4.kg_m3()], ..column() })
                 .contains("2 kg/m³")

@@ -384,7 +384,7 @@ mod tests {
         assert!(Stress::from_horizontals(grid).unwrap_err().to_string().contains("with_convergence"));
     }
 
-    /// Lines have no sign (trap 8): the other end of a line gives the same tensor.
+    /// Lines have no sign: the other end of a line gives the same tensor.
     #[test]
     fn either_end_of_a_measured_line_gives_the_same_tensor() {
         let measured = [(60.mpa(), line(35.0, 12.0)), (40.mpa(), line(127.0, 8.0)), (20.mpa(), line(250.0, 75.5))];

@@ -73,7 +73,7 @@ mod tests {
 
     #[test]
     fn tiny_doglegs_and_wrapped_azimuths() {
-        // traps.md 20: an arc cosine loses 2e-7° altogether.
+        // An arc cosine loses 2e-7° altogether.
         let tiny = dogleg([0.0, 0.0], [2e-7_f64.to_radians(), 0.0]).to_degrees();
         assert!((tiny - 2e-7).abs() < 1e-16, "{tiny:e}");
         // 359.9° to 0.1° in a horizontal hole is 0.2°, not 359.8°.

@@ -82,7 +82,7 @@ mod tests {
         Attitude { inclination: i.deg(), azimuth: Azimuth::from_true_north(a.deg()) }
     }
 
-    /// traps.md 5: the same hole, azimuth called 0 or 123.
+    /// The same hole, azimuth called 0 or 123.
     #[test]
     fn a_vertical_hole_counts_from_its_azimuth() {
         let at = |a: f64, toolface: f64| bearing(hole(0.0, a), toolface.to_radians()).unwrap().in_deg();

@@ -116,7 +116,7 @@ mod tests {
     use crate::units::{Pressure, Units};
 
     fn case(poisson: f64) -> Parting {
-        // traps.md 24 and 25.
+        // Parting by the hoop stress alone would come too high; Poisson's ratio enters by the axial stress.
         let mpa = Pressure::mpa;
         let s = Stress::from_components(Components {
             nn: mpa(50.0),
