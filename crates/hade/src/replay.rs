@@ -5,8 +5,8 @@ use crate::card::{Card, Check, Data, Explain, Json};
 use crate::error::{Error, Result};
 use crate::faults::FrictionLimit;
 use crate::field::Overburden;
-use crate::frames::{Azimuth, Borehole, Chain, Geographic};
-use crate::stress::{MohrCircles, Principals, Stress, Traction};
+use crate::frames::{Azimuth, CarriedLine, Geographic, Route};
+use crate::stress::{CarriedStress, CarriedTraction, MohrCircles, Principals, Stress, Traction};
 use crate::well::{FailingArcs, Limits, MudPressure, Position, RecommendedRange, SurveyTable, WallAround, WallStress};
 
 /// A kind of card: how it is computed and checked.
@@ -56,9 +56,11 @@ const fn kind<E: Explain>() -> Kind {
 /// Every kind of card there is. A test fails when one is missing.
 pub const KINDS: &[Kind] = &[
     kind::<Azimuth>(),
-    kind::<Chain>(),
+    kind::<Route>(),
+    kind::<CarriedLine>(),
     kind::<Stress<Geographic>>(),
-    kind::<Stress<Borehole>>(),
+    kind::<CarriedStress>(),
+    kind::<CarriedTraction>(),
     kind::<Principals>(),
     kind::<Traction>(),
     kind::<MohrCircles>(),
@@ -160,6 +162,7 @@ mod tests {
         let plane = Plane { strike: Azimuth::from_true_north(45.deg()), dip: 60.deg() };
         let sh = chain.carry(&s);
         let mut cards = well_samples(sh);
+        cards.extend(frame_samples(s, plane));
         cards.extend([
             breakout.perpendicular().card(),
             s.card(),
@@ -184,6 +187,39 @@ mod tests {
             s.mohr().effective(31.mpa()).unwrap().with_plane(plane).unwrap().card(),
         ]);
         cards
+    }
+
+    /// Stresses stated in instruments' axes, put together, and carried on.
+    fn frame_samples(s: Stress, plane: Plane) -> Vec<Card> {
+        let line = |t: f64, p: f64| Line { trend: Azimuth::from_true_north(t.deg()), plunge: p.deg() };
+        let given =
+            AxisComponents { xx: 41.mpa(), yy: 30.mpa(), zz: 25.mpa(), xy: 4.mpa(), yz: (-3).mpa(), xz: 2.mpa() };
+        let cell = Attitude { inclination: 95.deg(), azimuth: Azimuth::from_true_north(40.deg()) }.named("KC-2");
+        let to_cell = cell.chain().unwrap();
+        let in_cell = Stress::from_components_in(&to_cell, given).unwrap().named("overcoring in KC-2");
+        let grid = LocalAxes::mine_grid_with_up("model grid", Azimuth::from_true_north(12.deg())).unwrap();
+        let to_grid = grid.chain().unwrap();
+        let in_grid = Stress::from_tension_positive_in(&to_grid, given).unwrap();
+        let two_lines = LocalAxes::along_lines("cell axes", line(35.0, 12.0), line(130.0, 20.0)).unwrap();
+        let overcored = to_cell.back().carry(&in_cell);
+        let mean = Stress::weighted_mean(&[(2.0, s), (1.0, overcored)]).unwrap().named("mean");
+        let wall = to_cell.then(&cell.wall_chain(25.deg()).unwrap()).unwrap();
+        let to_fault = plane.chain_named("F1").unwrap();
+        let t = s.on(plane).unwrap();
+        vec![
+            overcored.card(),
+            to_grid.back().carry(&in_grid).card(),
+            mean.card(),
+            s.scale(1.5).card(),
+            in_cell.card(),
+            wall.carry(&s).card(),
+            two_lines.chain().unwrap().card(),
+            grid.chain().unwrap().back().then(&wall).unwrap().card(),
+            to_fault.carry(&mean).card(),
+            to_fault.carry(&t).card(),
+            to_cell.carry(&line(123.0, 45.0).direction().unwrap()).card(),
+            line(123.0, -45.0).direction().unwrap().card(),
+        ]
     }
 
     fn well_samples(sh: Stress<Borehole>) -> Vec<Card> {

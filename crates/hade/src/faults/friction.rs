@@ -152,7 +152,7 @@ impl Explain for FrictionLimit {
             ));
         }
         Explanation {
-            title: "Stress against the frictional limit".to_owned(),
+            title: format!("Stress{} against the frictional limit", stress.of_name()),
             headline: format!("ratio {} of at most {}: {verdict} the limit", fixed(self.outcome.ratio, 3), fixed(self.outcome.allowed, 3)),
             inputs: vec![
                 stress.item("S", "stress in north, east, down"),

@@ -2,9 +2,9 @@
 
 use serde::{Deserialize, Serialize};
 
-use super::azimuth::{TRUE_AZIMUTH, bearing};
+use super::azimuth::{TRUE_AZIMUTH, bearing, three_figures};
 use super::vector::{M3, cross};
-use super::{Azimuth, Chain, Name};
+use super::{Axes, Azimuth, Borehole, Chain, Geographic, Name, WallAxes};
 use crate::card::Item;
 use crate::error::Result;
 use crate::units::{Angle, Quantity, require_between};
@@ -38,8 +38,16 @@ impl Attitude {
     ///
     /// # Errors
     /// When the inclination is outside 0–180° or the azimuth has no true north.
-    pub fn chain(self) -> Result<Chain> {
-        Chain::to_borehole(self, None)
+    pub fn chain(self) -> Result<Chain<Geographic, Borehole>> {
+        Chain::between(Axes::Geographic, Axes::Hole { attitude: self, name: None })
+    }
+
+    /// The turn from this hole's axes to those of its wall at a tool face: radial, around, along.
+    ///
+    /// # Errors
+    /// As [`Attitude::chain`], or when the tool face is not a finite number.
+    pub fn wall_chain(self, tool_face: Angle) -> Result<Chain<Borehole, WallAxes>> {
+        wall_chain(self, None, tool_face)
     }
 
     /// Inclination and true azimuth in radians, checked.
@@ -59,19 +67,37 @@ impl Attitude {
         self.inclination.si().sin().abs() < NEAR_VERTICAL.to_radians().sin()
     }
 
-    /// Inclination and azimuth as inputs or results.
-    pub(crate) fn items(self) -> Vec<Item> {
+    /// Inclination and azimuth as inputs or results. The suffix tells two holes apart.
+    pub(crate) fn items(self, suffix: &str) -> Vec<Item> {
+        let (i, a) = (format!("i{suffix}"), format!("a{suffix}"));
         let azimuth = match self.azimuth.true_north() {
-            Ok(a) => Item::new("a", "azimuth of the hole", TRUE_AZIMUTH, vec![a.si()], bearing(a)),
-            Err(_) => self.azimuth.item("a", "azimuth of the hole"),
+            Ok(angle) => Item::new(&a, "azimuth of the hole", TRUE_AZIMUTH, vec![angle.si()], bearing(angle)),
+            Err(_) => self.azimuth.item(&a, "azimuth of the hole"),
         };
-        vec![Item::typed("i", "inclination of the hole from vertical", self.inclination), azimuth]
+        vec![Item::typed(&i, "inclination of the hole from vertical", self.inclination), azimuth]
+    }
+
+    /// From where tool faces count in this hole, in one sentence.
+    pub(crate) fn tool_face_reference(self) -> String {
+        let a = self.azimuth.true_north().unwrap_or_default();
+        if !self.is_vertical() {
+            return "Tool faces count clockwise from the top of the hole, looking along the hole away from its mouth."
+                .to_owned();
+        }
+        if self.inclination.in_deg() < 90.0 {
+            return format!("The hole is vertical: tool faces count clockwise from azimuth {}°.", three_figures(a));
+        }
+        let opposite = a + Angle::deg(180.0);
+        format!(
+            "The hole points straight up: tool faces count from azimuth {}°, clockwise looking up the hole (anticlockwise seen from above).",
+            three_figures(opposite)
+        )
     }
 
     /// "inclination 42.0°, azimuth 120.0°".
     pub fn words(self) -> String {
         let azimuth = self.azimuth.true_north().unwrap_or(self.azimuth.measured());
-        format!("inclination {:.1}, azimuth {}°", self.inclination, super::azimuth::three_figures(azimuth))
+        format!("inclination {:.1}, azimuth {}°", self.inclination, three_figures(azimuth))
     }
 }
 
@@ -80,9 +106,21 @@ impl NamedAttitude {
     ///
     /// # Errors
     /// As [`Attitude::chain`].
-    pub fn chain(self) -> Result<Chain> {
-        Chain::to_borehole(self.attitude, Some(self.name))
+    pub fn chain(self) -> Result<Chain<Geographic, Borehole>> {
+        Chain::between(Axes::Geographic, Axes::Hole { attitude: self.attitude, name: Some(self.name) })
     }
+
+    /// The turn from this hole's axes to those of its wall at a tool face: radial, around, along.
+    ///
+    /// # Errors
+    /// As [`Attitude::wall_chain`].
+    pub fn wall_chain(self, tool_face: Angle) -> Result<Chain<Borehole, WallAxes>> {
+        wall_chain(self.attitude, Some(self.name), tool_face)
+    }
+}
+
+fn wall_chain(attitude: Attitude, name: Option<Name>, tool_face: Angle) -> Result<Chain<Borehole, WallAxes>> {
+    Chain::between(Axes::Hole { attitude, name }, Axes::Wall { attitude, name, tool_face })
 }
 
 /// Below this inclination (degrees, from vertical up or down) the top of the hole is not a useful

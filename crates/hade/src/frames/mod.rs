@@ -9,6 +9,9 @@
 //!   hole h = (cos i cos a, cos i sin a, −sin i); y = its right r = (−sin a, cos a, 0); z = along
 //!   the hole, down, t = (sin i cos a, sin i sin a, cos i). Tool face θ clockwise from h looking
 //!   down the hole: direction = cos θ h + sin θ r. At i = 0 the azimuth given stays the reference.
+//! - **Wall** of a hole at tool face θ: radial = cos θ h + sin θ r, around = −sin θ h + cos θ r, along t.
+//! - **Fault**: along strike s, down dip d, normal n = s × d pointing down into the footwall.
+//! - **Local**: what the user states, a mine grid or two lines.
 //! - A **turn** is a matrix Q whose rows are the new axes in the old frame: v' = Q v, S' = Q S Qᵀ.
 //!
 //! Nothing here assumes a north: an azimuth from magnetic or grid north must be corrected before
@@ -19,18 +22,27 @@ mod axes;
 mod azimuth;
 mod chain;
 mod datum;
+mod direction;
+mod frame;
 mod line;
+mod local;
 mod name;
 mod plane;
+mod turn;
 pub(crate) mod vector;
 
 pub use attitude::{Attitude, NamedAttitude};
-pub use axes::{Axis, Borehole, FaultAxes, Frame, Geographic, Local, WallAxes};
+pub use axes::Axes;
 pub(crate) use azimuth::three_figures;
 pub use azimuth::{Azimuth, North};
-pub use chain::{Chain, ChainInputs, Turn};
-pub(crate) use chain::{bearing_item, frame_words};
+pub(crate) use chain::bearing_item;
+pub use chain::{CarriedBy, Chain, ChainInputs, Route};
 pub use datum::{Datum, DatumTie, Depth};
+pub(crate) use direction::chain_card;
+pub use direction::{CarriedLine, Direction, DirectionInputs};
+pub use frame::{Axis, Borehole, FaultAxes, Frame, Geographic, Local, Turned, WallAxes};
 pub use line::Line;
+pub use local::LocalAxes;
 pub use name::Name;
 pub use plane::Plane;
+pub use turn::Turn;

@@ -51,3 +51,7 @@ pub fn wrap(a: f64) -> f64 {
     let w = a.rem_euclid(full);
     if w >= full { 0.0 } else { w }
 }
+/// Q v, rows of Q the new axes in the old frame.
+pub fn apply(q: &M3, v: V3) -> V3 {
+    [dot(q[0], v), dot(q[1], v), dot(q[2], v)]
+}

@@ -79,26 +79,42 @@ impl Sheet {
         replace_or_push(&mut self.assumptions, Assumption { words: words.to_owned(), basis }, |a| a.words == words);
     }
 
-    /// Adds a result, after the results it stands on that are not on the sheet yet.
+    /// Adds a result, after the results it stands on that are not on the sheet yet. A result of the
+    /// same kind and title is replaced where it stands; where its inputs were others, the memo of a
+    /// clean run says so.
     pub fn add<E: Explain>(&mut self, result: &E) {
-        for card in result.upstream() {
+        let card = result.card();
+        let mut place = self.place_of(&card).unwrap_or(self.entries.len());
+        for below in result.upstream() {
             let known =
-                self.cards().any(|c| c.kind == card.kind && c.outcome == card.outcome && c.inputs == card.inputs);
+                self.cards().any(|c| c.kind == below.kind && c.outcome == below.outcome && c.inputs == below.inputs);
             if !known {
-                self.put(card, true);
+                // One with other numbers may stand under another result; if not, the record drops it.
+                self.entries.insert(place, Written::Card { card: Box::new(below), by_sheet: true });
+                place += 1;
             }
         }
-        self.put(result.card(), false);
+        let Some(Written::Card { card: old, by_sheet }) =
+            self.place_of(&card).and_then(|old| self.entries.get_mut(old))
+        else {
+            self.entries.push(Written::Card { card: Box::new(card), by_sheet: false });
+            return;
+        };
+        if !*by_sheet && old.inputs != card.inputs {
+            let conflict = format!(
+                "the result \"{}\" is added twice with different inputs, and only the second is kept; to keep both, name their stresses with .named(\"…\")",
+                card.title()
+            );
+            replace_or_push(&mut self.conflicts, conflict.clone(), |c| *c == conflict);
+        }
+        (**old, *by_sheet) = (card, false);
     }
 
-    fn put(&mut self, card: Card, by_sheet: bool) {
-        let (kind, title) = (card.kind.clone(), card.title().to_owned());
-        let written = Written::Card { card: Box::new(card), by_sheet };
-        replace_or_push(
-            &mut self.entries,
-            written,
-            |e| matches!(e, Written::Card { card, .. } if card.kind == kind && card.title() == title),
-        );
+    /// The place of a result of this kind and title.
+    fn place_of(&self, card: &Card) -> Option<usize> {
+        self.entries.iter().position(
+            |e| matches!(e, Written::Card { card: old, .. } if old.kind == card.kind && old.title() == card.title()),
+        )
     }
 
     fn cards(&self) -> impl Iterator<Item = &Card> {
@@ -349,6 +365,26 @@ mod tests {
         let again = Record::from_json(&record.to_json().unwrap()).unwrap();
         assert_eq!(again, record);
         assert_eq!(again.to_json().unwrap(), record.to_json().unwrap());
+    }
+
+    /// Two stresses without names have cards of one title; with names both stay, each over its own
+    /// steps.
+    #[test]
+    fn two_results_of_one_title_are_said_and_names_keep_them_apart() {
+        let mut sheet = Sheet::new("test");
+        let (a, b) = (sheet_with_stress(&mut sheet, 66.9), sheet_with_stress(&mut sheet, 60.0));
+        sheet.add(&a.principals());
+        sheet.add(&b.principals());
+        assert!(sheet.record().conflicts.iter().any(|c| c.contains("\"Principal stresses\" is added twice")));
+        let mut sheet = Sheet::new("test");
+        let (a, b) = (a.named("the log"), b.named("the cell"));
+        sheet.add(&a.principals());
+        sheet.add(&b.principals());
+        let record = sheet.record();
+        assert_eq!(record.conflicts, Vec::<String>::new());
+        let kinds: Vec<_> = record.cards().iter().map(|(c, _)| c.title().to_owned()).collect();
+        assert_eq!(kinds.len(), 5, "{kinds:?}");
+        assert!(kinds.contains(&"Principal stresses of the cell".to_owned()), "{kinds:?}");
     }
 
     #[test]

@@ -3,88 +3,73 @@
 use serde::{Deserialize, Serialize};
 
 use super::Stress;
-use super::made::Made;
 use super::tensor::Tensor;
 use crate::card::{Card, Check, Explain, Explanation, Formula, Item, Method, Reference, Step};
-use crate::error::Result;
-use crate::frames::vector::dot;
-use crate::frames::{Attitude, Borehole, Chain, Frame, Geographic, Name};
+use crate::error::{Error, Result};
+use crate::frames::vector::{M3, dot};
+use crate::frames::{Axes, CarriedBy, Chain, Frame, Geographic, Turned, chain_card};
 
-impl Chain {
-    /// Carries a geographic stress to the hole: S' = Q S Qᵀ.
-    pub fn carry(&self, s: &Stress<Geographic>) -> Stress<Borehole> {
-        Stress::of(s.tensor.turned(&self.matrix()), s.made, Some((s.tensor, self.attitude(), self.name())))
-    }
+impl<From: Frame, To: Frame> CarriedBy<From, To> for Stress<From> {
+    type Carried = Stress<To>;
 
-    /// The way back to the geographic frame.
-    pub fn back(&self) -> Back {
-        Back { chain: *self }
+    /// S' = Q S Qᵀ. A stress knows the axes it is in and is always turned out of those; what was
+    /// carried keeps the geographic tensor it came from, so that there and back loses nothing.
+    fn carried_by(&self, chain: &Chain<From, To>) -> Stress<To> {
+        let behind = self.behind();
+        match chain.to() {
+            Axes::Geographic => Stress::of(behind.tensor, self.made, None),
+            axes => Stress::of(into(&behind, axes, chain.to_rows()), self.made, Some((behind.tensor, axes))),
+        }
+        .with_label(self.label)
     }
 }
 
-/// The turn from a borehole frame back to the geographic one.
+/// The tensor in some axes. Where it was stated in those, it is what was stated, to the last bit.
+fn into(s: &Stress<Geographic>, axes: Axes, rows: &M3) -> Tensor {
+    s.stated_in(axes).unwrap_or_else(|| s.tensor.turned(rows))
+}
+
+/// A stress in some axes, whatever their kind.
 #[derive(Clone, Copy, Debug, PartialEq)]
-pub struct Back {
-    chain: Chain,
+pub struct CarriedStress {
+    inputs: CarriedInputs,
+    tensor: Tensor,
 }
 
-impl Back {
-    /// Carries a stress from the hole's axes back: S = Qᵀ S' Q. A stress knows the hole it is in,
-    /// and is always turned back by that hole's own attitude.
-    pub fn carry(&self, s: &Stress<Borehole>) -> Stress<Geographic> {
-        let q = match s.attitude().map(|attitude| Chain::to_borehole(attitude, None)) {
-            Some(Ok(own)) => own.matrix(),
-            _ => self.chain.matrix(),
-        };
-        let tensor = s.tensor.turned(&crate::frames::vector::transpose(&q));
-        Stress::of(tensor, Made::Combined, None)
-    }
-}
-
-/// The inputs of a carried stress.
+/// The inputs of a carried stress: the geographic one, and the axes it is carried to.
 #[derive(Clone, Copy, Debug, PartialEq, Serialize, Deserialize)]
 pub struct CarriedInputs {
     stress: Stress<Geographic>,
-    attitude: Attitude,
-    name: Option<Name>,
+    axes: Axes,
 }
 
-impl Explain for Stress<Borehole> {
+impl Explain for CarriedStress {
     const KIND: &'static str = "carried-stress";
-    type Inputs = Option<CarriedInputs>;
+    const VERSION: u32 = 2;
+    type Inputs = CarriedInputs;
     type Outcome = Stress6;
 
-    fn compute(inputs: Option<CarriedInputs>) -> Result<Self> {
-        let Some(CarriedInputs { stress, attitude, name }) = inputs else {
-            return Err(crate::error::Error::undeclared(
-                "A stress in borehole axes names no hole",
-                "carry it there with a chain.",
-            ));
-        };
-        Ok(Chain::to_borehole(attitude, name)?.carry(&stress))
+    fn compute(inputs: CarriedInputs) -> Result<Self> {
+        Ok(CarriedStress { inputs, tensor: into(&inputs.stress, inputs.axes, &inputs.axes.matrix()?) })
     }
-    fn inputs(&self) -> Option<CarriedInputs> {
-        self.carried.map(|(geographic, attitude, name)| CarriedInputs {
-            stress: Stress::of(geographic, self.made, None),
-            attitude,
-            name,
-        })
+    fn inputs(&self) -> CarriedInputs {
+        self.inputs
     }
     fn outcome(&self) -> Stress6 {
         Stress6(self.tensor)
     }
 
-    /// The tensor rebuilt from dot products of the hole's axis vectors with the traction on each:
-    /// S'_jk = e_j · (S e_k), with e from their definitions, not from the chain's matrix.
-    fn check(inputs: &Option<CarriedInputs>, outcome: &Stress6) -> Vec<Check> {
-        let Some(CarriedInputs { stress, attitude, .. }) = inputs else { return Vec::new() };
-        let Ok(axes) = attitude.matrix() else { return Vec::new() };
+    /// The tensor rebuilt from dot products of the axis vectors with the traction on each: S'_jk =
+    /// e_j · (S e_k), with e from their definitions, not from the chain's matrix.
+    fn check(inputs: &CarriedInputs, outcome: &Stress6) -> Vec<Check> {
+        let CarriedInputs { stress, axes } = inputs;
+        let Ok(axes) = axes.by_definition() else { return Vec::new() };
         let rebuilt = |j: usize, k: usize| dot(axes[j], stress.tensor.times(axes[k]));
         let other = [rebuilt(0, 0), rebuilt(1, 1), rebuilt(2, 2), rebuilt(0, 1), rebuilt(1, 2), rebuilt(0, 2)];
         let scale = stress.tensor.largest().max(1.0);
         let mpa = |c: f64| c * 1e-6;
         let mut checks = vec![Check::compare(
-            "S' rebuilt from dot products of the hole's axis vectors",
+            "S' rebuilt from dot products of the new axis vectors",
             &outcome.0.0.map(mpa),
             &other.map(mpa),
             scale * 1e-12 * 1e-6,
@@ -102,26 +87,33 @@ impl Explain for Stress<Borehole> {
     }
 
     fn explain(&self) -> Explanation {
-        let Some((geographic, attitude, name)) = self.carried else { return Explanation::default() };
-        let s: Stress<Geographic> = Stress::of(geographic, self.made, None);
-        let place = name.map_or_else(|| attitude.words(), |n| n.to_string());
-        let q = Chain::to_borehole(attitude, name).map(|chain| chain.matrix()).unwrap_or_default();
+        let CarriedInputs { stress, axes } = self.inputs;
+        let place = axes.title();
+        let q = axes.matrix().unwrap_or_default();
+        let names = axes.axis_names().join(", ");
+        let item = Item::new(
+            "S'",
+            format!("stress in {place} ({})", axis_legend(axes)),
+            format!("stress in {}", axes.kind()),
+            self.tensor.0.to_vec(),
+            self.tensor.words(axes.letters()),
+        );
         Explanation {
-            title: format!("Stress in the borehole axes of {place}"),
-            headline: self.item("S'", "").shown,
+            title: format!("Stress{} in {place}", stress.of_name()),
+            headline: item.shown.clone(),
             inputs: vec![
-                s.item("S", "stress in north, east, down"),
+                stress.item("S", "stress in north, east, down"),
                 Item::new(
                     "Q",
-                    "turn from geographic to borehole axes",
+                    format!("turn from north, east, down to {place}"),
                     "turn",
                     q.as_flattened().to_vec(),
                     "3 × 3 matrix",
                 ),
             ],
-            results: vec![self.item("S'", "stress in borehole axes (x top of hole, y right, z along the hole)")],
+            results: vec![item],
             method: Method {
-                words: "The tensor is turned into the hole's axes.".to_owned(),
+                words: "The tensor is turned into the new axes.".to_owned(),
                 formulas: vec![Formula::new("S' = Q S Q^upright(T)", "S' = Q S Qᵀ")],
                 references: vec![Reference::new(
                     "Brady, B.H.G. and Brown, E.T. (2004) Rock Mechanics for Underground Mining, 3rd ed., Kluwer, ch. 2 (stress transformation)",
@@ -129,9 +121,9 @@ impl Explain for Stress<Borehole> {
                 ..Method::default()
             },
             steps: vec![
-                Step::matrix("S", &s.rows_in_mpa(), 4, "MPa", "north, east, down"),
-                Step::matrix("Q", &q, 6, "", "rows: top of hole, right, along the hole"),
-                Step::matrix("S'", &self.rows_in_mpa(), 4, "MPa", "top of hole, right, along the hole"),
+                Step::matrix("S", &stress.rows_in_mpa(), 4, "MPa", "north, east, down"),
+                Step::matrix("Q", &q, 6, "", &format!("rows: {names}")),
+                Step::matrix("S'", &self.tensor.scale(1e-6).rows(), 4, "MPa", &names),
             ],
             topics: vec!["rotation".to_owned(), "stress".to_owned()],
             ..Explanation::default()
@@ -139,14 +131,51 @@ impl Explain for Stress<Borehole> {
     }
 
     fn upstream(&self) -> Vec<Card> {
-        let Some(CarriedInputs { stress, attitude, name }) = self.inputs() else { return Vec::new() };
+        let CarriedInputs { stress, axes } = self.inputs;
         let mut cards = stress.upstream();
         cards.extend(stress.stated());
-        if let Ok(chain) = Chain::to_borehole(attitude, name) {
-            cards.extend(chain.upstream());
-            cards.push(chain.card());
-        }
+        cards.extend(chain_card(axes));
         cards
+    }
+}
+
+/// "x top of hole, y right, z along the hole".
+fn axis_legend(axes: Axes) -> String {
+    let named: Vec<String> =
+        axes.letters().iter().zip(axes.axis_names()).map(|(letter, name)| format!("{letter} {name}")).collect();
+    named.join(", ")
+}
+
+impl<F: Turned> Explain for Stress<F> {
+    const KIND: &'static str = CarriedStress::KIND;
+    const VERSION: u32 = CarriedStress::VERSION;
+    type Inputs = Option<CarriedInputs>;
+    type Outcome = Stress6;
+
+    fn compute(inputs: Option<CarriedInputs>) -> Result<Self> {
+        let Some(inputs) = inputs.filter(|i| i.axes.kind() == F::NAME) else {
+            return Err(Error::undeclared(
+                format!("A stress in {} does not say which", F::NAME),
+                "carry it there with a chain.",
+            ));
+        };
+        let CarriedStress { inputs: CarriedInputs { stress, axes }, tensor } = CarriedStress::compute(inputs)?;
+        Ok(Stress::of(tensor, stress.made, Some((stress.tensor, axes))).with_label(stress.label))
+    }
+    fn inputs(&self) -> Option<CarriedInputs> {
+        self.carried.map(|(_, axes)| CarriedInputs { stress: self.behind(), axes })
+    }
+    fn outcome(&self) -> Stress6 {
+        Stress6(self.tensor)
+    }
+    fn check(inputs: &Option<CarriedInputs>, outcome: &Stress6) -> Vec<Check> {
+        inputs.as_ref().map(|inputs| CarriedStress::check(inputs, outcome)).unwrap_or_default()
+    }
+    fn explain(&self) -> Explanation {
+        self.inputs().map(|inputs| CarriedStress { inputs, tensor: self.tensor }.explain()).unwrap_or_default()
+    }
+    fn upstream(&self) -> Vec<Card> {
+        self.inputs().map(|inputs| CarriedStress { inputs, tensor: self.tensor }.upstream()).unwrap_or_default()
     }
 }
 

@@ -4,12 +4,14 @@ use serde::{Deserialize, Serialize};
 
 use super::Stress;
 use super::carried::Stress6;
+use super::combined::{self, Parts};
 use super::horizontals::Horizontals;
+use super::in_axes::{self, AxisComponents};
 use super::polar::{by_singular_values, nearest_orthonormal};
 use super::tensor::Tensor;
 use crate::card::{Card, Check, Explain, Explanation, Formula, Item, Method, Reference, Step};
 use crate::error::{Error, Result};
-use crate::frames::{Geographic, Line};
+use crate::frames::{Axes, Geographic, Line, Name, chain_card};
 use crate::units::{Pressure, Quantity, fixed};
 
 /// The six components of a stress in north, east, down.
@@ -45,8 +47,20 @@ pub enum Made {
         /// Magnitude and line of each.
         measured: [(Pressure, Line); 3],
     },
-    /// By adding or scaling, or by carrying back from a hole.
-    Combined,
+    /// From six components in the axes of a hole, a fault or an instrument.
+    InAxes {
+        /// The axes.
+        axes: Axes,
+        /// The components.
+        components: AxisComponents,
+        /// Whether tension counted positive, so that the signs were turned.
+        tension_positive: bool,
+    },
+    /// By adding or scaling.
+    Combined {
+        /// What was added, as far as the program remembers.
+        parts: Option<Parts>,
+    },
 }
 
 impl Components {
@@ -112,9 +126,16 @@ impl Stress<Geographic> {
         Ok(Stress::of(tensor, Made::Principals { measured }, None))
     }
 
-    /// Its own card, when the tensor was stated (and not made by adding).
+    /// Its own card, when it is known how the tensor was made.
     pub(crate) fn stated(&self) -> Option<Card> {
-        (self.made != Made::Combined && self.carried.is_none()).then(|| self.card())
+        (!matches!(self.made, Made::Combined { parts: None })).then(|| self.card())
+    }
+
+    /// Everything it stands on, and its own card.
+    pub(crate) fn upstream_with_own(&self) -> Vec<Card> {
+        let mut cards = self.upstream();
+        cards.extend(self.stated());
+        cards
     }
 }
 
@@ -123,30 +144,32 @@ impl Stress<Geographic> {
 pub struct StatedInputs {
     made: Made,
     combined: Option<Tensor>,
+    #[serde(default, skip_serializing_if = "Option::is_none")]
+    label: Option<Name>,
 }
 
 impl Explain for Stress<Geographic> {
     const KIND: &'static str = "stress-tensor";
+    const VERSION: u32 = 2;
     type Inputs = StatedInputs;
     type Outcome = Stress6;
 
     fn compute(inputs: StatedInputs) -> Result<Self> {
-        match inputs.made {
+        let stress = match inputs.made {
             Made::Components(given) => Stress::from_components(given),
             Made::TensionPositive(given) => Stress::from_tension_positive(given),
             Made::Horizontals(given) => Stress::from_horizontals(given),
             Made::Principals { measured } => Stress::from_principals(measured),
-            Made::Combined => match inputs.combined {
-                Some(tensor) => Ok(Stress::of(tensor, Made::Combined, None)),
-                None => Err(Error::undeclared(
-                    "A combined stress has no components",
-                    "add the stress again from its notebook.",
-                )),
-            },
-        }
+            Made::InAxes { axes, components, tension_positive } => {
+                in_axes::geographic(axes, components, tension_positive)
+            }
+            Made::Combined { parts } => combined::compute(parts, inputs.combined),
+        };
+        Ok(stress?.with_label(inputs.label))
     }
     fn inputs(&self) -> StatedInputs {
-        StatedInputs { made: self.made, combined: (self.made == Made::Combined).then_some(self.tensor) }
+        let forgotten = matches!(self.made, Made::Combined { parts: None });
+        StatedInputs { made: self.made, combined: forgotten.then_some(self.tensor), label: self.label }
     }
     fn outcome(&self) -> Stress6 {
         self.six()
@@ -177,11 +200,10 @@ impl Explain for Stress<Geographic> {
             )],
             Made::Horizontals(h) => horizontal_checks(h, got),
             Made::Principals { measured } => principal_checks(&measured, got),
-            Made::Combined => inputs
-                .combined
-                .map(|t| Check::compare("components as combined", &got.0.map(mpa), &t.0.map(mpa), 0.0, "MPa"))
-                .into_iter()
-                .collect(),
+            Made::InAxes { axes, components, tension_positive } => {
+                in_axes::checks(axes, components, tension_positive, got)
+            }
+            Made::Combined { parts } => combined::checks(parts, inputs.combined, got),
         }
     }
 
@@ -207,12 +229,15 @@ impl Explain for Stress<Geographic> {
             },
             Made::Horizontals(given) => explain_horizontals(given),
             Made::Principals { measured } => explain_principals(&measured),
-            Made::Combined => Explanation {
-                title: "Stress tensor by combination".to_owned(),
-                inputs: vec![self.item("S", "combined stress")],
-                ..Explanation::default()
-            },
+            Made::InAxes { axes, components, tension_positive } => {
+                in_axes::explain(self, axes, components, tension_positive)
+            }
+            Made::Combined { parts } => combined::explain(self, parts),
         };
+        if !explanation.title.contains(&self.of_name()) {
+            explanation.title =
+                explanation.title.replacen("Stress tensor", &format!("Stress tensor{}", self.of_name()), 1);
+        }
         let item = self.item("S", "stress in north, east, down");
         explanation.headline.clone_from(&item.shown);
         explanation.results = vec![item];
@@ -231,7 +256,9 @@ impl Explain for Stress<Geographic> {
         match self.made {
             Made::Horizontals(given) => given.sh_max_azimuth.upstream(),
             Made::Principals { measured } => measured.iter().flat_map(|(_, line)| line.trend.upstream()).collect(),
-            _ => Vec::new(),
+            Made::InAxes { axes, .. } => chain_card(axes),
+            Made::Combined { parts } => combined::upstream(parts),
+            Made::Components(_) | Made::TensionPositive(_) => Vec::new(),
         }
     }
 }

@@ -173,7 +173,7 @@ impl Explain for MohrCircles {
             results.push(Item::computed(&format!("τ_{n}"), format!("shear stress on plane {n}"), point[1]));
         }
         Explanation {
-            title: format!("Mohr's circles of the {what}"),
+            title: format!("Mohr's circles of the {what}{}", self.inputs.stress.of_name()),
             headline: format!("largest shear stress {}", self.outcome.radii[0]),
             inputs,
             results,

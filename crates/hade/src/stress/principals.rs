@@ -166,7 +166,7 @@ impl Explain for Principals {
         }
         let [a, b, c] = self.outcome.magnitudes.map(|m| fixed(m.in_mpa(), 2));
         Explanation {
-            title: "Principal stresses".to_owned(),
+            title: format!("Principal stresses{}", self.stress.of_name()),
             headline: format!("S_1 {a}, S_2 {b}, S_3 {c} MPa"),
             inputs: vec![self.stress.item("S", "stress in north, east, down")],
             results,

@@ -9,17 +9,19 @@ use super::made::Made;
 use super::tensor::Tensor;
 use crate::card::Item;
 use crate::error::{Error, Result};
-use crate::frames::{Attitude, Axis, Borehole, Frame, Geographic, Name};
+use crate::frames::{Attitude, Axes, Axis, Borehole, Frame, Geographic, Name, Turned};
 use crate::units::{Pressure, Quantity};
 
 /// A total stress tensor, compression positive, in one kind of axes. Which hole's axes a
-/// `Stress<Borehole>` is in is part of the value.
+/// `Stress<Borehole>` is in is part of the value, and so is the name it was given.
 pub struct Stress<F: Frame = Geographic> {
     pub(super) tensor: Tensor,
     /// How the geographic tensor behind it was made.
     pub(super) made: Made,
-    /// For a carried stress: the geographic tensor, and the hole it was carried to.
-    pub(super) carried: Option<(Tensor, Attitude, Option<Name>)>,
+    /// For a carried stress: the geographic tensor, and the axes it was carried to.
+    pub(super) carried: Option<(Tensor, Axes)>,
+    /// What the user calls it ("overcoring in KC-2").
+    pub(super) label: Option<Name>,
     frame: PhantomData<fn() -> F>,
 }
 
@@ -32,22 +34,53 @@ impl<F: Frame> Copy for Stress<F> {}
 impl<F: Frame> PartialEq for Stress<F> {
     /// The same numbers in the same axes, bit for bit.
     fn eq(&self, other: &Self) -> bool {
-        self.tensor == other.tensor && self.hole() == other.hole()
+        self.tensor == other.tensor && self.axes() == other.axes()
     }
 }
 impl<F: Frame> fmt::Debug for Stress<F> {
     fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
-        write!(f, "Stress in {} {}", F::NAME, self.words())
+        write!(f, "Stress in {} {}", F::NAME, self.tensor.words(F::LETTERS))
     }
 }
 
 impl<F: Frame> Stress<F> {
-    pub(crate) fn of(tensor: Tensor, made: Made, carried: Option<(Tensor, Attitude, Option<Name>)>) -> Self {
-        Stress { tensor, made, carried, frame: PhantomData }
+    pub(crate) fn of(tensor: Tensor, made: Made, carried: Option<(Tensor, Axes)>) -> Self {
+        Stress { tensor, made, carried, label: None, frame: PhantomData }
     }
 
-    fn hole(&self) -> Option<(Attitude, Option<Name>)> {
-        self.carried.map(|(_, attitude, name)| (attitude, name))
+    /// With a name ("overcoring in KC-2") that its cards bear, so that several stresses can stand on
+    /// one sheet.
+    pub fn named(self, name: &str) -> Self {
+        Stress { label: Some(Name::new(name)), ..self }
+    }
+
+    /// The name it was given.
+    pub fn given_name(&self) -> Option<Name> {
+        self.label
+    }
+
+    /// " of overcoring in KC-2", or nothing, for titles.
+    pub(crate) fn of_name(&self) -> String {
+        self.label.map_or_else(String::new, |name| format!(" of {name}"))
+    }
+
+    pub(super) fn with_label(self, label: Option<Name>) -> Self {
+        Stress { label, ..self }
+    }
+
+    /// The axes it is in: which hole, wall, fault or instrument.
+    pub fn axes(&self) -> Axes {
+        self.carried.map_or(Axes::Geographic, |(_, axes)| axes)
+    }
+
+    /// The same stress in north, east, down.
+    pub(crate) fn geographic(&self) -> Tensor {
+        self.carried.map_or(self.tensor, |(geographic, _)| geographic)
+    }
+
+    /// The stress behind it in north, east, down, with how it was made.
+    pub(super) fn behind(&self) -> Stress<Geographic> {
+        Stress::of(self.geographic(), self.made, None).with_label(self.label)
     }
 
     pub(crate) fn tensor(&self) -> Tensor {
@@ -68,12 +101,14 @@ impl<F: Frame> Stress<F> {
 
     /// Times a number.
     pub fn scale(&self, factor: f64) -> Self {
-        Stress { tensor: self.tensor.scale(factor), made: Made::Combined, ..*self }
+        let made = Made::combined(&[(factor, self.behind())]);
+        let carried = self.carried.map(|(geographic, axes)| (geographic.scale(factor), axes));
+        Stress::of(self.tensor.scale(factor), made, carried)
     }
 
     /// Whether every component is within a tolerance of the other's, in the same axes.
     pub fn is_close(&self, other: &Self, tolerance: Pressure) -> bool {
-        self.hole() == other.hole()
+        self.axes() == other.axes()
             && self.tensor.0.iter().zip(other.tensor.0).all(|(a, b)| (a - b).abs() <= tolerance.si())
     }
 
@@ -83,53 +118,43 @@ impl<F: Frame> Stress<F> {
 
     /// The tensor as an input or result.
     pub(crate) fn item(&self, symbol: &str, name: &str) -> Item {
-        Item::new(symbol, name, Self::kind(), self.tensor.0.to_vec(), self.words())
+        Item::new(symbol, name, Self::kind(), self.tensor.0.to_vec(), self.tensor.words(F::LETTERS))
     }
+}
 
-    fn words(&self) -> String {
-        let [xx, yy, zz, xy, yz, xz] = self.tensor.scale(1e-6).0;
-        let [x, y, z] = F::LETTERS;
-        format!(
-            "S_{x}{x} {xx:.2}, S_{y}{y} {yy:.2}, S_{z}{z} {zz:.2}, S_{x}{y} {xy:.2}, S_{y}{z} {yz:.2}, S_{x}{z} {xz:.2} MPa"
-        )
+impl<F: Turned> Stress<F> {
+    /// The sum of two stresses in the same axes: of one hole at one depth, of one fault.
+    ///
+    /// # Errors
+    /// When they are in the axes of different holes, depths, faults or instruments.
+    pub fn try_add(&self, other: &Self) -> Result<Self> {
+        if self.axes() != other.axes() {
+            return Err(Error::FrameMismatch {
+                doing: "Adding two stresses".to_owned(),
+                left: self.axes().words(),
+                right: other.axes().words(),
+            });
+        }
+        let made = Made::combined(&[(1.0, self.behind()), (1.0, other.behind())]);
+        let carried = self.carried.map(|(geographic, axes)| (geographic.add(other.geographic()), axes));
+        Ok(Stress::of(self.tensor.add(other.tensor), made, carried))
     }
 }
 
 impl Stress<Borehole> {
     /// The hole's attitude.
     pub fn attitude(&self) -> Option<Attitude> {
-        self.carried.map(|(_, attitude, _)| attitude)
-    }
-    /// The geographic tensor it was carried from.
-    pub(crate) fn geographic(&self) -> Option<Tensor> {
-        self.carried.map(|(geographic, ..)| geographic)
+        match self.axes() {
+            Axes::Hole { attitude, .. } => Some(attitude),
+            _ => None,
+        }
     }
     /// The hole's name, if one was given.
     pub fn name(&self) -> Option<Name> {
-        self.carried.and_then(|(.., name)| name)
-    }
-
-    /// The sum of two stresses in the axes of one hole at one depth.
-    ///
-    /// # Errors
-    /// When they are in the axes of different holes or depths.
-    pub fn try_add(&self, other: &Self) -> Result<Self> {
-        let words = |s: &Self| match s.carried {
-            Some((_, attitude, name)) => crate::frames::frame_words(attitude, name),
-            None => Borehole::NAME.to_owned(),
-        };
-        if self.hole() != other.hole() {
-            return Err(Error::FrameMismatch {
-                doing: "Adding two stresses".to_owned(),
-                left: words(self),
-                right: words(other),
-            });
-        }
-        let carried = match (self.carried, other.carried) {
-            (Some((a, attitude, name)), Some((b, ..))) => Some((a.add(b), attitude, name)),
+        match self.axes() {
+            Axes::Hole { name, .. } => name,
             _ => None,
-        };
-        Ok(Stress::of(self.tensor.add(other.tensor), Made::Combined, carried))
+        }
     }
 }
 
@@ -158,7 +183,9 @@ impl AddsTo<Geographic> for &Stress<Geographic> {
 impl<F: Frame, Other: AddsTo<F>> std::ops::Add<Other> for Stress<F> {
     type Output = Stress<F>;
     fn add(self, other: Other) -> Stress<F> {
-        Stress::of(self.tensor.add(other.stress().tensor), Made::Combined, None)
+        let other = other.stress();
+        let made = Made::combined(&[(1.0, self.behind()), (1.0, other.behind())]);
+        Stress::of(self.tensor.add(other.tensor), made, None)
     }
 }
 
@@ -167,13 +194,21 @@ struct Written {
     frame: String,
     components: Tensor,
     made: Made,
-    carried: Option<(Tensor, Attitude, Option<Name>)>,
+    carried: Option<(Tensor, Axes)>,
+    #[serde(default, skip_serializing_if = "Option::is_none")]
+    label: Option<Name>,
 }
 
 impl<F: Frame> Serialize for Stress<F> {
     fn serialize<S: Serializer>(&self, s: S) -> std::result::Result<S::Ok, S::Error> {
-        Written { frame: F::NAME.to_owned(), components: self.tensor, made: self.made, carried: self.carried }
-            .serialize(s)
+        Written {
+            frame: F::NAME.to_owned(),
+            components: self.tensor,
+            made: self.made,
+            carried: self.carried,
+            label: self.label,
+        }
+        .serialize(s)
     }
 }
 impl<'de, F: Frame> Deserialize<'de> for Stress<F> {
@@ -186,9 +221,17 @@ impl<'de, F: Frame> Deserialize<'de> for Stress<F> {
                 F::NAME
             )));
         }
+        let axes = written.carried.map_or(Axes::Geographic, |(_, axes)| axes);
+        if axes.kind() != F::NAME {
+            return Err(serde::de::Error::custom(format!(
+                "a stress in {} says that it is in {}",
+                F::NAME,
+                axes.words()
+            )));
+        }
         if !written.components.is_finite() {
             return Err(serde::de::Error::custom("a stress component is not a finite number"));
         }
-        Ok(Stress::of(written.components, written.made, written.carried))
+        Ok(Stress::of(written.components, written.made, written.carried).with_label(written.label))
     }
 }

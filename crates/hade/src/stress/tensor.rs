@@ -55,6 +55,13 @@ impl Tensor {
     pub fn largest(self) -> f64 {
         self.0.iter().fold(0.0, |m, c| c.abs().max(m))
     }
+    /// "S_nn 51.85, … MPa" with the letters of the axes.
+    pub fn words(self, [x, y, z]: [&str; 3]) -> String {
+        let [xx, yy, zz, xy, yz, xz] = self.scale(1e-6).0;
+        format!(
+            "S_{x}{x} {xx:.2}, S_{y}{y} {yy:.2}, S_{z}{z} {zz:.2}, S_{x}{y} {xy:.2}, S_{y}{z} {yz:.2}, S_{x}{z} {xz:.2} MPa"
+        )
+    }
     pub fn is_finite(self) -> bool {
         self.0.iter().all(|c| c.is_finite())
     }

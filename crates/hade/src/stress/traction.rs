@@ -31,8 +31,8 @@ pub struct Traction {
 /// The inputs of a traction.
 #[derive(Clone, Copy, Debug, PartialEq, Serialize, Deserialize)]
 pub struct TractionInputs {
-    stress: Stress<Geographic>,
-    plane: Plane,
+    pub(super) stress: Stress<Geographic>,
+    pub(super) plane: Plane,
 }
 
 /// What came out, in SI; the vector in north, east, down.
@@ -174,7 +174,7 @@ impl Explain for Traction {
             results.push(Item::computed("r", "rake of hanging-wall slip, from strike, up dip positive", rake));
         }
         Explanation {
-            title: format!("Traction on the plane {}", plane.words()),
+            title: format!("Traction{} on the plane {}", self.inputs.stress.of_name(), plane.words()),
             headline: format!("normal stress {}, shear stress {}", self.normal, self.shear),
             inputs: vec![
                 self.inputs.stress.item("S", "stress in north, east, down"),

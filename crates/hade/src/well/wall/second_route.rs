@@ -31,7 +31,7 @@ const LOOKS: u32 = 360;
 
 impl ByVectors {
     pub fn new(inputs: &WallInputs) -> Option<Self> {
-        let far = inputs.stress.geographic()?;
+        let far = inputs.stress.geographic();
         let [top, right, along] = inputs.stress.attitude()?.matrix().ok()?;
         let (tangent, ucs) = inputs.rock.strength.by_tangent();
         Some(ByVectors {

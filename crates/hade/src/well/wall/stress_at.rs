@@ -7,7 +7,7 @@ use super::{direction, method, second_route::ByVectors};
 use crate::card::{Card, Check, Explain, Explanation, Item, Step};
 use crate::error::Result;
 use crate::frames::vector::wrap;
-use crate::frames::{Geographic, WallAxes};
+use crate::frames::{Axes, Geographic, WallAxes};
 use crate::stress::{EffectiveStress, Made, Stress};
 use crate::units::{Angle, Pressure, Quantity, with_typed_unit};
 
@@ -81,7 +81,13 @@ impl WallStress {
     /// The total stress in wall axes: radial, around the hole, along the hole.
     pub fn in_wall_axes(&self) -> Stress<WallAxes> {
         let at = self.wall.shear.kirsch.at(self.inputs.toolface.si(), self.inputs.pressure.si());
-        Stress::of(at.tensor(), Made::Combined, None)
+        let axes = Axes::Wall {
+            attitude: self.wall.attitude,
+            name: self.wall.inputs.stress.name(),
+            tool_face: self.inputs.toolface,
+        };
+        let geographic = self.in_geographic().tensor();
+        Stress::of(at.tensor(), Made::Combined { parts: None }, Some((geographic, axes)))
     }
 
     /// The total stress in north, east, down.
@@ -91,7 +97,8 @@ impl WallStress {
         // Rows: top, right and along in wall axes (radial, around, along).
         let to_hole = at.tensor().turned(&[[c, -s, 0.0], [s, c, 0.0], [0.0, 0.0, 1.0]]);
         let q = self.wall.attitude.matrix().unwrap_or_default();
-        Stress::of(to_hole.turned(&crate::frames::vector::transpose(&q)), Made::Combined, None)
+        let tensor = to_hole.turned(&crate::frames::vector::transpose(&q));
+        Stress::of(tensor, Made::Combined { parts: None }, None)
     }
 }
 

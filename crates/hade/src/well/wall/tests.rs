@@ -149,7 +149,7 @@ fn a_flipped_tool_face_and_a_transposed_turn_turn_a_check_red() {
 
     // The same wall with S turned by the transposed matrix in place of the right one.
     let q = wall.inputs.stress.attitude().unwrap().matrix().unwrap();
-    let far = wall.inputs.stress.geographic().unwrap();
+    let far = wall.inputs.stress.geographic();
     let wrong = far.turned(&crate::frames::vector::transpose(&q));
     let mut json = wall.inputs.stress.write();
     for (k, c) in wrong.0.iter().enumerate() {
