@@ -39,7 +39,7 @@ impl Attitude {
     /// # Errors
     /// When the inclination is outside 0–180° or the azimuth has no true north.
     pub fn chain(self) -> Result<Chain<Geographic, Borehole>> {
-        Chain::between(Axes::Geographic, Axes::Hole { attitude: self, name: None })
+        Chain::between(Axes::NorthEastDown, Axes::Hole { attitude: self, name: None })
     }
 
     /// The turn from this hole's axes to those of its wall at a tool face: radial, around, along.
@@ -107,7 +107,7 @@ impl NamedAttitude {
     /// # Errors
     /// As [`Attitude::chain`].
     pub fn chain(self) -> Result<Chain<Geographic, Borehole>> {
-        Chain::between(Axes::Geographic, Axes::Hole { attitude: self.attitude, name: Some(self.name) })
+        Chain::between(Axes::NorthEastDown, Axes::Hole { attitude: self.attitude, name: Some(self.name) })
     }
 
     /// The turn from this hole's axes to those of its wall at a tool face: radial, around, along.

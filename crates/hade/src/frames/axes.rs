@@ -16,8 +16,8 @@ use crate::units::{Angle, Quantity, as_typed};
 #[serde(tag = "axes", rename_all = "snake_case")]
 #[non_exhaustive]
 pub enum Axes {
-    /// North, east, down.
-    Geographic,
+    /// North, east, down from true north.
+    NorthEastDown,
     /// Top of hole, right, along the hole.
     Hole {
         /// How the hole lies.
@@ -52,7 +52,7 @@ impl Axes {
     /// The kind of frame these axes are of ([`Frame::NAME`]).
     pub fn kind(self) -> &'static str {
         match self {
-            Axes::Geographic => Geographic::NAME,
+            Axes::NorthEastDown => Geographic::NAME,
             Axes::Hole { .. } => Borehole::NAME,
             Axes::Wall { .. } => WallAxes::NAME,
             Axes::Fault { .. } => FaultAxes::NAME,
@@ -63,7 +63,7 @@ impl Axes {
     /// The three axes in words.
     pub fn axis_names(self) -> [&'static str; 3] {
         match self {
-            Axes::Geographic => Geographic::AXES,
+            Axes::NorthEastDown => Geographic::AXES,
             Axes::Hole { .. } => Borehole::AXES,
             Axes::Wall { .. } => WallAxes::AXES,
             Axes::Fault { .. } => FaultAxes::AXES,
@@ -74,7 +74,7 @@ impl Axes {
     /// The letters of the axes in symbols.
     pub(crate) fn letters(self) -> [&'static str; 3] {
         match self {
-            Axes::Geographic => Geographic::LETTERS,
+            Axes::NorthEastDown => Geographic::LETTERS,
             Axes::Hole { .. } => Borehole::LETTERS,
             Axes::Wall { .. } => WallAxes::LETTERS,
             Axes::Fault { .. } => FaultAxes::LETTERS,
@@ -85,7 +85,7 @@ impl Axes {
     /// The axes as a title says them: "north, east, down", "the axes of KF-3 at 2950 m".
     pub(crate) fn title(self) -> String {
         match self {
-            Axes::Geographic => "north, east, down".to_owned(),
+            Axes::NorthEastDown => "north, east, down".to_owned(),
             Axes::Hole { name: Some(name), .. } => format!("the axes of {name}"),
             Axes::Hole { attitude, name: None } => format!("borehole axes ({})", attitude.words()),
             Axes::Wall { name: Some(name), tool_face, .. } => format!("the wall of {name} at tool face {tool_face}"),
@@ -101,7 +101,7 @@ impl Axes {
     /// In a sentence: "the borehole frame of KF-3 at 2950 m (inclination 42.0°, azimuth 120.0°)".
     pub(crate) fn words(self) -> String {
         match self {
-            Axes::Geographic => Geographic::NAME.to_owned(),
+            Axes::NorthEastDown => Geographic::NAME.to_owned(),
             Axes::Hole { attitude, name: Some(name) } => {
                 format!("the borehole frame of {name} ({})", attitude.words())
             }
@@ -116,9 +116,9 @@ impl Axes {
     /// The axes these are turned out of.
     fn parent(self) -> Option<Axes> {
         match self {
-            Axes::Geographic => None,
+            Axes::NorthEastDown => None,
             Axes::Wall { attitude, name, .. } => Some(Axes::Hole { attitude, name }),
-            _ => Some(Axes::Geographic),
+            _ => Some(Axes::NorthEastDown),
         }
     }
 
@@ -136,7 +136,7 @@ impl Axes {
     fn own_turns(self, suffix: &str) -> Result<Vec<Turn>> {
         let symbol = |letter: &str| format!("{letter}{suffix}");
         Ok(match self {
-            Axes::Geographic => Vec::new(),
+            Axes::NorthEastDown => Vec::new(),
             Axes::Hole { attitude, .. } => {
                 let (i, a) = attitude.angles()?;
                 let (i, a) = (Angle::from_si(i), Angle::from_si(a));
@@ -183,13 +183,13 @@ impl Axes {
 
     /// Rows: the axes in north, east, down, by their turns.
     pub(crate) fn matrix(self) -> Result<M3> {
-        Ok(product(&Axes::Geographic.turns_to(self)?))
+        Ok(product(&Axes::NorthEastDown.turns_to(self)?))
     }
 
     /// Rows: the axes in north, east, down, by their definitions and not by turns.
     pub(crate) fn by_definition(self) -> Result<M3> {
         Ok(match self {
-            Axes::Geographic => [[1.0, 0.0, 0.0], [0.0, 1.0, 0.0], [0.0, 0.0, 1.0]],
+            Axes::NorthEastDown => [[1.0, 0.0, 0.0], [0.0, 1.0, 0.0], [0.0, 0.0, 1.0]],
             Axes::Hole { attitude, .. } => attitude.matrix()?,
             Axes::Wall { attitude, tool_face, .. } => {
                 let (i, a) = attitude.angles()?;
@@ -209,7 +209,7 @@ impl Axes {
     fn own_items(self, suffix: &str) -> Vec<Item> {
         let symbol = |letter: &str| format!("{letter}{suffix}");
         match self {
-            Axes::Geographic => Vec::new(),
+            Axes::NorthEastDown => Vec::new(),
             Axes::Hole { attitude, .. } => attitude.items(suffix),
             Axes::Wall { attitude, tool_face, .. } => {
                 let mut items = attitude.items(suffix);
@@ -245,14 +245,14 @@ impl Axes {
                     .to_owned(),
             ),
             Axes::Local { stated } => stated.note(),
-            Axes::Geographic => None,
+            Axes::NorthEastDown => None,
         }
     }
 
     /// The cards of the azimuths that fix the axes.
     pub(crate) fn upstream(self) -> Vec<Card> {
         match self {
-            Axes::Geographic => Vec::new(),
+            Axes::NorthEastDown => Vec::new(),
             Axes::Hole { attitude, .. } | Axes::Wall { attitude, .. } => attitude.azimuth.upstream(),
             Axes::Fault { plane, .. } => plane.strike.upstream(),
             Axes::Local { stated } => stated.upstream(),

@@ -152,7 +152,7 @@ impl Plane {
     /// # Errors
     /// When the dip is outside 0–90° or the strike has no true north.
     pub fn chain(self) -> Result<Chain<Geographic, FaultAxes>> {
-        Chain::between(Axes::Geographic, Axes::Fault { plane: self, name: None })
+        Chain::between(Axes::NorthEastDown, Axes::Fault { plane: self, name: None })
     }
 
     /// The same under the fault's name.
@@ -160,14 +160,14 @@ impl Plane {
     /// # Errors
     /// As [`Plane::chain`].
     pub fn chain_named(self, fault: &str) -> Result<Chain<Geographic, FaultAxes>> {
-        Chain::between(Axes::Geographic, Axes::Fault { plane: self, name: Some(Name::new(fault)) })
+        Chain::between(Axes::NorthEastDown, Axes::Fault { plane: self, name: Some(Name::new(fault)) })
     }
 }
 
 impl Route {
     /// From north, east, down to some axes.
     pub(crate) fn to(axes: Axes) -> Result<Route> {
-        Route::compute(ChainInputs { from: Axes::Geographic, to: axes })
+        Route::compute(ChainInputs { from: Axes::NorthEastDown, to: axes })
     }
 
     fn turns(&self) -> Vec<Turn> {
@@ -183,7 +183,7 @@ impl Explain for Route {
 
     fn compute(inputs: ChainInputs) -> Result<Self> {
         let q = product(&inputs.from.turns_to(inputs.to)?);
-        let to_rows = if inputs.from == Axes::Geographic { q } else { inputs.to.matrix()? };
+        let to_rows = if inputs.from == Axes::NorthEastDown { q } else { inputs.to.matrix()? };
         Ok(Route { inputs, q, to_rows })
     }
     fn inputs(&self) -> ChainInputs {
@@ -217,7 +217,7 @@ impl Explain for Route {
                 "",
             ),
         ];
-        if let (Axes::Geographic, Axes::Hole { attitude, .. }) = (inputs.from, inputs.to)
+        if let (Axes::NorthEastDown, Axes::Hole { attitude, .. }) = (inputs.from, inputs.to)
             && let Ok((i, a)) = attitude.angles()
         {
             let along = [i.sin() * a.cos(), i.sin() * a.sin(), i.cos()];
@@ -344,7 +344,7 @@ fn count(turns: usize) -> &'static str {
 
 /// The whole chain as one turn. Its line is the same in the old and the new axes.
 fn whole_turn(q: &M3, from: Axes) -> String {
-    if from == Axes::Geographic {
+    if from == Axes::NorthEastDown {
         let (axis, angle) = in_words(q);
         return format!(
             "Altogether one turn by {angle} about {axis}; 1 + 2 cos of the angle is the sum of the diagonal of Q."

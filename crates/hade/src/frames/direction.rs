@@ -56,7 +56,7 @@ impl Line {
     /// # Errors
     /// When the plunge is outside ±90° or the trend has no true north.
     pub fn direction(self) -> Result<Direction<Geographic>> {
-        let carried = CarriedLine::compute(DirectionInputs { line: self, axes: Axes::Geographic })?;
+        let carried = CarriedLine::compute(DirectionInputs { line: self, axes: Axes::NorthEastDown })?;
         Ok(Direction { carried, frame: PhantomData })
     }
 }
@@ -170,7 +170,7 @@ impl Explain for CarriedLine {
             fixed(self.geographic[1], 6),
             fixed(self.geographic[2], 6)
         ))];
-        if axes != Axes::Geographic {
+        if axes != Axes::NorthEastDown {
             steps.push(Step::worked(format!("v' = Q v = ({})", cosines.join(", "))));
         }
         let mut headline = format!("({})", cosines.join(", "));
@@ -191,7 +191,7 @@ impl Explain for CarriedLine {
             line.trend.item("T", "trend of the line"),
             Item::typed("P", "plunge of the line, down positive", line.plunge),
         ];
-        if let (true, Ok(q)) = (axes != Axes::Geographic, axes.matrix()) {
+        if let (true, Ok(q)) = (axes != Axes::NorthEastDown, axes.matrix()) {
             inputs.push(Item::new(
                 "Q",
                 format!("turn from north, east, down to {}", axes.title()),
@@ -233,7 +233,7 @@ impl Explain for CarriedLine {
 /// The card of the chain from north, east, down to some axes, behind the cards it stands on.
 pub(crate) fn chain_card(axes: Axes) -> Vec<Card> {
     let mut cards = axes.upstream();
-    if axes != Axes::Geographic {
+    if axes != Axes::NorthEastDown {
         cards.extend(super::Route::to(axes).map(|route| route.card()));
     }
     cards

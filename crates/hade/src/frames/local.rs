@@ -77,7 +77,7 @@ impl LocalAxes {
     /// # Errors
     /// None that the constructors let through; a record that was tampered with is refused.
     pub fn chain(self) -> Result<Chain<Geographic, Local>> {
-        Chain::between(super::Axes::Geographic, super::Axes::Local { stated: self })
+        Chain::between(super::Axes::NorthEastDown, super::Axes::Local { stated: self })
     }
 
     pub(super) fn axis_names(self) -> [&'static str; 3] {

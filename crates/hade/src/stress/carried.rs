@@ -17,7 +17,7 @@ impl<From: Frame, To: Frame> CarriedBy<From, To> for Stress<From> {
     fn carried_by(&self, chain: &Chain<From, To>) -> Stress<To> {
         let behind = self.behind();
         match chain.to() {
-            Axes::Geographic => Stress::of(behind.tensor, self.made, None),
+            Axes::NorthEastDown => Stress::of(behind.tensor, self.made, None),
             axes => Stress::of(into(&behind, axes, chain.to_rows()), self.made, Some((behind.tensor, axes))),
         }
         .with_label(self.label)

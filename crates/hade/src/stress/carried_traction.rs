@@ -130,7 +130,7 @@ impl Explain for CarriedTraction {
             plane.strike.item("s", "strike of the plane, dip to its right"),
             Item::typed("d", "dip of the plane", plane.dip),
         ];
-        if let (true, Ok(q)) = (axes != Axes::Geographic, axes.matrix()) {
+        if let (true, Ok(q)) = (axes != Axes::NorthEastDown, axes.matrix()) {
             inputs.push(Item::new(
                 "Q",
                 format!("turn from north, east, down to {}", axes.title()),

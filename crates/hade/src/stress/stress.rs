@@ -70,7 +70,7 @@ impl<F: Frame> Stress<F> {
 
     /// The axes it is in: which hole, wall, fault or instrument.
     pub fn axes(&self) -> Axes {
-        self.carried.map_or(Axes::Geographic, |(_, axes)| axes)
+        self.carried.map_or(Axes::NorthEastDown, |(_, axes)| axes)
     }
 
     /// The same stress in north, east, down.
@@ -221,7 +221,7 @@ impl<'de, F: Frame> Deserialize<'de> for Stress<F> {
                 F::NAME
             )));
         }
-        let axes = written.carried.map_or(Axes::Geographic, |(_, axes)| axes);
+        let axes = written.carried.map_or(Axes::NorthEastDown, |(_, axes)| axes);
         if axes.kind() != F::NAME {
             return Err(serde::de::Error::custom(format!(
                 "a stress in {} says that it is in {}",

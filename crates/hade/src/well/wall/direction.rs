@@ -3,7 +3,7 @@
 use crate::card::Item;
 use crate::frames::vector::{V3, add, scale, wrap};
 use crate::frames::{Attitude, bearing_item, three_figures};
-use crate::units::{Angle, Quantity, fixed};
+use crate::units::{Angle, Quantity};
 
 /// Below this length of its horizontal part a direction has no bearing: it points straight up or
 /// down.
@@ -59,11 +59,11 @@ pub(crate) fn items(attitude: Attitude, of: &str, symbol: &str, toolface: Angle)
 pub(crate) fn reference(attitude: Attitude) -> String {
     if attitude.is_vertical() {
         let azimuth = attitude.azimuth.true_north().unwrap_or_default();
-        return format!(
-            "The hole is vertical: tool faces count clockwise from azimuth {}°, so a bearing is {}° + tool face.",
-            three_figures(azimuth),
-            fixed(azimuth.in_deg(), 1)
-        );
+        // Straight up, tool face 0 lies opposite the azimuth and the sense seen from above is the other.
+        let (count_from, sign) =
+            if attitude.inclination.in_deg() < 90.0 { (azimuth, "+") } else { (azimuth + Angle::deg(180.0), "−") };
+        let count_from = three_figures(count_from);
+        return format!("{} A bearing is {count_from}° {sign} tool face.", attitude.tool_face_reference());
     }
     format!(
         "Tool faces count clockwise from the top of the hole (high side, {}), looking down the hole; its right is {}.",
@@ -89,6 +89,16 @@ mod tests {
         assert!((at(0.0, 120.0) - 120.0).abs() < 1e-9);
         assert!((at(123.0, 177.0) - 300.0).abs() < 1e-9);
         assert!(reference(hole(0.0, 123.0)).contains("azimuth 123.0"));
+    }
+
+    /// In a hole that rises straight up the top of the hole is opposite its azimuth, and tool faces
+    /// turn the other way seen from above.
+    #[test]
+    fn a_hole_straight_up_counts_from_the_other_side() {
+        let at = |toolface: f64| bearing(hole(180.0, 40.0), toolface.to_radians()).unwrap().in_deg();
+        assert!((at(0.0) - 220.0).abs() < 1e-9 && (at(30.0) - 190.0).abs() < 1e-9);
+        let said = reference(hole(180.0, 40.0));
+        assert!(said.contains("from azimuth 220.0°") && said.ends_with("A bearing is 220.0° − tool face."), "{said}");
     }
 
     #[test]
