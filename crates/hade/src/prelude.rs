@@ -3,9 +3,10 @@
 
 pub use crate::card::{Card, Explain};
 pub use crate::faults::FrictionLimit;
-pub use crate::field::{DensityLog, Overburden, OverburdenInputs, Top};
+pub use crate::field::{DensityLog, Overburden, OverburdenInputs, PressureAtDepth, PressureProfile, Top};
 pub use crate::frames::{
-    Attitude, Axis, Azimuth, Borehole, Chain, Datum, DatumTie, Depth, Geographic, Line, Plane, WallAxes,
+    Attitude, Axis, Azimuth, Borehole, Chain, Datum, DatumTie, Depth, DepthConversion, Geographic, Line, Plane,
+    WallAxes,
 };
 pub use crate::rock::{Rock, Strength};
 pub use crate::sheet::{Basis, Sheet, Source};
