@@ -1,6 +1,8 @@
 //! What the checks of this workspace share: cases read from `data/`, and comparisons that fail on
 //! both sides and never pass what is not a number.
 
+pub mod splitmix;
+
 use std::path::PathBuf;
 
 use serde_json::Value;
@@ -40,6 +42,23 @@ pub fn cases(function: &str) -> Vec<Case> {
         .collect();
     assert!(!cases.is_empty(), "{}: no cases", path.display());
     cases
+}
+
+/// The rows of a table that a script of `tests/scripts` wrote: `data/reference/<file>`, in numpy's
+/// own format (NEP 1, version 1.0; little-endian doubles in C order). Panics at anything else.
+pub fn reference_rows<const N: usize>(file: &str) -> Vec<[f64; N]> {
+    let path = data().join("reference").join(file);
+    let bytes = std::fs::read(&path).unwrap_or_else(|e| panic!("{}: {e}", path.display()));
+    assert_eq!(bytes.get(..8), Some(&b"\x93NUMPY\x01\x00"[..]), "{file} is no .npy file of version 1.0");
+    let length = usize::from(u16::from_le_bytes([bytes[8], bytes[9]]));
+    let header = String::from_utf8_lossy(&bytes[10..10 + length]).into_owned();
+    let numbers = &bytes[10 + length..];
+    let count = numbers.len() / (8 * N);
+    let shape = format!("'descr': '<f8', 'fortran_order': False, 'shape': ({count}, {N})");
+    assert!(header.contains(&shape), "{file}: {header} is not {shape}");
+    assert!(count > 0 && numbers.len() == count * 8 * N, "{file}: cut short");
+    let mut values = numbers.chunks_exact(8).map(|b| f64::from_le_bytes(b.try_into().expect("eight bytes")));
+    (0..count).map(|_| std::array::from_fn(|_| values.next().expect("a value"))).collect()
 }
 
 /// A number of a case.

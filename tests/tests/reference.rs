@@ -1,11 +1,17 @@
 //! Checks against values worked out outside this project.
 
+#[path = "reference/depths.rs"]
+mod depths;
+#[path = "reference/eigen.rs"]
+mod eigen;
 #[path = "reference/overburden.rs"]
 mod overburden;
 #[path = "reference/stress.rs"]
 mod stress;
 #[path = "reference/survey.rs"]
 mod survey;
+#[path = "reference/turns.rs"]
+mod turns;
 #[path = "reference/wall.rs"]
 mod wall;
 #[path = "reference/wall_traps.rs"]

@@ -9,6 +9,10 @@ use sha2::{Digest, Sha256};
 
 use crate::error::{Error, Result};
 
+mod declarations;
+
+pub(crate) use declarations::Declarations;
+
 /// The longest line that is read, in bytes. Survey and log files keep far below it; a binary file
 /// or a file without line ends does not.
 const LONGEST: usize = 65_536;
@@ -181,6 +185,24 @@ pub(crate) fn number(text: &str) -> std::result::Result<f64, (String, String)> {
         Err(_) => {
             Err((format!("\"{}\" is not a number", shown(text)), "write a number, with a decimal point".to_owned()))
         }
+    }
+}
+
+/// The fields of one line of a table, by the rules of CSV.
+pub(crate) fn fields<R: Read>(lines: &Lines<R>, text: &str) -> Result<Vec<String>> {
+    if !text.contains('"') {
+        return Ok(text.split(',').map(|field| field.trim().to_owned()).collect());
+    }
+    let mut reader = csv::ReaderBuilder::new()
+        .has_headers(false)
+        .flexible(true)
+        .trim(csv::Trim::All)
+        .buffer_capacity(text.len() + 2)
+        .from_reader(text.as_bytes());
+    let mut record = csv::StringRecord::new();
+    match reader.read_record(&mut record) {
+        Ok(_) => Ok(record.iter().map(str::to_owned).collect()),
+        Err(e) => Err(lines.bad(e.to_string(), "write the line as comma-separated values")),
     }
 }
 

@@ -3,10 +3,10 @@
 
 pub use crate::card::{Card, Explain};
 pub use crate::faults::FrictionLimit;
-pub use crate::field::{DensityLog, Overburden, OverburdenInputs, Top};
+pub use crate::field::{DensityLog, Overburden, OverburdenInputs, PressureAtDepth, PressureProfile, Top};
 pub use crate::frames::{
-    Attitude, Axes, Axis, Azimuth, Borehole, Chain, Datum, DatumTie, Depth, Direction, FaultAxes, Geographic, Line,
-    Local, LocalAxes, Plane, WallAxes,
+    Attitude, Axes, Axis, Azimuth, Borehole, Chain, Datum, DatumTie, Depth, DepthConversion, Direction, FaultAxes,
+    Geographic, Line, Local, LocalAxes, Plane, WallAxes,
 };
 pub use crate::rock::{Rock, Strength};
 pub use crate::sheet::{Basis, Sheet, Source};

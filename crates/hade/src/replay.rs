@@ -4,8 +4,8 @@
 use crate::card::{Card, Check, Data, Explain, Json};
 use crate::error::{Error, Result};
 use crate::faults::FrictionLimit;
-use crate::field::Overburden;
-use crate::frames::{Azimuth, CarriedLine, Geographic, Route};
+use crate::field::{Overburden, PressureAtDepth};
+use crate::frames::{Azimuth, CarriedLine, DepthConversion, Geographic, Route};
 use crate::stress::{CarriedStress, CarriedTraction, MohrCircles, Principals, Stress, Traction};
 use crate::well::{FailingArcs, Limits, MudPressure, Position, RecommendedRange, SurveyTable, WallAround, WallStress};
 
@@ -68,6 +68,8 @@ pub const KINDS: &[Kind] = &[
     kind::<SurveyTable>(),
     kind::<Position>(),
     kind::<Overburden>(),
+    kind::<DepthConversion>(),
+    kind::<PressureAtDepth>(),
     kind::<MudPressure>(),
     kind::<WallStress>(),
     kind::<WallAround>(),
@@ -163,6 +165,7 @@ mod tests {
         let sh = chain.carry(&s);
         let mut cards = well_samples(sh);
         cards.extend(frame_samples(s, plane));
+        cards.extend(depth_samples());
         cards.extend([
             breakout.perpendicular().card(),
             s.card(),
@@ -219,6 +222,28 @@ mod tests {
             to_fault.carry(&t).card(),
             to_cell.carry(&line(123.0, 45.0).direction().unwrap()).card(),
             line(123.0, -45.0).direction().unwrap().card(),
+        ]
+    }
+
+    fn depth_samples() -> Vec<Card> {
+        let land = DatumTie::rotary_table_at(432.m()).unwrap().with_ground_at(425.m()).unwrap();
+        let sea = DatumTie::rotary_table_at(25.m()).unwrap().with_mudline_at((-300).m()).unwrap();
+        let points = [(1000.m(), 15.mpa()), (2000.m(), 33.5.mpa()), (3200.m(), 58.mpa())];
+        let table = PressureProfile::from_points(&points, Datum::MeanSeaLevel).unwrap().of("S_hmin", "least stress");
+        let begin = Depth::below_rotary_table(1500.m());
+        let gradient = PressureProfile::from_gradient(12.mpa_per_km(), begin, 16.mpa()).unwrap();
+        let under_sea = PressureProfile::from_mudline(22.6.mpa_per_km(), 1025.kg_m3()).unwrap();
+        let at = |profile: PressureProfile, depth: Depth| profile.at(depth).unwrap().card();
+        vec![
+            sea.conversion(Depth::below_rotary_table(2950.m()), Datum::Mudline).unwrap().card(),
+            land.conversion(Depth::below_ground(25.m()), Datum::MeanSeaLevel).unwrap().named("X-1").card(),
+            land.conversion(Depth::below_ground(25.m()), Datum::Ground).unwrap().card(),
+            at(table.clone(), Depth::below_mean_sea_level(2000.m())),
+            at(table.tied(sea).unwrap(), Depth::below_mudline(1500.m())),
+            at(table.tied(sea).unwrap().carried_to(land), Depth::below_rotary_table(2950.m())),
+            at(gradient.clone(), Depth::below_rotary_table(2950.m())),
+            at(gradient.tied(land).unwrap(), Depth::below_ground(2950.m())),
+            at(under_sea.tied(sea).unwrap(), Depth::below_rotary_table(2950.m())),
         ]
     }
 

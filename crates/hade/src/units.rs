@@ -143,6 +143,10 @@ quantity! {
     Gradient, "gradient", shown "MPa/km" = 1e3, decimals 2;
     /// Megapascals per kilometre.
     mpa_per_km / in_mpa_per_km = 1e3;
+    /// Kilopascals per metre (the same number as megapascals per kilometre).
+    kpa_per_m / in_kpa_per_m = 1e3;
+    /// Bar per metre.
+    bar_per_m / in_bar_per_m = 1e5;
     /// Pounds-force per square inch per foot.
     psi_per_ft / in_psi_per_ft = PSI / FOOT;
 }
@@ -176,6 +180,10 @@ impl Density {
     /// The pressure of a static column of this density: ρ · g · TVD.
     pub fn column(self, tvd: Length) -> Pressure {
         Pressure(self.0 * GRAVITY * tvd.0)
+    }
+    /// The pressure gradient of a static column of this density: ρ · g.
+    pub fn gradient(self) -> Gradient {
+        Gradient(self.0 * GRAVITY)
     }
 }
 
@@ -249,6 +257,10 @@ units_on_numbers! {
     pcf -> Density;
     /// Megapascals per kilometre.
     mpa_per_km -> Gradient;
+    /// Kilopascals per metre.
+    kpa_per_m -> Gradient;
+    /// Bar per metre.
+    bar_per_m -> Gradient;
     /// Pounds-force per square inch per foot.
     psi_per_ft -> Gradient;
     /// Kelvin of difference.

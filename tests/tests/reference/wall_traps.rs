@@ -99,13 +99,21 @@ fn an_arc_through_zero_is_centred_there() {
     assert_printed("half width", 0.5 * arc.width.in_deg(), "39.364");
 }
 
-/// In a vertical hole the tool face counts from the azimuth that was given.
+/// In a vertical hole the tool face counts from the azimuth that was given, and the card prints which;
+/// the breakout itself lies at bearings 120 and 300 either way.
 #[test]
 fn the_same_vertical_hole_under_two_azimuths() {
-    for (hole_azimuth, toolface) in [(0.0, 120.0), (123.0, 177.0)] {
-        let arc = Case { hole_azimuth, ..state_b() }.wall().breakout(30.mpa()).unwrap().unwrap();
+    for (hole_azimuth, toolface, bearing) in [(0.0, 120.0, "120.0"), (123.0, 177.0, "300.0")] {
+        let wall = Case { hole_azimuth, ..state_b() }.wall();
+        let arc = wall.breakout(30.mpa()).unwrap().unwrap();
         assert!(agree(arc.centre.in_deg(), toolface, 1e-6), "{hole_azimuth}: {}", arc.centre);
         assert!(agree(arc.bearing.unwrap().in_deg().rem_euclid(180.0), 120.0, 1e-6));
+        let card = wall.failing_arcs(30.mpa()).unwrap().card();
+        let headline = &card.explanation.headline;
+        let place = format!("middle at tool face {toolface:.1}° (bearing {bearing}° from true north) and at +180°");
+        assert!(headline.contains(&place), "{headline}");
+        let from = format!("tool faces count clockwise from azimuth {hole_azimuth:05.1}°");
+        assert!(card.explanation.notes.iter().any(|n| n.contains(&from)), "{:?}", card.explanation.notes);
     }
 }
 

@@ -270,7 +270,7 @@ fn from_curve(curve: Curve, name: &str, datum: Datum) -> Result<DensityLog> {
     }
     let entry = |e: &Entry, why: String, fix: &str| bad(Some(e.line), &e.mnemonic, why, fix);
     if let Some(reference) = find(&curve.parameters, "DREF") {
-        match reference_datum(&reference.value) {
+        match Datum::from_words(&reference.value) {
             Some(stated) if stated == datum => {}
             Some(stated) => {
                 return Err(entry(
@@ -328,16 +328,6 @@ fn from_curve(curve: Curve, name: &str, datum: Datum) -> Result<DensityLog> {
         tie_in_file: tie.is_some(),
     };
     DensityLog::build(about, depths, densities, gaps)
-}
-
-fn reference_datum(words: &str) -> Option<Datum> {
-    match words.trim().to_uppercase().as_str() {
-        "RT" | "RKB" | "KB" | "DF" | "ROTARY TABLE" | "DRILL FLOOR" => Some(Datum::RotaryTable),
-        "GL" | "GROUND" | "GROUND LEVEL" => Some(Datum::Ground),
-        "MSL" | "MEAN SEA LEVEL" => Some(Datum::MeanSeaLevel),
-        "ML" | "MUDLINE" => Some(Datum::Mudline),
-        _ => None,
-    }
 }
 
 #[cfg(test)]

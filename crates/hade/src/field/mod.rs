@@ -11,8 +11,10 @@ mod las;
 mod las_header;
 mod overburden;
 mod overburden_card;
+mod profile;
 mod reduce;
 
 pub use column::DensityColumn;
 pub use density_log::{DensityLog, Gap, LogSource};
 pub use overburden::{Layer, Overburden, OverburdenInputs, OverburdenOutcome, OverburdenRecord, Top};
+pub use profile::{PressureAtDepth, PressureAtDepthInputs, PressureAtDepthOutcome, PressureProfile};

@@ -3,7 +3,7 @@
 use serde::{Deserialize, Serialize};
 
 use crate::error::{Error, Result};
-use crate::units::{Length, Quantity, require_between};
+use crate::units::{Length, Quantity, require_between, with_typed_unit};
 
 /// The level a vertical depth counts down from.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize)]
@@ -27,6 +27,27 @@ impl Datum {
             Datum::MeanSeaLevel => "mean sea level",
             Datum::Ground => "the ground",
             Datum::Mudline => "the mudline",
+        }
+    }
+
+    /// The symbols of a depth below it and of its elevation above mean sea level.
+    pub(crate) fn symbols(self) -> (&'static str, &'static str) {
+        match self {
+            Datum::RotaryTable => ("z", "e_RT"),
+            Datum::MeanSeaLevel => ("z_s", "e_MSL"),
+            Datum::Ground => ("z_g", "e_G"),
+            Datum::Mudline => ("z_m", "e_M"),
+        }
+    }
+
+    /// The datum that a file names in one of the trade's usual words.
+    pub(crate) fn from_words(words: &str) -> Option<Self> {
+        match words.trim().to_uppercase().trim_start_matches("THE ") {
+            "RT" | "RKB" | "KB" | "DF" | "ROTARY TABLE" | "DRILL FLOOR" | "KELLY BUSHING" => Some(Datum::RotaryTable),
+            "GL" | "GROUND" | "GROUND LEVEL" => Some(Datum::Ground),
+            "MSL" | "MEAN SEA LEVEL" => Some(Datum::MeanSeaLevel),
+            "ML" | "MUDLINE" | "SEA FLOOR" | "SEABED" => Some(Datum::Mudline),
+            _ => None,
         }
     }
 }
@@ -56,6 +77,14 @@ impl Depth {
     /// A depth below the mudline.
     pub fn below_mudline(tvd: Length) -> Self {
         Depth { tvd, below: Datum::Mudline }
+    }
+
+    /// "2950 m below the rotary table"; at the level itself "the rotary table".
+    pub fn words(self) -> String {
+        if self.tvd.si() == 0.0 {
+            return self.below.words().to_owned();
+        }
+        format!("{} below {}", with_typed_unit(self.tvd), self.below.words())
     }
 }
 
@@ -143,7 +172,8 @@ impl DatumTie {
         })
     }
 
-    /// The same point as a depth below another level of this hole.
+    /// The same point as a depth below another level of this hole. [`DatumTie::conversion`] gives
+    /// the same with a card.
     ///
     /// # Errors
     /// When the depth is not finite or one of the levels was not stated.

@@ -10,7 +10,7 @@ use super::survey::{Leg, Meta, Survey, SurveySource};
 use crate::card::{Check, Explain, Explanation};
 use crate::error::{Error, Result};
 use crate::frames::vector::{V3, add, wrap};
-use crate::frames::{Attitude, Azimuth, Datum, Depth, NamedAttitude};
+use crate::frames::{Attitude, Azimuth, Datum, Depth, DepthConversion, LevelSource, NamedAttitude};
 use crate::units::{Angle, Length, Quantity, as_typed, with_typed_unit};
 
 /// The position and attitude of a hole at one depth, from [`Survey::at`] or [`Survey::at_tvd`].
@@ -115,13 +115,34 @@ impl Position {
         })
     }
 
-    /// The depth below another level of the hole.
+    /// The depth below another level of the hole. [`Position::conversion`] gives the same with a card.
     ///
     /// # Errors
     /// When the survey is not tied in, or the level was not stated.
     pub fn below(&self, datum: Datum) -> Result<Depth> {
         let depth = Depth { tvd: self.tvd, below: self.survey.datum()? };
         if datum == depth.below { Ok(depth) } else { self.survey.tie()?.convert(depth, datum) }
+    }
+
+    /// The depth below another level of the hole, with its card; the card of the position comes
+    /// before it on a sheet.
+    ///
+    /// # Errors
+    /// When the survey is not tied in, or the elevations of the levels were not stated.
+    pub fn conversion(&self, datum: Datum) -> Result<DepthConversion> {
+        let conversion = self.survey.tie()?.conversion(self.below(self.survey.datum()?)?, datum)?;
+        let meta = &self.survey.data().meta;
+        let levels = match &meta.source {
+            SurveySource::File { path, sha256 } if meta.tie_in_file => {
+                LevelSource::File { path: path.clone(), sha256: sha256.clone() }
+            }
+            _ => LevelSource::Typed,
+        };
+        let conversion = match meta.hole {
+            Some(hole) => conversion.named(hole.text()),
+            None => conversion,
+        };
+        Ok(conversion.levels_from(levels).standing_on(vec![self.card()]))
     }
 
     /// The horizontal distance from the wellhead.

@@ -3,11 +3,11 @@
 use std::io::Read;
 use std::path::Path;
 
-use super::read_header::{Declarations, Header};
+use super::read_header::{Header, KEYS, settle};
 use super::station::{Direct, Station, follows};
 use super::survey::{MOST_STATIONS, Meta, Survey, SurveySource};
 use crate::error::Result;
-use crate::lines::{Lines, number, shown};
+use crate::lines::{Declarations, Lines, fields, number, shown};
 use crate::units::Angle;
 
 pub(super) fn read_csv(path: &Path) -> Result<Survey> {
@@ -23,7 +23,7 @@ struct Columns {
 }
 
 pub(super) fn read<R: Read>(mut lines: Lines<R>) -> Result<Survey> {
-    let mut declared = Declarations::default();
+    let mut declared = Declarations::of(&KEYS);
     let mut table: Option<(Columns, Header)> = None;
     let mut stations: Vec<Station> = Vec::new();
     let mut above: Option<Direct> = None;
@@ -40,11 +40,11 @@ pub(super) fn read<R: Read>(mut lines: Lines<R>) -> Result<Survey> {
             declared.take(&lines, bare.trim_end_matches('"'), table.is_none())?;
             continue;
         }
-        let fields = split(&lines, text)?;
+        let fields = fields(&lines, text)?;
         match &table {
             None => {
                 let columns = columns(&lines, text, &fields)?;
-                table = Some((columns, declared.settle(&lines)?));
+                table = Some((columns, settle(&declared, &lines)?));
             }
             Some((columns, header)) => {
                 if stations.len() >= MOST_STATIONS {
@@ -96,24 +96,6 @@ pub(super) fn read<R: Read>(mut lines: Lines<R>) -> Result<Survey> {
             fix: "correct the file".to_owned(),
         }
     })
-}
-
-/// The fields of one line, by the rules of CSV.
-fn split<R: Read>(lines: &Lines<R>, text: &str) -> Result<Vec<String>> {
-    if !text.contains('"') {
-        return Ok(text.split(',').map(|field| field.trim().to_owned()).collect());
-    }
-    let mut reader = csv::ReaderBuilder::new()
-        .has_headers(false)
-        .flexible(true)
-        .trim(csv::Trim::All)
-        .buffer_capacity(text.len() + 2)
-        .from_reader(text.as_bytes());
-    let mut record = csv::StringRecord::new();
-    match reader.read_record(&mut record) {
-        Ok(_) => Ok(record.iter().map(str::to_owned).collect()),
-        Err(e) => Err(lines.bad(e.to_string(), "write the line as comma-separated values")),
-    }
 }
 
 fn columns<R: Read>(lines: &Lines<R>, text: &str, fields: &[String]) -> Result<Columns> {
@@ -230,6 +212,29 @@ mod tests {
         assert_eq!(survey.tie().unwrap().words(), "rotary table 32.4 m above mean sea level");
         let feet = parse(&format!("{}{GOOD}", HEADER.replace("depth_unit: m", "depth_unit: ft"))).unwrap();
         assert_eq!(feet.last_md(), 100.ft());
+    }
+
+    /// From a measured depth to a depth below any level; levels that the file states are its own.
+    #[test]
+    fn a_measured_depth_becomes_a_depth_below_any_level() {
+        use crate::card::{Explain, Standing};
+        use crate::frames::{Datum, Depth};
+        let header = HEADER.replace("32.4 m\n", "25 m\n# mudline_above_msl: -300 m\n");
+        let survey = parse(&format!("{header}md,inclination,azimuth\n0,0,0\n2000,0,120\n")).unwrap();
+        let position = survey.at(1000.m()).unwrap();
+        let conversion = position.conversion(Datum::Mudline).unwrap();
+        assert_eq!(conversion.depth(), Depth::below_mudline(675.m()));
+        assert_eq!(conversion.depth(), position.below(Datum::Mudline).unwrap());
+        let card = conversion.card();
+        assert!(card.passed());
+        assert_eq!(card.title(), "TVD 1000 m below the rotary table of X-1 as a depth below the mudline");
+        let [depth, levels] = card.explanation.inputs.as_slice() else { panic!("{:?}", card.explanation.inputs) };
+        assert!(position.card().explanation.results.iter().any(|r| r.same_value(depth)));
+        assert_eq!((levels.standing, levels.shown.as_str()), (Standing::File, "s.csv"));
+        assert_eq!(levels.name, "levels of X-1, above mean sea level: rotary table 25 m, mudline -300 m");
+        let upstream: Vec<String> = conversion.upstream().into_iter().map(|c| c.kind).collect();
+        assert_eq!(upstream, ["survey-position"]);
+        assert!(position.conversion(Datum::Ground).unwrap_err().to_string().contains("with_ground_at"));
     }
 
     #[test]

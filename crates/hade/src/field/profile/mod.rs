@@ -1,0 +1,11 @@
+//! Pressure and stress against depth: a table or a gradient with its datum, and the value at one
+//! depth with its card.
+
+mod at_depth;
+mod at_depth_card;
+mod law;
+mod pressure_profile;
+mod read;
+
+pub use at_depth::{PressureAtDepth, PressureAtDepthInputs, PressureAtDepthOutcome};
+pub use pressure_profile::PressureProfile;
