@@ -5,7 +5,7 @@ use crate::card::{Card, Check, Data, Explain, Json};
 use crate::error::{Error, Result};
 use crate::faults::FrictionLimit;
 use crate::field::Overburden;
-use crate::frames::{Azimuth, Borehole, Chain, Geographic};
+use crate::frames::{Azimuth, Borehole, Chain, Convergence, Declination, Geographic};
 use crate::stress::{MohrCircles, Principals, Stress, Traction};
 use crate::well::{FailingArcs, Limits, MudPressure, Position, RecommendedRange, SurveyTable, WallAround, WallStress};
 
@@ -56,6 +56,8 @@ const fn kind<E: Explain>() -> Kind {
 /// Every kind of card there is. A test fails when one is missing.
 pub const KINDS: &[Kind] = &[
     kind::<Azimuth>(),
+    kind::<Declination>(),
+    kind::<Convergence>(),
     kind::<Chain>(),
     kind::<Stress<Geographic>>(),
     kind::<Stress<Borehole>>(),
@@ -160,6 +162,7 @@ mod tests {
         let plane = Plane { strike: Azimuth::from_true_north(45.deg()), dip: 60.deg() };
         let sh = chain.carry(&s);
         let mut cards = well_samples(sh);
+        cards.extend(norths_samples());
         cards.extend([
             breakout.perpendicular().card(),
             s.card(),
@@ -184,6 +187,39 @@ mod tests {
             s.mohr().effective(31.mpa()).unwrap().with_plane(plane).unwrap().card(),
         ]);
         cards
+    }
+
+    fn norths_samples() -> Vec<Card> {
+        let site = Site::at(57.2.deg(), 1.8.deg(), "2026-05-01").unwrap().with_utm(31).unwrap();
+        let old = Site::at((-31.9).deg(), 141.5.deg(), "1974-02-28").unwrap().with_height(310.m()).unwrap();
+        let mine = old
+            .with_map_grid(MapGrid {
+                ellipsoid: Ellipsoid::international_1924(),
+                central_meridian: 141.deg(),
+                latitude_of_origin: (-30).deg(),
+                scale: 0.99994,
+                false_easting: 300_000.m(),
+                false_northing: 5_000_000.m(),
+            })
+            .unwrap();
+        let stated = site
+            .with_declination((-0.4).deg(), "survey report KF-3")
+            .unwrap()
+            .with_convergence((-0.99).deg(), "location plan KF-3")
+            .unwrap();
+        let later = Site::at(57.2.deg(), 1.8.deg(), "2034-05-01").unwrap();
+        let later = later.with_declination(0.6.deg(), "survey report KF-9").unwrap();
+        vec![
+            site.declination().unwrap().card(),
+            old.declination().unwrap().card(),
+            stated.declination().unwrap().card(),
+            later.declination().unwrap().card(),
+            site.convergence().unwrap().card(),
+            mine.convergence().unwrap().card(),
+            stated.convergence().unwrap().card(),
+            site.true_azimuth(Azimuth::from_magnetic_north(127.deg())).unwrap().card(),
+            site.true_azimuth(Azimuth::from_grid_north(359.9.deg())).unwrap().perpendicular().card(),
+        ]
     }
 
     fn well_samples(sh: Stress<Borehole>) -> Vec<Card> {

@@ -11,17 +11,24 @@
 //!   down the hole: direction = cos θ h + sin θ r. At i = 0 the azimuth given stays the reference.
 //! - A **turn** is a matrix Q whose rows are the new axes in the old frame: v' = Q v, S' = Q S Qᵀ.
 //!
+//! - **Norths**: declination D and grid convergence γ are the angles from true north to magnetic and
+//!   to grid north, east positive: true azimuth = magnetic azimuth + D = grid azimuth + γ.
+//!
 //! Nothing here assumes a north: an azimuth from magnetic or grid north must be corrected before
-//! it can be used.
+//! it can be used, by a [`Site`] or by a stated angle.
 
 mod attitude;
 mod axes;
 mod azimuth;
 mod chain;
+mod date;
 mod datum;
 mod line;
+mod magnetic;
+mod map_grid;
 mod name;
 mod plane;
+mod site;
 pub(crate) mod vector;
 
 pub use attitude::{Attitude, NamedAttitude};
@@ -30,7 +37,12 @@ pub(crate) use azimuth::three_figures;
 pub use azimuth::{Azimuth, North};
 pub use chain::{Chain, ChainInputs, Turn};
 pub(crate) use chain::{bearing_item, frame_words};
+pub use date::Date;
 pub use datum::{Datum, DatumTie, Depth};
 pub use line::Line;
+pub use magnetic::{Declination, DeclinationInputs, DeclinationOutcome, MagneticField};
+pub use map_grid::{Convergence, ConvergenceInputs, ConvergenceOutcome, Ellipsoid, MapGrid, Projected};
 pub use name::Name;
 pub use plane::Plane;
+pub(crate) use site::few_decimals;
+pub use site::{Site, Stated};

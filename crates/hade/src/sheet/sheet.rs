@@ -81,31 +81,43 @@ impl Sheet {
 
     /// Adds a result, after the results it stands on that are not on the sheet yet.
     pub fn add<E: Explain>(&mut self, result: &E) {
-        for card in result.upstream() {
-            let known =
-                self.cards().any(|c| c.kind == card.kind && c.outcome == card.outcome && c.inputs == card.inputs);
-            if !known {
-                self.put(card, true);
+        // From the result upwards: whatever is new goes before what stands on it, which may have kept the
+        // place it had when its cell was run before.
+        let mut place = self.put(result.card(), false, None);
+        for card in result.upstream().into_iter().rev() {
+            let known = self.entries.iter().enumerate().find_map(|(at, e)| match e {
+                Written::Card { card: old, by_sheet } if **old == card => Some((at, *by_sheet)),
+                _ => None,
+            });
+            match known {
+                Some((at, _)) if at < place => {}
+                Some((_, by_sheet)) => place = self.put(card, by_sheet, Some(place)),
+                None => place = self.put(card, true, Some(place)),
             }
         }
-        self.put(result.card(), false);
     }
 
-    fn put(&mut self, card: Card, by_sheet: bool) {
-        let (kind, title) = (card.kind.clone(), card.title().to_owned());
-        let written = Written::Card { card: Box::new(card), by_sheet };
-        replace_or_push(
-            &mut self.entries,
-            written,
-            |e| matches!(e, Written::Card { card, .. } if card.kind == kind && card.title() == title),
-        );
-    }
-
-    fn cards(&self) -> impl Iterator<Item = &Card> {
-        self.entries.iter().filter_map(|e| match e {
-            Written::Card { card, .. } => Some(card.as_ref()),
-            Written::Note(_) => None,
-        })
+    /// Puts a card in place of the one of its kind and title, else before an entry or at the end; gives
+    /// its place.
+    fn put(&mut self, card: Card, by_sheet: bool, before: Option<usize>) -> usize {
+        let same = |e: &Written| match e {
+            Written::Card { card: old, .. } => old.kind == card.kind && old.title() == card.title(),
+            Written::Note(_) => false,
+        };
+        let old = self.entries.iter().position(same);
+        let at = match (old, before) {
+            (Some(old), Some(before)) if old > before => {
+                self.entries.remove(old);
+                before
+            }
+            (Some(old), _) => {
+                self.entries.remove(old);
+                old
+            }
+            (None, before) => before.unwrap_or(self.entries.len()),
+        };
+        self.entries.insert(at, Written::Card { card: Box::new(card), by_sheet });
+        at
     }
 
     /// A note at this place of the work.
@@ -349,6 +361,29 @@ mod tests {
         let again = Record::from_json(&record.to_json().unwrap()).unwrap();
         assert_eq!(again, record);
         assert_eq!(again.to_json().unwrap(), record.to_json().unwrap());
+    }
+
+    #[test]
+    fn what_a_result_stands_on_stays_before_it_when_a_cell_is_run_again() {
+        let mut sheet = Sheet::new("test");
+        for measured in [127.0, 131.0] {
+            let a = sheet.given(
+                "A_b",
+                "breakout azimuth",
+                Azimuth::from_magnetic_north(measured.deg()),
+                Source::measured("log"),
+            );
+            let d = sheet.given("D", "declination", (-2.5).deg(), Source::measured("survey company"));
+            let i = sheet.given("i", "inclination", 42.deg(), Source::measured("survey"));
+            let azimuth = a.with_declination(d).unwrap();
+            sheet.note("before");
+            sheet.add(&Attitude { inclination: i, azimuth }.named("X-1").chain().unwrap());
+        }
+        let record = sheet.record();
+        assert_eq!(record.unknown_inputs(), vec![], "{:#?}", record.unknown_inputs());
+        let kinds: Vec<_> = record.cards().iter().map(|(c, _)| c.kind.clone()).collect();
+        assert_eq!(kinds, ["azimuth-to-true-north", "rotation-chain"]);
+        assert_eq!(record.entries.len(), 3);
     }
 
     #[test]

@@ -4,7 +4,7 @@ use std::io::Read;
 
 use super::station::TieIn;
 use crate::error::{Error, Result};
-use crate::frames::{Azimuth, DatumTie, Name};
+use crate::frames::{Azimuth, DatumTie, Name, North, Site};
 use crate::lines::{Lines, number, shown};
 use crate::units::{Angle, Length};
 
@@ -37,6 +37,8 @@ pub(super) struct Header {
     unit: fn(f64) -> Length,
     north: fn(Angle) -> Azimuth,
     correction: Option<Angle>,
+    /// The site, where the correction is the site's and not the file's.
+    pub site: Option<Site>,
 }
 
 impl Header {
@@ -47,8 +49,8 @@ impl Header {
     pub fn azimuth(&self, degrees: f64) -> Result<Azimuth> {
         let azimuth = (self.north)(Angle::deg(degrees));
         match (azimuth.north(), self.correction) {
-            (crate::frames::North::Grid, Some(c)) => azimuth.with_convergence(c),
-            (crate::frames::North::Magnetic, Some(c)) => azimuth.with_declination(c),
+            (North::Grid, Some(c)) => azimuth.with_convergence(c),
+            (North::Magnetic, Some(c)) => azimuth.with_declination(c),
             _ => Ok(azimuth),
         }
     }
@@ -82,10 +84,19 @@ impl Declarations {
         self.0.iter().find(|(k, ..)| *k == key).map(|(_, line, value)| (*line, value.as_str()))
     }
 
-    /// The declarations as the table needs them; `lines` stands at the column names.
-    pub fn settle<R: Read>(&self, lines: &Lines<R>) -> Result<Header> {
+    /// The declarations as the table needs them; `lines` stands at the column names. What the file does
+    /// not say of its north a site may.
+    pub fn settle<R: Read>(&self, lines: &Lines<R>, site: Option<Site>) -> Result<Header> {
         let lacking = |what: &str, write: &str| {
             lines.bad(format!("the file does not say {what}"), format!("add a line \"{write}\" above the column names"))
+        };
+        let lacking_correction = |what: &str, write: &str| {
+            lines.bad(
+                format!("the file does not say {what}"),
+                format!(
+                    "add a line \"{write}\" above the column names, or read it with Survey::read_csv_at(path, site)?"
+                ),
+            )
         };
         let (north_line, north) = self
             .get("north")
@@ -104,12 +115,25 @@ impl Declarations {
                 ));
             }
         };
-        let correction = match self.get("north_correction") {
-            Some((line, text)) => Some(Angle::deg(self.degrees(lines, line, text)?)),
-            None => None,
+        let from = maker(Angle::default()).north();
+        let site = site.filter(|_| from != North::True && self.get("north_correction").is_none());
+        let correction = match (self.get("north_correction"), site) {
+            (Some((line, text)), _) => Some(Angle::deg(self.degrees(lines, line, text)?)),
+            (None, Some(site)) => {
+                let found = site.true_azimuth(maker(Angle::default())).map_err(|e| {
+                    lines.bad_at(
+                        Some(north_line),
+                        Some("north"),
+                        e.to_string().trim_end_matches('.'),
+                        "correct the site, or add a line \"# north_correction: <degrees, east positive>\" to the file",
+                    )
+                })?;
+                found.correction()
+            }
+            (None, None) => None,
         };
-        match (maker(Angle::default()).north(), correction) {
-            (crate::frames::North::True, Some(c)) if c != Angle::default() => {
+        match (from, correction) {
+            (North::True, Some(c)) if c != Angle::default() => {
                 return Err(lines.bad_at(
                     self.get("north_correction").map(|(line, _)| line),
                     Some("north_correction"),
@@ -117,14 +141,14 @@ impl Declarations {
                     "remove the line, or correct \"north\"",
                 ));
             }
-            (crate::frames::North::Grid, None) => {
-                return Err(lacking(
+            (North::Grid, None) => {
+                return Err(lacking_correction(
                     "how grid north lies to true north",
                     "# north_correction: <convergence in degrees, east positive>",
                 ));
             }
-            (crate::frames::North::Magnetic, None) => {
-                return Err(lacking(
+            (North::Magnetic, None) => {
+                return Err(lacking_correction(
                     "how magnetic north lies to true north",
                     "# north_correction: <declination in degrees, east positive>",
                 ));
@@ -169,7 +193,7 @@ impl Declarations {
             }
         }
         let hole = self.get("hole").map(|(_, name)| Name::new(&shown(name)));
-        Ok(Header { hole, tie: self.tie(lines)?, tie_in: self.tie_in(lines)?, unit, north: maker, correction })
+        Ok(Header { hole, tie: self.tie(lines)?, tie_in: self.tie_in(lines)?, unit, north: maker, correction, site })
     }
 
     fn degrees<R: Read>(&self, lines: &Lines<R>, line: usize, text: &str) -> Result<f64> {
