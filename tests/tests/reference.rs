@@ -4,6 +4,8 @@
 mod depths;
 #[path = "reference/eigen.rs"]
 mod eigen;
+#[path = "reference/norths.rs"]
+mod norths;
 #[path = "reference/overburden.rs"]
 mod overburden;
 #[path = "reference/stress.rs"]

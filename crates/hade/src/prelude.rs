@@ -5,8 +5,8 @@ pub use crate::card::{Card, Explain};
 pub use crate::faults::FrictionLimit;
 pub use crate::field::{DensityLog, Overburden, OverburdenInputs, PressureAtDepth, PressureProfile, Top};
 pub use crate::frames::{
-    Attitude, Axes, Axis, Azimuth, Borehole, Chain, Datum, DatumTie, Depth, DepthConversion, Direction, FaultAxes,
-    Geographic, Line, Local, LocalAxes, Plane, WallAxes,
+    Attitude, Axes, Axis, Azimuth, Borehole, Chain, Convergence, Datum, DatumTie, Declination, Depth, DepthConversion,
+    Direction, Ellipsoid, FaultAxes, Geographic, Line, Local, LocalAxes, MapGrid, Plane, Site, WallAxes,
 };
 pub use crate::rock::{Rock, Strength};
 pub use crate::sheet::{Basis, Sheet, Source};
@@ -15,7 +15,7 @@ pub use crate::stress::{
     AxisComponents, Components, EffectiveStress, Horizontals, MohrCircles, Principals, Regime, Stress, Traction,
     TractionVector,
 };
-pub use crate::units::{Angle, Density, Gradient, Length, Pressure, Uncertain, Units, Warming};
+pub use crate::units::{Angle, Density, FluxDensity, Gradient, Length, Pressure, Uncertain, Units, Warming};
 pub use crate::well::{
     Breakout, FailingArcs, Limit, Limits, MudColumn, MudPressure, Position, RangeChoices, RecommendedRange, Station,
     Survey, Wall, WallAround, WallInputs, WallStress,

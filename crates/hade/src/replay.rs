@@ -5,7 +5,7 @@ use crate::card::{Card, Check, Data, Explain, Json};
 use crate::error::{Error, Result};
 use crate::faults::FrictionLimit;
 use crate::field::{Overburden, PressureAtDepth};
-use crate::frames::{Azimuth, CarriedLine, DepthConversion, Geographic, Route};
+use crate::frames::{Azimuth, CarriedLine, Convergence, Declination, DepthConversion, Geographic, Route};
 use crate::stress::{CarriedStress, CarriedTraction, MohrCircles, Principals, Stress, Traction};
 use crate::well::{FailingArcs, Limits, MudPressure, Position, RecommendedRange, SurveyTable, WallAround, WallStress};
 
@@ -58,6 +58,8 @@ pub const KINDS: &[Kind] = &[
     kind::<Azimuth>(),
     kind::<Route>(),
     kind::<CarriedLine>(),
+    kind::<Declination>(),
+    kind::<Convergence>(),
     kind::<Stress<Geographic>>(),
     kind::<CarriedStress>(),
     kind::<CarriedTraction>(),
@@ -166,6 +168,7 @@ mod tests {
         let mut cards = well_samples(sh);
         cards.extend(frame_samples(s, plane));
         cards.extend(depth_samples());
+        cards.extend(norths_samples());
         cards.extend([
             breakout.perpendicular().card(),
             s.card(),
@@ -244,6 +247,39 @@ mod tests {
             at(gradient.clone(), Depth::below_rotary_table(2950.m())),
             at(gradient.tied(land).unwrap(), Depth::below_ground(2950.m())),
             at(under_sea.tied(sea).unwrap(), Depth::below_rotary_table(2950.m())),
+        ]
+    }
+
+    fn norths_samples() -> Vec<Card> {
+        let site = Site::at(57.2.deg(), 1.8.deg(), "2026-05-01").unwrap().with_utm(31).unwrap();
+        let old = Site::at((-31.9).deg(), 141.5.deg(), "1974-02-28").unwrap().with_height(310.m()).unwrap();
+        let mine = old
+            .with_map_grid(MapGrid {
+                ellipsoid: Ellipsoid::international_1924(),
+                central_meridian: 141.deg(),
+                latitude_of_origin: (-30).deg(),
+                scale: 0.99994,
+                false_easting: 300_000.m(),
+                false_northing: 5_000_000.m(),
+            })
+            .unwrap();
+        let stated = site
+            .with_declination((-0.4).deg(), "survey report KF-3")
+            .unwrap()
+            .with_convergence((-0.99).deg(), "location plan KF-3")
+            .unwrap();
+        let later = Site::at(57.2.deg(), 1.8.deg(), "2034-05-01").unwrap();
+        let later = later.with_declination(0.6.deg(), "survey report KF-9").unwrap();
+        vec![
+            site.declination().unwrap().card(),
+            old.declination().unwrap().card(),
+            stated.declination().unwrap().card(),
+            later.declination().unwrap().card(),
+            site.convergence().unwrap().card(),
+            mine.convergence().unwrap().card(),
+            stated.convergence().unwrap().card(),
+            site.true_azimuth(Azimuth::from_magnetic_north(127.deg())).unwrap().card(),
+            site.true_azimuth(Azimuth::from_grid_north(359.9.deg())).unwrap().perpendicular().card(),
         ]
     }
 

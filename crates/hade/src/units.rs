@@ -157,6 +157,13 @@ quantity! {
     kelvin / in_kelvin = 1.0;
 }
 
+quantity! {
+    /// A magnetic flux density, the strength of the Earth's field; inside, tesla.
+    FluxDensity, "magnetic flux density", shown "nT" = 1e-9, decimals 0;
+    /// Nanotesla.
+    nt / in_nt = 1e-9;
+}
+
 impl std::ops::Mul<Length> for Gradient {
     type Output = Pressure;
     fn mul(self, depth: Length) -> Pressure {

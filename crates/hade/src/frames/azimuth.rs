@@ -2,11 +2,13 @@
 
 use serde::{Deserialize, Serialize};
 
+use super::Site;
+use super::site::{SiteRef, few_decimals};
 use super::vector::wrap;
 use crate::card::{Card, Check, Explain, Explanation, Formula, Item, Method, Step};
 use crate::error::{Error, Result};
 use crate::sheet::IntoGiven;
-use crate::units::{Angle, Quantity, Uncertain, as_typed, require_between, with_typed_unit};
+use crate::units::{Angle, Quantity, Uncertain, as_typed, fixed, require_between, with_typed_unit};
 
 /// The north an azimuth was measured from.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize)]
@@ -32,18 +34,21 @@ impl North {
 }
 
 /// An azimuth, clockwise from a stated north seen from above. It remembers what was measured and
-/// what was added, so that the correction is a step of the record.
+/// what was added, so that the correction is a step of the record; one that a [`Site`] corrected
+/// remembers the site too, and the record gets the card of its declination or convergence.
 #[derive(Clone, Copy, Debug, PartialEq, Serialize, Deserialize)]
 pub struct Azimuth {
     measured: Angle,
     north: North,
     correction: Option<Angle>,
     turned: Angle,
+    #[serde(default, skip_serializing_if = "Option::is_none")]
+    site: Option<SiteRef>,
 }
 
 impl Azimuth {
     fn measured_from(north: North, measured: Angle) -> Self {
-        Azimuth { measured, north, correction: None, turned: Angle::default() }
+        Azimuth { measured, north, correction: None, turned: Angle::default(), site: None }
     }
     /// An azimuth from true north.
     pub fn from_true_north(angle: Angle) -> Self {
@@ -77,13 +82,27 @@ impl Azimuth {
 
     fn corrected(self, from: North, what: &str, correction: Angle) -> Result<Self> {
         if self.north != from {
+            let instead = match self.north {
+                North::True => "leave it out here",
+                North::Grid => {
+                    "give the grid's convergence with .with_convergence(angle)?, or use site.true_azimuth(azimuth)? with the site's map grid"
+                }
+                North::Magnetic => {
+                    "give the declination with .with_declination(angle)?, or use site.true_azimuth(azimuth)?"
+                }
+            };
             return Err(Error::not_physical(
                 format!("an azimuth from {}", self.north.words()),
-                format!("{what} turns azimuths from {} into true ones; leave it out here.", from.words()),
+                format!("{what} turns azimuths from {} into true ones; {instead}.", from.words()),
             ));
         }
         require_between(what, correction, Angle::deg(-180.0), Angle::deg(180.0))?;
-        Ok(Azimuth { correction: Some(correction), ..self })
+        Ok(Azimuth { correction: Some(correction), site: None, ..self })
+    }
+
+    /// With the correction that a site gives for its north.
+    pub(super) fn corrected_at(self, site: Site, correction: Angle) -> Self {
+        Azimuth { correction: Some(correction), site: Some(SiteRef::new(site)), ..self }
     }
 
     /// The direction at right angles to it, as a line by its end in 0–180° (in a vertical hole,
@@ -121,6 +140,11 @@ impl Azimuth {
         self.correction
     }
 
+    /// The site that corrected it, if one did.
+    pub fn site(self) -> Option<Site> {
+        self.site.map(SiteRef::site)
+    }
+
     /// Whether it was corrected or turned since it was measured.
     pub(crate) fn has_history(self) -> bool {
         self.correction.is_some() || self.turned.si() != 0.0
@@ -129,22 +153,24 @@ impl Azimuth {
     /// The angle from true north, 0 ≤ a < 360°.
     ///
     /// # Errors
-    /// When it was measured from grid or magnetic north and no correction was given, and for NaN.
+    /// When it was measured from grid or magnetic north and no correction was given, and when the
+    /// measured angle is not a number within ±360°.
     pub fn true_north(self) -> Result<Angle> {
-        self.measured.finite("azimuth")?;
+        require_between("azimuth", self.measured, Angle::deg(-360.0), Angle::deg(360.0))?;
+        self.turned.finite("turn of an azimuth")?;
         let added = match (self.north, self.correction) {
             (North::True, _) => 0.0,
             (_, Some(correction)) => correction.si(),
             (North::Grid, None) => {
                 return Err(Error::undeclared(
                     format!("The azimuth {} is from grid north", with_typed_unit(self.measured)),
-                    "give the grid convergence with .with_convergence(angle)?, east positive.",
+                    "give the grid convergence with .with_convergence(angle)?, east positive, or use site.true_azimuth(azimuth)? with a site on its map grid.",
                 ));
             }
             (North::Magnetic, None) => {
                 return Err(Error::undeclared(
                     format!("The azimuth {} is from magnetic north", with_typed_unit(self.measured)),
-                    "give the declination of the survey with .with_declination(angle)?, east positive.",
+                    "give the declination of the survey with .with_declination(angle)?, east positive, or use site.true_azimuth(azimuth)? with a site of its place and date.",
                 ));
             }
         };
@@ -166,9 +192,15 @@ impl Azimuth {
         Item::new(symbol, name, kind, vec![within_a_circle(self.measured.si())], shown)
     }
 
-    /// The card of its correction, when there is one to show.
+    /// The card of its correction, when there is one to show, after the card of the site's declination
+    /// or convergence.
     pub(crate) fn upstream(self) -> Vec<Card> {
-        if self.has_history() && self.true_north().is_ok() { vec![self.card()] } else { Vec::new() }
+        if !self.has_history() || self.true_north().is_err() {
+            return Vec::new();
+        }
+        let mut cards = Explain::upstream(&self);
+        cards.push(self.card());
+        cards
     }
 }
 
@@ -242,13 +274,23 @@ impl Explain for Azimuth {
             if inputs.north == North::True { 0.0 } else { inputs.correction.map_or(f64::NAN, Quantity::si) };
         let measured = (inputs.measured.si().cos(), inputs.measured.si().sin());
         let v = turn(turn(measured, correction), inputs.turned.si());
-        vec![Check::compare(
+        let mut checks = vec![Check::compare(
             "bearing as a unit vector (north, east), turned step by step",
             &[outcome.si().cos(), outcome.si().sin()],
             &[v.0, v.1],
             1e-12,
             "",
-        )]
+        )];
+        if let Some(site) = inputs.site() {
+            checks.push(Check::compare(
+                "correction against the one found again for the site",
+                &[correction],
+                &[site.correction(inputs.north).map_or(f64::NAN, Quantity::si)],
+                1e-9,
+                "rad",
+            ));
+        }
+        checks
     }
 
     fn explain(&self) -> Explanation {
@@ -260,8 +302,9 @@ impl Explain for Azimuth {
         let mut inputs = vec![self.measured_item("A_m", "azimuth as measured")];
         let mut sum = format!("A = {}°", as_typed(self.measured.in_deg()));
         if let (Some(correction), true) = (self.correction, self.north != North::True) {
-            inputs.push(Item::typed(symbol, name, correction));
-            sum.push_str(&format!(" + ({}°)", as_typed(correction.in_deg())));
+            let shown = few_decimals(correction, 3);
+            inputs.push(Item::new(symbol, name, Angle::KIND, vec![correction.si()], format!("{shown}°")));
+            sum.push_str(&format!(" + ({shown}°)"));
         }
         if self.turned.si() != 0.0 {
             inputs.push(Item::typed("t", turn_words(self.turned), self.turned).chosen());
@@ -288,9 +331,31 @@ impl Explain for Azimuth {
                 ..Method::default()
             },
             steps: vec![Step::worked(sum)],
+            notes: self.site().map(|site| self.words_of(site)).into_iter().collect(),
             topics: vec!["azimuth".to_owned()],
             ..Explanation::default()
         }
+    }
+
+    fn upstream(&self) -> Vec<Card> {
+        self.site().and_then(|site| site.correction_card(self.north)).into_iter().collect()
+    }
+}
+
+impl Azimuth {
+    /// Which site the correction belongs to, and how uncertain it is.
+    fn words_of(self, site: Site) -> String {
+        let sd = match self.north {
+            North::Magnetic => site.declination().ok().and_then(|d| d.one_sd),
+            _ => None,
+        };
+        let uncertain = sd.map(|sd| {
+            format!(
+                "; one standard deviation of the declination is {}°, beside that of the measurement",
+                fixed(sd.in_deg(), 2)
+            )
+        });
+        format!("The correction is that of {}{}.", site.words(), uncertain.unwrap_or_default())
     }
 }
 
@@ -315,5 +380,68 @@ mod tests {
         assert!((over.true_north().unwrap().in_deg() - 0.5).abs() < 1e-9);
         assert_eq!(three_figures(359.97.deg()), "000.0");
         assert!(Azimuth::from_true_north(f64::NAN.deg()).true_north().is_err());
+    }
+
+    #[test]
+    fn wraps_over_north_by_the_correction_and_by_a_turn() {
+        let over = |a: f64, d: f64| {
+            let azimuth = Azimuth::from_magnetic_north(a.deg()).with_declination(d.deg()).unwrap();
+            azimuth.true_north().unwrap().in_deg()
+        };
+        assert!((over(359.9, 0.2) - 0.1).abs() < 1e-9);
+        assert!((over(0.1, -0.2) - 359.9).abs() < 1e-9);
+        assert!((over(-0.1, 0.05) - 359.95).abs() < 1e-9);
+        assert!((over(360.0, 0.0)).abs() < 1e-9);
+        let card = Azimuth::from_magnetic_north(359.9.deg()).with_declination(0.2.deg()).unwrap().card();
+        assert_eq!(card.explanation.headline, "000.1° from true north");
+        assert!(card.passed());
+    }
+
+    #[test]
+    fn an_azimuth_beyond_a_full_turn_is_refused() {
+        for a in [360.1, -360.1, 725.0, f64::INFINITY, f64::NAN] {
+            let e = Azimuth::from_true_north(a.deg()).true_north().unwrap_err();
+            assert!(e.is_range() && e.to_string().contains("between -360° and 360°"), "{e}");
+        }
+        assert!(Azimuth::from_true_north((-360).deg()).true_north().is_ok());
+        assert!(Azimuth::from_true_north(10.deg()).turned_by(f64::NAN.deg()).true_north().is_err());
+    }
+
+    #[test]
+    fn the_wrong_correction_is_told_the_right_method() {
+        let grid = Azimuth::from_grid_north(124.deg()).with_declination(1.deg()).unwrap_err().to_string();
+        assert!(grid.contains(".with_convergence(angle)?") && grid.contains("site.true_azimuth"), "{grid}");
+        let magnetic = Azimuth::from_magnetic_north(124.deg()).with_convergence(1.deg()).unwrap_err().to_string();
+        assert!(magnetic.contains(".with_declination(angle)?"), "{magnetic}");
+        let straight = Azimuth::from_true_north(124.deg()).with_convergence(1.deg()).unwrap_err().to_string();
+        assert!(straight.contains("leave it out"), "{straight}");
+        assert!(Azimuth::from_grid_north(1.deg()).with_convergence(f64::NAN.deg()).unwrap_err().is_range());
+    }
+
+    #[test]
+    fn a_correction_by_a_site_is_followed_from_card_to_card() {
+        let site = Site::at(57.2.deg(), 1.8.deg(), "2026-05-01").unwrap().with_utm(31).unwrap();
+        for (azimuth, kind) in [
+            (Azimuth::from_magnetic_north(127.deg()), "magnetic-declination"),
+            (Azimuth::from_grid_north(127.deg()), "grid-convergence"),
+        ] {
+            let corrected = site.true_azimuth(azimuth).unwrap().perpendicular();
+            assert_eq!(corrected.site(), Some(site));
+            let cards = corrected.upstream();
+            let kinds: Vec<&str> = cards.iter().map(|c| c.kind.as_str()).collect();
+            assert_eq!(kinds, [kind, "azimuth-to-true-north"]);
+            let taken = &cards[1].explanation.inputs[1];
+            assert!(cards[0].explanation.results[0].same_value(taken), "{taken:?}");
+            assert_eq!(cards[0].explanation.results[0].symbol, taken.symbol);
+            assert!(cards.iter().all(Card::passed), "{cards:#?}");
+            // A record that says another correction than its site gives is found out.
+            let tampered = Azimuth { correction: Some(2.deg()), ..corrected };
+            assert!(!tampered.card().passed());
+        }
+        let plain = Azimuth::from_true_north(35.deg());
+        assert_eq!(site.true_azimuth(plain).unwrap(), plain);
+        let stated = Azimuth::from_magnetic_north(35.deg()).with_declination(1.deg()).unwrap();
+        assert_eq!(site.true_azimuth(stated).unwrap(), stated, "a correction that was stated stays");
+        assert!(site.true_azimuth(Azimuth::from_true_north(f64::NAN.deg())).is_err());
     }
 }

@@ -14,13 +14,17 @@
 //! - **Local**: what the user states, a mine grid or two lines.
 //! - A **turn** is a matrix Q whose rows are the new axes in the old frame: v' = Q v, S' = Q S Qᵀ.
 //!
+//! - **Norths**: declination D and grid convergence γ are the angles from true north to magnetic and
+//!   to grid north, east positive: true azimuth = magnetic azimuth + D = grid azimuth + γ.
+//!
 //! Nothing here assumes a north: an azimuth from magnetic or grid north must be corrected before
-//! it can be used.
+//! it can be used, by a [`Site`] or by a stated angle.
 
 mod attitude;
 mod axes;
 mod azimuth;
 mod chain;
+mod date;
 mod datum;
 mod declared_tie;
 mod depth_conversion;
@@ -28,8 +32,11 @@ mod direction;
 mod frame;
 mod line;
 mod local;
+mod magnetic;
+mod map_grid;
 mod name;
 mod plane;
+mod site;
 mod turn;
 pub(crate) mod vector;
 
@@ -39,6 +46,7 @@ pub(crate) use azimuth::three_figures;
 pub use azimuth::{Azimuth, North};
 pub(crate) use chain::bearing_item;
 pub use chain::{CarriedBy, Chain, ChainInputs, Route};
+pub use date::Date;
 pub use datum::{Datum, DatumTie, Depth};
 pub(crate) use declared_tie::declared_tie;
 pub use depth_conversion::{ConversionInputs, ConversionOutcome, DepthConversion, LevelSource};
@@ -48,6 +56,10 @@ pub use direction::{CarriedLine, Direction, DirectionInputs};
 pub use frame::{Axis, Borehole, FaultAxes, Frame, Geographic, Local, Turned, WallAxes};
 pub use line::Line;
 pub use local::LocalAxes;
+pub use magnetic::{Declination, DeclinationInputs, DeclinationOutcome, MagneticField};
+pub use map_grid::{Convergence, ConvergenceInputs, ConvergenceOutcome, Ellipsoid, MapGrid, Projected};
 pub use name::Name;
 pub use plane::Plane;
+pub(crate) use site::few_decimals;
+pub use site::{Site, Stated};
 pub use turn::Turn;

@@ -86,12 +86,22 @@ impl Sheet {
         let card = result.card();
         let mut place = self.place_of(&card).unwrap_or(self.entries.len());
         for below in result.upstream() {
-            let known =
-                self.cards().any(|c| c.kind == below.kind && c.outcome == below.outcome && c.inputs == below.inputs);
-            if !known {
+            let known = self.entries.iter().position(|e| {
+                matches!(e, Written::Card { card: c, .. } if c.kind == below.kind && c.outcome == below.outcome && c.inputs == below.inputs)
+            });
+            match known {
+                Some(at) if at < place => {}
+                // It stands after what stands on it, whose cell was run before: it moves in front.
+                Some(at) => {
+                    let moved = self.entries.remove(at);
+                    self.entries.insert(place, moved);
+                    place += 1;
+                }
                 // One with other numbers may stand under another result; if not, the record drops it.
-                self.entries.insert(place, Written::Card { card: Box::new(below), by_sheet: true });
-                place += 1;
+                None => {
+                    self.entries.insert(place, Written::Card { card: Box::new(below), by_sheet: true });
+                    place += 1;
+                }
             }
         }
         let Some(Written::Card { card: old, by_sheet }) =
@@ -115,13 +125,6 @@ impl Sheet {
         self.entries.iter().position(
             |e| matches!(e, Written::Card { card: old, .. } if old.kind == card.kind && old.title() == card.title()),
         )
-    }
-
-    fn cards(&self) -> impl Iterator<Item = &Card> {
-        self.entries.iter().filter_map(|e| match e {
-            Written::Card { card, .. } => Some(card.as_ref()),
-            Written::Note(_) => None,
-        })
     }
 
     /// A note at this place of the work.
@@ -385,6 +388,29 @@ mod tests {
         let kinds: Vec<_> = record.cards().iter().map(|(c, _)| c.title().to_owned()).collect();
         assert_eq!(kinds.len(), 5, "{kinds:?}");
         assert!(kinds.contains(&"Principal stresses of the cell".to_owned()), "{kinds:?}");
+    }
+
+    #[test]
+    fn what_a_result_stands_on_stays_before_it_when_a_cell_is_run_again() {
+        let mut sheet = Sheet::new("test");
+        for measured in [127.0, 131.0] {
+            let a = sheet.given(
+                "A_b",
+                "breakout azimuth",
+                Azimuth::from_magnetic_north(measured.deg()),
+                Source::measured("log"),
+            );
+            let d = sheet.given("D", "declination", (-2.5).deg(), Source::measured("survey company"));
+            let i = sheet.given("i", "inclination", 42.deg(), Source::measured("survey"));
+            let azimuth = a.with_declination(d).unwrap();
+            sheet.note("before");
+            sheet.add(&Attitude { inclination: i, azimuth }.named("X-1").chain().unwrap());
+        }
+        let record = sheet.record();
+        assert_eq!(record.unknown_inputs(), vec![], "{:#?}", record.unknown_inputs());
+        let kinds: Vec<_> = record.cards().iter().map(|(c, _)| c.kind.clone()).collect();
+        assert_eq!(kinds, ["azimuth-to-true-north", "rotation-chain"]);
+        assert_eq!(record.entries.len(), 3);
     }
 
     #[test]

@@ -7,7 +7,7 @@ use super::position_card::explain;
 use super::position_check::check;
 use super::station::Station;
 use super::survey::{Leg, Meta, Survey, SurveySource};
-use crate::card::{Check, Explain, Explanation};
+use crate::card::{Card, Check, Explain, Explanation};
 use crate::error::{Error, Result};
 use crate::frames::vector::{V3, add, wrap};
 use crate::frames::{Attitude, Azimuth, Datum, Depth, DepthConversion, LevelSource, NamedAttitude};
@@ -370,13 +370,16 @@ impl Explain for Position {
     fn explain(&self) -> Explanation {
         explain(self)
     }
+    fn upstream(&self) -> Vec<Card> {
+        self.survey().upstream()
+    }
 }
 
 #[cfg(test)]
 mod tests {
     use super::super::survey::tests::station;
     use super::*;
-    use crate::card::{Card, Data};
+    use crate::card::Data;
     use crate::frames::DatumTie;
     use crate::units::Units;
     use crate::well::{Survey, SurveyTable};

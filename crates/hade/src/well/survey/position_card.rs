@@ -6,8 +6,8 @@ use super::survey::{Leg, Survey, SurveySource};
 use super::table::{rows, station_columns};
 use crate::card::{Axis, Explanation, Figure, Formula, Item, Layer, Mark, Method, Reference, Role, Step, Table};
 use crate::frames::vector::{V3, add, wrap};
-use crate::frames::{Datum, North, bearing_item, three_figures};
-use crate::units::{Angle, Length, Quantity, as_typed, fixed};
+use crate::frames::{Datum, North, bearing_item, few_decimals, three_figures};
+use crate::units::{Angle, Length, Quantity, fixed};
 
 /// A card prints no more station rows than this.
 const MOST_ROWS: usize = 80;
@@ -79,11 +79,11 @@ pub(super) fn declarations(survey: &Survey) -> String {
         Some(azimuth) => match (azimuth.north(), azimuth.correction()) {
             (North::Grid, Some(c)) => format!(
                 "azimuths from grid north, convergence {}° (east positive), so true = grid + ({0}°)",
-                as_typed(c.in_deg())
+                few_decimals(c, 4)
             ),
             (North::Magnetic, Some(c)) => format!(
                 "azimuths from magnetic north, declination {}° (east positive), so true = magnetic + ({0}°)",
-                as_typed(c.in_deg())
+                few_decimals(c, 4)
             ),
             (north, _) => format!("azimuths from {}", north.words()),
         },
@@ -94,6 +94,10 @@ pub(super) fn declarations(survey: &Survey) -> String {
             format!("; the first station lies {} north and {} east of the wellhead at TVD {}", t.north, t.east, t.tvd)
         }
         None => String::new(),
+    };
+    let north = match survey.corrected_at() {
+        Some((site, _)) => format!("{north}; that correction is the site's, {}", site.words()),
+        None => north,
     };
     format!("{by}{north}; depths from the rotary table{levels}{begin}.")
 }
@@ -113,6 +117,15 @@ fn inputs(p: &Position) -> Vec<Item> {
 pub(super) fn stated_items(survey: &Survey) -> Vec<Item> {
     let meta = &survey.data().meta;
     let mut items = Vec::new();
+    if let (Some((_, north)), Some(c)) =
+        (survey.corrected_at(), survey.data().stations.first().and_then(|s| s.azimuth.correction()))
+    {
+        let (symbol, name) = match north {
+            North::Grid => ("γ", "grid convergence of the site, east positive"),
+            _ => ("D", "magnetic declination of the site, east positive"),
+        };
+        items.push(Item::new(symbol, name, Angle::KIND, vec![c.si()], format!("{}°", few_decimals(c, 4))));
+    }
     if let (Some(level), false) = (level(survey), meta.tie_in_file) {
         items.push(Item::typed("e_RT", "rotary table above mean sea level", level));
     }

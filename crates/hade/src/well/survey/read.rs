@@ -7,11 +7,25 @@ use super::read_header::{Header, KEYS, settle};
 use super::station::{Direct, Station, follows};
 use super::survey::{MOST_STATIONS, Meta, Survey, SurveySource};
 use crate::error::Result;
+use crate::frames::Site;
 use crate::lines::{Declarations, Lines, fields, number, shown};
 use crate::units::Angle;
 
 pub(super) fn read_csv(path: &Path) -> Result<Survey> {
-    read(Lines::open(path)?)
+    read(Lines::open(path)?, None)
+}
+
+impl Survey {
+    /// Reads a survey as [`Survey::read_csv`] does, from a file that names its north as grid or
+    /// magnetic and not how that lies to true north: the site's convergence or declination then
+    /// corrects every station. A correction that the file states itself goes before the site's.
+    ///
+    /// # Errors
+    /// As [`Survey::read_csv`], and when the site has no map grid for grid north, or lies outside the
+    /// years of the magnetic models for magnetic north.
+    pub fn read_csv_at(path: impl AsRef<Path>, site: Site) -> Result<Self> {
+        read(Lines::open(path.as_ref())?, Some(site))
+    }
 }
 
 /// The places of the three columns, and how many columns there are.
@@ -22,7 +36,7 @@ struct Columns {
     count: usize,
 }
 
-pub(super) fn read<R: Read>(mut lines: Lines<R>) -> Result<Survey> {
+pub(super) fn read<R: Read>(mut lines: Lines<R>, site: Option<Site>) -> Result<Survey> {
     let mut declared = Declarations::of(&KEYS);
     let mut table: Option<(Columns, Header)> = None;
     let mut stations: Vec<Station> = Vec::new();
@@ -44,7 +58,7 @@ pub(super) fn read<R: Read>(mut lines: Lines<R>) -> Result<Survey> {
         match &table {
             None => {
                 let columns = columns(&lines, text, &fields)?;
-                table = Some((columns, settle(&declared, &lines)?));
+                table = Some((columns, settle(&declared, &lines, site)?));
             }
             Some((columns, header)) => {
                 if stations.len() >= MOST_STATIONS {
@@ -84,10 +98,10 @@ pub(super) fn read<R: Read>(mut lines: Lines<R>) -> Result<Survey> {
         }
         _ => {}
     }
-    let (hole, tie, tie_in) = (header.hole, header.tie, header.tie_in);
+    let (hole, tie, tie_in, site) = (header.hole, header.tie, header.tie_in, header.site);
     let path = lines.path().to_owned();
     let source = SurveySource::File { path: path.clone(), sha256: lines.sha256() };
-    Survey::build(stations, Meta { hole, source, tie, tie_in_file: tie.is_some(), tie_in }).map_err(|e| {
+    Survey::build(stations, Meta { hole, source, tie, tie_in_file: tie.is_some(), tie_in, site }).map_err(|e| {
         crate::error::Error::Unreadable {
             path,
             line: None,
@@ -188,7 +202,10 @@ mod tests {
     const HEADER: &str = "# hole: X-1\n# north: grid\n# north_correction: -1.5\n# depth_unit: m\n# angle_unit: deg\n# depth_datum: rotary table\n# rotary_table_above_msl: 32.4 m\n";
 
     fn parse(text: &str) -> Result<Survey> {
-        read(Lines::over(text.as_bytes(), "s.csv"))
+        read(Lines::over(text.as_bytes(), "s.csv"), None)
+    }
+    fn parse_at(text: &str, site: Site) -> Result<Survey> {
+        read(Lines::over(text.as_bytes(), "s.csv"), Some(site))
     }
     fn with_header(table: &str) -> Result<Survey> {
         parse(&format!("{HEADER}{table}"))
@@ -279,6 +296,46 @@ mod tests {
     }
 
     #[test]
+    fn a_site_gives_the_correction_that_the_file_does_not() {
+        use crate::card::{Card, Explain};
+        let site = Site::at(57.2.deg(), 1.8.deg(), "2026-05-01").unwrap();
+        let on_grid = site.with_utm(31).unwrap();
+        let bare = format!("{HEADER}{GOOD}").replace("# north_correction: -1.5\n", "");
+        assert!(refused(&bare).contains("read_csv_at(path, site)?"), "{}", refused(&bare));
+        let last = |survey: &Survey| survey.stations()[1].azimuth.true_north().unwrap().in_deg() - 120.0;
+        let by_grid = parse_at(&bare, on_grid).unwrap();
+        assert!((last(&by_grid) - on_grid.convergence().unwrap().angle.in_deg()).abs() < 1e-12);
+        let magnetic = bare.replace("north: grid", "north: magnetic");
+        let by_needle = parse_at(&magnetic, site).unwrap();
+        assert!((last(&by_needle) - site.declination().unwrap().angle.in_deg()).abs() < 1e-12);
+        // Its cards stand on the site's, and take its correction from there.
+        let table = by_needle.table().unwrap();
+        for (card, upstream) in [
+            (table.card(), table.upstream()),
+            (by_needle.at(50.m()).unwrap().card(), by_needle.at(50.m()).unwrap().upstream()),
+        ] {
+            let [above] = upstream.as_slice() else { panic!("{upstream:#?}") };
+            assert_eq!(above.kind, "magnetic-declination");
+            let taken = |c: &Card| c.explanation.inputs.iter().any(|i| i.same_value(&above.explanation.results[0]));
+            assert!(taken(&card), "{:#?}", card.explanation.inputs);
+            assert!(crate::replay::replay(&card).unwrap().agrees());
+            let said = serde_json::to_string(&card.explanation.steps).unwrap();
+            assert!(said.contains("57.2° N, 1.8° E on 2026-05-01"), "{said}");
+        }
+        // The file's own correction goes first, and true north needs none.
+        let own = parse_at(&format!("{HEADER}{GOOD}"), on_grid).unwrap();
+        assert_eq!(own, parse(&format!("{HEADER}{GOOD}")).unwrap());
+        assert!(own.table().unwrap().upstream().is_empty());
+        let straight = bare.replace("north: grid", "north: true");
+        assert_eq!(parse_at(&straight, site).unwrap(), parse(&straight).unwrap());
+        // A site that cannot say it is refused with file and line.
+        let e = parse_at(&bare, site).unwrap_err().to_string();
+        assert!(e.starts_with("s.csv, line 2, column \"north\": The site") && e.contains("with_utm(31)"), "{e}");
+        let late = Site::at(57.2.deg(), 1.8.deg(), "2035-05-01").unwrap();
+        assert!(parse_at(&magnetic, late).unwrap_err().to_string().contains("WMM2025"));
+    }
+
+    #[test]
     fn every_bad_row_says_where_and_what_to_do() {
         assert_eq!(
             refused_table("md,inclination,azimuth\n0,0,0\n200,1,120\n100,1,120\n"),
@@ -333,7 +390,7 @@ mod tests {
     proptest! {
         #[test]
         fn never_panics_on_any_bytes(bytes in proptest::collection::vec(any::<u8>(), 0..2000)) {
-            let _ = read(Lines::over(bytes.as_slice(), "x"));
+            let _ = read(Lines::over(bytes.as_slice(), "x"), None);
         }
 
         #[test]

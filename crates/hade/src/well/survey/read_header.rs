@@ -4,7 +4,7 @@ use std::io::Read;
 
 use super::station::TieIn;
 use crate::error::Result;
-use crate::frames::{Azimuth, DatumTie, Name, declared_tie};
+use crate::frames::{Azimuth, DatumTie, Name, North, Site, declared_tie};
 use crate::lines::{Declarations, Lines, number, shown};
 use crate::units::{Angle, Length};
 
@@ -33,6 +33,8 @@ pub(super) struct Header {
     unit: fn(f64) -> Length,
     north: fn(Angle) -> Azimuth,
     correction: Option<Angle>,
+    /// The site, where the correction is the site's and not the file's.
+    pub site: Option<Site>,
 }
 
 impl Header {
@@ -43,15 +45,16 @@ impl Header {
     pub fn azimuth(&self, degrees: f64) -> Result<Azimuth> {
         let azimuth = (self.north)(Angle::deg(degrees));
         match (azimuth.north(), self.correction) {
-            (crate::frames::North::Grid, Some(c)) => azimuth.with_convergence(c),
-            (crate::frames::North::Magnetic, Some(c)) => azimuth.with_declination(c),
+            (North::Grid, Some(c)) => azimuth.with_convergence(c),
+            (North::Magnetic, Some(c)) => azimuth.with_declination(c),
             _ => Ok(azimuth),
         }
     }
 }
 
-/// The declarations as the table needs them; `lines` stands at the column names.
-pub(super) fn settle<R: Read>(declared: &Declarations, lines: &Lines<R>) -> Result<Header> {
+/// The declarations as the table needs them; `lines` stands at the column names. What the file does
+/// not say of its north a site may.
+pub(super) fn settle<R: Read>(declared: &Declarations, lines: &Lines<R>, site: Option<Site>) -> Result<Header> {
     let lacking = |what: &str, write: &str| {
         lines.bad(format!("the file does not say {what}"), format!("add a line \"{write}\" above the column names"))
     };
@@ -72,12 +75,31 @@ pub(super) fn settle<R: Read>(declared: &Declarations, lines: &Lines<R>) -> Resu
             ));
         }
     };
-    let correction = match declared.get("north_correction") {
-        Some((line, text)) => Some(Angle::deg(degrees(lines, line, text)?)),
-        None => None,
+    let from = maker(Angle::default()).north();
+    let site = site.filter(|_| from != North::True && declared.get("north_correction").is_none());
+    let correction = match (declared.get("north_correction"), site) {
+        (Some((line, text)), _) => Some(Angle::deg(degrees(lines, line, text)?)),
+        (None, Some(site)) => {
+            let found = site.true_azimuth(maker(Angle::default())).map_err(|e| {
+                lines.bad_at(
+                    Some(north_line),
+                    Some("north"),
+                    e.to_string().trim_end_matches('.'),
+                    "correct the site, or add a line \"# north_correction: <degrees, east positive>\" to the file",
+                )
+            })?;
+            found.correction()
+        }
+        (None, None) => None,
     };
-    match (maker(Angle::default()).north(), correction) {
-        (crate::frames::North::True, Some(c)) if c != Angle::default() => {
+    let lacking_correction = |what: &str, write: &str| {
+        lines.bad(
+            format!("the file does not say {what}"),
+            format!("add a line \"{write}\" above the column names, or read it with Survey::read_csv_at(path, site)?"),
+        )
+    };
+    match (from, correction) {
+        (North::True, Some(c)) if c != Angle::default() => {
             return Err(lines.bad_at(
                 declared.get("north_correction").map(|(line, _)| line),
                 Some("north_correction"),
@@ -85,14 +107,14 @@ pub(super) fn settle<R: Read>(declared: &Declarations, lines: &Lines<R>) -> Resu
                 "remove the line, or correct \"north\"",
             ));
         }
-        (crate::frames::North::Grid, None) => {
-            return Err(lacking(
+        (North::Grid, None) => {
+            return Err(lacking_correction(
                 "how grid north lies to true north",
                 "# north_correction: <convergence in degrees, east positive>",
             ));
         }
-        (crate::frames::North::Magnetic, None) => {
-            return Err(lacking(
+        (North::Magnetic, None) => {
+            return Err(lacking_correction(
                 "how magnetic north lies to true north",
                 "# north_correction: <declination in degrees, east positive>",
             ));
@@ -144,6 +166,7 @@ pub(super) fn settle<R: Read>(declared: &Declarations, lines: &Lines<R>) -> Resu
         unit,
         north: maker,
         correction,
+        site,
     })
 }
 

@@ -8,10 +8,10 @@ use serde::{Deserialize, Serialize};
 use super::arc::Arc;
 use super::position::{Asked, Position};
 use super::station::{Direct, Station, TieIn, follows};
-use crate::card::Item;
+use crate::card::{Card, Item};
 use crate::error::{Error, Result};
 use crate::frames::vector::{V3, add};
-use crate::frames::{Datum, DatumTie, Name};
+use crate::frames::{Datum, DatumTie, Name, North, Site};
 use crate::sheet::IntoGiven;
 use crate::units::{Length, Quantity, as_typed, with_typed_unit};
 
@@ -48,6 +48,9 @@ pub(super) struct Meta {
     /// Whether the file itself states the levels.
     pub tie_in_file: bool,
     pub tie_in: Option<TieIn>,
+    /// The site whose convergence or declination corrects the stations, where the file states none.
+    #[serde(default, skip_serializing_if = "Option::is_none")]
+    pub site: Option<Site>,
 }
 
 /// Where the stations of a survey came from.
@@ -91,7 +94,8 @@ impl Survey {
     /// negative, repeated or not rising; when an inclination is outside 0–180°; when an azimuth
     /// from grid or magnetic north has no correction; when the hole would turn back on itself.
     pub fn from_stations(stations: &[Station]) -> Result<Self> {
-        let meta = Meta { hole: None, source: SurveySource::Typed, tie: None, tie_in_file: false, tie_in: None };
+        let meta =
+            Meta { hole: None, source: SurveySource::Typed, tie: None, tie_in_file: false, tie_in: None, site: None };
         Survey::build(stations.to_vec(), meta)
     }
 
@@ -109,6 +113,8 @@ impl Survey {
     /// # tie_in_north: 0 m                   (with tie_in_east, tie_in_tvd: when MD does not begin at 0)
     /// md,inclination,azimuth
     /// ```
+    ///
+    /// Where the file does not state its `north_correction`, [`Survey::read_csv_at`] takes it from a site.
     ///
     /// Further columns are ignored. Read line by line; at most 100 000 stations.
     ///
@@ -304,6 +310,17 @@ impl Survey {
             SurveySource::File { path, sha256 } => Item::file("survey", path.clone(), sha256.clone()),
             SurveySource::Typed => self.stations_item("", "survey stations"),
         }
+    }
+
+    /// The north that the site corrects, with the site; `None` when the file or the notebook did.
+    pub(super) fn corrected_at(&self) -> Option<(Site, North)> {
+        let first = self.data.stations.first()?;
+        self.data.meta.site.map(|site| (site, first.azimuth.north()))
+    }
+
+    /// The card of the site's convergence or declination, where that corrects the stations.
+    pub(super) fn upstream(&self) -> Vec<Card> {
+        self.corrected_at().and_then(|(site, north)| site.correction_card(north)).into_iter().collect()
     }
 
     /// Every station as one value: measured depth, inclination, true azimuth.

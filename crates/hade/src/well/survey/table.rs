@@ -8,7 +8,7 @@ use super::position_card::{declarations, method, path, stated_items};
 use super::position_check::{metres, places_by_quadrature};
 use super::station::Station;
 use super::survey::{Meta, Survey};
-use crate::card::{Axis, Check, Column, Explain, Explanation, Figure, Item, Layer, Role, Step, Table};
+use crate::card::{Axis, Card, Check, Column, Explain, Explanation, Figure, Item, Layer, Role, Step, Table};
 use crate::error::Result;
 use crate::frames::three_figures;
 use crate::frames::vector::{cross, dot, norm};
@@ -228,5 +228,9 @@ impl Explain for SurveyTable {
             topics: vec!["survey".to_owned()],
             ..Explanation::default()
         }
+    }
+
+    fn upstream(&self) -> Vec<Card> {
+        self.survey.upstream()
     }
 }
