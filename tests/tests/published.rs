@@ -2,6 +2,8 @@
 
 #[path = "published/overburden.rs"]
 mod overburden;
+#[path = "published/planes.rs"]
+mod planes;
 #[path = "published/stress.rs"]
 mod stress;
 #[path = "published/survey.rs"]

@@ -1,11 +1,17 @@
 //! Checks against values worked out outside this project.
 
+#[path = "reference/axes.rs"]
+mod axes;
 #[path = "reference/overburden.rs"]
 mod overburden;
 #[path = "reference/stress.rs"]
 mod stress;
 #[path = "reference/survey.rs"]
 mod survey;
+#[path = "reference/tensor_measures.rs"]
+mod tensor_measures;
+#[path = "reference/tensor_traps.rs"]
+mod tensor_traps;
 #[path = "reference/wall.rs"]
 mod wall;
 #[path = "reference/wall_traps.rs"]

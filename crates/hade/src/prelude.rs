@@ -5,12 +5,17 @@ pub use crate::card::{Card, Explain};
 pub use crate::faults::FrictionLimit;
 pub use crate::field::{DensityLog, Overburden, OverburdenInputs, Top};
 pub use crate::frames::{
-    Attitude, Axis, Azimuth, Borehole, Chain, Datum, DatumTie, Depth, Geographic, Line, Plane, WallAxes,
+    ApparentDip, Attitude, Axis, Azimuth, BestRotation, Borehole, Chain, Datum, DatumTie, Depth, DirectionPair,
+    FittedAxes, Geographic, Line, LineAtRake, MeasuredAxes, Plane, PlaneThroughLines, PlanesIntersection, RakeOfLine,
+    WallAxes,
 };
 pub use crate::rock::{Rock, Strength};
 pub use crate::sheet::{Basis, Sheet, Source};
 pub use crate::show::{NotebookDisplay, Show};
-pub use crate::stress::{Components, EffectiveStress, Horizontals, MohrCircles, Principals, Regime, Stress, Traction};
+pub use crate::stress::{
+    Components, EffectiveStress, FaultingRegime, HorizontalStresses, Horizontals, Invariants, MohrCircles, Principals,
+    Regime, Stress, Traction,
+};
 pub use crate::units::{Angle, Density, Gradient, Length, Pressure, Uncertain, Units, Warming};
 pub use crate::well::{
     Breakout, FailingArcs, Limit, Limits, MudColumn, MudPressure, Position, RangeChoices, RecommendedRange, Station,

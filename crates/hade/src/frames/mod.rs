@@ -4,7 +4,9 @@
 //!
 //! - **Geographic**: x north, y east, z down, right-handed, *true* north. Azimuth clockwise from
 //!   north seen from above. Plunge positive down. Strike by the right-hand rule: the plane dips to
-//!   the right of its strike, dip direction = strike + 90°.
+//!   the right of its strike, dip direction = strike + 90°. Rake in a plane counts from the strike
+//!   azimuth, up dip positive, as for the slip of a hanging wall.
+//! - A **line** has no sign: either end is the same line, and a horizontal one has two equal trends.
 //! - **Borehole** of inclination i (from vertical-down, 0–180°) and azimuth a: x = the top of the
 //!   hole h = (cos i cos a, cos i sin a, −sin i); y = its right r = (−sin a, cos a, 0); z = along
 //!   the hole, down, t = (sin i cos a, sin i sin a, cos i). Tool face θ clockwise from h looking
@@ -19,6 +21,7 @@ mod axes;
 mod azimuth;
 mod chain;
 mod datum;
+mod geometry;
 mod line;
 mod name;
 mod plane;
@@ -31,6 +34,13 @@ pub use azimuth::{Azimuth, North};
 pub use chain::{Chain, ChainInputs, Turn};
 pub(crate) use chain::{bearing_item, frame_words};
 pub use datum::{Datum, DatumTie, Depth};
+pub use geometry::{
+    ApparentDip, ApparentDipInputs, BestRotation, BestRotationOutcome, DirectionPair, FittedAxes, FittedAxesOutcome,
+    LineAtRake, LineAtRakeInputs, LineOutcome, MeasuredAxes, PlaneThroughLines, PlaneThroughLinesOutcome,
+    PlanesIntersection, PlanesIntersectionOutcome, RakeOfLine, RakeOfLineInputs, RakeOfLineOutcome, TwoLines,
+    TwoPlanes,
+};
+pub(crate) use geometry::{by_singular_values, nearest_orthonormal};
 pub use line::Line;
 pub use name::Name;
 pub use plane::Plane;
