@@ -4,6 +4,8 @@
 mod norths;
 #[path = "published/overburden.rs"]
 mod overburden;
+#[path = "published/planes.rs"]
+mod planes;
 #[path = "published/stress.rs"]
 mod stress;
 #[path = "published/survey.rs"]

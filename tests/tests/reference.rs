@@ -1,5 +1,7 @@
 //! Checks against values worked out outside this project.
 
+#[path = "reference/axes.rs"]
+mod axes;
 #[path = "reference/depths.rs"]
 mod depths;
 #[path = "reference/eigen.rs"]
@@ -12,6 +14,10 @@ mod overburden;
 mod stress;
 #[path = "reference/survey.rs"]
 mod survey;
+#[path = "reference/tensor_measures.rs"]
+mod tensor_measures;
+#[path = "reference/tensor_traps.rs"]
+mod tensor_traps;
 #[path = "reference/turns.rs"]
 mod turns;
 #[path = "reference/wall.rs"]

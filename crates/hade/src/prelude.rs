@@ -5,15 +5,17 @@ pub use crate::card::{Card, Explain};
 pub use crate::faults::FrictionLimit;
 pub use crate::field::{DensityLog, Overburden, OverburdenInputs, PressureAtDepth, PressureProfile, Top};
 pub use crate::frames::{
-    Attitude, Axes, Axis, Azimuth, Borehole, Chain, Convergence, Datum, DatumTie, Declination, Depth, DepthConversion,
-    Direction, Ellipsoid, FaultAxes, Geographic, Line, Local, LocalAxes, MapGrid, Plane, Site, WallAxes,
+    ApparentDip, Attitude, Axes, Axis, Azimuth, BestRotation, Borehole, Chain, Convergence, Datum, DatumTie,
+    Declination, Depth, DepthConversion, Direction, DirectionPair, Ellipsoid, FaultAxes, FittedAxes, Geographic, Line,
+    LineAtRake, Local, LocalAxes, MapGrid, MeasuredAxes, Plane, PlaneThroughLines, PlanesIntersection, RakeOfLine,
+    Site, WallAxes,
 };
 pub use crate::rock::{Rock, Strength};
 pub use crate::sheet::{Basis, Sheet, Source};
 pub use crate::show::{NotebookDisplay, Show};
 pub use crate::stress::{
-    AxisComponents, Components, EffectiveStress, Horizontals, MohrCircles, Principals, Regime, Stress, Traction,
-    TractionVector,
+    AxisComponents, Components, EffectiveStress, FaultingRegime, HorizontalStresses, Horizontals, Invariants,
+    MohrCircles, Principals, Regime, Stress, Traction, TractionVector,
 };
 pub use crate::units::{Angle, Density, FluxDensity, Gradient, Length, Pressure, Uncertain, Units, Warming};
 pub use crate::well::{

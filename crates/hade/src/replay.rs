@@ -5,8 +5,14 @@ use crate::card::{Card, Check, Data, Explain, Json};
 use crate::error::{Error, Result};
 use crate::faults::FrictionLimit;
 use crate::field::{Overburden, PressureAtDepth};
-use crate::frames::{Azimuth, CarriedLine, Convergence, Declination, DepthConversion, Geographic, Route};
-use crate::stress::{CarriedStress, CarriedTraction, MohrCircles, Principals, Stress, Traction};
+use crate::frames::{
+    ApparentDip, Azimuth, BestRotation, CarriedLine, Convergence, Declination, DepthConversion, FittedAxes, Geographic,
+    LineAtRake, PlaneThroughLines, PlanesIntersection, RakeOfLine, Route,
+};
+use crate::stress::{
+    CarriedStress, CarriedTraction, FaultingRegime, HorizontalStresses, Invariants, MohrCircles, Principals, Stress,
+    Traction,
+};
 use crate::well::{FailingArcs, Limits, MudPressure, Position, RecommendedRange, SurveyTable, WallAround, WallStress};
 
 /// A kind of card: how it is computed and checked.
@@ -60,11 +66,21 @@ pub const KINDS: &[Kind] = &[
     kind::<CarriedLine>(),
     kind::<Declination>(),
     kind::<Convergence>(),
+    kind::<PlaneThroughLines>(),
+    kind::<PlanesIntersection>(),
+    kind::<ApparentDip>(),
+    kind::<LineAtRake>(),
+    kind::<RakeOfLine>(),
+    kind::<FittedAxes>(),
+    kind::<BestRotation>(),
     kind::<Stress<Geographic>>(),
     kind::<CarriedStress>(),
     kind::<CarriedTraction>(),
     kind::<Principals>(),
     kind::<Traction>(),
+    kind::<Invariants>(),
+    kind::<HorizontalStresses>(),
+    kind::<FaultingRegime>(),
     kind::<MohrCircles>(),
     kind::<FrictionLimit>(),
     kind::<SurveyTable>(),
@@ -192,6 +208,64 @@ mod tests {
             s.frictional_limit(31.mpa(), 0.6).unwrap().card(),
             s.mohr().effective(31.mpa()).unwrap().with_plane(plane).unwrap().card(),
         ]);
+        cards.extend(geometry_samples());
+        cards.extend(tensor_samples());
+        cards
+    }
+
+    /// Lines, planes and fits of axes; azimuths with a correction, so that it is carried along.
+    fn geometry_samples() -> Vec<Card> {
+        let magnetic = |t: f64| Azimuth::from_magnetic_north(t.deg()).with_declination((-2.5).deg()).unwrap();
+        let line = |t: f64, p: f64| Line { trend: magnetic(t), plunge: p.deg() };
+        let plane = Plane::from_dip_direction(magnetic(137.0), 62.deg());
+        let joint = Plane { strike: magnetic(210.0), dip: 35.deg() };
+        let lines = [line(35.0, 12.0), line(127.0, -8.0), line(246.0, 75.0)];
+        let left_handed = [lines[1], lines[0], lines[2]];
+        let pair = |reference, measured, weight| DirectionPair { reference, measured, weight };
+        let turned = [
+            pair([1.0, 0.0, 0.0], [0.1, 0.9, 0.2], 1.0),
+            pair([0.0, 1.0, 0.0], [-0.9, 0.2, 0.1], 2.0),
+            pair([0.1, 0.2, 1.0], [0.0, -0.1, 1.0], 1.5),
+        ];
+        let reflected = [pair([0.1, 0.2, 1.0], [0.3, -0.1, -0.6], 0.5), turned[0], turned[1]];
+        vec![
+            Plane::through(line(47.0, 5.0), line(120.0, -50.0)).unwrap().card(),
+            plane.intersection(joint).unwrap().card(),
+            plane.intersection(Plane { dip: 20.deg(), ..plane }).unwrap().card(),
+            plane.intersection(Plane::across(line(300.0, -30.0)).unwrap()).unwrap().card(),
+            plane.apparent_dip(magnetic(20.0)).unwrap().card(),
+            plane.apparent_dip(magnetic(100.0)).unwrap().card(),
+            plane.line_at_rake((-30).deg()).unwrap().card(),
+            plane.line_at_rake(110.deg()).unwrap().card(),
+            plane.rake_of(line(72.0, 40.0)).unwrap().card(),
+            plane.rake_of(line(30.0, -22.0)).unwrap().card(),
+            MeasuredAxes { lines }.fitted().unwrap().card(),
+            MeasuredAxes { lines: left_handed }.fitted().unwrap().card(),
+            BestRotation::of(&turned).unwrap().card(),
+            BestRotation::of(&reflected).unwrap().card(),
+        ]
+    }
+
+    /// Measures of tilted, upright and degenerate stresses.
+    fn tensor_samples() -> Vec<Card> {
+        let tensor = |[nn, ee, dd, ne, nd, ed]: [f64; 6]| {
+            let (nn, ee, dd) = (nn.mpa(), ee.mpa(), dd.mpa());
+            Stress::from_components(Components { nn, ee, dd, ne: ne.mpa(), nd: nd.mpa(), ed: ed.mpa() }).unwrap()
+        };
+        let states = [
+            tensor([52.0, 66.0, 41.0, -5.4, -1.9, -2.3]),
+            tensor([48.0, 40.0, 45.0, 3.0, 11.0, -7.0]),
+            tensor([20.0, -6.0, 33.0, 3.0, 5.0, -2.0]),
+            tensor([30.0, 30.0, 55.0, 0.0, 0.0, 0.0]),
+            tensor([50.0, 30.0, 50.0, 0.0, 0.0, 0.0]),
+            tensor([40.0, 40.0, 40.0, 0.0, 0.0, 0.0]),
+        ];
+        let hole = Attitude { inclination: 42.deg(), azimuth: Azimuth::from_true_north(120.deg()) };
+        let carried = hole.named("KF-3 at 2950 m").chain().unwrap().carry(&states[0]);
+        let mut cards = vec![carried.invariants().card()];
+        for s in states {
+            cards.extend([s.invariants().card(), s.horizontal_stresses().card(), s.a_phi().card()]);
+        }
         cards
     }
 

@@ -4,7 +4,9 @@
 //!
 //! - **Geographic**: x north, y east, z down, right-handed, *true* north. Azimuth clockwise from
 //!   north seen from above. Plunge positive down. Strike by the right-hand rule: the plane dips to
-//!   the right of its strike, dip direction = strike + 90°.
+//!   the right of its strike, dip direction = strike + 90°. Rake in a plane counts from the strike
+//!   azimuth, up dip positive, as for the slip of a hanging wall.
+//! - A **line** has no sign: either end is the same line, and a horizontal one has two equal trends.
 //! - **Borehole** of inclination i (from vertical-down, 0–180°) and azimuth a: x = the top of the
 //!   hole h = (cos i cos a, cos i sin a, −sin i); y = its right r = (−sin a, cos a, 0); z = along
 //!   the hole, down, t = (sin i cos a, sin i sin a, cos i). Tool face θ clockwise from h looking
@@ -30,6 +32,7 @@ mod declared_tie;
 mod depth_conversion;
 mod direction;
 mod frame;
+mod geometry;
 mod line;
 mod local;
 mod magnetic;
@@ -54,6 +57,13 @@ pub(crate) use depth_conversion::{level_items, tvd_words};
 pub(crate) use direction::chain_card;
 pub use direction::{CarriedLine, Direction, DirectionInputs};
 pub use frame::{Axis, Borehole, FaultAxes, Frame, Geographic, Local, Turned, WallAxes};
+pub use geometry::{
+    ApparentDip, ApparentDipInputs, BestRotation, BestRotationOutcome, DirectionPair, FittedAxes, FittedAxesOutcome,
+    LineAtRake, LineAtRakeInputs, LineOutcome, MeasuredAxes, PlaneThroughLines, PlaneThroughLinesOutcome,
+    PlanesIntersection, PlanesIntersectionOutcome, RakeOfLine, RakeOfLineInputs, RakeOfLineOutcome, TwoLines,
+    TwoPlanes,
+};
+pub(crate) use geometry::{by_singular_values, nearest_orthonormal};
 pub use line::Line;
 pub use local::LocalAxes;
 pub use magnetic::{Declination, DeclinationInputs, DeclinationOutcome, MagneticField};
