@@ -1,5 +1,7 @@
 //! Checks against published values, each with its citation.
 
+#[path = "published/faults.rs"]
+mod faults;
 #[path = "published/overburden.rs"]
 mod overburden;
 #[path = "published/stress.rs"]

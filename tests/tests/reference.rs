@@ -1,5 +1,7 @@
 //! Checks against values worked out outside this project.
 
+#[path = "reference/faults.rs"]
+mod faults;
 #[path = "reference/overburden.rs"]
 mod overburden;
 #[path = "reference/stress.rs"]

@@ -2,7 +2,10 @@
 //! a notebook's own code means std's.
 
 pub use crate::card::{Card, Explain};
-pub use crate::faults::FrictionLimit;
+pub use crate::faults::{
+    BoundsInputs, CriticalPlanes, Fault, FaultSet, FaultSlip, FaultState, FaultStrength, FrictionLimit,
+    FrictionalBounds, RankedFault, RankedFaults,
+};
 pub use crate::field::{DensityLog, Overburden, OverburdenInputs, Top};
 pub use crate::frames::{
     Attitude, Axis, Azimuth, Borehole, Chain, Datum, DatumTie, Depth, Geographic, Line, Plane, WallAxes,
