@@ -1,5 +1,7 @@
 //! Checks against published values, each with its citation.
 
+#[path = "published/faults.rs"]
+mod faults;
 #[path = "published/norths.rs"]
 mod norths;
 #[path = "published/overburden.rs"]

@@ -6,6 +6,8 @@ mod axes;
 mod depths;
 #[path = "reference/eigen.rs"]
 mod eigen;
+#[path = "reference/faults.rs"]
+mod faults;
 #[path = "reference/norths.rs"]
 mod norths;
 #[path = "reference/overburden.rs"]

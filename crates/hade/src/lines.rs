@@ -72,6 +72,25 @@ impl<R: Read> Lines<R> {
         Ok(self.advance()?.then(|| String::from_utf8_lossy(&self.bytes).into_owned()))
     }
 
+    /// The fields of a line by the rules of CSV: separated by commas, trimmed, in quotation marks
+    /// where they hold a comma.
+    pub fn fields(&self, text: &str) -> Result<Vec<String>> {
+        if !text.contains('"') {
+            return Ok(text.split(',').map(|field| field.trim().to_owned()).collect());
+        }
+        let mut reader = csv::ReaderBuilder::new()
+            .has_headers(false)
+            .flexible(true)
+            .trim(csv::Trim::All)
+            .buffer_capacity(text.len() + 2)
+            .from_reader(text.as_bytes());
+        let mut record = csv::StringRecord::new();
+        match reader.read_record(&mut record) {
+            Ok(_) => Ok(record.iter().map(str::to_owned).collect()),
+            Err(e) => Err(self.bad(e.to_string(), "write the line as comma-separated values")),
+        }
+    }
+
     /// The number of the line read last, from 1.
     pub fn number(&self) -> usize {
         self.number

@@ -2,7 +2,10 @@
 //! a notebook's own code means std's.
 
 pub use crate::card::{Card, Explain};
-pub use crate::faults::FrictionLimit;
+pub use crate::faults::{
+    BoundsInputs, CriticalPlanes, Fault, FaultSet, FaultSlip, FaultState, FaultStrength, FrictionLimit,
+    FrictionalBounds, RankedFault, RankedFaults,
+};
 pub use crate::field::{DensityLog, Overburden, OverburdenInputs, PressureAtDepth, PressureProfile, Top};
 pub use crate::frames::{
     ApparentDip, Attitude, Axes, Axis, Azimuth, BestRotation, Borehole, Chain, Convergence, Datum, DatumTie,

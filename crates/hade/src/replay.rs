@@ -3,7 +3,7 @@
 
 use crate::card::{Card, Check, Data, Explain, Json};
 use crate::error::{Error, Result};
-use crate::faults::FrictionLimit;
+use crate::faults::{CriticalPlanes, FaultSlip, FrictionLimit, FrictionalBounds, RankedFaults};
 use crate::field::{Overburden, PressureAtDepth};
 use crate::frames::{
     ApparentDip, Azimuth, BestRotation, CarriedLine, Convergence, Declination, DepthConversion, FittedAxes, Geographic,
@@ -83,6 +83,10 @@ pub const KINDS: &[Kind] = &[
     kind::<FaultingRegime>(),
     kind::<MohrCircles>(),
     kind::<FrictionLimit>(),
+    kind::<FrictionalBounds>(),
+    kind::<FaultSlip>(),
+    kind::<CriticalPlanes>(),
+    kind::<RankedFaults>(),
     kind::<SurveyTable>(),
     kind::<Position>(),
     kind::<Overburden>(),
@@ -185,6 +189,7 @@ mod tests {
         cards.extend(frame_samples(s, plane));
         cards.extend(depth_samples());
         cards.extend(norths_samples());
+        cards.extend(fault_samples(s));
         cards.extend([
             breakout.perpendicular().card(),
             s.card(),
@@ -354,6 +359,41 @@ mod tests {
             stated.convergence().unwrap().card(),
             site.true_azimuth(Azimuth::from_magnetic_north(127.deg())).unwrap().card(),
             site.true_azimuth(Azimuth::from_grid_north(359.9.deg())).unwrap().perpendicular().card(),
+        ]
+    }
+
+    fn fault_samples(s: Stress) -> Vec<Card> {
+        let plane = |strike: f64, dip: f64| Plane { strike: Azimuth::from_true_north(strike.deg()), dip: dip.deg() };
+        let grid = Azimuth::from_grid_north(217.deg()).with_convergence(1.3.deg()).unwrap();
+        let weak = FaultStrength { friction: 0.3, cohesion: 0.mpa() };
+        let strong = FaultStrength { friction: 0.6, cohesion: 12.mpa() };
+        let even = Stress::from_components(Components {
+            nn: 40.mpa(),
+            ee: 40.mpa(),
+            dd: 40.mpa(),
+            ne: 0.mpa(),
+            nd: 0.mpa(),
+            ed: 0.mpa(),
+        })
+        .unwrap();
+        let set = FaultSet::from_planes(&[
+            ("F-1", plane(37.0, 61.0)),
+            ("F-2", Plane { strike: grid, dip: 55.deg() }),
+            ("F-3", plane(2.0, 88.0)),
+            ("bedding", plane(140.0, 4.0)),
+        ])
+        .unwrap();
+        vec![
+            s.slip_on(plane(37.0, 61.0), weak, 31.mpa()).unwrap().card(),
+            s.slip_on(Plane { strike: grid, dip: 55.deg() }, strong, 31.mpa()).unwrap().card(),
+            s.slip_on(plane(37.0, 88.0), weak, 49.mpa()).unwrap().card(),
+            even.slip_on(plane(37.0, 61.0), strong, 10.mpa()).unwrap().card(),
+            s.critical_planes(weak, 31.mpa()).unwrap().card(),
+            s.critical_planes(strong, 31.mpa()).unwrap().card(),
+            s.critical_planes(strong, 49.mpa()).unwrap().card(),
+            even.critical_planes(strong, 10.mpa()).unwrap().card(),
+            set.ranked(&s, weak, 31.mpa()).unwrap().card(),
+            FrictionalBounds::at(BoundsInputs { sv: 66.9.mpa(), pore: 31.mpa(), friction: 0.6 }).unwrap().card(),
         ]
     }
 
