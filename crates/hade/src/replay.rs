@@ -183,6 +183,7 @@ mod tests {
             s.frictional_limit(31.mpa(), 0.6).unwrap().card(),
             s.mohr().effective(31.mpa()).unwrap().with_plane(plane).unwrap().card(),
         ]);
+        cards.extend(crate::stress::mohr_samples(&s.mohr().effective(31.mpa()).unwrap().with_plane(plane).unwrap()));
         cards
     }
 

@@ -21,6 +21,8 @@ mod chain;
 mod datum;
 mod line;
 mod name;
+#[allow(dead_code)] // Cards draw with it as they come.
+pub(crate) mod net;
 mod plane;
 pub(crate) mod vector;
 
