@@ -215,6 +215,7 @@ mod tests {
         ]);
         cards.extend(geometry_samples());
         cards.extend(tensor_samples());
+        cards.extend(crate::stress::mohr_samples(&s.mohr().effective(31.mpa()).unwrap().with_plane(plane).unwrap()));
         cards
     }
 

@@ -2,6 +2,8 @@
 
 use serde::{Deserialize, Serialize};
 
+use super::Projection;
+
 /// A figure.
 #[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
 pub struct Figure {
@@ -32,12 +34,15 @@ pub struct Axis {
     pub tick: Option<f64>,
     /// Whether the axis grows downward (depth).
     pub downward: bool,
+    /// Whether only its label is drawn: no line, ticks or grid.
+    #[serde(default, skip_serializing_if = "std::ops::Not::not")]
+    pub hidden: bool,
 }
 
 impl Axis {
     /// An axis between two ends.
     pub fn new(label: &str, min: f64, max: f64) -> Self {
-        Axis { label: label.to_owned(), min, max, tick: None, downward: false }
+        Axis { label: label.to_owned(), min, max, tick: None, downward: false, hidden: false }
     }
     /// With a fixed distance of ticks.
     pub fn ticks_every(self, tick: f64) -> Self {
@@ -46,6 +51,10 @@ impl Axis {
     /// Growing downward.
     pub fn downward(self) -> Self {
         Axis { downward: true, ..self }
+    }
+    /// Without line, ticks and grid.
+    pub fn hidden(self) -> Self {
+        Axis { hidden: true, ..self }
     }
 }
 
@@ -82,6 +91,12 @@ pub enum Mark {
     Cross,
     /// An open triangle.
     Triangle,
+    /// An open dot.
+    Ring,
+    /// A filled square.
+    Square,
+    /// An open diamond.
+    Diamond,
 }
 
 /// One thing drawn.
@@ -150,9 +165,62 @@ pub enum Layer {
         /// Where they begin.
         at: [f64; 2],
     },
+    /// An arrow.
+    Arrow {
+        /// The label, empty for none.
+        label: String,
+        /// What it stands for.
+        role: Role,
+        /// Where it begins.
+        from: [f64; 2],
+        /// Where its head is.
+        to: [f64; 2],
+    },
+    /// A filled rectangle (named by words beside it).
+    Bar {
+        /// What it stands for.
+        role: Role,
+        /// One corner.
+        from: [f64; 2],
+        /// The opposite corner.
+        to: [f64; 2],
+    },
+    /// The ground of a projected hemisphere, in a figure of equal scale without axes: the circle of
+    /// radius 1 about the origin with compass letters, ticks every 30°, and a faint graticule of
+    /// trends (30°) and plunges (30°, 60°). Places of the other layers are (east, north) on it.
+    Net {
+        /// The projection; it says where the graticule runs.
+        projection: Projection,
+    },
+    /// A quantity over the inside of a net's circle: filled steps, labelled lines at round values,
+    /// and a scale bar.
+    Contours {
+        /// What the scale bar says: the quantity with its unit.
+        label: String,
+        /// The number of values in a row, and of rows.
+        side: usize,
+        /// The values on a square grid from −1 to 1 each way, row by row from the south, each row
+        /// from the west; `None` where there is no value.
+        values: Vec<Option<f64>>,
+    },
 }
 
 impl Layer {
+    /// A quantity over the inside of a net's circle, from its value at a place (east, north).
+    /// Values are rounded to a thousandth or less of their range, to keep records small; what is
+    /// not finite is left out.
+    pub fn contours(label: &str, side: usize, value: impl Fn([f64; 2]) -> f64) -> Self {
+        let side = side.max(2);
+        let along = |i: usize| 2.0 * i as f64 / (side - 1) as f64 - 1.0;
+        let values: Vec<f64> = (0..side * side).map(|i| value([along(i % side), along(i / side)])).collect();
+        let finite = || values.iter().copied().filter(|v| v.is_finite());
+        let range = finite().fold(f64::NEG_INFINITY, f64::max) - finite().fold(f64::INFINITY, f64::min);
+        let decimals =
+            if range > 0.0 && range.is_finite() { (3.0 - range.log10().floor()).clamp(0.0, 15.0) } else { 6.0 };
+        let rounded = |v: f64| format!("{v:.0$}", decimals as usize).parse().unwrap_or(v);
+        let values = values.iter().map(|v| v.is_finite().then(|| rounded(*v))).collect();
+        Layer::Contours { label: label.to_owned(), side, values }
+    }
     /// A line through points, rounded to six figures to keep records small.
     pub fn line(label: &str, role: Role, points: impl IntoIterator<Item = [f64; 2]>) -> Self {
         Layer::Line {

@@ -6,10 +6,12 @@ mod check;
 mod explain;
 mod figure;
 mod item;
+mod projection;
 mod step;
 
 pub use check::Check;
 pub use explain::{Card, Data, Explain, Explanation, Json};
 pub use figure::{Axis, Figure, Layer, Mark, Role};
 pub use item::{Item, Standing};
+pub use projection::Projection;
 pub use step::{Column, Formula, Method, Reference, Step, Table};

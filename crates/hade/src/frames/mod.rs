@@ -38,6 +38,8 @@ mod local;
 mod magnetic;
 mod map_grid;
 mod name;
+#[allow(dead_code)] // Cards draw with it as they come.
+pub(crate) mod net;
 mod plane;
 mod site;
 mod turn;

@@ -10,6 +10,7 @@
 //! width of a label is estimated, on the wide side).
 
 mod base64;
+mod cividis;
 mod html;
 mod notebook;
 mod quantities;

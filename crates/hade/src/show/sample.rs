@@ -127,7 +127,7 @@ pub fn sheet() -> Sheet {
     sheet
 }
 
-/// A figure with every kind of layer.
+/// A figure with every kind of layer that stands on axes by a measure.
 pub fn figure() -> Figure {
     let around = |f: fn(f64) -> f64| (0..=180).map(move |i| [f64::from(2 * i), f(f64::from(2 * i).to_radians())]);
     Figure {

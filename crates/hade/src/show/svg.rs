@@ -3,18 +3,25 @@
 mod bands;
 mod canvas;
 mod clip;
+mod contours;
+mod drawing;
 mod frame;
 mod labels;
+mod net;
+mod surface;
 mod ticks;
 
 use bands::{Band, band};
 use canvas::{Canvas, Hold};
-use clip::{Px, Rect, clip, walk};
+use clip::{Px, Rect, walk};
+use contours::{Contours, Number};
+use drawing::Drawing;
 use frame::{Frame, Margins};
 use labels::{Anchor, LINE, Placed, Room, SIZE, Wish, block, moved_into, spread, wrap};
+use net::Net;
 
 use super::theme::{Palette, Pen, Theme, dark_where_the_page_is};
-use crate::card::{Figure, Layer, Mark, Role};
+use crate::card::{Figure, Layer, Role};
 
 /// The widest label at the end of a line before it is broken into lines.
 const WIDEST_END_LABEL: f64 = 150.0;
@@ -26,10 +33,8 @@ const LEADER: f64 = 16.0;
 /// without extent is given some.
 pub fn svg(figure: &Figure, theme: Theme) -> String {
     let palette = Palette::of(theme);
-    let frame = Frame::of(figure, margins(figure));
-    let drawings: Vec<Drawing> = figure.layers.iter().map(|l| Drawing::of(l, &frame)).collect();
-    let bands: Vec<Band<'_>> = figure.layers.iter().filter_map(|l| band(l, &frame)).collect();
-    let placed = place_labels(figure, &frame, &palette, &drawings, &bands);
+    let plan = Plan::of(figure, &palette);
+    let frame = &plan.frame;
 
     let mut canvas = Canvas::new();
     if theme == Theme::Notebook {
@@ -37,18 +42,35 @@ pub fn svg(figure: &Figure, theme: Theme) -> String {
         canvas.fill(&whole, palette.ground, 1.0);
     }
     frame.draw_grid(&mut canvas, &palette);
-    let label_areas: Vec<Rect> = placed.iter().map(|l| l.area).collect();
-    for band in &bands {
+    let label_areas: Vec<Rect> = plan.labels.iter().map(|l| l.area).collect();
+    for band in &plan.bands {
         band.draw(&mut canvas, &palette, &label_areas);
     }
     frame.draw_axes(&mut canvas, &palette);
-    for drawing in &drawings {
+    if let Some(net) = &plan.net {
+        net.draw_graticule(&mut canvas, &palette);
+    }
+    if let Some(contours) = &plan.contours {
+        contours.fill(&mut canvas, frame);
+        contours.draw_lines(&mut canvas, &palette, frame, &plan.numbers);
+        contours.draw_bar(&mut canvas, &palette, frame);
+    }
+    if let Some(net) = &plan.net {
+        net.draw_circle(&mut canvas, &palette);
+    }
+    for drawing in &plan.drawings {
+        if plan.contours.is_some() {
+            drawing.draw_edged(&mut canvas, &palette);
+        }
         drawing.draw(&mut canvas, &palette);
     }
     let thin = Pen { width: 1.0, dash: &[], ..palette.pen(Role::Quiet) };
-    let leaders: Vec<Vec<Px>> = placed.iter().filter_map(|l| l.leader.map(|ends| ends.to_vec())).collect();
+    let leaders: Vec<Vec<Px>> = plan.labels.iter().filter_map(|l| l.leader.map(|ends| ends.to_vec())).collect();
     canvas.lines(&leaders, &thin);
-    for label in &placed {
+    for label in &plan.labels {
+        if plan.contours.is_some() {
+            canvas.fill(&label.area.grown(1.5), palette.ground, PLATE);
+        }
         let x = match label.hold {
             Hold::Start => label.area.left,
             Hold::Middle => (label.area.left + label.area.right) / 2.0,
@@ -63,93 +85,41 @@ pub fn svg(figure: &Figure, theme: Theme) -> String {
     canvas.finish(frame.size.0, frame.size.1, &figure.caption, &figure.alt, &style)
 }
 
-/// A layer in pixels, cut to the frame.
-enum Drawing {
-    Lines { role: Role, parts: Vec<Vec<Px>> },
-    Marks { role: Role, mark: Mark, places: Vec<Px> },
-    None,
+/// How much a label over filled steps hides of them.
+const PLATE: f64 = 0.9;
+
+/// Everything of a figure with its place, before anything is drawn.
+struct Plan<'a> {
+    frame: Frame,
+    bands: Vec<Band<'a>>,
+    net: Option<Net>,
+    contours: Option<Contours<'a>>,
+    numbers: Vec<Number>,
+    drawings: Vec<Drawing>,
+    labels: Vec<Placed>,
 }
 
-impl Drawing {
-    fn of(layer: &Layer, frame: &Frame) -> Drawing {
-        let reach = frame.area.grown(0.5);
-        match layer {
-            Layer::Line { role, points, .. } => {
-                let line: Vec<Px> = points.iter().map(|p| frame.at(*p)).collect();
-                Drawing::Lines { role: *role, parts: clip(&thinned(line), &reach) }
-            }
-            Layer::Circle { role, centre, radius, upper_half, .. } => {
-                let steps = if *upper_half { 120 } else { 240 };
-                let turn = if *upper_half { std::f64::consts::PI } else { std::f64::consts::TAU };
-                let line: Vec<Px> = (0..=steps)
-                    .map(|i| turn * f64::from(i) / f64::from(steps))
-                    .map(|a| frame.at([centre[0] + radius * a.cos(), centre[1] + radius * a.sin()]))
-                    .collect();
-                Drawing::Lines { role: *role, parts: clip(&line, &reach) }
-            }
-            Layer::Points { role, mark, points, .. } => {
-                let places = points.iter().map(|p| frame.at(*p)).filter(|p| reach.holds(*p)).collect();
-                Drawing::Marks { role: *role, mark: *mark, places }
-            }
-            Layer::ColumnBand { .. } | Layer::RowBand { .. } | Layer::Words { .. } => Drawing::None,
+impl<'a> Plan<'a> {
+    fn of(figure: &'a Figure, palette: &Palette) -> Plan<'a> {
+        let contours = Contours::of(figure);
+        let frame = Frame::of(figure, margins(figure, contours.as_ref()));
+        let net = Net::of(figure, &frame, contours.is_some());
+        // Without its circle a quantity has no place.
+        let contours = contours.filter(|_| net.is_some());
+        let drawings: Vec<Drawing> = figure.layers.iter().map(|l| Drawing::of(l, &frame)).collect();
+        let bands: Vec<Band<'_>> = figure.layers.iter().filter_map(|l| band(l, &frame)).collect();
+        let marks: Vec<Rect> = drawings.iter().flat_map(Drawing::mark_areas).collect();
+        let numbers = contours.as_ref().map_or_else(Vec::new, |c| c.numbers(&frame, &marks));
+        let mut room = room(&frame, &drawings, &bands);
+        if let Some(net) = &net {
+            let (circle, texts) = net.outline();
+            room.edges.extend(walk(&circle, 6.0));
+            room.taken.extend(texts);
         }
+        room.taken.extend(numbers.iter().map(|n| n.area));
+        let labels = place_labels(figure, &frame, palette, &drawings, &bands, room);
+        Plan { frame, bands, net, contours, numbers, drawings, labels }
     }
-
-    fn draw(&self, canvas: &mut Canvas, palette: &Palette) {
-        match self {
-            Drawing::Lines { role, parts } => canvas.lines(parts, &palette.pen(*role)),
-            Drawing::Marks { role, mark, places } => {
-                let pen = Pen { width: 2.0, dash: &[], ..palette.pen(*role) };
-                match mark {
-                    Mark::Dot => canvas.dots(places, 4.5, pen.line),
-                    Mark::Cross => canvas.lines(&shapes(places, &CROSS), &pen),
-                    Mark::Triangle => canvas.lines(&shapes(places, &TRIANGLE), &pen),
-                }
-            }
-            Drawing::None => {}
-        }
-    }
-
-    /// The places that labels keep clear of.
-    fn outline(&self) -> Vec<Px> {
-        match self {
-            Drawing::Lines { parts, .. } => parts.iter().flat_map(|p| walk(p, 4.0)).collect(),
-            Drawing::Marks { places, .. } => places
-                .iter()
-                .flat_map(|p| {
-                    [[0.0, 0.0], [-4.0, 0.0], [4.0, 0.0], [0.0, -4.0], [0.0, 4.0]].map(|d| [p[0] + d[0], p[1] + d[1]])
-                })
-                .collect(),
-            Drawing::None => Vec::new(),
-        }
-    }
-}
-
-/// A line without the places that no eye can tell from the one before.
-fn thinned(line: Vec<Px>) -> Vec<Px> {
-    let mut out: Vec<Px> = Vec::with_capacity(line.len());
-    let last = line.last().copied();
-    for place in line {
-        // Not a number is kept: it makes the gap.
-        let near = out.last().is_some_and(|o: &Px| (o[0] - place[0]).hypot(o[1] - place[1]) < 0.3);
-        if !near {
-            out.push(place);
-        }
-    }
-    if out.last() != last.as_ref() {
-        out.extend(last);
-    }
-    out
-}
-
-const CROSS: [&[Px]; 2] = [&[[-5.0, 0.0], [5.0, 0.0]], &[[0.0, -5.0], [0.0, 5.0]]];
-const TRIANGLE: [&[Px]; 1] = [&[[-5.0, 4.0], [0.0, -5.0], [5.0, 4.0], [-5.0, 4.0]]];
-
-fn shapes(places: &[Px], strokes: &[&[Px]]) -> Vec<Vec<Px>> {
-    places
-        .iter()
-        .flat_map(|p| strokes.iter().map(move |s| s.iter().map(|d| [p[0] + d[0], p[1] + d[1]]).collect()))
-        .collect()
 }
 
 /// Whether a line is named at its right end, outside the frame.
@@ -163,8 +133,8 @@ fn named_at_its_end(figure: &Figure, points: &[[f64; 2]]) -> bool {
         })
 }
 
-fn margins(figure: &Figure) -> Margins {
-    let mut out = Margins::default();
+fn margins(figure: &Figure, contours: Option<&Contours<'_>>) -> Margins {
+    let mut out = Margins { right: contours.map_or(0.0, Contours::margin), ..Margins::default() };
     for layer in &figure.layers {
         match layer {
             Layer::Line { label, points, .. } if !label.is_empty() && named_at_its_end(figure, points) => {
@@ -178,15 +148,8 @@ fn margins(figure: &Figure) -> Margins {
     out
 }
 
-fn place_labels(
-    figure: &Figure,
-    frame: &Frame,
-    palette: &Palette,
-    drawings: &[Drawing],
-    bands: &[Band<'_>],
-) -> Vec<Placed> {
-    let mut out = Vec::new();
-    let inside = frame.area.grown(-4.0);
+/// What labels keep clear of, before the first has its place.
+fn room(frame: &Frame, drawings: &[Drawing], bands: &[Band<'_>]) -> Room {
     let mut room = Room::default();
     for (owner, drawing) in drawings.iter().enumerate() {
         let mut places = drawing.outline();
@@ -196,6 +159,19 @@ fn place_labels(
     }
     let edges = frame.zero_lines().into_iter().chain(bands.iter().flat_map(Band::edges));
     room.edges = edges.flat_map(|line| walk(&line, 6.0)).collect();
+    room
+}
+
+fn place_labels(
+    figure: &Figure,
+    frame: &Frame,
+    palette: &Palette,
+    drawings: &[Drawing],
+    bands: &[Band<'_>],
+    mut room: Room,
+) -> Vec<Placed> {
+    let mut out = Vec::new();
+    let inside = frame.area.grown(-4.0);
     label_upright_bands(frame, palette, bands, &mut out);
     label_line_ends(figure, frame, palette, drawings, &mut out);
     for layer in &figure.layers {
@@ -218,6 +194,7 @@ fn place_labels(
                 (label, 7.0, along(parts))
             }
             (Layer::Circle { label, .. }, Drawing::Lines { parts, .. }) => (label, 6.0, along(parts)),
+            (Layer::Arrow { label, .. }, Drawing::Strokes { parts, .. }) => (label, 8.0, along(parts)),
             (Layer::Points { label, .. }, Drawing::Marks { places, .. }) => {
                 let anchors = places.iter().take(24).enumerate();
                 let anchors = anchors.map(|(i, p)| Anchor { at: *p, cost: 0.2 * i as f64 });
@@ -226,7 +203,10 @@ fn place_labels(
             _ => continue,
         };
         let role = match layer {
-            Layer::Line { role, .. } | Layer::Circle { role, .. } | Layer::Points { role, .. } => *role,
+            Layer::Line { role, .. }
+            | Layer::Circle { role, .. }
+            | Layer::Points { role, .. }
+            | Layer::Arrow { role, .. } => *role,
             _ => continue,
         };
         if !label.is_empty() {
@@ -354,7 +334,7 @@ fn label_upright_bands(frame: &Frame, palette: &Palette, bands: &[Band<'_>], out
 #[cfg(test)]
 mod tests {
     use super::*;
-    use crate::card::Axis;
+    use crate::card::{Axis, Mark, Projection};
     use crate::show::sample;
 
     const THEMES: [Theme; 4] = [Theme::Notebook, Theme::Light, Theme::Dark, Theme::Print];
@@ -409,10 +389,7 @@ mod tests {
     #[test]
     fn no_two_labels_of_a_full_figure_overlap_and_all_are_inside() {
         let figure = sample::figure();
-        let frame = Frame::of(&figure, margins(&figure));
-        let drawings: Vec<Drawing> = figure.layers.iter().map(|l| Drawing::of(l, &frame)).collect();
-        let bands: Vec<Band<'_>> = figure.layers.iter().filter_map(|l| band(l, &frame)).collect();
-        let placed = place_labels(&figure, &frame, &Palette::of(Theme::Light), &drawings, &bands);
+        let Plan { frame, labels: placed, .. } = Plan::of(&figure, &Palette::of(Theme::Light));
         assert_eq!(placed.len(), 9);
         let whole = Rect { left: 0.0, top: 0.0, right: frame.size.0, bottom: frame.size.1 };
         for (i, a) in placed.iter().enumerate() {
@@ -443,8 +420,13 @@ mod tests {
         for a in odd {
             for b in odd {
                 for equal_scale in [false, true] {
-                    for y in [Axis::new("", b, a), Axis::new("depth", a, b).downward().ticks_every(b)] {
-                        let mut figure = empty(Axis::new("x", a, b).ticks_every(a), y);
+                    for y in [
+                        Axis::new("", b, a),
+                        Axis::new("depth", a, b).downward().ticks_every(b),
+                        Axis::new("", a, b).hidden(),
+                    ] {
+                        let hidden = y.hidden;
+                        let mut figure = empty(Axis { hidden, ..Axis::new("x", a, b).ticks_every(a) }, y);
                         figure.equal_scale = equal_scale;
                         figure.layers = vec![
                             Layer::Line {
@@ -469,6 +451,14 @@ mod tests {
                                 points: vec![[a, b], [b, b]],
                             },
                             Layer::Words { text: "w".into(), at: [a, b] },
+                            Layer::Arrow { label: "a".into(), role: Role::First, from: [a, b], to: [b, 1.0] },
+                            Layer::Bar { role: Role::First, from: [a, b], to: [b, 0.5] },
+                            Layer::Net { projection: Projection::EqualArea },
+                            Layer::Contours {
+                                label: "q".into(),
+                                side: 3,
+                                values: [a, b, 1.0, 2.0, b, a, 0.0, a, b].map(Some).to_vec(),
+                            },
                         ];
                         let picture = svg(&figure, Theme::Light);
                         assert!(well_formed(&picture), "{a} {b}");
@@ -476,6 +466,42 @@ mod tests {
                         assert!(picture.len() < 200_000);
                     }
                 }
+            }
+        }
+    }
+
+    #[test]
+    fn the_labels_of_a_net_are_inside_and_apart_from_its_own_texts() {
+        let points = |label: &str, at: [f64; 2]| Layer::Points {
+            label: label.into(),
+            role: Role::First,
+            mark: Mark::Ring,
+            points: vec![at],
+        };
+        let contours = Layer::contours("tendency (–)", 9, |[x, y]| x + 0.3 * y);
+        for filled in [false, true] {
+            let mut figure = empty(Axis::new("p", -1.3, 1.3).hidden(), Axis::new("", -1.2, 1.2).hidden());
+            figure.equal_scale = true;
+            figure.layers = vec![Layer::Net { projection: Projection::EqualArea }];
+            figure.layers.extend(filled.then(|| contours.clone()));
+            figure.layers.extend([
+                points("S_1", [0.0, 1.0]),
+                points("S_2", [0.0, 0.99]),
+                points("fault F2", [0.03, 0.02]),
+                points("pole", [1.0, 0.0]),
+                points("at 30°", [0.5, 0.866]),
+            ]);
+            let plan = Plan::of(&figure, &Palette::of(Theme::Light));
+            let whole = Rect { left: 0.0, top: 0.0, right: plan.frame.size.0, bottom: plan.frame.size.1 };
+            let (_, texts) = plan.net.as_ref().unwrap().outline();
+            let mut areas: Vec<Rect> = plan.labels.iter().map(|l| l.area).collect();
+            assert_eq!(areas.len(), 5);
+            areas.extend(texts);
+            areas.extend(plan.numbers.iter().map(|n| n.area));
+            assert_eq!(plan.numbers.is_empty(), !filled);
+            for (i, a) in areas.iter().enumerate() {
+                assert!(whole.covers(a), "{a:?}");
+                assert!(areas.iter().skip(i + 1).all(|b| !a.meets(b)), "{filled} {a:?}");
             }
         }
     }

@@ -33,6 +33,15 @@ impl Colour {
     pub fn hex(self) -> String {
         format!("#{:02X}{:02X}{:02X}", self.0, self.1, self.2)
     }
+
+    /// Relative luminance (WCAG 2.2, definitions).
+    pub fn luminance(self) -> f64 {
+        let part = |v: u8| {
+            let s = f64::from(v) / 255.0;
+            if s <= 0.04045 { s / 12.92 } else { ((s + 0.055) / 1.055).powf(2.4) }
+        };
+        0.2126 * part(self.0) + 0.7152 * part(self.1) + 0.0722 * part(self.2)
+    }
 }
 
 /// Every colour of one ground.
@@ -144,7 +153,7 @@ impl Palette {
         }
     }
 
-    fn colours(&self) -> [Colour; 17] {
+    pub(super) fn colours(&self) -> [Colour; 17] {
         let [a, b] = self.first;
         let [c, d] = self.second;
         let [e, f] = self.third;
@@ -174,17 +183,9 @@ pub(super) fn dark_where_the_page_is() -> String {
 mod tests {
     use super::*;
 
-    /// Relative luminance and contrast: WCAG 2.2, definitions.
-    fn luminance(c: Colour) -> f64 {
-        let part = |v: u8| {
-            let s = f64::from(v) / 255.0;
-            if s <= 0.04045 { s / 12.92 } else { ((s + 0.055) / 1.055).powf(2.4) }
-        };
-        0.2126 * part(c.0) + 0.7152 * part(c.1) + 0.0722 * part(c.2)
-    }
-
+    /// WCAG 2.2, definitions.
     fn contrast(a: Colour, b: Colour) -> f64 {
-        let (a, b) = (luminance(a), luminance(b));
+        let (a, b) = (a.luminance(), b.luminance());
         (a.max(b) + 0.05) / (a.min(b) + 0.05)
     }
 

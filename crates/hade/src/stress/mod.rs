@@ -6,6 +6,7 @@ mod carried;
 mod carried_traction;
 mod combined;
 mod effective;
+mod envelope;
 mod horizontal;
 mod horizontals;
 mod in_axes;
@@ -18,9 +19,11 @@ mod principals;
 #[cfg(test)]
 mod properties;
 mod regime;
+mod regime_strip;
 #[allow(clippy::module_inception)]
 mod stress;
 pub(crate) mod tensor;
+mod tensor_figure;
 mod traction;
 
 pub use a_phi::{FaultingRegime, FaultingRegimeOutcome};
@@ -33,8 +36,14 @@ pub use horizontals::Horizontals;
 pub use in_axes::AxisComponents;
 pub use invariants::{Invariants, InvariantsInputs, InvariantsOutcome};
 pub use made::{Components, Made, StatedInputs};
+#[cfg(test)]
+pub(crate) use mohr::mohr_samples;
 pub use mohr::{MohrCircles, MohrInputs, MohrOutcome};
 pub use principals::{PrincipalOutcome, Principals};
 pub use regime::Regime;
+#[allow(unused_imports)]
+pub(crate) use regime_strip::regime_strip;
 pub use stress::{AddsTo, Stress};
+#[allow(unused_imports)]
+pub(crate) use tensor_figure::tensor_figures;
 pub use traction::{Traction, TractionInputs, TractionOutcome};

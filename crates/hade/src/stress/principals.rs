@@ -4,9 +4,13 @@ use serde::{Deserialize, Serialize};
 
 use super::Stress;
 use super::tensor::Tensor;
-use crate::card::{Card, Check, Column, Explain, Explanation, Formula, Item, Method, Reference, Step, Table};
+use crate::card::{
+    Card, Check, Column, Explain, Explanation, Figure, Formula, Item, Mark, Method, Projection, Reference, Role, Step,
+    Table,
+};
 use crate::error::Result;
-use crate::frames::vector::{M3, dot, scale};
+use crate::frames::net::Net;
+use crate::frames::vector::{M3, V3, dot, scale};
 use crate::frames::{Geographic, Line};
 use crate::units::{Pressure, Quantity, fixed};
 
@@ -62,6 +66,54 @@ impl Principals {
     /// direction in their common plane is one.
     pub fn lines(&self) -> [Option<Line>; 3] {
         self.outcome.axes.map(|axis| axis.map(Line::along))
+    }
+
+    /// The axes as vectors in north, east, down.
+    pub(super) fn axes(&self) -> [Option<V3>; 3] {
+        self.outcome.axes
+    }
+
+    /// The axes on a net; with two equal magnitudes the one axis and the plane across it; none where
+    /// every direction is an axis.
+    fn figure(&self) -> Option<Figure> {
+        let axes = self.axes();
+        let mut net = Net::new(Projection::EqualArea);
+        let mut said: Vec<String> = (1..)
+            .zip(self.outcome.magnitudes)
+            .zip(axes)
+            .map(|((n, magnitude), axis)| format!("S_{n} {} MPa, {}", fixed(magnitude.in_mpa(), 2), axes_words(axis)))
+            .collect();
+        let mut caption = "The principal axes by their lower ends.".to_owned();
+        match axes {
+            [None, None, None] => return None,
+            [Some(axis), None, None] | [None, None, Some(axis)] => {
+                let pair = if axes[0].is_some() { "S_2 = S_3" } else { "S_1 = S_2" };
+                net = net.plane(pair, Role::Quiet, axis);
+                caption =
+                    format!("The defined principal axis by its lower end; {pair} in every direction of the plane.");
+                said.push(format!("{pair} in the plane across the defined axis"));
+            }
+            _ => {}
+        }
+        Some(with_axes(net, axes).figure(caption, format!("{}.", said.join("; "))))
+    }
+}
+
+/// The defined axes on a net, each with its own mark and name.
+pub(super) fn with_axes(net: Net, axes: [Option<V3>; 3]) -> Net {
+    let looks = [(Role::First, Mark::Dot), (Role::Second, Mark::Square), (Role::Third, Mark::Triangle)];
+    (1..).zip(axes).zip(looks).fold(net, |net, ((n, axis), (role, mark))| match axis {
+        Some(axis) => net.line(&format!("S_{n}"), role, mark, axis),
+        None => net,
+    })
+}
+
+/// "trend 035.0°, plunge 12.0°", "vertical", "in any direction".
+pub(super) fn axes_words(axis: Option<V3>) -> String {
+    match axis.map(Line::along) {
+        None => "in any direction".to_owned(),
+        Some(line) if line.plunge.in_deg() > 89.95 => "vertical".to_owned(),
+        Some(line) => line.words(),
     }
 }
 
@@ -197,8 +249,8 @@ impl Explain for Principals {
                 },
             ],
             notes,
+            figures: self.figure().into_iter().collect(),
             topics: vec!["stress".to_owned()],
-            ..Explanation::default()
         }
     }
 

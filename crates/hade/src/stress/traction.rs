@@ -3,8 +3,12 @@
 use serde::{Deserialize, Serialize};
 
 use super::Stress;
-use crate::card::{Card, Check, Explain, Explanation, Formula, Item, Method, Reference, Step};
+use super::principals::{axes_words, with_axes};
+use crate::card::{
+    Card, Check, Explain, Explanation, Figure, Formula, Item, Method, Projection, Reference, Role, Step,
+};
 use crate::error::Result;
+use crate::frames::net::Net;
 use crate::frames::vector::{add, dot, norm, scale};
 use crate::frames::{Geographic, Plane};
 use crate::units::{Angle, Pressure, Quantity, fixed};
@@ -200,6 +204,7 @@ impl Explain for Traction {
                 Step::worked(format!("t = S n = ({}, {}, {}) MPa", t[0], t[1], t[2])),
                 Step::worked(format!("σ_n = t · n = {} MPa", fixed(self.normal.in_mpa(), 3))),
             ],
+            figures: self.figure().into_iter().collect(),
             topics: vec!["stress".to_owned(), "plane".to_owned()],
             ..Explanation::default()
         }
@@ -210,5 +215,33 @@ impl Explain for Traction {
         cards.extend(self.inputs.stress.stated());
         cards.extend(self.inputs.plane.strike.upstream());
         cards
+    }
+}
+
+impl Traction {
+    /// The plane, its pole, the principal axes and the slip on a net.
+    fn figure(&self) -> Option<Figure> {
+        let plane = self.inputs.plane;
+        let axes = plane.axes().ok()?;
+        let principal = self.inputs.stress.principals().axes();
+        let net = Net::new(Projection::EqualArea).plane("plane", Role::Limit, axes.normal).pole(
+            "pole",
+            Role::Limit,
+            axes.normal,
+        );
+        let mut net = with_axes(net, principal);
+        let mut said = vec![plane.words(), format!("pole {}", axes_words(Some(axes.normal)))];
+        said.extend((1..).zip(principal).map(|(n, axis)| format!("S_{n} {}", axes_words(axis))));
+        let mut caption = format!("The plane ({}) with its pole, and the principal axes.", plane.words());
+        match self.rake {
+            Some(rake) => {
+                let (s, c) = rake.in_rad().sin_cos();
+                net = net.movement("slip", Role::Fourth, add(scale(axes.along_strike, c), scale(axes.down_dip, -s)));
+                caption.push_str(" The arrow shows where the shear drives the hanging wall: outward is down.");
+                said.push(format!("the shear drives the hanging wall at rake {rake:.1}"));
+            }
+            None => said.push("no shear on the plane".to_owned()),
+        }
+        Some(net.figure(caption, format!("{}.", said.join("; "))))
     }
 }

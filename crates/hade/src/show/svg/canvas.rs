@@ -64,12 +64,47 @@ impl Canvas {
 
     /// Filled dots.
     pub fn dots(&mut self, places: &[Px], radius: f64, colour: Colour) {
-        let style = style(colour, 1.0, 0.0);
+        self.circles(places, radius, &style(colour, 1.0, 0.0), true);
+    }
+
+    /// Open dots.
+    pub fn rings(&mut self, places: &[Px], radius: f64, pen: &Pen) {
+        self.circles(places, radius, &style(pen.line, 1.0, pen.width), false);
+    }
+
+    fn circles(&mut self, places: &[Px], radius: f64, style: &ShapeStyle, filled: bool) {
         self.group("", |backend| {
             for place in places {
-                let _ = backend.draw_circle(grid(*place), u32::try_from(tenths(radius)).unwrap_or(1), &style, true);
+                let _ = backend.draw_circle(grid(*place), u32::try_from(tenths(radius)).unwrap_or(1), style, filled);
             }
         });
+    }
+
+    /// The inside of closed lines by the even–odd rule, which the backend does not have.
+    pub fn region(&mut self, loops: &[Vec<Px>], colour: Colour) {
+        let mut path = String::new();
+        for line in loops {
+            let mut last = None;
+            for place in line {
+                let here = grid(*place);
+                let _ = match last {
+                    None => write!(path, "M{} {}", here.0, here.1),
+                    Some(last) if last == here => Ok(()),
+                    Some((x, y)) => write!(path, "l{} {}", here.0 - x, here.1 - y),
+                };
+                last = Some(here);
+            }
+            if last.is_some() {
+                path.push('Z');
+            }
+        }
+        if !path.is_empty() {
+            let fill = colour.hex();
+            let _ = writeln!(
+                self.body,
+                "<path transform=\"scale(0.1)\" fill=\"{fill}\" fill-rule=\"evenodd\" d=\"{path}\"/>"
+            );
+        }
     }
 
     /// A line of text whose middle is at a height.

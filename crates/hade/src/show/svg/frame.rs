@@ -16,6 +16,9 @@ const WIDTH: (f64, f64) = (720.0, 560.0);
 /// The height of the drawing area where the scale does not say it, and of one that grows downward.
 const HEIGHT: (f64, f64) = (310.0, 470.0);
 
+/// The greatest height where both scales are equal, and where there are no axes besides.
+const TALLEST: (f64, f64) = (500.0, 430.0);
+
 /// What the layout leaves room for beside the axes.
 #[derive(Clone, Copy, Debug, Default)]
 pub(super) struct Margins {
@@ -37,6 +40,8 @@ pub(super) struct Frame {
     pub y: (f64, f64),
     /// Whether y grows downward; then the x axis is at the top.
     pub downward: bool,
+    /// Whether the axes are hidden, x and y.
+    hidden: (bool, bool),
     x_ticks: Vec<(f64, String)>,
     y_ticks: Vec<(f64, String)>,
     x_title: Vec<String>,
@@ -54,15 +59,17 @@ impl Frame {
         };
         let widest = |ticks: &[(f64, String)]| ticks.iter().map(|(_, t)| width(t, NUMBERS)).fold(0.0, f64::max);
 
+        let hidden = (figure.x.hidden, figure.y.hidden);
         let guess = named(ticks(y.0, y.1, figure.y.tick, 6.0));
-        let left = EDGE + widest(&guess).max(24.0) + 9.0;
+        let left = if hidden.1 { EDGE } else { EDGE + widest(&guess).max(24.0) + 9.0 };
         let mut wide = full_width - left - (margins.right + EDGE).max(26.0);
         let mut high: f64 = pick(HEIGHT);
         if figure.equal_scale {
             let ratio = (y.1 - y.0) / (x.1 - x.0);
             high = wide * ratio;
-            if high > 500.0 {
-                high = 500.0;
+            let tallest = if hidden == (true, true) { TALLEST.1 } else { TALLEST.0 };
+            if high > tallest {
+                high = tallest;
                 wide = (high / ratio).max(60.0);
             }
             high = high.max(140.0);
@@ -70,9 +77,15 @@ impl Frame {
             let unit = wide / (x.1 - x.0);
             y.1 = y.1.max(y.0 + high / unit);
         }
-        let y_ticks = named(ticks(y.0, y.1, figure.y.tick, high / 55.0));
+        let mut y_ticks = named(ticks(y.0, y.1, figure.y.tick, high / 55.0));
         let room_x = widest(&named(ticks(x.0, x.1, figure.x.tick, 6.0))) + 34.0;
-        let x_ticks = every_nth(named(ticks(x.0, x.1, figure.x.tick, (wide / room_x).clamp(2.0, 9.0))), wide);
+        let mut x_ticks = every_nth(named(ticks(x.0, x.1, figure.x.tick, (wide / room_x).clamp(2.0, 9.0))), wide);
+        if hidden.0 {
+            x_ticks.clear();
+        }
+        if hidden.1 {
+            y_ticks.clear();
+        }
 
         let right = left + wide;
         let total_width = (right + margins.right + EDGE).max(right + 26.0).max(260.0);
@@ -80,8 +93,10 @@ impl Frame {
         let x_title = wrap(&figure.x.label, SIZE, text_width);
         let y_title = wrap(&figure.y.label, SIZE, text_width);
         let y_title_height = y_title.len() as f64 * LINE;
-        let x_axis_height = 24.0 + x_title.len() as f64 * LINE;
-        let above = y_title_height + 8.0 + if downward { x_axis_height } else { margins.strip };
+        let x_axis_height = title_gap(hidden.0) + x_title.len() as f64 * LINE;
+        let above = y_title_height
+            + if hidden.1 && y_title.is_empty() { 0.0 } else { 8.0 }
+            + if downward { x_axis_height } else { margins.strip };
         let top = EDGE + above;
         let bottom = top + high;
         let below = if downward { margins.strip + 4.0 } else { x_axis_height };
@@ -91,6 +106,7 @@ impl Frame {
             x,
             y,
             downward,
+            hidden,
             x_ticks,
             y_ticks,
             x_title,
@@ -116,10 +132,10 @@ impl Frame {
         let area = self.area;
         let [x, y] = self.at([0.0, 0.0]);
         let mut lines = Vec::new();
-        if y > area.top + 1.0 && y < area.bottom - 1.0 {
+        if !self.hidden.1 && y > area.top + 1.0 && y < area.bottom - 1.0 {
             lines.push(vec![[area.left, y], [area.right, y]]);
         }
-        if x > area.left + 1.0 && x < area.right - 1.0 {
+        if !self.hidden.0 && x > area.left + 1.0 && x < area.right - 1.0 {
             lines.push(vec![[x, area.top], [x, area.bottom]]);
         }
         lines
@@ -146,8 +162,13 @@ impl Frame {
         let area = self.area;
         let pen = Pen { dash: &[], width: 1.2, ..palette.pen(Role::Quiet) };
         let (edge, out) = if self.downward { (area.top, -1.0) } else { (area.bottom, 1.0) };
-        let mut lines =
-            vec![vec![[area.left, area.top], [area.left, area.bottom]], vec![[area.left, edge], [area.right, edge]]];
+        let mut lines = Vec::new();
+        if !self.hidden.1 {
+            lines.push(vec![[area.left, area.top], [area.left, area.bottom]]);
+        }
+        if !self.hidden.0 {
+            lines.push(vec![[area.left, edge], [area.right, edge]]);
+        }
         lines.extend(self.zero_lines());
         for (value, text) in &self.x_ticks {
             let [x, _] = self.at([*value, self.y.0]);
@@ -173,13 +194,18 @@ impl Frame {
             let x = middle.min(self.size.0 - EDGE - half).max(EDGE + half);
             let y = if self.downward {
                 let from_edge = (self.x_title.len() - i) as f64 - 0.5;
-                area.top - 24.0 - from_edge * LINE
+                area.top - title_gap(self.hidden.0) - from_edge * LINE
             } else {
-                area.bottom + 24.0 + (i as f64 + 0.5) * LINE
+                area.bottom + title_gap(self.hidden.0) + (i as f64 + 0.5) * LINE
             };
             canvas.text(line, [x, y], Hold::Middle, SIZE, palette.ink);
         }
     }
+}
+
+/// From the x axis to its title: the room of its numbers.
+fn title_gap(hidden: bool) -> f64 {
+    if hidden { 4.0 } else { 24.0 }
 }
 
 /// Blanks the numbers of ticks so that those left do not touch.
