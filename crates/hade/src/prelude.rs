@@ -1,7 +1,7 @@
 //! What a notebook imports: `use hade::prelude::*;`. Neither `Result` nor `Error` is here, because
 //! a notebook's own code means std's.
 
-pub use crate::card::{Card, Explain};
+pub use crate::card::{Card, Explain, Projection};
 pub use crate::faults::{
     BoundsInputs, CriticalPlanes, Fault, FaultSet, FaultSlip, FaultState, FaultStrength, FrictionLimit,
     FrictionalBounds, RankedFault, RankedFaults,
@@ -10,8 +10,8 @@ pub use crate::field::{DensityLog, Overburden, OverburdenInputs, PressureAtDepth
 pub use crate::frames::{
     ApparentDip, Attitude, Axes, Axis, Azimuth, BestRotation, Borehole, Chain, Convergence, Datum, DatumTie,
     Declination, Depth, DepthConversion, Direction, DirectionPair, Ellipsoid, FaultAxes, FittedAxes, Geographic, Line,
-    LineAtRake, Local, LocalAxes, MapGrid, MeasuredAxes, Plane, PlaneThroughLines, PlanesIntersection, RakeOfLine,
-    Site, WallAxes,
+    LineAtRake, Local, LocalAxes, LowerHemisphere, MapGrid, MeasuredAxes, Plane, PlaneThroughLines, PlanesIntersection,
+    RakeOfLine, Site, WallAxes,
 };
 pub use crate::rock::{Rock, Strength};
 pub use crate::sheet::{Basis, Sheet, Source};

@@ -11,7 +11,7 @@ use crate::units::{Pressure, as_typed, fixed, with_typed_unit};
 pub(super) fn explain(planes: &CriticalPlanes, inputs: &CriticalInputs, outcome: &CriticalOutcome) -> Explanation {
     let CriticalInputs { stress, strength, pore } = *inputs;
     Explanation {
-            title: format!("Planes nearest to slip at a pore pressure of {}", with_typed_unit(pore)),
+            title: format!("Planes nearest to slip{} at a pore pressure of {}", stress.under_name(), with_typed_unit(pore)),
             headline: headline(planes, outcome),
             inputs: vec![
                 stress.item("S", "stress in north, east, down"),

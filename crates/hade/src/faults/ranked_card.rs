@@ -5,9 +5,11 @@ use super::ranked::{RankedFault, RankedFaults, RankedInputs};
 use super::set::{FaultSource, item};
 use super::slip::FaultState;
 use super::slip_card::{method, steps as worked};
-use crate::card::{Column, Explain, Explanation, Figure, Item, Step, Table};
+use crate::card::{Column, Explain, Explanation, Figure, Item, Projection, Role, Step, Table};
+use crate::frames::net::Net;
+use crate::frames::vector::{V3, dot};
 use crate::frames::{bearing_item, three_figures};
-use crate::units::{Pressure, as_typed, fixed, with_typed_unit};
+use crate::units::{Pressure, Quantity, as_typed, fixed, with_typed_unit};
 
 /// A card prints no more rows than this.
 const MOST_ROWS: usize = 80;
@@ -21,8 +23,9 @@ pub(super) fn explain(ranked: &RankedFaults, inputs: &RankedInputs) -> Explanati
     let strength = inputs.strength;
     Explanation {
         title: format!(
-            "{} ranked by their margin of pore pressure at {}",
+            "{} ranked by their margin of pore pressure{} at {}",
             planes(ranked.planes()),
+            inputs.stress.under_name(),
             with_typed_unit(inputs.pore)
         ),
         headline: headline(ranked, &rows),
@@ -203,7 +206,38 @@ fn steps(ranked: &RankedFaults, inputs: &RankedInputs, rows: &[RankedFault]) -> 
 
 /// The figures of a ranking, in the order they are shown.
 fn figures(inputs: &RankedInputs, rows: &[RankedFault]) -> Vec<Figure> {
-    vec![shear_against_normal(inputs, rows)]
+    vec![on_the_net(inputs, rows), shear_against_normal(inputs, rows)]
+}
+
+/// The poles of the planes over the slip tendency of every plane there could be.
+fn on_the_net(inputs: &RankedInputs, rows: &[RankedFault]) -> Figure {
+    let (s, pore) = (inputs.stress.tensor(), inputs.pore.si());
+    let tendency = |n: V3| {
+        let t = s.times(n);
+        let normal = dot(n, t);
+        let effective = normal - pore;
+        if effective <= 0.0 { f64::NAN } else { (dot(t, t) - normal * normal).max(0.0).sqrt() / effective }
+    };
+    let mut net = Net::new(Projection::EqualArea).contours("slip tendency τ / σ_n'", tendency);
+    for (i, row) in rows.iter().enumerate() {
+        let name = if i < NAMED { row.fault.name.text() } else { "" };
+        if let Ok(axes) = row.fault.plane.axes() {
+            let role = if row.slip.state() == FaultState::Holds { Role::Quiet } else { Role::Limit };
+            net = net.pole(name, role, axes.normal);
+        }
+    }
+    let worst: Vec<String> = rows
+        .iter()
+        .take(NAMED)
+        .map(|r| {
+            let tendency = r.slip.slip_tendency().map_or_else(|| "open".to_owned(), |t| fixed(t, 2));
+            format!("{} {tendency}", r.fault.name)
+        })
+        .collect();
+    net.figure(
+        "Poles of the planes (rings) over the slip tendency of every plane without cohesion, by its pole; the most critical are named.",
+        format!("Slip tendency over the lower hemisphere of poles. Of the most critical planes: {}.", worst.join(", ")),
+    )
 }
 
 fn shear_against_normal(inputs: &RankedInputs, rows: &[RankedFault]) -> Figure {

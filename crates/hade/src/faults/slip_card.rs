@@ -62,7 +62,8 @@ pub(super) fn explain(slip: &FaultSlip, inputs: &FaultSlipInputs) -> Explanation
     let strength = inputs.strength;
     Explanation {
         title: format!(
-            "Slip and opening of the plane {} at a pore pressure of {}",
+            "Slip and opening{} of the plane {} at a pore pressure of {}",
+            inputs.stress.under_name(),
             inputs.plane.words(),
             with_typed_unit(inputs.pore)
         ),

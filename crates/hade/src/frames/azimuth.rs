@@ -219,7 +219,7 @@ fn is_quarter(turn: Angle) -> bool {
 
 fn turn_words(turn: Angle) -> &'static str {
     if is_quarter(turn) {
-        "turn to the direction across it (in a vertical hole breakouts form across S_Hmax)"
+        "turn to the direction across it (as S_Hmax stands across breakouts in a vertical hole, or a strike across its dip direction)"
     } else {
         "turn clockwise"
     }

@@ -6,10 +6,11 @@ use serde::{Deserialize, Serialize};
 
 use super::axes::product;
 use super::azimuth::{TRUE_AZIMUTH, bearing};
+use super::net::axes_net;
 use super::turn::{Turn, in_words};
 use super::vector::{M3, V3, apply, cross, dot, multiply, transpose};
 use super::{Attitude, Axes, Borehole, FaultAxes, Frame, Geographic, Name, Plane};
-use crate::card::{Card, Check, Explain, Explanation, Formula, Item, Method, Reference, Step};
+use crate::card::{Card, Check, Explain, Explanation, Figure, Formula, Item, Method, Reference, Step};
 use crate::error::{Error, Result};
 use crate::units::{Angle, Quantity};
 
@@ -287,6 +288,7 @@ impl Explain for Route {
                 ..Method::default()
             },
             steps,
+            figures: axes_figure(from, to).into_iter().collect(),
             notes: [from.note(), to.note()].into_iter().flatten().fold(Vec::new(), |mut notes, note| {
                 if !notes.contains(&note) {
                     notes.push(note);
@@ -336,6 +338,27 @@ impl<From: Frame, To: Frame> Explain for Chain<From, To> {
     fn upstream(&self) -> Vec<Card> {
         self.route.upstream()
     }
+}
+
+/// Both sets of axes on the lower hemisphere, each by its letter.
+fn axes_figure(from: Axes, to: Axes) -> Option<Figure> {
+    let (old, new) = (from.by_definition().ok()?, to.by_definition().ok()?);
+    let letters = |axes: Axes, prime: &str| axes.letters().map(|letter| format!("{letter}{prime}"));
+    let prime = if from.letters() == to.letters() { "′" } else { "" };
+    let (old_names, new_names) = (letters(from, ""), letters(to, prime));
+    let pairs =
+        |rows: M3, names: &[String; 3]| -> Vec<(V3, String)> { rows.into_iter().zip(names.iter().cloned()).collect() };
+    let (old, new) = (pairs(old, &old_names), pairs(new, &new_names));
+    let before: Vec<(V3, &str)> = old.iter().map(|(v, name)| (*v, name.as_str())).collect();
+    let after: Vec<(V3, &str)> = new.iter().map(|(v, name)| (*v, name.as_str())).collect();
+    let legend = |axes: Axes, names: &[String; 3]| {
+        names.iter().zip(axes.axis_names()).map(|(n, what)| format!("{n} {what}")).collect::<Vec<_>>().join(", ")
+    };
+    Some(axes_net(
+        &format!("The axes before ({}) and after the turn ({}).", legend(from, &old_names), legend(to, &new_names)),
+        &before,
+        &after,
+    ))
 }
 
 fn count(turns: usize) -> &'static str {

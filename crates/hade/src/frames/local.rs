@@ -4,7 +4,7 @@ use serde::{Deserialize, Serialize};
 
 use super::turn::Turn;
 use super::vector::{M3, V3, add, angle_between_lines, cross, dot, norm, scale};
-use super::{Azimuth, Chain, Geographic, Line, Local, Name};
+use super::{Azimuth, Chain, Geographic, Line, Local, Name, by_singular_values, nearest_orthonormal};
 use crate::card::{Card, Item};
 use crate::error::{Error, Result};
 use crate::units::{Angle, Quantity, fixed};
@@ -26,6 +26,8 @@ enum Stated {
     MineGridUp { north: Azimuth },
     /// The first axis along one line; the second in the plane of both, towards the other.
     TwoLines { first: Line, second: Line },
+    /// Along the nearest orthonormal set to three measured lines.
+    ThreeLines { lines: [Line; 3] },
 }
 
 /// Two lines closer than this do not fix axes, in degrees.
@@ -67,6 +69,18 @@ impl LocalAxes {
         Ok(LocalAxes { name: Name::new(name), by: Stated::TwoLines { first, second } })
     }
 
+    /// Along three lines measured as the axes of an instrument, which are replaced by the nearest set at
+    /// right angles. Lines have no sign, so of a left-handed set the third is turned round.
+    ///
+    /// # Errors
+    /// When two of them are more than 15° from a right angle, or one has no true north or a plunge
+    /// beyond ±90°.
+    pub fn along_measured_axes(name: &str, lines: [Line; 3]) -> Result<Self> {
+        let stated = LocalAxes { name: Name::new(name), by: Stated::ThreeLines { lines } };
+        stated.turns("")?;
+        Ok(stated)
+    }
+
     /// The name.
     pub fn name(self) -> Name {
         self.name
@@ -85,6 +99,7 @@ impl LocalAxes {
             Stated::MineGridDown { .. } => ["mine north", "mine east", "down"],
             Stated::MineGridUp { .. } => ["mine east", "mine north", "up"],
             Stated::TwoLines { .. } => ["along the first line", "towards the second line", "across both lines"],
+            Stated::ThreeLines { .. } => ["along the first axis", "along the second axis", "along the third axis"],
         }
     }
 
@@ -97,6 +112,7 @@ impl LocalAxes {
             Stated::TwoLines { first, second } => {
                 format!("first line {}; second line {}", first.words(), second.words())
             }
+            Stated::ThreeLines { lines: [a, b, c] } => format!("{}; {}; {}", a.words(), b.words(), c.words()),
         }
     }
 
@@ -121,6 +137,10 @@ impl LocalAxes {
                 let z = unit(cross(x, second.vector()?));
                 vec![Turn::by_rows("to the axes along the first line, and across both", [x, cross(z, x), z])]
             }
+            Stated::ThreeLines { lines } => {
+                let fitted = nearest_orthonormal(&vectors(lines)?)?;
+                vec![Turn::by_rows("to the nearest axes at right angles", fitted.axes)]
+            }
         })
     }
 
@@ -141,6 +161,10 @@ impl LocalAxes {
                 let y = unit(add(towards, scale(x, -dot(x, towards))));
                 [x, y, cross(x, y)]
             }
+            Stated::ThreeLines { lines } => {
+                let lines = vectors(lines)?;
+                by_singular_values(&lines).map_or_else(|| nearest_orthonormal(&lines).map(|f| f.axes), Ok)?
+            }
         })
     }
 
@@ -150,23 +174,18 @@ impl LocalAxes {
                 let symbol = format!("a_m{}", suffix.trim_start_matches('_'));
                 vec![north.item(&symbol, "azimuth of mine north")]
             }
-            Stated::TwoLines { first, second } => [(first, "first", 1), (second, "second", 2)]
-                .into_iter()
-                .flat_map(|(line, which, n)| {
-                    [
-                        line.trend.item(&format!("T_{n}"), &format!("trend of the {which} line")),
-                        Item::typed(
-                            &format!("P_{n}"),
-                            format!("plunge of the {which} line, down positive"),
-                            line.plunge,
-                        ),
-                    ]
-                })
-                .collect(),
+            Stated::TwoLines { first, second } => line_items(&[first, second]),
+            Stated::ThreeLines { lines } => line_items(&lines),
         }
     }
 
     pub(super) fn note(self) -> Option<String> {
+        if let Stated::ThreeLines { lines } = self.by {
+            let misfit = Angle::from_si(nearest_orthonormal(&vectors(lines).ok()?).ok()?.misfit);
+            return Some(format!(
+                "The measured axes were replaced by the nearest set at right angles; the largest angle from a measured line to its axis is {misfit}. Lines have no sign: of a left-handed set the third is turned round."
+            ));
+        }
         let Stated::TwoLines { first, second } = self.by else { return None };
         let apart = angle_between_lines(first.vector().ok()?, second.vector().ok()?);
         Some(format!(
@@ -181,8 +200,26 @@ impl LocalAxes {
             Stated::TwoLines { first, second } => {
                 first.trend.upstream().into_iter().chain(second.trend.upstream()).collect()
             }
+            Stated::ThreeLines { lines } => lines.iter().flat_map(|line| line.trend.upstream()).collect(),
         }
     }
+}
+
+fn vectors([a, b, c]: [Line; 3]) -> Result<M3> {
+    Ok([a.vector()?, b.vector()?, c.vector()?])
+}
+
+fn line_items(lines: &[Line]) -> Vec<Item> {
+    lines
+        .iter()
+        .zip([("first", 1), ("second", 2), ("third", 3)])
+        .flat_map(|(line, (which, n))| {
+            [
+                line.trend.item(&format!("T_{n}"), &format!("trend of the {which} line")),
+                Item::typed(&format!("P_{n}"), format!("plunge of the {which} line, down positive"), line.plunge),
+            ]
+        })
+        .collect()
 }
 
 fn unit(v: V3) -> V3 {

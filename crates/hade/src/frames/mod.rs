@@ -33,12 +33,12 @@ mod depth_conversion;
 mod direction;
 mod frame;
 mod geometry;
+mod hemisphere;
 mod line;
 mod local;
 mod magnetic;
 mod map_grid;
 mod name;
-#[allow(dead_code)] // Cards draw with it as they come.
 pub(crate) mod net;
 mod plane;
 mod site;
@@ -66,6 +66,7 @@ pub use geometry::{
     TwoPlanes,
 };
 pub(crate) use geometry::{by_singular_values, nearest_orthonormal};
+pub use hemisphere::{Drawn, HemisphereInputs, LowerHemisphere};
 pub use line::Line;
 pub use local::LocalAxes;
 pub use magnetic::{Declination, DeclinationInputs, DeclinationOutcome, MagneticField};

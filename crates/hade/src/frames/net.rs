@@ -63,18 +63,6 @@ impl Net {
         self
     }
 
-    /// The lines at an angle (radians, up to a right angle) from an axis: its small circle.
-    pub fn cone(mut self, label: &str, role: Role, axis: V3, half_angle: f64) -> Self {
-        let mut pieces = small_circle(self.projection, axis, half_angle);
-        // The longest part bears the name.
-        pieces.sort_by_key(|p| std::cmp::Reverse(p.len()));
-        for (i, points) in pieces.into_iter().enumerate() {
-            let label = if i == 0 { label.to_owned() } else { String::new() };
-            self.layers.push(Layer::Line { label, role, points });
-        }
-        self
-    }
-
     /// Where something moves: an arrow over the place of its line, pointing to the azimuth of the
     /// movement, just inside the rim where it would cross it. Away from the centre it moves down,
     /// towards it up. A vertical movement has no azimuth and is a diamond.
@@ -148,17 +136,6 @@ impl Net {
     }
 }
 
-/// A quantity of planes over their poles, with its scale (as [`Net::contours`]).
-pub(crate) fn contoured_poles(
-    caption: impl Into<String>,
-    alt: impl Into<String>,
-    projection: Projection,
-    value: impl Fn(V3) -> f64,
-    label_with_unit: &str,
-) -> Figure {
-    Net::new(projection).contours(label_with_unit, value).figure(caption, alt)
-}
-
 /// Axes with a sign on an equal-area net, each with its name: those before a turn as quiet marks,
 /// those after it as strong ones.
 pub(crate) fn axes_net(caption: &str, before: &[(V3, &str)], after: &[(V3, &str)]) -> Figure {
@@ -223,52 +200,17 @@ fn great_circle(projection: Projection, normal: V3) -> Option<Vec<[f64; 2]>> {
     Some((0..=steps).filter_map(place).map(rounded).collect())
 }
 
-/// The parts of a small circle on the lower hemisphere: what lies above is seen at the other side.
-fn small_circle(projection: Projection, axis: V3, half_angle: f64) -> Vec<Vec<[f64; 2]>> {
-    let length = norm(axis);
-    if !(length.is_finite() && length > 0.0 && half_angle.is_finite()) {
-        return Vec::new();
-    }
-    let a = scale(axis, 1.0 / length);
-    let helper = if a[2].abs() < 0.9 { [0.0, 0.0, 1.0] } else { [1.0, 0.0, 0.0] };
-    let u = cross(a, helper);
-    let u = scale(u, 1.0 / norm(u));
-    let w = cross(a, u);
-    let at = |degrees: f64| {
-        let (s, c) = degrees.to_radians().sin_cos();
-        add(scale(a, half_angle.cos()), scale(add(scale(u, c), scale(w, s)), half_angle.sin()))
-    };
-    let down = |v: V3| v[2] >= 0.0;
-    let mut pieces = Vec::new();
-    let mut piece: Vec<[f64; 2]> = Vec::new();
-    for i in 0..72 {
-        let (from, to) = (5.0 * f64::from(i), 5.0 * f64::from(i + 1));
-        if piece.is_empty() {
-            piece.extend(projection.place(at(from)));
-        }
-        if down(at(from)) != down(at(to)) {
-            let (mut low, mut high) = (from, to);
-            for _ in 0..50 {
-                let middle = 0.5 * (low + high);
-                if down(at(middle)) == down(at(from)) { low = middle } else { high = middle }
-            }
-            piece.extend(projection.place(at(low)));
-            pieces.push(std::mem::take(&mut piece));
-            piece.extend(projection.place(at(high)));
-        }
-        piece.extend(projection.place(at(to)));
-    }
-    pieces.push(piece);
-    pieces.iter().map(|p| p.iter().copied().map(rounded).collect()).collect()
-}
-
 #[cfg(test)]
 mod tests {
     use super::*;
-    use crate::frames::vector::{angle_between_lines, dot};
+    use crate::frames::vector::dot;
     use crate::frames::{Azimuth, Plane};
     use crate::show::{Theme, svg};
     use crate::units::Units;
+
+    fn contoured(projection: Projection, value: impl Fn(V3) -> f64) -> Figure {
+        Net::new(projection).contours("slip tendency τ/σ'_n", value).figure("c", "a.")
+    }
 
     const BOTH: [Projection; 2] = [Projection::EqualArea, Projection::EqualAngle];
 
@@ -326,23 +268,6 @@ mod tests {
         for p in arc {
             let radius = (p[0] - away[0]).hypot(p[1] - away[1]);
             assert!((radius - 1.0 / dip.cos()).abs() < 3e-6, "{radius}");
-        }
-    }
-
-    #[test]
-    fn a_small_circle_keeps_its_angle_and_parts_at_the_rim() {
-        for projection in BOTH {
-            for (axis, angle, parts) in
-                [([0.1, 0.2, 1.0], 20.0_f64, 1..=1), ([1.0, 0.5, 0.2], 35.0, 2..=3), ([0.0, 1.0, 0.0], 40.0, 2..=3)]
-            {
-                let pieces = small_circle(projection, axis, angle.to_radians());
-                assert!(parts.contains(&pieces.len()), "{}", pieces.len());
-                for p in pieces.iter().flatten() {
-                    let off = angle_between_lines(projection.direction(*p), axis).to_degrees();
-                    assert!((off - angle).abs() < 1e-3, "{off}");
-                    assert!(p[0].hypot(p[1]) <= 1.0 + 1e-6);
-                }
-            }
         }
     }
 
@@ -429,7 +354,7 @@ mod tests {
     #[test]
     fn a_contoured_quantity_keeps_the_record_and_the_picture_small() {
         for projection in BOTH {
-            let figure = contoured_poles("c", "a.", projection, tendency, "slip tendency τ/σ'_n");
+            let figure = contoured(projection, tendency);
             let Some(Layer::Contours { values, .. }) = figure.layers.get(1) else { panic!("contours") };
             assert!(values.iter().all(Option::is_some));
             assert!(serde_json::to_string(&figure).unwrap().len() < 8_000);
@@ -447,11 +372,11 @@ mod tests {
 
     #[test]
     fn a_quantity_that_is_the_same_or_missing_everywhere_is_drawn_without_lines() {
-        let same = contoured_poles("c", "a.", Projection::EqualArea, |_| 0.0, "q");
+        let same = contoured(Projection::EqualArea, |_| 0.0);
         assert!(svg(&same, Theme::Light).contains(">N</text>"));
-        let none = contoured_poles("c", "a.", Projection::EqualArea, |_| f64::NAN, "q");
+        let none = contoured(Projection::EqualArea, |_| f64::NAN);
         assert!(svg(&none, Theme::Light).contains(">N</text>"));
-        let half = contoured_poles("c", "a.", Projection::EqualArea, |n| if n[0] > 0.0 { n[1] } else { f64::NAN }, "q");
+        let half = contoured(Projection::EqualArea, |n| if n[0] > 0.0 { n[1] } else { f64::NAN });
         let text = serde_json::to_string(&half).unwrap();
         assert_eq!(serde_json::from_str::<Figure>(&text).unwrap(), half);
     }

@@ -3,7 +3,8 @@
 
 use super::html::line_html;
 use super::notebook::Show;
-use crate::units::{Angle, Density, Gradient, Length, Pressure, Quantity, Uncertain, Warming, as_typed};
+use crate::frames::{Attitude, Depth, Line, Plane, Site};
+use crate::units::{Angle, Density, FluxDensity, Gradient, Length, Pressure, Quantity, Uncertain, Warming, as_typed};
 
 /// How many figures a bare value is shown with; a record keeps every bit.
 const FIGURES: usize = 6;
@@ -43,7 +44,22 @@ shows! {
     Density: "kg/m³" in_kg_m3, "ppg" in_ppg;
     Gradient: "psi/ft" in_psi_per_ft;
     Warming: ;
+    FluxDensity: ;
 }
+
+macro_rules! shows_words {
+    ($($value:ident),*) => { $(
+        impl Show for $value {
+            fn text(&self) -> String {
+                self.words()
+            }
+            fn html(&self) -> String {
+                line_html(&self.text())
+            }
+        }
+    )* };
+}
+shows_words!(Attitude, Line, Plane, Site, Depth);
 
 impl Show for f64 {
     fn text(&self) -> String {

@@ -5,6 +5,7 @@ use serde::{Deserialize, Serialize};
 use super::invariants::trace_minors_det;
 use super::invariants_card::factor;
 use super::regime::{Steepest, steepest, ties};
+use super::regime_strip::regime_strip;
 use super::tensor::Tensor;
 use super::{Regime, Stress};
 use crate::card::{Card, Check, Explain, Explanation, Formula, Item, Method, Reference, Step};
@@ -264,7 +265,7 @@ impl Explain for FaultingRegime {
             )));
         }
         Explanation {
-            title: "Faulting regime".to_owned(),
+            title: format!("Faulting regime{}", self.stress.of_name()),
             headline,
             inputs: vec![self.stress.item("S", "stress in north, east, down")],
             results,
@@ -286,9 +287,9 @@ impl Explain for FaultingRegime {
                 ..Method::default()
             },
             steps,
+            figures: self.a_phi.map(regime_strip).into_iter().collect(),
             notes: self.notes(),
             topics: vec!["stress".to_owned()],
-            ..Explanation::default()
         }
     }
 

@@ -210,7 +210,7 @@ impl Explain for HorizontalStresses {
         }
         steps.push(Step::Table { table: beside_the_principal_axes(principals.magnitudes(), lines) });
         Explanation {
-            title: "Horizontal and vertical stresses of the tensor".to_owned(),
+            title: format!("Horizontal and vertical stresses of the tensor{}", self.stress.of_name()),
             headline: format!(
                 "S_Hmax {} {}, S_hmin {}, S_v {}",
                 self.sh_max,

@@ -271,7 +271,9 @@ impl Explain for Invariants {
     fn explain(&self) -> Explanation {
         let o = &self.outcome;
         let (item, title) = match &self.inputs {
-            InvariantsInputs::Geographic { stress } => (stress.item("S", "stress in north, east, down"), String::new()),
+            InvariantsInputs::Geographic { stress } => {
+                (stress.item("S", "stress in north, east, down"), stress.of_name())
+            }
             InvariantsInputs::Borehole { stress } => (
                 stress.item("S'", "stress in borehole axes"),
                 stress

@@ -9,6 +9,7 @@ use super::horizontals::Horizontals;
 use super::in_axes::{self, AxisComponents};
 use super::polar::{by_singular_values, nearest_orthonormal};
 use super::tensor::Tensor;
+use super::tensor_figure::tensor_figures;
 use crate::card::{Card, Check, Explain, Explanation, Formula, Item, Method, Reference, Step};
 use crate::error::{Error, Result};
 use crate::frames::{Axes, Geographic, Line, Name, chain_card};
@@ -248,6 +249,7 @@ impl Explain for Stress<Geographic> {
             "MPa",
             "north, east, down; compression positive",
         ));
+        explanation.figures = tensor_figures(self);
         explanation.topics.push("stress".to_owned());
         explanation
     }

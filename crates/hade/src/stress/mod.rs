@@ -36,14 +36,8 @@ pub use horizontals::Horizontals;
 pub use in_axes::AxisComponents;
 pub use invariants::{Invariants, InvariantsInputs, InvariantsOutcome};
 pub use made::{Components, Made, StatedInputs};
-#[cfg(test)]
-pub(crate) use mohr::mohr_samples;
 pub use mohr::{MohrCircles, MohrInputs, MohrOutcome};
 pub use principals::{PrincipalOutcome, Principals};
 pub use regime::Regime;
-#[allow(unused_imports)]
-pub(crate) use regime_strip::regime_strip;
 pub use stress::{AddsTo, Stress};
-#[allow(unused_imports)]
-pub(crate) use tensor_figure::tensor_figures;
 pub use traction::{Traction, TractionInputs, TractionOutcome};

@@ -374,20 +374,6 @@ impl MohrCircles {
     }
 }
 
-/// Cards for the replay of every kind: with named planes and with strengths above and below.
-#[cfg(test)]
-pub(crate) fn mohr_samples(circles: &MohrCircles) -> Vec<Card> {
-    use crate::frames::Azimuth;
-    use crate::units::Units;
-    let plane = Plane { strike: Azimuth::from_true_north(20.deg()), dip: 70.deg() };
-    let named = circles.clone().with_named_plane("fault F2", plane).unwrap();
-    vec![
-        named.clone().with_envelope(8.mpa(), 30.deg()).unwrap().card(),
-        named.with_envelope(0.mpa(), 20.deg()).unwrap().card(),
-        circles.clone().with_envelope(5.mpa(), 0.deg()).unwrap().card(),
-    ]
-}
-
 #[cfg(test)]
 mod tests {
     use super::*;

@@ -11,7 +11,6 @@ const REGIMES: [(&str, Role); 3] =
 /// 0–1 normal, 1–2 strike-slip, 2–3 reverse faulting, and between them the states where the
 /// vertical stress equals a horizontal one. The folded line leads from A_φ to
 /// φ = (S_2 − S_3) / (S_1 − S_3); a dot on it and a triangle at the foot mark the value. One outside 0–3, or not a number, is not marked.
-#[allow(dead_code)] // Drawn on the card of A_φ.
 pub(crate) fn regime_strip(a_phi: f64) -> Figure {
     let mut layers: Vec<Layer> = (0_u8..)
         .zip(REGIMES)

@@ -64,6 +64,11 @@ impl<F: Frame> Stress<F> {
         self.label.map_or_else(String::new, |name| format!(" of {name}"))
     }
 
+    /// " under overcoring in KC-2", or nothing, for titles.
+    pub(crate) fn under_name(&self) -> String {
+        self.label.map_or_else(String::new, |name| format!(" under {name}"))
+    }
+
     pub(super) fn with_label(self, label: Option<Name>) -> Self {
         Stress { label, ..self }
     }

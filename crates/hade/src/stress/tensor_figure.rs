@@ -34,7 +34,6 @@ impl Level {
 /// Two figures of a stress: the principal stresses as bars with their axes, over the vertical and
 /// the extreme horizontal normal stresses; and the axes on a net with the azimuth of the largest
 /// horizontal stress. Where an axis is vertical, its bar is as long as one of the lower three.
-#[allow(dead_code)] // Drawn on the card of a stress.
 pub(crate) fn tensor_figures(stress: &Stress<Geographic>) -> Vec<Figure> {
     let level = Level::of(stress);
     vec![bars(stress, &level), axes(stress, &level)]
