@@ -6,3 +6,5 @@ mod demo;
 mod refusals;
 #[path = "memo/support.rs"]
 mod support;
+#[path = "memo/three_frames.rs"]
+mod three_frames;

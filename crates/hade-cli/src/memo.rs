@@ -37,7 +37,7 @@ pub(crate) fn run(args: &MemoArgs) -> Result<(), Failure> {
     let started = Instant::now();
     check_target(&args.output)?;
     let folder = Notebook::read(&args.notebook)?.folder().to_path_buf();
-    let project = Project::read_beside(&folder)?;
+    let project = Project::read_beside(&folder)?.map(|project| project.for_notebook(&args.notebook));
     if project.as_ref().is_none_or(|p| p.date.is_none()) {
         return Err(format!(
             "a memo needs a date, and the clock is never asked; write into {}:\n    [memo]\n    date = \"2026-06-01\"",

@@ -147,6 +147,19 @@ struct ProjectTable {
     hole: String,
 }
 
+/// What one notebook of the folder says otherwise.
+#[derive(Clone, Debug, Default, PartialEq, Eq, Deserialize)]
+#[serde(deny_unknown_fields, default)]
+pub(crate) struct NotebookTable {
+    number: Option<String>,
+    revision: Option<String>,
+    date: Option<Date>,
+    status: Option<Status>,
+    title: Option<String>,
+    hole: Option<String>,
+    revisions: Option<Vec<Revision>>,
+}
+
 #[derive(Debug, Default, Deserialize)]
 #[serde(deny_unknown_fields, default)]
 struct File {
@@ -155,6 +168,7 @@ struct File {
     people: Vec<Person>,
     revisions: Vec<Revision>,
     template: BTreeMap<String, String>,
+    notebook: BTreeMap<String, NotebookTable>,
 }
 
 /// What `hade.toml` says. What it leaves out is empty here and stands against issue.
@@ -185,6 +199,8 @@ pub struct Project {
     pub revisions: Vec<Revision>,
     /// Parameters of the template ("paper").
     pub template: BTreeMap<String, String>,
+    /// What single notebooks say otherwise, by file name.
+    pub(crate) notebooks: BTreeMap<String, NotebookTable>,
 }
 
 impl Project {
@@ -225,7 +241,28 @@ impl Project {
             people: file.people,
             revisions: file.revisions,
             template: file.template,
+            notebooks: file.notebook,
         })
+    }
+
+    /// The project as it stands for one notebook: where the file has a table `[notebook."name.ipynb"]`,
+    /// what that says goes before the rest.
+    pub fn for_notebook(mut self, notebook: &Path) -> Self {
+        let name = notebook.file_name().map(|n| n.to_string_lossy().into_owned()).unwrap_or_default();
+        let Some(own) = self.notebooks.get(&name).cloned() else { return self };
+        let take = |slot: &mut String, own: Option<String>| {
+            if let Some(own) = own {
+                *slot = own;
+            }
+        };
+        take(&mut self.number, own.number);
+        take(&mut self.revision, own.revision);
+        take(&mut self.title, own.title);
+        take(&mut self.hole, own.hole);
+        self.date = own.date.or(self.date);
+        self.status = own.status.unwrap_or(self.status);
+        self.revisions = own.revisions.unwrap_or(self.revisions);
+        self
     }
 
     /// The date, without which there is no PDF/A.
@@ -253,6 +290,18 @@ mod tests {
             let project = parse(&format!("[memo]\nnumber = \"A\"\ndate = {date}\n")).unwrap();
             assert_eq!(project.date, Some(Date { year: 2026, month: 5, day: 14 }));
         }
+    }
+
+    #[test]
+    fn a_notebook_of_its_own_number_keeps_the_rest() {
+        let text = "[memo]\nnumber = \"A-1\"\nrevision = \"B\"\ndate = 2026-05-14\n\n[notebook.\"b.ipynb\"]\nnumber = \"A-2\"\ndate = 2026-06-01\n";
+        let project = parse(text).unwrap();
+        let other = project.clone().for_notebook(Path::new("calc/b.ipynb"));
+        assert_eq!((other.number.as_str(), other.revision.as_str()), ("A-2", "B"));
+        assert_eq!(other.date, Some(Date { year: 2026, month: 6, day: 1 }));
+        assert_eq!(project.clone().for_notebook(Path::new("calc/a.ipynb")), project);
+        let said = parse("[notebook.\"b.ipynb\"]\nnumbr = 3\n").unwrap_err().to_string();
+        assert!(said.contains("numbr"), "{said}");
     }
 
     #[test]

@@ -145,7 +145,6 @@ pub fn replay(card: &Card) -> Result<Replayed> {
     })
 }
 
-#[cfg(test)]
 mod samples;
 
 #[cfg(test)]

@@ -218,7 +218,7 @@ fn on_the_net(inputs: &RankedInputs, rows: &[RankedFault]) -> Figure {
         let effective = normal - pore;
         if effective <= 0.0 { f64::NAN } else { (dot(t, t) - normal * normal).max(0.0).sqrt() / effective }
     };
-    let mut net = Net::new(Projection::EqualArea).contours("slip tendency τ / σ_n'", tendency);
+    let mut net = Net::new(Projection::EqualArea).contours("slip tendency", tendency);
     for (i, row) in rows.iter().enumerate() {
         let name = if i < NAMED { row.fault.name.text() } else { "" };
         if let Ok(axes) = row.fault.plane.axes() {

@@ -6,7 +6,7 @@ use super::net::Net;
 use super::vector::wrap;
 use super::{Line, Name, Plane, three_figures};
 use crate::card::{
-    Card, Check, Column, Explain, Explanation, Formula, Item, Mark, Method, Projection, Reference, Role, Step, Table,
+    Card, Check, Column, Explain, Explanation, Formula, Mark, Method, Projection, Reference, Role, Step, Table,
 };
 use crate::error::Result;
 use crate::units::{Angle, Quantity, fixed};
@@ -207,8 +207,6 @@ impl Explain for LowerHemisphere {
         Explanation {
             title: title.clone(),
             headline: format!("{} lines and planes, {} projection", drawn.len(), projection.words()),
-            inputs: drawn.iter().map(|d| Item::choice("", d.name().text(), d.words())).collect(),
-            results: Vec::new(),
             method: Method {
                 words: "Each line is drawn where its lower end lies, a plane as the circle of its lines; r counts from the centre in radii of the circle, towards the trend.".to_owned(),
                 formulas: vec![Formula::new(math, text)],

@@ -1,5 +1,7 @@
 //! One card of every kind, for the tests of the table.
 
+#![cfg(test)]
+
 use crate::prelude::*;
 
 /// One card of every kind, made through the public surface.

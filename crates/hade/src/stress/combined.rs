@@ -198,6 +198,7 @@ pub(super) fn explain(s: &Stress<Geographic>, parts: Option<Parts>) -> Explanati
         },
         steps,
         notes,
+        topics: if mean { vec!["combined".to_owned()] } else { Vec::new() },
         ..Explanation::default()
     }
 }

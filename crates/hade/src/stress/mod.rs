@@ -16,7 +16,6 @@ mod made;
 mod mohr;
 mod polar;
 mod principals;
-#[cfg(test)]
 mod properties;
 mod regime;
 mod regime_strip;

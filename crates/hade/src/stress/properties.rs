@@ -1,5 +1,7 @@
 //! What holds for all stresses, in whatever axes.
 
+#![cfg(test)]
+
 use proptest::prelude::*;
 
 use super::Stress;

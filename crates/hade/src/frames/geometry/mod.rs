@@ -7,7 +7,6 @@ mod line_at_rake;
 mod nearest_axes;
 mod plane_through_lines;
 mod planes_intersection;
-#[cfg(test)]
 mod properties;
 mod rake_of_line;
 

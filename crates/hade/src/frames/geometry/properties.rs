@@ -1,5 +1,7 @@
 //! What holds for all lines and planes.
 
+#![cfg(test)]
+
 use proptest::prelude::*;
 
 use crate::frames::{Azimuth, Line, MeasuredAxes, Plane};
