@@ -31,15 +31,67 @@ fn attitude() -> impl Strategy<Value = Attitude> {
     })
 }
 
+fn times(a: [[f64; 3]; 3], b: [[f64; 3]; 3]) -> [[f64; 3]; 3] {
+    a.map(|row| [0, 1, 2].map(|k| row[0] * b[0][k] + row[1] * b[1][k] + row[2] * b[2][k]))
+}
+
+/// Q S Qᵀ of six components.
+fn turned(q: [[f64; 3]; 3], [xx, yy, zz, xy, yz, xz]: [f64; 6]) -> [f64; 6] {
+    let transposed = [0, 1, 2].map(|i| [q[0][i], q[1][i], q[2][i]]);
+    let t = times(q, times([[xx, xy, xz], [xy, yy, yz], [xz, yz, zz]], transposed));
+    [t[0][0], t[1][1], t[2][2], t[0][1], t[1][2], t[0][2]]
+}
+
 proptest! {
     #![proptest_config(ProptestConfig::with_cases(CASES))]
 
+    /// The numbers in the hole's axes are stated anew, so that they know nothing of where they came
+    /// from, and turned back.
     #[test]
     fn a_tensor_comes_back_as_it_went(s in stress(), attitude in attitude()) {
         let chain = attitude.chain().unwrap();
-        let back = chain.back().carry(&chain.carry(&s));
+        let [xx, yy, zz, xy, yz, xz] = six(&chain.carry(&s)).map(|c| c.pa());
+        let stated = Stress::from_components_in(&chain, AxisComponents { xx, yy, zz, xy, yz, xz }).unwrap();
+        let back = chain.back().carry(&stated);
         let largest = six(&s).iter().fold(0.0_f64, |m, c| m.max(c.abs()));
         for (a, b) in six(&back).iter().zip(six(&s)) {
+            prop_assert!(agree(*a, b, SHARE * largest), "{} is not {}", a, b);
+        }
+    }
+
+    /// Joining chains is multiplying their matrices, from a mine grid by north, east, down and a hole to
+    /// its wall; and what the joined chain carries is what the parts carry one after another.
+    #[test]
+    fn chains_compose(
+        s in stress(),
+        attitude in attitude(),
+        tool_face in -360.0..720.0_f64,
+        north in 0.0..360.0_f64,
+        trend in 0.0..360.0_f64,
+        plunge in -90.0..90.0_f64,
+    ) {
+        let grid = LocalAxes::mine_grid_with_up("grid", Azimuth::from_true_north(north.deg())).unwrap().chain().unwrap();
+        let (to_hole, to_wall) = (attitude.chain().unwrap(), attitude.wall_chain(tool_face.deg()).unwrap());
+        let whole = grid.back().then(&to_hole).unwrap().then(&to_wall).unwrap();
+        let product = times(to_wall.matrix(), times(to_hole.matrix(), grid.back().matrix()));
+        for (row, expected) in whole.matrix().iter().zip(product) {
+            for (a, b) in row.iter().zip(expected) {
+                prop_assert!(agree(*a, b, 4e-15), "{} is not {}", a, b);
+            }
+        }
+        let line = Line { trend: Azimuth::from_true_north(trend.deg()), plunge: plunge.deg() }.direction().unwrap();
+        let in_grid = grid.carry(&line);
+        let there = whole.carry(&in_grid).components();
+        let v = in_grid.components();
+        for (a, row) in there.iter().zip(whole.matrix()) {
+            prop_assert!(agree(*a, row[0] * v[0] + row[1] * v[1] + row[2] * v[2], 4e-15));
+        }
+        let largest = six(&s).iter().fold(0.0_f64, |m, c| m.max(c.abs()));
+        let q = whole.matrix();
+        let stated = { let [xx, yy, zz, xy, yz, xz] = six(&s).map(|c| c.pa()); AxisComponents { xx, yy, zz, xy, yz, xz } };
+        let carried = six(&whole.carry(&Stress::from_components_in(&grid, stated).unwrap()));
+        let expected = turned(q, six(&s));
+        for (a, b) in carried.iter().zip(expected) {
             prop_assert!(agree(*a, b, SHARE * largest), "{} is not {}", a, b);
         }
     }

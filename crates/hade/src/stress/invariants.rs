@@ -25,12 +25,12 @@ pub struct Invariants {
 #[non_exhaustive]
 pub enum InvariantsInputs {
     /// North, east, down.
-    Geographic {
+    NorthEastDown {
         /// The stress.
         stress: Stress<Geographic>,
     },
     /// Top of hole, right, along the hole.
-    Borehole {
+    InHole {
         /// The stress.
         stress: Stress<Borehole>,
     },
@@ -57,22 +57,22 @@ impl Stress<Geographic> {
     /// The invariants: I₁, I₂, I₃ of the tensor, J₂, J₃ of its deviator, mean and octahedral
     /// stresses, von Mises stress, largest shear stress, Lode angle.
     pub fn invariants(&self) -> Invariants {
-        Invariants::of(InvariantsInputs::Geographic { stress: *self })
+        Invariants::of(InvariantsInputs::NorthEastDown { stress: *self })
     }
 }
 
 impl Stress<Borehole> {
     /// The invariants; the same as of the stress in north, east, down.
     pub fn invariants(&self) -> Invariants {
-        Invariants::of(InvariantsInputs::Borehole { stress: *self })
+        Invariants::of(InvariantsInputs::InHole { stress: *self })
     }
 }
 
 impl InvariantsInputs {
     fn tensor(&self) -> Tensor {
         match self {
-            InvariantsInputs::Geographic { stress } => stress.tensor(),
-            InvariantsInputs::Borehole { stress } => stress.tensor(),
+            InvariantsInputs::NorthEastDown { stress } => stress.tensor(),
+            InvariantsInputs::InHole { stress } => stress.tensor(),
         }
     }
 }
@@ -271,10 +271,10 @@ impl Explain for Invariants {
     fn explain(&self) -> Explanation {
         let o = &self.outcome;
         let (item, title) = match &self.inputs {
-            InvariantsInputs::Geographic { stress } => {
+            InvariantsInputs::NorthEastDown { stress } => {
                 (stress.item("S", "stress in north, east, down"), stress.of_name())
             }
-            InvariantsInputs::Borehole { stress } => (
+            InvariantsInputs::InHole { stress } => (
                 stress.item("S'", "stress in borehole axes"),
                 stress
                     .name()
@@ -333,12 +333,12 @@ impl Explain for Invariants {
 
     fn upstream(&self) -> Vec<Card> {
         match &self.inputs {
-            InvariantsInputs::Geographic { stress } => {
+            InvariantsInputs::NorthEastDown { stress } => {
                 let mut cards = stress.upstream();
                 cards.extend(stress.stated());
                 cards
             }
-            InvariantsInputs::Borehole { stress } => {
+            InvariantsInputs::InHole { stress } => {
                 let mut cards = stress.upstream();
                 if stress.attitude().is_some() {
                     cards.push(stress.card());
