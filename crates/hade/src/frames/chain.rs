@@ -90,7 +90,7 @@ impl<From: Frame, To: Frame> Chain<From, To> {
     }
 
     /// Rows: the axes it leads to, in north, east, down.
-    pub(crate) fn to_rows(&self) -> &M3 {
+    pub(crate) fn rows_of_to(&self) -> &M3 {
         &self.route.to_rows
     }
 
@@ -296,7 +296,6 @@ impl Explain for Route {
                 notes
             }),
             topics: vec!["rotation".to_owned()],
-            ..Explanation::default()
         }
     }
 

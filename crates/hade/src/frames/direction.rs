@@ -102,7 +102,7 @@ impl<From: Frame, To: Frame> CarriedBy<From, To> for Direction<From> {
     fn carried_by(&self, chain: &Chain<From, To>) -> Direction<To> {
         let geographic = self.carried.geographic;
         let inputs = DirectionInputs { axes: chain.to(), ..self.carried.inputs };
-        let components = apply(chain.to_rows(), geographic);
+        let components = apply(chain.rows_of_to(), geographic);
         Direction { carried: CarriedLine { inputs, geographic, components }, frame: PhantomData }
     }
 }

@@ -18,7 +18,7 @@ impl<From: Frame, To: Frame> CarriedBy<From, To> for Stress<From> {
         let behind = self.behind();
         match chain.to() {
             Axes::NorthEastDown => Stress::of(behind.tensor, self.made, None),
-            axes => Stress::of(into(&behind, axes, chain.to_rows()), self.made, Some((behind.tensor, axes))),
+            axes => Stress::of(into(&behind, axes, chain.rows_of_to()), self.made, Some((behind.tensor, axes))),
         }
         .with_label(self.label)
     }

@@ -81,7 +81,7 @@ fn turned<From: Frame, To: Frame>(
     geographic: V3,
     chain: &Chain<From, To>,
 ) -> TractionVector<To> {
-    let components = apply(chain.to_rows(), geographic).map(Pressure::from_si);
+    let components = apply(chain.rows_of_to(), geographic).map(Pressure::from_si);
     let inputs = CarriedTractionInputs { traction, axes: chain.to() };
     TractionVector { carried: CarriedTraction { inputs, geographic, components }, frame: PhantomData }
 }
