@@ -1,37 +1,17 @@
 //! A direction in any axes: a line of trend and plunge carried there.
 
-use std::marker::PhantomData;
-
 use serde::{Deserialize, Serialize};
 
 use super::azimuth::three_figures;
 use super::vector::{V3, apply, dot, wrap};
-use super::{Axes, Borehole, CarriedBy, Chain, Frame, Geographic, Line};
+use super::{Axes, Borehole, CarriedBy, Chain, Frame, Geographic, Line, in_frame};
 use crate::card::{Card, Check, Explain, Explanation, Formula, Item, Method, Reference, Step};
-use crate::error::{Error, Result};
+use crate::error::Result;
 use crate::units::{Angle, Quantity, fixed};
 
-/// A line as a unit vector in the axes of one frame, pointing to the end that was stated.
-pub struct Direction<F: Frame = Geographic> {
-    carried: CarriedLine,
-    frame: PhantomData<fn() -> F>,
-}
-
-impl<F: Frame> Clone for Direction<F> {
-    fn clone(&self) -> Self {
-        *self
-    }
-}
-impl<F: Frame> Copy for Direction<F> {}
-impl<F: Frame> PartialEq for Direction<F> {
-    fn eq(&self, other: &Self) -> bool {
-        self.carried == other.carried
-    }
-}
-impl<F: Frame> std::fmt::Debug for Direction<F> {
-    fn fmt(&self, f: &mut std::fmt::Formatter<'_>) -> std::fmt::Result {
-        write!(f, "Direction {:?} in {}", self.carried.components, self.carried.inputs.axes.words())
-    }
+in_frame! {
+    /// A line as a unit vector in the axes of one frame, pointing to the end that was stated.
+    Direction, CarriedLine, DirectionInputs, [f64; 3], "Reading a direction"
 }
 
 /// A line in some axes, whatever their kind.
@@ -57,36 +37,31 @@ impl Line {
     /// When the plunge is outside ±90° or the trend has no true north.
     pub fn direction(self) -> Result<Direction<Geographic>> {
         let carried = CarriedLine::compute(DirectionInputs { line: self, axes: Axes::NorthEastDown })?;
-        Ok(Direction { carried, frame: PhantomData })
+        Ok(Direction::around(carried))
     }
 }
 
 impl<F: Frame> Direction<F> {
     /// Its three direction cosines in these axes.
     pub fn components(&self) -> [f64; 3] {
-        self.carried.components
+        self.inner.components
     }
 
     /// The line, in trend and plunge.
     pub fn line(&self) -> Line {
-        self.carried.inputs.line
-    }
-
-    /// The axes it is in.
-    pub fn axes(&self) -> Axes {
-        self.carried.inputs.axes
+        self.inner.inputs.line
     }
 }
 
 impl Direction<Borehole> {
     /// The tool face it points to, 0–360°; `None` along the hole.
     pub fn tool_face(&self) -> Option<Angle> {
-        tool_face(self.carried.components)
+        tool_face(self.inner.components)
     }
 
     /// The angle between the line and the hole's axis, 0–90°.
     pub fn from_axis(&self) -> Angle {
-        Angle::from_si(from_axis(self.carried.components))
+        Angle::from_si(from_axis(self.inner.components))
     }
 }
 
@@ -100,10 +75,10 @@ fn from_axis([x, y, z]: V3) -> f64 {
 impl<From: Frame, To: Frame> CarriedBy<From, To> for Direction<From> {
     type Carried = Direction<To>;
     fn carried_by(&self, chain: &Chain<From, To>) -> Direction<To> {
-        let geographic = self.carried.geographic;
-        let inputs = DirectionInputs { axes: chain.to(), ..self.carried.inputs };
+        let geographic = self.inner.geographic;
+        let inputs = DirectionInputs { axes: chain.to(), ..self.inner.inputs };
         let components = apply(chain.rows_of_to(), geographic);
-        Direction { carried: CarriedLine { inputs, geographic, components }, frame: PhantomData }
+        Direction::around(CarriedLine { inputs, geographic, components })
     }
 }
 
@@ -237,38 +212,6 @@ pub(crate) fn chain_card(axes: Axes) -> Vec<Card> {
         cards.extend(super::Route::to(axes).map(|route| route.card()));
     }
     cards
-}
-
-impl<F: Frame> Explain for Direction<F> {
-    const KIND: &'static str = CarriedLine::KIND;
-    type Inputs = DirectionInputs;
-    type Outcome = [f64; 3];
-
-    fn compute(inputs: DirectionInputs) -> Result<Self> {
-        if inputs.axes.kind() != F::NAME {
-            return Err(Error::FrameMismatch {
-                doing: "Reading a direction".to_owned(),
-                left: F::NAME.to_owned(),
-                right: inputs.axes.words(),
-            });
-        }
-        Ok(Direction { carried: CarriedLine::compute(inputs)?, frame: PhantomData })
-    }
-    fn inputs(&self) -> DirectionInputs {
-        self.carried.inputs()
-    }
-    fn outcome(&self) -> [f64; 3] {
-        self.carried.outcome()
-    }
-    fn check(inputs: &DirectionInputs, outcome: &[f64; 3]) -> Vec<Check> {
-        CarriedLine::check(inputs, outcome)
-    }
-    fn explain(&self) -> Explanation {
-        self.carried.explain()
-    }
-    fn upstream(&self) -> Vec<Card> {
-        self.carried.upstream()
-    }
 }
 
 #[cfg(test)]

@@ -34,6 +34,7 @@ mod direction;
 mod frame;
 mod geometry;
 mod hemisphere;
+mod in_frame;
 mod line;
 mod local;
 mod magnetic;
@@ -67,6 +68,7 @@ pub use geometry::{
 };
 pub(crate) use geometry::{by_singular_values, nearest_orthonormal};
 pub use hemisphere::{Drawn, HemisphereInputs, LowerHemisphere};
+pub(crate) use in_frame::in_frame;
 pub use line::Line;
 pub use local::LocalAxes;
 pub use magnetic::{Declination, DeclinationInputs, DeclinationOutcome, MagneticField};

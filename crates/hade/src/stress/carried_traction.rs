@@ -1,38 +1,18 @@
 //! The traction on a plane carried along a chain of turns.
 
-use std::marker::PhantomData;
-
 use serde::{Deserialize, Serialize};
 
 use super::{Traction, TractionInputs};
 use crate::card::{Card, Check, Explain, Explanation, Formula, Item, Method, Reference, Step};
-use crate::error::{Error, Result};
+use crate::error::Result;
 use crate::frames::vector::{V3, apply, dot};
-use crate::frames::{Axes, CarriedBy, Chain, Frame, Geographic, chain_card};
+use crate::frames::{Axes, CarriedBy, Chain, Frame, Geographic, chain_card, in_frame};
 use crate::units::{Pressure, Quantity, fixed};
 
-/// The traction on a plane as a vector in the axes of one frame. In a fault's own axes it is the
-/// shear along strike, the shear down dip and the normal stress.
-pub struct TractionVector<F: Frame = Geographic> {
-    carried: CarriedTraction,
-    frame: PhantomData<fn() -> F>,
-}
-
-impl<F: Frame> Clone for TractionVector<F> {
-    fn clone(&self) -> Self {
-        *self
-    }
-}
-impl<F: Frame> Copy for TractionVector<F> {}
-impl<F: Frame> PartialEq for TractionVector<F> {
-    fn eq(&self, other: &Self) -> bool {
-        self.carried == other.carried
-    }
-}
-impl<F: Frame> std::fmt::Debug for TractionVector<F> {
-    fn fmt(&self, f: &mut std::fmt::Formatter<'_>) -> std::fmt::Result {
-        write!(f, "Traction {:?} in {}", self.components(), self.carried.inputs.axes.words())
-    }
+in_frame! {
+    /// The traction on a plane as a vector in the axes of one frame. In a fault's own axes it is the
+    /// shear along strike, the shear down dip and the normal stress.
+    TractionVector, CarriedTraction, CarriedTractionInputs, [Pressure; 3], "Reading a traction"
 }
 
 /// A traction in some axes, whatever their kind.
@@ -54,11 +34,7 @@ pub struct CarriedTractionInputs {
 impl<F: Frame> TractionVector<F> {
     /// Its three components.
     pub fn components(&self) -> [Pressure; 3] {
-        self.carried.components
-    }
-    /// The axes it is in.
-    pub fn axes(&self) -> Axes {
-        self.carried.inputs.axes
+        self.inner.components
     }
 }
 
@@ -72,7 +48,7 @@ impl<To: Frame> CarriedBy<Geographic, To> for Traction {
 impl<From: Frame, To: Frame> CarriedBy<From, To> for TractionVector<From> {
     type Carried = TractionVector<To>;
     fn carried_by(&self, chain: &Chain<From, To>) -> TractionVector<To> {
-        turned(self.carried.inputs.traction, self.carried.geographic, chain)
+        turned(self.inner.inputs.traction, self.inner.geographic, chain)
     }
 }
 
@@ -83,7 +59,7 @@ fn turned<From: Frame, To: Frame>(
 ) -> TractionVector<To> {
     let components = apply(chain.rows_of_to(), geographic).map(Pressure::from_si);
     let inputs = CarriedTractionInputs { traction, axes: chain.to() };
-    TractionVector { carried: CarriedTraction { inputs, geographic, components }, frame: PhantomData }
+    TractionVector::around(CarriedTraction { inputs, geographic, components })
 }
 
 impl Explain for CarriedTraction {
@@ -174,38 +150,6 @@ impl Explain for CarriedTraction {
         cards.extend(traction.plane.strike.upstream());
         cards.extend(chain_card(axes));
         cards
-    }
-}
-
-impl<F: Frame> Explain for TractionVector<F> {
-    const KIND: &'static str = CarriedTraction::KIND;
-    type Inputs = CarriedTractionInputs;
-    type Outcome = [Pressure; 3];
-
-    fn compute(inputs: CarriedTractionInputs) -> Result<Self> {
-        if inputs.axes.kind() != F::NAME {
-            return Err(Error::FrameMismatch {
-                doing: "Reading a traction".to_owned(),
-                left: F::NAME.to_owned(),
-                right: inputs.axes.words(),
-            });
-        }
-        Ok(TractionVector { carried: CarriedTraction::compute(inputs)?, frame: PhantomData })
-    }
-    fn inputs(&self) -> CarriedTractionInputs {
-        self.carried.inputs()
-    }
-    fn outcome(&self) -> [Pressure; 3] {
-        self.carried.outcome()
-    }
-    fn check(inputs: &CarriedTractionInputs, outcome: &[Pressure; 3]) -> Vec<Check> {
-        CarriedTraction::check(inputs, outcome)
-    }
-    fn explain(&self) -> Explanation {
-        self.carried.explain()
-    }
-    fn upstream(&self) -> Vec<Card> {
-        self.carried.upstream()
     }
 }
 
