@@ -44,7 +44,7 @@ fn tests_in_a_hole_a_strain_cell_and_a_model_become_one_stress() {
     }
     // Each measurement has an item of its own, in the frame it came from.
     card("Stress tensor of the hydraulic tests from the vertical and horizontal stresses");
-    card("Stress tensor of the strain cell from six components in the axes of KC-2 at 41 m");
+    card("Stress tensor of the strain cell from six components in the axes of KC-2");
     let model = card("Stress tensor of the back-analysis from six components in the axes of the mine grid");
     assert!(model.explanation.notes[0].contains("Signs were turned"));
 

@@ -31,6 +31,8 @@ pub(crate) fn small(value: f64) -> String {
 pub(crate) fn small_with_unit(value: f64, unit: &str) -> String {
     match unit {
         "" => small(value),
+        // After a raised exponent the ring would read as part of it.
+        "°" if small(value).contains('×') => format!("{}\u{a0}°", small(value)),
         "°" => format!("{}°", small(value)),
         _ => format!("{}\u{a0}{unit}", small(value)),
     }

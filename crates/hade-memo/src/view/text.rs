@@ -152,7 +152,8 @@ fn symbol_at(chars: &[char], at: usize) -> Option<(String, String, usize)> {
         return None;
     }
     next += 1;
-    let sub: String = chars.get(next..)?.iter().take_while(|c| c.is_alphanumeric()).take(11).collect();
+    let raised = |c: char| matches!(c, '²' | '³' | '¹' | '\u{2070}'..='\u{207f}');
+    let sub: String = chars.get(next..)?.iter().take_while(|c| c.is_alphanumeric() && !raised(**c)).take(11).collect();
     next += sub.chars().count();
     if sub.is_empty() || sub.chars().count() > 10 {
         return None;

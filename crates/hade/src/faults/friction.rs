@@ -169,6 +169,9 @@ impl Explain for FrictionLimit {
                 formulas: vec![Formula::new(
                     "(S_1 - P_upright(p)) / (S_3 - P_upright(p)) <= (sqrt(mu^2 + 1) + mu)^2",
                     "(S_1 − P_p) / (S_3 − P_p) ≤ (√(μ² + 1) + μ)²",
+                ), Formula::new(
+                    "S_(1 upright(max)) = P_upright(p) + r_upright(max) (S_3 - P_upright(p))",
+                    "S_1max = P_p + r_max (S_3 − P_p)",
                 )],
                 references: vec![Reference::new("Zoback, M.D. (2007) Reservoir Geomechanics, Cambridge University Press, eq. 4.45, p. 133")],
                 assumptions: vec!["Faults without cohesion exist in every orientation.".to_owned()],
@@ -180,6 +183,10 @@ impl Explain for FrictionLimit {
                     fixed(s1.in_mpa(), 3), as_typed(pore.in_mpa()), fixed(s3.in_mpa(), 3), as_typed(pore.in_mpa()), fixed(self.outcome.ratio, 4)
                 )),
                 Step::worked(format!("r_max = (√({m}² + 1) + {m})² = {}", fixed(self.outcome.allowed, 4), m = as_typed(friction))),
+                Step::worked(format!(
+                    "S_1max = {pore} + {} · ({} − {pore}) = {} MPa",
+                    fixed(self.outcome.allowed, 4), fixed(s3.in_mpa(), 3), fixed(self.outcome.largest_s1.in_mpa(), 3), pore = as_typed(pore.in_mpa())
+                )),
             ],
             notes,
             topics: vec!["stress".to_owned(), "friction".to_owned()],

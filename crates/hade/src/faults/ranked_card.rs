@@ -7,8 +7,8 @@ use super::slip::FaultState;
 use super::slip_card::{method, steps as worked};
 use crate::card::{Column, Explain, Explanation, Figure, Item, Projection, Role, Step, Table};
 use crate::frames::net::Net;
-use crate::frames::vector::{V3, dot};
-use crate::frames::{bearing_item, three_figures};
+use crate::frames::vector::{V3, dot, wrap};
+use crate::frames::{Azimuth, North, bearing_item, three_figures};
 use crate::units::{Pressure, Quantity, as_typed, fixed, with_typed_unit};
 
 /// A card prints no more rows than this.
@@ -93,6 +93,7 @@ fn results(rows: &[RankedFault]) -> Vec<Item> {
 
 fn notes(ranked: &RankedFaults, inputs: &RankedInputs, rows: &[RankedFault]) -> Vec<String> {
     let mut notes: Vec<String> = inputs.strength.doubt().into_iter().collect();
+    notes.extend(corrected(rows));
     let (slipping, open, all) = (ranked.slipping(), ranked.open(), ranked.planes());
     let pore = with_typed_unit(inputs.pore);
     if slipping + open > 0 {
@@ -129,6 +130,34 @@ fn notes(ranked: &RankedFaults, inputs: &RankedInputs, rows: &[RankedFault]) -> 
     notes
 }
 
+/// The true strike: to a hundredth of a degree, where a correction was added.
+fn strike_figures(strike: Azimuth) -> String {
+    let angle = strike.true_north().unwrap_or_default();
+    if strike.correction().is_some() {
+        return format!("{:0>6}", fixed(wrap(angle.si()).to_degrees(), 2));
+    }
+    three_figures(angle)
+}
+
+/// How the strikes came to true north, where they were stated from another.
+fn corrected(rows: &[RankedFault]) -> Option<String> {
+    let first = rows.iter().map(|row| row.fault.plane.strike).find(|strike| strike.correction().is_some())?;
+    let correction = first.correction()?;
+    let same = rows.iter().all(|row| row.fault.plane.strike.correction() == Some(correction));
+    let (north, what) = match first.north() {
+        North::Magnetic => ("magnetic north", "declination"),
+        _ => ("grid north", "convergence"),
+    };
+    let by = if first.site().is_some() { "of the site" } else { "as the file or the notebook states it" };
+    let which = if same { "The strikes were" } else { "Some of the strikes were" };
+    Some(format!(
+        "{which} stated from {north}: the true strike is the stated one + ({}°), the {what} {by}. {} was stated as {}°.",
+        as_typed(correction.in_deg()),
+        rows.first()?.fault.name,
+        as_typed(rows.first()?.fault.plane.strike.measured().in_deg())
+    ))
+}
+
 /// At most eight names.
 fn some_of(names: &[&str]) -> String {
     let shown = names.iter().take(8).copied().collect::<Vec<_>>().join(", ");
@@ -152,11 +181,7 @@ fn steps(ranked: &RankedFaults, inputs: &RankedInputs, rows: &[RankedFault]) -> 
         let (plane, slip) = (row.fault.plane, row.slip);
         vec![
             row.fault.name.to_string(),
-            format!(
-                "{}/{}",
-                three_figures(plane.strike.true_north().unwrap_or_default()),
-                fixed(plane.dip.in_deg(), 1)
-            ),
+            format!("{}/{}", strike_figures(plane.strike), fixed(plane.dip.in_deg(), 1)),
             mpa(slip.effective_normal()),
             mpa(slip.shear()),
             or_dash(slip.slip_tendency().map(|t| fixed(t, 3))),
@@ -175,7 +200,7 @@ fn steps(ranked: &RankedFaults, inputs: &RankedInputs, rows: &[RankedFault]) -> 
             ),
             columns: vec![
                 Column::text("plane"),
-                Column::text("strike/dip"),
+                Column::text("strike/dip (°)"),
                 Column::number("σ'_n", "MPa"),
                 Column::number("τ", "MPa"),
                 Column::number("T_s", ""),

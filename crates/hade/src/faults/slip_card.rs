@@ -23,6 +23,11 @@ pub(super) fn method(words: &str) -> Method {
             ),
         ],
         symbols: vec![
+            (
+                "rake".to_owned(),
+                "direction in which the hanging wall slips, in the plane from the strike azimuth, up dip positive: 0° left-lateral, ±180° right-lateral, −90° normal, 90° reverse".to_owned(),
+            ),
+            ("along strike, down dip".to_owned(), "the traction's parts along (cos s, sin s, 0) and (−sin s cos d, cos s cos d, sin d)".to_owned()),
             ("T_s".to_owned(), "slip tendency".to_owned()),
             ("T_d".to_owned(), "dilation tendency".to_owned()),
             ("τ_C".to_owned(), "Coulomb stress, the shear stress beyond the strength".to_owned()),

@@ -299,7 +299,7 @@ impl Explain for Azimuth {
             North::Grid => ("γ", "grid convergence, east positive"),
             North::Magnetic => ("D", "magnetic declination, east positive"),
         };
-        let mut inputs = vec![self.measured_item("A_m", "azimuth as measured")];
+        let mut inputs = vec![self.measured_item("A_0", "azimuth as stated")];
         let mut sum = format!("A = {}°", as_typed(self.measured.in_deg()));
         if let (Some(correction), true) = (self.correction, self.north != North::True) {
             let shown = few_decimals(correction, 3);
@@ -311,11 +311,11 @@ impl Explain for Azimuth {
             sum.push_str(&format!(" + ({}°)", as_typed(self.turned.in_deg())));
         }
         let (math, text) = match (self.north, self.turned.si() != 0.0) {
-            (North::True, _) => ("A = A_upright(m) + t", "A = A_m + t"),
-            (North::Grid, false) => ("A = A_upright(m) + gamma", "A = A_m + γ"),
-            (North::Grid, true) => ("A = A_upright(m) + gamma + t", "A = A_m + γ + t"),
-            (North::Magnetic, false) => ("A = A_upright(m) + D", "A = A_m + D"),
-            (North::Magnetic, true) => ("A = A_upright(m) + D + t", "A = A_m + D + t"),
+            (North::True, _) => ("A = A_0 + t", "A = A_0 + t"),
+            (North::Grid, false) => ("A = A_0 + gamma", "A = A_0 + γ"),
+            (North::Grid, true) => ("A = A_0 + gamma + t", "A = A_0 + γ + t"),
+            (North::Magnetic, false) => ("A = A_0 + D", "A = A_0 + D"),
+            (North::Magnetic, true) => ("A = A_0 + D + t", "A = A_0 + D + t"),
         };
         let across = if is_quarter(self.turned) { ", and the direction across it" } else { "" };
         let outcome = self.outcome();
@@ -355,7 +355,13 @@ impl Azimuth {
                 fixed(sd.in_deg(), 2)
             )
         });
-        format!("The correction is that of {}{}.", site.words(), uncertain.unwrap_or_default())
+        // A map grid does not change with the date.
+        let words = site.words();
+        let place = match self.north {
+            North::Magnetic => words.as_str(),
+            _ => words.split(" on ").next().unwrap_or_default(),
+        };
+        format!("The correction is that of {place}{}.", uncertain.unwrap_or_default())
     }
 }
 

@@ -369,14 +369,14 @@ fn whole_turn(q: &M3, from: Axes) -> String {
     if from == Axes::NorthEastDown {
         let (axis, angle) = in_words(q);
         return format!(
-            "Altogether one turn by {angle} about {axis}; 1 + 2 cos of the angle is the sum of the diagonal of Q."
+            "Altogether one turn by {angle} about {axis}: 1 + 2 cos of the angle is the sum of the diagonal of Q, and the line lies along (Q_23 − Q_32, Q_31 − Q_13, Q_12 − Q_21)."
         );
     }
     let (axis, angle) = super::turn::axis_and_angle(q);
     let cosines: V3 = axis;
     let [x, y, z] = cosines.map(|c| crate::units::fixed(c, 4));
     format!(
-        "Altogether one turn by {} about the direction ({x}, {y}, {z}) in the old axes; 1 + 2 cos of the angle is the sum of the diagonal of Q.",
+        "Altogether one turn by {} about the direction ({x}, {y}, {z}) in the old axes: 1 + 2 cos of the angle is the sum of the diagonal of Q, and the direction lies along (Q_23 − Q_32, Q_31 − Q_13, Q_12 − Q_21).",
         Angle::from_si(angle)
     )
 }

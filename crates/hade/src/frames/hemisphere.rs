@@ -6,7 +6,7 @@ use super::net::Net;
 use super::vector::wrap;
 use super::{Line, Name, Plane, three_figures};
 use crate::card::{
-    Card, Check, Column, Explain, Explanation, Formula, Mark, Method, Projection, Reference, Role, Step, Table,
+    Card, Check, Column, Explain, Explanation, Formula, Item, Mark, Method, Projection, Reference, Role, Step, Table,
 };
 use crate::error::Result;
 use crate::units::{Angle, Quantity, fixed};
@@ -71,6 +71,21 @@ impl Drawn {
         }
     }
 
+    /// What fixes it, as inputs that the sheet must know.
+    fn items(self, n: usize) -> [Item; 2] {
+        let name = self.name();
+        match self {
+            Drawn::Line { line, .. } => [
+                line.trend.item(&format!("T_{n}"), &format!("trend of {name}")),
+                Item::typed(&format!("P_{n}"), format!("plunge of {name}"), line.plunge),
+            ],
+            Drawn::Plane { plane, .. } | Drawn::Pole { plane, .. } => [
+                plane.strike.item(&format!("s_{n}"), &format!("strike of {name}")),
+                Item::typed(&format!("d_{n}"), format!("dip of {name}"), plane.dip),
+            ],
+        }
+    }
+
     fn words(self) -> String {
         match self {
             Drawn::Line { line, .. } => format!("line, {}", line.words()),
@@ -87,7 +102,7 @@ impl LowerHemisphere {
         LowerHemisphere { inputs, places: Vec::new() }
     }
 
-    /// With a line, as a dot.
+    /// With a line. Lines whose names begin with the same word ("cell 1", "cell 2") bear the same mark.
     ///
     /// # Errors
     /// When the plunge is outside ±90° or the trend has no true north.
@@ -121,6 +136,15 @@ impl LowerHemisphere {
     pub fn places(&self) -> &[[f64; 2]] {
         &self.places
     }
+}
+
+/// The number of a name's first word among those seen.
+fn group(seen: &mut Vec<String>, name: Name) -> usize {
+    let first = name.text().split_whitespace().next().unwrap_or_default();
+    seen.iter().position(|word| word == first).unwrap_or_else(|| {
+        seen.push(first.to_owned());
+        seen.len() - 1
+    })
 }
 
 impl Explain for LowerHemisphere {
@@ -169,13 +193,23 @@ impl Explain for LowerHemisphere {
     fn explain(&self) -> Explanation {
         let HemisphereInputs { title, projection, drawn } = &self.inputs;
         let mut net = Net::new(*projection);
+        let looks = [
+            (Role::First, Mark::Dot),
+            (Role::Second, Mark::Square),
+            (Role::Third, Mark::Triangle),
+            (Role::Fourth, Mark::Diamond),
+        ];
+        let mut groups = Vec::new();
         let mut rows = Vec::new();
         let mut alt = Vec::new();
         for (thing, place) in drawn.iter().zip(&self.places) {
             let name = thing.name();
             net = match thing {
                 Drawn::Line { line, .. } => match line.vector() {
-                    Ok(v) => net.line(name.text(), Role::First, Mark::Dot, v),
+                    Ok(v) => {
+                        let (role, mark) = looks[group(&mut groups, name) % looks.len()];
+                        net.line(name.text(), role, mark, v)
+                    }
                     Err(_) => net,
                 },
                 Drawn::Plane { plane, .. } => match plane.axes() {
@@ -204,12 +238,27 @@ impl Explain for LowerHemisphere {
             Projection::EqualArea => ("r = sqrt(2) sin((90 degree - P) / 2)", "r = √2 sin((90° − P)/2)"),
             _ => ("r = tan((90 degree - P) / 2)", "r = tan((90° − P)/2)"),
         };
+        let lines = drawn.iter().filter(|d| matches!(d, Drawn::Line { .. })).count();
+        let some = |count: usize, one: &str| match count {
+            1 => format!("1 {one}"),
+            n => format!("{n} {one}s"),
+        };
+        let what = match (lines, drawn.len() - lines) {
+            (n, 0) => some(n, "line"),
+            (0, n) => some(n, "plane"),
+            (n, m) => format!("{}, {}", some(n, "line"), some(m, "plane")),
+        };
         Explanation {
             title: title.clone(),
-            headline: format!("{} lines and planes, {} projection", drawn.len(), projection.words()),
+            headline: format!("{what}; {} projection", projection.words()),
+            inputs: drawn.iter().zip(1..).flat_map(|(thing, n)| thing.items(n)).collect(),
             method: Method {
                 words: "Each line is drawn where its lower end lies, a plane as the circle of its lines; r counts from the centre in radii of the circle, towards the trend.".to_owned(),
-                formulas: vec![Formula::new(math, text)],
+                formulas: vec![
+                    Formula::new(math, text),
+                    Formula::new("upright(\"east\") = r sin T", "east = r sin T"),
+                    Formula::new("upright(\"north\") = r cos T", "north = r cos T"),
+                ],
                 references: vec![Reference::new(
                     "Priest, S.D. (1985) Hemispherical Projection Methods in Rock Mechanics, Allen & Unwin (cited from memory)",
                 )],

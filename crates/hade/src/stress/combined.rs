@@ -164,7 +164,7 @@ pub(super) fn explain(s: &Stress<Geographic>, parts: Option<Parts>) -> Explanati
     let mut inputs = Vec::new();
     let mut steps = Vec::new();
     let mut terms = Vec::new();
-    for ((k, part), n) in parts.0.iter().zip(1..) {
+    for ((k, part), n) in parts.0.iter().zip(letters()) {
         let of = part.of_name();
         inputs.push(part.item(&format!("S_{n}"), &format!("part {n}: stress{of} in north, east, down")));
         let what = if mean { "weight" } else { "factor" };
@@ -203,10 +203,17 @@ pub(super) fn explain(s: &Stress<Geographic>, parts: Option<Parts>) -> Explanati
     }
 }
 
+/// The names of parts: a, b, …, z, a2, b2, …, so that none is taken for a principal stress.
+fn letters() -> impl Iterator<Item = String> {
+    (1_u32..).flat_map(|round| {
+        ('a'..='z').map(move |letter| if round == 1 { letter.to_string() } else { format!("{letter}{round}") })
+    })
+}
+
 /// How far the parts of a mean lie from it.
 fn scatter(s: &Stress<Geographic>, parts: Parts) -> String {
-    let (mut widest, mut which) = (0.0_f64, 1);
-    for ((_, part), n) in parts.0.iter().zip(1..) {
+    let (mut widest, mut which) = (0.0_f64, String::new());
+    for ((_, part), n) in parts.0.iter().zip(letters()) {
         let gap = part.tensor.add(s.tensor.scale(-1.0)).largest();
         if gap > widest {
             (widest, which) = (gap, n);
@@ -244,7 +251,7 @@ mod tests {
         assert_eq!(mean.component(Axis::X, Axis::X), 41.mpa());
         let card = mean.card();
         assert!(card.passed());
-        assert!(card.explanation.notes[0].contains("3.00 MPa, in part 2"), "{:?}", card.explanation.notes);
+        assert!(card.explanation.notes[0].contains("3.00 MPa, in part b"), "{:?}", card.explanation.notes);
         let titles: Vec<String> = mean.upstream().iter().map(|c| c.title().to_owned()).collect();
         assert_eq!(
             titles,

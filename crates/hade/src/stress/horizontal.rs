@@ -142,7 +142,7 @@ impl Explain for HorizontalStresses {
             ),
             Check::holds("S_hmin above S_Hmax", small - big, 0.0, "MPa"),
             Check::compare(
-                "S_v from the principal stresses, Σ S_k sin² p_k",
+                "S_v from the principal stresses, Σ S_k sin² P_k",
                 &[outcome.sv.in_mpa()],
                 &[sv],
                 largest * 1e-11,

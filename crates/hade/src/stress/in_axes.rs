@@ -140,8 +140,7 @@ pub(super) fn explain(
     let given = components.tensor(tension_positive).unwrap_or(Tensor([0.0; 6]));
     let mut notes = Vec::new();
     let mut formulas = vec![Formula::new("S = Q^upright(T) S' Q", "S = Qᵀ S' Q")];
-    let mut words =
-        "The tensor was stated in the axes of an instrument and is turned back into north, east, down.".to_owned();
+    let mut words = "The tensor was stated in other axes and is turned back into north, east, down.".to_owned();
     if tension_positive {
         notes.push("Signs were turned: tension positive as given, compression positive from here on.".to_owned());
         formulas.insert(0, Formula::new("S' = -S_upright(t)", "S' = −S_t"));

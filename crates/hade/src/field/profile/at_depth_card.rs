@@ -71,7 +71,7 @@ pub(super) fn explain(at: &PressureAtDepth) -> Explanation {
         figures: vec![figure(at)],
         notes: notes(at),
         topics: match at.mud_weight {
-            Some(_) => vec!["depth".to_owned(), "mud-weight".to_owned()],
+            Some(_) => vec!["depth".to_owned()],
             None => vec!["depth".to_owned()],
         },
     }

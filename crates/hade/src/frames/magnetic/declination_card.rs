@@ -2,7 +2,7 @@
 //! turn from the sphere to the ellipsoid, and how good it is.
 
 use super::declination::{BLACKOUT, CAUTION, Declination, MagneticField};
-use super::harmonics::{ECCENTRICITY_SQUARED, REFERENCE_RADIUS, SEMI_MAJOR, by_degree, geocentric, total};
+use super::harmonics::{ECCENTRICITY_SQUARED, REFERENCE_RADIUS, SEMI_MAJOR, by_degree, field, geocentric, total};
 use super::models::FieldModel;
 use crate::card::{Column, Explanation, Formula, Item, Method, Reference, Step, Table};
 use crate::frames::site::{few_decimals, place_items, place_words};
@@ -113,7 +113,7 @@ fn method(d: &Declination, model: Option<FieldModel>) -> Method {
     }
     if model == FieldModel::Igrf14 {
         references.push(Reference::new("Beggan, C.D. (2022) Evidence-based uncertainty estimates for the International Geomagnetic Reference Field. Earth, Planets and Space 74, doi 10.1186/s40623-022-01572-y: standard deviations of ground stations 144 nT north and 136 nT east, 1980–2021"));
-        assumptions.push("For IGRF-14 the standard deviation takes 144 nT across the needle, as ground stations showed for 1980 to 2021 on quiet days (8251 = 144 in radians turned to degrees), with the 0.26° that WMM2025 adds for disturbance.".to_owned());
+        assumptions.push("For IGRF-14 the standard deviation takes 144 nT across the needle, the larger of the 144 nT north and 136 nT east that ground stations showed for 1980 to 2021 on quiet days (8251 = 144 in radians turned to degrees), with the 0.26° that the error model of WMM2025 adds for disturbance.".to_owned());
     }
     Method {
         words: format!(
@@ -134,12 +134,14 @@ fn method(d: &Declination, model: Option<FieldModel>) -> Method {
             Formula::new("H = sqrt(X^2 + Y^2)", "H = √(X² + Y²)"),
             Formula::new("I = upright(\"atan2\")(Z, H)", "I = atan2(Z, H)"),
             Formula::new("F = sqrt(H^2 + Z^2)", "F = √(H² + Z²)"),
+            Formula::new("D' = (X dot(Y) - Y dot(X)) / H^2", "D' = (X Ẏ − Y Ẋ) / H²"),
             Formula::new(sd, text),
         ],
         symbols: vec![
             ("a".to_owned(), "reference radius of the model, 6371.2 km".to_owned()),
             ("r, φ'".to_owned(), "distance from the Earth's centre and geocentric latitude".to_owned()),
             ("g, h".to_owned(), "Gauss coefficients, nT".to_owned()),
+            ("Ẋ, Ẏ".to_owned(), "the same sums with the yearly change of the coefficients, nT per year".to_owned()),
             ("P".to_owned(), "Schmidt semi-normalised associated Legendre functions".to_owned()),
             ("X', Y', Z'".to_owned(), "north, east, down along the geocentric axes".to_owned()),
         ],
@@ -155,7 +157,7 @@ fn steps(d: &Declination, model: Option<FieldModel>) -> Option<Vec<Step>> {
     let year = date.decimal_year();
     let c = model.coefficients(year).ok()?;
     let mut steps = vec![Step::worked(format!(
-        "t = {} + ({} − 1) / {} = {}; the last epoch of {} is {}, {} years before",
+        "t = {} + ({} − 1) / {} = {}; the last epoch of {} before that is {}, by {} years",
         date.year(),
         date.day_of_year(),
         date.days_in_year(),
@@ -215,6 +217,12 @@ fn steps(d: &Declination, model: Option<FieldModel>) -> Option<Vec<Step>> {
         },
     });
     steps.extend(elements(&b, sum, (place.latitude - latitude).to_degrees(), model));
+    let [x_year, y_year, _] = field(&c.per_year, latitude, longitude, height).map(|v| fixed(v, 2));
+    let [x, y, h] = [b.north, b.east, b.horizontal].map(|v| fixed(v.in_nt(), 2));
+    steps.push(Step::worked(format!(
+        "D' = ({x} · ({y_year}) − ({y}) · ({x_year})) / {h}² = {}° per year",
+        fixed(b.declination_per_year.in_deg(), 4)
+    )));
     Some(steps)
 }
 
@@ -229,7 +237,7 @@ fn elements(b: &MagneticField, sum: [f64; 3], turn: f64, model: FieldModel) -> V
         Step::worked(format!("Z = {x1} sin({turn}°) + ({z1}) cos({turn}°) = {z} nT")),
         Step::worked(format!("D = atan2({y}, {x}) = {}°", fixed(b.declination.in_deg(), 4))),
         Step::worked(format!(
-            "H = √({x}² + {y}²) = {h} nT, F = √(H² + ({z})²) = {} nT, I = atan2({z}, {h}) = {}°",
+            "H = √(({x})² + ({y})²) = {h} nT, F = √(H² + ({z})²) = {} nT, I = atan2({z}, {h}) = {}°",
             fixed(b.total.in_nt(), 1),
             fixed(b.inclination.in_deg(), 3)
         )),

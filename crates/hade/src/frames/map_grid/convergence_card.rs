@@ -72,19 +72,32 @@ fn method(c: &Convergence) -> Method {
         formulas: vec![
             Formula::new("tau' = tau sqrt(1 + sigma^2) - sigma sqrt(1 + tau^2)", "τ' = τ √(1 + σ²) − σ √(1 + τ²), τ = tan φ"),
             Formula::new("sigma = sinh(e upright(\"artanh\")(e sin phi))", "σ = sinh(e artanh(e sin φ))"),
-            Formula::new("xi' = upright(\"atan2\")(tau', cos lambda)", "ξ' = atan2(τ', cos λ), λ from the central meridian"),
-            Formula::new("eta' = upright(\"arsinh\")(sin lambda / sqrt(tau'^2 + cos^2 lambda))", "η' = arsinh(sin λ / √(τ'² + cos² λ))"),
+            Formula::new("omega = lambda - lambda_0", "ω = λ − λ_0"),
+            Formula::new("xi' = upright(\"atan2\")(tau', cos omega)", "ξ' = atan2(τ', cos ω)"),
+            Formula::new("eta' = upright(\"arsinh\") ((sin omega) / sqrt(tau'^2 + cos^2 omega))", "η' = arsinh(sin ω / √(τ'² + cos² ω))"),
             Formula::new("p' = 1 + sum_j 2 j alpha_j cos 2 j xi' cosh 2 j eta'", "p' = 1 + Σ 2j αⱼ cos 2jξ' cosh 2jη'"),
             Formula::new("q' = sum_j 2 j alpha_j sin 2 j xi' sinh 2 j eta'", "q' = Σ 2j αⱼ sin 2jξ' sinh 2jη'"),
             Formula::new(
-                "gamma = arctan(tau' / sqrt(1 + tau'^2) tan lambda) + upright(\"atan2\")(q', p')",
-                "γ = arctan(τ'/√(1 + τ'²) tan λ) + atan2(q', p')",
+                "gamma = arctan(tau' / sqrt(1 + tau'^2) tan omega) + upright(\"atan2\")(q', p')",
+                "γ = arctan(τ'/√(1 + τ'²) tan ω) + atan2(q', p')",
+            ),
+            Formula::new("xi = xi' + sum_j alpha_j sin 2 j xi' cosh 2 j eta'", "ξ = ξ' + Σ αⱼ sin 2jξ' cosh 2jη'"),
+            Formula::new("eta = eta' + sum_j alpha_j cos 2 j xi' sinh 2 j eta'", "η = η' + Σ αⱼ cos 2jξ' sinh 2jη'"),
+            Formula::new("E = E_0 + k_0 A eta", "E = E_0 + k_0 A η"),
+            Formula::new("N = N_0 + k_0 A (xi - xi_0)", "N = N_0 + k_0 A (ξ − ξ_0)"),
+            Formula::new(
+                "k = k_0 A / a sqrt(p'^2 + q'^2) sqrt((1 - e^2 sin^2 phi) (1 + tau^2)) / sqrt(tau'^2 + cos^2 omega)",
+                "k = k_0 (A/a) √(p'² + q'²) √((1 − e² sin²φ)(1 + τ²)) / √(τ'² + cos² ω)",
             ),
         ],
         symbols: vec![
             ("e".to_owned(), "eccentricity of the ellipsoid, e² = f (2 − f)".to_owned()),
             ("α".to_owned(), "Krüger's coefficients, polynomials in n = f / (2 − f)".to_owned()),
             ("τ'".to_owned(), "tangent of the conformal latitude".to_owned()),
+            ("λ_0, k_0, E_0, N_0".to_owned(), "the grid's central meridian, scale, false easting and false northing".to_owned()),
+            ("A".to_owned(), "radius of the circle as long as the meridian, a / (1 + n) · (1 + n²/4 + n⁴/64 + n⁶/256)".to_owned()),
+            ("a".to_owned(), "half the major axis of the ellipsoid".to_owned()),
+            ("ξ_0".to_owned(), "ξ at the grid's latitude of origin on the central meridian, 0 at the equator".to_owned()),
         ],
         references: vec![
             Reference::new("Krüger, L. (1912) Konforme Abbildung des Erdellipsoids in der Ebene, Geodätisches Institut Potsdam (cited from memory)"),
@@ -113,13 +126,13 @@ fn steps(c: &Convergence) -> Option<Vec<Step>> {
     });
     let mut steps = vec![
         Step::worked(format!(
-            "λ = {}° − ({}°) = {}°",
+            "ω = {}° − ({}°) = {}°",
             as_typed(c.inputs.longitude.in_deg()),
             as_typed(grid.central_meridian.in_deg()),
             fixed(w.lambda.to_degrees(), 6)
         )),
         Step::worked(format!(
-            "1/f = {}, n = {}, e = {}, radius of the meridian's circle {} m",
+            "1/f = {}, n = {}, e = {}, A = {} m",
             as_typed(grid.ellipsoid.inverse_flattening),
             fixed(series.n, 10),
             fixed(series.e, 9),
@@ -145,7 +158,7 @@ fn steps(c: &Convergence) -> Option<Vec<Step>> {
             },
         },
         Step::worked(format!(
-            "γ = arctan(sin(arctan τ') tan λ) + atan2({}, {}) = {}° + ({}°) = {}°",
+            "γ = arctan(sin(arctan τ') tan ω) + atan2({}, {}) = {}° + ({}°) = {}°",
             fixed(w.q, 9),
             fixed(w.p, 9),
             fixed(w.on_sphere.to_degrees(), 6),
@@ -162,7 +175,7 @@ fn steps(c: &Convergence) -> Option<Vec<Step>> {
 fn on_a_sphere(latitude: f64, lambda: f64) -> Step {
     let gamma = (lambda.tan() * latitude.sin()).atan();
     Step::worked(format!(
-        "For comparison on a sphere: arctan(tan λ sin φ) = arctan({} × {}) = {}°",
+        "For comparison on a sphere: arctan(tan ω sin φ) = arctan({} × {}) = {}°",
         fixed(lambda.tan(), 8),
         fixed(latitude.sin(), 8),
         fixed(gamma.to_degrees(), 5)
@@ -171,8 +184,13 @@ fn on_a_sphere(latitude: f64, lambda: f64) -> Step {
 
 fn coordinates(grid: &MapGrid, p: &Projected) -> Step {
     Step::words(format!(
-        "On {} the place has E {} m and N {} m, to be held against the coordinates of the plan.",
+        "On {} (central meridian {}°, k_0 {}, E_0 {} m, N_0 {} m, a {} m) the place has E {} m and N {} m, to be held against the coordinates of the plan.",
         grid.words(),
+        as_typed(grid.central_meridian.in_deg()),
+        as_typed(grid.scale),
+        as_typed(grid.false_easting.si()),
+        as_typed(grid.false_northing.si()),
+        as_typed(grid.ellipsoid.semi_major.si()),
         fixed(p.easting.si(), 2),
         fixed(p.northing.si(), 2)
     ))
