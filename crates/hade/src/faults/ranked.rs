@@ -233,8 +233,16 @@ impl Explain for RankedFaults {
     }
 
     fn upstream(&self) -> Vec<Card> {
-        let mut cards = self.inputs.stress.upstream();
-        cards.extend(self.inputs.stress.stated());
+        let mut cards = self.inputs.stress.upstream_with_own();
+        // Planes of one site share its correction: its card stands once. The strikes are the file's own.
+        for fault in &self.inputs.faults {
+            let strike = fault.plane.strike;
+            if let Some(card) = strike.site().and_then(|site| site.correction_card(strike.north()))
+                && !cards.contains(&card)
+            {
+                cards.push(card);
+            }
+        }
         cards
     }
 }

@@ -4,7 +4,7 @@ use super::figure::{Point, mohr};
 use super::ranked::{RankedFault, RankedFaults, RankedInputs};
 use super::set::{FaultSource, item};
 use super::slip::FaultState;
-use super::slip_card::{method, steps as worked};
+use super::slip_card::{below_pore, method, steps as worked};
 use crate::card::{Column, Explain, Explanation, Figure, Item, Projection, Role, Step, Table};
 use crate::frames::net::Net;
 use crate::frames::vector::{V3, dot, wrap};
@@ -93,6 +93,7 @@ fn results(rows: &[RankedFault]) -> Vec<Item> {
 
 fn notes(ranked: &RankedFaults, inputs: &RankedInputs, rows: &[RankedFault]) -> Vec<String> {
     let mut notes: Vec<String> = inputs.strength.doubt().into_iter().collect();
+    notes.extend(below_pore(&inputs.stress, inputs.pore));
     notes.extend(corrected(rows));
     let (slipping, open, all) = (ranked.slipping(), ranked.open(), ranked.planes());
     let pore = with_typed_unit(inputs.pore);

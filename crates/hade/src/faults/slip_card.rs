@@ -3,6 +3,7 @@
 use super::figure::{Point, mohr};
 use super::slip::{FaultSlip, FaultSlipInputs, FaultState};
 use crate::card::{Explanation, Formula, Item, Method, Reference, Step};
+use crate::stress::Stress;
 use crate::units::{Pressure, as_typed, fixed, with_typed_unit};
 
 /// The method, shared with the ranking of many planes.
@@ -104,7 +105,7 @@ pub(super) fn explain(slip: &FaultSlip, inputs: &FaultSlipInputs) -> Explanation
                 slip.state().words()
             ),
         )],
-        notes: notes(slip),
+        notes: notes(slip, inputs),
         topics: ["stress", "plane", "fault", "friction", "slip"].map(str::to_owned).to_vec(),
     }
 }
@@ -160,7 +161,18 @@ fn results(slip: &FaultSlip) -> Vec<Item> {
     items
 }
 
-fn notes(slip: &FaultSlip) -> Vec<String> {
+/// What a state is that no rock in the earth keeps.
+pub(super) fn below_pore(stress: &Stress, pore: Pressure) -> Option<String> {
+    let [.., s3] = stress.principals().magnitudes();
+    (s3 < pore).then(|| {
+        format!(
+            "WARNING: the least stress {s3} is below the pore pressure {}: rock in the earth does not keep that; check both.",
+            with_typed_unit(pore)
+        )
+    })
+}
+
+fn notes(slip: &FaultSlip, inputs: &FaultSlipInputs) -> Vec<String> {
     let mut notes: Vec<String> = slip.strength().doubt().into_iter().collect();
     match slip.state() {
         FaultState::Open => {
@@ -182,6 +194,7 @@ fn notes(slip: &FaultSlip) -> Vec<String> {
         )),
         FaultState::Holds => {}
     }
+    notes.extend(below_pore(&inputs.stress, inputs.pore));
     if slip.opens_first() {
         notes.push(format!(
             "Opens first: the shear stress is below the cohesion, so friction would let go only at {}, above the normal stress; the critical pore pressure is the normal stress.",

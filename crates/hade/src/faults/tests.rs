@@ -29,7 +29,7 @@ fn strength(friction: f64, cohesion: f64) -> FaultStrength {
     FaultStrength { friction, cohesion: cohesion.mpa() }
 }
 
-/// Trap 18: the hanging wall follows the shear part of S n with n DOWN. A normal fault that dips 60°
+/// The hanging wall follows the shear part of S n with n DOWN. A normal fault that dips 60°
 /// has rake −90°, not +90°.
 #[test]
 fn rake_is_that_of_the_hanging_wall_with_the_normal_down() {
@@ -57,7 +57,7 @@ fn rake_is_that_of_the_hanging_wall_with_the_normal_down() {
     }
 }
 
-/// Trap 29: P_c = σ_n − (τ − C)/μ. With τ < C it passes the normal stress: then the fault opens
+/// P_c = σ_n − (τ − C)/μ. With τ < C it passes the normal stress: then the fault opens
 /// first; the number is capped and flagged, not turned round.
 #[test]
 fn cohesion_above_the_shear_stress_means_that_the_fault_opens_first() {
@@ -128,7 +128,7 @@ fn what_is_not_a_strength_a_plane_or_a_pressure_is_refused() {
     assert!(s.critical_planes(strength(-0.6, 0.0), 20.mpa()).is_err());
 }
 
-/// Trap 35: an effective stress of zero or less in the denominator is inadmissible, not a negative
+/// An effective stress of zero or less in the denominator is inadmissible, not a negative
 /// ratio that passes for small.
 #[test]
 fn a_negative_effective_stress_never_passes_the_frictional_limit() {

@@ -9,7 +9,7 @@ use super::vector::{M3, add, scale};
 use super::{Attitude, Borehole, FaultAxes, Frame, Geographic, Local, LocalAxes, Name, Plane, WallAxes};
 use crate::card::{Card, Item};
 use crate::error::Result;
-use crate::units::{Angle, Quantity, as_typed};
+use crate::units::{Angle, Quantity};
 
 /// The axes of one hole, wall, fault or instrument: what a value in a frame belongs to.
 #[derive(Clone, Copy, Debug, PartialEq, Serialize, Deserialize)]
@@ -60,6 +60,27 @@ impl Axes {
         }
     }
 
+    /// Whether both are the same axes under the same name, however their angles were stated (−10° and
+    /// 350°, magnetic and true).
+    pub(crate) fn same(self, other: Axes) -> bool {
+        if self == other {
+            return true;
+        }
+        let close = |a: M3, b: M3| a.as_flattened().iter().zip(b.as_flattened()).all(|(a, b)| (a - b).abs() <= 1e-12);
+        self.kind() == other.kind()
+            && self.name() == other.name()
+            && matches!((self.by_definition(), other.by_definition()), (Ok(a), Ok(b)) if close(a, b))
+    }
+
+    /// The name of the hole, fault or instrument.
+    fn name(self) -> Option<Name> {
+        match self {
+            Axes::NorthEastDown => None,
+            Axes::Hole { name, .. } | Axes::Wall { name, .. } | Axes::Fault { name, .. } => name,
+            Axes::Local { stated } => Some(stated.name()),
+        }
+    }
+
     /// The three axes in words.
     pub fn axis_names(self) -> [&'static str; 3] {
         match self {
@@ -88,9 +109,11 @@ impl Axes {
             Axes::NorthEastDown => "north, east, down".to_owned(),
             Axes::Hole { name: Some(name), .. } => format!("the axes of {name}"),
             Axes::Hole { attitude, name: None } => format!("borehole axes ({})", attitude.words()),
-            Axes::Wall { name: Some(name), tool_face, .. } => format!("the wall of {name} at tool face {tool_face}"),
+            Axes::Wall { name: Some(name), tool_face, .. } => {
+                format!("the wall axes of {name} at tool face {tool_face}")
+            }
             Axes::Wall { attitude, name: None, tool_face } => {
-                format!("the wall at tool face {tool_face} ({})", attitude.words())
+                format!("wall axes at tool face {tool_face} ({})", attitude.words())
             }
             Axes::Fault { name: Some(name), .. } => format!("the axes of fault {name}"),
             Axes::Fault { plane, name: None } => format!("fault axes ({})", plane.words()),
@@ -106,7 +129,8 @@ impl Axes {
                 format!("the borehole frame of {name} ({})", attitude.words())
             }
             Axes::Hole { attitude, name: None } => format!("the borehole frame at {}", attitude.words()),
-            Axes::Wall { attitude, tool_face, .. } => format!("{} ({})", self.title(), attitude.words_with(tool_face)),
+            Axes::Wall { attitude, name: Some(_), .. } => format!("{} ({})", self.title(), attitude.words()),
+            Axes::Wall { .. } => self.title(),
             Axes::Fault { plane, name: Some(name) } => format!("the axes of fault {name} ({})", plane.words()),
             Axes::Fault { plane, name: None } => format!("the axes of a fault of {}", plane.words()),
             Axes::Local { stated } => format!("the axes of {} ({})", stated.name(), stated.words()),
@@ -266,10 +290,4 @@ pub(super) fn product(turns: &[Turn]) -> M3 {
     let mut turns = turns.iter();
     let first = turns.next().map_or(unit, |t| t.matrix);
     turns.fold(first, |q, turn| super::vector::multiply(&turn.matrix, &q))
-}
-
-impl Attitude {
-    fn words_with(self, tool_face: Angle) -> String {
-        format!("{}, tool face {}°", self.words(), as_typed(tool_face.in_deg()))
-    }
 }

@@ -321,7 +321,7 @@ impl Explain for Azimuth {
         let outcome = self.outcome();
         sum.push_str(&format!(" = {}°, counted within 0–360°", three_figures(outcome)));
         Explanation {
-            title: format!("Azimuth {}° from {} as a true azimuth{across}", as_typed(self.measured.in_deg()), self.north.words()),
+            title: format!("Azimuth {}° from {} as a true azimuth{across}", few_decimals(self.measured, 4), self.north.words()),
             headline: bearing(outcome),
             inputs,
             results: vec![Item::new("A", "azimuth from true north", TRUE_AZIMUTH, vec![outcome.si()], bearing(outcome))],

@@ -111,7 +111,7 @@ impl<From: Frame, To: Frame> Chain<From, To> {
     /// # Errors
     /// When the other begins in another hole's, wall's or fault's axes.
     pub fn then<Next: Frame>(&self, next: &Chain<To, Next>) -> Result<Chain<From, Next>> {
-        if self.to() != next.from() {
+        if !self.to().same(next.from()) {
             return Err(Error::FrameMismatch {
                 doing: "Joining two chains".to_owned(),
                 left: self.to().words(),
@@ -241,7 +241,7 @@ impl Explain for Route {
         let names: Vec<String> = numbers.chars().take(turns.len()).map(|n| format!("Q{n}")).collect();
         if turns.len() > 1 {
             for (turn, name) in turns.iter().zip(&names) {
-                steps.push(Step::words(format!("Turn {}.", turn.words)));
+                steps.push(Step::words(turn.sentence()));
                 steps.push(Step::matrix(name, &turn.matrix, 6, "", "rows: the new axes in the axes before the turn"));
             }
             let factors: Vec<&str> = names.iter().rev().map(String::as_str).collect();
@@ -250,7 +250,7 @@ impl Explain for Route {
                 factors.join(" ")
             )));
         } else if let Some(turn) = turns.first() {
-            steps.push(Step::words(format!("Turn {}.", turn.words)));
+            steps.push(Step::words(turn.sentence()));
         }
         steps.push(Step::matrix(
             "Q",

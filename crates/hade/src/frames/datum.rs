@@ -2,7 +2,9 @@
 
 use serde::{Deserialize, Serialize};
 
+use crate::card::Item;
 use crate::error::{Error, Result};
+use crate::sheet::IntoGiven;
 use crate::units::{Length, Quantity, require_between, with_typed_unit};
 
 /// The level a vertical depth counts down from.
@@ -85,6 +87,14 @@ impl Depth {
             return self.below.words().to_owned();
         }
         format!("{} below {}", with_typed_unit(self.tvd), self.below.words())
+    }
+}
+
+impl IntoGiven for Depth {
+    type Value = Depth;
+    fn into_given(self, symbol: &str, meaning: &str) -> (Depth, Item, Option<(f64, String)>) {
+        let shown = format!("{} below {}", with_typed_unit(self.tvd), self.below.words());
+        (self, Item::new(symbol, meaning, Length::KIND, vec![self.tvd.si()], shown), None)
     }
 }
 

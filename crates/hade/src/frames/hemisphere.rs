@@ -102,7 +102,7 @@ impl LowerHemisphere {
         LowerHemisphere { inputs, places: Vec::new() }
     }
 
-    /// With a line. Lines whose names begin with the same word ("cell 1", "cell 2") bear the same mark.
+    /// With a line. What begins with the same word ("cell 1", "cell 2") is drawn alike.
     ///
     /// # Errors
     /// When the plunge is outside ±90° or the trend has no true north.
@@ -213,11 +213,11 @@ impl Explain for LowerHemisphere {
                     Err(_) => net,
                 },
                 Drawn::Plane { plane, .. } => match plane.axes() {
-                    Ok(axes) => net.plane(name.text(), Role::Second, axes.normal),
+                    Ok(axes) => net.plane(name.text(), looks[group(&mut groups, name) % looks.len()].0, axes.normal),
                     Err(_) => net,
                 },
                 Drawn::Pole { plane, .. } => match plane.axes() {
-                    Ok(axes) => net.pole(name.text(), Role::Third, axes.normal),
+                    Ok(axes) => net.pole(name.text(), looks[group(&mut groups, name) % looks.len()].0, axes.normal),
                     Err(_) => net,
                 },
             };

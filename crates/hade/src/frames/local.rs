@@ -59,14 +59,9 @@ impl LocalAxes {
     /// # Errors
     /// When the lines are within 5° of each other, or one has no true north or a plunge beyond ±90°.
     pub fn along_lines(name: &str, first: Line, second: Line) -> Result<Self> {
-        let apart = angle_between_lines(first.vector()?, second.vector()?).to_degrees();
-        if apart < TOO_CLOSE {
-            return Err(Error::not_physical(
-                format!("The two lines of {name} stand at {}° to each other", fixed(apart, 1)),
-                format!("they must be at least {TOO_CLOSE}° apart to fix axes; check trends and plunges."),
-            ));
-        }
-        Ok(LocalAxes { name: Name::new(name), by: Stated::TwoLines { first, second } })
+        let stated = LocalAxes { name: Name::new(name), by: Stated::TwoLines { first, second } };
+        stated.turns("")?;
+        Ok(stated)
     }
 
     /// Along three lines measured as the axes of an instrument, which are replaced by the nearest set at
@@ -118,7 +113,7 @@ impl LocalAxes {
 
     pub(super) fn turns(self, suffix: &str) -> Result<Vec<Turn>> {
         let grid = |north: Azimuth| {
-            let symbol = format!("a_m{}", suffix.trim_start_matches('_'));
+            let symbol = format!("g{suffix}");
             Ok::<_, Error>(Turn::about(2, "the azimuth of mine north", &symbol, north.true_north()?, "down"))
         };
         Ok(match self.by {
@@ -134,6 +129,13 @@ impl LocalAxes {
             }
             Stated::TwoLines { first, second } => {
                 let x = first.vector()?;
+                let apart = angle_between_lines(x, second.vector()?).to_degrees();
+                if apart < TOO_CLOSE {
+                    return Err(Error::not_physical(
+                        format!("The two lines of {} stand at {}° to each other", self.name, fixed(apart, 1)),
+                        format!("they must be at least {TOO_CLOSE}° apart to fix axes; check trends and plunges."),
+                    ));
+                }
                 let z = unit(cross(x, second.vector()?));
                 vec![Turn::by_rows("to the axes along the first line, and across both", [x, cross(z, x), z])]
             }
@@ -171,7 +173,7 @@ impl LocalAxes {
     pub(super) fn items(self, suffix: &str) -> Vec<Item> {
         match self.by {
             Stated::MineGridDown { north } | Stated::MineGridUp { north } => {
-                let symbol = format!("a_m{}", suffix.trim_start_matches('_'));
+                let symbol = format!("g{suffix}");
                 vec![north.item(&symbol, "azimuth of mine north")]
             }
             Stated::TwoLines { first, second } => line_items(&[first, second]),

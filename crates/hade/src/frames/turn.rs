@@ -1,8 +1,9 @@
 //! One turn of the axes: about one of them, or about any line.
 
+use super::few_decimals;
 use super::vector::{M3, V3, norm, scale, transpose, trend_plunge};
 use crate::card::Formula;
-use crate::units::{Angle, Quantity, as_typed, fixed};
+use crate::units::{Angle, Quantity, fixed};
 
 /// One turn of a chain.
 #[derive(Clone, Debug, PartialEq)]
@@ -44,7 +45,7 @@ impl Turn {
     /// A turn about one of the axes: what the angle is, its symbol, and the name of the axis.
     pub(super) fn about(index: usize, what: &str, symbol: &str, angle: Angle, axis: &str) -> Self {
         Turn {
-            words: format!("by {what}, {}°, about {axis}", as_typed(angle.in_deg())),
+            words: format!("by {what}, {}°, about {axis}", few_decimals(angle, 4)),
             axis: axis.to_owned(),
             angle,
             matrix: about(index, angle.si()),
@@ -72,11 +73,19 @@ impl Turn {
             Form::Rows => Form::Rows,
         };
         Turn {
-            words: format!("back: {}, the other way round", self.words),
+            words: format!("undone: {}", self.words),
             matrix: transpose(&self.matrix),
             angle: -self.angle,
             form,
             ..self
+        }
+    }
+
+    /// As a step of the work.
+    pub(super) fn sentence(&self) -> String {
+        match self.words.strip_prefix("undone: ") {
+            Some(turn) => format!("Undo the turn {turn}."),
+            None => format!("Turn {}.", self.words),
         }
     }
 

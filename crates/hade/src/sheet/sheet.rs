@@ -55,7 +55,19 @@ impl Sheet {
             sd: sd.map(|(si, _)| si),
             source,
         };
-        if let Some(old) = self.givens.iter().find(|g| g.item.symbol == symbol && g.item.name != given.item.name) {
+        if given.item.si.iter().any(|v| !v.is_finite()) {
+            let conflict = format!(
+                "{symbol}, \"{meaning}\", is given as {}, which is no number, and is left out",
+                given.item.shown
+            );
+            replace_or_push(&mut self.conflicts, conflict.clone(), |c| *c == conflict);
+            return value;
+        }
+        let twice = |old: &&Given| {
+            old.item.symbol == symbol && (old.item.name != given.item.name || !old.item.same_value(&given.item))
+        };
+        // In a notebook a cell that is run again gives its value again; only the memo of a clean run says so.
+        if let Some(old) = self.givens.iter().find(twice) {
             let conflict = format!(
                 "{symbol} is given twice, as \"{}\" ({}) and as \"{}\" ({}); only the second is kept",
                 old.item.name, old.item.shown, given.item.name, given.item.shown
@@ -84,6 +96,17 @@ impl Sheet {
     /// clean run says so.
     pub fn add<E: Explain>(&mut self, result: &E) {
         let card = result.card();
+        let numbers = card.explanation.inputs.iter().chain(&card.explanation.results);
+        if let Some(item) = numbers.clone().find(|item| item.si.iter().any(|v| !v.is_finite())) {
+            let conflict = format!(
+                "the result \"{}\" is left out, because its {} ({}) is no number",
+                card.title(),
+                item.name,
+                item.shown
+            );
+            replace_or_push(&mut self.conflicts, conflict.clone(), |c| *c == conflict);
+            return;
+        }
         let mut place = self.place_of(&card).unwrap_or(self.entries.len());
         for below in result.upstream() {
             let known = self.entries.iter().position(|e| {
@@ -337,7 +360,9 @@ mod tests {
         }
         assert!(sheet.record().conflicts.is_empty());
         sheet.given("P_p", "cohesion", 6.mpa(), Source::measured("a core"));
-        let said = sheet.record().conflicts;
+        sheet.given("q", "nothing", f64::NAN.mpa(), Source::measured("a core"));
+        assert!(sheet.record().conflicts.pop().is_some_and(|c| c.contains("no number")));
+        let said = &sheet.record().conflicts[..1];
         assert_eq!(said.len(), 1);
         assert!(said[0].contains("\"pore pressure\" (31 MPa) and as \"cohesion\" (6 MPa)"), "{said:?}");
     }

@@ -4,7 +4,7 @@ use serde::{Deserialize, Serialize};
 
 use super::invariants::trace_minors_det;
 use super::invariants_card::factor;
-use super::regime::{Steepest, steepest, ties};
+use super::regime::{Steepest, nearest, steepest, ties};
 use super::regime_strip::regime_strip;
 use super::tensor::Tensor;
 use super::{Regime, Stress};
@@ -130,7 +130,7 @@ fn steepest_by_cofactors(tensor: Tensor, values: [f64; 3]) -> Option<Steepest> {
         [false, true] => vec![own(0), plane(1, 0)],
         [false, false] => vec![own(0), own(1), own(2)],
     };
-    found.into_iter().min_by(|a, b| a.tilt.total_cmp(&b.tilt))
+    nearest(found)
 }
 
 impl Explain for FaultingRegime {
@@ -179,6 +179,14 @@ impl Explain for FaultingRegime {
             ),
         ];
         let other = steepest_by_cofactors(tensor, outcome.magnitudes.map(Quantity::si));
+        let given = [outcome.shape_ratio.is_some(), outcome.a_phi.is_some(), outcome.tilt.is_some()];
+        checks.push(Check::compare(
+            "φ, A_φ and the tilt stand unless all three magnitudes are equal",
+            &given.map(|there| if there { 1.0 } else { 0.0 }),
+            &[if other.is_some() { 1.0 } else { 0.0 }; 3],
+            0.0,
+            "",
+        ));
         let number = |regime: Regime| match regime {
             Regime::NormalFaulting => 0.0,
             Regime::StrikeSlip => 1.0,

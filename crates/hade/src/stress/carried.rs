@@ -125,6 +125,13 @@ impl Explain for CarriedStress {
                 Step::matrix("Q", &q, 6, "", &format!("rows: {names}")),
                 Step::matrix("S'", &self.tensor.scale(1e-6).rows(), 4, "MPa", &names),
             ],
+            notes: match axes {
+                Axes::Wall { .. } => vec![
+                    "This is the stress of the far field in the axes of the wall: the hole's own concentration of stress is not in it. The stress at the wall is that of a Wall's stress_at."
+                        .to_owned(),
+                ],
+                _ => Vec::new(),
+            },
             topics: vec!["rotation".to_owned(), "stress".to_owned()],
             ..Explanation::default()
         }

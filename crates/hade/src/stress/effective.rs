@@ -40,6 +40,6 @@ impl<F: Frame> Stress<F> {
     /// When the pore pressure is not a finite number.
     pub fn effective(&self, pore: Pressure) -> Result<EffectiveStress> {
         pore.finite("pore pressure")?;
-        Ok(EffectiveStress::of(self.tensor(), pore))
+        Ok(EffectiveStress::of(self.tensor().finite("stress")?, pore))
     }
 }

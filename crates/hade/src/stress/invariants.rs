@@ -254,6 +254,9 @@ impl Explain for Invariants {
                 "MPa",
             ),
         ];
+        let isotropic = if o.j2 > 0.0 { 1.0 } else { 0.0 };
+        let stated = if o.lode.is_some() { 1.0 } else { 0.0 };
+        checks.push(Check::compare("a Lode angle unless the deviator is zero", &[stated], &[isotropic], 0.0, ""));
         if let Some(lode) = o.lode {
             let third = std::f64::consts::TAU / 3.0;
             let radius = 2.0 * (o.j2 * MPA * MPA / 3.0).sqrt();

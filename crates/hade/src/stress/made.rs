@@ -7,12 +7,11 @@ use super::carried::Stress6;
 use super::combined::{self, Parts};
 use super::horizontals::Horizontals;
 use super::in_axes::{self, AxisComponents};
-use super::polar::{by_singular_values, nearest_orthonormal};
 use super::tensor::Tensor;
 use super::tensor_figure::tensor_figures;
 use crate::card::{Card, Check, Explain, Explanation, Formula, Item, Method, Reference, Step};
 use crate::error::{Error, Result};
-use crate::frames::{Axes, Geographic, Line, Name, chain_card};
+use crate::frames::{Axes, Geographic, Line, Name, by_singular_values, chain_card, nearest_orthonormal};
 use crate::units::{Pressure, Quantity, fixed};
 
 /// The six components of a stress in north, east, down.
@@ -62,6 +61,13 @@ pub enum Made {
         /// What was added, as far as the program remembers.
         parts: Option<Parts>,
     },
+}
+
+impl Made {
+    /// The tensor in north, east, down that this makes.
+    pub(super) fn tensor(self) -> Result<Tensor> {
+        Stress::<Geographic>::compute(StatedInputs { made: self, combined: None, label: None }).map(|s| s.tensor)
+    }
 }
 
 impl Components {
@@ -204,7 +210,7 @@ impl Explain for Stress<Geographic> {
             Made::InAxes { axes, components, tension_positive } => {
                 in_axes::checks(axes, components, tension_positive, got)
             }
-            Made::Combined { parts } => combined::checks(parts, inputs.combined, got),
+            Made::Combined { parts } => combined::checks(parts, got),
         }
     }
 
@@ -280,7 +286,7 @@ fn horizontal_checks(h: Horizontals, got: Tensor) -> Vec<Check> {
         "traction across each stated direction is that stress along it, with no shear",
         got.as_flattened(),
         expected.as_flattened(),
-        h.sv.abs().in_mpa().max(h.sh_max.abs().in_mpa()).max(1e-6) * 1e-12,
+        [h.sv, h.sh_max, h.sh_min].iter().fold(1e-6_f64, |m, p| m.max(p.abs().in_mpa())) * 1e-12,
         "MPa",
     )]
 }
@@ -314,6 +320,11 @@ fn explain_horizontals(given: Horizontals) -> Explanation {
     let (big, small) = (given.sh_max.in_mpa(), given.sh_min.in_mpa());
     Explanation {
         title: "Stress tensor from the vertical and horizontal stresses".to_owned(),
+        notes: if given.sv < Pressure::default() && given.sh_min < Pressure::default() {
+            vec!["WARNING: the stresses are negative, that is tension; here compression is positive. Was tension positive where they come from?".to_owned()]
+        } else {
+            Vec::new()
+        },
         inputs: vec![
             Item::typed("S_v", "vertical stress", given.sv),
             Item::typed("S_Hmax", "larger horizontal stress", given.sh_max),

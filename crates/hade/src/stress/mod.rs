@@ -14,7 +14,6 @@ mod invariants;
 mod invariants_card;
 mod made;
 mod mohr;
-mod polar;
 mod principals;
 mod properties;
 mod regime;

@@ -14,7 +14,7 @@ use crate::frames::vector::{M3, V3, dot, scale};
 use crate::frames::{Geographic, Line};
 use crate::units::{Pressure, Quantity, fixed};
 
-/// Principal stresses S1 ≥ S2 ≥ S3 with their axes, lower hemisphere, right-handed.
+/// Principal stresses S1 ≥ S2 ≥ S3 with their axes, each by its lower end (lines have no sign).
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Principals {
     stress: Stress<Geographic>,
@@ -173,6 +173,17 @@ impl Explain for Principals {
                 "MPa³",
             ),
         ];
+        let apart = EQUAL * outcome.magnitudes.iter().map(|m| m.in_mpa().abs()).sum::<f64>();
+        let (upper, lower) = (a - b > apart, b - c > apart);
+        let due = [upper, upper && lower, lower].map(|there| if there { 1.0 } else { 0.0 });
+        checks.push(Check::compare(
+            "an axis where its magnitude is its own, none where two are equal",
+            &outcome.axes.map(|axis| if axis.is_some() { 1.0 } else { 0.0 }),
+            &due,
+            0.0,
+            "",
+        ));
+        checks.push(Check::holds("magnitudes in falling order", (b - a).max(c - b), 0.0, "MPa"));
         if !got.is_empty() {
             checks.push(Check::compare(
                 "traction across each axis against its stress along the axis (no shear)",

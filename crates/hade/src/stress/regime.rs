@@ -44,6 +44,9 @@ pub(super) fn ties(values: [f64; 3]) -> [bool; 2] {
     [(0, 1), (1, 2)].map(|(i, j)| (values[i] - values[j]).abs() <= EQUAL * sizes)
 }
 
+/// Tilts closer than this, in radians, are alike.
+pub(super) const ALIKE: f64 = 1e-7;
+
 /// The principal axis nearest to vertical.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub(super) struct Steepest {
@@ -67,7 +70,13 @@ pub(super) fn steepest(e: &Eigen) -> Option<Steepest> {
         [false, true] => vec![one(0), Steepest { index: 1, tilt: dip(0), tied: true }],
         [false, false] => vec![one(0), one(1), one(2)],
     };
-    candidates.into_iter().min_by(|a, b| a.tilt.total_cmp(&b.tilt))
+    nearest(candidates)
+}
+
+/// The least tilted; of axes tilted alike the one of the larger magnitude, whose A_φ is smaller.
+pub(super) fn nearest(candidates: Vec<Steepest>) -> Option<Steepest> {
+    let least = candidates.iter().map(|s| s.tilt).fold(f64::INFINITY, f64::min);
+    candidates.into_iter().find(|s| s.tilt <= least + ALIKE)
 }
 
 impl Regime {

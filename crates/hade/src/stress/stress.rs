@@ -113,7 +113,7 @@ impl<F: Frame> Stress<F> {
 
     /// Whether every component is within a tolerance of the other's, in the same axes.
     pub fn is_close(&self, other: &Self, tolerance: Pressure) -> bool {
-        self.axes() == other.axes()
+        self.axes().same(other.axes())
             && self.tensor.0.iter().zip(other.tensor.0).all(|(a, b)| (a - b).abs() <= tolerance.si())
     }
 
@@ -133,7 +133,7 @@ impl<F: Turned> Stress<F> {
     /// # Errors
     /// When they are in the axes of different holes, depths, faults or instruments.
     pub fn try_add(&self, other: &Self) -> Result<Self> {
-        if self.axes() != other.axes() {
+        if !self.axes().same(other.axes()) {
             return Err(Error::FrameMismatch {
                 doing: "Adding two stresses".to_owned(),
                 left: self.axes().words(),
@@ -163,10 +163,10 @@ impl Stress<Borehole> {
     }
 }
 
-/// What can be added to a stress in axes `F` with `+`: only another stress in the geographic frame,
+/// What can be added to a stress in axes `F` with `+`, or taken off with `-`: only another stress in the geographic frame,
 /// because two stresses in borehole axes may belong to different holes.
 #[diagnostic::on_unimplemented(
-    message = "stresses in different axes cannot be added: `{Self}` to a stress in `{F}` axes",
+    message = "`+` and `-` join only stresses in north, east, down, not `{Self}` and a stress in `{F}` axes",
     label = "carry both into one frame first: `chain.carry(&s)` goes to the hole, `chain.back().carry(&sh)` comes back",
     note = "two stresses in borehole axes may belong to different holes or depths: add them with `a.try_add(&b)?`"
 )]
@@ -194,6 +194,15 @@ impl<F: Frame, Other: AddsTo<F>> std::ops::Add<Other> for Stress<F> {
     }
 }
 
+impl<F: Frame, Other: AddsTo<F>> std::ops::Sub<Other> for Stress<F> {
+    type Output = Stress<F>;
+    fn sub(self, other: Other) -> Stress<F> {
+        let other = other.stress();
+        let made = Made::combined(&[(1.0, self.behind()), (-1.0, other.behind())]);
+        Stress::of(self.tensor.add(other.tensor.scale(-1.0)), made, None)
+    }
+}
+
 #[derive(Serialize, Deserialize)]
 struct Written {
     frame: String,
@@ -202,6 +211,32 @@ struct Written {
     carried: Option<(Tensor, Axes)>,
     #[serde(default, skip_serializing_if = "Option::is_none")]
     label: Option<Name>,
+}
+
+impl Written {
+    /// Whether the components are those of the stress behind them, and that is what it was made of.
+    fn agrees(&self) -> Result<()> {
+        let (behind, rows) = match self.carried {
+            Some((behind, axes)) => (behind, Some(axes.matrix()?)),
+            None => (self.components, None),
+        };
+        let close = |a: Tensor, b: Tensor| {
+            let allowed = 1e-9 * a.largest().max(b.largest()).max(1.0);
+            a.0.iter().zip(b.0).all(|(a, b)| (a - b).abs() <= allowed)
+        };
+        let turned = rows.is_none_or(|rows| close(behind.turned(&rows), self.components));
+        let made = match self.made {
+            Made::Combined { parts: None } => true,
+            made => close(made.tensor()?, behind),
+        };
+        if turned && made {
+            return Ok(());
+        }
+        Err(Error::not_physical(
+            "A stress of the record does not agree with what it says it was made of",
+            "the record was changed; make it again from its notebook.",
+        ))
+    }
 }
 
 impl<F: Frame> Serialize for Stress<F> {
@@ -237,6 +272,7 @@ impl<'de, F: Frame> Deserialize<'de> for Stress<F> {
         if !written.components.is_finite() {
             return Err(serde::de::Error::custom("a stress component is not a finite number"));
         }
+        written.agrees().map_err(serde::de::Error::custom)?;
         Ok(Stress::of(written.components, written.made, written.carried).with_label(written.label))
     }
 }

@@ -2,6 +2,8 @@
 
 use serde::{Deserialize, Serialize};
 
+use crate::error::{Error, Result};
+
 use crate::frames::vector::{M3, V3, add, cross, multiply, norm, scale, transpose};
 
 /// A symmetric tensor: xx, yy, zz, xy, yz, xz. For stresses, in pascals.
@@ -61,6 +63,13 @@ impl Tensor {
         format!(
             "S_{x}{x} {xx:.2}, S_{y}{y} {yy:.2}, S_{z}{z} {zz:.2}, S_{x}{y} {xy:.2}, S_{y}{z} {yz:.2}, S_{x}{z} {xz:.2} MPa"
         )
+    }
+    /// Refused by name when a component is no finite number.
+    pub fn finite(self, what: &str) -> Result<Self> {
+        if self.is_finite() {
+            return Ok(self);
+        }
+        Err(Error::out_of_range(what, self.words(["1", "2", "3"]), "six finite numbers"))
     }
     pub fn is_finite(self) -> bool {
         self.0.iter().all(|c| c.is_finite())

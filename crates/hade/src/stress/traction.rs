@@ -21,9 +21,11 @@ pub struct Traction {
     pub normal: Pressure,
     /// The size of the shear stress.
     pub shear: Pressure,
-    /// The shear stress along strike, positive towards the strike azimuth (on the hanging wall).
+    /// The shear stress along strike, positive towards the strike azimuth, by which the
+    /// hanging wall drags the footwall.
     pub along_strike: Pressure,
-    /// The shear stress along dip, positive down dip (on the hanging wall).
+    /// The shear stress along dip, positive down dip, by which the hanging wall drags the
+    /// footwall.
     pub down_dip: Pressure,
     /// The direction the hanging wall would slip, in the plane from strike, positive up dip:
     /// −90° for a normal fault. `None` where there is no shear.
@@ -48,6 +50,12 @@ pub struct TractionOutcome {
     shear: Pressure,
     rake: Option<Angle>,
     vector: [f64; 3],
+}
+
+/// From strike, up dip positive; slip against the strike is 180°, never −180°.
+fn rake(along: f64, down: f64) -> f64 {
+    let rake = (-down).atan2(along);
+    if rake < -std::f64::consts::PI + 1e-9 { std::f64::consts::PI } else { rake }
 }
 
 /// Below this share of the largest stress the shear has no direction.
@@ -77,7 +85,7 @@ impl Explain for Traction {
 
     fn compute(inputs: TractionInputs) -> Result<Self> {
         let axes = inputs.plane.axes()?;
-        let s = inputs.stress.tensor();
+        let s = inputs.stress.tensor().finite("stress")?;
         let t = s.times(axes.normal);
         let (along, down) = (dot(t, axes.along_strike), dot(t, axes.down_dip));
         let shear = along.hypot(down);
@@ -86,7 +94,7 @@ impl Explain for Traction {
             shear: Pressure::from_si(shear),
             along_strike: Pressure::from_si(along),
             down_dip: Pressure::from_si(down),
-            rake: (shear > NO_SHEAR * s.largest()).then(|| Angle::from_si((-down).atan2(along))),
+            rake: (shear > NO_SHEAR * s.largest()).then(|| Angle::from_si(rake(along, down))),
             vector: t,
             inputs,
         })
@@ -149,16 +157,28 @@ impl Explain for Traction {
                 "MPa",
             ),
         ];
+        let shear = add(vector, scale(axes.normal, -normal));
+        // Well away from the least shear that has a direction, there is a rake or there is none.
+        let size = norm(shear) / largest;
+        let due = if size > 1e3 * NO_SHEAR { 1.0 } else { 0.0 };
+        if !(1e-3 * NO_SHEAR..=1e3 * NO_SHEAR).contains(&size) {
+            let stated = if outcome.rake.is_some() { 1.0 } else { 0.0 };
+            checks.push(Check::compare(
+                "a rake where there is shear, none where there is not",
+                &[stated],
+                &[due],
+                0.0,
+                "",
+            ));
+        }
         if let Some(rake) = outcome.rake {
             let slip = add(scale(axes.along_strike, rake.si().cos()), scale(axes.down_dip, -rake.si().sin()));
-            let shear = add(vector, scale(axes.normal, -normal));
-            let direction = scale(shear, 1.0 / norm(shear));
             checks.push(Check::compare(
-                "slip direction of the rake against the shear part of the traction",
-                &slip,
-                &direction,
-                1e-8,
-                "",
+                "slip direction of the rake, as long as the shear stress, against the shear part of the traction",
+                &scale(slip, outcome.shear.in_mpa()),
+                &shear.map(|c| c * 1e-6),
+                (outcome.shear.in_mpa() * 1e-8).max(largest * 1e-6 * 1e-14),
+                "MPa",
             ));
         }
         checks
@@ -171,8 +191,8 @@ impl Explain for Traction {
         let mut results = vec![
             Item::computed("σ_n", "normal stress on the plane", self.normal),
             Item::computed("τ", "shear stress on the plane", self.shear),
-            Item::computed("τ_s", "shear along strike, on the hanging wall", self.along_strike),
-            Item::computed("τ_d", "shear down dip, on the hanging wall", self.down_dip),
+            Item::computed("τ_s", "shear along strike, of the hanging wall on the footwall", self.along_strike),
+            Item::computed("τ_d", "shear down dip, of the hanging wall on the footwall", self.down_dip),
         ];
         if let Some(rake) = self.rake {
             results.push(Item::computed("r", "rake of hanging-wall slip, from strike, up dip positive", rake));
@@ -187,7 +207,7 @@ impl Explain for Traction {
             ],
             results,
             method: Method {
-                words: "The traction is the tensor times the plane's normal, which points down; its part in the plane is the shear on the hanging wall.".to_owned(),
+                words: "The traction is the tensor times the plane's normal, which points down; its part in the plane is the shear by which the hanging wall drags the footwall, the way it would slip.".to_owned(),
                 formulas: vec![
                     Formula::new("t = S n", "t = S n"),
                     Formula::new("sigma_n = t dot n", "σ_n = t · n"),

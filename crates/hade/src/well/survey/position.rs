@@ -496,7 +496,7 @@ mod tests {
             [30.0, 30.0, 123.0, 123.0]
         );
         holds(&survey.at(60.m()).unwrap());
-        // The hole leaves the vertical towards the next station at once (the conventions, traps.md 5).
+        // The hole leaves the vertical towards the next station at once.
         let leaving = Survey::from_stations(&[station(0.0, 0.0, 30.0), station(100.0, 5.0, 123.0)]).unwrap();
         assert!((leaving.at(1.m()).unwrap().attitude.azimuth.true_north().unwrap().in_deg() - 123.0).abs() < 1e-9);
     }

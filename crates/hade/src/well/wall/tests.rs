@@ -155,7 +155,10 @@ fn a_flipped_tool_face_and_a_transposed_turn_turn_a_check_red() {
     for (k, c) in wrong.0.iter().enumerate() {
         json = json.with_number(&format!("/components/{k}"), *c);
     }
-    let stress = Stress::<Borehole>::read(&json).unwrap();
+    // A record that says so is not read at all.
+    assert!(Stress::<Borehole>::read(&json).unwrap_err().to_string().contains("does not agree"));
+    let axes = wall.inputs.stress.axes();
+    let stress = Stress::<Borehole>::of(wrong, crate::stress::Made::Combined { parts: None }, Some((far, axes)));
     let wrong = Wall::new(WallInputs { stress, ..wall.inputs }).unwrap();
     assert!(!wrong.limits().card().passed());
     assert!(!wrong.around(31.mpa()).unwrap().card().passed());
