@@ -10,8 +10,10 @@ use sha2::{Digest, Sha256};
 use crate::error::{Error, Result};
 
 mod declarations;
+mod table;
 
-pub(crate) use declarations::Declarations;
+pub(crate) use declarations::{Declarations, Unit, Units};
+pub(crate) use table::{Column, Expected, Row, Table, heading};
 
 /// The longest line that is read, in bytes. Survey and log files keep far below it; a binary file
 /// or a file without line ends does not.
@@ -72,25 +74,6 @@ impl<R: Read> Lines<R> {
         Ok(self.advance()?.then(|| String::from_utf8_lossy(&self.bytes).into_owned()))
     }
 
-    /// The fields of a line by the rules of CSV: separated by commas, trimmed, in quotation marks
-    /// where they hold a comma.
-    pub fn fields(&self, text: &str) -> Result<Vec<String>> {
-        if !text.contains('"') {
-            return Ok(text.split(',').map(|field| field.trim().to_owned()).collect());
-        }
-        let mut reader = csv::ReaderBuilder::new()
-            .has_headers(false)
-            .flexible(true)
-            .trim(csv::Trim::All)
-            .buffer_capacity(text.len() + 2)
-            .from_reader(text.as_bytes());
-        let mut record = csv::StringRecord::new();
-        match reader.read_record(&mut record) {
-            Ok(_) => Ok(record.iter().map(str::to_owned).collect()),
-            Err(e) => Err(self.bad(e.to_string(), "write the line as comma-separated values")),
-        }
-    }
-
     /// The number of the line read last, from 1.
     pub fn number(&self) -> usize {
         self.number
@@ -101,9 +84,9 @@ impl<R: Read> Lines<R> {
         &self.path
     }
 
-    /// The SHA-256 of everything that was read, lower-case hexadecimal.
-    pub fn sha256(self) -> String {
-        self.hasher.finalize().iter().map(|b| format!("{b:02x}")).collect()
+    /// The SHA-256 of everything that was read so far, lower-case hexadecimal.
+    pub fn sha256(&self) -> String {
+        self.hasher.clone().finalize().iter().map(|b| format!("{b:02x}")).collect()
     }
 
     /// An error at the line read last.
@@ -124,13 +107,7 @@ impl<R: Read> Lines<R> {
         why: impl Into<String>,
         fix: impl Into<String>,
     ) -> Error {
-        Error::Unreadable {
-            path: self.path.clone(),
-            line: line.filter(|n| *n > 0),
-            column: column.map(str::to_owned),
-            why: why.into(),
-            fix: fix.into(),
-        }
+        unreadable(&self.path, line, column, why, fix)
     }
 
     /// Reads one line into `self.bytes`; false at the end of the file.
@@ -189,6 +166,23 @@ impl<R: Read> Lines<R> {
     }
 }
 
+/// An error of a file: at a line and in a column where they are known.
+fn unreadable(
+    path: &str,
+    line: Option<usize>,
+    column: Option<&str>,
+    why: impl Into<String>,
+    fix: impl Into<String>,
+) -> Error {
+    Error::Unreadable {
+        path: path.to_owned(),
+        line: line.filter(|n| *n > 0),
+        column: column.map(str::to_owned),
+        why: why.into(),
+        fix: fix.into(),
+    }
+}
+
 /// A number of a table, finite; otherwise what is wrong and how to mend it.
 pub(crate) fn number(text: &str) -> std::result::Result<f64, (String, String)> {
     let text = text.trim();
@@ -207,22 +201,9 @@ pub(crate) fn number(text: &str) -> std::result::Result<f64, (String, String)> {
     }
 }
 
-/// The fields of one line of a table, by the rules of CSV.
-pub(crate) fn fields<R: Read>(lines: &Lines<R>, text: &str) -> Result<Vec<String>> {
-    if !text.contains('"') {
-        return Ok(text.split(',').map(|field| field.trim().to_owned()).collect());
-    }
-    let mut reader = csv::ReaderBuilder::new()
-        .has_headers(false)
-        .flexible(true)
-        .trim(csv::Trim::All)
-        .buffer_capacity(text.len() + 2)
-        .from_reader(text.as_bytes());
-    let mut record = csv::StringRecord::new();
-    match reader.read_record(&mut record) {
-        Ok(_) => Ok(record.iter().map(str::to_owned).collect()),
-        Err(e) => Err(lines.bad(e.to_string(), "write the line as comma-separated values")),
-    }
+/// What an error says, as the reason of another one.
+pub(crate) fn reason(error: &Error) -> String {
+    error.to_string().trim_end_matches('.').to_owned()
 }
 
 /// A text of a file for a message: at most forty characters.

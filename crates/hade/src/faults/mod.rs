@@ -15,7 +15,6 @@ mod friction;
 mod ranked;
 mod ranked_card;
 mod read;
-mod read_header;
 mod set;
 mod slip;
 mod slip_card;

@@ -2,13 +2,13 @@
 
 use serde::{Deserialize, Serialize};
 
-use super::set::{Fault, FaultSet, FaultSource, require};
+use super::set::{Fault, FaultSet, FaultSource, corrected_at, require};
 use super::slip::{Extremes, FaultSlip, FaultSlipInputs, FaultState, SlipOutcome, slip_of};
 use super::slip_check::slip_checks;
 use super::strength::FaultStrength;
 use crate::card::{Card, Check, Explain, Explanation};
 use crate::error::{Error, Result};
-use crate::frames::{Azimuth, Geographic, Plane};
+use crate::frames::{Azimuth, Geographic, Plane, Site};
 use crate::stress::Stress;
 use crate::units::{Pressure, Quantity};
 
@@ -37,6 +37,9 @@ pub struct RankedInputs {
     pub(super) source: FaultSource,
     pub(super) faults: Vec<Fault>,
     pub(super) left_out: Option<LeftOut>,
+    /// The site that corrected the strikes of a file, kept once for all of them.
+    #[serde(default, skip_serializing_if = "Option::is_none")]
+    pub(super) site: Option<Site>,
 }
 
 /// What a card says of the planes it does not hold.
@@ -72,6 +75,8 @@ impl FaultSet {
     /// not finite, or more than 500 planes were typed in the notebook.
     pub fn ranked(&self, stress: &Stress<Geographic>, strength: FaultStrength, pore: Pressure) -> Result<RankedFaults> {
         let data = self.data();
+        let site = corrected_at(&data.source, &data.faults);
+        let plain = |fault: &Fault| if site.is_some() { fault.without_site() } else { *fault };
         let inputs = RankedInputs {
             stress: *stress,
             strength,
@@ -79,9 +84,11 @@ impl FaultSet {
             source: data.source.clone(),
             faults: Vec::new(),
             left_out: None,
+            site,
         };
         if data.faults.len() <= MOST_ON_A_CARD {
-            return RankedFaults::compute(RankedInputs { faults: data.faults.clone(), ..inputs });
+            let faults = data.faults.iter().map(plain).collect();
+            return RankedFaults::compute(RankedInputs { faults, ..inputs });
         }
         if data.source == FaultSource::Typed {
             return Err(Error::not_physical(
@@ -97,7 +104,7 @@ impl FaultSet {
         // The kept planes stay in the order of the file.
         let mut kept = kept.to_vec();
         kept.sort_unstable();
-        let faults = kept.iter().filter_map(|i| data.faults.get(*i).copied()).collect();
+        let faults = kept.iter().filter_map(|i| data.faults.get(*i).map(plain)).collect();
         let rest: Vec<&SlipOutcome> = rest.iter().filter_map(|i| all.get(*i)).collect();
         let count = |state: FaultState| rest.iter().filter(|o| o.state() == state).count();
         let left_out = LeftOut {
@@ -125,6 +132,13 @@ fn order(outcomes: &[SlipOutcome], pore: Pressure) -> Vec<usize> {
     let mut places: Vec<usize> = (0..outcomes.len()).collect();
     places.sort_by(|a, b| margin(a).total_cmp(&margin(b)));
     places
+}
+
+impl RankedInputs {
+    /// The site that corrected the strikes, with one of them.
+    pub(super) fn corrected(&self) -> Option<(Site, Azimuth)> {
+        Some((self.site?, self.faults.first()?.plane.strike))
+    }
 }
 
 impl RankedFaults {
@@ -233,16 +247,10 @@ impl Explain for RankedFaults {
     }
 
     fn upstream(&self) -> Vec<Card> {
-        let mut cards = self.inputs.stress.upstream_with_own();
-        // Planes of one site share its correction: its card stands once. The strikes are the file's own.
-        for fault in &self.inputs.faults {
-            let strike = fault.plane.strike;
-            if let Some(card) = strike.site().and_then(|site| site.correction_card(strike.north()))
-                && !cards.contains(&card)
-            {
-                cards.push(card);
-            }
-        }
+        let mut cards = self.inputs.stress.upstream();
+        cards.extend(self.inputs.stress.stated());
+        let corrected = self.inputs.corrected();
+        cards.extend(corrected.and_then(|(site, strike)| site.correction_card(strike.north())));
         cards
     }
 }

@@ -8,7 +8,7 @@ use super::slip_card::{below_pore, method, steps as worked};
 use crate::card::{Column, Explain, Explanation, Figure, Item, Projection, Role, Step, Table};
 use crate::frames::net::Net;
 use crate::frames::vector::{V3, dot, wrap};
-use crate::frames::{Azimuth, North, bearing_item, three_figures};
+use crate::frames::{Azimuth, North, bearing_item, correction_item, few_decimals, three_figures};
 use crate::units::{Pressure, Quantity, as_typed, fixed, with_typed_unit};
 
 /// A card prints no more rows than this.
@@ -29,13 +29,17 @@ pub(super) fn explain(ranked: &RankedFaults, inputs: &RankedInputs) -> Explanati
             with_typed_unit(inputs.pore)
         ),
         headline: headline(ranked, &rows),
-        inputs: vec![
-            inputs.stress.item("S", "stress in north, east, down"),
-            item(&inputs.source, &inputs.faults),
-            Item::typed("P_p", "pore pressure", inputs.pore),
-            Item::typed("μ", "coefficient of friction of the planes", strength.friction),
-            Item::typed("C", "cohesion of the planes", strength.cohesion),
-        ],
+        inputs: [
+            Some(inputs.stress.item("S", "stress in north, east, down")),
+            Some(item(&inputs.source, &inputs.faults)),
+            inputs.corrected().and_then(|(_, strike)| strike.correction().map(|c| correction_item(strike.north(), c))),
+            Some(Item::typed("P_p", "pore pressure", inputs.pore)),
+            Some(Item::typed("μ", "coefficient of friction of the planes", strength.friction)),
+            Some(Item::typed("C", "cohesion of the planes", strength.cohesion)),
+        ]
+        .into_iter()
+        .flatten()
+        .collect(),
         results: results(&rows),
         method: method(
             "On every plane the traction is split into normal and shear stress and held against the strength; the planes are ordered by the pore pressure that each lacks to slip or open. By hand: any row, by the lines that are worked out for the first.",
@@ -94,7 +98,9 @@ fn results(rows: &[RankedFault]) -> Vec<Item> {
 fn notes(ranked: &RankedFaults, inputs: &RankedInputs, rows: &[RankedFault]) -> Vec<String> {
     let mut notes: Vec<String> = inputs.strength.doubt().into_iter().collect();
     notes.extend(below_pore(&inputs.stress, inputs.pore));
-    notes.extend(corrected(rows));
+    if inputs.corrected().is_none() {
+        notes.extend(corrected(rows));
+    }
     let (slipping, open, all) = (ranked.slipping(), ranked.open(), ranked.planes());
     let pore = with_typed_unit(inputs.pore);
     if slipping + open > 0 {
@@ -112,6 +118,14 @@ fn notes(ranked: &RankedFaults, inputs: &RankedInputs, rows: &[RankedFault]) -> 
             left_out.slipping,
             left_out.open,
             left_out.least_margin
+        ));
+    }
+    if let Some((site, strike)) = inputs.corrected() {
+        notes.push(format!(
+            "The strikes were measured from {}; {}° was added to each, the correction of {}.",
+            strike.north().words(),
+            few_decimals(strike.correction().unwrap_or_default(), 4),
+            site.words()
         ));
     }
     let own = rows.iter().filter(|r| r.fault.has_own_strength()).count();
@@ -149,10 +163,9 @@ fn corrected(rows: &[RankedFault]) -> Option<String> {
         North::Magnetic => ("magnetic north", "declination"),
         _ => ("grid north", "convergence"),
     };
-    let by = if first.site().is_some() { "of the site" } else { "as the file or the notebook states it" };
     let which = if same { "The strikes were" } else { "Some of the strikes were" };
     Some(format!(
-        "{which} stated from {north}: the true strike is the stated one + ({}°), the {what} {by}. {} was stated as {}°.",
+        "{which} stated from {north}: the true strike is the stated one + ({}°), the {what} as the file or the notebook states it. {} was stated as {}°.",
         as_typed(correction.in_deg()),
         rows.first()?.fault.name,
         as_typed(rows.first()?.fault.plane.strike.measured().in_deg())

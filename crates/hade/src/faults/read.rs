@@ -4,233 +4,155 @@ use std::collections::HashMap;
 use std::io::Read;
 use std::path::Path;
 
-use super::read_header::{Declarations, Header};
 use super::set::{Fault, FaultSet, FaultSource, MOST_PLANES, require_name};
-use crate::error::{Error, Result};
-use crate::frames::{Name, Plane};
-use crate::lines::{Lines, number, shown};
+use crate::error::Result;
+use crate::frames::{DeclaredNorth, NORTH_KEYS, Name, Plane, Site};
+use crate::lines::{Column, Expected, Lines, Row, Table, Unit, Units, reason, shown};
 use crate::units::{Angle, Pressure};
 
+const EXPECTED: Expected = Expected {
+    keys: &[&NORTH_KEYS, &["angle_unit", "cohesion_unit"]],
+    file: "a table of planes with columns name, strike, dip",
+    names: "name, strike (or dip_direction), dip",
+    units_in_names: false,
+    rows: ["plane", "planes"],
+    most: MOST_PLANES,
+    fewer: "keep the planes near the place of interest",
+};
+
+const COHESIONS: Units<Pressure> = Units {
+    key: "cohesion_unit",
+    what: "the unit of its cohesions",
+    known: &[("MPa", Pressure::mpa), ("kPa", Pressure::kpa), ("bar", Pressure::bar), ("psi", Pressure::psi)],
+    fix: "write MPa, kPa, bar or psi",
+};
+
 pub(super) fn read_csv(path: &Path) -> Result<FaultSet> {
-    read(Lines::open(path)?)
+    read(Lines::open(path)?, None)
 }
 
-/// The places of the columns, and how many there are.
+impl FaultSet {
+    /// Reads a set of planes as [`FaultSet::read_csv`] does, from a file that names its north as grid
+    /// or magnetic and not how that lies to true north: the site's convergence or declination then
+    /// corrects every strike, and the strikes remember the site. A correction that the file states
+    /// itself goes before the site's.
+    ///
+    /// # Errors
+    /// As [`FaultSet::read_csv`], and when the site has no map grid for grid north, or lies outside
+    /// the years of the magnetic models for magnetic north.
+    pub fn read_csv_at(path: impl AsRef<Path>, site: Site) -> Result<Self> {
+        read(Lines::open(path.as_ref())?, Some(site))
+    }
+}
+
 struct Columns {
-    name: usize,
-    direction: usize,
+    name: Column,
+    direction: Column,
     /// Whether the direction is that of dip.
     of_dip: bool,
-    dip: usize,
-    friction: Option<usize>,
-    cohesion: Option<usize>,
-    count: usize,
+    dip: Column,
+    friction: Option<Column>,
+    cohesion: Option<Column>,
 }
 
-pub(super) fn read<R: Read>(mut lines: Lines<R>) -> Result<FaultSet> {
-    let mut declared = Declarations::default();
-    let mut table: Option<(Columns, Header)> = None;
+/// What the file declares above its table.
+struct Header {
+    north: DeclaredNorth,
+    /// A cohesion from a number in the file's unit, where there are cohesions.
+    cohesion: Option<Unit<Pressure>>,
+}
+
+pub(super) fn read<R: Read>(lines: Lines<R>, site: Option<Site>) -> Result<FaultSet> {
+    let mut table = Table::open(lines, &EXPECTED)?;
+    let columns = columns(&table)?;
+    let header = header(&table, &columns, site)?;
     let mut faults: Vec<Fault> = Vec::new();
     let mut names: HashMap<&'static str, usize> = HashMap::new();
-    let mut any = false;
-    while let Some(text) = lines.line()? {
-        let text = text.trim();
-        any |= !text.is_empty();
-        if text.trim_matches([',', ';', ' ', '\t']).is_empty() {
-            continue;
-        }
-        // A spreadsheet may put a remark into quotation marks when it holds a comma.
-        let bare = text.trim_start_matches('"');
-        if bare.starts_with('#') {
-            // It then ends with one too, before the separators that fill the line up.
-            let bare = bare.trim_end_matches([',', ';']).trim_end_matches('"');
-            declared.take(&lines, bare, table.is_none())?;
-            continue;
-        }
-        let fields = lines.fields(text)?;
-        match &table {
-            None => {
-                let columns = columns(&lines, text, &fields)?;
-                let header = declared.settle(&lines)?;
-                if columns.cohesion.is_some() && header.cohesion.is_none() {
-                    return Err(lines.bad_in(
-                        "cohesion",
-                        "the file does not say the unit of its cohesions",
-                        "add a line \"# cohesion_unit: MPa\" above the column names",
-                    ));
-                }
-                table = Some((columns, header));
-            }
-            Some((columns, header)) => {
-                if faults.len() >= MOST_PLANES {
-                    return Err(lines.bad(
-                        format!("the file holds more than {MOST_PLANES} planes"),
-                        "keep the planes near the place of interest",
-                    ));
-                }
-                let fault = row(&lines, columns, header, &fields, &names)?;
-                names.insert(fault.name.text(), lines.number());
-                faults.push(fault);
-            }
-        }
+    while let Some(row) = table.next_row()? {
+        let fault = fault(&table, &columns, &header, &row, &names)?;
+        names.insert(fault.name.text(), table.line());
+        faults.push(fault);
     }
-    let whole = |why: &str, fix: &str| lines.bad_at(None, None, why, fix);
-    if table.is_none() {
-        return Err(match any {
-            false => whole("the file is empty", "give a table of planes with columns name, strike, dip"),
-            true => whole("the file holds no table", "add the line of column names name,strike,dip and the planes"),
-        });
-    }
-    if faults.is_empty() {
-        return Err(whole("the file holds no plane", "add the planes below the column names"));
-    }
-    let path = lines.path().to_owned();
-    let source = FaultSource::File { path: path.clone(), sha256: lines.sha256() };
-    FaultSet::build(source, faults).map_err(|e| Error::Unreadable {
-        path,
-        line: None,
-        column: None,
-        why: e.to_string().trim_end_matches('.').to_owned(),
-        fix: "correct the file".to_owned(),
-    })
+    let (path, sha256) = table.source();
+    let source = FaultSource::File { path, sha256 };
+    FaultSet::build(source, faults).map_err(|e| table.bad_file(reason(&e), "correct the file"))
 }
 
-fn columns<R: Read>(lines: &Lines<R>, text: &str, fields: &[String]) -> Result<Columns> {
-    if fields.len() == 1 && (text.contains(';') || text.contains('\t')) {
-        return Err(lines.bad(
-            "the columns are not separated by commas",
-            "save the table with commas between columns and points in decimals",
-        ));
-    }
-    let names: Vec<String> = fields.iter().map(|f| f.to_lowercase().replace('_', " ")).collect();
-    let perhaps = |wanted: &[&str]| -> Result<Option<usize>> {
-        let mut found = names.iter().enumerate().filter(|(_, n)| wanted.contains(&n.as_str())).map(|(i, _)| i);
-        match (found.next(), found.next()) {
-            (Some(_), Some(_)) => Err(lines.bad_in(
-                wanted.first().copied().unwrap_or_default(),
-                "two columns have this name",
-                "keep one of them",
-            )),
-            (place, _) => Ok(place),
-        }
-    };
-    let missing = |name: &str| {
-        lines.bad_in(
-            name,
-            format!("the column is missing; there are: {}", shown(&fields.join(", "))),
-            "name the columns name, strike (or dip_direction), dip in the first line that does not begin with #",
-        )
-    };
-    let find = |wanted: &[&str]| -> Result<usize> {
-        perhaps(wanted)?.ok_or_else(|| missing(wanted.first().copied().unwrap_or_default()))
-    };
-    let strike = perhaps(&["strike"])?;
-    let dip_direction = perhaps(&["dip direction", "dip azimuth", "dipdir", "dip dir"])?;
+fn columns<R: Read>(table: &Table<R>) -> Result<Columns> {
+    let strike = table.column_if_any(&["strike"])?;
+    let dip_direction = table.column_if_any(&["dip_direction", "dip_azimuth", "dipdir", "dip_dir"])?;
     let (direction, of_dip) = match (strike, dip_direction) {
-        (Some(place), None) => (place, false),
-        (None, Some(place)) => (place, true),
-        (None, None) => return Err(missing("strike")),
-        (Some(_), Some(_)) => {
-            return Err(lines.bad_in(
-                "dip_direction",
+        (Some(strike), None) => (strike, false),
+        (None, Some(direction)) => (direction, true),
+        (None, None) => return Err(table.missing("strike")),
+        (Some(_), Some(direction)) => {
+            return Err(table.bad_in(
+                &direction,
                 "the file states both strike and dip direction",
                 "keep one of the two columns",
             ));
         }
     };
     Ok(Columns {
-        name: find(&["name", "fault", "plane"])?,
+        name: table.column(&["name", "fault", "plane"])?,
         direction,
         of_dip,
-        dip: find(&["dip"])?,
-        friction: perhaps(&["friction", "mu", "μ"])?,
-        cohesion: perhaps(&["cohesion"])?,
-        count: fields.len(),
+        dip: table.column(&["dip"])?,
+        friction: table.column_if_any(&["friction", "mu", "μ"])?,
+        cohesion: table.column_if_any(&["cohesion"])?,
     })
 }
 
-fn row<R: Read>(
-    lines: &Lines<R>,
-    columns: &Columns,
-    header: &Header,
-    fields: &[String],
-    names: &HashMap<&'static str, usize>,
-) -> Result<Fault> {
-    if fields.len() > columns.count {
-        return Err(lines.bad(
-            format!("the row has {} values for {} columns", fields.len(), columns.count),
-            "write decimals with a point (a decimal comma splits a number in two), and quote texts that hold commas",
+fn header<R: Read>(table: &Table<R>, columns: &Columns, site: Option<Site>) -> Result<Header> {
+    let declared = table.declared();
+    let north = DeclaredNorth::read(declared, site, "strikes", "FaultSet")?;
+    declared.require_degrees()?;
+    let cohesion = declared.unit_if_any(&COHESIONS)?;
+    if let (Some(column), None) = (&columns.cohesion, cohesion) {
+        return Err(table.bad_in(
+            column,
+            "the file does not say the unit of its cohesions",
+            "add a line \"# cohesion_unit: MPa\" above the column names",
         ));
     }
-    let text = |place: usize, name: &str| -> Result<&str> {
-        fields
-            .get(place)
-            .map(String::as_str)
-            .ok_or_else(|| lines.bad_in(name, "the row ends before this column", "fill the value in or remove the row"))
-    };
-    let value = |place: usize, name: &str| -> Result<f64> {
-        number(text(place, name)?).map_err(|(why, fix)| lines.bad_in(name, why, fix))
-    };
-    // A value that may be left out.
-    let own = |place: Option<usize>, name: &str| -> Result<Option<f64>> {
-        match place.and_then(|p| fields.get(p).map(|text| (p, text))) {
-            Some((place, text)) if !text.is_empty() => value(place, name).map(Some),
-            _ => Ok(None),
-        }
-    };
-    let name = text(columns.name, "name")?;
-    require_name(name).map_err(|(why, fix)| lines.bad_in("name", why, fix))?;
+    Ok(Header { north, cohesion })
+}
+
+fn fault<R: Read>(
+    table: &Table<R>,
+    columns: &Columns,
+    header: &Header,
+    row: &Row,
+    names: &HashMap<&'static str, usize>,
+) -> Result<Fault> {
+    let name = table.text(row, &columns.name)?;
+    require_name(name).map_err(|(why, fix)| table.bad_in(&columns.name, why, fix))?;
     if let Some(line) = names.get(name) {
-        return Err(lines.bad_in(
-            "name",
+        return Err(table.bad_in(
+            &columns.name,
             format!("the name \"{}\" stands twice (first in line {line})", shown(name)),
             "give each plane a name of its own",
         ));
     }
-    let direction_name = if columns.of_dip { "dip_direction" } else { "strike" };
-    let direction = value(columns.direction, direction_name)?;
-    if !(-180.0..=360.0).contains(&direction) {
-        return Err(lines.bad_in(
-            direction_name,
-            format!("{direction}° is not between 0° and 360°"),
-            "give it clockwise from north in degrees",
-        ));
-    }
-    let dip = value(columns.dip, "dip")?;
-    if !(0.0..=90.0).contains(&dip) {
-        return Err(lines.bad_in(
-            "dip",
-            format!("{dip}° is not between 0° and 90°"),
-            "give the dip below horizontal in degrees; a plane that dips to the left of its strike has the strike's other end",
-        ));
-    }
-    let friction = own(columns.friction, "friction")?;
-    if let Some(friction) = friction.filter(|f| *f <= 0.0) {
-        return Err(lines.bad_in(
-            "friction",
-            format!("{friction} is not greater than zero"),
-            "give the coefficient of friction, or leave it empty to use the one stated for the set",
-        ));
-    }
-    let cohesion = own(columns.cohesion, "cohesion")?;
-    if let Some(cohesion) = cohesion.filter(|c| *c < 0.0) {
-        return Err(lines.bad_in(
-            "cohesion",
-            format!("{cohesion} is negative"),
-            "give zero or more, or leave it empty to use the one stated for the set",
-        ));
-    }
-    let azimuth = header
-        .azimuth(direction)
-        .map_err(|e| lines.bad_in(direction_name, e.to_string(), "correct the declarations"))?;
+    let azimuth = header.north.azimuth_in(table, row, &columns.direction)?;
     let strike = if columns.of_dip { azimuth.turned_by(Angle::deg(-90.0)) } else { azimuth };
+    let fix = "give the dip below horizontal in degrees; a plane that dips to the left of its strike has the strike's other end";
+    let dip = Angle::deg(table.degrees(row, &columns.dip, [0.0, 90.0], fix)?);
+    let own = |column: &Option<Column>, wrong: fn(f64) -> bool, why: &str, fix: &str| {
+        let value = table.number_if_any(row, column.as_ref())?;
+        match (column, value.filter(|v| wrong(*v))) {
+            (Some(column), Some(value)) => Err(table.bad_in(
+                column,
+                format!("{value} is {why}"),
+                format!("give {fix}, or leave it empty to use the one stated for the set"),
+            )),
+            _ => Ok(value),
+        }
+    };
+    let friction = own(&columns.friction, |f| f <= 0.0, "not greater than zero", "the coefficient of friction")?;
+    let cohesion = own(&columns.cohesion, |c| c < 0.0, "negative", "zero or more")?;
     let unit = header.cohesion.unwrap_or(Pressure::mpa);
-    Ok(Fault {
-        name: Name::new(name),
-        plane: Plane { strike, dip: Angle::deg(dip) },
-        friction,
-        cohesion: cohesion.map(unit),
-    })
+    Ok(Fault { name: Name::new(name), plane: Plane { strike, dip }, friction, cohesion: cohesion.map(unit) })
 }
 
 #[cfg(test)]
@@ -243,7 +165,10 @@ mod tests {
     const GOOD: &str = "name,strike,dip\nF-1,40,60\nF-2,215.5,65\n";
 
     fn parse(text: &str) -> Result<FaultSet> {
-        read(Lines::over(text.as_bytes(), "f.csv"))
+        read(Lines::over(text.as_bytes(), "f.csv"), None)
+    }
+    fn parse_at(text: &str, site: Site) -> Result<FaultSet> {
+        read(Lines::over(text.as_bytes(), "f.csv"), Some(site))
     }
     fn with_header(table: &str) -> Result<FaultSet> {
         parse(&format!("{HEADER}{table}"))
@@ -290,6 +215,69 @@ mod tests {
         assert!(said("# north: grid, declination: 2.5").contains("state the convergence"));
         assert!(said("# north: grid, convergence: 2\n# north_correction: 2").contains("keep one of the two"));
         assert!(said("# north: true, declination: 2").contains("need no correction"));
+    }
+
+    #[test]
+    fn a_site_gives_the_correction_that_the_file_does_not() {
+        use crate::card::Explain;
+        use crate::faults::FaultStrength;
+        use crate::stress::{Horizontals, Stress};
+        let site = Site::at(57.2.deg(), 1.8.deg(), "2026-05-01").unwrap();
+        let on_grid = site.with_utm(31).unwrap();
+        let bare = format!("{HEADER}{GOOD}").replace("# north_correction: -1.5\n", "");
+        assert!(refused(&bare).contains("FaultSet::read_csv_at(path, site)?"), "{}", refused(&bare));
+        let first = |set: &FaultSet| set.faults()[0].plane.strike.true_north().unwrap().in_deg() - 40.0;
+        let by_grid = parse_at(&bare, on_grid).unwrap();
+        assert!((first(&by_grid) - on_grid.convergence().unwrap().angle.in_deg()).abs() < 1e-12);
+        let magnetic = bare.replace("north: grid", "north: magnetic");
+        let by_needle = parse_at(&magnetic, site).unwrap();
+        assert!((first(&by_needle) - site.declination().unwrap().angle.in_deg()).abs() < 1e-12);
+        let of_dip = parse_at(&magnetic.replace("strike", "dip_direction").replace(",40,", ",130,"), site).unwrap();
+        assert!((first(&of_dip) - first(&by_needle)).abs() < 1e-12);
+        // A strike remembers the site, so that a card on one plane stands on the site's card too.
+        let stress = Stress::from_horizontals(Horizontals {
+            sv: 66.9.mpa(),
+            sh_max: 58.2.mpa(),
+            sh_min: 47.1.mpa(),
+            sh_max_azimuth: crate::frames::Azimuth::from_true_north(35.deg()),
+        })
+        .unwrap();
+        let strength = FaultStrength { friction: 0.6, cohesion: 0.mpa() };
+        let alone = stress.slip_on(by_needle.faults()[0].plane, strength, 31.mpa()).unwrap();
+        let kinds: Vec<String> = alone.upstream().into_iter().map(|c| c.kind).collect();
+        assert!(kinds.ends_with(&["magnetic-declination".to_owned(), "azimuth-to-true-north".to_owned()]), "{kinds:?}");
+        // The card of the ranking takes the correction from the site's, and is computed again from its record.
+        for (set, kind) in [(&by_needle, "magnetic-declination"), (&by_grid, "grid-convergence")] {
+            let ranked = set.ranked(&stress, strength, 31.mpa()).unwrap();
+            let (card, upstream) = (ranked.card(), ranked.upstream());
+            let above = upstream.last().unwrap();
+            assert_eq!(above.kind, kind);
+            let taken = card.explanation.inputs.iter().any(|i| i.same_value(&above.explanation.results[0]));
+            assert!(taken, "{:#?}", card.explanation.inputs);
+            assert!(card.passed() && crate::replay::replay(&card).unwrap().agrees());
+            let said = card.explanation.notes.join(" ");
+            assert!(said.contains("the correction of 57.2° N, 1.8° E on 2026-05-01"), "{said}");
+        }
+        // The file's own correction goes first, and true north needs none.
+        let own = parse_at(&format!("{HEADER}{GOOD}"), on_grid).unwrap();
+        assert_eq!(own, parse(&format!("{HEADER}{GOOD}")).unwrap());
+        let plain = own.ranked(&stress, strength, 31.mpa()).unwrap();
+        assert!(plain.upstream().iter().all(|c| c.kind != "grid-convergence"));
+        let straight = bare.replace("north: grid", "north: true");
+        assert_eq!(parse_at(&straight, site).unwrap(), parse(&straight).unwrap());
+        // A site that cannot say it is refused with file and line.
+        let e = parse_at(&bare, site).unwrap_err().to_string();
+        assert!(e.starts_with("f.csv, line 1, column \"north\": The site") && e.contains("with_utm(31)"), "{e}");
+        let late = Site::at(57.2.deg(), 1.8.deg(), "2035-05-01").unwrap();
+        assert!(parse_at(&magnetic, late).unwrap_err().to_string().contains("WMM2025"));
+        // The record of many planes holds the site once.
+        let many: String = (0..400).map(|k| format!("F{k},{},{}\n", k % 360, k % 91)).collect();
+        let set = parse_at(&magnetic.replace("F-1,40,60\n", &many), on_grid).unwrap();
+        let sites = |set: &FaultSet| {
+            let record = set.ranked(&stress, strength, 31.mpa()).unwrap().card().inputs.text();
+            record.matches("latitude").count()
+        };
+        assert!(sites(&set) > 0 && sites(&set) == sites(&by_grid));
     }
 
     #[test]
@@ -377,7 +365,7 @@ mod tests {
     proptest! {
         #[test]
         fn never_panics_on_any_bytes(bytes in proptest::collection::vec(any::<u8>(), 0..2000)) {
-            let _ = read(Lines::over(bytes.as_slice(), "x"));
+            let _ = read(Lines::over(bytes.as_slice(), "x"), None);
         }
 
         #[test]

@@ -9,7 +9,7 @@ use serde::{Deserialize, Serialize};
 use super::strength::{FaultStrength, require_friction};
 use crate::card::Item;
 use crate::error::{Error, Result};
-use crate::frames::{Name, Plane};
+use crate::frames::{Name, Plane, Site};
 use crate::sheet::IntoGiven;
 use crate::units::{Pressure, Quantity, require_not_negative};
 
@@ -68,6 +68,11 @@ impl Fault {
         }
     }
 
+    /// With a strike that does not remember the site that corrected it.
+    pub(super) fn without_site(self) -> Self {
+        Fault { plane: Plane { strike: self.plane.strike.without_site(), ..self.plane }, ..self }
+    }
+
     /// Whether it brings its own friction or cohesion.
     pub(super) fn has_own_strength(&self) -> bool {
         self.friction.is_some() || self.cohesion.is_some()
@@ -102,7 +107,8 @@ impl FaultSet {
     /// ```
     ///
     /// The correction may stand on the line of the north: `# north: magnetic, declination: 2.5`,
-    /// `# north: grid, convergence: -1.32`. Strike by the right-hand rule: the plane dips to its
+    /// `# north: grid, convergence: -1.32`; where the file does not state it, [`FaultSet::read_csv_at`]
+    /// takes it from a site. Strike by the right-hand rule: the plane dips to its
     /// right. Where friction or cohesion is left empty, the strength stated for the set counts.
     /// Further columns are ignored. Read line by line; at most 100 000 planes.
     ///
@@ -198,6 +204,11 @@ pub(super) fn item(source: &FaultSource, faults: &[Fault]) -> Item {
         FaultSource::File { path, sha256 } => Item::file("planes", path.clone(), sha256.clone()),
         FaultSource::Typed => planes_item("F", "planes", faults),
     }
+}
+
+/// The site that corrected the strikes of a file, when the file does not state their correction.
+pub(super) fn corrected_at(source: &FaultSource, faults: &[Fault]) -> Option<Site> {
+    faults.first().filter(|_| *source != FaultSource::Typed)?.plane.strike.site()
 }
 
 /// Every plane as one value: true strike, dip.

@@ -12,6 +12,8 @@ mod las_header;
 mod overburden;
 mod overburden_card;
 mod profile;
+#[cfg(test)]
+mod readers_alike;
 mod reduce;
 
 pub use column::DensityColumn;

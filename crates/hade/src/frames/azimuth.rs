@@ -105,6 +105,16 @@ impl Azimuth {
         Azimuth { correction: Some(correction), site: Some(SiteRef::new(site)), ..self }
     }
 
+    /// Another angle measured from the same north, with the same correction.
+    pub(super) fn with_measured(self, measured: Angle) -> Self {
+        Azimuth { measured, ..self }
+    }
+
+    /// The same direction by the same correction, which is remembered elsewhere to be a site's.
+    pub(crate) fn without_site(self) -> Self {
+        Azimuth { site: None, ..self }
+    }
+
     /// The direction at right angles to it, as a line by its end in 0–180° (in a vertical hole,
     /// S_Hmax from the azimuth of breakouts).
     pub fn perpendicular(self) -> Self {

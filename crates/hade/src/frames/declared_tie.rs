@@ -1,28 +1,21 @@
 //! The levels of a hole as a file declares them above its table.
 
-use std::io::Read;
-
 use super::DatumTie;
 use crate::error::{Error, Result};
-use crate::lines::{Declarations, Lines};
+use crate::lines::{Declarations, reason};
 
-/// The levels that `rotary_table_above_msl`, `ground_above_msl` and `mudline_above_msl` state; none
-/// when the file has none of the three. `lines` stands at the column names.
-pub(crate) fn declared_tie<R: Read>(declared: &Declarations, lines: &Lines<R>) -> Result<Option<DatumTie>> {
-    let place = |key: &str, e: Error| {
-        lines.bad_at(
-            declared.get(key).map(|(line, _)| line),
-            Some(key),
-            e.to_string().trim_end_matches('.'),
-            "correct the elevation",
-        )
-    };
-    let ground = declared.length(lines, "ground_above_msl")?;
-    let mudline = declared.length(lines, "mudline_above_msl")?;
-    let Some(rotary) = declared.length(lines, "rotary_table_above_msl")? else {
+/// The keys that declare a level.
+pub(crate) const LEVEL_KEYS: [&str; 3] = ["rotary_table_above_msl", "ground_above_msl", "mudline_above_msl"];
+
+/// The levels that a file states; none when it has none of the three keys.
+pub(crate) fn declared_tie(declared: &Declarations) -> Result<Option<DatumTie>> {
+    let place = |key: &str, e: Error| declared.bad(key, reason(&e), "correct the elevation");
+    let ground = declared.length("ground_above_msl")?;
+    let mudline = declared.length("mudline_above_msl")?;
+    let Some(rotary) = declared.length("rotary_table_above_msl")? else {
         return match (ground, mudline) {
             (None, None) => Ok(None),
-            _ => Err(lines.bad(
+            _ => Err(declared.bad_together(
                 "the file states the level of the ground or mudline and not of the rotary table",
                 "add a line \"# rotary_table_above_msl: … m\" above the column names",
             )),

@@ -285,6 +285,16 @@ fn stated(what: &str, angle: Angle, source: &str) -> Result<Stated> {
     Ok(Stated { angle, source: Name::new(source) })
 }
 
+/// The correction that a site gives for a north, as an input of a card that takes it from the site's.
+pub(crate) fn correction_item(north: North, correction: Angle) -> Item {
+    let (symbol, name) = match north {
+        North::Grid => ("γ", "grid convergence of the site, east positive"),
+        _ => ("D", "magnetic declination of the site, east positive"),
+    };
+    let shown = format!("{}°", few_decimals(correction, 4));
+    Item::new(symbol, name, Angle::KIND, vec![correction.si()], shown)
+}
+
 /// A longitude within ±180°, in radians.
 pub(super) fn within_half_turn(angle: f64) -> f64 {
     let wrapped = super::vector::wrap(angle);

@@ -6,34 +6,47 @@ use std::path::Path;
 use super::law::{Law, Point, require_point};
 use super::pressure_profile::{PressureProfile, ProfileSource};
 use crate::error::{Error, Result};
-use crate::frames::{Datum, Name, declared_tie};
-use crate::lines::{Declarations, Lines, fields, number, shown};
+use crate::frames::{Datum, LEVEL_KEYS, Name, declared_tie};
+use crate::lines::{Column, Declarations, Expected, Lines, Row, Table, Unit, Units, heading, reason, shown};
 use crate::units::{Length, Pressure};
 
-/// The keys that mean something; every other `#` line is a remark.
-const KEYS: [&str; 8] = [
-    "hole",
-    "datum",
-    "depth_datum",
-    "depth_unit",
-    "pressure_unit",
-    "rotary_table_above_msl",
-    "ground_above_msl",
-    "mudline_above_msl",
-];
 /// More rows than this are no table of pressures but a log.
 const MOST_ROWS: usize = 100_000;
 
-/// Makes a quantity of a number in the unit of the file.
-type Unit<Q> = fn(f64) -> Q;
+const EXPECTED: Expected = Expected {
+    keys: &[&["hole", "datum", "depth_datum", "depth_unit", "pressure_unit"], &LEVEL_KEYS],
+    file: "a table with the columns tvd and pressure",
+    names: "tvd, pressure",
+    units_in_names: true,
+    rows: ["row", "rows"],
+    most: MOST_ROWS,
+    fewer: "keep a row every few metres; straight lines run between them",
+};
+
+const DEPTHS: Units<Length> = Units {
+    key: "depth_unit",
+    what: "its depth unit",
+    known: &[("m", Length::m), ("ft", Length::ft)],
+    fix: "write m or ft",
+};
+
+const PRESSURES: Units<Pressure> = Units {
+    key: "pressure_unit",
+    what: "its pressure unit",
+    known: &[
+        ("MPa", Pressure::mpa),
+        ("kPa", Pressure::kpa),
+        ("Pa", Pressure::pa),
+        ("bar", Pressure::bar),
+        ("psi", Pressure::psi),
+    ],
+    fix: "write one of MPa, kPa, Pa, bar, psi",
+};
 
 /// The two columns that are read, and what their numbers are.
 struct Columns {
-    depth: usize,
-    pressure: usize,
-    /// The column names as messages show them.
-    names: [String; 2],
-    count: usize,
+    depth: Column,
+    pressure: Column,
     depth_unit: Unit<Length>,
     pressure_unit: Unit<Pressure>,
     datum: Datum,
@@ -43,227 +56,80 @@ pub(super) fn read_csv(path: &Path, column: &str) -> Result<PressureProfile> {
     read(Lines::open(path)?, column)
 }
 
-pub(super) fn read<R: Read>(mut lines: Lines<R>, column: &str) -> Result<PressureProfile> {
-    let mut declared = Declarations::of(&KEYS);
-    let mut table: Option<Columns> = None;
-    let mut tie = None;
+pub(super) fn read<R: Read>(lines: Lines<R>, column: &str) -> Result<PressureProfile> {
+    let mut table = Table::open(lines, &EXPECTED)?;
+    let columns = columns(&table, column)?;
+    let tie = declared_tie(table.declared())?;
     let mut points: Vec<Point> = Vec::new();
-    let mut any = false;
-    while let Some(text) = lines.line()? {
-        let text = text.trim();
-        any |= !text.is_empty();
-        if text.trim_matches([',', ';', ' ', '\t']).is_empty() {
-            continue;
-        }
-        // A spreadsheet may put a remark into quotation marks when it holds a comma.
-        let bare = text.trim_start_matches('"');
-        if bare.starts_with('#') {
-            declared.take(&lines, bare.trim_end_matches('"'), table.is_none())?;
-            continue;
-        }
-        let fields = fields(&lines, text)?;
-        let Some(columns) = &table else {
-            table = Some(columns(&lines, &declared, text, &fields, column)?);
-            tie = declared_tie(&declared, &lines)?;
-            continue;
-        };
-        if points.len() >= MOST_ROWS {
-            return Err(lines.bad(
-                format!("the file holds more than {MOST_ROWS} rows"),
-                "keep a row every few metres; straight lines run between them",
-            ));
-        }
-        points.push(row(&lines, columns, &fields, points.last())?);
+    while let Some(row) = table.next_row()? {
+        points.push(point(&table, &columns, &row, points.last())?);
     }
-    let whole = |why: &str, fix: &str| lines.bad_at(None, None, why, fix);
-    let columns = match table {
-        Some(columns) => columns,
-        None if any => return Err(whole("the file holds no table", "add the line of column names and the rows")),
-        None => return Err(whole("the file is empty", "give a table with the columns tvd and pressure")),
-    };
     if points.len() < 2 {
-        return Err(whole(
-            &format!("the table has {} rows, and a line needs two", points.len()),
+        return Err(table.bad_file(
+            format!("the table has {} rows, and a line needs two", points.len()),
             "add the rows down to the depth of interest",
         ));
     }
-    let hole = declared.get("hole").map(|(_, name)| Name::new(&shown(name)));
-    let (path, [_, name]) = (lines.path().to_owned(), columns.names);
-    let source = ProfileSource::File { path, sha256: lines.sha256(), column: name };
+    let hole = table.declared().get("hole").map(|name| Name::new(&shown(name)));
+    let (path, sha256) = table.source();
+    let source = ProfileSource::File { path, sha256, column: columns.pressure.name };
     Ok(PressureProfile::from_file(Law::table(columns.datum, points)?, column, hole, tie, source))
 }
 
-/// A column name without its unit, and the unit: "SHmin (psi)" → "shmin", "psi".
-fn heading(text: &str) -> (String, Option<String>) {
-    let text = text.trim();
-    let open = text.find(['(', '[']);
-    let unit = open.and_then(|at| text.get(at + 1..)).and_then(|rest| rest.strip_suffix([')', ']']));
-    let name = match (open, unit) {
-        (Some(at), Some(_)) => text.get(..at).unwrap_or(text),
-        _ => text,
-    };
-    (name.trim().to_lowercase().replace('_', " "), unit.map(|u| u.trim().to_owned()))
-}
-
-fn columns<R: Read>(
-    lines: &Lines<R>,
-    declared: &Declarations,
-    text: &str,
-    fields: &[String],
-    column: &str,
-) -> Result<Columns> {
-    if fields.len() == 1 && (text.contains(';') || text.contains('\t')) {
-        return Err(lines.bad(
-            "the columns are not separated by commas",
-            "save the table with commas between columns and points in decimals",
-        ));
-    }
-    let headings: Vec<(String, Option<String>)> = fields.iter().map(|f| heading(f)).collect();
-    let find = |wanted: &[&str], fix: String| -> Result<usize> {
-        let name = wanted.first().copied().unwrap_or_default();
-        let mut found = headings.iter().enumerate().filter(|(_, (n, _))| wanted.contains(&n.as_str())).map(|(i, _)| i);
-        match (found.next(), found.next()) {
-            (Some(place), None) => Ok(place),
-            (Some(_), Some(_)) => Err(lines.bad_in(name, "two columns have this name", "keep one of them")),
-            (None, _) => {
-                let why = format!("the column is missing; there are: {}", shown(&fields.join(", ")));
-                Err(lines.bad_in(name, why, fix))
-            }
-        }
-    };
-    let wanted = heading(column).0;
-    let depth = find(
+fn columns<R: Read>(table: &Table<R>, column: &str) -> Result<Columns> {
+    let depth = table.column_or(
         &["tvd", "true vertical depth", "tvdss"],
-        "name the column of true vertical depths tvd (measured depths are converted with a survey first)".to_owned(),
+        "name the column of true vertical depths tvd (measured depths are converted with a survey first)",
     )?;
-    let pressure = find(&[wanted.as_str()], "ask for one of the columns of the file".to_owned())?;
-    let datum = datum(lines, declared)?;
-    let is_subsea = headings.get(depth).is_some_and(|(name, _)| name == "tvdss");
-    if is_subsea && datum != Datum::MeanSeaLevel {
-        return Err(lines.bad_in(
-            "tvdss",
+    let pressure = table.column_or(&[&heading(column).0], "ask for one of the columns of the file")?;
+    let declared = table.declared();
+    let datum = datum(declared)?;
+    if table.is_named(&depth, "tvdss") && datum != Datum::MeanSeaLevel {
+        return Err(table.bad_in(
+            &depth,
             format!("the name says depths below mean sea level, and the file declares {}", datum.words()),
             "name the column tvd, or correct the datum",
         ));
     }
-    let unit_of = |place: usize| headings.get(place).and_then(|(_, unit)| unit.as_deref());
-    let name_of = |place: usize| fields.get(place).map(|f| shown(f)).unwrap_or_default();
     Ok(Columns {
+        depth_unit: declared.unit(&DEPTHS, table.unit_in_name(&depth))?,
+        pressure_unit: declared.unit(&PRESSURES, table.unit_in_name(&pressure))?,
         depth,
         pressure,
-        names: [name_of(depth), name_of(pressure)],
-        count: fields.len(),
-        depth_unit: unit(lines, declared, "depth_unit", "m | ft", unit_of(depth), length_unit)?,
-        pressure_unit: unit(
-            lines,
-            declared,
-            "pressure_unit",
-            "MPa | kPa | Pa | bar | psi",
-            unit_of(pressure),
-            pressure_unit,
-        )?,
         datum,
     })
 }
 
-fn length_unit(text: &str) -> Option<Unit<Length>> {
-    match text.to_lowercase().as_str() {
-        "m" => Some(Length::m),
-        "ft" => Some(Length::ft),
-        _ => None,
-    }
-}
-
-fn pressure_unit(text: &str) -> Option<Unit<Pressure>> {
-    match text.to_lowercase().as_str() {
-        "mpa" => Some(Pressure::mpa),
-        "kpa" => Some(Pressure::kpa),
-        "pa" => Some(Pressure::pa),
-        "bar" => Some(Pressure::bar),
-        "psi" => Some(Pressure::psi),
-        _ => None,
-    }
-}
-
-/// The unit of a column: from its name, or declared for the file; the two must not differ.
-fn unit<R: Read, Q>(
-    lines: &Lines<R>,
-    declared: &Declarations,
-    key: &'static str,
-    known: &str,
-    in_name: Option<&str>,
-    of: fn(&str) -> Option<Unit<Q>>,
-) -> Result<Unit<Q>> {
-    let choose = known.replace(" |", ",");
-    let read = |line: usize, text: &str| {
-        of(text).ok_or_else(|| {
-            let why = format!("\"{}\" is no unit that is known here", shown(text));
-            lines.bad_at(Some(line), Some(key), why, format!("write one of {choose}"))
-        })
-    };
-    match (in_name, declared.get(key)) {
-        (None, None) => Err(lines.bad(
-            format!("the file does not say its {}", key.replace('_', " ")),
-            format!("add a line \"# {key}: {known}\" above the column names"),
-        )),
-        (Some(name), Some((line, text))) if !name.eq_ignore_ascii_case(text) => Err(lines.bad_at(
-            Some(line),
-            Some(key),
-            format!("\"{}\" is declared, and the column name says \"{}\"", shown(text), shown(name)),
-            "keep one of the two",
-        )),
-        (_, Some((line, text))) => read(line, text),
-        (Some(name), None) => read(lines.number(), name),
-    }
-}
-
-fn datum<R: Read>(lines: &Lines<R>, declared: &Declarations) -> Result<Datum> {
+fn datum(declared: &Declarations) -> Result<Datum> {
     let words = "rotary table, mean sea level, ground or mudline";
-    let stated = [("datum", declared.get("datum")), ("depth_datum", declared.get("depth_datum"))];
     let mut found: Option<Datum> = None;
-    for (key, entry) in stated {
-        let Some((line, text)) = entry else { continue };
-        let bad = |why: String, fix: &str| Err(lines.bad_at(Some(line), Some(key), why, fix));
-        match (Datum::from_words(text), found) {
-            (None, _) => {
-                return bad(format!("\"{}\" is no datum that is known here", shown(text)), &format!("write {words}"));
-            }
-            (Some(here), Some(other)) if here != other => {
-                return bad(format!("it says {}, and \"datum\" says {}", here.words(), other.words()), "keep one");
-            }
-            (here, _) => found = here,
+    for key in ["datum", "depth_datum"] {
+        let Some(text) = declared.get(key) else { continue };
+        let Some(here) = Datum::from_words(text) else {
+            let why = format!("\"{}\" is no datum that is known here", shown(text));
+            return Err(declared.bad(key, why, format!("write {words}")));
+        };
+        if let Some(other) = found.filter(|other| *other != here) {
+            let why = format!("it says {}, and \"datum\" says {}", here.words(), other.words());
+            return Err(declared.bad(key, why, "keep one"));
         }
+        found = Some(here);
     }
     found.ok_or_else(|| {
-        lines.bad(
+        declared.bad_together(
             "the file does not say which level its depths count from",
             format!("declare it with a line \"# datum: …\" above the column names: {words}"),
         )
     })
 }
 
-fn row<R: Read>(lines: &Lines<R>, columns: &Columns, fields: &[String], above: Option<&Point>) -> Result<Point> {
-    if fields.len() > columns.count {
-        return Err(lines.bad(
-            format!("the row has {} values for {} columns", fields.len(), columns.count),
-            "write decimals with a point (a decimal comma splits a number in two), and quote texts that hold commas",
-        ));
-    }
-    let [depth, pressure] = &columns.names;
-    let value = |place: usize, name: &str| -> Result<f64> {
-        let Some(text) = fields.get(place) else {
-            return Err(lines.bad_in(name, "the row ends before this column", "fill the value in or remove the row"));
-        };
-        number(text).map_err(|(why, fix)| lines.bad_in(name, why, fix))
-    };
-    let point = (
-        (columns.depth_unit)(value(columns.depth, depth)?),
-        (columns.pressure_unit)(value(columns.pressure, pressure)?),
-    );
+fn point<R: Read>(table: &Table<R>, columns: &Columns, row: &Row, above: Option<&Point>) -> Result<Point> {
+    let Columns { depth, pressure, .. } = columns;
+    let point =
+        ((columns.depth_unit)(table.number(row, depth)?), (columns.pressure_unit)(table.number(row, pressure)?));
     require_point(above.map(|p| p.0), point).map_err(|e| {
-        let name =
-            if matches!(&e, Error::OutOfRange { what, .. } if what.starts_with("pressure")) { pressure } else { depth };
-        lines.bad_in(name, e.to_string().trim_end_matches('.'), "correct the row")
+        let of_pressure = matches!(&e, Error::OutOfRange { what, .. } if what.starts_with("pressure"));
+        table.bad_in(if of_pressure { pressure } else { depth }, reason(&e), "correct the row")
     })
 }
 

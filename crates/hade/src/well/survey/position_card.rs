@@ -6,7 +6,7 @@ use super::survey::{Leg, Survey, SurveySource};
 use super::table::{rows, station_columns};
 use crate::card::{Axis, Explanation, Figure, Formula, Item, Layer, Mark, Method, Reference, Role, Step, Table};
 use crate::frames::vector::{V3, add, wrap};
-use crate::frames::{Datum, North, bearing_item, few_decimals, three_figures};
+use crate::frames::{Datum, North, bearing_item, correction_item, few_decimals, three_figures};
 use crate::units::{Angle, Length, Quantity, fixed};
 
 /// A card prints no more station rows than this.
@@ -120,11 +120,7 @@ pub(super) fn stated_items(survey: &Survey) -> Vec<Item> {
     if let (Some((_, north)), Some(c)) =
         (survey.corrected_at(), survey.data().stations.first().and_then(|s| s.azimuth.correction()))
     {
-        let (symbol, name) = match north {
-            North::Grid => ("γ", "grid convergence of the site, east positive"),
-            _ => ("D", "magnetic declination of the site, east positive"),
-        };
-        items.push(Item::new(symbol, name, Angle::KIND, vec![c.si()], format!("{}°", few_decimals(c, 4))));
+        items.push(correction_item(north, c));
     }
     if let (Some(level), false) = (level(survey), meta.tie_in_file) {
         items.push(Item::typed("e_RT", "rotary table above mean sea level", level));

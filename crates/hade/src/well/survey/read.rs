@@ -8,8 +8,18 @@ use super::station::{Direct, Station, follows};
 use super::survey::{MOST_STATIONS, Meta, Survey, SurveySource};
 use crate::error::Result;
 use crate::frames::Site;
-use crate::lines::{Declarations, Lines, fields, number, shown};
-use crate::units::Angle;
+use crate::lines::{Column, Expected, Lines, Row, Table, reason};
+use crate::units::{Angle, Length};
+
+const EXPECTED: Expected = Expected {
+    keys: KEYS,
+    file: "a survey with columns md, inclination, azimuth",
+    names: "md, inclination, azimuth",
+    units_in_names: false,
+    rows: ["station", "stations"],
+    most: MOST_STATIONS,
+    fewer: "keep a station every 10 m or so",
+};
 
 pub(super) fn read_csv(path: &Path) -> Result<Survey> {
     read(Lines::open(path)?, None)
@@ -28,167 +38,70 @@ impl Survey {
     }
 }
 
-/// The places of the three columns, and how many columns there are.
 struct Columns {
-    md: usize,
-    inclination: usize,
-    azimuth: usize,
-    count: usize,
+    md: Column,
+    inclination: Column,
+    azimuth: Column,
 }
 
-pub(super) fn read<R: Read>(mut lines: Lines<R>, site: Option<Site>) -> Result<Survey> {
-    let mut declared = Declarations::of(&KEYS);
-    let mut table: Option<(Columns, Header)> = None;
+pub(super) fn read<R: Read>(lines: Lines<R>, site: Option<Site>) -> Result<Survey> {
+    let mut table = Table::open(lines, &EXPECTED)?;
+    let columns = Columns {
+        md: table.column(&["md", "measured depth"])?,
+        inclination: table.column(&["inclination", "incl", "inc"])?,
+        azimuth: table.column(&["azimuth", "azi", "az"])?,
+    };
+    let header = settle(table.declared(), site)?;
     let mut stations: Vec<Station> = Vec::new();
     let mut above: Option<Direct> = None;
-    let mut any = false;
-    while let Some(text) = lines.line()? {
-        let text = text.trim();
-        any |= !text.is_empty();
-        if text.trim_matches([',', ';', ' ', '\t']).is_empty() {
-            continue;
-        }
-        // A spreadsheet may put a remark into quotation marks when it holds a comma.
-        let bare = text.trim_start_matches('"');
-        if bare.starts_with('#') {
-            declared.take(&lines, bare.trim_end_matches('"'), table.is_none())?;
-            continue;
-        }
-        let fields = fields(&lines, text)?;
-        match &table {
-            None => {
-                let columns = columns(&lines, text, &fields)?;
-                table = Some((columns, settle(&declared, &lines, site)?));
-            }
-            Some((columns, header)) => {
-                if stations.len() >= MOST_STATIONS {
-                    return Err(lines.bad(
-                        format!("the file holds more than {MOST_STATIONS} stations"),
-                        "keep a station every 10 m or so",
-                    ));
-                }
-                let station = row(&lines, columns, header, &fields)?;
-                above = Some(join(&lines, above.as_ref(), &station)?);
-                stations.push(station);
-            }
-        }
+    while let Some(row) = table.next_row()? {
+        let station = station(&table, &columns, &header, &row)?;
+        above = Some(join(&table, &columns, above.as_ref(), &station)?);
+        stations.push(station);
     }
-    let whole = |why: &str, fix: &str| lines.bad_at(None, None, why, fix);
-    let Some((_, header)) = table else {
-        return Err(match any {
-            false => whole("the file is empty", "give a survey with columns md, inclination, azimuth"),
-            true => {
-                whole("the file holds no table", "add the line of column names md,inclination,azimuth and the stations")
-            }
-        });
-    };
     match stations.as_slice() {
-        [] => return Err(whole("the file holds no station", "add the stations below the column names")),
         [_] => {
-            return Err(whole(
+            return Err(table.bad_file(
                 "the file holds one station, and a path needs two",
                 "add the stations down to the depth of interest",
             ));
         }
-        [first, ..] if first.md != crate::units::Length::default() && header.tie_in.is_none() => {
-            return Err(whole(
-                &format!("the first station is at measured depth {}, and nothing says where that is", first.md),
+        [first, ..] if first.md != Length::default() && header.tie_in.is_none() => {
+            return Err(table.bad_file(
+                format!("the first station is at measured depth {}, and nothing says where that is", first.md),
                 "begin with a station at measured depth 0, or declare tie_in_north, tie_in_east and tie_in_tvd",
             ));
         }
         _ => {}
     }
-    let (hole, tie, tie_in, site) = (header.hole, header.tie, header.tie_in, header.site);
-    let path = lines.path().to_owned();
-    let source = SurveySource::File { path: path.clone(), sha256: lines.sha256() };
-    Survey::build(stations, Meta { hole, source, tie, tie_in_file: tie.is_some(), tie_in, site }).map_err(|e| {
-        crate::error::Error::Unreadable {
-            path,
-            line: None,
-            column: None,
-            why: e.to_string().trim_end_matches('.').to_owned(),
-            fix: "correct the file".to_owned(),
-        }
-    })
+    let Header { hole, tie, tie_in, .. } = header;
+    let (path, sha256) = table.source();
+    let source = SurveySource::File { path, sha256 };
+    let meta = Meta { hole, source, tie, tie_in_file: tie.is_some(), tie_in, site: header.north.site() };
+    Survey::build(stations, meta).map_err(|e| table.bad_file(reason(&e), "correct the file"))
 }
 
-fn columns<R: Read>(lines: &Lines<R>, text: &str, fields: &[String]) -> Result<Columns> {
-    if fields.len() == 1 && (text.contains(';') || text.contains('\t')) {
-        return Err(lines.bad(
-            "the columns are not separated by commas",
-            "save the table with commas between columns and points in decimals",
-        ));
-    }
-    let names: Vec<String> = fields.iter().map(|f| f.to_lowercase().replace('_', " ")).collect();
-    let find = |wanted: &[&str]| -> Result<usize> {
-        let name = wanted.first().copied().unwrap_or_default();
-        let mut found = names.iter().enumerate().filter(|(_, n)| wanted.contains(&n.as_str())).map(|(i, _)| i);
-        match (found.next(), found.next()) {
-            (Some(place), None) => Ok(place),
-            (Some(_), Some(_)) => Err(lines.bad_in(name, "two columns have this name", "keep one of them")),
-            (None, _) => Err(lines.bad_in(
-                name,
-                format!("the column is missing; there are: {}", shown(&fields.join(", "))),
-                "name the columns md, inclination, azimuth in the first line that does not begin with #",
-            )),
-        }
-    };
-    Ok(Columns {
-        md: find(&["md", "measured depth"])?,
-        inclination: find(&["inclination", "incl", "inc"])?,
-        azimuth: find(&["azimuth", "azi", "az"])?,
-        count: fields.len(),
-    })
-}
-
-fn row<R: Read>(lines: &Lines<R>, columns: &Columns, header: &Header, fields: &[String]) -> Result<Station> {
-    if fields.len() > columns.count {
-        return Err(lines.bad(
-            format!("the row has {} values for {} columns", fields.len(), columns.count),
-            "write decimals with a point (a decimal comma splits a number in two), and quote texts that hold commas",
-        ));
-    }
-    let value = |place: usize, name: &str| -> Result<f64> {
-        let Some(text) = fields.get(place) else {
-            return Err(lines.bad_in(name, "the row ends before this column", "fill the value in or remove the row"));
-        };
-        number(text).map_err(|(why, fix)| lines.bad_in(name, why, fix))
-    };
-    let md = value(columns.md, "md")?;
+fn station<R: Read>(table: &Table<R>, columns: &Columns, header: &Header, row: &Row) -> Result<Station> {
+    let md = table.number(row, &columns.md)?;
     if md < 0.0 {
-        return Err(lines.bad_in(
-            "md",
+        return Err(table.bad_in(
+            &columns.md,
             format!("measured depth {md} is negative"),
             "count it along the hole from the rotary table",
         ));
     }
-    let inclination = value(columns.inclination, "inclination")?;
-    if !(0.0..=180.0).contains(&inclination) {
-        return Err(lines.bad_in(
-            "inclination",
-            format!("{inclination}° is not between 0° and 180°"),
-            "give the inclination from vertical-down in degrees",
-        ));
-    }
-    let azimuth = value(columns.azimuth, "azimuth")?;
-    if !(-180.0..=360.0).contains(&azimuth) {
-        return Err(lines.bad_in(
-            "azimuth",
-            format!("{azimuth}° is not between 0° and 360°"),
-            "give the azimuth clockwise from north in degrees",
-        ));
-    }
-    let azimuth =
-        header.azimuth(azimuth).map_err(|e| lines.bad_in("azimuth", e.to_string(), "correct the declarations"))?;
-    Ok(Station { md: header.depth(md), inclination: Angle::deg(inclination), azimuth })
+    let fix = "give the inclination from vertical-down in degrees";
+    let inclination = table.degrees(row, &columns.inclination, [0.0, 180.0], fix)?;
+    // The survey remembers the site, once for all its stations.
+    let azimuth = header.north.azimuth_in(table, row, &columns.azimuth)?.without_site();
+    Ok(Station { md: (header.depth)(md), inclination: Angle::deg(inclination), azimuth })
 }
 
 /// Holds a station against the one above it.
-fn join<R: Read>(lines: &Lines<R>, above: Option<&Direct>, station: &Station) -> Result<Direct> {
-    let plain = |e: crate::error::Error| lines.bad(e.to_string().trim_end_matches('.'), "correct the row");
-    let here = station.direct().map_err(plain)?;
+fn join<R: Read>(table: &Table<R>, columns: &Columns, above: Option<&Direct>, station: &Station) -> Result<Direct> {
+    let here = station.direct().map_err(|e| table.bad(reason(&e), "correct the row"))?;
     if let Some(above) = above {
-        follows(above, &here).map_err(|(why, fix)| lines.bad_in("md", why, fix))?;
+        follows(above, &here).map_err(|(why, fix)| table.bad_in(&columns.md, why, fix))?;
     }
     Ok(here)
 }
@@ -293,6 +206,27 @@ mod tests {
         assert!(with("# hole: X-1", "# tie_in_tvd: 3 m").contains("tie-in is not whole"));
         assert!(with("32.4 m", "32.4 m\n# ground_above_msl: 50 m").contains("above the rotary table"));
         assert!(refused(&format!("{HEADER}{GOOD}# north: true\n")).contains("below the column names"));
+    }
+
+    #[test]
+    fn the_correction_may_stand_beside_the_north() {
+        let own = "# north: grid\n# north_correction: -1.5";
+        assert!(HEADER.contains(own));
+        let with = |north: &str| parse(&format!("{HEADER}{GOOD}").replace(own, north));
+        let close = |north: &str, want: f64| {
+            let azimuth = with(north).unwrap().stations()[1].azimuth.true_north().unwrap();
+            assert!((azimuth.in_deg() - want).abs() < 1e-12, "{north}");
+        };
+        close("# north: magnetic, declination: 2.5", 122.5);
+        close("\"# north: magnetic, declination: 2.5\",,", 122.5);
+        close("# north: Magnetic north\n# declination: 2.5 deg", 122.5);
+        close("# north: grid, convergence: -1.32,,", 118.68);
+        close("# north: grid, north_correction: -1.32°", 118.68);
+        close("# north: true", 120.0);
+        let said = |north: &str| with(north).unwrap_err().to_string();
+        assert!(said("# north: magnetic, 2.5").contains("does not say what it is"));
+        assert!(said("# north: magnetic, convergence: 2.5").contains("state the declination"));
+        assert!(said("# north: grid, convergence: 2\n# north_correction: 2").contains("keep one of the two"));
     }
 
     #[test]

@@ -114,7 +114,9 @@ impl Survey {
     /// md,inclination,azimuth
     /// ```
     ///
-    /// Where the file does not state its `north_correction`, [`Survey::read_csv_at`] takes it from a site.
+    /// The correction may stand on the line of the north: `# north: magnetic, declination: 2.5`,
+    /// `# north: grid, convergence: -1.32`. Where the file does not state it, [`Survey::read_csv_at`]
+    /// takes it from a site.
     ///
     /// Further columns are ignored. Read line by line; at most 100 000 stations.
     ///
