@@ -24,6 +24,10 @@ use crate::wrapper::PLAN_VAR;
 /// What every session has before its first cell.
 const PRELUDE: &str = "use hade::prelude::*;";
 
+/// From the first `?` on evcxr compiles every cell as a function that returns a `Result`. Met only in a
+/// user's cell, it would also give up showing that cell's value by its own display.
+const QUESTION_MARK: &str = "std::result::Result::<(), std::string::String>::Ok(())?;";
+
 /// Sends on what a cell printed without a line end.
 const FLUSH: &str = "\nstd::io::Write::flush(&mut std::io::stdout()).ok();";
 
@@ -151,7 +155,7 @@ impl Engine {
         };
         let load = format!(
             ":build_env RUSTC_WRAPPER={}\n:build_env {PLAN_VAR}={}\n:build_env CARGO_TERM_QUIET=true\n\
-             :dep hade = {{ path = {} }}\n{PRELUDE}",
+             :dep hade = {{ path = {} }}\n{PRELUDE}\n{QUESTION_MARK}",
             program.display(),
             prepared.plan().display(),
             toml_string(&prepared.library()),
