@@ -1,5 +1,7 @@
 //! What must hold for every input, on random ones: many in a release build, fewer otherwise.
 
+#[path = "invariants/azimuths.rs"]
+mod azimuths;
 #[path = "invariants/datums.rs"]
 mod datums;
 #[path = "invariants/turns.rs"]
