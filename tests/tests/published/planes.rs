@@ -52,15 +52,15 @@ fn espinoza_example_5_10_traction_on_a_strike_slip_fault() {
     assert_printed("S_ee", s.component(Axis::Y, Axis::Y).in_mpa(), "40");
     assert_printed("S_ne", s.component(Axis::X, Axis::Y).in_mpa(), "-8.66");
     let t = s.on(plane(60.0, 90.0)).unwrap();
-    let sign = if t.vector()[0].in_mpa() < 0.0 { 1.0 } else { -1.0 };
-    let [north, east, down] = t.vector().map(|c| sign * c.in_mpa());
+    // The other side's traction is the opposite one.
+    let [north, east, down] = t.vector().map(|c| -c.in_mpa());
     assert_printed("t_n", north, "-30.31");
     assert_printed("t_e", east, "27.5");
-    assert_printed("t_d", down, "0.00");
+    assert_printed("t_d", down.abs(), "0.00");
     assert_printed("Sn", t.normal.in_mpa(), "40");
-    assert_printed("tau_s", t.along_strike.in_mpa().abs(), "8.66");
-    let rake = t.rake.unwrap().in_deg().abs();
-    assert_printed("rake", rake.min(180.0 - rake), "0.0");
+    // Against the strike of 060: right-lateral, as SHmax at 120 has it.
+    assert_printed("tau_s", -t.along_strike.in_mpa(), "8.66");
+    assert_printed("rake", 180.0 - t.rake.unwrap().in_deg(), "0.0");
 }
 
 /// E, Examples 5.3 and 5.4 (effective MPa): principal stresses 13 and 3.8 on a plane dipping 60°

@@ -227,7 +227,10 @@ fn planes_item(symbol: &str, name: &str, faults: &[Fault]) -> Item {
 impl IntoGiven for FaultSet {
     type Value = FaultSet;
     fn into_given(self, symbol: &str, meaning: &str) -> (FaultSet, Item, Option<(f64, String)>) {
-        let item = planes_item(symbol, meaning, &self.data.faults);
+        let item = match &self.data.source {
+            FaultSource::File { .. } => Item { name: meaning.to_owned(), ..item(&self.data.source, &self.data.faults) },
+            FaultSource::Typed => planes_item(symbol, meaning, &self.data.faults),
+        };
         (self, item, None)
     }
 }

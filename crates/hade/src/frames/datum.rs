@@ -101,10 +101,33 @@ impl IntoGiven for Depth {
 /// The levels of one hole, as elevations above mean sea level. The rotary table's is always known;
 /// the ground's (on land) or the mudline's (at sea, negative) only when it was stated.
 #[derive(Clone, Copy, Debug, PartialEq, Serialize, Deserialize)]
+#[serde(try_from = "Levels")]
 pub struct DatumTie {
     rotary_table: Length,
     ground: Option<Length>,
     mudline: Option<Length>,
+}
+
+/// The levels as a record holds them, before they are checked.
+#[derive(Deserialize)]
+struct Levels {
+    rotary_table: Length,
+    ground: Option<Length>,
+    mudline: Option<Length>,
+}
+
+impl TryFrom<Levels> for DatumTie {
+    type Error = Error;
+    fn try_from(levels: Levels) -> Result<Self> {
+        let mut tie = DatumTie::rotary_table_at(levels.rotary_table)?;
+        if let Some(ground) = levels.ground {
+            tie = tie.with_ground_at(ground)?;
+        }
+        if let Some(mudline) = levels.mudline {
+            tie = tie.with_mudline_at(mudline)?;
+        }
+        Ok(tie)
+    }
 }
 
 /// No site lies higher or deeper than this, in metres; beyond it a unit was mistaken.
@@ -236,6 +259,15 @@ mod tests {
         let land = DatumTie::rotary_table_at(432.m()).unwrap().with_ground_at(425.m()).unwrap();
         assert_eq!(land.convert(Depth::below_ground(25.m()), Datum::MeanSeaLevel).unwrap().tvd, (-400).m());
         assert_eq!(land.words(), "rotary table 432.0 m and ground 425.0 m above mean sea level");
+    }
+
+    #[test]
+    fn a_record_with_levels_that_cannot_be_is_not_read() {
+        use crate::card::Data;
+        let tie = DatumTie::rotary_table_at(25.m()).unwrap().with_mudline_at((-300).m()).unwrap();
+        assert_eq!(DatumTie::read(&tie.write()).unwrap(), tie);
+        assert!(DatumTie::read(&tie.write().with_number("/mudline", 500.0)).is_err());
+        assert!(DatumTie::read(&tie.write().with_number("/rotary_table", 99_000.0)).is_err());
     }
 
     #[test]
