@@ -126,9 +126,20 @@ impl ShearWall {
         self.excess(pressure).value(c, s)
     }
 
-    /// The worst place of the wall at a pressure.
+    /// The worst place of the wall at a pressure. Each of the three conditions is smooth round the
+    /// hole; the worst of them can have two hills closer together than a look round would tell.
     pub fn worst(&self, pressure: f64) -> Peak {
-        greatest(&self.excess(pressure), self.scale())
+        let (excess, scale) = (self.excess(pressure), self.scale());
+        let peaks = [Worst::Closing, Worst::Within, Worst::Pushed]
+            .map(|condition| greatest(&Condition { excess: &excess, condition }, scale));
+        let highest = peaks.iter().map(|p| p.value).fold(f64::NEG_INFINITY, f64::max);
+        let [first, ..] = peaks;
+        // Of places that are equally bad the first.
+        peaks
+            .into_iter()
+            .filter(|p| p.value >= highest - 1e-14 * scale)
+            .min_by(|a, b| a.phi.total_cmp(&b.phi))
+            .unwrap_or(first)
     }
 
     /// The pressure at which the worst place is least bad. The worst excess is convex in p, so the
@@ -172,6 +183,7 @@ struct Excess {
 }
 
 /// Which of the three conditions is worst.
+#[derive(Clone, Copy)]
 enum Worst {
     Closing,
     Within,
@@ -203,6 +215,31 @@ impl Excess {
             Worst::Closing => -share - self.q,
             Worst::Within => -share + self.q * (1.0 - share),
             Worst::Pushed => 1.0 + self.q * (1.0 - share),
+        }
+    }
+}
+
+/// One of the three conditions, round the hole.
+struct Condition<'a> {
+    excess: &'a Excess,
+    condition: Worst,
+}
+
+impl OnCircle for Condition<'_> {
+    fn value(&self, c: f64, s: f64) -> f64 {
+        self.jet(c, s).value
+    }
+    fn jet(&self, c: f64, s: f64) -> Jet {
+        let Excess { root, radial, q, ucs } = self.excess;
+        let (e1, e2) = (root.jet(1.0, c, s), root.jet(-1.0, c, s));
+        match self.condition {
+            Worst::Closing => Jet { value: e1.value - q * radial - ucs, ..e1 },
+            Worst::Within => Jet {
+                value: e1.value - q * e2.value - ucs,
+                slope: e1.slope - q * e2.slope,
+                bend: e1.bend - q * e2.bend,
+            },
+            Worst::Pushed => Jet { value: radial - q * e2.value - ucs, slope: -q * e2.slope, bend: -q * e2.bend },
         }
     }
 }
