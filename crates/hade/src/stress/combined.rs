@@ -13,7 +13,7 @@ use crate::frames::Geographic;
 use crate::units::{as_typed, fixed};
 
 /// The stresses that another is made of, each with its factor. Copying it is free; a program keeps
-/// the parts of its first stresses, and those made after [`MOST_KEPT`] parts remember none.
+/// the parts of its first stresses, and those made after 100 000 parts remember none.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Parts(&'static [(f64, Stress<Geographic>)]);
 
