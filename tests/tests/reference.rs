@@ -24,5 +24,7 @@ mod tensor_traps;
 mod turns;
 #[path = "reference/wall.rs"]
 mod wall;
+#[path = "reference/wall_field.rs"]
+mod wall_field;
 #[path = "reference/wall_traps.rs"]
 mod wall_traps;

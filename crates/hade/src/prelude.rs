@@ -13,14 +13,14 @@ pub use crate::frames::{
     LineAtRake, Local, LocalAxes, LowerHemisphere, MapGrid, MeasuredAxes, Plane, PlaneThroughLines, PlanesIntersection,
     RakeOfLine, Site, WallAxes,
 };
-pub use crate::rock::{Rock, Strength};
+pub use crate::rock::{HoekBrown, Rock, Strength};
 pub use crate::sheet::{Basis, Sheet, Source};
 pub use crate::show::{NotebookDisplay, Show};
 pub use crate::stress::{
     AxisComponents, Components, EffectiveStress, FaultingRegime, HorizontalStresses, Horizontals, Invariants,
     MohrCircles, Principals, Regime, Stress, Traction, TractionVector,
 };
-pub use crate::units::{Angle, Density, FluxDensity, Gradient, Length, Pressure, Uncertain, Units, Warming};
+pub use crate::units::{Angle, Density, Expansion, FluxDensity, Gradient, Length, Pressure, Uncertain, Units, Warming};
 pub use crate::well::{
     Breakout, FailingArcs, Limit, Limits, MudColumn, MudPressure, Position, RangeChoices, RecommendedRange, Station,
     Survey, Wall, WallAround, WallInputs, WallStress,

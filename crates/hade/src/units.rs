@@ -156,6 +156,12 @@ quantity! {
     /// Kelvin (or degrees Celsius of difference).
     kelvin / in_kelvin = 1.0;
 }
+quantity! {
+    /// A coefficient of linear thermal expansion; inside, per kelvin.
+    Expansion, "thermal expansion", shown "10⁻⁶/K" = 1e-6, decimals 2;
+    /// Per kelvin: `1e-5.per_kelvin()`.
+    per_kelvin / in_per_kelvin = 1.0;
+}
 
 quantity! {
     /// A magnetic flux density, the strength of the Earth's field; inside, tesla.
@@ -272,6 +278,8 @@ units_on_numbers! {
     psi_per_ft -> Gradient;
     /// Kelvin of difference.
     kelvin -> Warming;
+    /// Per kelvin.
+    per_kelvin -> Expansion;
 }
 macro_rules! numbers { ($($t:ty),*) => { $(impl Units for $t { fn number(self) -> f64 { self as f64 } })* } }
 numbers!(f64, f32, i8, i16, i32, i64, u8, u16, u32, u64, isize, usize);

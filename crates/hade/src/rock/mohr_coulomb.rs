@@ -3,6 +3,9 @@
 //! The intermediate stress has no say. It holds for compression; in tension (σ3' < 0) it is
 //! extended as the same straight line, and a result there is marked, since rock parts earlier.
 
+use super::criterion::{Criterion, Order};
+use super::number::Number;
+
 /// The straight line in σ1', σ3'. Numbers in Pa; `q` has none.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub(crate) struct MohrCoulomb {
@@ -22,10 +25,25 @@ impl MohrCoulomb {
     pub fn from_ucs(ucs: f64, friction: f64) -> Self {
         MohrCoulomb { ucs, q: slope(friction) }
     }
+}
 
-    /// UCS + q σ3' − σ1': how much more σ1' the rock bears; negative where it fails.
-    pub fn margin(self, [s1, _, s3]: [f64; 3]) -> f64 {
-        self.ucs + self.q * s3 - s1
+// SHIM
+impl MohrCoulomb {
+    pub fn margin(self, s: [f64; 3]) -> f64 {
+        -self.excess(s)
+    }
+}
+
+impl Criterion for MohrCoulomb {
+    const ORDER: Order = Order::Extremes;
+
+    #[inline(always)]
+    fn excess<N: Number>(&self, [s1, _, s3]: [N; 3]) -> N {
+        s1 - s3 * self.q - self.ucs
+    }
+
+    fn size(&self) -> f64 {
+        self.ucs
     }
 }
 
@@ -46,7 +64,7 @@ mod tests {
         assert!((a.q - 3.0).abs() < 1e-12);
         assert!((a.ucs - 34.641_016_151_377_55e6).abs() < 1e-6);
         let b = MohrCoulomb::from_ucs(a.ucs, phi);
-        assert!((b.margin([50e6, 30e6, 5e6]) - a.margin([50e6, 0.0, 5e6])).abs() < 1e-6);
+        assert!((b.excess([50e6, 30e6, 5e6]) - a.excess([50e6, 0.0, 5e6])).abs() < 1e-6);
     }
 
     /// The shear-plane form: on the plane at 45° + φ/2 to σ3 the shear stress is c + σn tan φ when

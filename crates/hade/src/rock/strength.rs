@@ -2,10 +2,16 @@
 
 use serde::{Deserialize, Serialize};
 
-use super::MohrCoulomb;
+use super::drucker_prager::{DruckerPrager, Fit};
+use super::hoek_brown::HoekBrownLaw;
+use super::law::Law;
+use super::modified_lade::ModifiedLade;
+use super::mogi_coulomb::MogiCoulomb;
+use super::mohr_coulomb::MohrCoulomb;
 use crate::card::{Formula, Item, Reference, Step};
 use crate::error::{Error, Result};
 use crate::stress::EffectiveStress;
+use crate::stress::tensor::Tensor;
 use crate::units::{Angle, Pressure, Quantity, fixed, require_not_negative, with_typed_unit};
 
 /// A shear strength: which criterion, with the numbers that were typed. A constructor takes any
@@ -19,6 +25,23 @@ pub struct Strength(Stated);
 enum Stated {
     MohrCoulomb { cohesion: Pressure, friction_angle: Angle },
     MohrCoulombUcs { ucs: Pressure, friction_angle: Angle },
+    MogiCoulomb { cohesion: Pressure, friction_angle: Angle },
+    ModifiedLade { cohesion: Pressure, friction_angle: Angle },
+    DruckerPrager { fit: Fit, cohesion: Pressure, friction_angle: Angle },
+    HoekBrown(HoekBrown),
+}
+
+/// A rock mass by Hoek and Brown: the intact rock, and what joints and disturbance leave of it.
+#[derive(Clone, Copy, Debug, PartialEq, Serialize, Deserialize)]
+pub struct HoekBrown {
+    /// The uniaxial compressive strength of the intact rock, above zero.
+    pub sigma_ci: Pressure,
+    /// The constant mi of the intact rock, above zero.
+    pub m_i: f64,
+    /// The geological strength index, 0–100; 100 is intact rock.
+    pub gsi: f64,
+    /// The disturbance factor D, 0–1; 0 is undisturbed.
+    pub disturbance: f64,
 }
 
 impl Strength {
@@ -33,11 +56,48 @@ impl Strength {
         Strength(Stated::MohrCoulombUcs { ucs, friction_angle })
     }
 
-    /// How much more σ1' the rock bears: UCS + q σ3' − σ1'. Positive: it holds; negative: it fails.
-    /// Not a number when the strength itself is out of range.
+    /// Mogi–Coulomb (Al-Ajmi and Zimmerman 2005) by cohesion (zero or more) and friction angle (0°
+    /// or more, below 90°): it counts the intermediate stress, and is Mohr–Coulomb where two are
+    /// equal.
+    pub fn mogi_coulomb(cohesion: Pressure, friction_angle: Angle) -> Self {
+        Strength(Stated::MogiCoulomb { cohesion, friction_angle })
+    }
+
+    /// The modified Lade criterion (Ewy 1999) by cohesion (zero or more) and friction angle (above
+    /// 0°, below 90°).
+    pub fn modified_lade(cohesion: Pressure, friction_angle: Angle) -> Self {
+        Strength(Stated::ModifiedLade { cohesion, friction_angle })
+    }
+
+    /// Drucker–Prager inside Mohr–Coulomb, touching its faces; by cohesion (zero or more) and
+    /// friction angle (0° or more, below 90°). For comparison.
+    pub fn drucker_prager_inscribed(cohesion: Pressure, friction_angle: Angle) -> Self {
+        Strength(Stated::DruckerPrager { fit: Fit::Inscribed, cohesion, friction_angle })
+    }
+
+    /// Drucker–Prager through the edges of triaxial compression; by cohesion (zero or more) and
+    /// friction angle (0° or more, below 90°). For comparison: it flatters the rock.
+    pub fn drucker_prager_circumscribed(cohesion: Pressure, friction_angle: Angle) -> Self {
+        Strength(Stated::DruckerPrager { fit: Fit::Circumscribed, cohesion, friction_angle })
+    }
+
+    /// Drucker–Prager through the edges of triaxial extension; by cohesion (zero or more) and friction
+    /// angle (0° or more, below 90°). For comparison.
+    pub fn drucker_prager_extension(cohesion: Pressure, friction_angle: Angle) -> Self {
+        Strength(Stated::DruckerPrager { fit: Fit::Extension, cohesion, friction_angle })
+    }
+
+    /// Hoek–Brown (2002 edition) of a rock mass.
+    pub fn hoek_brown(rock_mass: HoekBrown) -> Self {
+        Strength(Stated::HoekBrown(rock_mass))
+    }
+
+    /// How much more the rock bears, in the measure of its criterion (Mohr–Coulomb: UCS + q σ3' −
+    /// σ1'; see the criterion's card). Positive: it holds; negative: it fails. Not a number when the
+    /// strength itself is out of range.
     pub fn margin(&self, stress: &EffectiveStress) -> Pressure {
         match self.checked() {
-            Ok(sound) => Pressure::from_si(sound.mohr_coulomb_line().margin(stress.principal().map(Quantity::si))),
+            Ok(sound) => Pressure::from_si(-sound.law().excess(stress.principal().map(Quantity::si))),
             Err(_) => Pressure::from_si(f64::NAN),
         }
     }
@@ -46,69 +106,152 @@ impl Strength {
     pub fn name(&self) -> &'static str {
         match self.0 {
             Stated::MohrCoulomb { .. } | Stated::MohrCoulombUcs { .. } => "Mohr–Coulomb",
+            Stated::MogiCoulomb { .. } => "Mogi–Coulomb",
+            Stated::ModifiedLade { .. } => "modified Lade",
+            Stated::DruckerPrager { fit: Fit::Inscribed, .. } => "Drucker–Prager, inscribed",
+            Stated::DruckerPrager { fit: Fit::Circumscribed, .. } => "Drucker–Prager, circumscribed",
+            Stated::DruckerPrager { fit: Fit::Extension, .. } => "Drucker–Prager, extension",
+            Stated::HoekBrown(_) => "Hoek–Brown",
         }
     }
 
-    fn friction_angle(self) -> Angle {
+    /// The margin in words: "UCS + q σ'_3 − σ'_1".
+    pub(crate) fn margin_words(self) -> &'static str {
         match self.0 {
-            Stated::MohrCoulomb { friction_angle, .. } | Stated::MohrCoulombUcs { friction_angle, .. } => {
-                friction_angle
-            }
+            Stated::MohrCoulomb { .. } | Stated::MohrCoulombUcs { .. } => "UCS + q σ'_3 − σ'_1",
+            Stated::MogiCoulomb { .. } => "a + b σ'_m − τ_oct",
+            Stated::ModifiedLade { .. } => "I_3^(1/3) − I_1 / (27 + η)^(1/3)",
+            Stated::DruckerPrager { .. } => "k + α I_1 − √J_2",
+            Stated::HoekBrown(_) => "σ'_3 + σ_ci (m_b σ'_3 / σ_ci + s)^a − σ'_1",
+        }
+    }
+
+    fn friction_angle(self) -> Option<Angle> {
+        match self.0 {
+            Stated::MohrCoulomb { friction_angle, .. }
+            | Stated::MohrCoulombUcs { friction_angle, .. }
+            | Stated::MogiCoulomb { friction_angle, .. }
+            | Stated::ModifiedLade { friction_angle, .. }
+            | Stated::DruckerPrager { friction_angle, .. } => Some(friction_angle),
+            Stated::HoekBrown(_) => None,
         }
     }
 
     /// Itself, or the error that says what no rock has.
     pub(crate) fn checked(self) -> Result<Self> {
+        // TODO-HELPER: Hoek–Brown ranges, modified Lade needs φ > 0.
         match self.0 {
-            Stated::MohrCoulomb { cohesion, .. } => require_not_negative("cohesion", cohesion)?,
-            Stated::MohrCoulombUcs { ucs, .. } => require_not_negative("uniaxial compressive strength", ucs)?,
-        };
-        let phi = self.friction_angle();
-        if !(phi.si() >= 0.0 && phi.si() < std::f64::consts::FRAC_PI_2) {
-            return Err(Error::out_of_range("friction angle", with_typed_unit(phi), "at least 0° and below 90°"));
+            Stated::MohrCoulomb { cohesion, .. }
+            | Stated::MogiCoulomb { cohesion, .. }
+            | Stated::ModifiedLade { cohesion, .. }
+            | Stated::DruckerPrager { cohesion, .. } => {
+                require_not_negative("cohesion", cohesion)?;
+            }
+            Stated::MohrCoulombUcs { ucs, .. } => {
+                require_not_negative("uniaxial compressive strength", ucs)?;
+            }
+            Stated::HoekBrown(_) => {}
         }
-        let line = self.mohr_coulomb_line();
-        if !(line.q.is_finite() && line.ucs.is_finite()) {
-            return Err(Error::out_of_range(
-                "friction angle",
-                with_typed_unit(phi),
-                "far enough below 90° for a finite strength",
-            ));
+        if let Some(phi) = self.friction_angle() {
+            if !(phi.si() >= 0.0 && phi.si() < std::f64::consts::FRAC_PI_2) {
+                return Err(Error::out_of_range("friction angle", with_typed_unit(phi), "at least 0° and below 90°"));
+            }
+            if !self.law().size().is_finite() || !self.law().excess([2.0, 1.0, 0.5]).is_finite() {
+                return Err(Error::out_of_range(
+                    "friction angle",
+                    with_typed_unit(phi),
+                    "far enough below 90° for a finite strength",
+                ));
+            }
         }
         Ok(self)
     }
 
-    pub(crate) fn mohr_coulomb_line(self) -> MohrCoulomb {
+    /// The criterion with its constants worked out.
+    pub(crate) fn law(self) -> Law {
         match self.0 {
             Stated::MohrCoulomb { cohesion, friction_angle } => {
-                MohrCoulomb::from_cohesion(cohesion.si(), friction_angle.si())
+                Law::MohrCoulomb(MohrCoulomb::from_cohesion(cohesion.si(), friction_angle.si()))
             }
-            Stated::MohrCoulombUcs { ucs, friction_angle } => MohrCoulomb::from_ucs(ucs.si(), friction_angle.si()),
+            Stated::MohrCoulombUcs { ucs, friction_angle } => {
+                Law::MohrCoulomb(MohrCoulomb::from_ucs(ucs.si(), friction_angle.si()))
+            }
+            Stated::MogiCoulomb { cohesion, friction_angle } => {
+                Law::MogiCoulomb(MogiCoulomb::from_cohesion(cohesion.si(), friction_angle.si()))
+            }
+            Stated::ModifiedLade { cohesion, friction_angle } => {
+                Law::ModifiedLade(ModifiedLade::from_cohesion(cohesion.si(), friction_angle.si()))
+            }
+            Stated::DruckerPrager { fit, cohesion, friction_angle } => {
+                Law::DruckerPrager(DruckerPrager::from_cohesion(fit, cohesion.si(), friction_angle.si()))
+            }
+            Stated::HoekBrown(mass) => {
+                Law::HoekBrown(HoekBrownLaw::new(mass.sigma_ci.si(), mass.m_i, mass.gsi, mass.disturbance))
+            }
         }
     }
 
-    /// tan(45° + φ/2) and UCS = 2 c tan(45° + φ/2), the other form of the same line: q is the
-    /// tangent's square. For checks.
-    pub(crate) fn by_tangent(self) -> (f64, Pressure) {
-        let tangent = (std::f64::consts::FRAC_PI_4 + 0.5 * self.friction_angle().si()).tan();
-        match self.0 {
-            Stated::MohrCoulomb { cohesion, .. } => (tangent, cohesion * (2.0 * tangent)),
-            Stated::MohrCoulombUcs { ucs, .. } => (tangent, ucs),
+    // SHIM: until the wall takes every criterion.
+    pub(crate) fn mohr_coulomb_line(self) -> MohrCoulomb {
+        match self.law() {
+            Law::MohrCoulomb(line) => line,
+            _ => MohrCoulomb { ucs: 0.0, q: 1.0 },
         }
+    }
+    pub(crate) fn by_tangent(self) -> (f64, Pressure) {
+        let line = self.mohr_coulomb_line();
+        (line.q.sqrt(), Pressure::from_si(line.ucs))
+    }
+
+    /// By how much an effective stress, as a whole tensor, exceeds what the rock bears, by another
+    /// route than [`Law::excess`]: for checks.
+    pub(crate) fn excess_by_tensor(self, effective: Tensor) -> f64 {
+        // TODO-HELPER: a route of its own for each criterion.
+        self.law().excess(effective.eigen().values)
+    }
+
+    /// The margin of effective principal stresses (Pa), with the numbers put in.
+    pub(crate) fn worked(self, [s1, s2, s3]: [f64; 3]) -> Vec<Step> {
+        // TODO-HELPER
+        let mpa = |c: f64| fixed(c * 1e-6, 4);
+        let margin = -self.law().excess([s1, s2, s3]);
+        let Law::MohrCoulomb(line) = self.law() else {
+            return vec![Step::worked(format!("{} = {} MPa", self.margin_words(), mpa(margin)))];
+        };
+        vec![Step::worked(format!(
+            "UCS + q σ'_3 − σ'_1 = {} + {} · ({}) − ({}) = {} MPa",
+            mpa(line.ucs),
+            fixed(line.q, 5),
+            mpa(s3),
+            mpa(s1),
+            mpa(margin)
+        ))]
     }
 
     /// The numbers as they were typed.
     pub(crate) fn items(self) -> Vec<Item> {
         let stated = match self.0 {
-            Stated::MohrCoulomb { cohesion, .. } => Item::typed("c", "cohesion", cohesion),
+            Stated::MohrCoulomb { cohesion, .. }
+            | Stated::MogiCoulomb { cohesion, .. }
+            | Stated::ModifiedLade { cohesion, .. }
+            | Stated::DruckerPrager { cohesion, .. } => Item::typed("c", "cohesion", cohesion),
             Stated::MohrCoulombUcs { ucs, .. } => Item::typed("UCS", "uniaxial compressive strength", ucs),
+            Stated::HoekBrown(mass) => {
+                return vec![
+                    Item::typed("σ_ci", "uniaxial compressive strength of the intact rock", mass.sigma_ci),
+                    Item::typed("m_i", "Hoek–Brown constant of the intact rock", mass.m_i),
+                    Item::typed("GSI", "geological strength index", mass.gsi),
+                    Item::typed("D", "disturbance factor", mass.disturbance),
+                ];
+            }
         };
-        vec![stated, Item::typed("φ", "friction angle", self.friction_angle())]
+        vec![stated, Item::typed("φ", "friction angle", self.friction_angle().unwrap_or_default())]
     }
 
     /// The derived constants, with the numbers put in.
     pub(crate) fn steps(self) -> Vec<Step> {
-        let (line, phi) = (self.mohr_coulomb_line(), self.friction_angle());
+        // TODO-HELPER: the other criteria.
+        let (Law::MohrCoulomb(line), Some(phi)) = (self.law(), self.friction_angle()) else { return Vec::new() };
         let s = phi.si().sin();
         let mut steps = vec![Step::worked(format!(
             "q = (1 + sin φ) / (1 − sin φ) = (1 + {}) / (1 − {}) = {}",
@@ -134,6 +277,10 @@ impl Strength {
             Formula::new("q = (1 + sin phi) / (1 - sin phi)", "q = (1 + sin φ) / (1 − sin φ)"),
             Formula::new("upright(\"UCS\") = (2 c cos phi) / (1 - sin phi)", "UCS = 2 c cos φ / (1 − sin φ)"),
         ]
+    }
+
+    pub(crate) fn assumptions(self) -> Vec<String> {
+        Vec::new()
     }
 
     pub(crate) fn references(self) -> Vec<Reference> {

@@ -4,7 +4,9 @@
 use super::html::line_html;
 use super::notebook::Show;
 use crate::frames::{Attitude, Depth, Line, Plane, Site};
-use crate::units::{Angle, Density, FluxDensity, Gradient, Length, Pressure, Quantity, Uncertain, Warming, as_typed};
+use crate::units::{
+    Angle, Density, Expansion, FluxDensity, Gradient, Length, Pressure, Quantity, Uncertain, Warming, as_typed,
+};
 
 /// How many figures a bare value is shown with; a record keeps every bit.
 const FIGURES: usize = 6;
@@ -44,6 +46,7 @@ shows! {
     Density: "kg/m³" in_kg_m3, "ppg" in_ppg;
     Gradient: "psi/ft" in_psi_per_ft;
     Warming: ;
+    Expansion: ;
     FluxDensity: ;
 }
 

@@ -44,17 +44,19 @@ impl Wall {
         let inputs = self.at_pressure(pressure)?;
         let mut places = [[Pressure::default(); 3]; PLACES];
         for (k, place) in places.iter_mut().enumerate() {
-            let at = self.shear.kirsch.at(toolface(k), pressure.si());
+            let at = self.shear.at(toolface(k), pressure.si());
             *place = [at.hoop, at.axial, at.shear].map(Pressure::from_si);
         }
         let hoop = self.shear.kirsch.hoop;
+        // What the pressure takes off, and seepage adds, all round alike.
+        let shift = self.shear.at(0.0, pressure.si()).hoop - hoop.at(1.0, 0.0);
         let swing = hoop.amplitude();
         let most_hoop_at = (swing > 1e-11 * self.shear.scale())
             .then(|| Angle::from_si(0.5 * super::circle::on_circle(hoop.sin.atan2(hoop.cos))));
         let outcome = AroundOutcome {
             places,
-            most_hoop: Pressure::from_si(hoop.mean + swing - pressure.si()),
-            least_hoop: Pressure::from_si(hoop.mean - swing - pressure.si()),
+            most_hoop: Pressure::from_si(hoop.mean + swing + shift),
+            least_hoop: Pressure::from_si(hoop.mean - swing + shift),
             most_hoop_at,
             most_hoop_bearing: most_hoop_at.and_then(|t| direction::bearing(self.attitude, t.si())),
             arcs: self.arcs_outcome(pressure),
@@ -89,7 +91,7 @@ impl Explain for WallAround {
     type Outcome = AroundOutcome;
 
     fn compute(inputs: AtPressure) -> Result<Self> {
-        Wall::new(inputs.wall)?.around(inputs.pressure)
+        Wall::of(inputs.wall)?.around(inputs.pressure)
     }
     fn inputs(&self) -> AtPressure {
         self.inputs
@@ -152,12 +154,12 @@ impl Explain for WallAround {
         let mut results = vec![
             Item::computed("σ_θmax", "largest hoop stress at the wall, total", self.outcome.most_hoop),
             Item::computed("σ_θmin", "smallest hoop stress at the wall, total", self.outcome.least_hoop),
-            Item::computed("m", "margin UCS + q σ'_3 − σ'_1 at the worst place", self.outcome.arcs.least_margin()),
+            Item::computed("m", method::margin_name(&self.wall), self.outcome.arcs.least_margin()),
         ];
         if let Some(at) = self.outcome.most_hoop_at {
             results.extend(direction::items(attitude, "the largest hoop stress", "max", at));
         }
-        let mut notes = vec![direction::reference(attitude)];
+        let mut notes = method::notes(&self.wall);
         match self.outcome.arcs.widest() {
             None => notes.push("Nothing of the wall fails in shear at this pressure.".to_owned()),
             Some(arc) if arc.whole_wall => {
@@ -169,11 +171,11 @@ impl Explain for WallAround {
                 direction::words(attitude, arc.centre)
             )),
         }
-        let mut steps = self.wall.inputs.rock.strength.steps();
+        let mut steps = self.wall.strength().steps();
         let place = self.outcome.most_hoop_at.unwrap_or_default();
         steps.push(Step::words("At the largest hoop stress:".to_owned()));
         steps.extend(method::worked(&self.wall, place.si(), p.si()));
-        steps.push(method::worked_strength(&self.wall, method::effective(&self.wall, place.si(), p.si())));
+        steps.extend(method::worked_strength(&self.wall, place.si(), p.si()));
         steps.push(Step::Table { table: self.table() });
         Explanation {
             title: format!("Wall of {} all round at {}", self.wall.place(), with_typed_unit(p)),
@@ -192,7 +194,7 @@ impl Explain for WallAround {
             steps,
             figures: vec![self.figure()],
             notes,
-            topics: ["wall", "breakout", "elastic"].map(str::to_owned).to_vec(),
+            topics: self.wall.topics(&["wall", "breakout", "elastic"]),
         }
     }
 
@@ -204,11 +206,11 @@ impl Explain for WallAround {
 impl WallAround {
     fn table(&self) -> Table {
         let pressure = self.inputs.pressure.si();
-        let pore = self.wall.inputs.pore;
+        let pore = Pressure::from_si(self.wall.shear.pore_behind(pressure));
         let cell = |p: Pressure| fixed(p.in_mpa(), 2);
         Table {
             caption:
-                "Round the wall, effective stresses (total − P_p); from 180° on it repeats, τ_θz with the other sign"
+                "Round the wall, effective stresses (total less the pore pressure behind the wall); from 180° on it repeats, τ_θz with the other sign"
                     .to_owned(),
             columns: vec![
                 Column::number("tool face", "°"),
@@ -226,8 +228,8 @@ impl WallAround {
                 .iter()
                 .enumerate()
                 .map(|(k, [hoop, axial, shear])| {
-                    let all @ [s1, _, s3] = method::effective(&self.wall, toolface(k), pressure);
-                    let margin = self.wall.shear.line.margin(all);
+                    let [s1, _, s3] = self.wall.shear.principal(toolface(k), pressure);
+                    let margin = -self.wall.shear.excess_at(pressure, 2.0 * toolface(k));
                     vec![
                         fixed(toolface(k).to_degrees(), 0),
                         direction::bearing_cell(self.wall.attitude, Angle::from_si(toolface(k))),
@@ -244,18 +246,18 @@ impl WallAround {
     }
 
     fn figure(&self) -> Figure {
-        let (wall, pressure, pore) = (&self.wall, self.inputs.pressure.si(), self.wall.inputs.pore.si());
-        let line = wall.shear.line;
+        let (wall, pressure) = (&self.wall, self.inputs.pressure.si());
+        let pore = wall.shear.pore_behind(pressure);
         let places = || (0..=120).map(|k| f64::from(k) * 3.0);
         let curve = |f: &dyn Fn(f64) -> f64| -> Vec<[f64; 2]> {
             places().map(|degrees| [degrees, f(degrees.to_radians()) * 1e-6]).collect()
         };
-        let at = |theta: f64| wall.shear.kirsch.at(theta, pressure);
+        let at = |theta: f64| wall.shear.at(theta, pressure);
         let hoop = curve(&|t| at(t).hoop - pore);
         let axial = curve(&|t| at(t).axial - pore);
         let radial = curve(&|t| at(t).radial - pore);
-        let largest = curve(&|t| method::effective(wall, t, pressure)[0]);
-        let bears = curve(&|t| line.ucs + line.q * method::effective(wall, t, pressure)[2]);
+        let largest = curve(&|t| wall.shear.principal(t, pressure)[0]);
+        let bears = curve(&|t| method::bears(wall, t, pressure));
         let (mut low, mut high) = (0.0_f64, f64::NEG_INFINITY);
         for [_, y] in [&hoop, &axial, &radial, &largest, &bears].into_iter().flatten() {
             low = low.min(*y);
@@ -292,8 +294,8 @@ impl WallAround {
             ),
             alt: format!(
                 "Stress curves over tool face 0 to 360°. Effective hoop stress from {} to {}; {}",
-                self.outcome.least_hoop - wall.inputs.pore,
-                self.outcome.most_hoop - wall.inputs.pore,
+                self.outcome.least_hoop - Pressure::from_si(pore),
+                self.outcome.most_hoop - Pressure::from_si(pore),
                 match self.outcome.arcs.widest() {
                     None => "nothing fails in shear.".to_owned(),
                     Some(arc) if arc.whole_wall => "the whole wall fails in shear.".to_owned(),

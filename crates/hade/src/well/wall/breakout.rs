@@ -38,7 +38,7 @@ pub struct FailingArcs {
 pub struct ArcsOutcome {
     /// Widest first.
     arcs: [Option<Breakout>; MOST],
-    /// UCS + q σ3' − σ1' at the worst place; negative: it fails.
+    /// How much more the worst place bears, in the measure of the criterion; negative: it fails.
     least_margin: Pressure,
     /// The worst place; `None` where all places are alike.
     worst: Option<Angle>,
@@ -128,7 +128,8 @@ impl FailingArcs {
         self.widest().is_some_and(|arc| arc.whole_wall)
     }
 
-    /// UCS + q σ3' − σ1' at the worst place of the wall; negative: it fails there.
+    /// How much more the worst place of the wall bears, in the measure of the criterion (Mohr–Coulomb:
+    /// UCS + q σ3' − σ1'); negative: it fails there.
     pub fn least_margin(&self) -> Pressure {
         self.outcome.least_margin
     }
@@ -225,7 +226,7 @@ impl Explain for FailingArcs {
     type Outcome = ArcsOutcome;
 
     fn compute(inputs: AtPressure) -> Result<Self> {
-        Wall::new(inputs.wall)?.failing_arcs(inputs.pressure)
+        Wall::of(inputs.wall)?.failing_arcs(inputs.pressure)
     }
     fn inputs(&self) -> AtPressure {
         self.inputs
@@ -241,13 +242,12 @@ impl Explain for FailingArcs {
         let (p, attitude) = (self.inputs.pressure, self.wall.attitude);
         let mut inputs = self.wall.items();
         inputs.push(pressure_item(p));
-        let mut results =
-            vec![Item::computed("m", "margin UCS + q σ'_3 − σ'_1 at the worst place", self.outcome.least_margin)];
+        let mut results = vec![Item::computed("m", method::margin_name(&self.wall), self.outcome.least_margin)];
         for (arc, n) in self.arcs().into_iter().zip(1..) {
             results.extend(direction::items(attitude, &format!("the middle of arc {n}"), &n.to_string(), arc.centre));
             results.push(Item::computed(&format!("w_{n}"), format!("width of arc {n}"), arc.width));
         }
-        let mut steps = self.wall.inputs.rock.strength.steps();
+        let mut steps = self.wall.strength().steps();
         if let Some(table) = self.table() {
             steps.push(Step::Table { table });
         }
@@ -267,7 +267,7 @@ impl Explain for FailingArcs {
             }
         };
         steps.extend(method::worked(&self.wall, place, p.si()));
-        steps.push(method::worked_strength(&self.wall, method::effective(&self.wall, place, p.si())));
+        steps.extend(method::worked_strength(&self.wall, place, p.si()));
         let mut method = method::with_strength(
             &self.wall,
             "Where the wall's effective principal stresses exceed the strength. The edges are the roots of the criterion along the wall.",
@@ -275,6 +275,10 @@ impl Explain for FailingArcs {
         method.references.push(Reference::new(
             "Zoback, M.D. (2007) Reservoir Geomechanics, Cambridge University Press, ch. 6 (breakouts as arcs of the wall beyond strength)",
         ));
+        let mut notes = method::notes(&self.wall);
+        notes.push(
+            "Each arc stands for two: the same fails on the far side of the hole, 180° of tool face away.".to_owned(),
+        );
         Explanation {
             title: format!("Failing arcs of the wall of {} at {}", self.wall.place(), with_typed_unit(p)),
             headline: self.headline(),
@@ -282,12 +286,8 @@ impl Explain for FailingArcs {
             results,
             method,
             steps,
-            notes: vec![
-                direction::reference(attitude),
-                "Each arc stands for two: the same fails on the far side of the hole, 180° of tool face away."
-                    .to_owned(),
-            ],
-            topics: ["wall", "breakout", "elastic"].map(str::to_owned).to_vec(),
+            notes,
+            topics: self.wall.topics(&["wall", "breakout", "elastic"]),
             ..Explanation::default()
         }
     }

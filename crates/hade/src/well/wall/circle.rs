@@ -7,6 +7,8 @@
 use std::f64::consts::TAU;
 use std::sync::LazyLock;
 
+use crate::rock::Jet;
+
 /// Samples of a scan: every 5° of φ, 2.5° of tool face.
 pub(crate) const SAMPLES: usize = 72;
 /// The distance of two samples in φ.
@@ -26,39 +28,31 @@ pub(crate) static CIRCLE: LazyLock<Circle> = LazyLock::new(|| {
     circle
 });
 
-/// A value with its first and second derivative by φ.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub(crate) struct Jet {
-    pub value: f64,
-    pub slope: f64,
-    pub bend: f64,
-}
-
-impl Jet {
-    #[inline(always)]
-    pub fn negated(self) -> Jet {
-        Jet { value: -self.value, slope: -self.slope, bend: -self.bend }
-    }
-}
-
-/// A function of cos φ and sin φ. The value alone is what the scan asks for, seventy-two times; the
-/// derivatives only the climb.
+/// A function of cos φ and sin φ, everywhere the largest of a few smooth pieces (mostly one). The
+/// value alone is what the scan asks for, seventy-two times; the derivatives by φ only the climb.
 pub(crate) trait OnCircle {
+    fn pieces(&self) -> usize {
+        1
+    }
     fn value(&self, c: f64, s: f64) -> f64;
-    fn jet(&self, c: f64, s: f64) -> Jet;
+    fn jet(&self, piece: usize, c: f64, s: f64) -> Jet;
 }
 
-/// The function turned upside down.
+/// The function turned upside down: the smallest of its pieces becomes the largest.
 pub(crate) struct Below<F>(pub F);
 
 impl<F: OnCircle> OnCircle for Below<F> {
+    #[inline(always)]
+    fn pieces(&self) -> usize {
+        self.0.pieces()
+    }
     #[inline(always)]
     fn value(&self, c: f64, s: f64) -> f64 {
         -self.0.value(c, s)
     }
     #[inline(always)]
-    fn jet(&self, c: f64, s: f64) -> Jet {
-        self.0.jet(c, s).negated()
+    fn jet(&self, piece: usize, c: f64, s: f64) -> Jet {
+        -self.0.jet(piece, c, s)
     }
 }
 
@@ -100,8 +94,8 @@ pub(crate) fn greatest(f: &impl OnCircle, scale: f64) -> Peak {
     }
     let enough = top - SLACK * (top - bottom);
     let mut best = Peak { phi: 0.0, value: f64::NEG_INFINITY, flat: false };
-    // A function that is the larger of two smooth ones may have two hills between two samples, so a
-    // climb starts at every high sample from which Newton sees a top within one step.
+    // Two pieces may have a hill each between two samples, so a climb starts on every piece at every
+    // high sample from which Newton sees a top of it within one step.
     let [first, .., last] = values;
     let mut before = last;
     for (((k, value), c), s) in values.iter().enumerate().zip(&circle.cos).zip(&circle.sin) {
@@ -111,16 +105,20 @@ pub(crate) fn greatest(f: &impl OnCircle, scale: f64) -> Peak {
         if *value < enough {
             continue;
         }
-        let start = k as f64 * STEP;
-        let jet = f.jet(*c, *s);
-        let newton = jet.slope / jet.bend;
-        let near = jet.bend < 0.0 && newton.abs() <= STEP;
-        if near || highest_here {
-            let hill = climb(f, start, jet, scale);
-            if hill.value > best.value + SAME * scale
-                || (hill.value >= best.value - SAME * scale && hill.phi < best.phi)
-            {
-                best = hill;
+        for piece in 0..f.pieces() {
+            let jet = f.jet(piece, *c, *s);
+            if jet.value < enough {
+                continue;
+            }
+            let newton = jet.slope / jet.bend;
+            let near = jet.bend < 0.0 && newton.abs() <= STEP;
+            if near || highest_here {
+                let hill = climb(f, piece, k as f64 * STEP, jet, scale);
+                if hill.value > best.value + SAME * scale
+                    || (hill.value >= best.value - SAME * scale && hill.phi < best.phi)
+                {
+                    best = hill;
+                }
             }
         }
     }
@@ -134,12 +132,12 @@ pub(crate) fn smallest(f: impl OnCircle, scale: f64) -> Peak {
     Peak { value: -peak.value, ..peak }
 }
 
-/// The top of the hill around a sample: Newton on the slope, halving where Newton leaves the hill. No
+/// The top of a piece's hill around a sample: Newton on the slope, halving where Newton leaves the hill. No
 /// step goes down, since beyond a dip another hill may begin.
-fn climb(f: &impl OnCircle, start: f64, mut jet: Jet, scale: f64) -> Peak {
+pub(crate) fn climb(f: &impl OnCircle, piece: usize, start: f64, mut jet: Jet, scale: f64) -> Peak {
     let at = |x: f64| {
         let (s, c) = x.sin_cos();
-        f.jet(c, s)
+        f.jet(piece, c, s)
     };
     let (mut left, mut right, mut x) = (start - STEP, start + STEP, start);
     for _ in 0..60 {
@@ -191,7 +189,7 @@ mod tests {
         fn value(&self, c: f64, s: f64) -> f64 {
             2.0 * s * c
         }
-        fn jet(&self, c: f64, s: f64) -> Jet {
+        fn jet(&self, _: usize, c: f64, s: f64) -> Jet {
             Jet { value: 2.0 * s * c, slope: 2.0 * (c * c - s * s), bend: -8.0 * s * c }
         }
     }

@@ -6,9 +6,140 @@
 //!   G = UCS + (q − 1)(Z − P_p);
 //! - pushed out: the first with the roles of the stress across the wall and of those in it changed.
 
-use super::circle::{Jet, OnCircle};
+use super::circle::{CIRCLE, OnCircle, Peak, greatest, smallest};
 use super::kirsch::{Kirsch, Wave};
-use crate::rock::MohrCoulomb;
+use super::shear::Window;
+use crate::rock::{Jet, MohrCoulomb};
+
+/// A wall that is impermeable, of rock without a plane of weakness; Pa.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub(crate) struct ClosedForm {
+    kirsch: Kirsch,
+    line: MohrCoulomb,
+    pore: f64,
+    scale: f64,
+}
+
+impl ClosedForm {
+    pub fn new(kirsch: &Kirsch, line: MohrCoulomb, pore: f64) -> Self {
+        ClosedForm { kirsch: *kirsch, line, pore, scale: kirsch.scale() + line.ucs + pore.abs() }
+    }
+
+    /// The pressures between which the whole wall holds.
+    pub fn window(&self) -> Window {
+        if let (Some(lower), Some(upper)) = (self.plain_lower(), self.plain_upper()) {
+            return Window::Open { lower: Some(lower), upper: Some(upper) };
+        }
+        if !self.holds_somewhere() {
+            return Window::Closed { crossed: None };
+        }
+        let lower = greatest(&self.lower_end(), self.scale);
+        let upper = smallest(self.upper_end(), self.scale);
+        if lower.value <= upper.value {
+            Window::Open { lower: Some(lower), upper: Some(upper) }
+        } else {
+            // The two have a meaning by themselves only where no place is beyond help.
+            let each = CIRCLE.cos.iter().zip(&CIRCLE.sin).all(|(c, s)| self.interval_at(*c, *s).is_some());
+            Window::Closed { crossed: each.then_some((lower.value, upper.value)) }
+        }
+    }
+
+    /// The lower end alone.
+    #[inline]
+    pub fn lower(&self) -> Option<f64> {
+        if let Some(lower) = self.plain_lower() {
+            return Some(lower.value);
+        }
+        match self.window() {
+            Window::Open { lower, .. } => lower.map(|peak| peak.value),
+            Window::Closed { .. } => None,
+        }
+    }
+
+    /// Both ends at one place, where any pressure holds there.
+    pub fn interval_at(&self, c: f64, s: f64) -> Option<(f64, f64)> {
+        let (lower, upper) = (self.lower_end().value(c, s), self.upper_end().value(c, s));
+        let can = self.within().at(c, s) >= 0.0 && self.discriminant().value(c, s) >= 0.0;
+        (can && lower <= upper).then_some((lower, upper))
+    }
+
+    /// The lower end where the hole closes in, if nothing else fails at it by bounds on the whole
+    /// wall: the safe pressures are an interval, so it is the end.
+    #[inline]
+    fn plain_lower(&self) -> Option<Peak> {
+        let peak = greatest(&self.lower_end().closing(), self.scale);
+        let bounds = self.bounds(peak.value);
+        (bounds.within_holds && bounds.pushed_holds).then_some(peak)
+    }
+
+    /// The upper end where the hole is pushed out, likewise.
+    fn plain_upper(&self) -> Option<Peak> {
+        let peak = smallest(self.upper_end().pushed(), self.scale);
+        let bounds = self.bounds(peak.value);
+        (bounds.within_holds && bounds.closing_holds).then_some(peak)
+    }
+
+    /// What certainly holds all round at a pressure, by the extremes of each wave.
+    #[inline]
+    fn bounds(&self, pressure: f64) -> Bounds {
+        let (q, ucs) = (self.line.q, self.line.ucs);
+        let mean = self.kirsch.hoop.joined(1.0, self.kirsch.axial, 0.5);
+        let half = self.kirsch.hoop.joined(-1.0, self.kirsch.axial, 0.5);
+        let shear = self.kirsch.shear_squared;
+        let across = pressure - self.pore;
+        // Half the pressure comes off the mean of the two in the wall, and off half their difference.
+        let middle = mean.mean - 0.5 * pressure - self.pore;
+        let widest = (half.mean - 0.5 * pressure).abs() + half.amplitude();
+        let radius = (widest * widest + shear.mean + shear.amplitude()).sqrt();
+        let least_mean = middle - mean.amplitude();
+        Bounds {
+            closing_holds: middle + mean.amplitude() + radius <= ucs + q * across,
+            within_holds: (1.0 + q) * radius <= ucs + (q - 1.0) * least_mean,
+            pushed_holds: across - q * (least_mean - radius) <= ucs,
+        }
+    }
+
+    /// Within the wall: UCS + (q − 1)(σz − P_p), which bounds what the axial stress lets it bear.
+    fn within(&self) -> Wave {
+        let q1 = self.line.q - 1.0;
+        self.kirsch.axial.scaled(q1, self.line.ucs - q1 * self.pore)
+    }
+
+    fn discriminant(&self) -> Discriminant {
+        Discriminant { within: self.within(), shear_squared: self.kirsch.shear_squared, q4: 4.0 * self.line.q }
+    }
+
+    /// The lowest pressure that holds at each place, where any does.
+    pub fn lower_end(&self) -> LowerEnd {
+        LowerEnd::new(&self.kirsch, self.line, self.pore, self.discriminant())
+    }
+
+    /// The highest pressure that holds at each place, where any does.
+    pub fn upper_end(&self) -> UpperEnd {
+        UpperEnd::new(&self.kirsch, self.line, self.pore, self.discriminant())
+    }
+
+    /// Whether every place of the wall holds at some pressure.
+    fn holds_somewhere(&self) -> bool {
+        let g = self.within();
+        let t = self.kirsch.shear_squared;
+        let least = g.mean - g.amplitude();
+        if least < 0.0 {
+            return false;
+        }
+        if least * least >= 4.0 * self.line.q * (t.mean + t.amplitude()) {
+            return true;
+        }
+        smallest(self.discriminant(), self.scale * self.scale).value >= 0.0
+    }
+}
+
+/// What certainly holds all round.
+struct Bounds {
+    closing_holds: bool,
+    within_holds: bool,
+    pushed_holds: bool,
+}
 
 /// ½ (x + y) ± √((½ (x − y))² + v), with x, y, v as waves.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -42,12 +173,6 @@ impl Root {
         (mean + r, mean - r)
     }
 
-    /// The share of x in the larger one's axis.
-    pub fn share(&self, c: f64, s: f64) -> f64 {
-        let r = self.radius(c, s);
-        if r > 0.0 { 0.5 * (1.0 + self.half.at(c, s) / r) } else { 0.5 }
-    }
-
     pub fn jet(&self, sign: f64, c: f64, s: f64) -> Jet {
         let (m, m1, m2) = (self.half.at(c, s), self.half.slope(c, s), self.half.bend(c, s));
         let r = self.radius(c, s);
@@ -77,7 +202,7 @@ impl OnCircle for Signed {
     fn value(&self, c: f64, s: f64) -> f64 {
         self.root.mean.at(c, s) + self.sign * self.root.radius(c, s)
     }
-    fn jet(&self, c: f64, s: f64) -> Jet {
+    fn jet(&self, _piece: usize, c: f64, s: f64) -> Jet {
         self.root.jet(self.sign, c, s)
     }
 }
@@ -97,7 +222,7 @@ impl OnCircle for Discriminant {
         g * g - self.q4 * self.shear_squared.at(c, s)
     }
     #[inline(always)]
-    fn jet(&self, c: f64, s: f64) -> Jet {
+    fn jet(&self, _piece: usize, c: f64, s: f64) -> Jet {
         let (g, t) = (self.within, self.shear_squared);
         let (g0, g1, g2) = (g.at(c, s), g.slope(c, s), g.bend(c, s));
         Jet {
@@ -133,7 +258,7 @@ impl Within {
     }
 
     fn jet(&self, c: f64, s: f64) -> Jet {
-        let d = self.discriminant.jet(c, s);
+        let d = self.discriminant.jet(0, c, s);
         let r = d.value.max(0.0).sqrt();
         let (r1, r2) = if r > 0.0 {
             let r1 = 0.5 * d.slope / r;
@@ -183,9 +308,11 @@ impl OnCircle for LowerEnd {
         let (closing, within) = (self.closing.both(c, s).0, self.within.value(c, s));
         if within > closing { within } else { closing }
     }
-    fn jet(&self, c: f64, s: f64) -> Jet {
-        let (closing, within) = (self.closing.jet(1.0, c, s), self.within.jet(c, s));
-        if within.value > closing.value { within } else { closing }
+    fn pieces(&self) -> usize {
+        2
+    }
+    fn jet(&self, piece: usize, c: f64, s: f64) -> Jet {
+        if piece == 0 { self.closing.jet(1.0, c, s) } else { self.within.jet(c, s) }
     }
 }
 
@@ -223,29 +350,30 @@ impl OnCircle for UpperEnd {
         let (pushed, within) = (self.pushed.both(c, s).1, self.within.value(c, s));
         if within < pushed { within } else { pushed }
     }
-    fn jet(&self, c: f64, s: f64) -> Jet {
-        let (pushed, within) = (self.pushed.jet(-1.0, c, s), self.within.jet(c, s));
-        if within.value < pushed.value { within } else { pushed }
+    fn pieces(&self) -> usize {
+        2
+    }
+    fn jet(&self, piece: usize, c: f64, s: f64) -> Jet {
+        if piece == 0 { self.pushed.jet(-1.0, c, s) } else { self.within.jet(c, s) }
     }
 }
 
 #[cfg(test)]
 mod tests {
-    use super::super::kirsch::Kirsch;
-    use super::super::shear::ShearWall;
     use super::*;
     use crate::stress::tensor::Tensor;
+
+    fn wall(ucs: f64, q: f64) -> ClosedForm {
+        let kirsch = Kirsch::new(Tensor([52.0, 44.0, 63.0, 3.0, 5.0, -4.0]), 0.27);
+        ClosedForm::new(&kirsch, MohrCoulomb { ucs, q }, 21.0)
+    }
 
     /// Each end is where the criterion, by eigenvalues of the wall's tensor, is just met.
     #[test]
     fn the_ends_meet_the_criterion_and_hold_between() {
-        let wall = ShearWall {
-            kirsch: Kirsch::new(Tensor([52.0, 44.0, 63.0, 3.0, 5.0, -4.0]), 0.27),
-            line: MohrCoulomb { ucs: 40.0, q: 3.2 },
-            pore: 21.0,
-        };
+        let wall = wall(40.0, 3.2);
         let excess = |phi: f64, p: f64| {
-            let [s1, _, s3] = wall.at(phi, p).tensor().eigen().values;
+            let [s1, _, s3] = wall.kirsch.at(0.5 * phi, p).tensor().eigen().values;
             s1 - 21.0 - 3.2 * (s3 - 21.0) - 40.0
         };
         for k in 0..72 {
@@ -258,24 +386,45 @@ mod tests {
         }
     }
 
+    /// The bounds only say what the whole search says too.
+    #[test]
+    fn the_short_way_is_the_long_way() {
+        for (ucs, q) in [(40.0, 3.2), (10.0, 2.5), (25.0, 4.0), (60.0, 2.0)] {
+            let wall = wall(ucs, q);
+            let (lower, upper) =
+                (greatest(&wall.lower_end(), wall.scale).value, smallest(wall.upper_end(), wall.scale).value);
+            if let Some(short) = wall.plain_lower() {
+                assert!(lower <= upper && (short.value - lower).abs() < 1e-12, "{ucs} {q}");
+            }
+            if let Some(short) = wall.plain_upper() {
+                assert!(lower <= upper && (short.value - upper).abs() < 1e-12, "{ucs} {q}");
+            }
+        }
+        // And it is there to be taken.
+        assert!([40.0, 60.0, 80.0].iter().any(|ucs| wall(*ucs, 3.2).plain_lower().is_some()));
+        assert!([40.0, 60.0, 80.0].iter().any(|ucs| wall(*ucs, 3.2).plain_upper().is_some()));
+    }
+
     #[test]
     fn jets_are_the_derivatives() {
-        let wall = ShearWall {
-            kirsch: Kirsch::new(Tensor([52.0, 44.0, 63.0, 3.0, 5.0, -4.0]), 0.27),
-            line: MohrCoulomb { ucs: 10.0, q: 2.5 },
-            pore: 21.0,
-        };
+        let wall = wall(10.0, 2.5);
         let (lower, upper) = (wall.lower_end(), wall.upper_end());
         for k in 0..40 {
             let (x, h) = (f64::from(k) * 0.157, 1e-4);
-            for end in [&lower as &dyn OnCircle, &upper] {
-                let at = |x: f64| end.jet(x.cos(), x.sin());
-                let (a, b, c) = (at(x - h), at(x), at(x + h));
-                assert!((b.value - end.value(x.cos(), x.sin())).abs() < 1e-12);
-                let slope = (c.value - a.value) / (2.0 * h);
-                assert!((slope - b.slope).abs() < 1e-5, "{x}: {slope} {}", b.slope);
-                let bend = (c.slope - a.slope) / (2.0 * h);
-                assert!((bend - b.bend).abs() < 1e-4, "{x}: {bend} {}", b.bend);
+            for (end, sign) in [(&lower as &dyn OnCircle, 1.0), (&upper, -1.0)] {
+                let whole = |x: f64| {
+                    let all = (0..end.pieces()).map(|piece| sign * end.jet(piece, x.cos(), x.sin()).value);
+                    sign * all.fold(f64::NEG_INFINITY, f64::max)
+                };
+                assert!((whole(x) - end.value(x.cos(), x.sin())).abs() < 1e-12);
+                for piece in 0..end.pieces() {
+                    let at = |x: f64| end.jet(piece, x.cos(), x.sin());
+                    let (a, b, c) = (at(x - h), at(x), at(x + h));
+                    let slope = (c.value - a.value) / (2.0 * h);
+                    assert!((slope - b.slope).abs() < 1e-5, "{x}: {slope} {}", b.slope);
+                    let bend = (c.slope - a.slope) / (2.0 * h);
+                    assert!((bend - b.bend).abs() < 1e-4, "{x}: {bend} {}", b.bend);
+                }
             }
         }
     }

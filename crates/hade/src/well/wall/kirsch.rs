@@ -6,7 +6,8 @@
 //! the hole. In φ = 2θ the hoop and axial stresses and the *square* of the shear are each one wave
 //! round the hole, and every limit of the wall is found on that circle.
 
-use super::circle::{Jet, OnCircle};
+use super::circle::OnCircle;
+use crate::rock::Jet;
 use crate::stress::tensor::Tensor;
 
 /// A wave on the circle: mean + cos · cos φ + sin · sin φ.
@@ -32,9 +33,24 @@ impl Wave {
     pub fn bend(self, c: f64, s: f64) -> f64 {
         -self.cos * c - self.sin * s
     }
+    /// Its value with both derivatives.
+    #[inline(always)]
+    pub fn jet(self, c: f64, s: f64) -> Jet {
+        Jet { value: self.at(c, s), slope: self.slope(c, s), bend: self.bend(c, s) }
+    }
     /// Half its height from trough to crest.
+    #[inline(always)]
     pub fn amplitude(self) -> f64 {
-        self.cos.hypot(self.sin)
+        (self.cos * self.cos + self.sin * self.sin).sqrt()
+    }
+    /// factor · (self + sign · other).
+    #[inline(always)]
+    pub fn joined(self, sign: f64, other: Wave, factor: f64) -> Wave {
+        Wave {
+            mean: factor * (self.mean + sign * other.mean),
+            cos: factor * (self.cos + sign * other.cos),
+            sin: factor * (self.sin + sign * other.sin),
+        }
     }
     /// offset + factor · wave.
     #[inline(always)]
@@ -49,13 +65,13 @@ impl OnCircle for Wave {
         self.at(c, s)
     }
     #[inline(always)]
-    fn jet(&self, c: f64, s: f64) -> Jet {
-        Jet { value: self.at(c, s), slope: self.slope(c, s), bend: self.bend(c, s) }
+    fn jet(&self, _piece: usize, c: f64, s: f64) -> Jet {
+        Wave::jet(*self, c, s)
     }
 }
 
 /// What acts at one place of the wall, total stresses.
-#[derive(Clone, Copy, Debug, PartialEq)]
+#[derive(Clone, Copy, Debug, Default, PartialEq)]
 pub(crate) struct AtWall {
     pub radial: f64,
     pub hoop: f64,
@@ -94,6 +110,11 @@ impl Kirsch {
             yz,
             xz,
         }
+    }
+
+    /// With a thermal stress on hoop and axial stress.
+    pub fn warmed(self, thermal: f64) -> Self {
+        Kirsch { hoop: self.hoop.scaled(1.0, thermal), axial: self.axial.scaled(1.0, thermal), ..self }
     }
 
     /// At tool face θ and wall pressure p.

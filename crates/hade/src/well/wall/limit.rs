@@ -85,6 +85,8 @@ pub struct Limit {
     bearing: Option<Angle>,
     effective: Option<[Pressure; 3]>,
     mode: Option<Mode>,
+    slips: bool,
+    unbounded: bool,
 }
 
 impl Limit {
@@ -130,6 +132,15 @@ impl Limit {
     pub fn mode(&self) -> Option<Mode> {
         self.mode
     }
+    /// Whether it is slip on the plane of weakness, not failure of the rock beside it.
+    pub fn on_weak_plane(&self) -> bool {
+        self.slips
+    }
+    /// Whether there is no such limit because every pressure on that side is safe: a permeable wall
+    /// of rock that the criterion makes strong enough.
+    pub fn is_unbounded(&self) -> bool {
+        self.unbounded
+    }
     /// Whether σ3' there is tension. A shear limit then leans on a criterion beyond its range.
     pub fn in_tension(&self) -> bool {
         self.effective.is_some_and(|[.., s3]| s3 < Pressure::default())
@@ -144,7 +155,10 @@ impl Limit {
             format!("; {at}σ'_1 {near}{a}, σ'_2 {b}, σ'_3 {c}")
         });
         let mark = if self.in_tension() { " (in tension)" } else { "" };
+        let slip = matches!(self.kind, LimitKind::LowerShear | LimitKind::UpperShear) && self.slips;
         match self.kind {
+            _ if self.unbounded => "none: the wall holds at any pressure on this side".to_owned(),
+            _ if slip && self.pressure.is_some() => format!("slip on the plane of weakness{directions}{mark}"),
             LimitKind::LowerShear | LimitKind::UpperShear if self.pressure.is_none() => {
                 format!("no safe pressure in shear{directions}{mark}")
             }
@@ -176,7 +190,14 @@ impl Limit {
             bearing: None,
             effective: None,
             mode: None,
+            slips: false,
+            unbounded: false,
         }
+    }
+
+    /// Every pressure on that side is safe.
+    pub(super) fn none_needed(kind: LimitKind) -> Self {
+        Limit { unbounded: true, ..Limit::empty(kind) }
     }
 
     /// A limit reached at φ (any place when `flat`).
@@ -195,13 +216,14 @@ impl Limit {
     }
 
     fn placed(wall: &Wall, kind: LimitKind, pressure: f64, phi: f64, flat: bool) -> Self {
-        let at = wall.shear.at(phi, pressure);
+        let at = wall.shear.at(0.5 * phi, pressure);
         let toolface = (!flat).then(|| Angle::from_si(0.5 * phi));
         Limit {
             toolface,
             bearing: toolface.and_then(|t| direction::bearing(wall.attitude, t.si())),
-            effective: Some(super::method::effective(wall, 0.5 * phi, pressure).map(Pressure::from_si)),
+            effective: Some(wall.shear.principal(0.5 * phi, pressure).map(Pressure::from_si)),
             mode: Some(mode_of(at, wall.shear.scale())),
+            slips: wall.shear.slips_at(pressure, phi),
             ..Limit::empty(kind)
         }
     }

@@ -2,10 +2,12 @@
 
 use serde::{Deserialize, Serialize};
 
+use super::circle::Peak;
 use super::limit::{Limit, LimitKind};
+use super::setup::WallSetup;
 use super::shear::{LeastBad, Window};
 use super::tension::{Parting, parting};
-use super::wall::{Wall, WallInputs};
+use super::wall::Wall;
 use super::width::AtWidth;
 use crate::error::Result;
 use crate::units::{Angle, Pressure, Quantity, require_between};
@@ -35,7 +37,7 @@ pub struct Limits {
 /// The inputs of limits.
 #[derive(Clone, Copy, Debug, PartialEq, Serialize, Deserialize)]
 pub struct LimitsInputs {
-    pub(super) wall: WallInputs,
+    pub(super) wall: WallSetup,
     pub(super) width: Angle,
 }
 
@@ -67,22 +69,24 @@ impl Wall {
     }
 
     /// The lower shear limit with nothing allowed to fail, by itself: for loops over many walls.
-    /// Nothing is allocated. `None` when no pressure is safe.
+    /// Nothing is allocated. `None` when no pressure is safe, or none is too low.
     pub fn lower_shear_limit(&self) -> Option<Pressure> {
-        match self.shear.window() {
-            Window::Open { lower, .. } => Some(Pressure::from_si(lower.value)),
-            Window::Closed { .. } => None,
-        }
+        self.shear.lower().map(Pressure::from_si)
     }
 
     fn limits_within(&self, width: Angle) -> Limits {
         let window = self.shear.window();
         let none_safe = |kind, own_side| Limit::none_safe(self, kind, self.shear.least_bad(), own_side);
         let (lower, upper) = match window {
-            Window::Open { lower, upper } => (
-                Limit::reached(self, LimitKind::LowerShear, lower.value, lower.phi, lower.flat),
-                Limit::reached(self, LimitKind::UpperShear, upper.value, upper.phi, upper.flat),
-            ),
+            Window::Open { lower, upper } => {
+                let end = |kind, peak: Option<Peak>| {
+                    peak.map_or_else(
+                        || Limit::none_needed(kind),
+                        |peak| Limit::reached(self, kind, peak.value, peak.phi, peak.flat),
+                    )
+                };
+                (end(LimitKind::LowerShear, lower), end(LimitKind::UpperShear, upper))
+            }
             Window::Closed { crossed } => (
                 none_safe(LimitKind::LowerShear, crossed.map(|(lower, _)| lower)),
                 none_safe(LimitKind::UpperShear, crossed.map(|(_, upper)| upper)),
@@ -92,24 +96,30 @@ impl Wall {
             match self.shear.lower_at_width(width.si()) {
                 AtWidth::At(pressure) => self.lower_with_arc(pressure),
                 AtWidth::Never => none_safe(LimitKind::LowerShear, None),
+                AtWidth::Unbounded => Limit::none_needed(LimitKind::LowerShear),
             }
         } else {
             lower
         };
-        let part = |kind, tensile: f64| match parting(&self.shear.kirsch, self.shear.pore, tensile) {
+        let part = |kind, tensile: f64| match parting(
+            self.shear.effective_wall(),
+            self.shear.pore,
+            tensile,
+            self.shear.scale(),
+        ) {
             Parting::At(peak) => Limit::reached(self, kind, peak.value, peak.phi, peak.flat),
             Parting::Always { least_bad, beyond, phi, flat, alone } => {
                 Limit::none_safe(self, kind, LeastBad { pressure: least_bad, excess: beyond, phi, flat }, alone)
             }
         };
-        let [.., s3] = self.inputs.stress.tensor().eigen().values;
+        let [.., s3] = self.setup.inputs.stress.tensor().eigen().values;
         Limits {
             lower_shear,
             upper_shear: upper,
-            initiation: part(LimitKind::Initiation, self.inputs.rock.tensile_strength.si()),
+            initiation: part(LimitKind::Initiation, self.setup.inputs.rock.tensile_strength.si()),
             reopening: part(LimitKind::Reopening, 0.0),
             least_stress: Limit::plain(LimitKind::LeastStress, Pressure::from_si(s3)),
-            pore_pressure: Limit::plain(LimitKind::PorePressure, self.inputs.pore),
+            pore_pressure: Limit::plain(LimitKind::PorePressure, self.setup.inputs.pore),
             wall: *self,
             width,
         }

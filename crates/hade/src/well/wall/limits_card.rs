@@ -18,10 +18,10 @@ impl Explain for Limits {
     type Outcome = LimitsOutcome;
 
     fn compute(inputs: LimitsInputs) -> Result<Self> {
-        Wall::new(inputs.wall)?.limits_at_width(inputs.width)
+        Wall::of(inputs.wall)?.limits_at_width(inputs.width)
     }
     fn inputs(&self) -> LimitsInputs {
-        LimitsInputs { wall: self.wall.inputs, width: self.width }
+        LimitsInputs { wall: self.wall.setup, width: self.width }
     }
     fn outcome(&self) -> LimitsOutcome {
         LimitsOutcome {
@@ -43,7 +43,7 @@ impl Explain for Limits {
         inputs.push(Item::typed("w", "allowed width of a failing arc, per lobe", self.width).chosen());
         let mut method = method::with_strength(
             &self.wall,
-            "The lowest and highest pressure at which the shear criterion is met nowhere on the wall (or, for the lower, in arcs no wider than allowed), in closed form at each tool face and then exact round the hole; and the lowest at which the least effective principal stress in the wall reaches −T₀.",
+            "The lowest and highest pressure at which the shear criterion is met nowhere on the wall (or, for the lower, in arcs no wider than allowed), found at each tool face and then exactly round the hole; and the lowest at which the least effective principal stress in the wall reaches −T₀.",
         );
         method.formulas.push(crate::card::Formula::new(
             "(sigma_theta - P_p + T_0)(sigma_(z w) - P_p + T_0) = tau_(theta z)^2",
@@ -69,7 +69,7 @@ impl Explain for Limits {
             steps: self.steps(),
             figures: vec![self.figure()],
             notes: self.notes(),
-            topics: ["wall", "limits", "breakout", "elastic"].map(str::to_owned).to_vec(),
+            topics: self.wall.topics(&["wall", "limits", "breakout", "elastic"]),
         }
     }
 
@@ -109,7 +109,7 @@ impl Limits {
     }
 
     fn notes(&self) -> Vec<String> {
-        let mut notes = vec![direction::reference(self.wall.attitude)];
+        let mut notes = method::notes(&self.wall);
         if let (None, Some(least), Some(short)) =
             (self.lower_shear.pressure(), self.lower_shear.least_bad(), self.lower_shear.short_by())
         {
@@ -139,7 +139,7 @@ impl Limits {
                     limit.kind().words()
                 ));
             }
-            if limit.pressure().is_some_and(|p| p < self.wall.inputs.pore) && limit.kind() == LimitKind::LowerShear {
+            if limit.pressure().is_some_and(|p| p < self.wall.pore()) && limit.kind() == LimitKind::LowerShear {
                 notes.push("The lower shear limit is below the pore pressure: the formation's fluid, not the rock, sets the lowest pressure; below P_p − T₀ the wall spalls.".to_owned());
             }
         }
@@ -153,10 +153,10 @@ impl Limits {
     }
 
     fn steps(&self) -> Vec<Step> {
-        let mut steps = self.wall.inputs.rock.strength.steps();
+        let mut steps = self.wall.strength().steps();
         steps.push(Step::matrix(
             "S'",
-            &self.wall.inputs.stress.rows_in_mpa(),
+            &self.wall.setup.inputs.stress.rows_in_mpa(),
             4,
             "MPa",
             "top of hole, right, along the hole",
@@ -178,11 +178,10 @@ impl Limits {
                 steps.push(Step::worked(format!(
                     "least effective principal stress = {} MPa against −T₀ = −{} MPa",
                     fixed(s3.in_mpa(), 4),
-                    as_typed(self.wall.inputs.rock.tensile_strength.in_mpa())
+                    as_typed(self.wall.setup.inputs.rock.tensile_strength.in_mpa())
                 )));
             } else {
-                let all = method::effective(&self.wall, theta.si(), pressure.si());
-                steps.push(method::worked_strength(&self.wall, all));
+                steps.extend(method::worked_strength(&self.wall, theta.si(), pressure.si()));
             }
         }
         steps.push(Step::Table { table: self.table() });
@@ -229,7 +228,7 @@ impl Limits {
     /// Between which pressures each place of the wall holds.
     fn figure(&self) -> Figure {
         let wall = &self.wall;
-        let tensile = wall.inputs.rock.tensile_strength.si();
+        let tensile = wall.setup.inputs.rock.tensile_strength.si();
         let curve = |f: &dyn Fn(f64, f64) -> f64| {
             pieces((0..=120).map(|k| f64::from(k) * 3.0).map(|degrees| {
                 let (s, c) = (2.0 * degrees.to_radians()).sin_cos();
@@ -239,7 +238,7 @@ impl Limits {
         let holds = |c: f64, s: f64| wall.shear.interval_at(c, s);
         let lower = curve(&|c, s| holds(c, s).map_or(f64::NAN, |(lower, _)| lower));
         let upper = curve(&|c, s| holds(c, s).map_or(f64::NAN, |(_, upper)| upper));
-        let part = curve(&|c, s| super::tension::at_place(&wall.shear.kirsch, wall.shear.pore, tensile, c, s));
+        let part = curve(&|c, s| super::tension::at_place(wall.shear.effective_wall(), wall.shear.pore, tensile, c, s));
         let least = self.least_stress.pressure().unwrap_or_default().in_mpa();
         let (mut low, mut high) = (least, least);
         for [_, y] in lower.iter().chain(&upper).flatten() {
@@ -260,7 +259,7 @@ impl Limits {
             }
         }
         layers.push(Layer::line("S_3", Role::Quiet, level(least)));
-        layers.push(Layer::line("P_p", Role::Quiet, level(self.wall.inputs.pore.in_mpa())));
+        layers.push(Layer::line("P_p", Role::Quiet, level(self.wall.setup.inputs.pore.in_mpa())));
         for limit in [self.lower_shear, self.upper_shear, self.initiation] {
             if let (Some(p), Some(t)) = (limit.pressure(), limit.toolface()) {
                 let (p, t) = (p.in_mpa(), t.in_deg());

@@ -12,7 +12,7 @@ use crate::units::{Pressure, Quantity};
 /// Every limit of an outcome.
 pub(super) fn check(inputs: &LimitsInputs, outcome: &LimitsOutcome) -> Vec<Check> {
     let Some(route) = ByVectors::new(&inputs.wall) else { return Vec::new() };
-    let tensile = inputs.wall.rock.tensile_strength.si();
+    let tensile = inputs.wall.inputs.rock.tensile_strength.si();
     let width = inputs.width.si();
     let mut checks = Vec::new();
     if width > 0.0 && outcome.lower_shear.pressure().is_some() {
@@ -36,7 +36,7 @@ pub(super) fn check(inputs: &LimitsInputs, outcome: &LimitsOutcome) -> Vec<Check
     checks.push(Check::compare(
         "pore pressure as stated",
         &[number(&outcome.pore_pressure)],
-        &[inputs.wall.pore.in_mpa()],
+        &[inputs.wall.inputs.pore.in_mpa()],
         0.0,
         "MPa",
     ));
@@ -81,7 +81,7 @@ fn check_shear(route: &ByVectors, limit: &Limit) -> Vec<Check> {
         let beyond = if limit.kind() == LimitKind::UpperShear { nudge } else { -nudge };
         let mut checks = vec![
             Check::compare(
-                format!("{what}: σ'_1 − q σ'_3 − UCS is zero at its tool face"),
+                format!("{what}: the margin is zero at its tool face"),
                 &[route.excess(theta, pressure) * 1e-6],
                 &[0.0],
                 unit * 1e-9,

@@ -6,8 +6,8 @@ use crate::card::{Formula, Method, Reference, Step};
 use crate::units::{Quantity, fixed};
 
 /// Formulas, sources and assumptions of the wall stresses.
-pub(super) fn wall_stresses() -> Method {
-    Method {
+pub(super) fn wall_stresses(wall: &Wall) -> Method {
+    let mut method = Method {
         words: "Stress at the wall of a round hole in elastic rock, from the far-field stress in the hole's axes and the pressure in the hole.".to_owned(),
         formulas: vec![
             Formula::new("sigma_r = p", "σ_r = p"),
@@ -47,51 +47,165 @@ pub(super) fn wall_stresses() -> Method {
         assumptions: vec![
             "Rock round the hole is isotropic and linear elastic until it fails.".to_owned(),
             "Plane strain along the hole: it is long, and round.".to_owned(),
-            "The wall is impermeable: the pore pressure behind it stays that of the formation.".to_owned(),
-            "The rock has the temperature of the mud.".to_owned(),
         ],
+    };
+    let setup = &wall.setup;
+    match setup.seepage {
+        None => method
+            .assumptions
+            .push("The wall is impermeable: the pore pressure behind it stays that of the formation.".to_owned()),
+        Some(seepage) => {
+            method.words.push_str(" Fluid passes the wall and stands in the pores behind it.");
+            method.formulas.extend([
+                Formula::new(
+                    "P_w = P_p + (1 - w_s)(p - P_p)",
+                    "P_w = P_p + (1 − w_s)(p − P_p), the pore pressure behind the wall",
+                ),
+                Formula::new(
+                    "eta = alpha (1 - 2 nu) / (2 (1 - nu))",
+                    "η = α (1 − 2ν) / (2 (1 − ν)); 2η (1 − w_s)(p − P_p) is added to σ_θ and σ_zw",
+                ),
+                Formula::new("sigma' = sigma - P_w", "σ' = σ − P_w"),
+            ]);
+            method.references.push(Reference::new(
+                "Haimson, B. and Fairhurst, C. (1967) Initiation and extension of hydraulic fractures in rocks, SPE J. 7, 310–318 (seepage at the wall; cited from memory)",
+            ));
+            method.assumptions.push(if seepage.sealing > 0.0 {
+                "The wall holds back the stated share of the pressure above the pore pressure; the rest stands behind it, steady.".to_owned()
+            } else {
+                "The wall is permeable: the pressure in the hole stands in the pores behind it, steady.".to_owned()
+            });
+        }
     }
+    match setup.thermal {
+        None => method.assumptions.push("The rock has the temperature of the mud.".to_owned()),
+        Some(_) => {
+            method.formulas.push(Formula::new(
+                "Delta sigma_T = (E alpha_T Delta T) / (1 - nu)",
+                "Δσ_T = E α_T ΔT / (1 − ν), added to σ_θ and σ_zw",
+            ));
+            method.references.push(Reference::new(
+                "Stephens, G. and Voight, B. (1982) Hydraulic fracturing theory for conditions of thermal stress, Int. J. Rock Mech. Min. Sci. 19, 279–284 (cited from memory)",
+            ));
+            method.assumptions.push("The wall has the stated temperature difference, steady.".to_owned());
+        }
+    }
+    method
+}
+
+/// What a reader must know of any result of this wall.
+pub(super) fn notes(wall: &Wall) -> Vec<String> {
+    let mut notes = wall.setup.notes();
+    notes.push(super::direction::reference(wall.attitude));
+    notes
+}
+
+/// The name of the margin at the worst place.
+pub(super) fn margin_name(wall: &Wall) -> String {
+    let slip =
+        if wall.setup.weak_plane.is_some() { ", or c_w + σ'_n tan φ_w − τ on the plane of weakness," } else { "" };
+    format!("margin {}{slip} at the worst place", wall.strength().margin_words())
+}
+
+/// The σ1' that the rock bears at a place (Pa), the other two as they are there.
+pub(super) fn bears(wall: &Wall, theta: f64, pressure: f64) -> f64 {
+    let [s1, s2, s3] = wall.shear.principal(theta, pressure);
+    let law = wall.shear.law;
+    // The excess grows with σ1' from σ2' on: halving finds where it is zero.
+    let (mut low, mut high) = (s2, s2 + 4.0 * wall.shear.scale());
+    if law.excess([high, s2, s3]) <= 0.0 || law.excess([low, s2, s3]) >= 0.0 {
+        return if law.excess([low, s2, s3]) >= 0.0 { s2.min(s1) } else { high };
+    }
+    for _ in 0..60 {
+        let middle = 0.5 * (low + high);
+        if law.excess([middle, s2, s3]) > 0.0 { high = middle } else { low = middle }
+    }
+    low
 }
 
 /// The same with the shear criterion of the wall's rock.
 pub(super) fn with_strength(wall: &Wall, words: &str) -> Method {
-    let mut method = wall_stresses();
+    let mut method = wall_stresses(wall);
     words.clone_into(&mut method.words);
-    method.formulas.extend(wall.inputs.rock.strength.formulas());
-    method.references.extend(wall.inputs.rock.strength.references());
+    method.formulas.extend(wall.strength().formulas());
+    method.references.extend(wall.strength().references());
+    method.assumptions.extend(wall.strength().assumptions());
+    if wall.setup.weak_plane.is_some() {
+        method.formulas.push(Formula::new(
+            "tau = c_w + sigma'_upright(n) tan phi_w",
+            "on the plane of weakness: τ = c_w + σ'_n tan φ_w, with the whole traction of the wall on it",
+        ));
+        method.references.push(Reference::new(
+            "Jaeger, J.C. (1960) Shear failure of anisotropic rocks, Geol. Mag. 97, 65–72 (cited from memory)",
+        ));
+        method.assumptions.push(
+            "The plane of weakness is through every place of the wall, and the rock beside it is isotropic.".to_owned(),
+        );
+    }
     method
 }
 
 /// The wall stresses at one place and pressure, with the numbers put in.
 pub(super) fn worked(wall: &Wall, theta: f64, pressure: f64) -> Vec<Step> {
-    let at = wall.shear.kirsch.at(theta, pressure);
-    let [x, y, z, xy, yz, xz] = wall.inputs.stress.tensor().0.map(|c| fixed(c * 1e-6, 4));
+    let at = wall.shear.at(theta, pressure);
+    let [x, y, z, xy, yz, xz] = wall.setup.inputs.stress.tensor().0.map(|c| fixed(c * 1e-6, 4));
     let mpa = |c: f64| fixed(c * 1e-6, 4);
     let (s2, c2) = (2.0 * theta).sin_cos();
     let (s, c) = theta.sin_cos();
     let [s2, c2, s, c] = [s2, c2, s, c].map(|v| fixed(v, 6));
-    let nu = crate::units::as_typed(wall.inputs.rock.poisson);
+    let nu = crate::units::as_typed(wall.setup.inputs.rock.poisson);
     let p = mpa(pressure);
-    vec![
-        Step::worked(format!(
-            "θ = {}°: cos 2θ = {c2}, sin 2θ = {s2}, cos θ = {c}, sin θ = {s}",
-            fixed(theta.to_degrees(), 4)
-        )),
+    let setup = &wall.setup;
+    let (mut plus, mut added) = (String::new(), Vec::new());
+    if setup.seepage.is_some() {
+        let seepage = wall.shear.passes * wall.shear.eta2 * (pressure - wall.shear.pore);
+        added.push(Step::worked(format!(
+            "2η = {}; P_w = {} MPa; seepage adds 2η (1 − w_s)(p − P_p) = {} MPa",
+            fixed(wall.shear.eta2, 6),
+            mpa(wall.shear.pore_behind(pressure)),
+            mpa(seepage)
+        )));
+        plus.push_str(&format!(" + ({})", mpa(seepage)));
+    }
+    if let Some(thermal) = setup.thermal {
+        added.push(Step::worked(format!(
+            "Δσ_T = {} · {} · ({}) / (1 − {nu}) = {} MPa",
+            crate::units::as_typed(thermal.youngs_modulus.in_mpa()),
+            crate::units::as_typed(thermal.expansion.in_per_kelvin()),
+            crate::units::as_typed(thermal.warming.in_kelvin()),
+            mpa(setup.thermal_stress())
+        )));
+        plus.push_str(&format!(" + ({})", mpa(setup.thermal_stress())));
+    }
+    let mut steps = vec![Step::worked(format!(
+        "θ = {}°: cos 2θ = {c2}, sin 2θ = {s2}, cos θ = {c}, sin θ = {s}",
+        fixed(theta.to_degrees(), 4)
+    ))];
+    steps.extend(added);
+    steps.extend([
         Step::worked(format!("σ_r = p = {p} MPa")),
-        Step::worked(format!("σ_θ = {x} + {y} − 2 ({x} − {y}) ({c2}) − 4 ({xy}) ({s2}) − {p} = {} MPa", mpa(at.hoop))),
-        Step::worked(format!("σ_zw = {z} − {nu} [2 ({x} − {y}) ({c2}) + 4 ({xy}) ({s2})] = {} MPa", mpa(at.axial))),
+        Step::worked(format!(
+            "σ_θ = {x} + {y} − 2 ({x} − {y}) ({c2}) − 4 ({xy}) ({s2}) − {p}{plus} = {} MPa",
+            mpa(at.hoop)
+        )),
+        Step::worked(format!(
+            "σ_zw = {z} − {nu} [2 ({x} − {y}) ({c2}) + 4 ({xy}) ({s2})]{plus} = {} MPa",
+            mpa(at.axial)
+        )),
         Step::worked(format!("τ_θz = 2 (−({xz}) ({s}) + ({yz}) ({c})) = {} MPa", mpa(at.shear))),
-        Step::worked(principal_line(at, wall.shear.pore)),
-    ]
+        Step::worked(principal_line(at, wall.shear.pore_behind(pressure), setup.seepage.is_some())),
+    ]);
+    steps
 }
 
-fn principal_line(at: AtWall, pore: f64) -> String {
+fn principal_line(at: AtWall, pore: f64, seeps: bool) -> String {
     let mpa = |c: f64| fixed(c * 1e-6, 4);
     let (e1, e2, _) = at.in_the_wall();
     format!(
-        "in the wall: {} and {} MPa; less P_p = {}: {}, {} and across it {} MPa",
+        "in the wall: {} and {} MPa; less {} = {}: {}, {} and across it {} MPa",
         mpa(e1),
         mpa(e2),
+        if seeps { "P_w" } else { "P_p" },
         mpa(pore),
         mpa(e1 - pore),
         mpa(e2 - pore),
@@ -99,26 +213,42 @@ fn principal_line(at: AtWall, pore: f64) -> String {
     )
 }
 
-/// The shear criterion at one place, with the numbers put in.
-pub(super) fn worked_strength(wall: &Wall, [s1, _, s3]: [f64; 3]) -> Step {
-    let line = wall.shear.line;
-    let mpa = |c: f64| fixed(c * 1e-6, 4);
-    Step::worked(format!(
-        "UCS + q σ'_3 − σ'_1 = {} + {} · ({}) − ({}) = {} MPa",
-        mpa(line.ucs),
-        fixed(line.q, 5),
-        mpa(s3),
-        mpa(s1),
-        mpa(line.margin([s1, 0.0, s3]))
-    ))
-}
-
-/// The effective principal stresses at one place, larger first.
-pub(super) fn effective(wall: &Wall, theta: f64, pressure: f64) -> [f64; 3] {
-    let at = wall.shear.kirsch.at(theta, pressure);
-    let (e1, e2, _) = at.in_the_wall();
-    let pore = wall.inputs.pore.si();
-    let mut all = [e1 - pore, e2 - pore, at.radial - pore];
-    all.sort_unstable_by(|a, b| b.total_cmp(a));
-    all
+/// The shear criterion at one place, with the numbers put in; slip on the plane of weakness where
+/// there is one.
+pub(super) fn worked_strength(wall: &Wall, theta: f64, pressure: f64) -> Vec<Step> {
+    let mut steps = wall.strength().worked(wall.shear.principal(theta, pressure));
+    let (Some(weak), Ok(q)) = (wall.setup.weak_plane, wall.attitude.matrix()) else { return steps };
+    let Ok(axes) = weak.plane.axes() else { return steps };
+    let n = crate::frames::vector::apply(&q, axes.normal);
+    let (s, c) = theta.sin_cos();
+    let [r, h, z] = [c * n[0] + s * n[1], c * n[1] - s * n[0], n[2]];
+    let at = wall.shear.at(theta, pressure);
+    let t = [at.radial * r, at.hoop * h + at.shear * z, at.shear * h + at.axial * z];
+    let normal = t[0] * r + t[1] * h + t[2] * z;
+    let shear = [t[0] - normal * r, t[1] - normal * h, t[2] - normal * z];
+    let shear = crate::frames::vector::norm(shear);
+    let behind = wall.shear.pore_behind(pressure);
+    let tan = weak.friction_angle.si().tan();
+    let mpa = |v: f64| fixed(v * 1e-6, 4);
+    steps.push(Step::worked(format!(
+        "plane of weakness, normal in wall axes (r, θ, z) = ({}, {}, {}): traction ({}, {}, {}) MPa; σ_n = {}, σ'_n = {}, τ = {} MPa",
+        fixed(r, 6),
+        fixed(h, 6),
+        fixed(z, 6),
+        mpa(t[0]),
+        mpa(t[1]),
+        mpa(t[2]),
+        mpa(normal),
+        mpa(normal - behind),
+        mpa(shear)
+    )));
+    steps.push(Step::worked(format!(
+        "c_w + σ'_n tan φ_w − τ = {} + ({}) · {} − {} = {} MPa",
+        crate::units::as_typed(weak.cohesion.in_mpa()),
+        mpa(normal - behind),
+        fixed(tan, 6),
+        mpa(shear),
+        mpa(weak.cohesion.si() + (normal - behind) * tan - shear)
+    )));
+    steps
 }

@@ -3,25 +3,29 @@
 //!
 //! # Conventions
 //!
-//! Isotropic, linear elastic rock in plane strain along the hole; an impermeable wall; stresses in
-//! the hole's axes (see [`frames`](crate::frames)); tool face θ clockwise from the top of the hole
+//! Isotropic, linear elastic rock in plane strain along the hole; stresses in the hole's axes (see [`frames`](crate::frames)); tool face θ clockwise from the top of the hole
 //! looking down it, from the hole's azimuth when it is vertical. Everything repeats after 180° of
 //! tool face, only τθz changes its sign there; an arc or a limit is given by its tool face in
 //! 0–180° and stands for both sides.
 //!
-//! Effective stress for failure is Terzaghi's: total stress less the pore pressure of the formation.
+//! Effective stress for failure is Terzaghi's: total stress less the pore pressure behind the wall.
+//! That is the formation's at an impermeable wall, which a wall is until it is said to be permeable or
+//! partly sealed.
 //!
 //! # Does not do
 //!
-//! Time, temperature, chemistry, weak planes, stress changed by earlier failure, and rock that
-//! creeps. A breakout is the arc that fails elastically at first; it deepens, and need not widen.
+//! Time, chemistry, stress changed by earlier failure, and rock that creeps (where that is said,
+//! every result warns). A breakout is the arc that fails elastically at first; it deepens, and need not widen.
 
 mod arcs;
 mod around;
 mod breakout;
 mod circle;
 mod direction;
+mod edges;
+mod effective;
 mod ends;
+mod excess;
 mod kirsch;
 mod limit;
 mod limits;
@@ -31,13 +35,15 @@ mod method;
 mod range;
 mod range_card;
 mod range_check;
+mod search;
 mod second_route;
+mod setup;
 mod shear;
+mod slip;
 mod stress_at;
 mod tension;
 #[cfg(test)]
 mod tests;
-mod trigonometric;
 #[allow(clippy::module_inception)]
 mod wall;
 mod width;
@@ -47,5 +53,6 @@ pub use breakout::{ArcsOutcome, Breakout, FailingArcs};
 pub use limit::{Limit, LimitKind, Mode, WallDirection};
 pub use limits::{Limits, LimitsInputs, LimitsOutcome};
 pub use range::{Governs, RangeChoices, RangeEnd, RangeInputs, RangeOutcome, RecommendedRange};
+pub use setup::{Thermal, WallInputs, WallSetup, WeakPlane};
 pub use stress_at::{AtToolface, AtToolfaceOutcome, WallStress};
-pub use wall::{AtPressure, Wall, WallInputs};
+pub use wall::{AtPressure, Wall};

@@ -4,7 +4,8 @@
 use serde::{Deserialize, Serialize};
 
 use super::limits::Limits;
-use super::wall::{Wall, WallInputs};
+use super::setup::WallSetup;
+use super::wall::Wall;
 use crate::error::{Error, Result};
 use crate::units::{
     Angle, Density, Gradient, Length, Pressure, Quantity, require_between, require_not_negative, with_typed_unit,
@@ -112,7 +113,7 @@ pub struct RecommendedRange {
 /// The inputs of a recommended range.
 #[derive(Clone, Copy, Debug, PartialEq, Serialize, Deserialize)]
 pub struct RangeInputs {
-    pub(super) wall: WallInputs,
+    pub(super) wall: WallSetup,
     pub(super) choices: RangeChoices,
 }
 
@@ -162,7 +163,7 @@ impl Wall {
             *cell = at.lower_shear.pressure();
         }
         Ok(RecommendedRange {
-            bottom: bottom(&limits, self.inputs.pore + choices.margin_bottom).map(|(p, g)| end(p, g)),
+            bottom: bottom(&limits, self.setup.inputs.pore + choices.margin_bottom).map(|(p, g)| end(p, g)),
             top: top(&limits).map(|(p, g)| end(p - choices.margin_top, g)),
             at_widths,
             limits,

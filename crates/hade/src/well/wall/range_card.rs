@@ -1,9 +1,9 @@
 //! The card of a recommended range.
 
 use super::limits_card::shown;
+use super::method;
 use super::range::{RangeEnd, RangeInputs, RangeOutcome, RecommendedRange};
 use super::wall::Wall;
-use super::{direction, method};
 use crate::card::{
     Axis, Card, Check, Column, Explain, Explanation, Figure, Formula, Item, Layer, Mark, Reference, Role, Step, Table,
 };
@@ -18,10 +18,10 @@ impl Explain for RecommendedRange {
     type Outcome = RangeOutcome;
 
     fn compute(inputs: RangeInputs) -> Result<Self> {
-        Wall::new(inputs.wall)?.recommended(inputs.choices)
+        Wall::of(inputs.wall)?.recommended(inputs.choices)
     }
     fn inputs(&self) -> RangeInputs {
-        RangeInputs { wall: self.wall.inputs, choices: self.choices }
+        RangeInputs { wall: self.wall.setup, choices: self.choices }
     }
     fn outcome(&self) -> RangeOutcome {
         RangeOutcome {
@@ -76,7 +76,7 @@ impl Explain for RecommendedRange {
             steps: self.steps(),
             figures: vec![self.figure()],
             notes: self.notes(),
-            topics: ["mud-weight", "limits", "breakout", "wall", "elastic"].map(str::to_owned).to_vec(),
+            topics: self.wall.topics(&["mud-weight", "limits", "breakout", "wall", "elastic"]),
         }
     }
 
@@ -137,21 +137,21 @@ impl RecommendedRange {
             "Hold static density less swab against the bottom, and circulating density and surge against the top."
                 .to_owned(),
         );
-        notes.push(direction::reference(self.wall.attitude));
+        notes.extend(method::notes(&self.wall));
         notes
     }
 
     fn steps(&self) -> Vec<Step> {
         let c = &self.choices;
-        let mut steps = self.wall.inputs.rock.strength.steps();
+        let mut steps = self.wall.strength().steps();
         let mpa = |p: Pressure| fixed(p.in_mpa(), 4);
         steps.push(Step::worked(format!(
             "p_b: lower shear limit at {}° = {}; P_p + m_b = {} + {} = {} MPa",
             as_typed(c.allowed_width.in_deg()),
             shown(&self.limits.lower_shear),
-            mpa(self.wall.inputs.pore),
+            mpa(self.wall.setup.inputs.pore),
             mpa(c.margin_bottom),
-            mpa(self.wall.inputs.pore + c.margin_bottom)
+            mpa(self.wall.setup.inputs.pore + c.margin_bottom)
         )));
         steps.push(Step::worked(format!(
             "p_t: S_3 = {}, p_i = {}, p_us = {}; the lowest less m_t = {}",
@@ -258,7 +258,7 @@ impl RecommendedRange {
                 Some([degrees, at.lower_shear.pressure()?.in_mpa()])
             })
             .collect();
-        let mut levels = vec![("P_p", Role::Quiet, wall.inputs.pore.in_mpa())];
+        let mut levels = vec![("P_p", Role::Quiet, wall.setup.inputs.pore.in_mpa())];
         for (limit, label, role) in [
             (self.limits.least_stress, "S_3", Role::Second),
             (self.limits.initiation, "initiation", Role::Third),

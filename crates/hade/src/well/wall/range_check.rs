@@ -80,7 +80,7 @@ fn width_held(route: &ByVectors, pressure: f64, width: f64) -> [f64; 2] {
 /// pressure makes fail there is within the width.
 fn check_bottom(route: &ByVectors, inputs: &RangeInputs, end: &RangeEnd) -> [Check; 2] {
     let (bottom, width) = (end.pressure.si(), inputs.choices.allowed_width.si());
-    let balance = inputs.wall.pore.si() + inputs.choices.margin_bottom.si();
+    let balance = inputs.wall.inputs.pore.si() + inputs.choices.margin_bottom.si();
     let unit = route.size() * 1e-6;
     if end.governed_by == Governs::PorePressure {
         return [
@@ -121,7 +121,7 @@ fn check_top(route: &ByVectors, inputs: &RangeInputs, top: f64) -> [Check; 2] {
     let size = route.size();
     let nudge = 1e-7 * size;
     let bare = top + inputs.choices.margin_top.si();
-    let tensile = inputs.wall.rock.tensile_strength.si();
+    let tensile = inputs.wall.inputs.rock.tensile_strength.si();
     let [.., s3] = route.far().values_by_invariants();
     let broken = |p: f64| {
         ((p - s3) / size).max((-tensile - route.least_in_wall_round(p)) / size).max(route.worst_of_side(p, 1.0) / size)

@@ -7,8 +7,9 @@
 
 use std::f64::consts::PI;
 
-use super::wall::WallInputs;
-use crate::frames::vector::{M3, V3, add, dot, scale};
+use super::setup::WallSetup;
+use crate::frames::vector::{M3, V3, add, dot, norm, scale};
+use crate::rock::Strength;
 use crate::stress::tensor::Tensor;
 use crate::units::Quantity;
 
@@ -21,34 +22,50 @@ pub(super) struct ByVectors {
     along: V3,
     poisson: f64,
     pore: f64,
-    /// tan(45° + φ/2), from which this route has q and UCS.
-    tangent: f64,
-    ucs: f64,
+    strength: Strength,
+    /// The share of the pressure above the pore pressure that stands behind the wall.
+    passes: f64,
+    /// What hoop and axial stress gain per unit of that pressure, and by warming.
+    seepage: f64,
+    thermal: f64,
+    weak: Option<(V3, f64, f64)>,
+    size: f64,
 }
 
 /// How finely the second route looks round the hole: every half degree.
 const LOOKS: u32 = 360;
 
 impl ByVectors {
-    pub fn new(inputs: &WallInputs) -> Option<Self> {
+    pub fn new(setup: &WallSetup) -> Option<Self> {
+        let inputs = &setup.inputs;
         let far = inputs.stress.geographic();
         let [top, right, along] = inputs.stress.attitude()?.matrix().ok()?;
-        let (tangent, ucs) = inputs.rock.strength.by_tangent();
-        Some(ByVectors {
-            far,
-            top,
-            right,
-            along,
-            poisson: inputs.rock.poisson,
-            pore: inputs.pore.si(),
-            tangent,
-            ucs: ucs.si(),
-        })
+        let (strength, nu, pore) = (inputs.rock.strength.checked().ok()?, inputs.rock.poisson, inputs.pore.si());
+        let weak = match setup.weak_plane {
+            Some(weak) => Some((weak.plane.axes().ok()?.normal, weak.cohesion.si(), weak.friction_angle.si().tan())),
+            None => None,
+        };
+        let seepage = setup.seepage.map_or(0.0, |s| (1.0 - s.sealing) * s.biot * (1.0 - nu / (1.0 - nu)));
+        let thermal =
+            setup.thermal.map_or(0.0, |t| t.youngs_modulus.si() / (1.0 - nu) * (t.expansion.si() * t.warming.si()));
+        let size = (far.largest() + pore.abs() + strength.law().size() + thermal.abs()).max(1.0);
+        let passes = setup.seepage.map_or(0.0, |s| 1.0 - s.sealing);
+        Some(ByVectors { far, top, right, along, poisson: nu, pore, strength, passes, seepage, thermal, weak, size })
     }
 
     /// A size for tolerances.
     pub fn size(&self) -> f64 {
-        (self.far.largest() + self.pore.abs() + self.ucs).max(1.0)
+        self.size
+    }
+
+    /// What seepage and warming add to hoop and axial stress.
+    pub fn added(&self, pressure: f64) -> f64 {
+        self.seepage * (pressure - self.pore) + self.thermal
+    }
+
+    /// The pore pressure behind the wall.
+    pub fn pore_behind(&self, pressure: f64) -> f64 {
+        self.passes * pressure + (1.0 - self.passes) * self.pore
     }
 
     pub fn direction(&self, theta: f64) -> V3 {
@@ -72,10 +89,11 @@ impl ByVectors {
         let [a, b, c, ..] = self.far.0;
         let across = a + b + c - axial;
         let normal = dot(n, self.far.times(n));
+        let added = self.added(pressure);
         [
             pressure,
-            3.0 * across - 4.0 * normal - pressure,
-            axial - self.poisson * (4.0 * normal - 2.0 * across),
+            3.0 * across - 4.0 * normal - pressure + added,
+            axial - self.poisson * (4.0 * normal - 2.0 * across) + added,
             2.0 * dot(m, traction),
         ]
     }
@@ -98,13 +116,21 @@ impl ByVectors {
 
     /// Effective principal stresses by the whole tensor's eigenvalues.
     pub fn effective(&self, theta: f64, pressure: f64) -> [f64; 3] {
-        self.tensor(theta, pressure).eigen().values.map(|v| v - self.pore)
+        self.tensor(theta, pressure).eigen().values.map(|v| v - self.pore_behind(pressure))
     }
 
-    /// σ1' − q σ3' − UCS.
+    /// By how much the rock, or its plane of weakness, is beyond what it bears.
     pub fn excess(&self, theta: f64, pressure: f64) -> f64 {
-        let [s1, _, s3] = self.effective(theta, pressure);
-        s1 - self.tangent * self.tangent * s3 - self.ucs
+        let total = self.tensor(theta, pressure);
+        let behind = self.pore_behind(pressure);
+        let intact = self.strength.excess_by_tensor(total.add(Tensor([-behind, -behind, -behind, 0.0, 0.0, 0.0])));
+        let slip = self.weak.map_or(f64::NEG_INFINITY, |(n, cohesion, friction)| {
+            let traction = total.times(n);
+            let normal = dot(n, traction);
+            let shear = norm(add(traction, scale(n, -normal)));
+            shear - cohesion - (normal - behind) * friction
+        });
+        intact.max(slip)
     }
 
     /// The effective principal stresses within the wall: the stress across it is put out of the way
@@ -113,7 +139,8 @@ impl ByVectors {
         let [_, hoop, axial, shear] = self.parts(theta, pressure);
         let aside = hoop.max(axial) + shear.abs();
         let [_, e1, e2] = self.put_together(theta, aside, hoop, axial, shear).eigen().values;
-        [e1 - self.pore, e2 - self.pore]
+        let behind = self.pore_behind(pressure);
+        [e1 - behind, e2 - behind]
     }
 
     /// The greatest value of a function over tool faces 0–180° and where, by looking everywhere and
@@ -141,22 +168,17 @@ impl ByVectors {
         self.greatest(|theta| self.excess(theta, pressure)).0
     }
 
-    /// The worst excess of one side round the hole: side −1 what too little pressure does (the hole
-    /// closes in), +1 what too much does (it is pushed out). Failure within the wall belongs to the
-    /// side on which a little more pressure makes it better, or worse.
+    /// The worst excess of one side round the hole: side −1 what too little pressure does (a little
+    /// more makes it better), +1 what too much does. Where a place fails on the other side it counts
+    /// as holding on this one.
     pub fn worst_of_side(&self, pressure: f64, side: f64) -> f64 {
         self.greatest(|theta| self.excess_of_side(theta, pressure, side)).0
     }
 
     fn excess_of_side(&self, theta: f64, pressure: f64, side: f64) -> f64 {
         let nudge = 1e-6 * self.size();
-        let q = self.tangent * self.tangent;
-        let across = pressure - self.pore;
-        let [e1, e2] = self.in_the_wall(theta, pressure);
-        let [more1, more2] = self.in_the_wall(theta, pressure + nudge);
-        let of_side = if side < 0.0 { e1 - q * across } else { across - q * e2 };
-        let within = if ((more1 - q * more2) - (e1 - q * e2)) * side > 0.0 { e1 - q * e2 } else { of_side };
-        of_side.max(within) - self.ucs
+        let (here, more) = (self.excess(theta, pressure), self.excess(theta, pressure + nudge));
+        if here <= 0.0 || (more - here) * side > 0.0 { here } else { -here }
     }
 
     /// The least effective principal stress round the hole.

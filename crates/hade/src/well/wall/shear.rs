@@ -1,39 +1,44 @@
-//! Shear failure of a wall by Mohr–Coulomb: the pressures between which the whole wall holds.
+//! Shear failure of a wall: the pressures between which the whole wall holds, the worst place at a
+//! pressure, the least bad pressure where none is safe.
 //!
-//! With effective principal stresses e1 ≥ e2 in the wall and R = p − P_p across it, the rock holds
-//! where each of these does:
-//! - e1 ≤ UCS + q R (else the hole closes in: breakout),
-//! - e1 − q e2 ≤ UCS (else it fails within the wall),
-//! - R ≤ UCS + q e2 (else the hole is pushed out).
-//!
-//! Each is convex in p, so the safe pressures of one place are an interval, in closed form (see
-//! [`super::ends`]), and so are those of the whole wall.
+//! The wall fails where the criterion of its rock, or slip on its plane of weakness, is exceeded.
+//! Mohr–Coulomb at an impermeable wall has both ends of the safe pressures of a place in closed form
+//! ([`super::ends`]); the other criteria, and other walls, are searched ([`super::search`]).
 
-use super::circle::{Jet, OnCircle, Peak, greatest, smallest};
-use super::ends::{Discriminant, LowerEnd, Root, UpperEnd};
-use super::kirsch::{AtWall, Kirsch, Wave};
-use crate::rock::MohrCoulomb;
+use super::circle::{CIRCLE, Peak, greatest};
+use super::effective::EffectiveWall;
+use super::ends::ClosedForm;
+use super::excess::Excess;
+use super::kirsch::{AtWall, Kirsch};
+use super::search::{Look, LowerEnd, lower_end, rise};
+use super::slip::PlaneAtWall;
+use crate::rock::{Criterion, Law, with_law};
 
 /// A wall with its strength and pore pressure, in Pa.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub(crate) struct ShearWall {
+    /// Total elastic stresses, thermal ones among them.
     pub kirsch: Kirsch,
-    pub line: MohrCoulomb,
+    pub law: Law,
+    pub plane: Option<PlaneAtWall>,
+    /// The pore pressure of the formation.
     pub pore: f64,
+    /// The share of the pressure above it that passes the wall: 0 impermeable, 1 permeable.
+    pub passes: f64,
+    /// 2η.
+    pub eta2: f64,
+    effective: EffectiveWall,
+    scale: f64,
 }
 
 /// The pressures between which the whole wall holds.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub(crate) enum Window {
-    Open {
-        lower: Peak,
-        upper: Peak,
-    },
+    /// An end that is `None` is none: the wall holds at any pressure on that side.
+    Open { lower: Option<Peak>, upper: Option<Peak> },
     /// At no pressure does the whole wall hold. Where each place does at some, the two ends are
     /// given all the same, lower above upper: (lower, upper).
-    Closed {
-        crossed: Option<(f64, f64)>,
-    },
+    Closed { crossed: Option<(f64, f64)> },
 }
 
 /// The pressure at which the wall fails least.
@@ -47,219 +52,236 @@ pub(crate) struct LeastBad {
     pub flat: bool,
 }
 
+/// An excess within this share of the scale is zero.
+const NOISE: f64 = 1e-13;
+
 impl ShearWall {
+    pub fn new(kirsch: Kirsch, law: Law, plane: Option<PlaneAtWall>, pore: f64, passes: f64, eta2: f64) -> Self {
+        let scale = kirsch.scale() + law.size() + pore.abs() + plane.map_or(0.0, |p| p.size());
+        let effective = EffectiveWall::new(&kirsch, pore, passes, eta2);
+        ShearWall { kirsch, law, plane, pore, passes, eta2, effective, scale }
+    }
+
+    /// The size of the numbers at hand, for tolerances.
     pub fn scale(&self) -> f64 {
-        self.kirsch.scale() + self.line.ucs + self.pore.abs()
+        self.scale
     }
 
-    /// Within the wall: UCS + (q − 1)(σz − P_p), which bounds what the axial stress lets it bear.
-    fn within(&self) -> Wave {
-        let q1 = self.line.q - 1.0;
-        self.kirsch.axial.scaled(q1, self.line.ucs - q1 * self.pore)
+    pub fn effective_wall(&self) -> &EffectiveWall {
+        &self.effective
     }
 
-    fn discriminant(&self) -> Discriminant {
-        Discriminant { within: self.within(), shear_squared: self.kirsch.shear_squared, q4: 4.0 * self.line.q }
-    }
-
-    /// The lowest pressure that holds at each place, where any does.
-    pub fn lower_end(&self) -> LowerEnd {
-        LowerEnd::new(&self.kirsch, self.line, self.pore, self.discriminant())
-    }
-
-    /// The highest pressure that holds at each place, where any does.
-    pub fn upper_end(&self) -> UpperEnd {
-        UpperEnd::new(&self.kirsch, self.line, self.pore, self.discriminant())
-    }
-
-    /// Both ends at one place, where any pressure holds there.
-    pub fn interval_at(&self, c: f64, s: f64) -> Option<(f64, f64)> {
-        let (lower, upper) = (self.lower_end().value(c, s), self.upper_end().value(c, s));
-        let can = self.within().at(c, s) >= 0.0 && self.discriminant().value(c, s) >= 0.0;
-        (can && lower <= upper).then_some((lower, upper))
-    }
-
-    /// Whether every place of the wall holds at some pressure.
-    fn holds_somewhere(&self) -> bool {
-        let g = self.within();
-        let t = self.kirsch.shear_squared;
-        let least = g.mean - g.amplitude();
-        if least < 0.0 {
-            return false;
+    /// The wall in closed form, where there is one.
+    pub fn closed_form(&self) -> Option<ClosedForm> {
+        match (self.law, self.plane) {
+            (Law::MohrCoulomb(line), None) if self.passes == 0.0 => {
+                Some(ClosedForm::new(&self.kirsch, line, self.pore))
+            }
+            _ => None,
         }
-        if least * least >= 4.0 * self.line.q * (t.mean + t.amplitude()) {
-            return true;
-        }
-        let scale = self.scale();
-        smallest(self.discriminant(), scale * scale).value >= 0.0
+    }
+
+    #[inline(always)]
+    pub fn excess<C: Criterion>(&self, criterion: C, pressure: f64) -> Excess<'_, C> {
+        Excess { wall: &self.effective, criterion, plane: self.plane.as_ref(), x: pressure - self.pore }
+    }
+
+    /// Pressures beyond which nothing is looked for, above and below the pore pressure.
+    fn reach(&self) -> f64 {
+        64.0 * self.scale.max(1.0)
+    }
+
+    /// By how much one place is beyond what the rock bears (negative: it holds).
+    pub fn excess_at(&self, pressure: f64, phi: f64) -> f64 {
+        use super::circle::OnCircle;
+        let (s, c) = phi.sin_cos();
+        with_law!(self.law, criterion => self.excess(criterion, pressure).value(c, s))
+    }
+
+    /// Whether slip on the plane of weakness is what is worst at a place.
+    pub fn slips_at(&self, pressure: f64, phi: f64) -> bool {
+        let (s, c) = phi.sin_cos();
+        let place = self.effective.place(c, s, pressure - self.pore);
+        let intact = ShearWall { plane: None, ..*self }.excess_at(pressure, phi);
+        self.plane.is_some_and(|plane| plane.slip(c, s, &place) >= intact)
+    }
+
+    /// The worst place of the wall at a pressure.
+    pub fn worst(&self, pressure: f64) -> Peak {
+        with_law!(self.law, criterion => greatest(&self.excess(criterion, pressure), self.scale))
     }
 
     /// The pressures between which the whole wall holds, exact in the tool face.
     pub fn window(&self) -> Window {
-        if !self.holds_somewhere() {
-            return Window::Closed { crossed: None };
+        if let Some(closed) = self.closed_form() {
+            return closed.window();
         }
-        let scale = self.scale();
-        let lower = greatest(&self.lower_end(), scale);
-        let upper = smallest(self.upper_end(), scale);
-        if lower.value <= upper.value {
-            Window::Open { lower, upper }
-        } else {
-            Window::Closed { crossed: Some((lower.value, upper.value)) }
+        match self.searched(-1.0) {
+            Side::Never => Window::Closed { crossed: self.crossed() },
+            lower => Window::Open { lower: lower.peak(), upper: self.searched(1.0).peak() },
         }
     }
 
-    fn excess(&self, pressure: f64) -> Excess {
-        let hoop = self.kirsch.hoop.scaled(1.0, -pressure - self.pore);
-        let axial = self.kirsch.axial.scaled(1.0, -self.pore);
-        Excess {
-            root: Root::new(hoop, axial, self.kirsch.shear_squared),
-            radial: pressure - self.pore,
-            q: self.line.q,
-            ucs: self.line.ucs,
+    /// The lower end of the safe pressures alone; `None` when there is none or no pressure is safe.
+    #[inline]
+    pub fn lower(&self) -> Option<f64> {
+        if let Some(closed) = self.closed_form() {
+            return closed.lower();
+        }
+        self.searched(-1.0).peak().map(|peak| peak.value)
+    }
+
+    /// One end of the safe pressures by search: side −1 the lower, +1 the upper.
+    fn searched(&self, side: f64) -> Side {
+        with_law!(self.law, criterion => self.searched_by(criterion, side))
+    }
+
+    fn searched_by<C: Criterion>(&self, criterion: C, side: f64) -> Side {
+        let noise = NOISE * self.scale;
+        let worst = std::cell::Cell::new(Peak { phi: 0.0, value: 0.0, flat: false });
+        // y = −side · x rises into the safe pressures from either side.
+        let at_place = |c: f64, s: f64, y: f64| {
+            let x = -side * y;
+            let jet = self.excess(criterion, self.pore + x).pressed(c, s, x);
+            (jet.value, -side * jet.slope)
+        };
+        let look = |y: f64| {
+            let peak = greatest(&self.excess(criterion, self.pore - side * y), self.scale);
+            let (s, c) = peak.phi.sin_cos();
+            let (_, slope) = at_place(c, s, y);
+            worst.set(peak);
+            Look { excess: peak.value, slope, next: rise(|y| at_place(c, s, y), y, noise) }
+        };
+        // It begins at the end of the place with the largest hoop stress (the smallest for the upper).
+        let hoop = self.effective.hoop;
+        let swing = hoop.amplitude();
+        let (c, s) = if swing > 0.0 { (-side * hoop.cos / swing, -side * hoop.sin / swing) } else { (1.0, 0.0) };
+        let start = rise(|y| at_place(c, s, y), -self.scale, noise);
+        match lower_end(look, start, self.reach(), noise) {
+            LowerEnd::At(y) => Side::At(Peak { value: self.pore - side * y, ..worst.get() }),
+            LowerEnd::Never => Side::Never,
+            LowerEnd::Unbounded => Side::Unbounded,
         }
     }
 
-    /// By how much σ1' exceeds what the rock bears at one place (negative: it holds).
-    pub fn excess_at(&self, pressure: f64, phi: f64) -> f64 {
-        let (s, c) = phi.sin_cos();
-        self.excess(pressure).value(c, s)
+    /// Both ends of the safe pressures of one place, where any is safe there; infinite where there is
+    /// no end.
+    pub fn interval_at(&self, c: f64, s: f64) -> Option<(f64, f64)> {
+        if let Some(closed) = self.closed_form() {
+            return closed.interval_at(c, s);
+        }
+        with_law!(self.law, criterion => {
+            let end = |side: f64| {
+                let look = |y: f64| {
+                    let x = -side * y;
+                    let jet = self.excess(criterion, self.pore + x).pressed(c, s, x);
+                    let slope = -side * jet.slope;
+                    Look { excess: jet.value, slope, next: y - jet.value / slope }
+                };
+                match lower_end(look, -self.scale, self.reach(), NOISE * self.scale) {
+                    LowerEnd::At(y) => Some(self.pore - side * y),
+                    LowerEnd::Unbounded => Some(side * f64::INFINITY),
+                    LowerEnd::Never => None,
+                }
+            };
+            Some((end(-1.0)?, end(1.0)?))
+        })
     }
 
-    /// The worst place of the wall at a pressure. Each of the three conditions is smooth round the
-    /// hole; the worst of them can have two hills closer together than a look round would tell.
-    pub fn worst(&self, pressure: f64) -> Peak {
-        let (excess, scale) = (self.excess(pressure), self.scale());
-        let peaks = [Worst::Closing, Worst::Within, Worst::Pushed]
-            .map(|condition| greatest(&Condition { excess: &excess, condition }, scale));
-        let highest = peaks.iter().map(|p| p.value).fold(f64::NEG_INFINITY, f64::max);
-        let [first, ..] = peaks;
-        // Of places that are equally bad the first.
-        peaks
-            .into_iter()
-            .filter(|p| p.value >= highest - 1e-14 * scale)
-            .min_by(|a, b| a.phi.total_cmp(&b.phi))
-            .unwrap_or(first)
+    /// Where no pressure is safe for the whole wall but some is for each place: the largest of their
+    /// lower ends and the smallest of their upper ones, looked for round the hole.
+    fn crossed(&self) -> Option<(f64, f64)> {
+        let mut ends = Vec::with_capacity(CIRCLE.cos.len());
+        for (c, s) in CIRCLE.cos.iter().zip(&CIRCLE.sin) {
+            ends.push(self.interval_at(*c, *s)?);
+        }
+        let step = std::f64::consts::TAU / ends.len() as f64;
+        let closer = |of: &dyn Fn((f64, f64)) -> f64| {
+            let (mut best, mut at) = (f64::NEG_INFINITY, 0);
+            for (k, interval) in ends.iter().enumerate() {
+                if of(*interval) > best {
+                    (best, at) = (of(*interval), k);
+                }
+            }
+            let value = |phi: f64| {
+                let (s, c) = phi.sin_cos();
+                self.interval_at(c, s).map_or(f64::INFINITY, of)
+            };
+            // Golden section on the hill about the best look.
+            let (mut low, mut high) = ((at as f64 - 1.0) * step, (at as f64 + 1.0) * step);
+            let ratio = 0.5 * (5.0_f64.sqrt() - 1.0);
+            for _ in 0..60 {
+                let (a, b) = (high - ratio * (high - low), low + ratio * (high - low));
+                if value(a) > value(b) { high = b } else { low = a }
+            }
+            value(0.5 * (low + high)).max(best)
+        };
+        let lower = closer(&|(lower, _)| lower);
+        let upper = -closer(&|(_, upper)| -upper);
+        (lower.is_finite() && upper.is_finite()).then_some((lower, upper))
     }
 
-    /// The pressure at which the worst place is least bad. The worst excess is convex in p, so the
-    /// sign of its slope decides every step.
+    /// The pressure at which the worst place is least bad. The sign of the worst excess's slope
+    /// decides every step.
     pub fn least_bad(&self) -> LeastBad {
-        let reach = 8.0 * (1.0 + self.line.q) * self.scale().max(1.0);
+        let reach = self.reach();
         let (mut low, mut high) = (-reach, reach);
-        let mut found = LeastBad { pressure: 0.0, excess: f64::INFINITY, phi: 0.0, flat: false };
+        let mut found = LeastBad { pressure: self.pore, excess: f64::INFINITY, phi: 0.0, flat: false };
         for _ in 0..120 {
-            let pressure = 0.5 * (low + high);
-            let worst = self.worst(pressure);
+            let x = 0.5 * (low + high);
+            let worst = self.worst(self.pore + x);
             let (s, c) = worst.phi.sin_cos();
-            let slope = self.excess(pressure).by_pressure(c, s);
-            found = LeastBad { pressure, excess: worst.value, phi: worst.phi, flat: worst.flat };
+            let slope = with_law!(self.law, criterion => self.excess(criterion, self.pore + x).pressed(c, s, x).slope);
+            found = LeastBad { pressure: self.pore + x, excess: worst.value, phi: worst.phi, flat: worst.flat };
             if slope < 0.0 {
-                low = pressure;
+                low = x;
             } else if slope > 0.0 {
-                high = pressure;
+                high = x;
             } else {
                 break;
             }
-            if high - low <= 1e-15 * reach {
+            if high - low <= 1e-16 * reach {
                 break;
             }
         }
         found
     }
 
-    /// The stresses at one place.
-    pub fn at(&self, phi: f64, pressure: f64) -> AtWall {
-        self.kirsch.at(0.5 * phi, pressure)
+    /// The pore pressure behind the wall at a pressure in the hole.
+    pub fn pore_behind(&self, pressure: f64) -> f64 {
+        self.pore + self.passes * (pressure - self.pore)
+    }
+
+    /// The total stresses at a tool face, with what seepage adds.
+    pub fn at(&self, theta: f64, pressure: f64) -> AtWall {
+        let seepage = self.passes * self.eta2 * (pressure - self.pore);
+        let at = self.kirsch.at(theta, pressure);
+        AtWall { hoop: at.hoop + seepage, axial: at.axial + seepage, ..at }
+    }
+
+    /// σ1', σ2', σ3' at a tool face.
+    pub fn principal(&self, theta: f64, pressure: f64) -> [f64; 3] {
+        let at = self.at(theta, pressure);
+        let (e1, e2, _) = at.in_the_wall();
+        let pore = self.pore_behind(pressure);
+        let mut all = [e1 - pore, e2 - pore, at.radial - pore];
+        all.sort_unstable_by(|a, b| b.total_cmp(a));
+        all
     }
 }
 
-/// By how much the worst pair of principal stresses exceeds what the rock bears, in terms of σ1'.
-struct Excess {
-    root: Root,
-    radial: f64,
-    q: f64,
-    ucs: f64,
+/// One end of the safe pressures.
+enum Side {
+    At(Peak),
+    Never,
+    Unbounded,
 }
 
-/// Which of the three conditions is worst.
-#[derive(Clone, Copy)]
-enum Worst {
-    Closing,
-    Within,
-    Pushed,
-}
-
-impl Excess {
-    /// Of e1, e2 at one place.
-    #[inline(always)]
-    fn worst(&self, e1: f64, e2: f64) -> (Worst, f64) {
-        let closing = e1 - self.q * self.radial - self.ucs;
-        let within = e1 - self.q * e2 - self.ucs;
-        let pushed = self.radial - self.q * e2 - self.ucs;
-        if pushed > within.max(closing) {
-            (Worst::Pushed, pushed)
-        } else if within > closing {
-            (Worst::Within, within)
-        } else {
-            (Worst::Closing, closing)
-        }
-    }
-
-    /// Its derivative by the pressure in the hole.
-    fn by_pressure(&self, c: f64, s: f64) -> f64 {
-        let (e1, e2) = self.root.both(c, s);
-        // The hoop direction's share in the axis of e1.
-        let share = self.root.share(c, s);
-        match self.worst(e1, e2).0 {
-            Worst::Closing => -share - self.q,
-            Worst::Within => -share + self.q * (1.0 - share),
-            Worst::Pushed => 1.0 + self.q * (1.0 - share),
-        }
-    }
-}
-
-/// One of the three conditions, round the hole.
-struct Condition<'a> {
-    excess: &'a Excess,
-    condition: Worst,
-}
-
-impl OnCircle for Condition<'_> {
-    fn value(&self, c: f64, s: f64) -> f64 {
-        self.jet(c, s).value
-    }
-    fn jet(&self, c: f64, s: f64) -> Jet {
-        let Excess { root, radial, q, ucs } = self.excess;
-        let (e1, e2) = (root.jet(1.0, c, s), root.jet(-1.0, c, s));
-        match self.condition {
-            Worst::Closing => Jet { value: e1.value - q * radial - ucs, ..e1 },
-            Worst::Within => Jet {
-                value: e1.value - q * e2.value - ucs,
-                slope: e1.slope - q * e2.slope,
-                bend: e1.bend - q * e2.bend,
-            },
-            Worst::Pushed => Jet { value: radial - q * e2.value - ucs, slope: -q * e2.slope, bend: -q * e2.bend },
-        }
-    }
-}
-
-impl OnCircle for Excess {
-    #[inline(always)]
-    fn value(&self, c: f64, s: f64) -> f64 {
-        let (e1, e2) = self.root.both(c, s);
-        let least = if e2 < self.radial { e2 } else { self.radial };
-        let most = if e1 > self.radial { e1 } else { self.radial };
-        most - self.q * least - self.ucs
-    }
-    fn jet(&self, c: f64, s: f64) -> Jet {
-        let (e1, e2) = (self.root.jet(1.0, c, s), self.root.jet(-1.0, c, s));
-        let q = self.q;
-        let (worst, value) = self.worst(e1.value, e2.value);
-        match worst {
-            Worst::Closing => Jet { value, ..e1 },
-            Worst::Within => Jet { value, slope: e1.slope - q * e2.slope, bend: e1.bend - q * e2.bend },
-            Worst::Pushed => Jet { value, slope: -q * e2.slope, bend: -q * e2.bend },
+impl Side {
+    fn peak(&self) -> Option<Peak> {
+        match self {
+            Side::At(peak) => Some(*peak),
+            Side::Never | Side::Unbounded => None,
         }
     }
 }

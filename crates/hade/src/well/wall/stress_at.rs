@@ -2,7 +2,8 @@
 
 use serde::{Deserialize, Serialize};
 
-use super::wall::{Wall, WallInputs, pressure_item};
+use super::setup::WallSetup;
+use super::wall::{Wall, pressure_item};
 use super::{direction, method, second_route::ByVectors};
 use crate::card::{Card, Check, Explain, Explanation, Item, Step};
 use crate::error::Result;
@@ -34,7 +35,7 @@ pub struct WallStress {
 /// The inputs of a wall stress.
 #[derive(Clone, Copy, Debug, PartialEq, Serialize, Deserialize)]
 pub struct AtToolface {
-    wall: WallInputs,
+    wall: WallSetup,
     pressure: Pressure,
     toolface: Angle,
 }
@@ -58,16 +59,16 @@ impl Wall {
     pub fn stress_at(&self, pressure: Pressure, toolface: Angle) -> Result<WallStress> {
         pressure.finite("wall pressure")?;
         toolface.finite("tool face")?;
-        let at = self.shear.kirsch.at(toolface.si(), pressure.si());
+        let at = self.shear.at(toolface.si(), pressure.si());
         Ok(WallStress {
             radial: Pressure::from_si(at.radial),
             hoop: Pressure::from_si(at.hoop),
             axial: Pressure::from_si(at.axial),
             shear: Pressure::from_si(at.shear),
-            effective: EffectiveStress::of(at.tensor(), self.inputs.pore),
+            effective: EffectiveStress::of(at.tensor(), Pressure::from_si(self.shear.pore_behind(pressure.si()))),
             bearing: direction::bearing(self.attitude, toolface.si()),
             wall: *self,
-            inputs: AtToolface { wall: self.inputs, pressure, toolface },
+            inputs: AtToolface { wall: self.setup, pressure, toolface },
         })
     }
 }
@@ -80,10 +81,10 @@ impl WallStress {
 
     /// The total stress in wall axes: radial, around the hole, along the hole.
     pub fn in_wall_axes(&self) -> Stress<WallAxes> {
-        let at = self.wall.shear.kirsch.at(self.inputs.toolface.si(), self.inputs.pressure.si());
+        let at = self.wall.shear.at(self.inputs.toolface.si(), self.inputs.pressure.si());
         let axes = Axes::Wall {
             attitude: self.wall.attitude,
-            name: self.wall.inputs.stress.name(),
+            name: self.wall.setup.inputs.stress.name(),
             tool_face: self.inputs.toolface,
         };
         let geographic = self.in_geographic().tensor();
@@ -92,7 +93,7 @@ impl WallStress {
 
     /// The total stress in north, east, down.
     pub fn in_geographic(&self) -> Stress<Geographic> {
-        let at = self.wall.shear.kirsch.at(self.inputs.toolface.si(), self.inputs.pressure.si());
+        let at = self.wall.shear.at(self.inputs.toolface.si(), self.inputs.pressure.si());
         let (s, c) = self.inputs.toolface.si().sin_cos();
         // Rows: top, right and along in wall axes (radial, around, along).
         let to_hole = at.tensor().turned(&[[c, -s, 0.0], [s, c, 0.0], [0.0, 0.0, 1.0]]);
@@ -108,7 +109,7 @@ impl Explain for WallStress {
     type Outcome = AtToolfaceOutcome;
 
     fn compute(inputs: AtToolface) -> Result<Self> {
-        Wall::new(inputs.wall)?.stress_at(inputs.pressure, inputs.toolface)
+        Wall::of(inputs.wall)?.stress_at(inputs.pressure, inputs.toolface)
     }
     fn inputs(&self) -> AtToolface {
         self.inputs
@@ -136,6 +137,7 @@ impl Explain for WallStress {
         let near = route.field(theta, 1.0, pressure);
         let (m, t) = (route.direction(theta + std::f64::consts::FRAC_PI_2), route.direction_along());
         let dots = |a: [f64; 3], b: [f64; 3]| mpa(crate::frames::vector::dot(a, near.times(b)));
+        let added = mpa(route.added(pressure));
         let mut checks = vec![
             Check::compare(
                 "wall stresses from the geographic tensor and the hole's axis vectors",
@@ -145,9 +147,9 @@ impl Explain for WallStress {
                 "MPa",
             ),
             Check::compare(
-                "wall stresses from the whole elastic field at one radius, resolved on the wall's axes",
+                "wall stresses from the whole elastic field at one radius, resolved on the wall's axes (with what seepage and warming add)",
                 &got,
-                &[dots(n, n), dots(m, m), dots(t, t), dots(m, t)],
+                &[dots(n, n), dots(m, m) + added, dots(t, t) + added, dots(m, t)],
                 size * 1e-11,
                 "MPa",
             ),
@@ -196,7 +198,7 @@ impl Explain for WallStress {
         }
         let mut steps = vec![Step::matrix(
             "S'",
-            &self.wall.inputs.stress.rows_in_mpa(),
+            &self.wall.setup.inputs.stress.rows_in_mpa(),
             4,
             "MPa",
             "top of hole, right, along the hole",
@@ -219,10 +221,10 @@ impl Explain for WallStress {
             ),
             inputs,
             results,
-            method: method::wall_stresses(),
+            method: method::wall_stresses(&self.wall),
             steps,
-            notes: vec![direction::reference(attitude)],
-            topics: vec!["wall".to_owned(), "elastic".to_owned()],
+            notes: method::notes(&self.wall),
+            topics: self.wall.topics(&["wall", "elastic"]),
             ..Explanation::default()
         }
     }

@@ -1,13 +1,16 @@
 //! Parting of a wall: the pressure at which its least effective principal stress reaches −T₀.
 //!
 //! In the wall's tangent plane the least principal value of hoop, axial and shear is −T₀ where
-//! (σθ − P_p + T₀)(σz − P_p + T₀) = τθz². With σθ = A − p that is one pressure for each place; the
-//! wall parts first where it is smallest. Where σz − P_p + T₀ ≤ 0 it is parted along the hole at any
-//! pressure. Across the wall the effective stress is p − P_p, so below P_p − T₀ it spalls; where it
-//! parts below that pressure already, no pressure is safe.
+//! (σθ' + T₀)(σz' + T₀) = τθz². Both fall in a straight line with the pressure (see
+//! [`super::effective`]), so that is one pressure for each place; the wall parts first where it is
+//! smallest. At an impermeable wall the axial stress does not move with the pressure, and where
+//! σz' + T₀ ≤ 0 the wall is parted along the hole at any. Across the wall the effective stress rises
+//! with the pressure: below its own limit the wall spalls; where it parts below that pressure
+//! already, no pressure is safe.
 
-use super::circle::{Jet, OnCircle, Peak, smallest};
-use super::kirsch::{Kirsch, Wave};
+use super::circle::{OnCircle, Peak, smallest};
+use super::effective::EffectiveWall;
+use crate::rock::{Jet, Number};
 
 /// At which pressure a wall parts.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -30,14 +33,17 @@ pub(crate) enum Parting {
 }
 
 /// The parting pressure of a wall.
-pub(crate) fn parting(kirsch: &Kirsch, pore: f64, tensile: f64) -> Parting {
-    let first = in_the_wall(kirsch, pore, tensile);
-    if let Some(peak) = first.filter(|peak| peak.value >= pore - tensile) {
-        return Parting::At(peak);
+pub(crate) fn parting(wall: &EffectiveWall, pore: f64, tensile: f64, scale: f64) -> Parting {
+    // Below −T₀ / r the wall spalls; where the pressure passes the wall whole, it does not.
+    let spalls = |strength: f64| if wall.across > 0.0 { -strength / wall.across } else { f64::NEG_INFINITY };
+    let first = in_the_wall(wall, tensile, scale);
+    let above = |peak: Peak| Peak { value: peak.value + pore, ..peak };
+    if let Some(peak) = first.filter(|peak| peak.value >= spalls(tensile)) {
+        return Parting::At(above(peak));
     }
     // The strength with which the wall would just part where it just spalls.
-    let scale = kirsch.scale() + pore.abs() + tensile;
-    let enough = |strength: f64| in_the_wall(kirsch, pore, strength).filter(|peak| peak.value >= pore - strength);
+    let scale = scale + tensile;
+    let enough = |strength: f64| in_the_wall(wall, strength, scale).filter(|peak| peak.value >= spalls(strength));
     let (mut low, mut high) = (tensile, tensile + 8.0 * scale);
     for _ in 0..120 {
         let middle = 0.5 * (low + high);
@@ -50,66 +56,72 @@ pub(crate) fn parting(kirsch: &Kirsch, pore: f64, tensile: f64) -> Parting {
             break;
         }
     }
-    let place = enough(high).unwrap_or(Peak { phi: 0.0, value: pore - high, flat: true });
+    let place = enough(high).unwrap_or(Peak { phi: 0.0, value: spalls(high), flat: true });
     Parting::Always {
-        least_bad: pore - high,
+        least_bad: pore + spalls(high),
         beyond: high - tensile,
         phi: place.phi,
         flat: place.flat,
-        alone: first.map(|peak| peak.value),
+        alone: first.map(|peak| peak.value + pore),
     }
 }
 
-/// The pressure above which the wall parts in its tangent plane; none where it does at any.
-fn in_the_wall(kirsch: &Kirsch, pore: f64, tensile: f64) -> Option<Peak> {
-    let room = kirsch.axial.scaled(1.0, tensile - pore);
-    if room.mean - room.amplitude() <= 0.0 {
+/// The pressure, above the pore pressure, beyond which the wall parts in its tangent plane; none
+/// where it does at any.
+fn in_the_wall(wall: &EffectiveWall, tensile: f64, scale: f64) -> Option<Peak> {
+    let room = wall.axial.scaled(1.0, tensile);
+    if wall.axial_falls <= 0.0 && room.mean - room.amplitude() <= 0.0 {
         return None;
     }
-    let scale = kirsch.scale() + pore.abs() + tensile;
-    Some(smallest(
-        Place { hoop: kirsch.hoop.scaled(1.0, tensile - pore), room, shear_squared: kirsch.shear_squared },
-        scale,
-    ))
+    Some(smallest(Parts { wall, tensile }, scale + tensile))
 }
 
-/// A − P_p + T₀ − τθz² / (σz − P_p + T₀): the parting pressure round the hole.
-struct Place {
-    hoop: Wave,
-    room: Wave,
-    shear_squared: Wave,
+/// The parting pressure round the hole.
+struct Parts<'a> {
+    wall: &'a EffectiveWall,
+    tensile: f64,
 }
 
-impl OnCircle for Place {
+impl Parts<'_> {
+    /// The smaller root x of (H + T₀ − h x)(Z + T₀ − k x) = τθz², in the form that also holds for
+    /// k = 0.
+    #[inline(always)]
+    fn root<N: Number>(&self, hoop: N, axial: N, shear_squared: N) -> N {
+        let (h, k) = (self.wall.hoop_falls, self.wall.axial_falls);
+        let (a, b) = (hoop + self.tensile, axial + self.tensile);
+        let shear_squared = if shear_squared.value() > 0.0 { shear_squared } else { shear_squared * 0.0 };
+        let sum = b * h + a * k;
+        let apart = b * h - a * k;
+        let root = (apart * apart + shear_squared * (4.0 * h * k)).sqrt();
+        let product = a * b - shear_squared;
+        if sum.value() > 0.0 || k <= 0.0 { product * 2.0 / (sum + root) } else { (sum - root) * (0.5 / (h * k)) }
+    }
+}
+
+impl OnCircle for Parts<'_> {
     #[inline(always)]
     fn value(&self, c: f64, s: f64) -> f64 {
-        self.hoop.at(c, s) - self.shear_squared.at(c, s).max(0.0) / self.room.at(c, s)
+        let w = self.wall;
+        self.root(w.hoop.at(c, s), w.axial.at(c, s), w.shear_squared.at(c, s))
     }
-    fn jet(&self, c: f64, s: f64) -> Jet {
-        let (d, d1, d2) = (self.room.at(c, s), self.room.slope(c, s), self.room.bend(c, s));
-        let t = self.shear_squared;
-        let share = t.at(c, s).max(0.0) / d;
-        let share1 = (t.slope(c, s) - share * d1) / d;
-        let share2 = (t.bend(c, s) - 2.0 * share1 * d1 - share * d2) / d;
-        Jet {
-            value: self.hoop.at(c, s) - share,
-            slope: self.hoop.slope(c, s) - share1,
-            bend: self.hoop.bend(c, s) - share2,
-        }
+    #[inline(always)]
+    fn jet(&self, _piece: usize, c: f64, s: f64) -> Jet {
+        let w = self.wall;
+        self.root(w.hoop.jet(c, s), w.axial.jet(c, s), w.shear_squared.jet(c, s))
     }
 }
 
 /// The parting pressure of one place, not a number where it is parted at any.
-pub(crate) fn at_place(kirsch: &Kirsch, pore: f64, tensile: f64, c: f64, s: f64) -> f64 {
-    let room = kirsch.axial.at(c, s) - pore + tensile;
-    if room <= 0.0 {
+pub(crate) fn at_place(wall: &EffectiveWall, pore: f64, tensile: f64, c: f64, s: f64) -> f64 {
+    if wall.axial_falls <= 0.0 && wall.axial.at(c, s) + tensile <= 0.0 {
         return f64::NAN;
     }
-    kirsch.hoop.at(c, s) - pore + tensile - kirsch.shear_squared.at(c, s).max(0.0) / room
+    pore + Parts { wall, tensile }.value(c, s)
 }
 
 #[cfg(test)]
 mod tests {
+    use super::super::kirsch::Kirsch;
     use super::*;
     use crate::frames::{Attitude, Azimuth};
     use crate::stress::{Components, Stress};
@@ -129,7 +141,8 @@ mod tests {
         .unwrap();
         let hole = Attitude { inclination: 50.deg(), azimuth: Azimuth::from_true_north(110.deg()) };
         let sh = hole.chain().unwrap().carry(&s);
-        parting(&Kirsch::new(sh.tensor(), poisson), 20e6, 2e6)
+        let kirsch = Kirsch::new(sh.tensor(), poisson);
+        parting(&EffectiveWall::new(&kirsch, 20e6, 0.0, 0.0), 20e6, 2e6, 100e6)
     }
 
     #[test]

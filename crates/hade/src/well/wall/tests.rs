@@ -148,18 +148,18 @@ fn a_flipped_tool_face_and_a_transposed_turn_turn_a_check_red() {
     assert!(WallStress::check(&at.inputs(), &flipped.outcome()).iter().any(|c| !c.passed));
 
     // The same wall with S turned by the transposed matrix in place of the right one.
-    let q = wall.inputs.stress.attitude().unwrap().matrix().unwrap();
-    let far = wall.inputs.stress.geographic();
+    let q = wall.inputs().stress.attitude().unwrap().matrix().unwrap();
+    let far = wall.inputs().stress.geographic();
     let wrong = far.turned(&crate::frames::vector::transpose(&q));
-    let mut json = wall.inputs.stress.write();
+    let mut json = wall.inputs().stress.write();
     for (k, c) in wrong.0.iter().enumerate() {
         json = json.with_number(&format!("/components/{k}"), *c);
     }
     // A record that says so is not read at all.
     assert!(Stress::<Borehole>::read(&json).unwrap_err().to_string().contains("does not agree"));
-    let axes = wall.inputs.stress.axes();
+    let axes = wall.inputs().stress.axes();
     let stress = Stress::<Borehole>::of(wrong, crate::stress::Made::Combined { parts: None }, Some((far, axes)));
-    let wrong = Wall::new(WallInputs { stress, ..wall.inputs }).unwrap();
+    let wrong = Wall::new(WallInputs { stress, ..wall.inputs() }).unwrap();
     assert!(!wrong.limits().card().passed());
     assert!(!wrong.around(31.mpa()).unwrap().card().passed());
     assert!(!wrong.stress_at(31.mpa(), 77.deg()).unwrap().card().passed());
@@ -332,7 +332,7 @@ proptest! {
     fn a_stronger_rock_holds_from_a_lower_pressure(wall in any_wall(), c in 2.0..30.0_f64, more in 0.1..10.0_f64) {
         let with = |c: f64| {
             let strength = Strength::mohr_coulomb(c.mpa(), 30.deg());
-            let inputs = WallInputs { rock: Rock { strength, ..wall.inputs.rock }, ..wall.inputs };
+            let inputs = WallInputs { rock: Rock { strength, ..wall.inputs().rock }, ..wall.inputs() };
             Wall::new(inputs).unwrap().lower_shear_limit()
         };
         match (with(c), with(c + more)) {

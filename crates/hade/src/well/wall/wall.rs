@@ -3,29 +3,19 @@
 use serde::{Deserialize, Serialize};
 
 use super::kirsch::Kirsch;
+use super::setup::{Seepage, Thermal, WallInputs, WallSetup, WeakPlane};
 use super::shear::ShearWall;
 use crate::card::{Card, Explain, Item};
-use crate::error::{Error, Result};
-use crate::frames::{Attitude, Borehole};
-use crate::rock::Rock;
-use crate::stress::Stress;
+use crate::error::Result;
+use crate::frames::Attitude;
+use crate::rock::Strength;
 use crate::units::{Pressure, Quantity};
 
-/// What a wall is made of. Nothing of it is defaulted.
-#[derive(Clone, Copy, Debug, PartialEq, Serialize, Deserialize)]
-pub struct WallInputs {
-    /// The far-field total stress in the hole's axes.
-    pub stress: Stress<Borehole>,
-    /// The pore pressure of the formation.
-    pub pore: Pressure,
-    /// The rock.
-    pub rock: Rock,
-}
-
-/// The wall of a hole: elastic, impermeable, of rock that fails in shear or parts in tension.
+/// The wall of a hole: elastic, of rock that fails in shear or parts in tension. It is impermeable, at
+/// the temperature of the rock, and without a plane of weakness, until a method says otherwise.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Wall {
-    pub(super) inputs: WallInputs,
+    pub(super) setup: WallSetup,
     pub(super) shear: ShearWall,
     pub(super) attitude: Attitude,
 }
@@ -33,7 +23,7 @@ pub struct Wall {
 /// The inputs of a result at one wall pressure.
 #[derive(Clone, Copy, Debug, PartialEq, Serialize, Deserialize)]
 pub struct AtPressure {
-    pub(super) wall: WallInputs,
+    pub(super) wall: WallSetup,
     pub(super) pressure: Pressure,
 }
 
@@ -42,57 +32,125 @@ impl Wall {
     ///
     /// # Errors
     /// When the stress does not say which hole it is in, a number is not finite, Poisson's ratio is
-    /// outside 0–0.5, a strength is negative or the friction angle is outside 0° to below 90°.
+    /// outside 0–0.5, or the strength is out of its range.
     pub fn new(inputs: WallInputs) -> Result<Self> {
-        let Some(attitude) = inputs.stress.attitude() else {
-            return Err(Error::undeclared(
-                "The stress at the wall names no hole",
-                "carry it there with the chain of the hole's attitude.",
-            ));
-        };
-        attitude.angles()?;
-        if !inputs.stress.tensor().is_finite() {
-            return Err(Error::out_of_range("stress in borehole axes", "not finite", "six finite numbers"));
-        }
-        inputs.pore.finite("pore pressure")?;
-        let rock = inputs.rock.checked()?;
-        let shear = ShearWall {
-            kirsch: Kirsch::new(inputs.stress.tensor(), rock.poisson),
-            line: rock.strength.mohr_coulomb_line(),
-            pore: inputs.pore.si(),
-        };
-        Ok(Wall { inputs, shear, attitude })
+        Wall::of(WallSetup::plain(inputs))
     }
 
-    /// What it was made of.
+    pub(super) fn of(setup: WallSetup) -> Result<Self> {
+        let attitude = setup.checked()?;
+        let WallInputs { stress, pore, rock } = setup.inputs;
+        let kirsch = Kirsch::new(stress.tensor(), rock.poisson).warmed(setup.thermal_stress());
+        let plane = setup.plane_at_wall(attitude)?;
+        let shear = ShearWall::new(kirsch, rock.strength.law(), plane, pore.si(), setup.passes(), setup.eta2());
+        Ok(Wall { setup, shear, attitude })
+    }
+
+    /// The same wall, permeable: the pressure in the hole stands in the pores behind the wall, and
+    /// seepage adds 2η (p − P_p) to the hoop and axial stress, η = α (1 − 2ν) / (2 (1 − ν)) with
+    /// Biot's coefficient α (Haimson and Fairhurst 1967).
+    ///
+    /// # Errors
+    /// When α is outside 0–1.
+    pub fn permeable(self, biot: f64) -> Result<Self> {
+        self.partly_sealed(biot, 0.0)
+    }
+
+    /// The same wall, between permeable (sealing 0) and impermeable (sealing 1): that share of the
+    /// pressure above the pore pressure is held back by the filter cake, the rest passes.
+    ///
+    /// # Errors
+    /// When Biot's coefficient α or the sealing is outside 0–1.
+    pub fn partly_sealed(self, biot: f64, sealing: f64) -> Result<Self> {
+        Wall::of(WallSetup { seepage: Some(Seepage { biot, sealing }), ..self.setup })
+    }
+
+    /// The same wall, impermeable.
+    ///
+    /// # Errors
+    /// As [`Wall::new`].
+    pub fn impermeable(self) -> Result<Self> {
+        Wall::of(WallSetup { seepage: None, ..self.setup })
+    }
+
+    /// The same wall warmed or cooled by the mud: E α_T ΔT / (1 − ν) is added to hoop and axial
+    /// stress.
+    ///
+    /// # Errors
+    /// When E is not above zero, α_T is negative, or a number is not finite.
+    pub fn thermal(self, thermal: Thermal) -> Result<Self> {
+        Wall::of(WallSetup { thermal: Some(thermal), ..self.setup })
+    }
+
+    /// The same wall with a plane of weakness that slips where the whole traction on it asks for more
+    /// than c_w + σn' tan φ_w (Jaeger 1960). It may slip at any place of the wall.
+    ///
+    /// # Errors
+    /// When the plane is none, its cohesion is negative, or its friction angle is outside 0° to
+    /// below 90°.
+    pub fn weak_plane(self, weak_plane: WeakPlane) -> Result<Self> {
+        Wall::of(WallSetup { weak_plane: Some(weak_plane), ..self.setup })
+    }
+
+    /// The same wall in rock that creeps, such as salt: every result then says that elastic limits
+    /// are not valid.
+    pub fn in_creeping_rock(self) -> Self {
+        Wall { setup: WallSetup { creeps: true, ..self.setup }, ..self }
+    }
+
+    /// The same wall judged by another criterion.
+    ///
+    /// # Errors
+    /// When the strength is out of its range.
+    pub fn with_strength(self, strength: Strength) -> Result<Self> {
+        let mut setup = self.setup;
+        setup.inputs.rock.strength = strength;
+        Wall::of(setup)
+    }
+
+    /// Stress, pore pressure and rock it was made of.
     pub fn inputs(&self) -> WallInputs {
-        self.inputs
+        self.setup.inputs
+    }
+
+    pub(super) fn strength(&self) -> Strength {
+        self.setup.inputs.rock.strength
+    }
+
+    pub(super) fn pore(&self) -> Pressure {
+        self.setup.inputs.pore
     }
 
     pub(super) fn at_pressure(&self, pressure: Pressure) -> Result<AtPressure> {
         pressure.finite("wall pressure")?;
-        Ok(AtPressure { wall: self.inputs, pressure })
+        Ok(AtPressure { wall: self.setup, pressure })
     }
 
-    /// "KF-3 at 2950 m", or the attitude where the hole has no name.
+    /// "KF-3 at 2950 m", or the attitude where the hole has no name; with what is said of the wall
+    /// beside it where that is not the plain wall.
     pub(super) fn place(&self) -> String {
-        self.inputs.stress.name().map_or_else(|| self.attitude.words(), |name| name.to_string())
+        let plain = WallSetup { creeps: self.setup.creeps, ..WallSetup::plain(self.setup.inputs) };
+        let place = self.setup.inputs.stress.name().map_or_else(|| self.attitude.words(), |name| name.to_string());
+        if self.setup == plain { place } else { format!("{place}, {}", self.setup.model_words()) }
     }
 
-    /// Stress, pore pressure and rock as inputs of a card.
+    /// Everything it was made of as inputs of a card.
     pub(super) fn items(&self) -> Vec<Item> {
-        let mut items = vec![
-            self.inputs.stress.item("S'", "stress in borehole axes (x top of hole, y right, z along the hole)"),
-            Item::typed("P_p", "pore pressure", self.inputs.pore),
-        ];
-        items.extend(self.inputs.rock.items());
-        items
+        self.setup.items()
+    }
+
+    /// Topics of cautions, with those of the result.
+    pub(super) fn topics(&self, of_result: &[&str]) -> Vec<String> {
+        of_result.iter().chain(self.setup.topics().iter()).map(|t| (*t).to_owned()).collect()
     }
 
     /// The cards every result of this wall stands on.
     pub(super) fn upstream(&self) -> Vec<Card> {
-        let mut cards = self.inputs.stress.upstream();
-        cards.push(self.inputs.stress.card());
+        let mut cards = self.setup.inputs.stress.upstream();
+        cards.push(self.setup.inputs.stress.card());
+        if let Some(weak) = self.setup.weak_plane {
+            cards.extend(weak.plane.strike.upstream());
+        }
         cards
     }
 }

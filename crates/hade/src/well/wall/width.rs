@@ -1,6 +1,6 @@
 //! The lowest pressure at which no failing arc is wider than an allowed width.
 
-use super::circle::{greatest, smallest};
+use super::circle::CIRCLE;
 use super::shear::{ShearWall, Window};
 
 /// What the search found.
@@ -9,6 +9,8 @@ pub(crate) enum AtWidth {
     At(f64),
     /// No pressure keeps every failing arc within the width.
     Never,
+    /// Every pressure down to the edge of the search does.
+    Unbounded,
 }
 
 impl ShearWall {
@@ -16,16 +18,25 @@ impl ShearWall {
     /// more than zero). A wall that fails all round is wider than any width.
     ///
     /// Where the whole wall holds between two pressures, everything that fails below the lower of
-    /// them fails there by closing in, and the arcs only grow as the pressure falls: the width is
-    /// bracketed by that limit and the pressure at which the last place fails. Where the whole wall
-    /// holds at no pressure, arcs of two kinds grow in opposite senses, so the pressures between which
-    /// any place holds are looked through from below.
+    /// them fails there for want of pressure, and the arcs only grow as the pressure falls. Where the
+    /// whole wall holds at no pressure, arcs of two kinds grow in opposite senses, so the pressures
+    /// between which any place holds are looked through from below.
     pub fn lower_at_width(&self, width: f64) -> AtWidth {
         match self.window() {
-            Window::Open { lower, .. } => {
-                let last = smallest(self.lower_end(), self.scale());
+            Window::Open { lower: None, .. } => AtWidth::Unbounded,
+            Window::Open { lower: Some(lower), .. } => {
                 let fine = |p: f64| self.failing(p).widest() <= width;
-                AtWidth::At(self.boundary(last.value - 1e-9 * self.scale(), lower.value, fine))
+                let (mut step, mut good) = (1e-3 * self.scale(), lower.value);
+                let mut bad = good - step;
+                while fine(bad) {
+                    if step > 64.0 * self.scale() {
+                        return AtWidth::Unbounded;
+                    }
+                    good = bad;
+                    step *= 2.0;
+                    bad -= step;
+                }
+                AtWidth::At(self.boundary(bad, good, fine))
             }
             Window::Closed { .. } => self.lower_of_closed(width),
         }
@@ -34,9 +45,12 @@ impl ShearWall {
     fn lower_of_closed(&self, width: f64) -> AtWidth {
         const PIECES: u32 = 512;
         let scale = self.scale();
-        // Below the first every place closes in, above the second every place is pushed out.
-        let low = smallest(self.lower_end().closing(), scale).value - 1e-9 * scale;
-        let high = greatest(&self.upper_end().pushed(), scale).value + 1e-9 * scale;
+        let (mut low, mut high) = (f64::INFINITY, f64::NEG_INFINITY);
+        for (from, to) in CIRCLE.cos.iter().zip(&CIRCLE.sin).filter_map(|(c, s)| self.interval_at(*c, *s)) {
+            low = low.min(from);
+            high = high.max(to);
+        }
+        let (low, high) = ((low - 1e-3 * scale).max(self.pore - 64.0 * scale), high + 1e-3 * scale);
         let fine = |p: f64| self.failing(p).widest() <= width;
         let place = |k: u32| low + (high - low) * f64::from(k) / f64::from(PIECES);
         match (1..=PIECES).find(|k| low < high && fine(place(*k))) {
