@@ -2,8 +2,8 @@
 //! forms to 1e-9 relative, limits to 1e-4 MPa, arcs to 0.02° (held much closer, as the cases allow).
 
 use hade::prelude::*;
-use hade::rock::{Rock, Strength};
-use hade::well::{Wall, WallInputs, WallStress};
+use hade::rock::{HoekBrown, Rock, Strength};
+use hade::well::{Wall, WallInputs, WallStress, WeakPlane};
 use hade_tests::{Case, agree, assert_all_close, cases, number, numbers};
 use serde_json::Value;
 
@@ -21,13 +21,31 @@ fn carried(inputs: &Value) -> Stress<Borehole> {
 }
 
 fn wall_of(inputs: &Value, tensile: f64) -> Wall {
-    let strength = match inputs.get("criterion_params") {
-        Some(p) => Strength::mohr_coulomb(number(p, "c").mpa(), number(p, "phi").deg()),
-        None => Strength::mohr_coulomb(10.mpa(), 30.deg()),
-    };
+    let strength = inputs.get("criterion_params").map_or_else(
+        || Strength::mohr_coulomb(10.mpa(), 30.deg()),
+        |p| strength(inputs["criterion"].as_str().expect("a criterion"), p),
+    );
     let rock = Rock { poisson: number(inputs, "nu"), tensile_strength: tensile.mpa(), strength };
     let pore = inputs.get("pore_pressure").map_or(0.0, |_| number(inputs, "pore_pressure")).mpa();
     Wall::new(WallInputs { stress: carried(inputs), pore, rock }).expect("a wall")
+}
+
+fn strength(criterion: &str, p: &Value) -> Strength {
+    let of = |make: fn(Pressure, Angle) -> Strength| make(number(p, "c").mpa(), number(p, "phi").deg());
+    match criterion {
+        "mohr_coulomb" => of(Strength::mohr_coulomb),
+        "mogi_coulomb" => of(Strength::mogi_coulomb),
+        "modified_lade" => of(Strength::modified_lade),
+        "dp_inscribed" => of(Strength::drucker_prager_inscribed),
+        "dp_circumscribed" => of(Strength::drucker_prager_circumscribed),
+        "hoek_brown" => Strength::hoek_brown(HoekBrown {
+            sigma_ci: number(p, "sci").mpa(),
+            m_i: number(p, "mi"),
+            gsi: number(p, "GSI"),
+            disturbance: number(p, "D"),
+        }),
+        other => panic!("no criterion {other}"),
+    }
 }
 
 /// Larger numbers carry a larger last bit; the cases with magnitudes of 1000 scale the tolerance.
@@ -88,9 +106,9 @@ fn hold_limit(case: &Case, what: &str, got: Option<Pressure>, want: &Value) -> f
 }
 
 #[test]
-fn limits_of_mohr_coulomb_walls() {
+fn limits_by_every_criterion() {
     let mut largest = 0.0_f64;
-    for case in cases("pressure_window_mohr_coulomb") {
+    for case in cases("pressure_window") {
         let limits = wall_of(&case.inputs, number(&case.inputs, "T0")).limits();
         for (what, limit) in [
             ("lower_shear", limits.lower_shear),
@@ -125,12 +143,14 @@ fn initiation_by_the_least_effective_principal_stress() {
 }
 
 #[test]
-fn failing_arcs_of_mohr_coulomb_walls() {
+fn failing_arcs_by_every_criterion() {
     let mut largest = 0.0_f64;
-    for case in cases("breakout_arcs_mohr_coulomb") {
+    for case in cases("breakout_arcs") {
         let wall = wall_of(&case.inputs, 0.0);
         let failing = wall.failing_arcs(number(&case.inputs, "pw").mpa()).unwrap();
         let wanted = case.outputs["arcs"].as_array().expect("arcs");
+        let card = failing.card();
+        assert!(card.passed(), "{}: {:#?}", case.id, card.checks.iter().filter(|c| !c.passed).collect::<Vec<_>>());
         if case.outputs["status"] == "all" {
             assert!(failing.whole_wall(), "{}", case.id);
             continue;
@@ -150,8 +170,27 @@ fn failing_arcs_of_mohr_coulomb_walls() {
             assert!(near <= ARC_DEGREES, "{}: {got:?} against {want}", case.id);
             largest = largest.max(near);
         }
-        let card = failing.card();
-        assert!(card.passed(), "{}: {:#?}", case.id, card.checks.iter().filter(|c| !c.passed).collect::<Vec<_>>());
     }
     eprintln!("arcs: largest difference {largest:.2e}°");
+}
+
+/// The margin of slip on a plane of weakness, with the whole traction of the wall on it.
+#[test]
+fn slip_on_a_plane_of_weakness() {
+    for case in cases("weak_plane_wall_margin") {
+        let input = |key: &str| number(&case.inputs, key);
+        let plane = Plane { strike: Azimuth::from_true_north(input("strike").deg()), dip: input("dip").deg() };
+        let weak = WeakPlane { plane, cohesion: input("cw").mpa(), friction_angle: input("phiw").deg() };
+        let wall = wall_of(&case.inputs, 0.0).weak_plane(weak).expect("a plane");
+        let got: Vec<f64> = numbers(&case.inputs, "theta")
+            .into_iter()
+            .map(|t| {
+                let at = wall.stress_at(input("pw").mpa(), t.deg()).expect("a wall stress");
+                assert!(at.card().passed(), "{}", case.id);
+                // Their margin is positive where it slips.
+                -at.weak_plane_margin().expect("a plane").in_mpa()
+            })
+            .collect();
+        assert_all_close(&case.id, &got, &numbers(&case.outputs, "margin"), RELATIVE);
+    }
 }

@@ -3,6 +3,7 @@
 use super::kirsch::AtWall;
 use super::wall::Wall;
 use crate::card::{Formula, Method, Reference, Step};
+use crate::frames::vector::{V3, add, apply, dot, norm, scale};
 use crate::units::{Quantity, fixed};
 
 /// Formulas, sources and assumptions of the wall stresses.
@@ -217,38 +218,61 @@ fn principal_line(at: AtWall, pore: f64, seeps: bool) -> String {
 /// there is one.
 pub(super) fn worked_strength(wall: &Wall, theta: f64, pressure: f64) -> Vec<Step> {
     let mut steps = wall.strength().worked(wall.shear.principal(theta, pressure));
-    let (Some(weak), Ok(q)) = (wall.setup.weak_plane, wall.attitude.matrix()) else { return steps };
-    let Ok(axes) = weak.plane.axes() else { return steps };
-    let n = crate::frames::vector::apply(&q, axes.normal);
-    let (s, c) = theta.sin_cos();
-    let [r, h, z] = [c * n[0] + s * n[1], c * n[1] - s * n[0], n[2]];
-    let at = wall.shear.at(theta, pressure);
-    let t = [at.radial * r, at.hoop * h + at.shear * z, at.shear * h + at.axial * z];
-    let normal = t[0] * r + t[1] * h + t[2] * z;
-    let shear = [t[0] - normal * r, t[1] - normal * h, t[2] - normal * z];
-    let shear = crate::frames::vector::norm(shear);
-    let behind = wall.shear.pore_behind(pressure);
-    let tan = weak.friction_angle.si().tan();
-    let mpa = |v: f64| fixed(v * 1e-6, 4);
-    steps.push(Step::worked(format!(
-        "plane of weakness, normal in wall axes (r, θ, z) = ({}, {}, {}): traction ({}, {}, {}) MPa; σ_n = {}, σ'_n = {}, τ = {} MPa",
-        fixed(r, 6),
-        fixed(h, 6),
-        fixed(z, 6),
-        mpa(t[0]),
-        mpa(t[1]),
-        mpa(t[2]),
-        mpa(normal),
-        mpa(normal - behind),
-        mpa(shear)
-    )));
-    steps.push(Step::worked(format!(
-        "c_w + σ'_n tan φ_w − τ = {} + ({}) · {} − {} = {} MPa",
-        crate::units::as_typed(weak.cohesion.in_mpa()),
-        mpa(normal - behind),
-        fixed(tan, 6),
-        mpa(shear),
-        mpa(weak.cohesion.si() + (normal - behind) * tan - shear)
-    )));
+    steps.extend(worked_plane(wall, theta, pressure));
     steps
+}
+
+/// The traction on the plane of weakness at one place; Pa.
+pub(super) struct OnPlane {
+    /// Its normal in wall axes.
+    normal: V3,
+    traction: V3,
+    sigma_n: f64,
+    effective: f64,
+    shear: f64,
+    /// c_w + σn' tan φ_w − τ.
+    pub margin: f64,
+}
+
+/// By vectors in wall axes; `None` where the wall has no plane of weakness.
+pub(super) fn on_weak_plane(wall: &Wall, theta: f64, pressure: f64) -> Option<OnPlane> {
+    let weak = wall.setup.weak_plane?;
+    let [x, y, z] = apply(&wall.attitude.matrix().ok()?, weak.plane.axes().ok()?.normal);
+    let (s, c) = theta.sin_cos();
+    let [r, h, z] = [c * x + s * y, c * y - s * x, z];
+    let at = wall.shear.at(theta, pressure);
+    let traction = [at.radial * r, at.hoop * h + at.shear * z, at.shear * h + at.axial * z];
+    let normal = [r, h, z];
+    let sigma_n = dot(traction, normal);
+    let shear = norm(add(traction, scale(normal, -sigma_n)));
+    let effective = sigma_n - wall.shear.pore_behind(pressure);
+    let margin = weak.cohesion.si() + effective * weak.friction_angle.si().tan() - shear;
+    Some(OnPlane { normal, traction, sigma_n, effective, shear, margin })
+}
+
+/// Slip on the plane of weakness, with the numbers put in.
+pub(super) fn worked_plane(wall: &Wall, theta: f64, pressure: f64) -> Vec<Step> {
+    let (Some(weak), Some(on)) = (wall.setup.weak_plane, on_weak_plane(wall, theta, pressure)) else {
+        return Vec::new();
+    };
+    let mpa = |v: f64| fixed(v * 1e-6, 4);
+    let [r, h, z] = on.normal.map(|v| fixed(v, 6));
+    let [tr, th, tz] = on.traction.map(mpa);
+    let tan = weak.friction_angle.si().tan();
+    vec![
+        Step::worked(format!(
+            "plane of weakness, normal in wall axes (r, θ, z) = ({r}, {h}, {z}): traction ({tr}, {th}, {tz}) MPa; σ_n = {}, σ'_n = {}, τ = {} MPa",
+            mpa(on.sigma_n),
+            mpa(on.effective),
+            mpa(on.shear)
+        )),
+        Step::worked(format!(
+            "c_w + σ'_n tan φ_w − τ = {} + ({}) · {} − {} = {} MPa",
+            crate::units::as_typed(weak.cohesion.in_mpa()),
+            mpa(on.effective),
+            fixed(tan, 6),
+            mpa(on.shear),
+            mpa(on.margin)
+        )),
+    ]
 }

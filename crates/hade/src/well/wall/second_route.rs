@@ -124,13 +124,16 @@ impl ByVectors {
         let total = self.tensor(theta, pressure);
         let behind = self.pore_behind(pressure);
         let intact = self.strength.excess_by_tensor(total.add(Tensor([-behind, -behind, -behind, 0.0, 0.0, 0.0])));
-        let slip = self.weak.map_or(f64::NEG_INFINITY, |(n, cohesion, friction)| {
-            let traction = total.times(n);
-            let normal = dot(n, traction);
-            let shear = norm(add(traction, scale(n, -normal)));
-            shear - cohesion - (normal - behind) * friction
-        });
-        intact.max(slip)
+        intact.max(self.slip(theta, pressure).unwrap_or(f64::NEG_INFINITY))
+    }
+
+    /// τ − c_w − σn' tan φ_w on the plane of weakness, where there is one.
+    pub fn slip(&self, theta: f64, pressure: f64) -> Option<f64> {
+        let (n, cohesion, friction) = self.weak?;
+        let traction = self.tensor(theta, pressure).times(n);
+        let normal = dot(n, traction);
+        let shear = norm(add(traction, scale(n, -normal)));
+        Some(shear - cohesion - (normal - self.pore_behind(pressure)) * friction)
     }
 
     /// The effective principal stresses within the wall: the stress across it is put out of the way

@@ -26,6 +26,8 @@ pub struct WallStress {
     pub shear: Pressure,
     /// The effective principal stresses for failure (total − pore pressure).
     pub effective: EffectiveStress,
+    /// c_w + σn' tan φ_w − τ on the plane of weakness here; `None` where the wall has none.
+    weak_plane_margin: Option<Pressure>,
     /// The compass bearing of the tool face, `None` where it points straight up or down.
     pub bearing: Option<Angle>,
     wall: Wall,
@@ -48,6 +50,7 @@ pub struct AtToolfaceOutcome {
     axial: Pressure,
     shear: Pressure,
     effective: [Pressure; 3],
+    weak_plane_margin: Option<Pressure>,
     bearing: Option<Angle>,
 }
 
@@ -66,6 +69,8 @@ impl Wall {
             axial: Pressure::from_si(at.axial),
             shear: Pressure::from_si(at.shear),
             effective: EffectiveStress::of(at.tensor(), Pressure::from_si(self.shear.pore_behind(pressure.si()))),
+            weak_plane_margin: method::on_weak_plane(self, toolface.si(), pressure.si())
+                .map(|plane| Pressure::from_si(plane.margin)),
             bearing: direction::bearing(self.attitude, toolface.si()),
             wall: *self,
             inputs: AtToolface { wall: self.setup, pressure, toolface },
@@ -77,6 +82,12 @@ impl WallStress {
     /// The tool face, as it was given.
     pub fn toolface(&self) -> Angle {
         self.inputs.toolface
+    }
+
+    /// How much more shear the plane of weakness bears here: c_w + σn' tan φ_w − τ, by the whole
+    /// traction on it; negative: it slips. `None` where the wall has no such plane.
+    pub fn weak_plane_margin(&self) -> Option<Pressure> {
+        self.weak_plane_margin
     }
 
     /// The total stress in wall axes: radial, around the hole, along the hole.
@@ -121,6 +132,7 @@ impl Explain for WallStress {
             axial: self.axial,
             shear: self.shear,
             effective: self.effective.principal(),
+            weak_plane_margin: self.weak_plane_margin,
             bearing: self.bearing,
         }
     }
@@ -168,6 +180,15 @@ impl Explain for WallStress {
                 "MPa",
             ),
         ];
+        if let (Some(margin), Some(slip)) = (outcome.weak_plane_margin, route.slip(theta, pressure)) {
+            checks.push(Check::compare(
+                "margin on the plane of weakness from its traction in north, east, down",
+                &[margin.in_mpa()],
+                &[-mpa(slip)],
+                size * 1e-11,
+                "MPa",
+            ));
+        }
         if let Some(bearing) = outcome.bearing {
             checks.push(bearing_check(n, bearing));
         }
@@ -193,6 +214,9 @@ impl Explain for WallStress {
                 value,
             ));
         }
+        if let Some(margin) = self.weak_plane_margin {
+            results.push(Item::computed("m_w", "margin c_w + σ'_n tan φ_w − τ on the plane of weakness", margin));
+        }
         if let Some(bearing) = self.bearing {
             results.push(crate::frames::bearing_item("β", "bearing of the tool face", bearing));
         }
@@ -204,6 +228,7 @@ impl Explain for WallStress {
             "top of hole, right, along the hole",
         )];
         steps.extend(method::worked(&self.wall, theta.si(), p.si()));
+        steps.extend(method::worked_plane(&self.wall, theta.si(), p.si()));
         Explanation {
             title: format!(
                 "Stress at the wall of {} at tool face {}, {}",
