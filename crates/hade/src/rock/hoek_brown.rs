@@ -28,16 +28,14 @@ impl HoekBrownLaw {
 impl Criterion for HoekBrownLaw {
     const ORDER: Order = Order::Extremes;
 
-    /// Where σ3' is below −s σci / mb, the tensile strength of the mass, the rock has failed: the
-    /// curve is not defined there, and the excess counts the distance as well.
+    /// The σ3' that σ1' − σ3' needs, less the σ3' there:
+    /// (σci / mb) (((σ1' − σ3') / σci)^(1/a) − s) − σ3'. It has the sign of σ1' less the curve where
+    /// the curve is defined, and is positive where σ3' is below −s σci / mb, the tensile strength of
+    /// the mass: the rock has failed there.
     #[inline(always)]
     fn excess<N: Number>(&self, [s1, _, s3]: [N; 3]) -> N {
-        let under = s3 * (self.m_b / self.sigma_ci) + self.s;
-        if under.value() > 0.0 {
-            s1 - s3 - under.power(self.a) * self.sigma_ci
-        } else {
-            s1 - s3 - under * self.sigma_ci
-        }
+        let needs = ((s1 - s3) * (1.0 / self.sigma_ci)).power(1.0 / self.a) - self.s;
+        needs * (self.sigma_ci / self.m_b) - s3
     }
 
     fn size(&self) -> f64 {

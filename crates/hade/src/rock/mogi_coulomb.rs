@@ -20,6 +20,8 @@ impl MogiCoulomb {
 
 impl Criterion for MogiCoulomb {
     const ORDER: Order = Order::Middle;
+    /// No proof is known.
+    const CONVEX: bool = false;
 
     #[inline(always)]
     fn excess<N: Number>(&self, [s1, s2, s3]: [N; 3]) -> N {

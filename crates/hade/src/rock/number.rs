@@ -15,6 +15,9 @@ pub(crate) trait Number:
     + Sub<f64, Output = Self>
     + Mul<f64, Output = Self>
 {
+    /// How many derivatives it carries.
+    const ORDERS: usize;
+
     /// The value by itself.
     fn value(self) -> f64;
     /// The square root; zero (with zero slopes) below zero.
@@ -35,6 +38,8 @@ pub(crate) trait Number:
 }
 
 impl Number for f64 {
+    const ORDERS: usize = 0;
+
     #[inline(always)]
     fn value(self) -> f64 {
         self
@@ -70,6 +75,8 @@ impl Jet {
 }
 
 impl Number for Jet {
+    const ORDERS: usize = 2;
+
     #[inline(always)]
     fn value(self) -> f64 {
         self.value

@@ -120,9 +120,9 @@ impl Strength {
         match self.0 {
             Stated::MohrCoulomb { .. } | Stated::MohrCoulombUcs { .. } => "UCS + q σ'_3 − σ'_1",
             Stated::MogiCoulomb { .. } => "a + b σ'_m − τ_oct",
-            Stated::ModifiedLade { .. } => "I_3^(1/3) − I_1 / (27 + η)^(1/3)",
+            Stated::ModifiedLade { .. } => "σ'_m + S_1 − u",
             Stated::DruckerPrager { .. } => "k + α I_1 − √J_2",
-            Stated::HoekBrown(_) => "σ'_3 + σ_ci (m_b σ'_3 / σ_ci + s)^a − σ'_1",
+            Stated::HoekBrown(_) => "σ'_3 − (σ_ci / m_b) (((σ'_1 − σ'_3) / σ_ci)^(1/a) − s)",
         }
     }
 

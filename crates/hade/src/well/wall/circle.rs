@@ -35,6 +35,11 @@ pub(crate) trait OnCircle {
         1
     }
     fn value(&self, c: f64, s: f64) -> f64;
+    /// The value to a millionth of its size: enough to see where a climb may begin.
+    #[inline(always)]
+    fn rough(&self, c: f64, s: f64) -> f64 {
+        self.value(c, s)
+    }
     fn jet(&self, piece: usize, c: f64, s: f64) -> Jet;
 }
 
@@ -49,6 +54,10 @@ impl<F: OnCircle> OnCircle for Below<F> {
     #[inline(always)]
     fn value(&self, c: f64, s: f64) -> f64 {
         -self.0.value(c, s)
+    }
+    #[inline(always)]
+    fn rough(&self, c: f64, s: f64) -> f64 {
+        -self.0.rough(c, s)
     }
     #[inline(always)]
     fn jet(&self, piece: usize, c: f64, s: f64) -> Jet {
@@ -68,13 +77,16 @@ pub(crate) struct Peak {
 
 /// Values closer than this share of the scale are one value: hills of equal height are reported by
 /// the smallest φ, and a function that varies by no more is flat.
-const SAME: f64 = 1e-11;
+pub(crate) const SAME: f64 = 1e-11;
 /// A value is not lower than another by this share of the scale.
 const ROUNDING: f64 = 1e-14;
-/// A sample lower than the best of all by more than this share of the range is not beside the peak:
-/// within a step a wave rises by at most STEP²/2 of its amplitude, and this leaves a factor of
-/// twenty-five for sharper hills.
+/// A hilltop among the samples that is lower than the best by more than this share of the range is
+/// not the highest hill: within a step a wave rises by at most STEP²/2 of its amplitude, and this
+/// leaves a factor of twenty-five for sharper hills.
 const SLACK: f64 = 0.05;
+/// The same for a sample on a slope, beside which a piece may have a hill of its own: the hill is at
+/// most half a step away.
+const BESIDE: f64 = 0.01;
 
 /// The greatest value of a function; `scale` is the size of the numbers in it.
 #[inline]
@@ -82,7 +94,7 @@ pub(crate) fn greatest(f: &impl OnCircle, scale: f64) -> Peak {
     let mut values = [0.0; SAMPLES];
     let circle = &*CIRCLE;
     for ((value, c), s) in values.iter_mut().zip(&circle.cos).zip(&circle.sin) {
-        *value = f.value(*c, *s);
+        *value = f.rough(*c, *s);
     }
     let (mut top, mut bottom) = (f64::NEG_INFINITY, f64::INFINITY);
     for value in values {
@@ -92,7 +104,7 @@ pub(crate) fn greatest(f: &impl OnCircle, scale: f64) -> Peak {
     if top - bottom <= SAME * scale {
         return Peak { phi: 0.0, value: top, flat: true };
     }
-    let enough = top - SLACK * (top - bottom);
+    let (enough, beside) = (top - SLACK * (top - bottom), top - BESIDE * (top - bottom));
     let mut best = Peak { phi: 0.0, value: f64::NEG_INFINITY, flat: false };
     // Two pieces may have a hill each between two samples, so a climb starts on every piece at every
     // high sample from which Newton sees a top of it within one step.
@@ -102,7 +114,7 @@ pub(crate) fn greatest(f: &impl OnCircle, scale: f64) -> Peak {
         let after = values.get(k + 1).copied().unwrap_or(first);
         let highest_here = *value >= before && *value >= after;
         before = *value;
-        if *value < enough {
+        if *value < if highest_here { enough } else { beside } {
             continue;
         }
         for piece in 0..f.pieces() {

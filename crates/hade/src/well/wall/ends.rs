@@ -6,7 +6,7 @@
 //!   G = UCS + (q − 1)(Z − P_p);
 //! - pushed out: the first with the roles of the stress across the wall and of those in it changed.
 
-use super::circle::{CIRCLE, OnCircle, Peak, greatest, smallest};
+use super::circle::{CIRCLE, OnCircle, Peak, SAME, greatest, on_circle, smallest};
 use super::kirsch::{Kirsch, Wave};
 use super::shear::Window;
 use crate::rock::{Jet, MohrCoulomb};
@@ -21,8 +21,9 @@ pub(crate) struct ClosedForm {
 }
 
 impl ClosedForm {
-    pub fn new(kirsch: &Kirsch, line: MohrCoulomb, pore: f64) -> Self {
-        ClosedForm { kirsch: *kirsch, line, pore, scale: kirsch.scale() + line.ucs + pore.abs() }
+    /// `scale` is the size of the numbers at hand, for tolerances.
+    pub fn new(kirsch: &Kirsch, line: MohrCoulomb, pore: f64, scale: f64) -> Self {
+        ClosedForm { kirsch: *kirsch, line, pore, scale }
     }
 
     /// The pressures between which the whole wall holds.
@@ -67,36 +68,42 @@ impl ClosedForm {
     /// wall: the safe pressures are an interval, so it is the end.
     #[inline]
     fn plain_lower(&self) -> Option<Peak> {
-        let peak = greatest(&self.lower_end().closing(), self.scale);
+        let closing = self.closing();
+        let peak = closing
+            .highest(self.kirsch.hoop, self.scale)
+            .unwrap_or_else(|| greatest(&Signed { root: closing, sign: 1.0 }, self.scale));
         let bounds = self.bounds(peak.value);
-        (bounds.within_holds && bounds.pushed_holds).then_some(peak)
+        (bounds.within && bounds.pushed).then_some(peak)
     }
 
     /// The upper end where the hole is pushed out, likewise.
     fn plain_upper(&self) -> Option<Peak> {
         let peak = smallest(self.upper_end().pushed(), self.scale);
         let bounds = self.bounds(peak.value);
-        (bounds.within_holds && bounds.closing_holds).then_some(peak)
+        (bounds.within && bounds.closing).then_some(peak)
     }
 
-    /// What certainly holds all round at a pressure, by the extremes of each wave.
+    /// What certainly holds all round at a pressure. Hoop and axial stress have their crests at one
+    /// place, so both are straight lines in u, the cosine from there; with the largest τθz² all round
+    /// each condition is a convex function of u, and largest at u = 1 or −1.
     #[inline]
     fn bounds(&self, pressure: f64) -> Bounds {
         let (q, ucs) = (self.line.q, self.line.ucs);
         let mean = self.kirsch.hoop.joined(1.0, self.kirsch.axial, 0.5);
         let half = self.kirsch.hoop.joined(-1.0, self.kirsch.axial, 0.5);
-        let shear = self.kirsch.shear_squared;
+        let shear = self.kirsch.shear_squared.mean + self.kirsch.shear_squared.amplitude();
         let across = pressure - self.pore;
-        // Half the pressure comes off the mean of the two in the wall, and off half their difference.
-        let middle = mean.mean - 0.5 * pressure - self.pore;
-        let widest = (half.mean - 0.5 * pressure).abs() + half.amplitude();
-        let radius = (widest * widest + shear.mean + shear.amplitude()).sqrt();
-        let least_mean = middle - mean.amplitude();
-        Bounds {
-            closing_holds: middle + mean.amplitude() + radius <= ucs + q * across,
-            within_holds: (1.0 + q) * radius <= ucs + (q - 1.0) * least_mean,
-            pushed_holds: across - q * (least_mean - radius) <= ucs,
+        let (m0, m1) = (mean.mean - 0.5 * pressure - self.pore, mean.amplitude());
+        let (d0, d1) = (half.mean - 0.5 * pressure, half.amplitude());
+        let mut holds = Bounds { closing: true, within: true, pushed: true };
+        for u in [1.0, -1.0] {
+            let (m, d) = (m0 + u * m1, d0 + u * d1);
+            let radius = (d * d + shear).sqrt();
+            holds.closing &= m + radius <= ucs + q * across;
+            holds.within &= (1.0 + q) * radius <= ucs + (q - 1.0) * m;
+            holds.pushed &= across + q * (radius - m) <= ucs;
         }
+        holds
     }
 
     /// Within the wall: UCS + (q − 1)(σz − P_p), which bounds what the axial stress lets it bear.
@@ -109,9 +116,22 @@ impl ClosedForm {
         Discriminant { within: self.within(), shear_squared: self.kirsch.shear_squared, q4: 4.0 * self.line.q }
     }
 
+    /// The pressures between which a place closes in by e1 and by e2.
+    #[inline(always)]
+    fn closing(&self) -> Root {
+        let (q, kirsch) = (self.line.q, &self.kirsch);
+        let b = self.line.ucs - (q - 1.0) * self.pore;
+        let (by_hoop, by_axial) = (1.0 / (1.0 + q), 1.0 / q);
+        Root::new(
+            kirsch.hoop.scaled(by_hoop, -b * by_hoop),
+            kirsch.axial.scaled(by_axial, -b * by_axial),
+            kirsch.shear_squared.scaled(by_hoop * by_axial, 0.0),
+        )
+    }
+
     /// The lowest pressure that holds at each place, where any does.
     pub fn lower_end(&self) -> LowerEnd {
-        LowerEnd::new(&self.kirsch, self.line, self.pore, self.discriminant())
+        LowerEnd { closing: self.closing(), within: Within::new(&self.kirsch, self.line, self.discriminant(), -1.0) }
     }
 
     /// The highest pressure that holds at each place, where any does.
@@ -136,9 +156,9 @@ impl ClosedForm {
 
 /// What certainly holds all round.
 struct Bounds {
-    closing_holds: bool,
-    within_holds: bool,
-    pushed_holds: bool,
+    closing: bool,
+    within: bool,
+    pushed: bool,
 }
 
 /// ½ (x + y) ± √((½ (x − y))² + v), with x, y, v as waves.
@@ -164,6 +184,60 @@ impl Root {
     fn radius(&self, c: f64, s: f64) -> f64 {
         let (m, v) = (self.half.at(c, s), self.v.at(c, s));
         (m * m + if v > 0.0 { v } else { 0.0 }).sqrt()
+    }
+
+    /// The highest place of the larger root, if Newton climbs to one from the crest of the hoop
+    /// stress that is proved to be the highest of all: nothing is scanned.
+    ///
+    /// With p the value there, (p − x)(p − y) − v is a trigonometric polynomial of degree two with a
+    /// double zero at that place: (1 − cos ψ)(A + B cos ψ + C sin ψ), ψ counted from it. It is nowhere
+    /// below zero, so p nowhere below the root, when A ≥ √(B² + C²) and p is above x and y all round.
+    #[inline]
+    fn highest(&self, hoop: Wave, scale: f64) -> Option<Peak> {
+        let swing = hoop.amplitude();
+        if swing <= SAME * scale {
+            return None;
+        }
+        let (mut c, mut s) = (hoop.cos / swing, hoop.sin / swing);
+        let mut jet = self.jet(1.0, c, s);
+        let mut settled = false;
+        for _ in 0..8 {
+            if jet.bend >= 0.0 {
+                return None;
+            }
+            let step = -jet.slope / jet.bend;
+            if step.abs() > 1.0 {
+                return None;
+            }
+            // Turned by the step; a short one by its series.
+            let (sin, cos) = if step.abs() < 1e-3 {
+                let square = step * step;
+                (step * (1.0 - square / 6.0), 1.0 - square * (0.5 - square / 24.0))
+            } else {
+                step.sin_cos()
+            };
+            (c, s) = (c * cos - s * sin, s * cos + c * sin);
+            if step.abs() < 1e-9 {
+                settled = true;
+                break;
+            }
+            jet = self.jet(1.0, c, s);
+        }
+        let p = jet.value;
+        let apart = |w: Wave| [p - w.mean, -(w.cos * c + w.sin * s), w.cos * s - w.sin * c];
+        let x = self.mean.joined(1.0, self.half, 1.0);
+        let y = self.mean.joined(-1.0, self.half, 1.0);
+        let ([p0, p1, p2], [q0, q1, q2]) = (apart(x), apart(y));
+        let constant = p0 * q0 + 0.5 * (p1 * q1 + p2 * q2) - self.v.mean;
+        let (c2, s2) = (0.5 * (p1 * q1 - p2 * q2), 0.5 * (p1 * q2 + p2 * q1));
+        let rest = constant - c2;
+        let above = |[mean, cos, sin]: [f64; 3]| mean > 0.0 && mean * mean >= cos * cos + sin * sin;
+        let proved = rest > 0.0 && rest * rest > 4.0 * (c2 * c2 + s2 * s2) * (1.0 + 1e-9);
+        (settled && proved && above([p0, p1, p2]) && above([q0, q1, q2])).then(|| Peak {
+            phi: on_circle(s.atan2(c)),
+            value: p,
+            flat: false,
+        })
     }
 
     /// The larger and the smaller.
@@ -281,27 +355,6 @@ pub(crate) struct LowerEnd {
     within: Within,
 }
 
-impl LowerEnd {
-    pub fn new(kirsch: &Kirsch, line: MohrCoulomb, pore: f64, discriminant: Discriminant) -> Self {
-        let q = line.q;
-        let b = line.ucs - (q - 1.0) * pore;
-        let (by_hoop, by_axial) = (1.0 / (1.0 + q), 1.0 / q);
-        LowerEnd {
-            closing: Root::new(
-                kirsch.hoop.scaled(by_hoop, -b * by_hoop),
-                kirsch.axial.scaled(by_axial, -b * by_axial),
-                kirsch.shear_squared.scaled(by_hoop * by_axial, 0.0),
-            ),
-            within: Within::new(kirsch, line, discriminant, -1.0),
-        }
-    }
-
-    /// The lowest pressure at which the place does not close in.
-    pub fn closing(&self) -> Signed {
-        Signed { root: self.closing, sign: 1.0 }
-    }
-}
-
 impl OnCircle for LowerEnd {
     #[inline(always)]
     fn value(&self, c: f64, s: f64) -> f64 {
@@ -365,7 +418,7 @@ mod tests {
 
     fn wall(ucs: f64, q: f64) -> ClosedForm {
         let kirsch = Kirsch::new(Tensor([52.0, 44.0, 63.0, 3.0, 5.0, -4.0]), 0.27);
-        ClosedForm::new(&kirsch, MohrCoulomb { ucs, q }, 21.0)
+        ClosedForm::new(&kirsch, MohrCoulomb { ucs, q }, 21.0, kirsch.scale() + ucs + 21.0)
     }
 
     /// Each end is where the criterion, by eigenvalues of the wall's tensor, is just met.

@@ -13,12 +13,12 @@ pub(crate) struct Excess<'a, C> {
     pub x: f64,
 }
 
-/// The excess of the three principal stresses in their order.
+/// The three principal stresses, largest first.
 #[inline(always)]
-fn ordered<C: Criterion, N: Number>(criterion: &C, place: &Place<N>) -> N {
+fn in_order<N: Number>(place: &Place<N>) -> [N; 3] {
     let (e1, e2) = place.in_the_wall();
     let r = place.across;
-    criterion.excess([e1.larger(r), e2.larger(e1.smaller(r)), e2.smaller(r)])
+    [e1.larger(r), e2.larger(e1.smaller(r)), e2.smaller(r)]
 }
 
 impl<C: Criterion> Excess<'_, C> {
@@ -51,7 +51,7 @@ impl<C: Criterion> Excess<'_, C> {
     #[inline(always)]
     pub fn pressed(&self, c: f64, s: f64, x: f64) -> Jet {
         let place = self.wall.pressed(c, s, x);
-        let intact = ordered(&self.criterion, &place);
+        let intact = self.criterion.excess(in_order(&place));
         match self.plane {
             None => intact,
             Some(plane) => intact.larger(plane.slip_pressed(c, s, &place)),
@@ -67,7 +67,16 @@ impl<C: Criterion> OnCircle for Excess<'_, C> {
     #[inline(always)]
     fn value(&self, c: f64, s: f64) -> f64 {
         let place = self.wall.place(c, s, self.x);
-        let intact = ordered(&self.criterion, &place);
+        let intact = self.criterion.excess(in_order(&place));
+        match self.plane {
+            None => intact,
+            Some(plane) => intact.larger(plane.slip(c, s, &place)),
+        }
+    }
+    #[inline(always)]
+    fn rough(&self, c: f64, s: f64) -> f64 {
+        let place = self.wall.place(c, s, self.x);
+        let intact = self.criterion.rough(in_order(&place));
         match self.plane {
             None => intact,
             Some(plane) => intact.larger(plane.slip(c, s, &place)),

@@ -22,6 +22,7 @@ mod around;
 mod breakout;
 mod circle;
 mod direction;
+mod direction_map;
 mod edges;
 mod effective;
 mod ends;
@@ -50,6 +51,7 @@ mod width;
 
 pub use around::{AroundOutcome, WallAround};
 pub use breakout::{ArcsOutcome, Breakout, FailingArcs};
+pub use direction_map::{DirectionMap, MapInputs};
 pub use limit::{Limit, LimitKind, Mode, WallDirection};
 pub use limits::{Limits, LimitsInputs, LimitsOutcome};
 pub use range::{Governs, RangeChoices, RangeEnd, RangeInputs, RangeOutcome, RecommendedRange};

@@ -10,7 +10,7 @@ use super::effective::EffectiveWall;
 use super::ends::ClosedForm;
 use super::excess::Excess;
 use super::kirsch::{AtWall, Kirsch};
-use super::search::{Look, LowerEnd, lower_end, rise};
+use super::search::{Look, LowerEnd, Search, lower_end, rise};
 use super::slip::PlaneAtWall;
 use crate::rock::{Criterion, Law, with_law};
 
@@ -75,7 +75,7 @@ impl ShearWall {
     pub fn closed_form(&self) -> Option<ClosedForm> {
         match (self.law, self.plane) {
             (Law::MohrCoulomb(line), None) if self.passes == 0.0 => {
-                Some(ClosedForm::new(&self.kirsch, line, self.pore))
+                Some(ClosedForm::new(&self.kirsch, line, self.pore, self.scale))
             }
             _ => None,
         }
@@ -156,12 +156,17 @@ impl ShearWall {
         let hoop = self.effective.hoop;
         let swing = hoop.amplitude();
         let (c, s) = if swing > 0.0 { (-side * hoop.cos / swing, -side * hoop.sin / swing) } else { (1.0, 0.0) };
-        let start = rise(|y| at_place(c, s, y), -self.scale, noise);
-        match lower_end(look, start, self.reach(), noise) {
+        let start = rise(|y| at_place(c, s, y), -0.25 * self.scale, noise);
+        match lower_end(look, self.search_for(&criterion, start)) {
             LowerEnd::At(y) => Side::At(Peak { value: self.pore - side * y, ..worst.get() }),
             LowerEnd::Never => Side::Never,
             LowerEnd::Unbounded => Side::Unbounded,
         }
+    }
+
+    fn search_for<C: Criterion>(&self, _: &C, start: f64) -> Search {
+        let scale = self.scale;
+        Search { start, scale, reach: self.reach(), noise: NOISE * scale, convex: C::CONVEX }
     }
 
     /// Both ends of the safe pressures of one place, where any is safe there; infinite where there is
@@ -178,7 +183,7 @@ impl ShearWall {
                     let slope = -side * jet.slope;
                     Look { excess: jet.value, slope, next: y - jet.value / slope }
                 };
-                match lower_end(look, -self.scale, self.reach(), NOISE * self.scale) {
+                match lower_end(look, self.search_for(&criterion, -0.25 * self.scale)) {
                     LowerEnd::At(y) => Some(self.pore - side * y),
                     LowerEnd::Unbounded => Some(side * f64::INFINITY),
                     LowerEnd::Never => None,
