@@ -4,6 +4,8 @@
 mod azimuths;
 #[path = "invariants/datums.rs"]
 mod datums;
+#[path = "invariants/strengths.rs"]
+mod strengths;
 #[path = "invariants/turns.rs"]
 mod turns;
 

@@ -8,6 +8,8 @@ mod norths;
 mod overburden;
 #[path = "published/planes.rs"]
 mod planes;
+#[path = "published/strength.rs"]
+mod strength;
 #[path = "published/stress.rs"]
 mod stress;
 #[path = "published/survey.rs"]

@@ -12,6 +12,10 @@ mod faults;
 mod norths;
 #[path = "reference/overburden.rs"]
 mod overburden;
+#[path = "reference/strength.rs"]
+mod strength;
+#[path = "reference/strength_traps.rs"]
+mod strength_traps;
 #[path = "reference/stress.rs"]
 mod stress;
 #[path = "reference/survey.rs"]

@@ -13,7 +13,10 @@ pub use crate::frames::{
     LineAtRake, Local, LocalAxes, LowerHemisphere, MapGrid, MeasuredAxes, Plane, PlaneThroughLines, PlanesIntersection,
     RakeOfLine, Site, WallAxes,
 };
-pub use crate::rock::{HoekBrown, Rock, Strength};
+pub use crate::rock::{
+    FailureEnvelope, HoekBrown, PlaneStrength, Rock, RockMass, Strength, StrengthConstants, StrengthMargin, WeakRock,
+    WeakRockInputs, WeakRockMode,
+};
 pub use crate::sheet::{Basis, Sheet, Source};
 pub use crate::show::{NotebookDisplay, Show};
 pub use crate::stress::{

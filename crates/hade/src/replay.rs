@@ -9,6 +9,7 @@ use crate::frames::{
     ApparentDip, Azimuth, BestRotation, CarriedLine, Convergence, Declination, DepthConversion, FittedAxes, Geographic,
     LineAtRake, LowerHemisphere, PlaneThroughLines, PlanesIntersection, RakeOfLine, Route,
 };
+use crate::rock::{FailureEnvelope, RockMass, StrengthMargin, WeakRock};
 use crate::stress::{
     CarriedStress, CarriedTraction, FaultingRegime, HorizontalStresses, Invariants, MohrCircles, Principals, Stress,
     Traction,
@@ -88,6 +89,10 @@ pub const KINDS: &[Kind] = &[
     kind::<FaultSlip>(),
     kind::<CriticalPlanes>(),
     kind::<RankedFaults>(),
+    kind::<FailureEnvelope>(),
+    kind::<StrengthMargin>(),
+    kind::<RockMass>(),
+    kind::<WeakRock>(),
     kind::<SurveyTable>(),
     kind::<Position>(),
     kind::<Overburden>(),

@@ -36,6 +36,7 @@ pub fn samples() -> Vec<Card> {
     cards.extend(depth_samples());
     cards.extend(norths_samples());
     cards.extend(fault_samples(s));
+    cards.extend(strength_samples(&s));
     cards.extend([
         breakout.perpendicular().card(),
         s.card(),
@@ -324,4 +325,49 @@ fn mohr_samples(circles: &MohrCircles) -> Vec<Card> {
         named.with_envelope(0.mpa(), 20.deg()).unwrap().card(),
         circles.clone().with_envelope(5.mpa(), 0.deg()).unwrap().card(),
     ]
+}
+
+/// Every criterion by itself and against a stress, inside and outside its domain; rock masses; planes of
+/// weakness that slip, that do not, and that cannot.
+fn strength_samples(s: &Stress) -> Vec<Card> {
+    let (c, phi) = (11.mpa(), 33.deg());
+    let mass = HoekBrown { sigma_ci: 85.mpa(), m_i: 14.0, gsi: 58.0, disturbance: 0.4 };
+    let whole = HoekBrown { sigma_ci: 120.mpa(), m_i: 21.0, gsi: 100.0, disturbance: 0.0 };
+    let every = [
+        Strength::mohr_coulomb(c, phi),
+        Strength::mohr_coulomb_ucs(38.mpa(), phi),
+        Strength::mogi_coulomb(c, phi),
+        Strength::modified_lade(c, phi),
+        Strength::drucker_prager_inscribed(c, phi),
+        Strength::drucker_prager_circumscribed(c, phi),
+        Strength::drucker_prager_circumscribed(c, 40.deg()),
+        Strength::drucker_prager_extension(c, phi),
+        Strength::hoek_brown(mass),
+        Strength::hoek_brown(whole),
+    ];
+    let mut cards: Vec<Card> = every.iter().map(|strength| strength.envelope().unwrap().card()).collect();
+    for strength in every {
+        cards.push(s.strength_margin(strength, 31.mpa()).unwrap().card());
+    }
+    // Far into tension: outside the domains of the modified Lade criterion and Hoek–Brown.
+    for strength in [every[0], every[3], every[8]] {
+        cards.push(s.strength_margin(strength, 71.mpa()).unwrap().card());
+    }
+    let weak = |sigma_3: f64, beta: f64, cohesion: f64, friction: f64| {
+        let plane = PlaneStrength { cohesion: cohesion.mpa(), friction_angle: friction.deg() };
+        let intact = if friction > 40.0 { every[8] } else { every[0] };
+        WeakRock::under(WeakRockInputs { intact, plane, sigma_3: sigma_3.mpa(), beta: beta.deg() }).unwrap().card()
+    };
+    cards.extend([
+        mass.rock_mass().unwrap().card(),
+        mass.rock_mass_up_to(20.mpa()).unwrap().card(),
+        whole.rock_mass_up_to(30.mpa()).unwrap().card(),
+        weak(5.0, 60.0, 1.0, 25.0),
+        weak(5.0, 28.0, 1.0, 25.0),
+        weak(5.0, 12.0, 1.0, 25.0),
+        weak(5.0, 90.0, 1.0, 25.0),
+        weak(-0.5, 55.0, 2.0, 20.0),
+        weak(6.0, 70.0, 30.0, 45.0),
+    ]);
+    cards
 }

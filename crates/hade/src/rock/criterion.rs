@@ -31,7 +31,11 @@ pub(crate) trait Criterion: Copy {
     /// positive, the rock fails.
     fn excess<N: Number>(&self, stress: [N; 3]) -> N;
 
-    /// The same to a millionth of the stresses, where that is quicker.
+    /// What σ1' ≥ σ2' ≥ σ3' put on the rock, and what the rock bears there: the two sides of the
+    /// criterion as it is published. `None` for a side that is not defined there.
+    fn sides(&self, stress: [f64; 3]) -> [Option<f64>; 2];
+
+    /// The same as the excess, to a millionth of the stresses, where that is quicker.
     #[inline(always)]
     fn rough(&self, stress: [f64; 3]) -> f64 {
         self.excess(stress)

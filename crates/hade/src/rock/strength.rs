@@ -2,17 +2,19 @@
 
 use serde::{Deserialize, Serialize};
 
-use super::drucker_prager::{DruckerPrager, Fit};
-use super::hoek_brown::HoekBrownLaw;
+use super::account::Account;
+use super::drucker_prager::{self, DruckerPrager, Fit};
+use super::hoek_brown::{self, HoekBrown};
 use super::law::Law;
-use super::modified_lade::ModifiedLade;
-use super::mogi_coulomb::MogiCoulomb;
-use super::mohr_coulomb::MohrCoulomb;
+use super::modified_lade::{self, LEAST_FRICTION_ANGLE, ModifiedLade};
+use super::mogi_coulomb::{self, MogiCoulomb};
+use super::mohr_coulomb::{self, MohrCoulomb};
+use super::second_route::{SecondRoute, Tangent};
 use crate::card::{Formula, Item, Reference, Step};
 use crate::error::{Error, Result};
 use crate::stress::EffectiveStress;
 use crate::stress::tensor::Tensor;
-use crate::units::{Angle, Pressure, Quantity, fixed, require_not_negative, with_typed_unit};
+use crate::units::{Angle, Pressure, Quantity, require_not_negative, with_typed_unit};
 
 /// A shear strength: which criterion, with the numbers that were typed. A constructor takes any
 /// number; the first use that can fail (a [`Wall`](crate::well::Wall)) refuses a bad one.
@@ -29,19 +31,6 @@ enum Stated {
     ModifiedLade { cohesion: Pressure, friction_angle: Angle },
     DruckerPrager { fit: Fit, cohesion: Pressure, friction_angle: Angle },
     HoekBrown(HoekBrown),
-}
-
-/// A rock mass by Hoek and Brown: the intact rock, and what joints and disturbance leave of it.
-#[derive(Clone, Copy, Debug, PartialEq, Serialize, Deserialize)]
-pub struct HoekBrown {
-    /// The uniaxial compressive strength of the intact rock, above zero.
-    pub sigma_ci: Pressure,
-    /// The constant mi of the intact rock, above zero.
-    pub m_i: f64,
-    /// The geological strength index, 0–100; 100 is intact rock.
-    pub gsi: f64,
-    /// The disturbance factor D, 0–1; 0 is undisturbed.
-    pub disturbance: f64,
 }
 
 impl Strength {
@@ -87,7 +76,7 @@ impl Strength {
         Strength(Stated::DruckerPrager { fit: Fit::Extension, cohesion, friction_angle })
     }
 
-    /// Hoek–Brown (2002 edition) of a rock mass.
+    /// Hoek–Brown (2002 edition) of a rock mass; with GSI 100 and D 0, of intact rock.
     pub fn hoek_brown(rock_mass: HoekBrown) -> Self {
         Strength(Stated::HoekBrown(rock_mass))
     }
@@ -115,14 +104,127 @@ impl Strength {
         }
     }
 
+    /// The same cohesion and friction angle by Mohr–Coulomb. `None` for Hoek–Brown, which has
+    /// neither; see [`RockMass`](super::RockMass) for an equivalent pair over a range of stress.
+    pub fn as_mohr_coulomb(self) -> Option<Strength> {
+        match self.0 {
+            Stated::MohrCoulomb { .. } | Stated::MohrCoulombUcs { .. } => Some(self),
+            _ => self.cohesion_and_friction().map(|(c, phi)| Strength::mohr_coulomb(c, phi)),
+        }
+    }
+
+    /// The same cohesion and friction angle by Mogi–Coulomb. `None` for Hoek–Brown.
+    pub fn as_mogi_coulomb(self) -> Option<Strength> {
+        self.cohesion_and_friction().map(|(c, phi)| Strength::mogi_coulomb(c, phi))
+    }
+
+    /// The same cohesion and friction angle by the modified Lade criterion. `None` for Hoek–Brown,
+    /// and for friction angles that this criterion does not take.
+    pub fn as_modified_lade(self) -> Option<Strength> {
+        self.cohesion_and_friction()
+            .map(|(c, phi)| Strength::modified_lade(c, phi))
+            .filter(|lade| lade.checked().is_ok())
+    }
+
+    /// Cohesion and friction angle, as stated or, from the uniaxial strength, c = UCS (1 − sin φ) / (2 cos φ).
+    /// `None` for Hoek–Brown.
+    pub(super) fn cohesion_and_friction(self) -> Option<(Pressure, Angle)> {
+        match self.0 {
+            Stated::MohrCoulomb { cohesion, friction_angle }
+            | Stated::MogiCoulomb { cohesion, friction_angle }
+            | Stated::ModifiedLade { cohesion, friction_angle }
+            | Stated::DruckerPrager { cohesion, friction_angle, .. } => Some((cohesion, friction_angle)),
+            Stated::MohrCoulombUcs { ucs, friction_angle } => {
+                let (s, c) = friction_angle.si().sin_cos();
+                Some((ucs * ((1.0 - s) / (2.0 * c)), friction_angle))
+            }
+            Stated::HoekBrown(_) => None,
+        }
+    }
+
+    /// The fit of a cone, where it is one.
+    pub(super) fn fit(self) -> Option<Fit> {
+        match self.0 {
+            Stated::DruckerPrager { fit, .. } => Some(fit),
+            _ => None,
+        }
+    }
+
+    /// What must be said wherever the criterion is used, if anything.
+    pub(crate) fn warning(self) -> Option<&'static str> {
+        match self.fit()? {
+            Fit::Circumscribed => Some(
+                "For comparison only: the circumscribed Drucker–Prager cone flatters the rock everywhere but in triaxial compression.",
+            ),
+            Fit::Inscribed => Some(
+                "For comparison only: the inscribed Drucker–Prager cone is weaker than Mohr–Coulomb but where it touches it.",
+            ),
+            Fit::Extension => Some(
+                "For comparison only: the Drucker–Prager cone through triaxial extension is much weaker than Mohr–Coulomb in triaxial compression.",
+            ),
+        }
+    }
+
+    /// "Mohr–Coulomb, c 10 MPa, φ 30°".
+    pub(crate) fn words(self) -> String {
+        let numbers: Vec<String> = self.items().iter().map(|i| format!("{} {}", i.symbol, i.shown)).collect();
+        format!("{}, {}", self.name(), numbers.join(", "))
+    }
+
     /// The margin in words: "UCS + q σ'_3 − σ'_1".
     pub(crate) fn margin_words(self) -> &'static str {
+        self.account().margin
+    }
+
+    /// Where the criterion is defined, and what happens outside: one or two sentences.
+    pub(crate) fn domain(self) -> &'static str {
+        self.account().domain
+    }
+
+    /// What the criterion assumes, its domain at the end.
+    pub(crate) fn assumptions(self) -> Vec<String> {
+        let account = self.account();
+        account.assumptions.into_iter().chain([account.domain]).map(str::to_owned).collect()
+    }
+
+    /// The derived constants, with the numbers put in.
+    pub(crate) fn steps(self) -> Vec<Step> {
+        self.account().steps
+    }
+
+    /// The formulas of the criterion and its constants.
+    pub(crate) fn formulas(self) -> Vec<Formula> {
+        self.account().formulas
+    }
+
+    /// What the symbols of the formulas are.
+    pub(crate) fn symbols(self) -> Vec<(String, String)> {
+        self.account().symbols.into_iter().map(|(symbol, what)| (symbol.to_owned(), what.to_owned())).collect()
+    }
+
+    /// The sources.
+    pub(crate) fn references(self) -> Vec<Reference> {
+        self.account().references
+    }
+
+    fn account(self) -> Account {
         match self.0 {
-            Stated::MohrCoulomb { .. } | Stated::MohrCoulombUcs { .. } => "UCS + q σ'_3 − σ'_1",
-            Stated::MogiCoulomb { .. } => "a + b σ'_m − τ_oct",
-            Stated::ModifiedLade { .. } => "σ'_m + S_1 − u",
-            Stated::DruckerPrager { .. } => "k + α I_1 − √J_2",
-            Stated::HoekBrown(_) => "σ'_3 − (σ_ci / m_b) (((σ'_1 − σ'_3) / σ_ci)^(1/a) − s)",
+            Stated::MohrCoulomb { cohesion: c, friction_angle: phi } => {
+                mohr_coulomb::account(MohrCoulomb::from_cohesion(c.si(), phi.si()), Some(c), phi)
+            }
+            Stated::MohrCoulombUcs { ucs, friction_angle: phi } => {
+                mohr_coulomb::account(MohrCoulomb::from_ucs(ucs.si(), phi.si()), None, phi)
+            }
+            Stated::MogiCoulomb { cohesion: c, friction_angle: phi } => {
+                mogi_coulomb::account(MogiCoulomb::from_cohesion(c.si(), phi.si()), c, phi)
+            }
+            Stated::ModifiedLade { cohesion: c, friction_angle: phi } => {
+                modified_lade::account(ModifiedLade::from_cohesion(c.si(), phi.si()), c, phi)
+            }
+            Stated::DruckerPrager { fit, cohesion: c, friction_angle: phi } => {
+                drucker_prager::account(DruckerPrager::from_cohesion(fit, c.si(), phi.si()), fit, c, phi)
+            }
+            Stated::HoekBrown(mass) => hoek_brown::account(mass),
         }
     }
 
@@ -139,7 +241,6 @@ impl Strength {
 
     /// Itself, or the error that says what no rock has.
     pub(crate) fn checked(self) -> Result<Self> {
-        // TODO-HELPER: Hoek–Brown ranges, modified Lade needs φ > 0.
         match self.0 {
             Stated::MohrCoulomb { cohesion, .. }
             | Stated::MogiCoulomb { cohesion, .. }
@@ -150,11 +251,21 @@ impl Strength {
             Stated::MohrCoulombUcs { ucs, .. } => {
                 require_not_negative("uniaxial compressive strength", ucs)?;
             }
-            Stated::HoekBrown(_) => {}
+            Stated::HoekBrown(mass) => {
+                mass.checked()?;
+            }
         }
         if let Some(phi) = self.friction_angle() {
             if !(phi.si() >= 0.0 && phi.si() < std::f64::consts::FRAC_PI_2) {
                 return Err(Error::out_of_range("friction angle", with_typed_unit(phi), "at least 0° and below 90°"));
+            }
+            if matches!(self.0, Stated::ModifiedLade { .. }) && phi < Angle::deg(LEAST_FRICTION_ANGLE) {
+                return Err(Error::not_physical(
+                    format!("The friction angle {}", with_typed_unit(phi)),
+                    format!(
+                        "the modified Lade criterion needs a friction angle above 0°, {LEAST_FRICTION_ANGLE}° or more, because it shifts the stresses by c / tan φ; state one, or take another criterion."
+                    ),
+                ));
             }
             if !self.law().size().is_finite() || !self.law().excess([2.0, 1.0, 0.5]).is_finite() {
                 return Err(Error::out_of_range(
@@ -185,47 +296,49 @@ impl Strength {
             Stated::DruckerPrager { fit, cohesion, friction_angle } => {
                 Law::DruckerPrager(DruckerPrager::from_cohesion(fit, cohesion.si(), friction_angle.si()))
             }
-            Stated::HoekBrown(mass) => {
-                Law::HoekBrown(HoekBrownLaw::new(mass.sigma_ci.si(), mass.m_i, mass.gsi, mass.disturbance))
-            }
+            Stated::HoekBrown(mass) => Law::HoekBrown(mass.law()),
         }
     }
 
-    // SHIM: until the wall takes every criterion.
-    pub(crate) fn mohr_coulomb_line(self) -> MohrCoulomb {
-        match self.law() {
-            Law::MohrCoulomb(line) => line,
-            _ => MohrCoulomb { ucs: 0.0, q: 1.0 },
-        }
-    }
-    pub(crate) fn by_tangent(self) -> (f64, Pressure) {
-        let line = self.mohr_coulomb_line();
-        (line.q.sqrt(), Pressure::from_si(line.ucs))
-    }
-
-    /// By how much an effective stress, as a whole tensor, exceeds what the rock bears, by another
-    /// route than [`Law::excess`]: for checks.
+    /// By how much an effective stress (Pa), as a whole tensor, exceeds what the rock bears, by another
+    /// route than [`Law::excess`], for checks: other algebra for the constants, the invariants from the
+    /// components, principal values not by Jacobi's turns.
     pub(crate) fn excess_by_tensor(self, effective: Tensor) -> f64 {
-        // TODO-HELPER: a route of its own for each criterion.
-        self.law().excess(effective.eigen().values)
+        self.second_route().excess(effective)
     }
 
-    /// The margin of effective principal stresses (Pa), with the numbers put in.
-    pub(crate) fn worked(self, [s1, s2, s3]: [f64; 3]) -> Vec<Step> {
-        // TODO-HELPER
-        let mpa = |c: f64| fixed(c * 1e-6, 4);
-        let margin = -self.law().excess([s1, s2, s3]);
-        let Law::MohrCoulomb(line) = self.law() else {
-            return vec![Step::worked(format!("{} = {} MPa", self.margin_words(), mpa(margin)))];
-        };
-        vec![Step::worked(format!(
-            "UCS + q σ'_3 − σ'_1 = {} + {} · ({}) − ({}) = {} MPa",
-            mpa(line.ucs),
-            fixed(line.q, 5),
-            mpa(s3),
-            mpa(s1),
-            mpa(margin)
-        ))]
+    /// The criterion by its second route.
+    pub(super) fn second_route(self) -> SecondRoute {
+        let by_cohesion = |c: Pressure, phi: Angle| Tangent::from_cohesion(c.si(), phi.si());
+        match self.0 {
+            Stated::MohrCoulomb { cohesion, friction_angle } => {
+                SecondRoute::mohr_coulomb(by_cohesion(cohesion, friction_angle))
+            }
+            Stated::MohrCoulombUcs { ucs, friction_angle } => {
+                SecondRoute::mohr_coulomb(Tangent::from_ucs(ucs.si(), friction_angle.si()))
+            }
+            Stated::MogiCoulomb { cohesion, friction_angle } => {
+                SecondRoute::mogi_coulomb(by_cohesion(cohesion, friction_angle))
+            }
+            Stated::ModifiedLade { cohesion, friction_angle } => {
+                SecondRoute::modified_lade(by_cohesion(cohesion, friction_angle))
+            }
+            Stated::DruckerPrager { fit, cohesion, friction_angle } => {
+                SecondRoute::drucker_prager(fit, by_cohesion(cohesion, friction_angle))
+            }
+            Stated::HoekBrown(mass) => mass.second_route(),
+        }
+    }
+
+    /// The margin of effective principal stresses σ1' ≥ σ2' ≥ σ3' (Pa), with the numbers put in.
+    pub(crate) fn worked(self, stress: [f64; 3]) -> Vec<Step> {
+        match self.law() {
+            Law::MohrCoulomb(line) => mohr_coulomb::worked(line, stress),
+            Law::MogiCoulomb(line) => mogi_coulomb::worked(line, stress),
+            Law::ModifiedLade(law) => modified_lade::worked(law, stress),
+            Law::DruckerPrager(cone) => drucker_prager::worked(cone, stress),
+            Law::HoekBrown(law) => hoek_brown::worked(law, stress),
+        }
     }
 
     /// The numbers as they were typed.
@@ -236,57 +349,9 @@ impl Strength {
             | Stated::ModifiedLade { cohesion, .. }
             | Stated::DruckerPrager { cohesion, .. } => Item::typed("c", "cohesion", cohesion),
             Stated::MohrCoulombUcs { ucs, .. } => Item::typed("UCS", "uniaxial compressive strength", ucs),
-            Stated::HoekBrown(mass) => {
-                return vec![
-                    Item::typed("σ_ci", "uniaxial compressive strength of the intact rock", mass.sigma_ci),
-                    Item::typed("m_i", "Hoek–Brown constant of the intact rock", mass.m_i),
-                    Item::typed("GSI", "geological strength index", mass.gsi),
-                    Item::typed("D", "disturbance factor", mass.disturbance),
-                ];
-            }
+            Stated::HoekBrown(mass) => return mass.items(),
         };
         vec![stated, Item::typed("φ", "friction angle", self.friction_angle().unwrap_or_default())]
-    }
-
-    /// The derived constants, with the numbers put in.
-    pub(crate) fn steps(self) -> Vec<Step> {
-        // TODO-HELPER: the other criteria.
-        let (Law::MohrCoulomb(line), Some(phi)) = (self.law(), self.friction_angle()) else { return Vec::new() };
-        let s = phi.si().sin();
-        let mut steps = vec![Step::worked(format!(
-            "q = (1 + sin φ) / (1 − sin φ) = (1 + {}) / (1 − {}) = {}",
-            fixed(s, 6),
-            fixed(s, 6),
-            fixed(line.q, 5)
-        ))];
-        if let Stated::MohrCoulomb { cohesion, .. } = self.0 {
-            steps.push(Step::worked(format!(
-                "UCS = 2 c cos φ / (1 − sin φ) = 2 · {} · {} / (1 − {}) = {} MPa",
-                fixed(cohesion.in_mpa(), 3),
-                fixed(phi.si().cos(), 6),
-                fixed(s, 6),
-                fixed(line.ucs * 1e-6, 3)
-            )));
-        }
-        steps
-    }
-
-    pub(crate) fn formulas(self) -> Vec<Formula> {
-        vec![
-            Formula::new("sigma'_1 = upright(\"UCS\") + q sigma'_3", "σ'_1 = UCS + q σ'_3"),
-            Formula::new("q = (1 + sin phi) / (1 - sin phi)", "q = (1 + sin φ) / (1 − sin φ)"),
-            Formula::new("upright(\"UCS\") = (2 c cos phi) / (1 - sin phi)", "UCS = 2 c cos φ / (1 − sin φ)"),
-        ]
-    }
-
-    pub(crate) fn assumptions(self) -> Vec<String> {
-        Vec::new()
-    }
-
-    pub(crate) fn references(self) -> Vec<Reference> {
-        vec![Reference::new(
-            "Jaeger, J.C., Cook, N.G.W. and Zimmerman, R.W. (2007) Fundamentals of Rock Mechanics, 4th ed., Blackwell, ch. 4 (Coulomb's criterion; cited from memory)",
-        )]
     }
 }
 
@@ -324,5 +389,84 @@ mod tests {
         let text = serde_json::to_string(&strength).unwrap();
         assert!(text.contains("mohr_coulomb_ucs"), "{text}");
         assert_eq!(serde_json::from_str::<Strength>(&text).unwrap(), strength);
+    }
+
+    #[test]
+    fn every_criterion_survives_the_record_and_says_its_numbers() {
+        let (c, phi) = (10.mpa(), 30.deg());
+        let mass = HoekBrown { sigma_ci: 80.mpa(), m_i: 12.0, gsi: 55.0, disturbance: 0.2 };
+        for (strength, name) in [
+            (Strength::mogi_coulomb(c, phi), "mogi_coulomb"),
+            (Strength::modified_lade(c, phi), "modified_lade"),
+            (Strength::drucker_prager_inscribed(c, phi), "inscribed"),
+            (Strength::drucker_prager_circumscribed(c, phi), "circumscribed"),
+            (Strength::drucker_prager_extension(c, phi), "extension"),
+            (Strength::hoek_brown(mass), "hoek_brown"),
+        ] {
+            let text = serde_json::to_string(&strength).unwrap();
+            assert!(text.contains(name), "{text}");
+            assert_eq!(serde_json::from_str::<Strength>(&text).unwrap(), strength);
+            assert!(!strength.steps().is_empty() && !strength.worked([50e6, 20e6, 5e6]).is_empty());
+            assert!(strength.assumptions().last().is_some_and(|domain| domain == strength.domain()));
+            assert!(!strength.symbols().is_empty() && !strength.references().is_empty());
+        }
+        assert_eq!(Strength::hoek_brown(mass).words(), "Hoek–Brown, σ_ci 80 MPa, m_i 12, GSI 55, D 0.2");
+        let flattering = Strength::drucker_prager_circumscribed(c, phi);
+        assert!(flattering.warning().unwrap().contains("flatters"));
+        assert_eq!(Strength::mohr_coulomb(c, phi).warning(), None);
+    }
+
+    #[test]
+    fn refusals_say_what_is_allowed() {
+        let message = |s: Strength| s.checked().unwrap_err().to_string();
+        let lade = |phi: f64| Strength::modified_lade(10.mpa(), phi.deg());
+        assert!(message(lade(0.0)).contains("the modified Lade criterion needs a friction angle above 0°"));
+        assert!(message(lade(0.001)).contains("0.01° or more"));
+        assert!(lade(0.01).checked().is_ok());
+        assert!(message(lade(90.0)).contains("below 90°"));
+        let mass = HoekBrown { sigma_ci: 80.mpa(), m_i: 12.0, gsi: 55.0, disturbance: 0.2 };
+        let of = |mass: HoekBrown| message(Strength::hoek_brown(mass));
+        assert_eq!(
+            of(HoekBrown { sigma_ci: 0.mpa(), ..mass }),
+            "uniaxial compressive strength σci of the intact rock is 0 MPa, but it must be above zero."
+        );
+        assert_eq!(
+            of(HoekBrown { m_i: -3.0, ..mass }),
+            "Hoek–Brown constant mi of the intact rock is -3, but it must be above zero."
+        );
+        assert_eq!(
+            of(HoekBrown { gsi: 101.0, ..mass }),
+            "geological strength index GSI is 101, but it must be between 0 and 100."
+        );
+        assert_eq!(
+            of(HoekBrown { disturbance: 1.5, ..mass }),
+            "disturbance factor D is 1.5, but it must be between 0 and 1."
+        );
+        for bad in [
+            HoekBrown { m_i: f64::NAN, ..mass },
+            HoekBrown { gsi: f64::NAN, ..mass },
+            HoekBrown { disturbance: f64::NAN, ..mass },
+            HoekBrown { sigma_ci: f64::INFINITY.mpa(), ..mass },
+            HoekBrown { m_i: 1e-305, ..mass },
+        ] {
+            assert!(Strength::hoek_brown(bad).checked().is_err(), "{bad:?}");
+        }
+    }
+
+    #[test]
+    fn the_same_cohesion_and_friction_by_another_criterion() {
+        let (c, phi) = (10.mpa(), 30.deg());
+        let mogi = Strength::mogi_coulomb(c, phi);
+        assert_eq!(mogi.as_mohr_coulomb(), Some(Strength::mohr_coulomb(c, phi)));
+        assert_eq!(mogi.as_modified_lade(), Some(Strength::modified_lade(c, phi)));
+        // UCS 2 · 10 · √3 MPa at 30° is a cohesion of 10 MPa.
+        let by_ucs = Strength::mohr_coulomb_ucs((20.0 * 3.0_f64.sqrt()).mpa(), phi);
+        assert_eq!(by_ucs.as_mohr_coulomb(), Some(by_ucs));
+        let (cohesion, _) = by_ucs.as_mogi_coulomb().unwrap().cohesion_and_friction().unwrap();
+        assert!((cohesion.in_mpa() - 10.0).abs() < 1e-12);
+        assert_eq!(Strength::mohr_coulomb(c, 0.deg()).as_modified_lade(), None);
+        let mass = HoekBrown { sigma_ci: 80.mpa(), m_i: 12.0, gsi: 55.0, disturbance: 0.2 };
+        let mass = Strength::hoek_brown(mass);
+        assert_eq!([mass.as_mohr_coulomb(), mass.as_mogi_coulomb(), mass.as_modified_lade()], [None; 3]);
     }
 }
