@@ -145,7 +145,7 @@ impl Explain for FailureEnvelope {
             "uniaxial strength by halving on the criterion of the whole tensor",
             &[outcome.uniaxial.in_mpa()],
             &[by_halving],
-            1e-7 * by_halving.abs() + least,
+            1e-7 * (1.0 + 1e-3 * again.conditioning()) * by_halving.abs() + least,
             "MPa",
         ));
         let by_halving = again.fails_at(|s| Tensor([s, s, 0.0, 0.0, 0.0, 0.0]), most).map(|s| s * 1e-6);
@@ -154,7 +154,7 @@ impl Explain for FailureEnvelope {
                 "strength under two equal stresses by halving on the criterion of the whole tensor",
                 &[stated.in_mpa()],
                 &[found],
-                1e-7 * found.abs() + least,
+                1e-7 * (1.0 + 1e-3 * again.conditioning()) * found.abs() + least,
                 "MPa",
             ),
             // Beyond what the halving looked at, or never.

@@ -145,7 +145,7 @@ impl Explain for StrengthMargin {
                 "margin from the components of the tensor, with constants by other algebra",
                 &[outcome.margin.in_mpa()],
                 &[-again.excess(tensor) * 1e-6],
-                if at_edge { 1e-4 } else { relative } * terms,
+                if at_edge { 1e-4 } else { relative * again.conditioning() } * terms,
                 "MPa",
             ),
         ];

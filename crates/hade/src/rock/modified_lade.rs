@@ -45,6 +45,9 @@ impl ModifiedLade {
         let size = ((a * a + b * b + c * c) * 0.5 + 1e-180).sqrt() * self.root;
         // w = u / √(k J2): w³ − w + r = 0, by Newton from a guess that is close everywhere.
         let r = a * b * c * (self.root * self.root) / (size * size * size);
+        // |J3| ≤ 2 (J2 / 3)^(3/2), but for the rounding of a deviator of nothing.
+        let most = r * 0.0 + 0.384_900_179_459_750_5 / self.root;
+        let r = r.smaller(most).larger(-most);
         let (mut w, r0) = (guess(r.value()), r.value());
         for _ in 0..STEPS {
             w -= (w * (w * w - 1.0) + r0) / (3.0 * w * w - 1.0);

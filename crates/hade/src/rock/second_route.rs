@@ -140,6 +140,14 @@ impl SecondRoute {
         }
     }
 
+    /// How much a last bit may weigh: near 90° of friction two roots of Lade's cubic are nearly one.
+    pub fn conditioning(self) -> f64 {
+        match self {
+            SecondRoute::ModifiedLade { bound, .. } => (bound / 27.0).sqrt(),
+            _ => 1.0,
+        }
+    }
+
     /// By how much an effective tensor exceeds what the rock bears, in the measure of the criterion.
     pub fn excess(self, tensor: Tensor) -> f64 {
         match (self, self.sides(tensor)) {

@@ -102,7 +102,8 @@ pub(crate) fn greatest(f: &impl OnCircle, scale: f64) -> Peak {
         bottom = if value < bottom { value } else { bottom };
     }
     if top - bottom <= SAME * scale {
-        return Peak { phi: 0.0, value: top, flat: true };
+        // Any place is as good.
+        return Peak { phi: 0.0, value: f.value(1.0, 0.0), flat: true };
     }
     let (enough, beside) = (top - SLACK * (top - bottom), top - BESIDE * (top - bottom));
     let mut best = Peak { phi: 0.0, value: f64::NEG_INFINITY, flat: false };
