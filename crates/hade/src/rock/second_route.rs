@@ -151,9 +151,9 @@ impl SecondRoute {
     /// By how much an effective tensor exceeds what the rock bears, in the measure of the criterion.
     pub fn excess(self, tensor: Tensor) -> f64 {
         match (self, self.sides(tensor)) {
-            (SecondRoute::ModifiedLade { shift, bound, .. }, _) => {
+            (SecondRoute::ModifiedLade { shift, eta, bound }, _) => {
                 // The largest root of the cubic in the mean by its trigonometric solution.
-                let k = bound / (bound - 27.0);
+                let k = bound / eta;
                 let [xx, yy, zz, xy, yz, xz] = tensor.0;
                 let mean = (xx + yy + zz) / 3.0;
                 let (x, y, z) = (xx - mean, yy - mean, zz - mean);
