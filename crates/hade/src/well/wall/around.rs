@@ -192,7 +192,7 @@ impl Explain for WallAround {
                 "Stress and strength at every tool face of the wall at one pressure in the hole.",
             ),
             steps,
-            figures: vec![self.figure()],
+            figures: vec![self.figure(), super::envelope_points::figure(&self.wall, p.si())],
             notes,
             topics: self.wall.topics(&["wall", "breakout", "elastic"]),
         }

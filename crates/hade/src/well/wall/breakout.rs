@@ -3,6 +3,7 @@
 use serde::{Deserialize, Serialize};
 
 use super::arcs::{Arcs, MOST};
+use super::limit::{Mode, mode_of};
 use super::stress_at::bearing_check;
 use super::wall::{AtPressure, Wall, pressure_item};
 use super::{direction, method, second_route::ByVectors};
@@ -23,6 +24,11 @@ pub struct Breakout {
     pub whole_wall: bool,
     /// The bearing of its middle, `None` where that points straight up or down.
     pub bearing: Option<Angle>,
+    /// How its middle fails: along which wall direction each principal stress lies nearest, largest
+    /// first.
+    pub mode: Mode,
+    /// Whether its middle slips on the plane of weakness rather than fails through the rock.
+    pub on_weak_plane: bool,
 }
 
 /// All arcs that fail at a pressure, and how the worst place stands; also when nothing fails.
@@ -64,12 +70,22 @@ impl Wall {
 
     pub(super) fn arcs_outcome(&self, pressure: Pressure) -> ArcsOutcome {
         let worst = self.shear.worst(pressure.si());
-        let arcs = breakouts(self, &self.shear.failing(pressure.si()), 0.5 * worst.phi);
+        let arcs = breakouts(self, &self.shear.failing(pressure.si()), 0.5 * worst.phi, pressure.si());
         ArcsOutcome {
             arcs,
             least_margin: Pressure::from_si(-worst.value),
             worst: (!worst.flat).then(|| Angle::from_si(0.5 * worst.phi)),
         }
+    }
+}
+
+impl Breakout {
+    /// "shear: σ'_1 hoop, σ'_2 axial, σ'_3 radial", or slip on the plane of weakness.
+    pub fn words(&self) -> String {
+        let how = if self.on_weak_plane { "slip on the plane of weakness" } else { "shear" };
+        let [a, b, c] = self.mode.directions.map(super::limit::WallDirection::word);
+        let near = if self.mode.turned { "nearest " } else { "" };
+        format!("{how}: σ'_1 {near}{a}, σ'_2 {b}, σ'_3 {c}")
     }
 }
 
@@ -85,12 +101,14 @@ impl ArcsOutcome {
     }
 }
 
-fn breakouts(wall: &Wall, arcs: &Arcs, worst: f64) -> [Option<Breakout>; MOST] {
+fn breakouts(wall: &Wall, arcs: &Arcs, worst: f64, pressure: f64) -> [Option<Breakout>; MOST] {
     let breakout = |centre: f64, width: f64, whole_wall| Breakout {
         centre: Angle::from_si(centre),
         width: Angle::from_si(width),
         whole_wall,
         bearing: direction::bearing(wall.attitude, centre),
+        mode: mode_of(wall.shear.at(centre, pressure), wall.shear.scale()),
+        on_weak_plane: wall.shear.slips_at(pressure, 2.0 * centre),
     };
     let mut found = [None; MOST];
     if arcs.whole {
@@ -321,6 +339,7 @@ impl FailingArcs {
                 Column::number("from", "°"),
                 Column::number("to", "°"),
                 Column::number("width", "°"),
+                Column::text("mode at its middle"),
             ],
             rows: arcs
                 .iter()
@@ -334,6 +353,7 @@ impl FailingArcs {
                         fixed(centre - half, 2),
                         fixed(centre + half, 2),
                         fixed(2.0 * half, 2),
+                        arc.words(),
                     ]
                 })
                 .collect(),

@@ -1,6 +1,6 @@
 //! By how much a wall exceeds what its rock bears, round the hole, at one pressure.
 
-use super::circle::OnCircle;
+use super::circle::{OnCircle, climb};
 use super::effective::{EffectiveWall, Place};
 use super::slip::PlaneAtWall;
 use crate::rock::{Criterion, Jet, Number, Order};
@@ -45,6 +45,21 @@ impl<C: Criterion> Excess<'_, C> {
             (Order::Middle, 0) => c.excess([e1, e2, r]),
             (Order::Middle, _) => c.excess([e1, r, e2]).smaller(c.excess([r, e1, e2])),
         }
+    }
+
+    /// The top of the hill about a place, on the piece that is worst there, and how far it is.
+    #[inline]
+    pub fn climb_from(&self, phi: f64, scale: f64) -> (f64, f64) {
+        let (s, c) = phi.sin_cos();
+        let mut worst = (0, self.jet(0, c, s));
+        for piece in 1..self.pieces() {
+            let jet = self.jet(piece, c, s);
+            if jet.value > worst.1.value {
+                worst = (piece, jet);
+            }
+        }
+        let top = climb(self, worst.0, phi, worst.1, scale).phi;
+        (top, (top - phi).abs())
     }
 
     /// With its derivatives by the pressure, at one place.

@@ -104,7 +104,7 @@ impl Limit {
         self.least_bad
     }
     /// When no pressure is safe: by how much the worst place still fails at the least bad pressure
-    /// (shear: in σ1'; parting: of the least effective principal stress, beyond −T₀).
+    /// (shear: in the measure of the criterion; parting: of the least effective principal stress, beyond −T₀).
     pub fn short_by(&self) -> Option<Pressure> {
         self.short_by
     }
@@ -231,7 +231,7 @@ impl Limit {
 
 /// The directions of the principal stresses, largest first. Stresses closer than rounding keep the
 /// order hoop, axial, radial, so that the words do not turn on a last bit.
-fn mode_of(at: AtWall, scale: f64) -> Mode {
+pub(super) fn mode_of(at: AtWall, scale: f64) -> Mode {
     use WallDirection::{Axial, Hoop, Radial};
     let same = 1e-9 * scale;
     let (e1, e2, share) = at.in_the_wall();

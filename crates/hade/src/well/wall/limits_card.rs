@@ -114,7 +114,8 @@ impl Limits {
             (self.lower_shear.pressure(), self.lower_shear.least_bad(), self.lower_shear.short_by())
         {
             notes.push(format!(
-                "No pressure keeps the wall within its shear strength: the least bad is {least}, where the worst place still exceeds it by {short} in σ'_1."
+                "No pressure keeps the wall within its shear strength: the least bad is {least}, where the worst place still exceeds it by {short} ({} there).",
+                self.wall.strength().margin_words()
             ));
             if let (Some(lower), Some(upper)) = (self.lower_shear.own_side(), self.upper_shear.own_side()) {
                 notes.push(format!(

@@ -97,6 +97,7 @@ pub(super) fn wall_stresses(wall: &Wall) -> Method {
 /// What a reader must know of any result of this wall.
 pub(super) fn notes(wall: &Wall) -> Vec<String> {
     let mut notes = wall.setup.notes();
+    notes.extend(wall.strength().warning().map(str::to_owned));
     notes.push(super::direction::reference(wall.attitude));
     notes
 }
@@ -130,6 +131,7 @@ pub(super) fn with_strength(wall: &Wall, words: &str) -> Method {
     words.clone_into(&mut method.words);
     method.formulas.extend(wall.strength().formulas());
     method.references.extend(wall.strength().references());
+    method.symbols.extend(wall.strength().symbols());
     method.assumptions.extend(wall.strength().assumptions());
     if wall.setup.weak_plane.is_some() {
         method.formulas.push(Formula::new(

@@ -26,6 +26,7 @@ mod direction_map;
 mod edges;
 mod effective;
 mod ends;
+mod envelope_points;
 mod excess;
 mod kirsch;
 mod limit;

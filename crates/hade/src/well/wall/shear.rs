@@ -5,7 +5,7 @@
 //! Mohr–Coulomb at an impermeable wall has both ends of the safe pressures of a place in closed form
 //! ([`super::ends`]); the other criteria, and other walls, are searched ([`super::search`]).
 
-use super::circle::{CIRCLE, Peak, greatest};
+use super::circle::{CIRCLE, Peak, greatest, on_circle};
 use super::effective::EffectiveWall;
 use super::ends::ClosedForm;
 use super::excess::Excess;
@@ -152,11 +152,22 @@ impl ShearWall {
             worst.set(peak);
             Look { excess: peak.value, slope, next: rise(|y| at_place(c, s, y), y, noise) }
         };
-        // It begins at the end of the place with the largest hoop stress (the smallest for the upper).
+        // It begins at the end of the place with the largest hoop stress (the smallest for the upper),
+        // and of the places it leads to by climbing at that end: mostly the end of the whole wall, so
+        // that one look all round confirms it.
         let hoop = self.effective.hoop;
-        let swing = hoop.amplitude();
-        let (c, s) = if swing > 0.0 { (-side * hoop.cos / swing, -side * hoop.sin / swing) } else { (1.0, 0.0) };
-        let start = rise(|y| at_place(c, s, y), -0.25 * self.scale, noise);
+        let crest = on_circle(if side < 0.0 { hoop.sin.atan2(hoop.cos) } else { (-hoop.sin).atan2(-hoop.cos) });
+        let (mut phi, mut start) = (crest, -0.25 * self.scale);
+        for _ in 0..4 {
+            let (s, c) = phi.sin_cos();
+            start = rise(|y| at_place(c, s, y), start, noise);
+            let here = self.excess(criterion, self.pore - side * start);
+            let (top, moved) = here.climb_from(phi, self.scale);
+            phi = top;
+            if moved < 1e-6 {
+                break;
+            }
+        }
         match lower_end(look, self.search_for(&criterion, start)) {
             LowerEnd::At(y) => Side::At(Peak { value: self.pore - side * y, ..worst.get() }),
             LowerEnd::Never => Side::Never,
