@@ -16,3 +16,5 @@ mod stress;
 mod survey;
 #[path = "published/wall.rs"]
 mod wall;
+#[path = "published/wall_field.rs"]
+mod wall_field;

@@ -28,6 +28,8 @@ mod tensor_traps;
 mod turns;
 #[path = "reference/wall.rs"]
 mod wall;
+#[path = "reference/wall_depth.rs"]
+mod wall_depth;
 #[path = "reference/wall_field.rs"]
 mod wall_field;
 #[path = "reference/wall_traps.rs"]

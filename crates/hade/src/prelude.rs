@@ -25,6 +25,7 @@ pub use crate::stress::{
 };
 pub use crate::units::{Angle, Density, Expansion, FluxDensity, Gradient, Length, Pressure, Uncertain, Units, Warming};
 pub use crate::well::{
-    Breakout, FailingArcs, Limit, Limits, MudColumn, MudPressure, Position, RangeChoices, RecommendedRange, Station,
-    Survey, Wall, WallAround, WallInputs, WallStress,
+    Breakout, CrackArc, CrackPlace, DeepestFailure, FailingArcs, FailureDepth, FieldStress, Limit, Limits, MudColumn,
+    MudPressure, PlaneTrace, Position, RadialProfile, RangeChoices, RecommendedRange, Station, Survey, TensileCracks,
+    Wall, WallAround, WallImage, WallInputs, WallStress,
 };

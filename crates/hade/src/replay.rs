@@ -14,7 +14,10 @@ use crate::stress::{
     CarriedStress, CarriedTraction, FaultingRegime, HorizontalStresses, Invariants, MohrCircles, Principals, Stress,
     Traction,
 };
-use crate::well::{FailingArcs, Limits, MudPressure, Position, RecommendedRange, SurveyTable, WallAround, WallStress};
+use crate::well::{
+    FailingArcs, FailureDepth, FieldStress, Limits, MudPressure, Position, RadialProfile, RecommendedRange,
+    SurveyTable, TensileCracks, WallAround, WallImage, WallStress,
+};
 
 /// A kind of card: how it is computed and checked.
 #[derive(Clone, Copy)]
@@ -104,6 +107,11 @@ pub const KINDS: &[Kind] = &[
     kind::<FailingArcs>(),
     kind::<Limits>(),
     kind::<RecommendedRange>(),
+    kind::<FieldStress>(),
+    kind::<RadialProfile>(),
+    kind::<FailureDepth>(),
+    kind::<TensileCracks>(),
+    kind::<WallImage>(),
 ];
 
 fn kind_of(card: &Card) -> Result<&'static Kind> {

@@ -3,6 +3,7 @@
 #![cfg(test)]
 
 use crate::prelude::*;
+use crate::well::WeakPlane;
 
 /// One card of every kind, made through the public surface.
 pub fn samples() -> Vec<Card> {
@@ -32,6 +33,7 @@ pub fn samples() -> Vec<Card> {
     let plane = Plane { strike: Azimuth::from_true_north(45.deg()), dip: 60.deg() };
     let sh = chain.carry(&s);
     let mut cards = well_samples(sh);
+    cards.extend(field_samples(sh));
     cards.extend(frame_samples(s, plane));
     cards.extend(depth_samples());
     cards.extend(norths_samples());
@@ -370,4 +372,29 @@ fn strength_samples(s: &Stress) -> Vec<Card> {
         weak(6.0, 70.0, 30.0, 45.0),
     ]);
     cards
+}
+
+/// The field round a hole: at the wall and off it, with and without a plane of weakness, failing and
+/// sound, and cracks.
+fn field_samples(sh: Stress<Borehole>) -> Vec<Card> {
+    let strength = Strength::mohr_coulomb(12.mpa(), 32.deg());
+    let rock = Rock { poisson: 0.25, tensile_strength: 2.mpa(), strength };
+    let wall = Wall::new(WallInputs { stress: sh, pore: 31.2.mpa(), rock }).unwrap();
+    let plane = Plane { strike: Azimuth::from_true_north(40.deg()), dip: 35.deg() };
+    let bedded = wall.weak_plane(WeakPlane { plane, cohesion: 1.5.mpa(), friction_angle: 22.deg() }).unwrap();
+    let mogi = wall.with_strength(Strength::mogi_coulomb(6.mpa(), 32.deg())).unwrap();
+    vec![
+        wall.field_at(37.6.mpa(), 25.deg(), 1.0).unwrap().card(),
+        bedded.field_at(37.6.mpa(), 125.deg(), 1.4).unwrap().card(),
+        wall.permeable(0.8).unwrap().field_at(40.mpa(), 25.deg(), 1.0).unwrap().card(),
+        bedded.radial_profile(36.mpa(), 70.deg()).unwrap().card(),
+        wall.failure_depth(33.mpa()).unwrap().card(),
+        wall.failure_depth(47.mpa()).unwrap().card(),
+        bedded.failure_depth(38.mpa()).unwrap().card(),
+        mogi.failure_depth(33.mpa()).unwrap().card(),
+        wall.tensile_cracks(40.mpa()).unwrap().card(),
+        wall.tensile_cracks(72.mpa()).unwrap().card(),
+        bedded.unrolled(72.mpa(), 0.216.m()).unwrap().card(),
+        wall.unrolled(33.mpa(), 0.216.m()).unwrap().card(),
+    ]
 }

@@ -6,7 +6,7 @@
 use std::f64::consts::TAU;
 
 use super::circle::on_circle;
-use super::edges::edges;
+use super::edges::{Edges, edges};
 use super::shear::ShearWall;
 use crate::rock::with_law;
 
@@ -43,50 +43,54 @@ const NOISE: f64 = 4e-12;
 impl ShearWall {
     /// What fails at a pressure.
     pub fn failing(&self, pressure: f64) -> Arcs {
-        let mut found = with_law!(self.law, criterion => edges(&self.excess(criterion, pressure), self.scale()));
-        let cuts = found.places.get_mut(..found.count).unwrap_or_default();
-        for cut in &mut *cuts {
-            *cut = on_circle(*cut);
-        }
-        cuts.sort_unstable_by(f64::total_cmp);
+        let found = with_law!(self.law, criterion => edges(&self.excess(criterion, pressure), self.scale()));
         let noise = NOISE * self.scale();
-        let fails = |phi: f64| self.excess_at(pressure, phi) > noise;
-        let mut arcs = Arcs { edges: [(0.0, 0.0); MOST], count: 0, whole: false };
-        let Some(first) = cuts.first().copied() else {
-            arcs.whole = fails(0.0);
-            return arcs;
-        };
-        // The piece that runs through φ = 0 belongs after the last cut.
-        let mut open: Option<f64> = None;
-        let mut all = true;
-        let next = cuts.iter().skip(1).copied().chain(std::iter::once(first + TAU));
-        for (from, to) in cuts.iter().copied().zip(next) {
-            if to > from && fails(0.5 * (from + to)) {
-                open = open.or(Some(from));
-            } else if to > from {
-                all = false;
-                close(&mut arcs, &mut open, from);
-            }
-        }
-        if all {
-            arcs.whole = true;
-            arcs.count = 0;
-            return arcs;
-        }
-        // What is still open at the end runs on into what began at the first cut.
-        if let Some(from) = open {
-            let joins = arcs.edges.first().copied().filter(|(start, _)| arcs.count > 0 && *start == first);
-            match joins {
-                Some((_, to)) => {
-                    if let Some(cell) = arcs.edges.first_mut() {
-                        *cell = (from, to + TAU);
-                    }
-                }
-                None => close(&mut arcs, &mut Some(from), first + TAU),
-            }
-        }
-        arcs
+        arcs_between(found, |phi| self.excess_at(pressure, phi) > noise)
     }
+}
+
+/// The arcs that fail among the stretches between edges.
+pub(crate) fn arcs_between(mut found: Edges, fails: impl Fn(f64) -> bool) -> Arcs {
+    let cuts = found.places.get_mut(..found.count).unwrap_or_default();
+    for cut in &mut *cuts {
+        *cut = on_circle(*cut);
+    }
+    cuts.sort_unstable_by(f64::total_cmp);
+    let mut arcs = Arcs { edges: [(0.0, 0.0); MOST], count: 0, whole: false };
+    let Some(first) = cuts.first().copied() else {
+        arcs.whole = fails(0.0);
+        return arcs;
+    };
+    // The piece that runs through φ = 0 belongs after the last cut.
+    let mut open: Option<f64> = None;
+    let mut all = true;
+    let next = cuts.iter().skip(1).copied().chain(std::iter::once(first + TAU));
+    for (from, to) in cuts.iter().copied().zip(next) {
+        if to > from && fails(0.5 * (from + to)) {
+            open = open.or(Some(from));
+        } else if to > from {
+            all = false;
+            close(&mut arcs, &mut open, from);
+        }
+    }
+    if all {
+        arcs.whole = true;
+        arcs.count = 0;
+        return arcs;
+    }
+    // What is still open at the end runs on into what began at the first cut.
+    if let Some(from) = open {
+        let joins = arcs.edges.first().copied().filter(|(start, _)| arcs.count > 0 && *start == first);
+        match joins {
+            Some((_, to)) => {
+                if let Some(cell) = arcs.edges.first_mut() {
+                    *cell = (from, to + TAU);
+                }
+            }
+            None => close(&mut arcs, &mut Some(from), first + TAU),
+        }
+    }
+    arcs
 }
 
 fn close(arcs: &mut Arcs, open: &mut Option<f64>, to: f64) {

@@ -46,6 +46,13 @@ pub(crate) fn bearing_cell(attitude: Attitude, toolface: Angle) -> String {
     }
 }
 
+/// A mark in a figure: "top, 070.0°" or "right, down"; in a vertical hole the bearing alone.
+pub(crate) fn mark(attitude: Attitude, name: &str, toolface: Angle) -> String {
+    let bearing = bearing_cell(attitude, toolface);
+    let degree = if bearing == "up" || bearing == "down" { "" } else { "°" };
+    if attitude.is_vertical() { format!("{bearing}{degree}") } else { format!("{name}, {bearing}{degree}") }
+}
+
 /// The tool face, and its bearing where it has one, as results.
 pub(crate) fn items(attitude: Attitude, of: &str, symbol: &str, toolface: Angle) -> Vec<Item> {
     let mut items = vec![Item::computed(&format!("θ_{symbol}"), format!("tool face of {of}"), toolface)];

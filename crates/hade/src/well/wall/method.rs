@@ -4,6 +4,7 @@ use super::kirsch::AtWall;
 use super::wall::Wall;
 use crate::card::{Formula, Method, Reference, Step};
 use crate::frames::vector::{V3, add, apply, dot, norm, scale};
+use crate::rock::Law;
 use crate::units::{Quantity, fixed};
 
 /// Formulas, sources and assumptions of the wall stresses.
@@ -111,10 +112,13 @@ pub(super) fn margin_name(wall: &Wall) -> String {
 
 /// The σ1' that the rock bears at a place (Pa), the other two as they are there.
 pub(super) fn bears(wall: &Wall, theta: f64, pressure: f64) -> f64 {
-    let [s1, s2, s3] = wall.shear.principal(theta, pressure);
-    let law = wall.shear.law;
+    borne_by(wall.shear.law, wall.shear.principal(theta, pressure), wall.shear.scale())
+}
+
+/// The σ1' that a rock bears beside σ2' and σ3' (Pa), between σ2' and four times `scale` above it.
+pub(super) fn borne_by(law: Law, [s1, s2, s3]: [f64; 3], scale: f64) -> f64 {
     // The excess grows with σ1' from σ2' on: halving finds where it is zero.
-    let (mut low, mut high) = (s2, s2 + 4.0 * wall.shear.scale());
+    let (mut low, mut high) = (s2, s2 + 4.0 * scale);
     if law.excess([high, s2, s3]) <= 0.0 || law.excess([low, s2, s3]) >= 0.0 {
         return if law.excess([low, s2, s3]) >= 0.0 { s2.min(s1) } else { high };
     }

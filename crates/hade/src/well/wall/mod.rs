@@ -1,5 +1,6 @@
-//! The wall of a hole: its stresses, the arcs of it that fail at a pressure, the pressures that
-//! limit it, and the range of pressures recommended for it.
+//! The wall of a hole: its stresses, those behind it, the arcs of it that fail at a pressure and how deep,
+//! its tensile cracks, what of it an image shows, the pressures that limit it, and the range of pressures
+//! recommended for it.
 //!
 //! # Conventions
 //!
@@ -14,26 +15,39 @@
 //!
 //! # Does not do
 //!
-//! Time, chemistry, stress changed by earlier failure, and rock that creeps (where that is said,
+//! Time, chemistry, pore pressure and temperature behind a wall that lets them pass (the field away from
+//! such a wall is refused), stress changed by earlier failure, and rock that creeps (where that is said,
 //! every result warns). A breakout is the arc that fails elastically at first; it deepens, and need not widen.
 
 mod arcs;
 mod around;
 mod breakout;
 mod circle;
+mod cracks;
+mod depth;
 mod direction;
 mod direction_map;
 mod edges;
 mod effective;
+mod elastic;
 mod ends;
 mod envelope_points;
 mod excess;
+mod failure_depth;
+mod failure_depth_check;
+mod failure_depth_figure;
+mod field;
+mod field_method;
+mod field_route;
+#[cfg(test)]
+mod field_tests;
 mod kirsch;
 mod limit;
 mod limits;
 mod limits_card;
 mod limits_check;
 mod method;
+mod radial_profile;
 mod range;
 mod range_card;
 mod range_check;
@@ -43,9 +57,15 @@ mod setup;
 mod shear;
 mod slip;
 mod stress_at;
+mod tensile_cracks;
+mod tensile_cracks_card;
+mod tensile_cracks_check;
 mod tension;
 #[cfg(test)]
 mod tests;
+mod trace;
+mod unrolled;
+mod unrolled_figure;
 #[allow(clippy::module_inception)]
 mod wall;
 mod width;
@@ -53,9 +73,14 @@ mod width;
 pub use around::{AroundOutcome, WallAround};
 pub use breakout::{ArcsOutcome, Breakout, FailingArcs};
 pub use direction_map::{DirectionMap, MapInputs};
+pub use failure_depth::{DeepestFailure, DepthOutcome, FailureDepth};
+pub use field::{AtDistance, AtDistanceOutcome, FieldStress};
 pub use limit::{Limit, LimitKind, Mode, WallDirection};
 pub use limits::{Limits, LimitsInputs, LimitsOutcome};
+pub use radial_profile::{AlongRadius, ProfileOutcome, RadialProfile};
 pub use range::{Governs, RangeChoices, RangeEnd, RangeInputs, RangeOutcome, RecommendedRange};
 pub use setup::{Thermal, WallInputs, WallSetup, WeakPlane};
 pub use stress_at::{AtToolface, AtToolfaceOutcome, WallStress};
+pub use tensile_cracks::{CrackArc, CrackPlace, CracksOutcome, TensileCracks};
+pub use unrolled::{ImageInputs, ImageOutcome, PlaneTrace, WallImage};
 pub use wall::{AtPressure, Wall};

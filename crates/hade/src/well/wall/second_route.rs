@@ -289,3 +289,23 @@ fn peak_between(f: &impl Fn(f64) -> f64, mut low: f64, mut high: f64) -> (f64, f
     let middle = 0.5 * (low + high);
     (f(middle), middle)
 }
+
+// Tensile cracks.
+impl ByVectors {
+    /// The least effective principal stress in the wall's tangent plane.
+    pub fn least_in_wall(&self, theta: f64, pressure: f64) -> f64 {
+        self.in_the_wall(theta, pressure)[1]
+    }
+
+    /// What acts on a crack whose trace is the hole's axis turned right-handed by `tilt` about the
+    /// outward direction, which seen from inside is clockwise: effective normal stress, and the shear
+    /// stress along the trace.
+    pub fn on_crack(&self, theta: f64, tilt: f64, pressure: f64) -> (f64, f64) {
+        let (outward, along) = (self.direction(theta), self.along);
+        let across = crate::frames::vector::cross(outward, along);
+        let trace = add(scale(along, tilt.cos()), scale(across, tilt.sin()));
+        let normal = crate::frames::vector::cross(trace, outward);
+        let traction = self.tensor(theta, pressure).times(normal);
+        (dot(traction, normal) - self.pore_behind(pressure), dot(traction, trace))
+    }
+}

@@ -13,12 +13,12 @@ fn hole(i: f64, a: f64) -> Attitude {
     Attitude { inclination: i.deg(), azimuth: Azimuth::from_true_north(a.deg()) }
 }
 
-fn rock(strength: Strength) -> Rock {
+pub(super) fn rock(strength: Strength) -> Rock {
     Rock { poisson: 0.25, tensile_strength: 2.mpa(), strength }
 }
 
 /// State B of the house's cases: Sv 60, SHmax 55 at 030°, Shmin 40, Pp 20, ν 0.25, c 10, φ 30°.
-fn state_b(i: f64, a: f64, strength: Strength) -> Wall {
+pub(super) fn state_b(i: f64, a: f64, strength: Strength) -> Wall {
     let s = Stress::from_horizontals(Horizontals {
         sv: 60.mpa(),
         sh_max: 55.mpa(),
@@ -30,18 +30,18 @@ fn state_b(i: f64, a: f64, strength: Strength) -> Wall {
     Wall::new(WallInputs { stress, pore: 20.mpa(), rock: rock(strength) }).unwrap()
 }
 
-fn components(six: [f64; 6], i: f64, a: f64) -> Stress<Borehole> {
+pub(super) fn components(six: [f64; 6], i: f64, a: f64) -> Stress<Borehole> {
     let [nn, ee, dd, ne, ed, nd] = six.map(|c| c.mpa());
     hole(i, a).chain().unwrap().carry(&Stress::from_components(Components { nn, ee, dd, ne, nd, ed }).unwrap())
 }
 
-fn coulomb() -> Strength {
+pub(super) fn coulomb() -> Strength {
     Strength::mohr_coulomb(10.mpa(), 30.deg())
 }
 
 /// Walls of every kind: open, at a tool face of its own and flat, crossed, failing within the wall at
 /// any pressure, and parted at any.
-fn walls() -> Vec<(&'static str, Wall)> {
+pub(super) fn walls() -> Vec<(&'static str, Wall)> {
     let wall =
         |stress, pore: f64, strength| Wall::new(WallInputs { stress, pore: pore.mpa(), rock: rock(strength) }).unwrap();
     vec![
@@ -90,7 +90,7 @@ fn choices(width: f64) -> RangeChoices {
 
 /// What the table of replays does with every sample: checks pass, the card replays from its text,
 /// and each perturbed number turns a check red.
-fn hold<E: Explain>(name: &str, result: &E) {
+pub(super) fn hold<E: Explain>(name: &str, result: &E) {
     let card: Card = result.card();
     let failed: Vec<_> = card.checks.iter().filter(|c| !c.passed).collect();
     assert!(card.passed(), "{name}, {}: {failed:#?}", card.title());
