@@ -85,8 +85,11 @@ const ROUNDING: f64 = 1e-14;
 /// leaves a factor of twenty-five for sharper hills.
 const SLACK: f64 = 0.05;
 /// The same for a sample on a slope, beside which a piece may have a hill of its own: the hill is at
-/// most half a step away.
-const BESIDE: f64 = 0.01;
+/// most half a step away, where a wave has risen by STEP²/8 of its amplitude.
+const BESIDE: f64 = 0.005;
+/// The same for a function of one piece: between two samples, rising from one to the other, it has a
+/// hill only by its third derivative.
+const BESIDE_SMOOTH: f64 = 0.001;
 
 /// The greatest value of a function; `scale` is the size of the numbers in it.
 #[inline]
@@ -105,7 +108,9 @@ pub(crate) fn greatest(f: &impl OnCircle, scale: f64) -> Peak {
         // Any place is as good.
         return Peak { phi: 0.0, value: f.value(1.0, 0.0), flat: true };
     }
-    let (enough, beside) = (top - SLACK * (top - bottom), top - BESIDE * (top - bottom));
+    let range = top - bottom;
+    let beside = top - range * if f.pieces() > 1 { BESIDE } else { BESIDE_SMOOTH };
+    let enough = top - SLACK * range;
     let mut best = Peak { phi: 0.0, value: f64::NEG_INFINITY, flat: false };
     // Two pieces may have a hill each between two samples, so a climb starts on every piece at every
     // high sample from which Newton sees a top of it within one step.
