@@ -22,6 +22,7 @@ pub use crate::stress::{
 };
 pub use crate::units::{Angle, Density, Expansion, FluxDensity, Gradient, Length, Pressure, Uncertain, Units, Warming};
 pub use crate::well::{
-    Breakout, FailingArcs, Limit, Limits, MudColumn, MudPressure, Position, RangeChoices, RecommendedRange, Station,
-    Survey, Wall, WallAround, WallInputs, WallStress,
+    Alternative, Breakout, FailingArcs, Limit, Limits, MudColumn, MudHeld, MudPlan, MudPressure, Position,
+    RangeChoices, RangesBeside, RecommendedRange, Sensitivity, Station, Survey, Vary, Wall, WallAround, WallInputs,
+    WallStress,
 };

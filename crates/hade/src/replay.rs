@@ -13,7 +13,10 @@ use crate::stress::{
     CarriedStress, CarriedTraction, FaultingRegime, HorizontalStresses, Invariants, MohrCircles, Principals, Stress,
     Traction,
 };
-use crate::well::{FailingArcs, Limits, MudPressure, Position, RecommendedRange, SurveyTable, WallAround, WallStress};
+use crate::well::{
+    FailingArcs, Limits, MudHeld, MudPressure, Position, RangesBeside, RecommendedRange, Sensitivity, SurveyTable,
+    WallAround, WallStress,
+};
 
 /// A kind of card: how it is computed and checked.
 #[derive(Clone, Copy)]
@@ -99,6 +102,9 @@ pub const KINDS: &[Kind] = &[
     kind::<FailingArcs>(),
     kind::<Limits>(),
     kind::<RecommendedRange>(),
+    kind::<MudHeld>(),
+    kind::<RangesBeside>(),
+    kind::<Sensitivity>(),
 ];
 
 fn kind_of(card: &Card) -> Result<&'static Kind> {

@@ -19,6 +19,8 @@
 
 mod arcs;
 mod around;
+mod beside;
+mod beside_card;
 mod breakout;
 mod circle;
 mod direction;
@@ -32,11 +34,22 @@ mod limits;
 mod limits_card;
 mod limits_check;
 mod method;
+mod mud_held;
+mod mud_held_card;
+mod raised;
 mod range;
 mod range_card;
 mod range_check;
+mod range_ends;
+#[cfg(test)]
+mod range_tests;
 mod search;
 mod second_route;
+mod sensitivity;
+mod sensitivity_card;
+mod sensitivity_check;
+#[cfg(test)]
+mod sensitivity_tests;
 mod setup;
 mod shear;
 mod slip;
@@ -44,15 +57,23 @@ mod stress_at;
 mod tension;
 #[cfg(test)]
 mod tests;
+mod varied_wall;
+mod vary;
 #[allow(clippy::module_inception)]
 mod wall;
 mod width;
 
 pub use around::{AroundOutcome, WallAround};
+pub use beside::{Alternative, BesideInputs, BesideOutcome, RangeBeside, RangesBeside};
 pub use breakout::{ArcsOutcome, Breakout, FailingArcs};
 pub use limit::{Limit, LimitKind, Mode, WallDirection};
 pub use limits::{Limits, LimitsInputs, LimitsOutcome};
-pub use range::{Governs, RangeChoices, RangeEnd, RangeInputs, RangeOutcome, RecommendedRange};
+pub use mud_held::{HeldInputs, HeldOutcome, HeldPressure, MudHeld, MudPlan, MudState};
+pub use raised::RaisedTop;
+pub use range::{RangeChoices, RangeInputs, RangeOutcome, RecommendedRange};
+pub use range_ends::{GovernedPressure, Governs, RangeEnd};
+pub use sensitivity::{ChangedEnds, ChangedRange, Sensitivity, SensitivityInputs, SensitivityOutcome};
 pub use setup::{Thermal, WallInputs, WallSetup, WeakPlane};
 pub use stress_at::{AtToolface, AtToolfaceOutcome, WallStress};
+pub use vary::Vary;
 pub use wall::{AtPressure, Wall};
