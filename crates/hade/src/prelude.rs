@@ -25,7 +25,8 @@ pub use crate::stress::{
 };
 pub use crate::units::{Angle, Density, Expansion, FluxDensity, Gradient, Length, Pressure, Uncertain, Units, Warming};
 pub use crate::well::{
-    Breakout, CrackArc, CrackPlace, DeepestFailure, FailingArcs, FailureDepth, FieldStress, Limit, Limits, MudColumn,
-    MudPressure, PlaneTrace, Position, RadialProfile, RangeChoices, RecommendedRange, Station, Survey, TensileCracks,
-    Wall, WallAround, WallImage, WallInputs, WallStress,
+    Alternative, Breakout, CrackArc, CrackPlace, DeepestFailure, DirectionMap, FailingArcs, FailureDepth, FieldStress,
+    Limit, Limits, MapInputs, MudColumn, MudHeld, MudPlan, MudPressure, PlaneTrace, Position, RadialProfile,
+    RangeChoices, RangesBeside, RecommendedRange, Sensitivity, Station, Survey, TensileCracks, Thermal, Vary, Wall,
+    WallAround, WallImage, WallInputs, WallStress, WeakPlane,
 };

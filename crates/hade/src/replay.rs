@@ -15,8 +15,8 @@ use crate::stress::{
     Traction,
 };
 use crate::well::{
-    FailingArcs, FailureDepth, FieldStress, Limits, MudPressure, Position, RadialProfile, RecommendedRange,
-    SurveyTable, TensileCracks, WallAround, WallImage, WallStress,
+    FailingArcs, FailureDepth, FieldStress, Limits, MudHeld, MudPressure, Position, RadialProfile, RangesBeside,
+    RecommendedRange, Sensitivity, SurveyTable, TensileCracks, WallAround, WallImage, WallStress,
 };
 
 /// A kind of card: how it is computed and checked.
@@ -112,6 +112,9 @@ pub const KINDS: &[Kind] = &[
     kind::<FailureDepth>(),
     kind::<TensileCracks>(),
     kind::<WallImage>(),
+    kind::<MudHeld>(),
+    kind::<RangesBeside>(),
+    kind::<Sensitivity>(),
 ];
 
 fn kind_of(card: &Card) -> Result<&'static Kind> {

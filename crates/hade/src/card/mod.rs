@@ -7,6 +7,7 @@ mod explain;
 mod figure;
 mod item;
 mod projection;
+mod row_chart;
 mod step;
 
 pub use check::Check;
@@ -14,4 +15,5 @@ pub use explain::{Card, Data, Explain, Explanation, Json};
 pub use figure::{Axis, Figure, Layer, Mark, Role};
 pub use item::{Item, Standing};
 pub use projection::Projection;
+pub(crate) use row_chart::{ChartRow, RowChart};
 pub use step::{Column, Formula, Method, Reference, Step, Table};

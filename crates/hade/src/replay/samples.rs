@@ -34,6 +34,7 @@ pub fn samples() -> Vec<Card> {
     let sh = chain.carry(&s);
     let mut cards = well_samples(sh);
     cards.extend(field_samples(sh));
+    cards.extend(range_samples(sh));
     cards.extend(frame_samples(s, plane));
     cards.extend(depth_samples());
     cards.extend(norths_samples());
@@ -315,6 +316,36 @@ fn well_samples(sh: Stress<Borehole>) -> Vec<Card> {
         weak.limits().card(),
         wall.recommended(choices).unwrap().card(),
         weak.recommended(choices).unwrap().card(),
+    ]
+}
+
+/// Recommended ranges raised, held against a mud, beside others, and with inputs varied.
+fn range_samples(sh: Stress<Borehole>) -> Vec<Card> {
+    let strength = Strength::mohr_coulomb(12.mpa(), 32.deg());
+    let rock = Rock { poisson: 0.25, tensile_strength: 2.mpa(), strength };
+    let wall = Wall::new(WallInputs { stress: sh, pore: 31.2.mpa(), rock }).unwrap();
+    let choices = RangeChoices {
+        allowed_width: 60.deg(),
+        margin_bottom: 1.mpa(),
+        margin_top: 1.5.mpa(),
+        tvd_below_rotary: 2950.m(),
+    };
+    let range = wall.recommended(choices).unwrap();
+    let raised = range.raised_to(47.6.mpa(), "extended leak-off at 2931 m held 49 MPa for ten minutes").unwrap();
+    let plan = MudPlan {
+        static_density: 1.35.sg(),
+        swab: Some(0.7.mpa()),
+        circulating_density: Some(1.43.sg()),
+        surge: Some(0.9.mpa()),
+    };
+    let others = [Alternative::criterion(Strength::mogi_coulomb(12.mpa(), 32.deg())), Alternative::permeable(0.8)];
+    let vary = [Vary::sh_max(4.mpa()), Vary::cohesion(1.2.mpa()), Vary::inclination(2.deg())];
+    vec![
+        raised.card(),
+        range.hold(plan).unwrap().card(),
+        raised.hold(MudPlan { swab: None, surge: None, ..plan }).unwrap().card(),
+        range.beside(&others).unwrap().card(),
+        range.sensitivity(&vary).unwrap().card(),
     ]
 }
 

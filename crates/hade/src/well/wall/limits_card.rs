@@ -78,9 +78,10 @@ impl Explain for Limits {
     }
 }
 
-/// "32.59 MPa" or "no safe pressure".
+/// "32.59 MPa", "no safe pressure", or "no limit" where every pressure on that side is safe.
 pub(super) fn shown(limit: &Limit) -> String {
-    limit.pressure().map_or_else(|| "no safe pressure".to_owned(), |p| p.to_string())
+    let without = if limit.is_unbounded() { "no limit" } else { "no safe pressure" };
+    limit.pressure().map_or_else(|| without.to_owned(), |p| p.to_string())
 }
 
 impl Limits {
@@ -286,7 +287,7 @@ impl Limits {
     }
 }
 
-fn capitalised(words: &str) -> String {
+pub(super) fn capitalised(words: &str) -> String {
     let mut letters = words.chars();
     letters.next().map_or_else(String::new, |first| first.to_uppercase().chain(letters).collect())
 }

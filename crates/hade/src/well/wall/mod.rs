@@ -21,6 +21,8 @@
 
 mod arcs;
 mod around;
+mod beside;
+mod beside_card;
 mod breakout;
 mod circle;
 mod cracks;
@@ -47,12 +49,23 @@ mod limits;
 mod limits_card;
 mod limits_check;
 mod method;
+mod mud_held;
+mod mud_held_card;
 mod radial_profile;
+mod raised;
 mod range;
 mod range_card;
 mod range_check;
+mod range_ends;
+#[cfg(test)]
+mod range_tests;
 mod search;
 mod second_route;
+mod sensitivity;
+mod sensitivity_card;
+mod sensitivity_check;
+#[cfg(test)]
+mod sensitivity_tests;
 mod setup;
 mod shear;
 mod slip;
@@ -66,21 +79,29 @@ mod tests;
 mod trace;
 mod unrolled;
 mod unrolled_figure;
+mod varied_wall;
+mod vary;
 #[allow(clippy::module_inception)]
 mod wall;
 mod width;
 
 pub use around::{AroundOutcome, WallAround};
+pub use beside::{Alternative, BesideInputs, BesideOutcome, RangeBeside, RangesBeside};
 pub use breakout::{ArcsOutcome, Breakout, FailingArcs};
 pub use direction_map::{DirectionMap, MapInputs};
 pub use failure_depth::{DeepestFailure, DepthOutcome, FailureDepth};
 pub use field::{AtDistance, AtDistanceOutcome, FieldStress};
 pub use limit::{Limit, LimitKind, Mode, WallDirection};
 pub use limits::{Limits, LimitsInputs, LimitsOutcome};
+pub use mud_held::{HeldInputs, HeldOutcome, HeldPressure, MudHeld, MudPlan, MudState};
 pub use radial_profile::{AlongRadius, ProfileOutcome, RadialProfile};
-pub use range::{Governs, RangeChoices, RangeEnd, RangeInputs, RangeOutcome, RecommendedRange};
+pub use raised::RaisedTop;
+pub use range::{RangeChoices, RangeInputs, RangeOutcome, RecommendedRange};
+pub use range_ends::{GovernedPressure, Governs, RangeEnd};
+pub use sensitivity::{ChangedEnds, ChangedRange, Sensitivity, SensitivityInputs, SensitivityOutcome};
 pub use setup::{Thermal, WallInputs, WallSetup, WeakPlane};
 pub use stress_at::{AtToolface, AtToolfaceOutcome, WallStress};
 pub use tensile_cracks::{CrackArc, CrackPlace, CracksOutcome, TensileCracks};
 pub use unrolled::{ImageInputs, ImageOutcome, PlaneTrace, WallImage};
+pub use vary::Vary;
 pub use wall::{AtPressure, Wall};

@@ -4,13 +4,12 @@
 use serde::{Deserialize, Serialize};
 
 use super::limits::Limits;
+use super::raised::RaisedTop;
+use super::range_ends::{Ends, GovernedPressure, RangeEnd};
 use super::setup::WallSetup;
 use super::wall::Wall;
 use crate::error::{Error, Result};
-use crate::units::{
-    Angle, Density, Gradient, Length, Pressure, Quantity, require_between, require_not_negative, with_typed_unit,
-    with_unit,
-};
+use crate::units::{Angle, Length, Pressure, Quantity, require_between, require_not_negative, with_typed_unit};
 
 /// The widths that are always shown beside the chosen one, in degrees.
 pub(super) const WIDTHS: [f64; 4] = [0.0, 30.0, 60.0, 90.0];
@@ -29,68 +28,21 @@ pub struct RangeChoices {
     pub tvd_below_rotary: Length,
 }
 
-/// What sets an end of the range.
-#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize)]
-#[serde(rename_all = "snake_case")]
-#[non_exhaustive]
-pub enum Governs {
-    /// The lower shear limit at the allowed width.
-    LowerShear,
-    /// The pore pressure with its margin.
-    PorePressure,
-    /// The least far-field stress S3.
-    LeastStress,
-    /// Fracture initiation at the wall.
-    Initiation,
-    /// The upper shear limit.
-    UpperShear,
-}
-
-impl Governs {
-    /// "pore pressure governs: …".
-    pub fn words(self) -> &'static str {
-        match self {
-            Governs::LowerShear => "shear governs: below this, arcs wider than allowed fail",
-            Governs::PorePressure => "pore pressure governs: below this, the margin over the formation's fluid is lost",
-            Governs::LeastStress => "least stress governs: above S_3 a fracture runs on and mud is lost",
-            Governs::Initiation => "initiation governs: above this the wall parts",
-            Governs::UpperShear => "upper shear limit governs: above this the hole is pushed out",
+impl RangeChoices {
+    /// Refuses what is no choice.
+    fn checked(&self) -> Result<()> {
+        require_between("allowed width of a failing arc", self.allowed_width, Angle::deg(0.0), Angle::deg(180.0))?;
+        require_not_negative("margin at the bottom", self.margin_bottom)?;
+        require_not_negative("margin at the top", self.margin_top)?;
+        let tvd = self.tvd_below_rotary;
+        if !(tvd.si().is_finite() && tvd.si() > 0.0) {
+            return Err(Error::out_of_range(
+                "true vertical depth below the rotary table",
+                with_typed_unit(tvd),
+                "more than 0 m",
+            ));
         }
-    }
-}
-
-/// One end of the range.
-#[derive(Clone, Copy, Debug, PartialEq, Serialize, Deserialize)]
-#[non_exhaustive]
-pub struct RangeEnd {
-    /// The pressure.
-    pub pressure: Pressure,
-    /// The mean gradient from the rotary table.
-    pub gradient: Gradient,
-    /// The mud weight whose static column gives the pressure.
-    pub mud_weight: Density,
-    /// What sets it.
-    pub governed_by: Governs,
-}
-
-impl RangeEnd {
-    /// A number of this end as it is printed: rounded into the range, never out of it.
-    pub(super) fn inward<Q: Quantity>(self, value: Q, decimals: usize) -> String {
-        let places = 10_f64.powi(decimals as i32);
-        let number = value.shown() * places;
-        // What is a round number up to its last bits stays that number.
-        let near = 1e-6;
-        let rounded = match self.governed_by {
-            Governs::LowerShear | Governs::PorePressure => (number - near).ceil(),
-            Governs::LeastStress | Governs::Initiation | Governs::UpperShear => (number + near).floor(),
-        };
-        with_unit(rounded / places, decimals, Q::SHOWN_IN)
-    }
-
-    /// "40.18 MPa (1.390 sg, 13.62 MPa/km)", each rounded into the range.
-    pub fn words(&self) -> String {
-        let (p, w, g) = (self.inward(self.pressure, 2), self.inward(self.mud_weight, 3), self.inward(self.gradient, 2));
-        format!("{p} ({w}, {g})")
+        Ok(())
     }
 }
 
@@ -104,6 +56,9 @@ pub struct RecommendedRange {
     /// The top; `None` when no pressure is safe against parting, or some place of the wall fails in
     /// shear at any.
     pub top: Option<RangeEnd>,
+    /// The top as the rule sets it, also where the engineer raised it.
+    pub(super) computed_top: Option<RangeEnd>,
+    pub(super) raised: Option<RaisedTop>,
     pub(super) at_widths: [Option<Pressure>; 4],
     pub(super) limits: Limits,
     pub(super) wall: Wall,
@@ -115,6 +70,8 @@ pub struct RecommendedRange {
 pub struct RangeInputs {
     pub(super) wall: WallSetup,
     pub(super) choices: RangeChoices,
+    #[serde(default, skip_serializing_if = "Option::is_none")]
+    pub(super) raised: Option<RaisedTop>,
 }
 
 /// What came out.
@@ -122,6 +79,9 @@ pub struct RangeInputs {
 pub struct RangeOutcome {
     pub(super) bottom: Option<RangeEnd>,
     pub(super) top: Option<RangeEnd>,
+    /// The top as computed, where it was raised.
+    #[serde(default, skip_serializing_if = "Option::is_none")]
+    pub(super) computed_top: Option<RangeEnd>,
     /// Lower shear limits at 0°, 30°, 60°, 90°.
     pub(super) at_widths: [Option<Pressure>; 4],
     /// The least bad pressure in shear, where no pressure keeps the arcs within the allowed width.
@@ -137,24 +97,9 @@ impl Wall {
     /// # Errors
     /// When the width is outside 0–180°, a margin is negative, or the depth is not above zero.
     pub fn recommended(&self, choices: RangeChoices) -> Result<RecommendedRange> {
-        require_between("allowed width of a failing arc", choices.allowed_width, Angle::deg(0.0), Angle::deg(180.0))?;
-        require_not_negative("margin at the bottom", choices.margin_bottom)?;
-        require_not_negative("margin at the top", choices.margin_top)?;
-        let tvd = choices.tvd_below_rotary;
-        if !(tvd.si().is_finite() && tvd.si() > 0.0) {
-            return Err(Error::out_of_range(
-                "true vertical depth below the rotary table",
-                with_typed_unit(tvd),
-                "more than 0 m",
-            ));
-        }
-        let limits = self.limits_at_width(choices.allowed_width)?;
-        let end = |pressure: Pressure, governed_by| RangeEnd {
-            pressure,
-            gradient: pressure.gradient_over(tvd),
-            mud_weight: pressure.mud_weight_at(tvd),
-            governed_by,
-        };
+        choices.checked()?;
+        let Ends { limits, bottom, top } = self.ends(&choices)?;
+        let end = |end: Option<GovernedPressure>| end.map(|e| RangeEnd::new(e.pressure, e.governed_by, &choices));
         let mut at_widths = [None; 4];
         for (cell, degrees) in at_widths.iter_mut().zip(WIDTHS) {
             let width = Angle::deg(degrees);
@@ -163,33 +108,16 @@ impl Wall {
             *cell = at.lower_shear.pressure();
         }
         Ok(RecommendedRange {
-            bottom: bottom(&limits, self.setup.inputs.pore + choices.margin_bottom).map(|(p, g)| end(p, g)),
-            top: top(&limits).map(|(p, g)| end(p - choices.margin_top, g)),
+            bottom: end(bottom),
+            top: end(top),
+            computed_top: end(top),
+            raised: None,
             at_widths,
             limits,
             wall: *self,
             choices,
         })
     }
-}
-
-fn bottom(limits: &Limits, balance: Pressure) -> Option<(Pressure, Governs)> {
-    let shear = limits.lower_shear.pressure()?;
-    Some(if shear > balance { (shear, Governs::LowerShear) } else { (balance, Governs::PorePressure) })
-}
-
-fn top(limits: &Limits) -> Option<(Pressure, Governs)> {
-    let mut least = (limits.least_stress.pressure()?, Governs::LeastStress);
-    for (limit, governs) in [(&limits.initiation, Governs::Initiation), (&limits.upper_shear, Governs::UpperShear)] {
-        // Where the shear limits have crossed, nothing is pushed out below the upper one all the same,
-        // and what fails below it fails in arcs that the bottom keeps within the allowed width.
-        let crossed = limit.own_side().filter(|_| governs == Governs::UpperShear);
-        let pressure = limit.pressure().or(crossed)?;
-        if pressure < least.0 {
-            least = (pressure, governs);
-        }
-    }
-    Some(least)
 }
 
 impl RecommendedRange {
@@ -223,6 +151,11 @@ impl RecommendedRange {
     /// The least bad pressure in shear, when no pressure keeps failing arcs within the allowed width.
     pub fn least_bad(&self) -> Option<Pressure> {
         if self.bottom.is_none() { self.limits.lower_shear.least_bad() } else { None }
+    }
+
+    /// The same range with the top as the rule sets it, not as the engineer raised it.
+    pub(super) fn as_computed(&self) -> Self {
+        RecommendedRange { top: self.computed_top, raised: None, ..*self }
     }
 
     pub(super) fn breadth(&self) -> Option<Pressure> {

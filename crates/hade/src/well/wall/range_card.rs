@@ -2,7 +2,8 @@
 
 use super::limits_card::shown;
 use super::method;
-use super::range::{RangeEnd, RangeInputs, RangeOutcome, RecommendedRange};
+use super::range::{RangeChoices, RangeInputs, RangeOutcome, RecommendedRange};
+use super::range_ends::{RangeEnd, pushed_out_above};
 use super::wall::Wall;
 use crate::card::{
     Axis, Card, Check, Column, Explain, Explanation, Figure, Formula, Item, Layer, Mark, Reference, Role, Step, Table,
@@ -18,15 +19,17 @@ impl Explain for RecommendedRange {
     type Outcome = RangeOutcome;
 
     fn compute(inputs: RangeInputs) -> Result<Self> {
-        Wall::of(inputs.wall)?.recommended(inputs.choices)
+        let range = Wall::of(inputs.wall)?.recommended(inputs.choices)?;
+        inputs.raised.map_or(Ok(range), |raised| range.raised_to(raised.top(), raised.reason()))
     }
     fn inputs(&self) -> RangeInputs {
-        RangeInputs { wall: self.wall.setup, choices: self.choices }
+        RangeInputs { wall: self.wall.setup, choices: self.choices, raised: self.raised }
     }
     fn outcome(&self) -> RangeOutcome {
         RangeOutcome {
             bottom: self.bottom,
             top: self.top,
+            computed_top: self.computed_top.filter(|_| self.raised.is_some()),
             at_widths: self.at_widths,
             least_bad: self.least_bad(),
             breadth: self.breadth(),
@@ -38,14 +41,12 @@ impl Explain for RecommendedRange {
     }
 
     fn explain(&self) -> Explanation {
-        let choices = self.choices;
         let mut inputs = self.wall.items();
-        inputs.extend([
-            Item::typed("TVD", "true vertical depth below the rotary table", choices.tvd_below_rotary),
-            Item::typed("w", "allowed width of a failing arc, per lobe", choices.allowed_width).chosen(),
-            Item::typed("m_b", "margin over the pore pressure at the bottom", choices.margin_bottom).chosen(),
-            Item::typed("m_t", "margin under the lowest upper limit at the top", choices.margin_top).chosen(),
-        ]);
+        inputs.extend(self.choices.items());
+        if let Some(raised) = self.raised {
+            inputs.push(Item::typed("p_r", "top, raised by the engineer", raised.top).chosen());
+            inputs.push(Item::choice("", "reason for the raised top", raised.reason()));
+        }
         let mut results = Vec::new();
         for (end, at, name) in [(self.bottom, "b", "bottom"), (self.top, "t", "top")] {
             let Some(end) = end else { continue };
@@ -68,7 +69,7 @@ impl Explain for RecommendedRange {
             "Zoback, M.D. (2007) Reservoir Geomechanics, Cambridge University Press, ch. 10 (mud weights from limits of the wall)",
         ));
         Explanation {
-            title: format!("Recommended range of pressure for {}", self.wall.place()),
+            title: format!("Recommended range of pressure for {}{}", self.wall.place(), self.raised_words()),
             headline: self.headline(),
             inputs,
             results,
@@ -86,17 +87,42 @@ impl Explain for RecommendedRange {
 }
 
 /// The number of a text with its unit.
-fn number(text: String) -> String {
+pub(super) fn number(text: String) -> String {
     text.split(' ').next().unwrap_or_default().to_owned()
 }
 
 /// A number of an end, rounded into the range.
-fn end_item<Q: Quantity>(end: RangeEnd, symbol: &str, name: String, value: Q, decimals: usize) -> Item {
+pub(super) fn end_item<Q: Quantity>(end: RangeEnd, symbol: &str, name: String, value: Q, decimals: usize) -> Item {
     Item::new(symbol, name, Q::KIND, vec![value.si()], end.inward(value, decimals))
 }
 
+impl RangeChoices {
+    /// The choices and the depth as inputs of a card.
+    pub(super) fn items(&self) -> [Item; 4] {
+        [
+            Item::typed("TVD", "true vertical depth below the rotary table", self.tvd_below_rotary),
+            Item::typed("w", "allowed width of a failing arc, per lobe", self.allowed_width).chosen(),
+            Item::typed("m_b", "margin over the pore pressure at the bottom", self.margin_bottom).chosen(),
+            Item::typed("m_t", "margin under the lowest upper limit at the top", self.margin_top).chosen(),
+        ]
+    }
+}
+
 impl RecommendedRange {
-    fn headline(&self) -> String {
+    /// The pressures of both ends, as far as they are there, as results or inputs.
+    pub(super) fn end_items(&self) -> Vec<Item> {
+        let item = |end: RangeEnd, symbol: &str, name: &str| end_item(end, symbol, name.to_owned(), end.pressure, 2);
+        let bottom = self.bottom.map(|end| item(end, "p_b", "bottom of the recommended range"));
+        let top = self.top.map(|end| item(end, "p_t", "top of the recommended range"));
+        bottom.into_iter().chain(top).collect()
+    }
+
+    /// ", top raised", for titles.
+    pub(super) fn raised_words(&self) -> &'static str {
+        if self.raised.is_some() { ", top raised" } else { "" }
+    }
+
+    pub(super) fn headline(&self) -> String {
         match (self.bottom, self.top) {
             (Some(bottom), Some(top)) if self.is_empty() => {
                 format!("no range: the bottom {} is not below the top {}", bottom.words(), top.words())
@@ -115,6 +141,7 @@ impl RecommendedRange {
         if let Some(top) = self.top {
             notes.push(format!("At the top {}.", top.governed_by.words()));
         }
+        notes.extend(self.raised_notes());
         if let Some(least) = self.least_bad() {
             notes.push(format!("The least bad pressure in shear is {least}; arcs wider than allowed fail at it."));
         }
@@ -124,7 +151,7 @@ impl RecommendedRange {
         if self.limits.initiation.pressure().is_none() {
             notes.push("At no pressure is the wall safe from both parting and spalling.".to_owned());
         }
-        if self.limits.upper_shear.pressure().is_none() {
+        if self.limits.upper_shear.pressure().is_none() && !self.limits.upper_shear.is_unbounded() {
             notes.push("At no pressure is the whole wall within its shear strength.".to_owned());
             if !self.is_empty() {
                 notes.push(
@@ -157,9 +184,17 @@ impl RecommendedRange {
             "p_t: S_3 = {}, p_i = {}, p_us = {}; the lowest less m_t = {}",
             shown(&self.limits.least_stress),
             shown(&self.limits.initiation),
-            self.limits.upper_shear.own_side().map_or_else(|| shown(&self.limits.upper_shear), |p| p.to_string()),
+            pushed_out_above(&self.limits.upper_shear)
+                .map_or_else(|| shown(&self.limits.upper_shear), |p| p.to_string()),
             with_typed_unit(c.margin_top)
         )));
+        if let (Some(raised), Some(computed)) = (self.raised, self.computed_top) {
+            steps.push(Step::worked(format!(
+                "the computed top {} is raised by the engineer to p_t = {} MPa",
+                computed.pressure,
+                mpa(raised.top)
+            )));
+        }
         for (end, name) in [(self.bottom, "bottom"), (self.top, "top")] {
             let Some(end) = end else { continue };
             steps.push(Step::worked(format!(
@@ -214,18 +249,20 @@ impl RecommendedRange {
     fn widths_table(&self) -> Table {
         let tvd = self.choices.tvd_below_rotary;
         let mut rows: Vec<(Angle, Option<Pressure>)> = self.lower_shear_at_widths().to_vec();
+        let unbounded =
+            |width: Angle| self.wall.limits_at_width(width).is_ok_and(|limits| limits.lower_shear.is_unbounded());
         let chosen = self.choices.allowed_width;
         if !rows.iter().any(|(width, _)| *width == chosen) {
             rows.push((chosen, self.limits.lower_shear.pressure()));
             rows.sort_by(|a, b| a.0.si().total_cmp(&b.0.si()));
         }
-        let cells = |p: Option<Pressure>| match p {
+        let cells = |width: Angle, p: Option<Pressure>| match p {
             Some(p) => [
                 fixed(p.in_mpa(), 2),
                 fixed(p.gradient_over(tvd).in_mpa_per_km(), 2),
                 fixed(p.mud_weight_at(tvd).in_sg(), 3),
             ],
-            None => ["none".to_owned(), "–".to_owned(), "–".to_owned()],
+            None => [if unbounded(width) { "any holds" } else { "none" }.to_owned(), "–".to_owned(), "–".to_owned()],
         };
         Table {
             caption: "Lower shear limit at widths of failing arc, per lobe".to_owned(),
@@ -239,7 +276,7 @@ impl RecommendedRange {
             rows: rows
                 .into_iter()
                 .map(|(width, p)| {
-                    let [a, b, c] = cells(p);
+                    let [a, b, c] = cells(width, p);
                     let mark = if width == chosen { "allowed" } else { "" };
                     vec![as_typed(width.in_deg()), a, b, c, mark.to_owned()]
                 })
@@ -264,7 +301,7 @@ impl RecommendedRange {
             (self.limits.initiation, "initiation", Role::Third),
             (self.limits.upper_shear, "upper shear", Role::Fourth),
         ] {
-            if let Some(p) = limit.pressure().or(limit.own_side()) {
+            if let Some(p) = pushed_out_above(&limit) {
                 levels.push((label, role, p.in_mpa()));
             }
         }

@@ -8,7 +8,7 @@
 use std::f64::consts::PI;
 
 use super::setup::WallSetup;
-use crate::frames::vector::{M3, V3, add, dot, norm, scale};
+use crate::frames::vector::{M3, V3, add, cross, dot, norm, scale};
 use crate::rock::Strength;
 use crate::stress::tensor::Tensor;
 use crate::units::Quantity;
@@ -277,6 +277,31 @@ impl ByVectors {
     pub fn far(&self) -> Tensor {
         self.far
     }
+}
+
+/// The same wall under another stress, or turned, for the checks of changed walls.
+impl ByVectors {
+    /// Under another far field.
+    pub fn with_far(self, far: Tensor) -> Self {
+        ByVectors { far, ..self }
+    }
+
+    /// The hole turned about an axis (unit length), clockwise looking along it.
+    pub fn with_hole_turned(self, axis: V3, by: f64) -> Self {
+        let [top, right, along] = [self.top, self.right, self.along].map(|v| turned_about(v, axis, by));
+        ByVectors { top, right, along, ..self }
+    }
+
+    /// The plane of weakness turned about an axis.
+    pub fn with_plane_turned(self, axis: V3, by: f64) -> Self {
+        ByVectors { weak: self.weak.map(|(n, c, f)| (turned_about(n, axis, by), c, f)), ..self }
+    }
+}
+
+/// Rodrigues: v turned about a unit axis, clockwise looking along it.
+fn turned_about(v: V3, axis: V3, by: f64) -> V3 {
+    let (s, c) = by.sin_cos();
+    add(add(scale(v, c), scale(cross(axis, v), s)), scale(axis, dot(axis, v) * (1.0 - c)))
 }
 
 /// The greatest value between two places with one hill between them, and where (golden section).
