@@ -238,7 +238,7 @@ impl MudHeld {
                 fixed(held.mud_weight.in_sg(), 3),
                 left(held.above_bottom),
                 left(held.below_top),
-                verdict(&held),
+                if held.is_inside() { "inside" } else { "OUTSIDE" }.to_owned(),
             ]);
         }
         Table {
@@ -250,7 +250,7 @@ impl MudHeld {
                 Column::number("mud weight", "sg"),
                 Column::number("above the bottom", "MPa"),
                 Column::number("below the top", "MPa"),
-                Column::text("held against its end"),
+                Column::text("range"),
             ],
             rows,
         }
