@@ -33,18 +33,53 @@ fn carry_to_a_hole(bencher: Bencher) {
     bencher.bench_local(|| black_box(&chain).carry(black_box(&s)));
 }
 
-#[divan::bench]
-fn lower_shear_limit(bencher: Bencher) {
-    let rock =
-        Rock { poisson: 0.25, tensile_strength: 2.mpa(), strength: Strength::mohr_coulomb_ucs(30.mpa(), 32.deg()) };
-    let wall = Wall::new(WallInputs { stress: chain().carry(&stress()), pore: 22.mpa(), rock }).expect("a wall");
+fn strength(criterion: &str) -> Strength {
+    // UCS 30 MPa and 32° for all that take them.
+    let phi = 32.deg();
+    let c = 30.mpa() * ((1.0 - phi.in_rad().sin()) / (2.0 * phi.in_rad().cos()));
+    match criterion {
+        "Mohr–Coulomb" => Strength::mohr_coulomb_ucs(30.mpa(), phi),
+        "Mogi–Coulomb" => Strength::mogi_coulomb(c, phi),
+        "modified Lade" => Strength::modified_lade(c, phi),
+        "Drucker–Prager, inscribed" => Strength::drucker_prager_inscribed(c, phi),
+        "Drucker–Prager, circumscribed" => Strength::drucker_prager_circumscribed(c, phi),
+        _ => Strength::hoek_brown(HoekBrown { sigma_ci: 60.mpa(), m_i: 10.0, gsi: 80.0, disturbance: 0.0 }),
+    }
+}
+
+const CRITERIA: [&str; 6] = [
+    "Mohr–Coulomb",
+    "Mogi–Coulomb",
+    "modified Lade",
+    "Drucker–Prager, inscribed",
+    "Drucker–Prager, circumscribed",
+    "Hoek–Brown",
+];
+
+fn rock(criterion: &str) -> Rock {
+    Rock { poisson: 0.25, tensile_strength: 2.mpa(), strength: strength(criterion) }
+}
+
+fn wall(criterion: &str) -> Wall {
+    let inputs = WallInputs { stress: chain().carry(&stress()), pore: 22.mpa(), rock: rock(criterion) };
+    Wall::new(inputs).expect("a wall")
+}
+
+#[divan::bench(args = CRITERIA)]
+fn lower_shear_limit(bencher: Bencher, criterion: &str) {
+    let wall = wall(criterion);
     bencher.bench_local(|| black_box(&wall).lower_shear_limit());
 }
 
-#[divan::bench]
-fn limits_with_places(bencher: Bencher) {
-    let rock =
-        Rock { poisson: 0.25, tensile_strength: 2.mpa(), strength: Strength::mohr_coulomb_ucs(30.mpa(), 32.deg()) };
-    let wall = Wall::new(WallInputs { stress: chain().carry(&stress()), pore: 22.mpa(), rock }).expect("a wall");
+#[divan::bench(args = CRITERIA)]
+fn limits_with_places(bencher: Bencher, criterion: &str) {
+    let wall = wall(criterion);
     bencher.bench_local(|| black_box(&wall).limits());
+}
+
+/// 91 × 360 hole directions, exact in the tool face, on all cores.
+#[divan::bench(args = CRITERIA, sample_count = 10)]
+fn lower_limits_of_32760_directions(bencher: Bencher, criterion: &str) {
+    let inputs = MapInputs { stress: stress(), pore: 22.mpa(), rock: rock(criterion), step: 1.deg() };
+    bencher.bench_local(|| DirectionMap::over(black_box(inputs)));
 }

@@ -180,7 +180,12 @@ proptest! {
             Strength::drucker_prager_extension(c, phi),
             Strength::hoek_brown(mass),
         ] {
-            let found = red_of(&strength.envelope().unwrap());
+            // The modified Lade criterion does not take friction angles that no rock has.
+            let Ok(envelope) = strength.envelope() else {
+                prop_assert!(phi > 85.deg() && strength.name() == "modified Lade", "{:?}", strength);
+                continue;
+            };
+            let found = red_of(&envelope);
             prop_assert!(found.is_empty(), "{:?} {:#?}", strength, found);
             let found = red_of(&s.strength_margin(strength, pore.mpa()).unwrap());
             prop_assert!(found.is_empty(), "{:?} {:#?}", strength, found);

@@ -15,6 +15,10 @@ use crate::units::{Angle, Pressure, Quantity, fixed};
 /// of the criterion differ by less than their last figures.
 pub(super) const LEAST_FRICTION_ANGLE: f64 = 0.01;
 
+/// The largest friction angle, in degrees: near 90° two roots of the criterion's cubic are one, and it
+/// loses its figures. No rock comes near.
+pub(super) const LARGEST_FRICTION_ANGLE: f64 = 85.0;
+
 /// Its constants. `shift` in Pa; `eta` has no unit.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub(crate) struct ModifiedLade {

@@ -6,7 +6,7 @@ use super::account::Account;
 use super::drucker_prager::{self, DruckerPrager, Fit};
 use super::hoek_brown::{self, HoekBrown};
 use super::law::Law;
-use super::modified_lade::{self, LEAST_FRICTION_ANGLE, ModifiedLade};
+use super::modified_lade::{self, LARGEST_FRICTION_ANGLE, LEAST_FRICTION_ANGLE, ModifiedLade};
 use super::mogi_coulomb::{self, MogiCoulomb};
 use super::mohr_coulomb::{self, MohrCoulomb};
 use super::second_route::{SecondRoute, Tangent};
@@ -53,7 +53,7 @@ impl Strength {
     }
 
     /// The modified Lade criterion (Ewy 1999) by cohesion (zero or more) and friction angle (above
-    /// 0°, below 90°).
+    /// 0°, 85° or less).
     pub fn modified_lade(cohesion: Pressure, friction_angle: Angle) -> Self {
         Strength(Stated::ModifiedLade { cohesion, friction_angle })
     }
@@ -258,6 +258,13 @@ impl Strength {
         if let Some(phi) = self.friction_angle() {
             if !(phi.si() >= 0.0 && phi.si() < std::f64::consts::FRAC_PI_2) {
                 return Err(Error::out_of_range("friction angle", with_typed_unit(phi), "at least 0° and below 90°"));
+            }
+            if matches!(self.0, Stated::ModifiedLade { .. }) && phi > Angle::deg(LARGEST_FRICTION_ANGLE) {
+                return Err(Error::out_of_range(
+                    "friction angle of the modified Lade criterion",
+                    with_typed_unit(phi),
+                    format!("at most {LARGEST_FRICTION_ANGLE}°"),
+                ));
             }
             if matches!(self.0, Stated::ModifiedLade { .. }) && phi < Angle::deg(LEAST_FRICTION_ANGLE) {
                 return Err(Error::not_physical(
