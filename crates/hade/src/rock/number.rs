@@ -25,9 +25,11 @@ pub(crate) trait Number:
     /// A power; zero (with zero slopes) at and below zero.
     fn power(self, exponent: f64) -> Self;
 
+    /// The larger; of two equal ones itself, as [`smaller`](Number::smaller) gives the other, so that the
+    /// two together are both, with their slopes.
     #[inline(always)]
     fn larger(self, other: Self) -> Self {
-        if self.value() > other.value() { self } else { other }
+        if self.value() >= other.value() { self } else { other }
     }
     #[inline(always)]
     fn smaller(self, other: Self) -> Self {

@@ -90,6 +90,9 @@ const BESIDE: f64 = 0.005;
 /// The same for a function of one piece: between two samples, rising from one to the other, it has a
 /// hill only by its third derivative.
 const BESIDE_SMOOTH: f64 = 0.001;
+/// Where the range of the samples is below this share of the scale, one piece may hide hills of
+/// another that are far steeper than it: every hill that Newton sees is looked at then.
+const LEVEL: f64 = 0.03;
 
 /// The greatest value of a function; `scale` is the size of the numbers in it.
 #[inline]
@@ -105,8 +108,9 @@ pub(crate) fn greatest(f: &impl OnCircle, scale: f64) -> Peak {
         bottom = if value < bottom { value } else { bottom };
     }
     if top - bottom <= SAME * scale {
-        // Any place is as good.
-        return Peak { phi: 0.0, value: f.value(1.0, 0.0), flat: true };
+        // Any place is as good, where no piece has a hill between the samples.
+        let flat = Peak { phi: 0.0, value: f.value(1.0, 0.0), flat: true };
+        return if f.pieces() > 1 { hidden_hill(f, flat, scale) } else { flat };
     }
     let range = top - bottom;
     let beside = top - range * if f.pieces() > 1 { BESIDE } else { BESIDE_SMOOTH };
@@ -135,6 +139,44 @@ pub(crate) fn greatest(f: &impl OnCircle, scale: f64) -> Peak {
                 if hill.value > best.value + SAME * scale
                     || (hill.value >= best.value - SAME * scale && hill.phi < best.phi)
                 {
+                    best = hill;
+                }
+            }
+        }
+    }
+    // What only roughly told samples from each other may have left none to climb from.
+    let found = if best.value > f64::NEG_INFINITY { best } else { best_sample(f, scale) };
+    if f.pieces() > 1 && range <= LEVEL * scale { hidden_hill(f, found, scale) } else { found }
+}
+
+/// The best of the samples, for a function that hardly varies.
+#[cold]
+fn best_sample(f: &impl OnCircle, scale: f64) -> Peak {
+    let mut best = Peak { phi: 0.0, value: f64::NEG_INFINITY, flat: false };
+    let mut least = f64::INFINITY;
+    for (k, (c, s)) in CIRCLE.cos.iter().zip(&CIRCLE.sin).enumerate() {
+        let value = f.value(*c, *s);
+        least = least.min(value);
+        if value > best.value {
+            best = Peak { phi: k as f64 * STEP, value, flat: false };
+        }
+    }
+    if best.value - least <= SAME * scale { Peak { phi: 0.0, flat: true, ..best } } else { best }
+}
+
+/// The highest of the hills between samples that Newton sees on any piece, where it is higher than what
+/// was found.
+#[cold]
+fn hidden_hill(f: &impl OnCircle, mut best: Peak, scale: f64) -> Peak {
+    for (k, (c, s)) in CIRCLE.cos.iter().zip(&CIRCLE.sin).enumerate() {
+        for piece in 0..f.pieces() {
+            let jet = f.jet(piece, *c, *s);
+            let newton = jet.slope / jet.bend;
+            // Half of Newton's step times the slope is what a round hill still rises.
+            let sees = jet.bend < 0.0 && newton.abs() <= STEP;
+            if sees && jet.value + (jet.slope * newton).abs() > best.value + SAME * scale {
+                let hill = climb(f, piece, k as f64 * STEP, jet, scale);
+                if hill.value > best.value + SAME * scale {
                     best = hill;
                 }
             }

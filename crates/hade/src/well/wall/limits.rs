@@ -70,6 +70,8 @@ impl Wall {
 
     /// The lower shear limit with nothing allowed to fail, by itself: for loops over many walls.
     /// Nothing is allocated. `None` when no pressure is safe, or none is too low.
+    /// With Mogi–Coulomb, whose safe pressures may be two intervals, it is the end that Newton's method
+    /// reaches from below; [`limits`](Wall::limits) looks through all.
     pub fn lower_shear_limit(&self) -> Option<Pressure> {
         self.shear.lower().map(Pressure::from_si)
     }

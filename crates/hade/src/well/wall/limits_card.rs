@@ -124,6 +124,16 @@ impl Limits {
                 ));
             }
         }
+        // Where the safe pressures are not one interval, the limits are the ends of the lowest.
+        if !self.wall.shear.is_convex() {
+            for span in self.wall.shear.spans().iter().skip(1) {
+                notes.push(format!(
+                    "The whole wall holds again {}: with {} the safe pressures need not be one interval. The limits are the ends of the lowest one, and between the two the wall fails.",
+                    span.words(),
+                    self.wall.strength().name()
+                ));
+            }
+        }
         if let (None, Some(least), Some(short)) =
             (self.initiation.pressure(), self.initiation.least_bad(), self.initiation.short_by())
         {

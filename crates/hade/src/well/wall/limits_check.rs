@@ -103,6 +103,16 @@ fn check_shear(route: &ByVectors, limit: &Limit) -> Vec<Check> {
         checks.extend(check_place(route, limit, pressure));
         return checks;
     }
+    if limit.is_unbounded() {
+        let side = if limit.kind() == LimitKind::UpperShear { 1.0 } else { -1.0 };
+        let far = [2.0, 8.0, 32.0].map(|share| route.worst(side * share * size) / (share * size));
+        return vec![Check::holds(
+            format!("{what}: none, nothing fails at pressures far on that side"),
+            far.into_iter().fold(f64::NEG_INFINITY, f64::max),
+            0.0,
+            "",
+        )];
+    }
     let (Some(least), Some(short)) = (limit.least_bad().map(Quantity::si), limit.short_by()) else {
         return vec![Check::holds(format!("{what}: a least bad pressure is given"), f64::NAN, 0.0, "MPa")];
     };

@@ -69,6 +69,7 @@ mod sensitivity_tests;
 mod setup;
 mod shear;
 mod slip;
+mod spans;
 mod stress_at;
 mod tensile_cracks;
 mod tensile_cracks_card;

@@ -57,7 +57,7 @@ const NOISE: f64 = 1e-13;
 
 impl ShearWall {
     pub fn new(kirsch: Kirsch, law: Law, plane: Option<PlaneAtWall>, pore: f64, passes: f64, eta2: f64) -> Self {
-        let scale = kirsch.scale() + law.size() + pore.abs() + plane.map_or(0.0, |p| p.size());
+        let scale = (kirsch.scale() + law.size() + pore.abs() + plane.map_or(0.0, |p| p.size())).max(1.0);
         let effective = EffectiveWall::new(&kirsch, pore, passes, eta2);
         ShearWall { kirsch, law, plane, pore, passes, eta2, effective, scale }
     }
@@ -87,7 +87,7 @@ impl ShearWall {
     }
 
     /// Pressures beyond which nothing is looked for, above and below the pore pressure.
-    fn reach(&self) -> f64 {
+    pub fn reach(&self) -> f64 {
         64.0 * self.scale.max(1.0)
     }
 
@@ -116,9 +116,15 @@ impl ShearWall {
         if let Some(closed) = self.closed_form() {
             return closed.window();
         }
-        match self.searched(-1.0) {
-            Side::Never => Window::Closed { crossed: self.crossed() },
-            lower => Window::Open { lower: lower.peak(), upper: self.searched(1.0).peak() },
+        if !self.is_convex() {
+            return match self.spans().first() {
+                Some(lowest) => Window::Open { lower: lowest.lower, upper: lowest.upper },
+                None => Window::Closed { crossed: self.crossed() },
+            };
+        }
+        match (self.searched(-1.0), self.searched(1.0)) {
+            (Side::Never, _) | (_, Side::Never) => Window::Closed { crossed: self.crossed() },
+            (lower, upper) => Window::Open { lower: lower.peak(), upper: upper.peak() },
         }
     }
 
@@ -240,6 +246,9 @@ impl ShearWall {
     /// The pressure at which the worst place is least bad. The sign of the worst excess's slope
     /// decides every step.
     pub fn least_bad(&self) -> LeastBad {
+        if !self.is_convex() {
+            return self.least_of_spans();
+        }
         let reach = self.reach();
         let (mut low, mut high) = (-reach, reach);
         let mut found = LeastBad { pressure: self.pore, excess: f64::INFINITY, phi: 0.0, flat: false };

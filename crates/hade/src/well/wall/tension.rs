@@ -8,7 +8,7 @@
 //! with the pressure: below its own limit the wall spalls; where it parts below that pressure
 //! already, no pressure is safe.
 
-use super::circle::{OnCircle, Peak, smallest};
+use super::circle::{OnCircle, Peak, greatest, smallest};
 use super::effective::EffectiveWall;
 use crate::rock::{Jet, Number};
 
@@ -32,6 +32,9 @@ pub(crate) enum Parting {
     },
 }
 
+/// How many times the size of the numbers at hand is far off.
+const FAR: f64 = 64.0;
+
 /// The parting pressure of a wall.
 pub(crate) fn parting(wall: &EffectiveWall, pore: f64, tensile: f64, scale: f64) -> Parting {
     // Below −T₀ / r the wall spalls; where the pressure passes the wall whole, it does not.
@@ -40,6 +43,19 @@ pub(crate) fn parting(wall: &EffectiveWall, pore: f64, tensile: f64, scale: f64)
     let above = |peak: Peak| Peak { value: peak.value + pore, ..peak };
     if let Some(peak) = first.filter(|peak| peak.value >= spalls(tensile)) {
         return Parting::At(above(peak));
+    }
+    if wall.across <= 0.0 {
+        // Parted along the hole at any pressure, and it does not spall: the lower the pressure the less
+        // bad, ever more slowly.
+        let x = -FAR * (scale + tensile);
+        let least = greatest(&Least { wall, x }, scale + tensile);
+        return Parting::Always {
+            least_bad: pore + x,
+            beyond: least.value - tensile,
+            phi: least.phi,
+            flat: least.flat,
+            alone: None,
+        };
     }
     // The strength with which the wall would just part where it just spalls.
     let scale = scale + tensile;
@@ -108,6 +124,21 @@ impl OnCircle for Parts<'_> {
     fn jet(&self, _piece: usize, c: f64, s: f64) -> Jet {
         let w = self.wall;
         self.root(w.hoop.jet(c, s), w.axial.jet(c, s), w.shear_squared.jet(c, s))
+    }
+}
+
+/// The least effective stress in the wall's tangent plane, turned over, x above the pore pressure.
+struct Least<'a> {
+    wall: &'a EffectiveWall,
+    x: f64,
+}
+
+impl OnCircle for Least<'_> {
+    fn value(&self, c: f64, s: f64) -> f64 {
+        -self.wall.place(c, s, self.x).in_the_wall().1
+    }
+    fn jet(&self, _piece: usize, c: f64, s: f64) -> Jet {
+        -self.wall.round(c, s, self.x).in_the_wall().1
     }
 }
 
