@@ -146,6 +146,8 @@ pub(super) fn account(law: ModifiedLade, cohesion: Pressure, friction_angle: Ang
         symbols: vec![
             ("S_L", "shift of the stresses (S_1 in Ewy 1999)"),
             ("I_1", "and I_3: sum and product of the shifted principal stresses"),
+            ("J_2", "and J_3: ½ Σ d_i² and the product of d_i, the principal stresses less their mean"),
+            ("u", "the I_1 / 3 that a deviator needs to hold"),
         ],
         references: vec![Reference::new(
             "Ewy, R.T. (1999) Wellbore-stability predictions by use of a modified Lade criterion, SPE Drill. & Completion 14 (2), 85–91 (SPE 56862; cited from memory)",

@@ -140,10 +140,11 @@ impl SecondRoute {
         }
     }
 
-    /// How much a last bit may weigh: near 90° of friction two roots of Lade's cubic are nearly one.
+    /// How much a last bit may weigh: near 90° of friction two roots of Lade's cubic are nearly one, and
+    /// near 0° the mean that a deviator needs is many times as large as it.
     pub fn conditioning(self) -> f64 {
         match self {
-            SecondRoute::ModifiedLade { bound, .. } => (bound / 27.0).sqrt(),
+            SecondRoute::ModifiedLade { eta, bound, .. } => bound / (27.0 * eta).sqrt(),
             _ => 1.0,
         }
     }

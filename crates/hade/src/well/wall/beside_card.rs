@@ -120,8 +120,19 @@ impl RangesBeside {
             &self.range.wall,
             "The recommended range is worked out again with the same stress, pore pressure, allowed width and margins, by another criterion of strength or with another model of the wall, one thing changed at a time. Formulas, sources and assumptions of all of them stand here together.",
         );
-        for wall in self.walls.iter().skip(1) {
-            let other = method::with_strength(wall, "");
+        // What not every range assumes is said of those that do.
+        let others: Vec<Method> = self.walls.iter().skip(1).map(|wall| method::with_strength(wall, "")).collect();
+        for assumption in &mut method.assumptions {
+            if !others.iter().all(|other| other.assumptions.contains(assumption)) {
+                *assumption = format!("{}: {assumption}", words(&self.range.wall));
+            }
+        }
+        for (wall, other) in self.walls.iter().skip(1).zip(others) {
+            for symbol in other.symbols {
+                if !method.symbols.contains(&symbol) {
+                    method.symbols.push(symbol);
+                }
+            }
             for formula in other.formulas {
                 if !method.formulas.contains(&formula) {
                     method.formulas.push(formula);

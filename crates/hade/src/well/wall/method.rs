@@ -64,10 +64,22 @@ pub(super) fn wall_stresses(wall: &Wall) -> Method {
                     "P_w = P_p + (1 − w_s)(p − P_p), the pore pressure behind the wall",
                 ),
                 Formula::new(
-                    "eta = alpha (1 - 2 nu) / (2 (1 - nu))",
-                    "η = α (1 − 2ν) / (2 (1 − ν)); 2η (1 − w_s)(p − P_p) is added to σ_θ and σ_zw",
+                    "eta_s = alpha (1 - 2 nu) / (2 (1 - nu)), quad Delta sigma_s = 2 eta_s (P_w - P_p)",
+                    "η_s = α (1 − 2ν) / (2 (1 − ν)), Δσ_s = 2 η_s (P_w − P_p)",
+                ),
+                Formula::new(
+                    "sigma_theta -> sigma_theta + Delta sigma_s, quad sigma_(z w) -> sigma_(z w) + Delta sigma_s",
+                    "Δσ_s is added to σ_θ and to σ_zw",
                 ),
                 Formula::new("sigma' = sigma - P_w", "σ' = σ − P_w"),
+            ]);
+            method.symbols.extend([
+                (
+                    "P_w".to_owned(),
+                    "pore pressure behind the wall; it takes the place of P_p in σ' at the wall".to_owned(),
+                ),
+                ("w_s".to_owned(), "sealing of the wall: 0 permeable, 1 impermeable".to_owned()),
+                ("η_s".to_owned(), "poroelastic coefficient; α is Biot's".to_owned()),
             ]);
             method.references.push(Reference::new(
                 "Haimson, B. and Fairhurst, C. (1967) Initiation and extension of hydraulic fractures in rocks, SPE J. 7, 310–318 (seepage at the wall; cited from memory)",
@@ -83,8 +95,8 @@ pub(super) fn wall_stresses(wall: &Wall) -> Method {
         None => method.assumptions.push("The rock has the temperature of the mud.".to_owned()),
         Some(_) => {
             method.formulas.push(Formula::new(
-                "Delta sigma_T = (E alpha_T Delta T) / (1 - nu)",
-                "Δσ_T = E α_T ΔT / (1 − ν), added to σ_θ and σ_zw",
+                "Delta sigma_T = (E alpha_T Delta T) / (1 - nu), quad sigma_theta -> sigma_theta + Delta sigma_T, quad sigma_(z w) -> sigma_(z w) + Delta sigma_T",
+                "Δσ_T = E α_T ΔT / (1 − ν), added to σ_θ and to σ_zw",
             ));
             method.references.push(Reference::new(
                 "Stephens, G. and Voight, B. (1982) Hydraulic fracturing theory for conditions of thermal stress, Int. J. Rock Mech. Min. Sci. 19, 279–284 (cited from memory)",
@@ -167,7 +179,7 @@ pub(super) fn worked(wall: &Wall, theta: f64, pressure: f64) -> Vec<Step> {
     if setup.seepage.is_some() {
         let seepage = wall.shear.passes * wall.shear.eta2 * (pressure - wall.shear.pore);
         added.push(Step::worked(format!(
-            "2η = {}; P_w = {} MPa; seepage adds 2η (1 − w_s)(p − P_p) = {} MPa",
+            "2 η_s = {}; P_w = {} MPa; Δσ_s = 2 η_s (P_w − P_p) = {} MPa",
             fixed(wall.shear.eta2, 6),
             mpa(wall.shear.pore_behind(pressure)),
             mpa(seepage)
