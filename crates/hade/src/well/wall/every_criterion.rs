@@ -318,7 +318,7 @@ fn extreme_walls_end_in_numbers() {
                 let poisson = [0.0, 0.25, 0.5][(count / 2) % 3];
                 let pore = [0.0, 20.0, 300.0][(count / 5 + f) % 3];
                 let (inclination, azimuth) = [(0.0, 0.0), (90.0, 30.0), (35.0, 70.0), (180.0, 10.0)][(count / 3) % 4];
-                let tensile = if count % 2 == 0 { 2.0 } else { 0.0 };
+                let tensile = if count.is_multiple_of(2) { 2.0 } else { 0.0 };
                 let plain =
                     Plain { six, inclination, azimuth, pore, poisson, tensile, rock: *rock, seepage, thermal, weak };
                 let wall = plain.wall();
@@ -329,7 +329,7 @@ fn extreme_walls_end_in_numbers() {
                     wall.around(30.mpa()).unwrap().outcome().write(),
                     wall.stress_at(30.mpa(), 77.deg()).unwrap().outcome().write(),
                 ];
-                if count % 4 == 0 {
+                if count.is_multiple_of(4) {
                     outcomes.push(wall.recommended(choices(30.0)).unwrap().outcome().write());
                 } else {
                     outcomes.push(wall.limits_at_width(60.deg()).unwrap().outcome().write());

@@ -120,6 +120,9 @@ fn plane_of(wall: &Wall, normal: [f64; 3], weak: &WeakPlane) -> PlaneAtWall {
     PlaneAtWall::new(normal, yz, xz, weak.cohesion.si(), weak.friction_angle.si().tan())
 }
 
+/// What is mistaken in them.
+type Mistake = fn(Parts) -> Parts;
+
 /// The numbers of a wall that may be mistaken.
 #[derive(Clone, Copy)]
 struct Parts {
@@ -152,7 +155,7 @@ fn with(
 /// its limits and of its stresses red; and one rebuilt from the right parts does not.
 #[test]
 fn mistaken_parts_of_a_wall_turn_checks_red() {
-    let by_parts: [(&str, fn(Parts) -> Parts); 7] = [
+    let by_parts: [(&str, Mistake); 7] = [
         ("2η a thousandth too large", |p| Parts { eta2: 1.001 * p.eta2, ..p }),
         ("η for 2η", |p| Parts { eta2: 0.5 * p.eta2, ..p }),
         ("seepage the other way", |p| Parts { eta2: -p.eta2, ..p }),
