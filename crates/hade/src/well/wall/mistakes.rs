@@ -164,6 +164,7 @@ fn mistaken_parts_of_a_wall_turn_checks_red() {
         ("the formation's pore pressure behind a wall that passes", |p| Parts { passes: 0.0, ..p }),
         ("all of the pressure behind a wall that holds some back", |p| Parts { passes: 1.0, ..p }),
     ];
+    let mut planes = 0;
     for (name, wall) in walls() {
         let low = a_little_low(&wall);
         assert_eq!(red(&with(&wall, |plane| plane, |p| p), low), [false; 5], "{name}");
@@ -181,7 +182,11 @@ fn mistaken_parts_of_a_wall_turn_checks_red() {
             }
         }
         let Some(weak) = wall.setup.weak_plane else { continue };
-        assert!(wall.limits().lower_shear.on_weak_plane(), "{name}");
+        // Where the rock fails first, a mistaken plane need not show in what fails.
+        if !wall.limits().lower_shear.on_weak_plane() {
+            continue;
+        }
+        planes += 1;
         let [x, y, z] = normal(&wall, &weak);
         let stronger = WeakPlane { cohesion: 1.01.mpa(), ..weak };
         let upside = WeakPlane { plane: Plane { dip: 50.deg(), ..weak.plane }, ..weak };
@@ -201,6 +206,7 @@ fn mistaken_parts_of_a_wall_turn_checks_red() {
         let without = red(&with(&wall, |_| None, |p| p), low);
         assert!(without[0] && without[2] && without[3], "{name}: {without:?}");
     }
+    assert!(planes > 0);
 }
 
 #[test]
