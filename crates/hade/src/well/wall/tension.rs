@@ -33,7 +33,7 @@ pub(crate) enum Parting {
 }
 
 /// How many times the size of the numbers at hand is far off.
-const FAR: f64 = 64.0;
+const FAR: f64 = 256.0;
 
 /// The parting pressure of a wall.
 pub(crate) fn parting(wall: &EffectiveWall, pore: f64, tensile: f64, scale: f64) -> Parting {
