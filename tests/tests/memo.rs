@@ -2,8 +2,12 @@
 
 #[path = "memo/demo.rs"]
 mod demo;
+#[path = "memo/new_project.rs"]
+mod new_project;
 #[path = "memo/refusals.rs"]
 mod refusals;
+#[path = "memo/states.rs"]
+mod states;
 #[path = "memo/support.rs"]
 mod support;
 #[path = "memo/three_frames.rs"]

@@ -4,7 +4,9 @@ mod bar;
 mod cells;
 mod kernel;
 mod memo;
+mod new;
 mod run;
+mod template;
 
 use std::process::ExitCode;
 
@@ -22,10 +24,14 @@ struct Cli {
 
 #[derive(Debug, Subcommand)]
 enum Command {
+    /// Make a folder with a notebook to begin from
+    New(new::NewArgs),
     /// Run a notebook from top to bottom and write its outputs back
     Run(run::RunArgs),
     /// Run a notebook from a clean start and write its calculation memo
     Memo(memo::MemoArgs),
+    /// The templates of memos: list them, copy one, try one
+    Template(template::TemplateArgs),
     /// Prepare or remove the compiled libraries that notebooks use
     Kernel(kernel::KernelArgs),
 }
@@ -36,8 +42,10 @@ pub type Failure = Box<dyn std::error::Error>;
 /// Reads the command line and does what it says.
 pub fn main() -> ExitCode {
     let done = match Cli::parse().command {
+        Command::New(args) => new::run(&args),
         Command::Run(args) => run::run(&args),
         Command::Memo(args) => memo::run(&args),
+        Command::Template(args) => template::run(&args),
         Command::Kernel(args) => kernel::run(&args),
     };
     match done {

@@ -9,7 +9,7 @@ use std::time::{Duration, Instant};
 use clap::Args;
 use hade::sheet::{RECORD_MIME, Record};
 use hade_kernel::{Notebook, NotebookRun, RunOptions, run_notebook};
-use hade_memo::{MemoInput, MemoOptions, Project, build};
+use hade_memo::{EarlierMemo, MemoInput, MemoOptions, Project, build};
 
 use crate::Failure;
 use crate::bar::Bar;
@@ -23,9 +23,15 @@ pub struct MemoArgs {
     /// Where to write the memo
     #[arg(short, long, value_name = "MEMO.pdf")]
     output: PathBuf,
-    /// A folder with a template of your own
-    #[arg(long, value_name = "DIR")]
+    /// Another template: its name (see `hade template list`) or its folder
+    #[arg(long, value_name = "NAME|DIR")]
     template: Option<PathBuf>,
+    /// Issue the memo as this revision; refused, with the list, while anything stands against it
+    #[arg(long, value_name = "REVISION")]
+    issue: Option<String>,
+    /// Print what changed since an earlier memo of this calculation
+    #[arg(long, value_name = "OLD.pdf")]
+    diff: Option<PathBuf>,
     /// Stop a cell that runs longer than this many seconds
     #[arg(long, value_name = "SECONDS", value_parser = seconds)]
     cell_timeout: Option<Duration>,
@@ -37,6 +43,7 @@ pub(crate) fn run(args: &MemoArgs) -> Result<(), Failure> {
     let started = Instant::now();
     check_target(&args.output)?;
     let folder = Notebook::read(&args.notebook)?.folder().to_path_buf();
+    let earlier = args.diff.as_deref().map(EarlierMemo::read).transpose()?;
     let project = Project::read_beside(&folder)?.map(|project| project.for_notebook(&args.notebook));
     if project.as_ref().is_none_or(|p| p.date.is_none()) {
         return Err(format!(
@@ -61,10 +68,16 @@ pub(crate) fn run(args: &MemoArgs) -> Result<(), Failure> {
     let bytes = run.to_bytes()?;
     let input =
         MemoInput { record_json: &record, notebook: (&name, &bytes), folder: &folder, project: project.as_ref() };
-    let options = match &args.template {
-        Some(folder) => MemoOptions::default().with_template(folder),
-        None => MemoOptions::default(),
-    };
+    let mut options = MemoOptions::default();
+    if let Some(folder) = &args.template {
+        options = options.with_template(folder);
+    }
+    if let Some(earlier) = earlier {
+        options = options.with_changes_since(earlier);
+    }
+    if let Some(revision) = &args.issue {
+        options = options.issued(revision);
+    }
     let memo = build(&input, &options);
     bar.clear();
     let memo = memo?;
@@ -72,6 +85,13 @@ pub(crate) fn run(args: &MemoArgs) -> Result<(), Failure> {
 
     for warning in &memo.warnings {
         eprintln!("warning: {warning}");
+    }
+    if let Some(changes) = &memo.changes {
+        eprintln!("{}:", changes.words());
+        for change in changes.conclusions.iter().chain(&changes.givens).chain(&changes.outcomes) {
+            let or_none = |value: &Option<String>| value.clone().unwrap_or_else(|| "not there".to_owned());
+            eprintln!("  - {}: {} → {}", change.what, or_none(&change.before), or_none(&change.after));
+        }
     }
     if !memo.against_issue.is_empty() {
         eprintln!("what stands against issue:");

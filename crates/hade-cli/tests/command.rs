@@ -15,7 +15,7 @@ fn said(output: &Output) -> String {
 fn help_names_the_subcommands() {
     let output = hade(&["--help"]);
     assert!(output.status.success());
-    for word in ["run", "memo", "kernel"] {
+    for word in ["new", "run", "memo", "kernel"] {
         assert!(said(&output).contains(word), "{word} in {}", said(&output));
     }
 }

@@ -7,13 +7,16 @@ use hade::card::Card;
 use hade::sheet::{Origin, Record, trace};
 use typst::foundations::Bytes;
 
+use crate::cautions::ProjectCaution;
+use crate::changes::Changes;
+use crate::earlier::EarlierMemo;
 use crate::error::{Error, Result};
-use crate::project::{Person, Project, Revision};
+use crate::project::{Person, Project, Revision, Status};
 use crate::replay::{Judged, Replayer, by_library, judge};
 use crate::template::Template;
 use crate::typeset::{Job, run};
 use crate::view::{Sources, make};
-use crate::{against, attach, clean, notebook};
+use crate::{against, attach, changes, clean, notebook};
 
 /// What a memo is made from.
 #[derive(Clone, Debug)]
@@ -31,14 +34,29 @@ pub struct MemoInput<'a> {
 /// How a memo is made.
 #[derive(Clone, Debug, Default)]
 pub struct MemoOptions {
-    /// The template's folder; the packed template when `None`.
+    /// The template's folder or name; the calculation memo when `None`.
     template: Option<PathBuf>,
+    /// The revision to issue.
+    issue: Option<String>,
+    /// The memo since which changes are listed.
+    earlier: Option<EarlierMemo>,
 }
 
 impl MemoOptions {
-    /// With the template in a folder.
-    pub fn with_template(self, folder: impl Into<PathBuf>) -> Self {
-        MemoOptions { template: Some(folder.into()) }
+    /// With a template by its folder, or by its name (see [`templates`](crate::templates)).
+    pub fn with_template(self, template: impl Into<PathBuf>) -> Self {
+        MemoOptions { template: Some(template.into()), ..self }
+    }
+
+    /// Issued as a revision, which must be the one of the project file. Refused while anything stands
+    /// against it.
+    pub fn issued(self, revision: impl Into<String>) -> Self {
+        MemoOptions { issue: Some(revision.into()), ..self }
+    }
+
+    /// With a list of what changed since an earlier memo.
+    pub fn with_changes_since(self, earlier: EarlierMemo) -> Self {
+        MemoOptions { earlier: Some(earlier), ..self }
     }
 }
 
@@ -50,6 +68,8 @@ pub struct Memo {
     pub pdf: Vec<u8>,
     /// What stands against issue, as page 1 lists it.
     pub against_issue: Vec<String>,
+    /// What changed since the earlier memo, where one was given.
+    pub changes: Option<Changes>,
     /// What the person at the terminal should know.
     pub warnings: Vec<String>,
     /// How many sheets.
@@ -62,7 +82,7 @@ pub struct Memo {
 /// # Errors
 /// A record of a newer schema; a text that cannot be typeset, with its place; a data file that is
 /// not the one of the record; no date in the project file; a template that is refused or does not
-/// compile, with file and line.
+/// compile, with file and line; a memo to be issued against which something stands.
 pub fn build(input: &MemoInput<'_>, options: &MemoOptions) -> Result<Memo> {
     build_with(input, options, by_library)
 }
@@ -70,11 +90,27 @@ pub fn build(input: &MemoInput<'_>, options: &MemoOptions) -> Result<Memo> {
 /// [`build`] with another way of computing an item again: for tests.
 #[doc(hidden)]
 pub fn build_with(input: &MemoInput<'_>, options: &MemoOptions, replayer: Replayer) -> Result<Memo> {
+    let mut project = input.project.cloned().unwrap_or_default();
+    project.status = match (&options.issue, project.status) {
+        (Some(_), _) => Status::Issued,
+        // Only an issue that was asked for is one.
+        (None, Status::Issued) => Status::ForReview,
+        (None, status) => status,
+    };
+    make_memo(&MemoInput { project: Some(&project), ..*input }, options, replayer)
+}
+
+/// A memo as a trial of a template, in the project's state whatever stands against it.
+pub(crate) fn rehearse(input: &MemoInput<'_>, template: &Path) -> Result<Memo> {
+    make_memo(input, &MemoOptions::default().with_template(template), by_library)
+}
+
+fn make_memo(input: &MemoInput<'_>, options: &MemoOptions, replayer: Replayer) -> Result<Memo> {
     let nothing = Project::default();
     let project = cleaned_project(input.project.unwrap_or(&nothing))?;
     let date = project.stated_date()?;
     let template = match &options.template {
-        Some(folder) => Template::in_folder(folder)?,
+        Some(wanted) => Template::named(wanted, input.folder)?,
         None => Template::packed()?,
     };
     let settings = template.settings(&project.template)?;
@@ -91,7 +127,18 @@ pub fn build_with(input: &MemoInput<'_>, options: &MemoOptions, replayer: Replay
         .enumerate()
         .map(|(i, card)| trace(card, &record.givens, &record.data, cards.get(..i).unwrap_or_default()))
         .collect();
-    let against = against::list(&record, &cards, &lineage, &judged, &project);
+    let mut against = against::list(&record, &cards, &lineage, &judged, &project);
+    if let Some(revision) = &options.issue {
+        if *revision != project.revision {
+            against.push(format!("hade.toml is at revision {}, not {revision}.", project.revision));
+        }
+        if !against.is_empty() {
+            return Err(Error::NotIssued { revision: revision.clone(), list: against });
+        }
+    }
+
+    let changes =
+        options.earlier.as_ref().map(|earlier| changes::between(earlier.name.clone(), &earlier.record, &record));
 
     let (name, bytes) = input.notebook;
     let stripped = notebook::strip(name, bytes)?;
@@ -107,6 +154,7 @@ pub fn build_with(input: &MemoInput<'_>, options: &MemoOptions, replayer: Replay
         date,
         attachments: &attachments,
         against: &against,
+        changes: changes.as_ref(),
         longest,
         template: &template,
         settings,
@@ -122,7 +170,7 @@ pub fn build_with(input: &MemoInput<'_>, options: &MemoOptions, replayer: Replay
     let identity = format!("{}/{}", project.number, project.revision);
     let typeset = run(Job { template: &template, own, identity, date })?;
     warnings.extend(typeset.warnings);
-    Ok(Memo { pdf: typeset.pdf, against_issue: against, warnings, pages: typeset.pages })
+    Ok(Memo { pdf: typeset.pdf, against_issue: against, changes, warnings, pages: typeset.pages })
 }
 
 /// The project file with texts that can be typeset.
@@ -145,16 +193,26 @@ fn cleaned_project(project: &Project) -> Result<Project> {
         .iter()
         .map(|r| Ok(Revision { rev: text(&r.rev)?, date: r.date, what: text(&r.what)?, by: text(&r.by)? }))
         .collect::<Result<_>>()?;
+    let cautions = project
+        .cautions
+        .iter()
+        .map(|c| Ok(ProjectCaution { severity: c.severity, title: text(&c.title)?, text: text(&c.text)? }))
+        .collect::<Result<_>>()?;
+    let withhold =
+        project.withhold.iter().map(|(id, reason)| Ok((id.clone(), text(reason)?))).collect::<Result<_>>()?;
     Ok(Project {
         number: text(&project.number)?,
         revision: text(&project.revision)?,
         title: text(&project.title)?,
+        supersedes: text(&project.supersedes)?,
         name: text(&project.name)?,
         client: text(&project.client)?,
         site: text(&project.site)?,
         hole: text(&project.hole)?,
         people,
         revisions,
+        cautions,
+        withhold,
         ..project.clone()
     })
 }

@@ -41,6 +41,22 @@ pub enum Error {
         "the memo has no date, and none is taken from a clock: write it in a file named hade.toml beside the notebook:\n\n[memo]\nnumber = \"GM-001\"\nrevision = \"A\"\ndate = 2026-05-14"
     )]
     NoDate,
+    /// The memo was to be issued, and something stands against it.
+    #[error("revision {revision} cannot be issued; this stands against it:{}", listed(list))]
+    NotIssued {
+        /// The revision.
+        revision: String,
+        /// What stands against it.
+        list: Vec<String>,
+    },
+    /// The earlier memo cannot be compared.
+    #[error("the earlier memo {}: {why}", path.display())]
+    Earlier {
+        /// The file.
+        path: PathBuf,
+        /// What is wrong.
+        why: String,
+    },
     /// The notebook is not one.
     #[error("{name} is not a Jupyter notebook: {why}")]
     Notebook {
@@ -77,6 +93,10 @@ pub enum Error {
         /// What happened.
         why: String,
     },
+}
+
+fn listed(list: &[String]) -> String {
+    list.iter().map(|line| format!("\n  - {line}")).collect()
 }
 
 impl Error {

@@ -22,9 +22,11 @@ mod against;
 mod assemble;
 mod attach;
 mod cautions;
+mod changes;
 mod clean;
 mod digest;
 mod draw;
+mod earlier;
 mod error;
 mod fonts;
 mod formula;
@@ -37,9 +39,13 @@ mod view;
 mod world;
 
 pub use assemble::{Memo, MemoInput, MemoOptions, build};
+pub use cautions::{ProjectCaution, Severity};
+pub use changes::{Change, Changes};
+pub use earlier::EarlierMemo;
 pub use error::{Error, Result};
 pub use formula::lint as lint_formula;
 pub use project::{Date, Person, Project, Revision, Role, Status};
+pub use template::{FoundTemplate, Place, check_template, copy_template, templates};
 
 #[doc(hidden)]
 pub use assemble::build_with;

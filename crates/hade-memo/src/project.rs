@@ -6,6 +6,7 @@ use std::path::Path;
 
 use serde::Deserialize;
 
+use crate::cautions::ProjectCaution;
 use crate::error::{Error, Result};
 
 /// The name of the project file, beside the notebook.
@@ -21,6 +22,10 @@ pub enum Status {
     /// With the checker.
     #[serde(rename = "FOR REVIEW")]
     ForReview,
+    /// Released for use. No project file says so: it is asked for when the memo is made, and refused while
+    /// anything stands against it.
+    #[serde(skip)]
+    Issued,
 }
 
 impl Status {
@@ -29,6 +34,7 @@ impl Status {
         match self {
             Status::Draft => "DRAFT",
             Status::ForReview => "FOR REVIEW",
+            Status::Issued => "ISSUED",
         }
     }
 }
@@ -136,6 +142,7 @@ struct MemoTable {
     date: Option<Date>,
     status: Status,
     title: String,
+    supersedes: String,
 }
 
 #[derive(Debug, Default, Deserialize)]
@@ -156,6 +163,7 @@ pub(crate) struct NotebookTable {
     date: Option<Date>,
     status: Option<Status>,
     title: Option<String>,
+    supersedes: Option<String>,
     hole: Option<String>,
     revisions: Option<Vec<Revision>>,
 }
@@ -167,6 +175,8 @@ struct File {
     project: ProjectTable,
     people: Vec<Person>,
     revisions: Vec<Revision>,
+    cautions: Vec<ProjectCaution>,
+    withhold: BTreeMap<String, String>,
     template: BTreeMap<String, String>,
     notebook: BTreeMap<String, NotebookTable>,
 }
@@ -185,6 +195,8 @@ pub struct Project {
     pub status: Status,
     /// A title in place of the sheet's, empty for none.
     pub title: String,
+    /// The memo, or the revision of it, that this one takes the place of; empty for none.
+    pub supersedes: String,
     /// The project's name.
     pub name: String,
     /// The client.
@@ -197,6 +209,10 @@ pub struct Project {
     pub people: Vec<Person>,
     /// The revision history.
     pub revisions: Vec<Revision>,
+    /// Cautions of its own.
+    pub cautions: Vec<ProjectCaution>,
+    /// Cautions that are withheld, by id, each with the reason that is printed in its place.
+    pub withhold: BTreeMap<String, String>,
     /// Parameters of the template ("paper").
     pub template: BTreeMap<String, String>,
     /// What single notebooks say otherwise, by file name.
@@ -216,8 +232,15 @@ impl Project {
 
     /// Reads the text of a project file; `path` is what a message names.
     pub fn parse(text: &str, path: &Path) -> Result<Self> {
-        let file: File = toml::from_str(text)
-            .map_err(|e| Error::Project { path: path.to_path_buf(), why: e.to_string().trim_end().to_owned() })?;
+        let file: File = toml::from_str(text).map_err(|e| {
+            let mut why = e.to_string().trim_end().to_owned();
+            if why.contains("`ISSUED`") {
+                why.push_str(
+                    "\na memo is issued by `hade memo … --issue REVISION`, which first looks at what stands against it",
+                );
+            }
+            Error::Project { path: path.to_path_buf(), why }
+        })?;
         let twice = Role::ALL.into_iter().find(|role| file.people.iter().filter(|p| p.role == *role).count() > 1);
         if let Some(role) = twice {
             return Err(Error::Project {
@@ -234,12 +257,15 @@ impl Project {
             date: file.memo.date,
             status: file.memo.status,
             title: file.memo.title,
+            supersedes: file.memo.supersedes,
             name: file.project.name,
             client: file.project.client,
             site: file.project.site,
             hole: file.project.hole,
             people: file.people,
             revisions: file.revisions,
+            cautions: file.cautions,
+            withhold: file.withhold,
             template: file.template,
             notebooks: file.notebook,
         })
@@ -258,6 +284,7 @@ impl Project {
         take(&mut self.number, own.number);
         take(&mut self.revision, own.revision);
         take(&mut self.title, own.title);
+        take(&mut self.supersedes, own.supersedes);
         take(&mut self.hole, own.hole);
         self.date = own.date.or(self.date);
         self.status = own.status.unwrap_or(self.status);
@@ -310,6 +337,7 @@ mod tests {
             ("[memo]\ndate = \"14 May\"\n", "line 2", "2026-05-14"),
             ("[memo]\nnumber = \"A\"\nnumbr = 3\n", "line 3", "numbr"),
             ("[memo]\nstatus = \"DONE\"\n", "line 2", "FOR REVIEW"),
+            ("[memo]\nstatus = \"ISSUED\"\n", "line 2", "--issue REVISION"),
             ("[memo\n", "line 1", ""),
             ("[[people]]\nrole = \"author\"\n", "line 2", "prepared"),
         ] {

@@ -35,6 +35,8 @@ pub(crate) enum Root {
     Packed(&'static [(&'static str, &'static [u8])]),
     /// A folder, canonical.
     Folder(PathBuf),
+    /// A folder, canonical, and the packed template whose files it has where it has none of its own.
+    Over(PathBuf, &'static [(&'static str, &'static [u8])]),
 }
 
 impl Root {
@@ -48,6 +50,10 @@ impl Root {
                 .find(|(file, _)| *file == name)
                 .map(|(_, bytes)| Bytes::new(*bytes))
                 .ok_or_else(|| FileError::NotFound(name.into())),
+            Root::Over(folder, files) => match Root::Folder(folder.clone()).read(path) {
+                Err(FileError::NotFound(_)) => Root::Packed(files).read(path),
+                read => read,
+            },
             Root::Folder(folder) => {
                 // Messages show the path within the folder, never the machine's.
                 let io = |e| FileError::from_io(e, name.as_ref());

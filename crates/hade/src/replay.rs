@@ -161,14 +161,17 @@ pub fn replay(card: &Card) -> Result<Replayed> {
     })
 }
 
+#[cfg(any(test, feature = "samples"))]
 mod samples;
+#[cfg(any(test, feature = "samples"))]
+#[doc(hidden)]
+pub use samples::samples;
 
 #[cfg(test)]
 mod tests {
     use std::collections::BTreeSet;
     use std::path::Path;
 
-    use super::samples::samples;
     use super::*;
 
     #[test]

@@ -6,6 +6,7 @@ use serde::Serialize;
 
 use super::Sources;
 use super::text::{Run, Symbol, plain, rich, shortened, symbol};
+use crate::changes::{Change, Changes};
 use crate::project::Status;
 
 /// What is printed where nothing was stated.
@@ -49,7 +50,7 @@ pub(crate) fn memo(sources: &Sources<'_>) -> MemoView {
     let title = first(&project.title, &record.title);
     let date = sources.date.to_string();
     let status = project.status.words();
-    let fields: [(&'static str, &str); 8] = [
+    let mut fields: Vec<(&'static str, &str)> = vec![
         ("Memo no.", &project.number),
         ("Revision", &project.revision),
         ("Date", &date),
@@ -59,6 +60,9 @@ pub(crate) fn memo(sources: &Sources<'_>) -> MemoView {
         ("Site", first(&record.front.site, &project.site)),
         ("Hole", first(&record.front.place, &project.hole)),
     ];
+    if !project.supersedes.trim().is_empty() {
+        fields.push(("Supersedes", &project.supersedes));
+    }
     let number = stated(&project.number);
     let revision = stated(&project.revision);
     MemoView {
@@ -73,6 +77,7 @@ pub(crate) fn memo(sources: &Sources<'_>) -> MemoView {
         watermark: match project.status {
             Status::Draft => "DRAFT",
             Status::ForReview => "FOR REVIEW",
+            Status::Issued => "",
         },
         record_hash: sources.attachments.first().map(|a| a.sha256.clone()).unwrap_or_default(),
         fields: fields
@@ -108,6 +113,29 @@ pub(crate) fn front(front: &Frontmatter) -> FrontView {
         left_out: pairs(&front.left_out),
         open_items: list(&front.open_items),
         design_basis: pairs(&front.design_basis),
+    }
+}
+
+/// What changed since an earlier memo.
+#[derive(Serialize)]
+pub(crate) struct ChangesView {
+    since: String,
+    givens: Vec<[Vec<Run>; 3]>,
+    outcomes: Vec<[Vec<Run>; 3]>,
+    conclusions: Vec<[Vec<Run>; 3]>,
+}
+
+/// The changes, in tables of what, before, after.
+pub(crate) fn changes(changes: &Changes) -> ChangesView {
+    let rows = |list: &[Change]| {
+        let or_none = |value: &Option<String>| rich(value.as_deref().unwrap_or("not there"));
+        list.iter().map(|c| [rich(&c.what), or_none(&c.before), or_none(&c.after)]).collect()
+    };
+    ChangesView {
+        since: plain(&changes.since),
+        givens: rows(&changes.givens),
+        outcomes: rows(&changes.outcomes),
+        conclusions: rows(&changes.conclusions),
     }
 }
 

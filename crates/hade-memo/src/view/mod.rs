@@ -16,7 +16,8 @@ use hade::sheet::{Entry, Origin, Record};
 use serde::Serialize;
 
 use crate::attach::Attachment;
-use crate::cautions::{cautions, conventions};
+use crate::cautions::{conventions, for_memo};
+use crate::changes::Changes;
 use crate::error::Result;
 use crate::project::{Date, Project};
 use crate::replay::Judged;
@@ -43,6 +44,8 @@ pub(crate) struct Sources<'a> {
     pub attachments: &'a [Attachment],
     /// What stands against issue.
     pub against: &'a [String],
+    /// What changed since an earlier memo.
+    pub changes: Option<&'a Changes>,
     /// Bytes of the longest text.
     pub longest: usize,
     /// The template.
@@ -79,6 +82,7 @@ struct Whole {
     settings: BTreeMap<String, String>,
     against: Vec<Vec<text::Run>>,
     conclusions: Vec<Vec<text::Run>>,
+    changes: Option<front::ChangesView>,
     front: front::FrontView,
     choices: Vec<front::ChoiceView>,
     givens: Vec<front::GivenView>,
@@ -88,6 +92,8 @@ struct Whole {
     entries: Vec<EntryView>,
     checks: Vec<closing::CheckView>,
     cautions: Vec<closing::CautionView>,
+    /// Title and reason of each caution that the project withholds.
+    withheld: Vec<[String; 2]>,
     references: Vec<references::ReferenceView>,
     revisions: Vec<closing::RevisionView>,
     program: Vec<[String; 2]>,
@@ -121,12 +127,14 @@ pub(crate) fn make(sources: &Sources<'_>) -> Result<View> {
         });
     }
     let item::Made { formulas, figures, references, warnings } = maker.done();
+    let (cautions, withheld) = for_memo(&topics, &sources.project.cautions, &sources.project.withhold)?;
     let whole = Whole {
         memo: front::memo(sources),
         whole_rows: sources.longest <= LONGEST_IN_WHOLE_ROW,
         settings: sources.settings.clone(),
         against: sources.against.iter().map(|s| text::rich(s)).collect(),
         conclusions: record.conclusions.iter().map(|s| text::rich(s)).collect(),
+        changes: sources.changes.map(front::changes),
         front: front::front(&record.front),
         choices: front::choices(sources),
         givens: front::givens(sources),
@@ -135,7 +143,8 @@ pub(crate) fn make(sources: &Sources<'_>) -> Result<View> {
         conventions: conventions(&topics)?.into_iter().map(|c| [c.title, unbroken(&c.text)]).collect(),
         entries,
         checks: closing::checks(sources),
-        cautions: cautions(&topics)?.iter().map(closing::caution).collect(),
+        cautions: cautions.iter().map(closing::caution).collect(),
+        withheld: withheld.into_iter().map(|w| [w.title, text::plain(&w.reason)]).collect(),
         references,
         revisions: closing::revisions(sources.project),
         program: closing::program(sources),

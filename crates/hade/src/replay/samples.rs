@@ -1,6 +1,4 @@
-//! One card of every kind, for the tests of the table.
-
-#![cfg(test)]
+//! One card of every kind, for the tests of the table and for trying templates.
 
 use crate::prelude::*;
 use crate::well::WeakPlane;

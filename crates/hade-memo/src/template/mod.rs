@@ -1,8 +1,14 @@
-//! Templates: folders with `template.toml`, Typst files and assets. The default one is packed into
-//! the program.
+//! Templates: folders with `template.toml`, Typst files and assets.
+
+mod check;
+mod find;
+mod packed;
 
 use std::collections::BTreeMap;
 use std::path::{Path, PathBuf};
+
+pub use check::check_template;
+pub use find::{FoundTemplate, Place, copy_template, templates};
 
 use serde::Deserialize;
 use typst::syntax::VirtualPath;
@@ -10,15 +16,6 @@ use typst::syntax::VirtualPath;
 use crate::error::{Error, Result};
 use crate::fonts;
 use crate::world::Root;
-
-/// The default template. A test holds this list against the folder.
-const DEFAULT: &[(&str, &[u8])] = &[
-    ("template.toml", include_bytes!("../../../templates/memo/template.toml")),
-    ("memo.typ", include_bytes!("../../../templates/memo/memo.typ")),
-    ("house.typ", include_bytes!("../../../templates/memo/house.typ")),
-    ("lib.typ", include_bytes!("../../../templates/memo/lib.typ")),
-    ("item.typ", include_bytes!("../../../templates/memo/item.typ")),
-];
 
 /// The name of the manifest.
 const MANIFEST: &str = "template.toml";
@@ -28,7 +25,6 @@ const MANIFEST: &str = "template.toml";
 #[serde(deny_unknown_fields)]
 pub(crate) struct Parameter {
     /// What it does.
-    #[allow(dead_code)] // `hade template list` will print it
     pub about: String,
     /// The value when the project says nothing.
     pub default: String,
@@ -42,6 +38,11 @@ pub(crate) struct Parameter {
 struct Manifest {
     name: String,
     version: String,
+    #[serde(default)]
+    about: String,
+    /// A template of the program whose files this one has where it has none of its own.
+    #[serde(default)]
+    extends: String,
     entry: String,
     record_schema: u32,
     #[serde(default)]
@@ -59,6 +60,8 @@ pub(crate) struct Template {
     pub name: String,
     /// Its version.
     pub version: String,
+    /// What it is for.
+    pub about: String,
     /// The file to begin with.
     pub entry: VirtualPath,
     /// Its settings.
@@ -67,9 +70,15 @@ pub(crate) struct Template {
 }
 
 impl Template {
-    /// The default template.
+    /// The template that is used when none is asked for.
     pub(crate) fn packed() -> Result<Self> {
-        Template::open(Root::Packed(DEFAULT), None)
+        Template::open(Root::Packed(packed::MEMO), None)
+    }
+
+    /// A template by its folder or its name, as seen from a notebook's folder; see [`templates`] for where
+    /// names are looked for.
+    pub(crate) fn named(wanted: &Path, folder: &Path) -> Result<Self> {
+        find::named(wanted, folder)
     }
 
     /// The template in a folder.
@@ -98,6 +107,17 @@ impl Template {
                 hade::sheet::RECORD_SCHEMA
             )));
         }
+        let root = match (root, manifest.extends.as_str()) {
+            (root, "") => root,
+            (Root::Folder(real), base) => match packed::ALL.iter().find(|(name, _)| *name == base) {
+                Some((_, files)) => Root::Over(real, files),
+                None => {
+                    let known = packed::ALL.map(|(name, _)| name).join(", ");
+                    return Err(bad(format!("it extends \"{base}\", which is none of the program's: {known}")));
+                }
+            },
+            (root, _) => root,
+        };
         if let Some(font) = manifest.fonts.iter().find(|f| !fonts::has_family(f)) {
             return Err(bad(format!(
                 "it asks for the font \"{font}\", which is not packed; use Inter, Libertinus Serif, New Computer Modern or DejaVu Sans Mono"
@@ -109,6 +129,7 @@ impl Template {
             root,
             name: manifest.name,
             version: manifest.version,
+            about: manifest.about,
             entry,
             parameters: manifest.parameters,
             folder: folder.map(Path::to_path_buf),
@@ -147,19 +168,6 @@ impl Template {
 #[cfg(test)]
 mod tests {
     use super::*;
-
-    #[test]
-    fn the_packed_list_is_the_folder() {
-        let folder = Path::new(env!("CARGO_MANIFEST_DIR")).join("../../templates/memo");
-        let mut on_disk: Vec<String> = std::fs::read_dir(folder)
-            .unwrap()
-            .map(|entry| entry.unwrap().file_name().to_string_lossy().into_owned())
-            .collect();
-        let mut packed: Vec<String> = DEFAULT.iter().map(|(name, _)| (*name).to_owned()).collect();
-        on_disk.sort();
-        packed.sort();
-        assert_eq!(on_disk, packed);
-    }
 
     #[test]
     fn settings_are_checked() {
