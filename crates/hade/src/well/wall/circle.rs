@@ -20,6 +20,18 @@ pub(crate) struct Circle {
     pub sin: [f64; SAMPLES],
 }
 
+impl Circle {
+    /// What a function of cos φ and sin φ gives at every sample.
+    #[inline(always)]
+    pub fn each(&self, f: impl Fn(f64, f64) -> f64) -> [f64; SAMPLES] {
+        let mut values = [0.0; SAMPLES];
+        for ((value, c), s) in values.iter_mut().zip(&self.cos).zip(&self.sin) {
+            *value = f(*c, *s);
+        }
+        values
+    }
+}
+
 pub(crate) static CIRCLE: LazyLock<Circle> = LazyLock::new(|| {
     let mut circle = Circle { cos: [0.0; SAMPLES], sin: [0.0; SAMPLES] };
     for ((k, c), s) in circle.cos.iter_mut().enumerate().zip(&mut circle.sin) {
@@ -41,6 +53,11 @@ pub(crate) trait OnCircle {
         self.value(c, s)
     }
     fn jet(&self, piece: usize, c: f64, s: f64) -> Jet;
+    /// The rough value at every sample.
+    #[inline(always)]
+    fn scan(&self, circle: &Circle) -> [f64; SAMPLES] {
+        circle.each(|c, s| self.rough(c, s))
+    }
 }
 
 /// The function turned upside down: the smallest of its pieces becomes the largest.
@@ -84,40 +101,65 @@ const ROUNDING: f64 = 1e-14;
 /// not the highest hill: within a step a wave rises by at most STEP²/2 of its amplitude, and this
 /// leaves a factor of twenty-five for sharper hills.
 const SLACK: f64 = 0.05;
-/// The same for a sample on a slope, beside which a piece may have a hill of its own: the hill is at
-/// most half a step away, where a wave has risen by STEP²/8 of its amplitude.
-const BESIDE: f64 = 0.005;
-/// The same for a function of one piece: between two samples, rising from one to the other, it has a
-/// hill only by its third derivative.
-const BESIDE_SMOOTH: f64 = 0.001;
-/// Where the range of the samples is below this share of the scale, one piece may hide hills of
-/// another that are far steeper than it: every hill that Newton sees is looked at then.
-const LEVEL: f64 = 0.03;
+/// On a slope a function of one piece has a hill between two samples only by its third derivative: no
+/// sample lower than the best by more than this share of the range is beside the highest.
+const BESIDE: f64 = 0.001;
+/// One piece may hide a hill of another between two samples, however level the function is: half a step
+/// away a wave has risen by STEP²/8, a thousandth, of its amplitude, which is a share of the scale; this
+/// leaves a factor of two for criteria that take the stresses more than once.
+const HIDDEN: f64 = 0.002;
+
+/// A top of one piece that is already known.
+#[derive(Clone, Copy, Debug)]
+pub(crate) struct Top {
+    pub piece: usize,
+    pub phi: f64,
+    pub value: f64,
+}
+
+/// The most pieces a function has.
+const PIECES: usize = 4;
 
 /// The greatest value of a function; `scale` is the size of the numbers in it.
 #[inline]
 pub(crate) fn greatest(f: &impl OnCircle, scale: f64) -> Peak {
-    let mut values = [0.0; SAMPLES];
+    greatest_beside(f, scale, None)
+}
+
+/// The same where one top is known and need not be climbed again.
+#[inline]
+pub(crate) fn greatest_beside(f: &impl OnCircle, scale: f64, known: Option<Top>) -> Peak {
     let circle = &*CIRCLE;
-    for ((value, c), s) in values.iter_mut().zip(&circle.cos).zip(&circle.sin) {
-        *value = f.rough(*c, *s);
-    }
+    let values = f.scan(circle);
     let (mut top, mut bottom) = (f64::NEG_INFINITY, f64::INFINITY);
     for value in values {
         top = if value > top { value } else { top };
         bottom = if value < bottom { value } else { bottom };
     }
-    if top - bottom <= SAME * scale {
-        // Any place is as good, where no piece has a hill between the samples.
-        let flat = Peak { phi: 0.0, value: f.value(1.0, 0.0), flat: true };
-        return if f.pieces() > 1 { hidden_hill(f, flat, scale) } else { flat };
-    }
     let range = top - bottom;
-    let beside = top - range * if f.pieces() > 1 { BESIDE } else { BESIDE_SMOOTH };
-    let enough = top - SLACK * range;
-    let mut best = Peak { phi: 0.0, value: f64::NEG_INFINITY, flat: false };
+    let several = f.pieces() > 1;
+    let flat = range <= SAME * scale;
+    // Where it is flat any place is as good, unless a piece has a hill between the samples.
+    let level = Peak { phi: 0.0, value: f.value(1.0, 0.0), flat: true };
+    if flat && !several {
+        return level;
+    }
+    let mut best = if flat { level } else { Peak { phi: 0.0, value: f64::NEG_INFINITY, flat: false } };
+    let beside = top - if several { HIDDEN * scale } else { BESIDE * range };
+    let enough = beside.min(top - SLACK * range);
+    // The last top that was found on every piece, nowhere at first.
+    let mut tops = [f64::INFINITY; PIECES];
+    if let Some(Top { piece, phi, value }) = known
+        && let Some(top) = tops.get_mut(piece)
+    {
+        *top = phi;
+        if value > best.value {
+            best = Peak { phi, value, flat: false };
+        }
+    }
     // Two pieces may have a hill each between two samples, so a climb starts on every piece at every
-    // high sample from which Newton sees a top of it within one step.
+    // high sample from which Newton sees a top of it within one step. Where the piece is round there and
+    // its last top as near, it is that hill again.
     let [first, .., last] = values;
     let mut before = last;
     for (((k, value), c), s) in values.iter().enumerate().zip(&circle.cos).zip(&circle.sin) {
@@ -127,15 +169,23 @@ pub(crate) fn greatest(f: &impl OnCircle, scale: f64) -> Peak {
         if *value < if highest_here { enough } else { beside } {
             continue;
         }
-        for piece in 0..f.pieces() {
+        for (piece, top) in tops.iter_mut().take(f.pieces()).enumerate() {
             let jet = f.jet(piece, *c, *s);
             if jet.value < enough {
                 continue;
             }
+            let start = k as f64 * STEP;
+            if jet.bend < 0.0 && apart(start, *top) <= STEP {
+                continue;
+            }
             let newton = jet.slope / jet.bend;
-            let near = jet.bend < 0.0 && newton.abs() <= STEP;
+            // Half of Newton's step times the slope is what a round hill still rises.
+            let near = jet.bend < 0.0
+                && newton.abs() <= STEP
+                && jet.value + (jet.slope * newton).abs() > best.value + SAME * scale;
             if near || highest_here {
-                let hill = climb(f, piece, k as f64 * STEP, jet, scale);
+                let hill = climb(f, piece, start, jet, scale);
+                *top = hill.phi;
                 if hill.value > best.value + SAME * scale
                     || (hill.value >= best.value - SAME * scale && hill.phi < best.phi)
                 {
@@ -145,8 +195,7 @@ pub(crate) fn greatest(f: &impl OnCircle, scale: f64) -> Peak {
         }
     }
     // What only roughly told samples from each other may have left none to climb from.
-    let found = if best.value > f64::NEG_INFINITY { best } else { best_sample(f, scale) };
-    if f.pieces() > 1 && range <= LEVEL * scale { hidden_hill(f, found, scale) } else { found }
+    if best.value > f64::NEG_INFINITY { best } else { best_sample(f, scale) }
 }
 
 /// The best of the samples, for a function that hardly varies.
@@ -162,27 +211,6 @@ fn best_sample(f: &impl OnCircle, scale: f64) -> Peak {
         }
     }
     if best.value - least <= SAME * scale { Peak { phi: 0.0, flat: true, ..best } } else { best }
-}
-
-/// The highest of the hills between samples that Newton sees on any piece, where it is higher than what
-/// was found.
-#[cold]
-fn hidden_hill(f: &impl OnCircle, mut best: Peak, scale: f64) -> Peak {
-    for (k, (c, s)) in CIRCLE.cos.iter().zip(&CIRCLE.sin).enumerate() {
-        for piece in 0..f.pieces() {
-            let jet = f.jet(piece, *c, *s);
-            let newton = jet.slope / jet.bend;
-            // Half of Newton's step times the slope is what a round hill still rises.
-            let sees = jet.bend < 0.0 && newton.abs() <= STEP;
-            if sees && jet.value + (jet.slope * newton).abs() > best.value + SAME * scale {
-                let hill = climb(f, piece, k as f64 * STEP, jet, scale);
-                if hill.value > best.value + SAME * scale {
-                    best = hill;
-                }
-            }
-        }
-    }
-    best
 }
 
 /// The smallest value of a function.
@@ -226,6 +254,13 @@ pub(crate) fn climb(f: &impl OnCircle, piece: usize, start: f64, mut jet: Jet, s
         jet = next;
     }
     Peak { phi: on_circle(x), value: jet.value, flat: false }
+}
+
+/// How far apart two φ from 0 to 2π are.
+#[inline(always)]
+fn apart(a: f64, b: f64) -> f64 {
+    let straight = (a - b).abs();
+    straight.min((TAU - straight).abs())
 }
 
 /// φ brought to 0 ≤ φ < 2π; the last bits either side of zero are zero.

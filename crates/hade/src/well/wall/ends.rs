@@ -171,12 +171,7 @@ pub(crate) struct Root {
 
 impl Root {
     pub fn new(x: Wave, y: Wave, v: Wave) -> Self {
-        let join = |k: f64| Wave {
-            mean: 0.5 * (x.mean + k * y.mean),
-            cos: 0.5 * (x.cos + k * y.cos),
-            sin: 0.5 * (x.sin + k * y.sin),
-        };
-        Root { mean: join(1.0), half: join(-1.0), v }
+        Root { mean: x.joined(1.0, y, 0.5), half: x.joined(-1.0, y, 0.5), v }
     }
 
     /// The root itself. The square of a shear is not negative; its wave may be by a last bit.

@@ -1,6 +1,6 @@
 //! By how much a wall exceeds what its rock bears, round the hole, at one pressure.
 
-use super::circle::{OnCircle, climb};
+use super::circle::{Circle, OnCircle, SAMPLES};
 use super::effective::{EffectiveWall, Place};
 use super::slip::PlaneAtWall;
 use crate::rock::{Criterion, Jet, Number, Order};
@@ -47,19 +47,17 @@ impl<C: Criterion> Excess<'_, C> {
         }
     }
 
-    /// The top of the hill about a place, on the piece that is worst there, and how far it is.
-    #[inline]
-    pub fn climb_from(&self, phi: f64, scale: f64) -> (f64, f64) {
-        let (s, c) = phi.sin_cos();
-        let mut worst = (0, self.jet(0, c, s));
-        for piece in 1..self.pieces() {
-            let jet = self.jet(piece, c, s);
-            if jet.value > worst.1.value {
-                worst = (piece, jet);
-            }
+    /// The piece that is worst at a place.
+    #[inline(always)]
+    pub fn piece_at(&self, c: f64, s: f64) -> usize {
+        let place = self.wall.place(c, s, self.x);
+        let (e1, e2) = place.in_the_wall();
+        let below = usize::from(place.across > e2) + usize::from(place.across > e1);
+        let intact = below.min(Self::intact_pieces() - 1);
+        match self.plane {
+            Some(plane) if plane.slip(c, s, &place) > self.intact(intact, &place) => Self::intact_pieces(),
+            _ => intact,
         }
-        let top = climb(self, worst.0, phi, worst.1, scale).phi;
-        (top, (top - phi).abs())
     }
 
     /// With its derivatives by the pressure, at one place.
@@ -88,13 +86,15 @@ impl<C: Criterion> OnCircle for Excess<'_, C> {
             Some(plane) => intact.larger(plane.slip(c, s, &place)),
         }
     }
+    /// The plane is asked after once, not at every sample: only then does the processor take several at a
+    /// time.
     #[inline(always)]
-    fn rough(&self, c: f64, s: f64) -> f64 {
-        let place = self.wall.place(c, s, self.x);
-        let intact = self.criterion.rough(in_order(&place));
+    fn scan(&self, circle: &Circle) -> [f64; SAMPLES] {
+        let (wall, criterion, x) = (*self.wall, self.criterion, self.x);
+        let intact = |c: f64, s: f64| criterion.rough(in_order(&wall.place(c, s, x)));
         match self.plane {
-            None => intact,
-            Some(plane) => intact.larger(plane.slip(c, s, &place)),
+            None => circle.each(intact),
+            Some(plane) => circle.each(|c, s| intact(c, s).larger(plane.slip(c, s, &wall.place(c, s, x)))),
         }
     }
     #[inline(always)]

@@ -18,9 +18,9 @@ pub(super) fn check(inputs: &LimitsInputs, outcome: &LimitsOutcome) -> Vec<Check
     if width > 0.0 && outcome.lower_shear.pressure().is_some() {
         checks.extend(check_width(&route, &outcome.lower_shear, width));
     } else {
-        checks.extend(check_shear(&route, &outcome.lower_shear));
+        checks.extend(check_shear(&route, &outcome.lower_shear, &outcome.upper_shear));
     }
-    checks.extend(check_shear(&route, &outcome.upper_shear));
+    checks.extend(check_shear(&route, &outcome.upper_shear, &outcome.lower_shear));
     checks.extend(check_parting(&route, &outcome.initiation, tensile));
     checks.extend(check_parting(&route, &outcome.reopening, 0.0));
     let unit = route.size() * 1e-6;
@@ -70,15 +70,18 @@ fn check_place(route: &ByVectors, limit: &Limit, pressure: f64) -> Vec<Check> {
 }
 
 /// A shear limit: the criterion is just met at its place, exceeded nowhere at it, and exceeded there
-/// just beyond it; or, where no pressure is safe, the worst excess is as stated and grows both ways.
-fn check_shear(route: &ByVectors, limit: &Limit) -> Vec<Check> {
+/// just beyond it; or, where no pressure is safe, the worst excess is as stated and grows both ways. Just
+/// inside is no further than half-way to the other end.
+fn check_shear(route: &ByVectors, limit: &Limit, other: &Limit) -> Vec<Check> {
     let what = limit.kind().words();
     let size = route.size();
     let unit = size * 1e-6;
     let theta = limit.toolface().unwrap_or_default().si();
     let nudge = 1e-7 * size;
     if let Some(pressure) = limit.pressure().map(Quantity::si) {
-        let beyond = if limit.kind() == LimitKind::UpperShear { nudge } else { -nudge };
+        let side = if limit.kind() == LimitKind::UpperShear { 1.0 } else { -1.0 };
+        let room = other.pressure().map_or(f64::INFINITY, |other| side * (pressure - other.si()));
+        let inside = if room > 0.0 { nudge.min(0.5 * room) } else { nudge };
         let mut checks = vec![
             Check::compare(
                 format!("{what}: the margin is zero at its tool face"),
@@ -89,13 +92,13 @@ fn check_shear(route: &ByVectors, limit: &Limit) -> Vec<Check> {
             ),
             Check::holds(
                 format!("{what}: the criterion is exceeded nowhere just inside it"),
-                route.worst(pressure - beyond) * 1e-6,
+                route.worst(pressure - side * inside) * 1e-6,
                 unit * 1e-9,
                 "MPa",
             ),
             Check::holds(
                 format!("{what}: the criterion is exceeded just outside it"),
-                -route.worst(pressure + beyond) * 1e-6,
+                -route.worst(pressure + side * nudge) * 1e-6,
                 0.0,
                 "MPa",
             ),

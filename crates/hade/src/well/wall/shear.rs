@@ -5,7 +5,7 @@
 //! Mohr–Coulomb at an impermeable wall has both ends of the safe pressures of a place in closed form
 //! ([`super::ends`]); the other criteria, and other walls, are searched ([`super::search`]).
 
-use super::circle::{CIRCLE, Peak, greatest, on_circle};
+use super::circle::{CIRCLE, OnCircle, Peak, STEP, Top, greatest, greatest_beside, on_circle};
 use super::effective::EffectiveWall;
 use super::ends::ClosedForm;
 use super::excess::Excess;
@@ -54,6 +54,10 @@ pub(crate) struct LeastBad {
 
 /// An excess within this share of the scale is zero.
 const NOISE: f64 = 1e-13;
+/// An excess within this share of the scale is near enough to its end to look for the top of its hill.
+const NEAR: f64 = 1e-3;
+/// A step in φ after which a top is found: Newton doubles the digits.
+const ARRIVED: f64 = 1e-7;
 
 impl ShearWall {
     pub fn new(kirsch: Kirsch, law: Law, plane: Option<PlaneAtWall>, pore: f64, passes: f64, eta2: f64) -> Self {
@@ -88,12 +92,11 @@ impl ShearWall {
 
     /// Pressures beyond which nothing is looked for, above and below the pore pressure.
     pub fn reach(&self) -> f64 {
-        64.0 * self.scale.max(1.0)
+        64.0 * self.scale
     }
 
     /// By how much one place is beyond what the rock bears (negative: it holds).
     pub fn excess_at(&self, pressure: f64, phi: f64) -> f64 {
-        use super::circle::OnCircle;
         let (s, c) = phi.sin_cos();
         with_law!(self.law, criterion => self.excess(criterion, pressure).value(c, s))
     }
@@ -151,29 +154,40 @@ impl ShearWall {
             let jet = self.excess(criterion, self.pore + x).pressed(c, s, x);
             (jet.value, -side * jet.slope)
         };
+        // It begins at the end of the place with the largest hoop stress (the smallest for the upper),
+        // and goes to the top of the hill there: mostly the end of the whole wall, so that one look all
+        // round confirms it.
+        let hoop = self.effective.hoop;
+        let crest = if side < 0.0 { hoop.sin.atan2(hoop.cos) } else { (-hoop.sin).atan2(-hoop.cos) };
+        let (mut phi, (mut s, mut c)) = (crest, crest.sin_cos());
+        let mut start = rise(|y| at_place(c, s, y), -0.25 * self.scale, NEAR * self.scale);
+        let mut top = None;
+        for _ in 0..12 {
+            let here = self.excess(criterion, self.pore - side * start);
+            let piece = here.piece_at(c, s);
+            let jet = here.jet(piece, c, s);
+            let newton = -jet.slope / jet.bend;
+            let step = if jet.bend < 0.0 { newton.clamp(-STEP, STEP) } else { STEP.copysign(jet.slope) };
+            phi += step;
+            (s, c) = phi.sin_cos();
+            if step.abs() < ARRIVED && jet.bend < 0.0 {
+                start = rise(|y| at_place(c, s, y), start, noise);
+                top = Some(Top { piece, phi: on_circle(phi), value: at_place(c, s, start).0 });
+                break;
+            }
+            let (excess, slope) = at_place(c, s, start);
+            if slope < 0.0 {
+                start -= excess / slope;
+            }
+        }
         let look = |y: f64| {
-            let peak = greatest(&self.excess(criterion, self.pore - side * y), self.scale);
+            let known = top.filter(|_| y == start);
+            let peak = greatest_beside(&self.excess(criterion, self.pore - side * y), self.scale, known);
             let (s, c) = peak.phi.sin_cos();
             let (_, slope) = at_place(c, s, y);
             worst.set(peak);
             Look { excess: peak.value, slope, next: rise(|y| at_place(c, s, y), y, noise) }
         };
-        // It begins at the end of the place with the largest hoop stress (the smallest for the upper),
-        // and of the places it leads to by climbing at that end: mostly the end of the whole wall, so
-        // that one look all round confirms it.
-        let hoop = self.effective.hoop;
-        let crest = on_circle(if side < 0.0 { hoop.sin.atan2(hoop.cos) } else { (-hoop.sin).atan2(-hoop.cos) });
-        let (mut phi, mut start) = (crest, -0.25 * self.scale);
-        for _ in 0..4 {
-            let (s, c) = phi.sin_cos();
-            start = rise(|y| at_place(c, s, y), start, noise);
-            let here = self.excess(criterion, self.pore - side * start);
-            let (top, moved) = here.climb_from(phi, self.scale);
-            phi = top;
-            if moved < 1e-6 {
-                break;
-            }
-        }
         match lower_end(look, self.search_for(&criterion, start)) {
             LowerEnd::At(y) => Side::At(Peak { value: self.pore - side * y, ..worst.get() }),
             LowerEnd::Never => Side::Never,
