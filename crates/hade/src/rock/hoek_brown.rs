@@ -157,7 +157,11 @@ fn rough_power(x: f64, q: f64) -> f64 {
     let shifted = power + 1.5 * WHOLE;
     let rest = (power - (shifted - 1.5 * WHOLE)) * LN_2;
     let fraction = 1.0
-        + rest * (1.0 + rest * (1.0 / 2.0 + rest * (1.0 / 6.0 + rest * (1.0 / 24.0 + rest * (1.0 / 120.0 + rest * (1.0 / 720.0))))));
+        + rest
+            * (1.0
+                + rest
+                    * (1.0 / 2.0
+                        + rest * (1.0 / 6.0 + rest * (1.0 / 24.0 + rest * (1.0 / 120.0 + rest * (1.0 / 720.0))))));
     let result = f64::from_bits(fraction.to_bits().wrapping_add(shifted.to_bits() << 52));
     if x > 0.0 { result } else { 0.0 }
 }
