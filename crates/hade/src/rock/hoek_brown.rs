@@ -156,12 +156,8 @@ fn rough_power(x: f64, q: f64) -> f64 {
     // The nearest whole number stands in the last bits of this sum.
     let shifted = power + 1.5 * WHOLE;
     let rest = (power - (shifted - 1.5 * WHOLE)) * LN_2;
-    let fraction = 1.0
-        + rest
-            * (1.0
-                + rest
-                    * (1.0 / 2.0
-                        + rest * (1.0 / 6.0 + rest * (1.0 / 24.0 + rest * (1.0 / 120.0 + rest * (1.0 / 720.0))))));
+    let series = [1.0 / 5040.0, 1.0 / 720.0, 1.0 / 120.0, 1.0 / 24.0, 1.0 / 6.0, 0.5, 1.0, 1.0];
+    let fraction = series.iter().fold(0.0, |sum, factor| sum * rest + factor);
     let result = f64::from_bits(fraction.to_bits().wrapping_add(shifted.to_bits() << 52));
     if x > 0.0 { result } else { 0.0 }
 }

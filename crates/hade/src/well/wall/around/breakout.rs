@@ -190,12 +190,16 @@ pub(crate) fn check_arcs(route: &ByVectors, pressure: f64, outcome: &ArcsOutcome
             checks.push(Check::compare("width of a wall that fails all round", &[arc.width.si()], &[PI], 1e-12, "rad"));
         } else {
             edges.extend([centre - half, centre + half].map(|edge| route.excess(edge, pressure) * 1e-6));
-            // Inside and outside by a share of the arc, at most a thousandth of a degree.
-            let nudge = (0.1 * half).min(1.75e-5);
-            let (inside, beyond) = (half - nudge, half + nudge);
+            // Inside and outside by a share of the arc and of the gap, at most a thousandth of a degree.
             for side in [-1.0, 1.0] {
-                sides = sides.max(-route.excess(centre + side * inside, pressure) * 1e-6);
-                sides = sides.max(route.excess(centre + side * beyond, pressure) * 1e-6);
+                let edge = centre + side * half;
+                let gaps = arcs.iter().map(|other| {
+                    let near_edge = other.centre.si() - side * 0.5 * other.width.si();
+                    (side * (near_edge - edge)).rem_euclid(PI)
+                });
+                let nudge = |room: f64| side * (0.1 * room).min(1.75e-5);
+                sides = sides.max(-route.excess(edge - nudge(half), pressure) * 1e-6);
+                sides = sides.max(route.excess(edge + nudge(gaps.fold(PI, f64::min)), pressure) * 1e-6);
             }
         }
         if let Some(bearing) = arc.bearing {

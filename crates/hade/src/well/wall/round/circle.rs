@@ -120,6 +120,10 @@ pub(crate) struct Top {
 /// The most pieces a function has.
 const PIECES: usize = 4;
 
+/// Newton misses the top of a round hill a step away by no more than this share of the way; where it sees
+/// another place there may be another hill.
+const AGAIN: f64 = 0.25;
+
 /// The greatest value of a function; `scale` is the size of the numbers in it.
 #[inline]
 pub(crate) fn greatest(f: &impl OnCircle, scale: f64) -> Peak {
@@ -158,8 +162,8 @@ pub(crate) fn greatest_beside(f: &impl OnCircle, scale: f64, known: Option<Top>)
         }
     }
     // Two pieces may have a hill each between two samples, so a climb starts on every piece at every
-    // high sample from which Newton sees a top of it within one step. Where the piece is round there and
-    // its last top as near, it is that hill again.
+    // high sample from which Newton sees a top of it within one step. Where that is its last top, it is
+    // that hill again.
     let [first, .., last] = values;
     let mut before = last;
     for (((k, value), c), s) in values.iter().enumerate().zip(&circle.cos).zip(&circle.sin) {
@@ -175,10 +179,11 @@ pub(crate) fn greatest_beside(f: &impl OnCircle, scale: f64, known: Option<Top>)
                 continue;
             }
             let start = k as f64 * STEP;
-            if jet.bend < 0.0 && apart(start, *top) <= STEP {
+            let newton = jet.slope / jet.bend;
+            let away = between(start, *top);
+            if jet.bend < 0.0 && away.abs() <= STEP && (away + newton).abs() <= AGAIN * away.abs() + SAME {
                 continue;
             }
-            let newton = jet.slope / jet.bend;
             // Half of Newton's step times the slope is what a round hill still rises.
             let near = jet.bend < 0.0
                 && newton.abs() <= STEP
@@ -256,11 +261,11 @@ pub(crate) fn climb(f: &impl OnCircle, piece: usize, start: f64, mut jet: Jet, s
     Peak { phi: on_circle(x), value: jet.value, flat: false }
 }
 
-/// How far apart two φ from 0 to 2π are.
+/// The way from one φ to another, −π to π.
 #[inline(always)]
-fn apart(a: f64, b: f64) -> f64 {
-    let straight = (a - b).abs();
-    straight.min((TAU - straight).abs())
+fn between(from: f64, to: f64) -> f64 {
+    let way = to - from;
+    way - TAU * (way / TAU).round()
 }
 
 /// φ brought to 0 ≤ φ < 2π; the last bits either side of zero are zero.

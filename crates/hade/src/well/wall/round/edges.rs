@@ -2,16 +2,16 @@
 
 use super::circle::{Below, CIRCLE, OnCircle, SAMPLES, STEP, climb};
 
-/// More edges than the pieces of any excess have.
-pub(crate) const MOST: usize = 32;
-
 /// Places φ in no order.
 pub(crate) struct Edges {
-    pub places: [f64; MOST],
+    pub places: [f64; Edges::MOST],
     pub count: usize,
 }
 
 impl Edges {
+    /// More than the pieces of any excess have.
+    pub const MOST: usize = 32;
+
     fn push(&mut self, place: f64) {
         if let Some(cell) = self.places.get_mut(self.count) {
             *cell = place;
@@ -23,7 +23,7 @@ impl Edges {
 /// The zeros of every piece of a function; those of the function are among them. A hill or a hollow
 /// between samples of one sign is climbed, so that a narrow arc or gap is not missed.
 pub(crate) fn edges(f: &impl OnCircle, scale: f64) -> Edges {
-    let mut found = Edges { places: [0.0; MOST], count: 0 };
+    let mut found = Edges { places: [0.0; Edges::MOST], count: 0 };
     for piece in 0..f.pieces() {
         let mut values = [0.0; SAMPLES];
         for ((value, c), s) in values.iter_mut().zip(&CIRCLE.cos).zip(&CIRCLE.sin) {

@@ -8,8 +8,7 @@ mod wave;
 
 pub(crate) use between::{highest_between, root_between};
 pub(crate) use circle::{
-    Below, CIRCLE, Circle, OnCircle, Peak, SAME, SAMPLES, STEP, Top, climb, greatest, greatest_beside, on_circle,
-    smallest,
+    Below, CIRCLE, Circle, OnCircle, Peak, SAME, SAMPLES, STEP, Top, greatest, greatest_beside, on_circle, smallest,
 };
 pub(crate) use edges::{Edges, edges};
 pub(crate) use wave::Wave;

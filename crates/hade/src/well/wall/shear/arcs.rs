@@ -48,6 +48,10 @@ impl ShearWall {
     }
 }
 
+/// Stretches narrower than this in φ are no arcs and no gaps: an edge is not known more closely where the
+/// shear on a plane of weakness ceases, as the root of a square that is rounded.
+const NARROW: f64 = 1e-7;
+
 /// The arcs that fail among the stretches between edges.
 pub(crate) fn arcs_between(mut found: Edges, fails: impl Fn(f64) -> bool) -> Arcs {
     let cuts = found.places.get_mut(..found.count).unwrap_or_default();
@@ -60,44 +64,35 @@ pub(crate) fn arcs_between(mut found: Edges, fails: impl Fn(f64) -> bool) -> Arc
         arcs.whole = fails(0.0);
         return arcs;
     };
-    // The piece that runs through φ = 0 belongs after the last cut.
-    let mut open: Option<f64> = None;
-    let mut all = true;
     // A stretch may touch zero in its very middle (a plane of weakness without cohesion where no
     // shear is on it), so one place in it is not enough.
     let fails = |from: f64, to: f64| [0.5, 0.31, 0.77].iter().any(|share| fails(from + share * (to - from)));
     let next = cuts.iter().skip(1).copied().chain(std::iter::once(first + TAU));
-    for (from, to) in cuts.iter().copied().zip(next) {
-        if to > from && fails(from, to) {
-            open = open.or(Some(from));
-        } else if to > from {
-            all = false;
-            close(&mut arcs, &mut open, from);
+    let mut stretches = [(0.0, 0.0, false); Edges::MOST];
+    let mut count = 0;
+    for (from, to) in cuts.iter().copied().zip(next).filter(|(from, to)| to - from > NARROW) {
+        if let Some(cell) = stretches.get_mut(count) {
+            *cell = (from, to, fails(from, to));
+            count += 1;
         }
     }
-    if all {
+    let stretches = stretches.get(..count).unwrap_or_default();
+    let Some(holds) = stretches.iter().position(|(.., failing)| !failing) else {
         arcs.whole = true;
-        arcs.count = 0;
         return arcs;
-    }
-    // What is still open at the end runs on into what began at the first cut.
-    if let Some(from) = open {
-        let joins = arcs.edges.first().copied().filter(|(start, _)| arcs.count > 0 && *start == first);
-        match joins {
-            Some((_, to)) => {
-                if let Some(cell) = arcs.edges.first_mut() {
-                    *cell = (from, to + TAU);
-                }
-            }
-            None => close(&mut arcs, &mut Some(from), first + TAU),
+    };
+    // Once round from the first stretch that holds, and to it again.
+    let (until, after) = stretches.split_at(holds + 1);
+    let again = until.iter().map(|(from, to, failing)| (from + TAU, to + TAU, *failing));
+    let mut open: Option<(f64, f64)> = None;
+    for (from, to, failing) in after.iter().copied().chain(again) {
+        if failing {
+            open = Some((open.map_or(from, |(start, _)| start), to));
+        } else if let (Some((from, to)), Some(cell)) = (open.take(), arcs.edges.get_mut(arcs.count)) {
+            let turn = if from >= TAU { TAU } else { 0.0 };
+            *cell = (from - turn, to - turn);
+            arcs.count += 1;
         }
     }
     arcs
-}
-
-fn close(arcs: &mut Arcs, open: &mut Option<f64>, to: f64) {
-    if let (Some(from), Some(cell)) = (open.take(), arcs.edges.get_mut(arcs.count)) {
-        *cell = (from, to);
-        arcs.count += 1;
-    }
 }

@@ -37,17 +37,21 @@ impl PlaneAtWall {
         }
     }
 
-    /// τ − c_w − σn' tan φ_w: positive where it slips.
+    /// τ − c_w − σn' tan φ_w: positive where it slips. The shear stress is |t × n|, from differences of the
+    /// stresses: the root of |t|² − σn'² would lose half of its figures where a plane bears hardly any.
     #[inline(always)]
     fn excess<N: Number>(&self, at: &Place<N>, across: N, around: N, sheared: N) -> N {
         let z = self.along;
         let normal = at.across * across + at.hoop * around + at.axial * (z * z) + sheared * (2.0 * z);
-        let traction_squared = at.across * at.across * across
-            + at.hoop * at.hoop * around
-            + at.axial * at.axial * (z * z)
-            + at.shear_squared * (around + z * z)
-            + (at.hoop + at.axial) * sheared * (2.0 * z);
-        let shear = (traction_squared - normal * normal).sqrt();
+        let [hoop_axial, axial_across, across_hoop] = [at.hoop - at.axial, at.axial - at.across, at.across - at.hoop];
+        let beyond = around - z * z;
+        let radial = around * hoop_axial * hoop_axial * (z * z) + at.shear_squared * beyond * beyond
+            - sheared * hoop_axial * beyond * (2.0 * z);
+        let tangential = at.shear_squared * (around + z * z)
+            + sheared * (axial_across - across_hoop) * (2.0 * z)
+            + axial_across * axial_across * (z * z)
+            + around * across_hoop * across_hoop;
+        let shear = (radial + across * tangential).sqrt();
         shear - normal * self.friction - self.cohesion
     }
 

@@ -345,3 +345,30 @@ fn extreme_walls_end_in_numbers() {
     }
     assert!(count > 300);
 }
+
+/// Arcs may all but meet where a plane of weakness without cohesion bears no shear.
+#[test]
+fn arcs_beside_a_place_without_shear_pass_their_checks() {
+    let plain = Plain {
+        six: [
+            22.100_311_352_949_358,
+            30.851_009_944_680_808,
+            20.0,
+            1.565_846_614_467_814,
+            7.245_503_597_016_995,
+            -3.487_867_915_104_687,
+        ],
+        inclination: 0.0,
+        azimuth: 0.0,
+        pore: 0.0,
+        poisson: 0.0,
+        tensile: 0.0,
+        rock: PlainRock::MogiCoulomb { c: 29.722_122_976_772_32, phi: 33.321_109_931_111_34 },
+        seepage: Some([0.0, 0.0]),
+        thermal: None,
+        weak: Some([205.137_893_296_132_4, 90.0, 0.0, 5.0]),
+    };
+    let card = plain.wall().failing_arcs(39.708_965_183_518_71.mpa()).unwrap().card();
+    assert!(card.passed(), "{}", failed(&card));
+    assert!(card.outcome.numbers().len() > 4);
+}
