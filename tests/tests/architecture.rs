@@ -81,6 +81,63 @@ fn dependencies_point_one_way() {
     assert!(seen > 100, "only {seen} imports seen");
 }
 
+/// The parts of the wall; each imports only from those before it.
+const WALL: [&str; 16] = [
+    "direction",
+    "round",
+    "elastic",
+    "shear",
+    "setup",
+    "second_route",
+    "wall",
+    "method",
+    "stress",
+    "around",
+    "tension",
+    "failure_depth",
+    "limits",
+    "unrolled",
+    "range",
+    "sensitivity",
+];
+
+#[test]
+fn the_parts_of_the_wall_point_one_way() {
+    let wall = root().join("crates/hade/src/well/wall");
+    let at = |name: &str| WALL.iter().position(|part| *part == name);
+    // What `mod.rs` hands on by itself, as `Wall`, is of `wall.rs`.
+    let place = |name: &str| at(name).or(at("wall"));
+    let mut seen = 0;
+    for (_, file) in sources() {
+        let Ok(relative) = file.strip_prefix(&wall) else { continue };
+        let mut parts = relative.iter().map(|part| part.to_string_lossy().trim_end_matches(".rs").to_owned());
+        let (own, inside) = (parts.next().expect("a name"), parts.next().is_some());
+        if own == "mod" || own == "tests" {
+            continue;
+        }
+        assert!(WALL.contains(&own.as_str()), "{own} has no place in the order of the wall");
+        let text = std::fs::read_to_string(&file).expect("a source file");
+        let code: String = without_tests(&text).lines().filter(|l| !l.trim_start().starts_with("//")).collect();
+        let from_wall = code.split("crate::well::wall::").skip(1);
+        let from_beside = if inside { "" } else { code.as_str() }.split("super::").skip(1);
+        for rest in from_wall.chain(from_beside) {
+            let names = match rest.strip_prefix('{') {
+                Some(list) => list.split('}').next(),
+                None => rest.split(|c: char| !(c.is_ascii_alphanumeric() || c == '_')).next(),
+            };
+            for name in names.unwrap_or_default().split(',').map(str::trim).filter(|name| !name.is_empty()) {
+                seen += 1;
+                assert!(
+                    name == own || place(name) < place(&own),
+                    "{} imports {name}, which stands after {own}",
+                    file.display()
+                );
+            }
+        }
+    }
+    assert!(seen > 100, "only {seen} imports seen");
+}
+
 /// In a notebook session the third-party crates are not in Cargo's graph, so a public signature
 /// that names one would be unknown to the analyser and to a user's cell.
 #[test]

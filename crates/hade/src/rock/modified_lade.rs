@@ -46,9 +46,16 @@ impl ModifiedLade {
         let mean = (s1 + s2 + s3) * (1.0 / 3.0);
         let [a, b, c] = [s1 - mean, s2 - mean, s3 - mean];
         // What is added keeps a deviator of nothing from being divided by.
-        let size = ((a * a + b * b + c * c) * 0.5 + 1e-180).sqrt() * self.root;
-        // w = u / √(k J2): w³ − w + r = 0, by Newton from a guess that is close everywhere.
-        let r = a * b * c * (self.root * self.root) / (size * size * size);
+        let j2 = (a * a + b * b + c * c) * 0.5 + 1e-60;
+        let size = j2.value().sqrt() * self.root;
+        let (over, square) = (1.0 / size, self.root * self.root);
+        let cube = over * over * over;
+        // size = √(k J2) and k / size³, by J2.
+        let step = 0.5 * square * over * over;
+        let k_over_cube = j2.through([square * cube, -3.0 * step * square * cube, 15.0 * step * step * square * cube]);
+        let size = j2.through([size, step * size, -step * step * size]);
+        // w = u / size: w³ − w + r = 0, by Newton from a guess that is close everywhere.
+        let r = a * b * c * k_over_cube;
         // |J3| ≤ 2 (J2 / 3)^(3/2), but for the rounding of a deviator of nothing.
         let most = r * 0.0 + 0.384_900_179_459_750_5 / self.root;
         let r = r.smaller(most).larger(-most);
@@ -56,11 +63,9 @@ impl ModifiedLade {
         for _ in 0..STEPS {
             w -= (w * (w * w - 1.0) + r0) / (3.0 * w * w - 1.0);
         }
-        // A step more for each derivative, which makes it exact.
-        let mut root = r * 0.0 + w;
-        for _ in 0..N::ORDERS {
-            root = root - (root * (root * root - 1.0) + r) / (root * root * 3.0 - 1.0);
-        }
+        // Its derivatives by r, from the cubic.
+        let first = -1.0 / (3.0 * w * w - 1.0);
+        let root = r.through([w, first, 6.0 * w * first * first * first]);
         root * size - mean - self.shift
     }
 }

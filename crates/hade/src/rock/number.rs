@@ -15,11 +15,10 @@ pub(crate) trait Number:
     + Sub<f64, Output = Self>
     + Mul<f64, Output = Self>
 {
-    /// How many derivatives it carries.
-    const ORDERS: usize;
-
     /// The value by itself.
     fn value(self) -> f64;
+    /// The image under a function whose value and first two derivatives at this value are given.
+    fn through(self, function: [f64; 3]) -> Self;
     /// The square root; zero (with zero slopes) below zero.
     fn sqrt(self) -> Self;
     /// A power; zero (with zero slopes) at and below zero.
@@ -38,11 +37,13 @@ pub(crate) trait Number:
 }
 
 impl Number for f64 {
-    const ORDERS: usize = 0;
-
     #[inline(always)]
     fn value(self) -> f64 {
         self
+    }
+    #[inline(always)]
+    fn through(self, [value, ..]: [f64; 3]) -> f64 {
+        value
     }
     #[inline(always)]
     fn sqrt(self) -> f64 {
@@ -62,27 +63,21 @@ pub(crate) struct Jet {
     pub bend: f64,
 }
 
-impl Jet {
-    /// The image under a function whose value and derivatives at `self.value` are given.
-    #[inline(always)]
-    fn through(self, [value, first, second]: [f64; 3]) -> Jet {
-        Jet { value, slope: first * self.slope, bend: first * self.bend + second * self.slope * self.slope }
-    }
-}
-
 impl Number for Jet {
-    const ORDERS: usize = 2;
-
     #[inline(always)]
     fn value(self) -> f64 {
         self.value
     }
     #[inline(always)]
+    fn through(self, [value, first, second]: [f64; 3]) -> Jet {
+        Jet { value, slope: first * self.slope, bend: first * self.bend + second * self.slope * self.slope }
+    }
+    #[inline(always)]
     fn sqrt(self) -> Jet {
         if self.value > 0.0 {
             let r = self.value.sqrt();
-            let first = 0.5 / r;
-            self.through([r, first, -0.5 * first / self.value])
+            let over = 1.0 / r;
+            self.through([r, 0.5 * over, -0.25 * over * over * over])
         } else {
             Jet { value: 0.0, slope: 0.0, bend: 0.0 }
         }
@@ -91,8 +86,9 @@ impl Number for Jet {
     fn power(self, exponent: f64) -> Jet {
         if self.value > 0.0 {
             let y = self.value.powf(exponent);
-            let first = exponent * y / self.value;
-            self.through([y, first, (exponent - 1.0) * first / self.value])
+            let over = 1.0 / self.value;
+            let first = exponent * y * over;
+            self.through([y, first, (exponent - 1.0) * first * over])
         } else {
             Jet { value: 0.0, slope: 0.0, bend: 0.0 }
         }
@@ -135,9 +131,10 @@ impl Div for Jet {
     type Output = Jet;
     #[inline(always)]
     fn div(self, o: Jet) -> Jet {
+        let over = 1.0 / o.value;
         let value = self.value / o.value;
-        let slope = (self.slope - value * o.slope) / o.value;
-        Jet { value, slope, bend: (self.bend - 2.0 * slope * o.slope - value * o.bend) / o.value }
+        let slope = (self.slope - value * o.slope) * over;
+        Jet { value, slope, bend: (self.bend - 2.0 * slope * o.slope - value * o.bend) * over }
     }
 }
 impl Add<f64> for Jet {

@@ -1,6 +1,7 @@
 //! The method that the cards of a wall share, and its arithmetic with the numbers put in.
 
-use super::kirsch::AtWall;
+use super::direction;
+use super::elastic::AtWall;
 use super::wall::Wall;
 use crate::card::{Formula, Method, Reference, Step};
 use crate::frames::vector::{V3, add, apply, dot, norm, scale};
@@ -111,7 +112,7 @@ pub(super) fn wall_stresses(wall: &Wall) -> Method {
 pub(super) fn notes(wall: &Wall) -> Vec<String> {
     let mut notes = wall.setup.notes();
     notes.extend(wall.strength().warning().map(str::to_owned));
-    notes.push(super::direction::reference(wall.attitude));
+    notes.push(direction::reference(wall.attitude));
     notes
 }
 

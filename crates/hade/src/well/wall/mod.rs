@@ -18,95 +18,50 @@
 //! Time, chemistry, pore pressure and temperature behind a wall that lets them pass (the field away from
 //! such a wall is refused), stress changed by earlier failure, and rock that creeps (where that is said,
 //! every result warns). A breakout is the arc that fails elastically at first; it deepens, and need not widen.
+//!
+//! # Where things are
+//!
+//! Plain numbers in `round`, `elastic` and `shear`; what a user states in `setup.rs` and `wall.rs`; words and
+//! steps that cards share in `direction.rs` and `method.rs`; the routes of the checks in `second_route`. Then
+//! the results, a folder each, with card, check and figure beside them. A folder imports only from those before it:
+//! `direction, round ← elastic ← shear ← setup ← wall, second_route ← method ← stress, around, tension ←
+//! failure_depth, limits, unrolled ← range ← sensitivity`.
 
-mod arcs;
 mod around;
-mod beside;
-mod beside_card;
-mod breakout;
-mod by_force;
-mod circle;
-mod cracks;
-mod depth;
 mod direction;
-mod direction_map;
-mod edges;
-mod effective;
 mod elastic;
-mod ends;
-mod envelope_points;
-mod every_criterion;
-mod excess;
 mod failure_depth;
-mod failure_depth_check;
-mod failure_depth_figure;
-mod field;
-mod field_method;
-mod field_route;
-#[cfg(test)]
-mod field_tests;
-mod kirsch;
-mod limit;
 mod limits;
-mod limits_card;
-mod limits_check;
 mod method;
-mod mistakes;
-mod mud_held;
-mod mud_held_card;
-mod radial_profile;
-mod raised;
 mod range;
-mod range_card;
-mod range_check;
-mod range_ends;
-#[cfg(test)]
-mod range_tests;
-mod search;
+mod round;
 mod second_route;
 mod sensitivity;
-mod sensitivity_card;
-mod sensitivity_check;
-#[cfg(test)]
-mod sensitivity_tests;
 mod setup;
 mod shear;
-mod slip;
-mod spans;
-mod stress_at;
-mod tensile_cracks;
-mod tensile_cracks_card;
-mod tensile_cracks_check;
+mod stress;
 mod tension;
-#[cfg(test)]
 mod tests;
-mod trace;
 mod unrolled;
-mod unrolled_figure;
-mod varied_wall;
-mod vary;
 #[allow(clippy::module_inception)]
 mod wall;
-mod walls_at_random;
-mod width;
 
-pub use around::{AroundOutcome, WallAround};
-pub use beside::{Alternative, BesideInputs, BesideOutcome, RangeBeside, RangesBeside};
-pub use breakout::{ArcsOutcome, Breakout, FailingArcs};
-pub use direction_map::{DirectionMap, MapInputs};
+pub use around::{ArcsOutcome, AroundOutcome, Breakout, FailingArcs, WallAround};
 pub use failure_depth::{DeepestFailure, DepthOutcome, FailureDepth};
-pub use field::{AtDistance, AtDistanceOutcome, FieldStress};
-pub use limit::{Limit, LimitKind, Mode, WallDirection};
-pub use limits::{Limits, LimitsInputs, LimitsOutcome};
-pub use mud_held::{HeldInputs, HeldOutcome, HeldPressure, MudHeld, MudPlan, MudState};
-pub use radial_profile::{AlongRadius, ProfileOutcome, RadialProfile};
-pub use raised::RaisedTop;
-pub use range::{RangeChoices, RangeInputs, RangeOutcome, RecommendedRange};
-pub use range_ends::{GovernedPressure, Governs, RangeEnd};
-pub use sensitivity::{ChangedEnds, ChangedRange, Sensitivity, SensitivityInputs, SensitivityOutcome};
+pub use limits::{DirectionMap, Limit, LimitKind, Limits, LimitsInputs, LimitsOutcome, MapInputs};
+pub use range::{
+    Alternative, BesideInputs, BesideOutcome, GovernedPressure, Governs, HeldInputs, HeldOutcome, HeldPressure,
+    MudHeld, MudPlan, MudState, RaisedTop, RangeBeside, RangeChoices, RangeEnd, RangeInputs, RangeOutcome,
+    RangesBeside, RecommendedRange,
+};
+pub use sensitivity::{ChangedEnds, ChangedRange, Sensitivity, SensitivityInputs, SensitivityOutcome, Vary};
 pub use setup::{Thermal, WallInputs, WallSetup, WeakPlane};
-pub use stress_at::{AtToolface, AtToolfaceOutcome, WallStress};
-pub use tensile_cracks::{CrackArc, CrackPlace, CracksOutcome, TensileCracks};
+pub use shear::{Mode, WallDirection};
+pub use stress::{
+    AlongRadius, AtDistance, AtDistanceOutcome, AtToolface, AtToolfaceOutcome, FieldStress, ProfileOutcome,
+    RadialProfile, WallStress,
+};
+pub use tension::{CrackArc, CrackPlace, CracksOutcome, TensileCracks};
 pub use unrolled::{ImageInputs, ImageOutcome, PlaneTrace, WallImage};
-pub use vary::Vary;
+use wall::pressure_item;
 pub use wall::{AtPressure, Wall};

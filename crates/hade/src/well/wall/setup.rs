@@ -3,7 +3,7 @@
 
 use serde::{Deserialize, Serialize};
 
-use super::slip::PlaneAtWall;
+use super::shear::PlaneAtWall;
 use crate::card::Item;
 use crate::error::{Error, Result};
 use crate::frames::vector::apply;

@@ -2,7 +2,7 @@
 
 use serde::{Deserialize, Serialize};
 
-use super::kirsch::Kirsch;
+use super::elastic::Kirsch;
 use super::setup::{Seepage, Thermal, WallInputs, WallSetup, WeakPlane};
 use super::shear::ShearWall;
 use crate::card::{Card, Explain, Item};

@@ -1,0 +1,479 @@
+//! The two ends of the safe pressures of one place of a wall, in closed form, round the hole.
+//!
+//! With σθ = A − p, σz = Z, τθz² = T² and b = UCS − (q − 1) P_p:
+//! - closing in: (p − (A − b)/(1 + q)) (p − (Z − b)/q) ≥ T² / (q (1 + q)), above both roots;
+//! - within the wall: |q (A − Z − p) − (q − 1) G / 2| ≤ ½ (1 + q) √(G² − 4 q T²), with
+//!   G = UCS + (q − 1)(Z − P_p);
+//! - pushed out: the first with the roles of the stress across the wall and of those in it changed.
+
+use super::shear_wall::Window;
+use crate::rock::{Jet, MohrCoulomb};
+use crate::well::wall::elastic::Kirsch;
+use crate::well::wall::round::{CIRCLE, OnCircle, Peak, SAME, Wave, greatest, on_circle, smallest};
+
+/// A wall that is impermeable, of rock without a plane of weakness; Pa.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub(crate) struct ClosedForm {
+    kirsch: Kirsch,
+    line: MohrCoulomb,
+    pore: f64,
+    scale: f64,
+}
+
+impl ClosedForm {
+    /// `scale` is the size of the numbers at hand, for tolerances.
+    pub fn new(kirsch: &Kirsch, line: MohrCoulomb, pore: f64, scale: f64) -> Self {
+        ClosedForm { kirsch: *kirsch, line, pore, scale }
+    }
+
+    /// The pressures between which the whole wall holds.
+    pub fn window(&self) -> Window {
+        if let (Some(lower), Some(upper)) = (self.plain_lower(), self.plain_upper()) {
+            return Window::Open { lower: Some(lower), upper: Some(upper) };
+        }
+        if !self.holds_somewhere() {
+            return Window::Closed { crossed: None };
+        }
+        let lower = greatest(&self.lower_end(), self.scale);
+        let upper = smallest(self.upper_end(), self.scale);
+        if lower.value <= upper.value {
+            Window::Open { lower: Some(lower), upper: Some(upper) }
+        } else {
+            // The two have a meaning by themselves only where no place is beyond help.
+            let each = CIRCLE.cos.iter().zip(&CIRCLE.sin).all(|(c, s)| self.interval_at(*c, *s).is_some());
+            Window::Closed { crossed: each.then_some((lower.value, upper.value)) }
+        }
+    }
+
+    /// The lower end alone.
+    #[inline]
+    pub fn lower(&self) -> Option<f64> {
+        if let Some(lower) = self.plain_lower() {
+            return Some(lower.value);
+        }
+        match self.window() {
+            Window::Open { lower, .. } => lower.map(|peak| peak.value),
+            Window::Closed { .. } => None,
+        }
+    }
+
+    /// Both ends at one place, where any pressure holds there.
+    pub fn interval_at(&self, c: f64, s: f64) -> Option<(f64, f64)> {
+        let (lower, upper) = (self.lower_end().value(c, s), self.upper_end().value(c, s));
+        let can = self.within().at(c, s) >= 0.0 && self.discriminant().value(c, s) >= 0.0;
+        (can && lower <= upper).then_some((lower, upper))
+    }
+
+    /// The lower end where the hole closes in, if nothing else fails at it by bounds on the whole
+    /// wall: the safe pressures are an interval, so it is the end.
+    #[inline]
+    fn plain_lower(&self) -> Option<Peak> {
+        let closing = self.closing();
+        let peak = closing
+            .highest(self.kirsch.hoop, self.scale)
+            .unwrap_or_else(|| greatest(&Signed { root: closing, sign: 1.0 }, self.scale));
+        let bounds = self.bounds(peak.value);
+        (bounds.within && bounds.pushed).then_some(peak)
+    }
+
+    /// The upper end where the hole is pushed out, likewise.
+    fn plain_upper(&self) -> Option<Peak> {
+        let peak = smallest(self.upper_end().pushed(), self.scale);
+        let bounds = self.bounds(peak.value);
+        (bounds.within && bounds.closing).then_some(peak)
+    }
+
+    /// What certainly holds all round at a pressure. Hoop and axial stress have their crests at one
+    /// place, so both are straight lines in u, the cosine from there; with the largest τθz² all round
+    /// each condition is a convex function of u, and largest at u = 1 or −1.
+    #[inline]
+    fn bounds(&self, pressure: f64) -> Bounds {
+        let (q, ucs) = (self.line.q, self.line.ucs);
+        let mean = self.kirsch.hoop.joined(1.0, self.kirsch.axial, 0.5);
+        let half = self.kirsch.hoop.joined(-1.0, self.kirsch.axial, 0.5);
+        let shear = self.kirsch.shear_squared.mean + self.kirsch.shear_squared.amplitude();
+        let across = pressure - self.pore;
+        let (m0, m1) = (mean.mean - 0.5 * pressure - self.pore, mean.amplitude());
+        let (d0, d1) = (half.mean - 0.5 * pressure, half.amplitude());
+        let mut holds = Bounds { closing: true, within: true, pushed: true };
+        for u in [1.0, -1.0] {
+            let (m, d) = (m0 + u * m1, d0 + u * d1);
+            let radius = (d * d + shear).sqrt();
+            holds.closing &= m + radius <= ucs + q * across;
+            holds.within &= (1.0 + q) * radius <= ucs + (q - 1.0) * m;
+            holds.pushed &= across + q * (radius - m) <= ucs;
+        }
+        holds
+    }
+
+    /// Within the wall: UCS + (q − 1)(σz − P_p), which bounds what the axial stress lets it bear.
+    fn within(&self) -> Wave {
+        let q1 = self.line.q - 1.0;
+        self.kirsch.axial.scaled(q1, self.line.ucs - q1 * self.pore)
+    }
+
+    fn discriminant(&self) -> Discriminant {
+        Discriminant { within: self.within(), shear_squared: self.kirsch.shear_squared, q4: 4.0 * self.line.q }
+    }
+
+    /// The pressures between which a place closes in by e1 and by e2.
+    #[inline(always)]
+    fn closing(&self) -> Root {
+        let (q, kirsch) = (self.line.q, &self.kirsch);
+        let b = self.line.ucs - (q - 1.0) * self.pore;
+        let (by_hoop, by_axial) = (1.0 / (1.0 + q), 1.0 / q);
+        Root::new(
+            kirsch.hoop.scaled(by_hoop, -b * by_hoop),
+            kirsch.axial.scaled(by_axial, -b * by_axial),
+            kirsch.shear_squared.scaled(by_hoop * by_axial, 0.0),
+        )
+    }
+
+    /// The lowest pressure that holds at each place, where any does.
+    pub fn lower_end(&self) -> LowerEnd {
+        LowerEnd { closing: self.closing(), within: Within::new(&self.kirsch, self.line, self.discriminant(), -1.0) }
+    }
+
+    /// The highest pressure that holds at each place, where any does.
+    pub fn upper_end(&self) -> UpperEnd {
+        UpperEnd::new(&self.kirsch, self.line, self.pore, self.discriminant())
+    }
+
+    /// Whether every place of the wall holds at some pressure.
+    fn holds_somewhere(&self) -> bool {
+        let g = self.within();
+        let t = self.kirsch.shear_squared;
+        let least = g.mean - g.amplitude();
+        if least < 0.0 {
+            return false;
+        }
+        if least * least >= 4.0 * self.line.q * (t.mean + t.amplitude()) {
+            return true;
+        }
+        smallest(self.discriminant(), self.scale * self.scale).value >= 0.0
+    }
+}
+
+/// What certainly holds all round.
+struct Bounds {
+    closing: bool,
+    within: bool,
+    pushed: bool,
+}
+
+/// ½ (x + y) ± √((½ (x − y))² + v), with x, y, v as waves.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub(crate) struct Root {
+    mean: Wave,
+    half: Wave,
+    v: Wave,
+}
+
+impl Root {
+    pub fn new(x: Wave, y: Wave, v: Wave) -> Self {
+        Root { mean: x.joined(1.0, y, 0.5), half: x.joined(-1.0, y, 0.5), v }
+    }
+
+    /// The root itself. The square of a shear is not negative; its wave may be by a last bit.
+    #[inline(always)]
+    fn radius(&self, c: f64, s: f64) -> f64 {
+        let (m, v) = (self.half.at(c, s), self.v.at(c, s));
+        (m * m + if v > 0.0 { v } else { 0.0 }).sqrt()
+    }
+
+    /// The highest place of the larger root, if Newton climbs to one from the crest of the hoop
+    /// stress that is proved to be the highest of all: nothing is scanned.
+    ///
+    /// With p the value there, (p − x)(p − y) − v is a trigonometric polynomial of degree two with a
+    /// double zero at that place: (1 − cos ψ)(A + B cos ψ + C sin ψ), ψ counted from it. It is nowhere
+    /// below zero, so p nowhere below the root, when A ≥ √(B² + C²) and p is above x and y all round.
+    #[inline]
+    fn highest(&self, hoop: Wave, scale: f64) -> Option<Peak> {
+        let swing = hoop.amplitude();
+        if swing <= SAME * scale {
+            return None;
+        }
+        let (mut c, mut s) = (hoop.cos / swing, hoop.sin / swing);
+        let mut jet = self.jet(1.0, c, s);
+        let mut settled = false;
+        for _ in 0..8 {
+            if jet.bend >= 0.0 {
+                return None;
+            }
+            let step = -jet.slope / jet.bend;
+            if step.abs() > 1.0 {
+                return None;
+            }
+            // Turned by the step; a short one by its series.
+            let (sin, cos) = if step.abs() < 1e-3 {
+                let square = step * step;
+                (step * (1.0 - square / 6.0), 1.0 - square * (0.5 - square / 24.0))
+            } else {
+                step.sin_cos()
+            };
+            (c, s) = (c * cos - s * sin, s * cos + c * sin);
+            if step.abs() < 1e-9 {
+                settled = true;
+                break;
+            }
+            jet = self.jet(1.0, c, s);
+        }
+        let p = jet.value;
+        let apart = |w: Wave| [p - w.mean, -(w.cos * c + w.sin * s), w.cos * s - w.sin * c];
+        let x = self.mean.joined(1.0, self.half, 1.0);
+        let y = self.mean.joined(-1.0, self.half, 1.0);
+        let ([p0, p1, p2], [q0, q1, q2]) = (apart(x), apart(y));
+        let constant = p0 * q0 + 0.5 * (p1 * q1 + p2 * q2) - self.v.mean;
+        let (c2, s2) = (0.5 * (p1 * q1 - p2 * q2), 0.5 * (p1 * q2 + p2 * q1));
+        let rest = constant - c2;
+        let above = |[mean, cos, sin]: [f64; 3]| mean > 0.0 && mean * mean >= cos * cos + sin * sin;
+        let proved = rest > 0.0 && rest * rest > 4.0 * (c2 * c2 + s2 * s2) * (1.0 + 1e-9);
+        (settled && proved && above([p0, p1, p2]) && above([q0, q1, q2])).then(|| Peak {
+            phi: on_circle(s.atan2(c)),
+            value: p,
+            flat: false,
+        })
+    }
+
+    /// The larger and the smaller.
+    #[inline(always)]
+    pub fn both(&self, c: f64, s: f64) -> (f64, f64) {
+        let (mean, r) = (self.mean.at(c, s), self.radius(c, s));
+        (mean + r, mean - r)
+    }
+
+    pub fn jet(&self, sign: f64, c: f64, s: f64) -> Jet {
+        let (m, m1, m2) = (self.half.at(c, s), self.half.slope(c, s), self.half.bend(c, s));
+        let r = self.radius(c, s);
+        let (r1, r2) = if r > 0.0 {
+            let r1 = (m * m1 + 0.5 * self.v.slope(c, s)) / r;
+            (r1, (m1 * m1 + m * m2 + 0.5 * self.v.bend(c, s) - r1 * r1) / r)
+        } else {
+            (0.0, 0.0)
+        };
+        Jet {
+            value: self.mean.at(c, s) + sign * r,
+            slope: self.mean.slope(c, s) + sign * r1,
+            bend: self.mean.bend(c, s) + sign * r2,
+        }
+    }
+}
+
+/// One of the two values of a root.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub(crate) struct Signed {
+    root: Root,
+    sign: f64,
+}
+
+impl OnCircle for Signed {
+    #[inline(always)]
+    fn value(&self, c: f64, s: f64) -> f64 {
+        self.root.mean.at(c, s) + self.sign * self.root.radius(c, s)
+    }
+    fn jet(&self, _piece: usize, c: f64, s: f64) -> Jet {
+        self.root.jet(self.sign, c, s)
+    }
+}
+
+/// G² − 4 q T²: no pressure holds within the wall where it is negative.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub(crate) struct Discriminant {
+    pub within: Wave,
+    pub shear_squared: Wave,
+    pub q4: f64,
+}
+
+impl OnCircle for Discriminant {
+    #[inline(always)]
+    fn value(&self, c: f64, s: f64) -> f64 {
+        let g = self.within.at(c, s);
+        g * g - self.q4 * self.shear_squared.at(c, s)
+    }
+    #[inline(always)]
+    fn jet(&self, _piece: usize, c: f64, s: f64) -> Jet {
+        let (g, t) = (self.within, self.shear_squared);
+        let (g0, g1, g2) = (g.at(c, s), g.slope(c, s), g.bend(c, s));
+        Jet {
+            value: g0 * g0 - self.q4 * t.at(c, s),
+            slope: 2.0 * g0 * g1 - self.q4 * t.slope(c, s),
+            bend: 2.0 * (g1 * g1 + g0 * g2) - self.q4 * t.bend(c, s),
+        }
+    }
+}
+
+/// An end within the wall: middle ± share · √discriminant.
+#[derive(Clone, Copy, Debug, PartialEq)]
+struct Within {
+    middle: Wave,
+    share: f64,
+    discriminant: Discriminant,
+}
+
+impl Within {
+    fn new(kirsch: &Kirsch, line: MohrCoulomb, discriminant: Discriminant, sign: f64) -> Self {
+        let (a, z, g) = (kirsch.hoop, kirsch.axial, discriminant.within.scaled(0.5 * (line.q - 1.0) / line.q, 0.0));
+        Within {
+            middle: Wave { mean: a.mean - z.mean - g.mean, cos: a.cos - z.cos - g.cos, sin: a.sin - z.sin - g.sin },
+            share: sign * 0.5 * (1.0 + line.q) / line.q,
+            discriminant,
+        }
+    }
+
+    #[inline(always)]
+    fn value(&self, c: f64, s: f64) -> f64 {
+        let d = self.discriminant.value(c, s);
+        self.middle.at(c, s) + self.share * (if d > 0.0 { d } else { 0.0 }).sqrt()
+    }
+
+    fn jet(&self, c: f64, s: f64) -> Jet {
+        let d = self.discriminant.jet(0, c, s);
+        let r = d.value.max(0.0).sqrt();
+        let (r1, r2) = if r > 0.0 {
+            let r1 = 0.5 * d.slope / r;
+            (r1, (0.5 * d.bend - r1 * r1) / r)
+        } else {
+            (0.0, 0.0)
+        };
+        Jet {
+            value: self.middle.at(c, s) + self.share * r,
+            slope: self.middle.slope(c, s) + self.share * r1,
+            bend: self.middle.bend(c, s) + self.share * r2,
+        }
+    }
+}
+
+/// The lowest pressure that holds: the larger of two lower ends.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub(crate) struct LowerEnd {
+    closing: Root,
+    within: Within,
+}
+
+impl OnCircle for LowerEnd {
+    #[inline(always)]
+    fn value(&self, c: f64, s: f64) -> f64 {
+        let (closing, within) = (self.closing.both(c, s).0, self.within.value(c, s));
+        if within > closing { within } else { closing }
+    }
+    fn pieces(&self) -> usize {
+        2
+    }
+    fn jet(&self, piece: usize, c: f64, s: f64) -> Jet {
+        if piece == 0 { self.closing.jet(1.0, c, s) } else { self.within.jet(c, s) }
+    }
+}
+
+/// The highest pressure that holds: the smaller of two upper ends.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub(crate) struct UpperEnd {
+    pushed: Root,
+    within: Within,
+}
+
+impl UpperEnd {
+    pub fn new(kirsch: &Kirsch, line: MohrCoulomb, pore: f64, discriminant: Discriminant) -> Self {
+        let q = line.q;
+        let h = (pore + line.ucs) / q - pore;
+        let share = q / (1.0 + q);
+        UpperEnd {
+            pushed: Root::new(
+                kirsch.hoop.scaled(share, h * share),
+                kirsch.axial.scaled(q, h * q),
+                kirsch.shear_squared.scaled(q * share, 0.0),
+            ),
+            within: Within::new(kirsch, line, discriminant, 1.0),
+        }
+    }
+
+    /// The highest pressure at which the place is not pushed out.
+    pub fn pushed(&self) -> Signed {
+        Signed { root: self.pushed, sign: -1.0 }
+    }
+}
+
+impl OnCircle for UpperEnd {
+    #[inline(always)]
+    fn value(&self, c: f64, s: f64) -> f64 {
+        let (pushed, within) = (self.pushed.both(c, s).1, self.within.value(c, s));
+        if within < pushed { within } else { pushed }
+    }
+    fn pieces(&self) -> usize {
+        2
+    }
+    fn jet(&self, piece: usize, c: f64, s: f64) -> Jet {
+        if piece == 0 { self.pushed.jet(-1.0, c, s) } else { self.within.jet(c, s) }
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::stress::tensor::Tensor;
+
+    fn wall(ucs: f64, q: f64) -> ClosedForm {
+        let kirsch = Kirsch::new(Tensor([52.0, 44.0, 63.0, 3.0, 5.0, -4.0]), 0.27);
+        ClosedForm::new(&kirsch, MohrCoulomb { ucs, q }, 21.0, kirsch.scale() + ucs + 21.0)
+    }
+
+    /// Each end is where the criterion, by eigenvalues of the wall's tensor, is just met.
+    #[test]
+    fn the_ends_meet_the_criterion_and_hold_between() {
+        let wall = wall(40.0, 3.2);
+        let excess = |phi: f64, p: f64| {
+            let [s1, _, s3] = wall.kirsch.at(0.5 * phi, p).tensor().eigen().values;
+            s1 - 21.0 - 3.2 * (s3 - 21.0) - 40.0
+        };
+        for k in 0..72 {
+            let phi = f64::from(k) * 0.09;
+            let (s, c) = phi.sin_cos();
+            let (lower, upper) = wall.interval_at(c, s).unwrap();
+            assert!(excess(phi, lower).abs() < 1e-11 && excess(phi, upper).abs() < 1e-11, "{phi}");
+            assert!(excess(phi, 0.5 * (lower + upper)) < 0.0);
+            assert!(excess(phi, lower - 1e-6) > 0.0 && excess(phi, upper + 1e-6) > 0.0);
+        }
+    }
+
+    /// The bounds only say what the whole search says too.
+    #[test]
+    fn the_short_way_is_the_long_way() {
+        for (ucs, q) in [(40.0, 3.2), (10.0, 2.5), (25.0, 4.0), (60.0, 2.0)] {
+            let wall = wall(ucs, q);
+            let (lower, upper) =
+                (greatest(&wall.lower_end(), wall.scale).value, smallest(wall.upper_end(), wall.scale).value);
+            if let Some(short) = wall.plain_lower() {
+                assert!(lower <= upper && (short.value - lower).abs() < 1e-12, "{ucs} {q}");
+            }
+            if let Some(short) = wall.plain_upper() {
+                assert!(lower <= upper && (short.value - upper).abs() < 1e-12, "{ucs} {q}");
+            }
+        }
+        // And it is there to be taken.
+        assert!([40.0, 60.0, 80.0].iter().any(|ucs| wall(*ucs, 3.2).plain_lower().is_some()));
+        assert!([40.0, 60.0, 80.0].iter().any(|ucs| wall(*ucs, 3.2).plain_upper().is_some()));
+    }
+
+    #[test]
+    fn jets_are_the_derivatives() {
+        let wall = wall(10.0, 2.5);
+        let (lower, upper) = (wall.lower_end(), wall.upper_end());
+        for k in 0..40 {
+            let (x, h) = (f64::from(k) * 0.157, 1e-4);
+            for (end, sign) in [(&lower as &dyn OnCircle, 1.0), (&upper, -1.0)] {
+                let whole = |x: f64| {
+                    let all = (0..end.pieces()).map(|piece| sign * end.jet(piece, x.cos(), x.sin()).value);
+                    sign * all.fold(f64::NEG_INFINITY, f64::max)
+                };
+                assert!((whole(x) - end.value(x.cos(), x.sin())).abs() < 1e-12);
+                for piece in 0..end.pieces() {
+                    let at = |x: f64| end.jet(piece, x.cos(), x.sin());
+                    let (a, b, c) = (at(x - h), at(x), at(x + h));
+                    let slope = (c.value - a.value) / (2.0 * h);
+                    assert!((slope - b.slope).abs() < 1e-5, "{x}: {slope} {}", b.slope);
+                    let bend = (c.slope - a.slope) / (2.0 * h);
+                    assert!((bend - b.bend).abs() < 1e-4, "{x}: {bend} {}", b.bend);
+                }
+            }
+        }
+    }
+}

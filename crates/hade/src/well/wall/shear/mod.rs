@@ -1,0 +1,19 @@
+//! Shear failure of a wall as plain numbers: by how much the strength is exceeded, the pressures between
+//! which the whole wall holds, and the arcs that fail outside them.
+
+mod arcs;
+mod ends;
+mod excess;
+mod mode;
+mod search;
+mod shear_wall;
+mod slip;
+mod spans;
+mod width;
+
+pub(crate) use arcs::{Arcs, MOST_ARCS, arcs_between};
+pub(crate) use mode::mode_of;
+pub use mode::{Mode, WallDirection};
+pub(crate) use shear_wall::{LeastBad, ShearWall, Window};
+pub(crate) use slip::PlaneAtWall;
+pub(crate) use width::AtWidth;
