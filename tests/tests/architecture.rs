@@ -7,7 +7,7 @@ use hade_tests::root;
 
 /// Each module with its place in `error · units ← card, sheet ← … ← prelude`. A module imports only
 /// from places before its own, or from itself.
-const ORDER: [(&str, u32); 15] = [
+const ORDER: [(&str, u32); 16] = [
     ("error", 0),
     ("units", 1),
     ("lines", 2),
@@ -22,7 +22,8 @@ const ORDER: [(&str, u32); 15] = [
     ("show", 9),
     ("replay", 9),
     ("prelude", 10),
-    ("lib", 11),
+    ("samples", 11),
+    ("lib", 12),
 ];
 
 /// The Rust files of the library with the module each belongs to.

@@ -6,6 +6,7 @@ use clap::{Args, Subcommand};
 use hade_memo::{FoundTemplate, Place, check_template, copy_template, templates};
 
 use crate::Failure;
+use crate::bar::Bar;
 
 /// Arguments of `hade template`.
 #[derive(Debug, Args)]
@@ -52,7 +53,11 @@ pub(crate) fn run(args: &TemplateArgs) -> Result<(), Failure> {
             );
         }
         TemplateCommand::Check { folder } => {
-            let sheets = check_template(folder)?;
+            let mut bar = Bar::new();
+            let sheets =
+                check_template(folder, |number, of, what| bar.say(&format!("sample {number} of {of}: {what}")));
+            bar.clear();
+            let sheets = sheets?;
             eprintln!("{} takes everything; the largest sample has {sheets} sheets", folder.display());
         }
     }

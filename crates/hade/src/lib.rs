@@ -11,6 +11,9 @@ mod lines;
 pub mod prelude;
 pub mod replay;
 pub mod rock;
+#[cfg(any(test, feature = "samples"))]
+#[doc(hidden)]
+pub mod samples;
 pub mod sheet;
 pub mod show;
 pub mod stress;

@@ -161,18 +161,13 @@ pub fn replay(card: &Card) -> Result<Replayed> {
     })
 }
 
-#[cfg(any(test, feature = "samples"))]
-mod samples;
-#[cfg(any(test, feature = "samples"))]
-#[doc(hidden)]
-pub use samples::samples;
-
 #[cfg(test)]
 mod tests {
     use std::collections::BTreeSet;
     use std::path::Path;
 
     use super::*;
+    use crate::samples::samples;
 
     #[test]
     fn every_kind_in_the_source_is_in_the_table_and_has_a_sample() {

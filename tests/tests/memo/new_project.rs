@@ -14,7 +14,7 @@ fn new(folder: &Path, arguments: &[&str]) -> Output {
 #[test]
 fn a_new_project_becomes_a_memo_at_once_in_either_units() {
     let place = tempfile::tempdir().unwrap();
-    for (units, given) in [("metric", "2350"), ("field", "7700")] {
+    for (units, given) in [("metric", "2350"), ("field", "2346.96")] {
         let made = new(place.path(), &[units, "--units", units, "--project", "Grey Bank", "--number", "GB-1"]);
         assert_success(&made);
         assert!(said(&made).contains("hade memo"), "{}", said(&made));

@@ -44,16 +44,18 @@ impl ShearWall {
     pub fn failing(&self, pressure: f64) -> Arcs {
         let found = with_law!(self.law, criterion => edges(&self.excess(criterion, pressure), self.scale()));
         let noise = NOISE * self.scale();
-        arcs_between(found, |phi| self.excess_at(pressure, phi) > noise)
+        let blurred = if self.plane.is_some() { BLURRED } else { 0.0 };
+        arcs_between(found, blurred, |phi| self.excess_at(pressure, phi) > noise)
     }
 }
 
-/// Stretches narrower than this in φ are no arcs and no gaps: an edge is not known more closely where the
-/// shear on a plane of weakness ceases, as the root of a square that is rounded.
-const NARROW: f64 = 1e-7;
+/// An edge on a plane of weakness is not known more closely than this in φ where the shear on it ceases, as the
+/// root of a square that is rounded.
+const BLURRED: f64 = 3e-8;
 
-/// The arcs that fail among the stretches between edges.
-pub(crate) fn arcs_between(mut found: Edges, fails: impl Fn(f64) -> bool) -> Arcs {
+/// The arcs that fail among the stretches between edges. Stretches no wider than `blurred` in φ are neither
+/// arcs nor gaps.
+pub(crate) fn arcs_between(mut found: Edges, blurred: f64, fails: impl Fn(f64) -> bool) -> Arcs {
     let cuts = found.places.get_mut(..found.count).unwrap_or_default();
     for cut in &mut *cuts {
         *cut = on_circle(*cut);
@@ -70,7 +72,7 @@ pub(crate) fn arcs_between(mut found: Edges, fails: impl Fn(f64) -> bool) -> Arc
     let next = cuts.iter().skip(1).copied().chain(std::iter::once(first + TAU));
     let mut stretches = [(0.0, 0.0, false); Edges::MOST];
     let mut count = 0;
-    for (from, to) in cuts.iter().copied().zip(next).filter(|(from, to)| to - from > NARROW) {
+    for (from, to) in cuts.iter().copied().zip(next).filter(|(from, to)| to - from > blurred) {
         if let Some(cell) = stretches.get_mut(count) {
             *cell = (from, to, fails(from, to));
             count += 1;

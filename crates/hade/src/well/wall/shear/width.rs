@@ -50,8 +50,15 @@ impl ShearWall {
             low = low.min(from);
             high = high.max(to);
         }
-        let (low, high) = ((low - 1e-3 * scale).max(self.pore - 64.0 * scale), high + 1e-3 * scale);
+        let (mut low, high) = (low - 1e-3 * scale, high + 1e-3 * scale);
         let fine = |p: f64| self.failing(p).widest() <= width;
+        // A place between those that were looked at may hold at a lower pressure still.
+        let (least, mut step) = (self.pore - 64.0 * scale, 1e-3 * scale);
+        while low > least && fine(low) {
+            low -= step;
+            step *= 2.0;
+        }
+        let low = low.max(least);
         let place = |k: u32| low + (high - low) * f64::from(k) / f64::from(PIECES);
         match (1..=PIECES).find(|k| low < high && fine(place(*k))) {
             Some(k) => AtWidth::At(self.boundary(place(k - 1), place(k), fine)),

@@ -43,7 +43,7 @@ impl ShearWall {
         let room = Room { wall: self.effective_wall(), tensile, x: pressure - self.pore };
         let scale = self.scale() + tensile + pressure.abs();
         let noise = 4e-12 * scale;
-        arcs_between(edges(&Below(room), scale), |phi| self.least_in_wall(pressure, phi) + tensile < -noise)
+        arcs_between(edges(&Below(room), scale), 0.0, |phi| self.least_in_wall(pressure, phi) + tensile < -noise)
     }
 
     /// The least effective principal stress in the wall's tangent plane at φ = 2θ.

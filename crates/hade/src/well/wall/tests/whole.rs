@@ -154,6 +154,19 @@ fn all_widths_up_to_the_whole_wall() {
     assert!(!wall.failing_arcs(at(180.0) + 1.pa()).unwrap().whole_wall());
 }
 
+/// The first place that holds, as the pressure rises, may lie between those that the search looks at.
+#[test]
+fn a_narrow_gap_lets_a_closed_wall_keep_to_a_width() {
+    let s = [25_920_465.5, 52_230_207.6, 76_089_693.7, -3_977_155.5, -747_796.0, -1_754_970.2].map(|pa| pa * 1e-6);
+    let rock = Rock { tensile_strength: 0.mpa(), ..rock(Strength::mohr_coulomb(21.660_598.mpa(), 0.deg())) };
+    let [nn, ee, dd, ne, ed, nd] = s;
+    let stress = components([nn, ee, dd, ne, ed, nd], 0.0, 0.0);
+    let wall = Wall::new(WallInputs { stress, pore: 19.448_383.mpa(), rock }).unwrap();
+    let limits = wall.limits_at_width(157.864.deg()).unwrap();
+    assert!(limits.upper_shear.pressure().is_none(), "no pressure keeps the whole wall");
+    assert!(limits.card().passed(), "{:#?}", limits.card().checks);
+}
+
 fn any_wall() -> impl Strategy<Value = Wall> {
     let stress = (20.0..80.0_f64, 20.0..80.0_f64, 20.0..80.0_f64, -6.0..6.0_f64, -6.0..6.0_f64, -6.0..6.0_f64);
     let at = (0.0..180.0_f64, 0.0..360.0_f64, 5.0..25.0_f64);
