@@ -10,6 +10,7 @@ use super::tension::{Parting, parting};
 use super::wall::Wall;
 use super::width::AtWidth;
 use crate::error::Result;
+use crate::interrupt;
 use crate::units::{Angle, Pressure, Quantity, require_between};
 
 /// The pressures that limit a wall. None of them is a recommendation: see
@@ -77,6 +78,7 @@ impl Wall {
     }
 
     fn limits_within(&self, width: Angle) -> Limits {
+        interrupt::check();
         let window = self.shear.window();
         let none_safe = |kind, own_side| Limit::none_safe(self, kind, self.shear.least_bad(), own_side);
         let (lower, upper) = match window {
