@@ -5,10 +5,11 @@ use std::path::{Path, PathBuf};
 
 use hade_tests::root;
 
-/// Each module with its place in `error · units ← card, sheet ← … ← prelude`. A module imports only
+/// Each module with its place in `error · interrupt · units ← card, sheet ← … ← prelude`. A module imports only
 /// from places before its own, or from itself.
 const ORDER: [(&str, u32); 16] = [
     ("error", 0),
+    ("interrupt", 0),
     ("units", 1),
     ("lines", 2),
     ("card", 2),

@@ -1,8 +1,9 @@
-//! What `run` and `memo` share: the limit on a cell's time, and the words for a cell that failed.
+//! What `run` and `memo` share: the limit on a cell's time, and the words for a cell that failed and for Ctrl-C.
 
+use std::fmt;
 use std::time::Duration;
 
-use hade_kernel::NotebookFailure;
+use hade_kernel::{NotebookFailure, NotebookRun};
 
 /// Reads a time limit in seconds.
 pub(crate) fn seconds(text: &str) -> Result<Duration, String> {
@@ -12,6 +13,29 @@ pub(crate) fn seconds(text: &str) -> Result<Duration, String> {
         .filter(|limit| !limit.is_zero())
         .ok_or_else(|| "give a number of seconds above 0, such as 60".to_owned())
 }
+
+/// Ctrl-C was pressed.
+#[derive(Debug)]
+pub(crate) struct Interrupted {
+    cell: usize,
+    of: usize,
+    then: &'static str,
+}
+
+impl Interrupted {
+    /// In the last cell of a run; `then` says what became of the files.
+    pub(crate) fn of(run: &NotebookRun, then: &'static str) -> Interrupted {
+        Interrupted { cell: run.cells.len(), of: run.notebook.code_cells().len(), then }
+    }
+}
+
+impl fmt::Display for Interrupted {
+    fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
+        write!(f, "interrupted in cell {} of {}; {}", self.cell, self.of, self.then)
+    }
+}
+
+impl std::error::Error for Interrupted {}
 
 /// The cell, its sentence, and under it what the compiler or the program said beyond that.
 pub(crate) fn cell_failure(failure: &NotebookFailure) -> String {

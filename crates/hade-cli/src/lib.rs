@@ -52,7 +52,8 @@ pub fn main() -> ExitCode {
         Ok(()) => ExitCode::SUCCESS,
         Err(failure) => {
             eprintln!("error: {failure}");
-            ExitCode::FAILURE
+            // As a shell reports a program that Ctrl-C ended.
+            if failure.is::<cells::Interrupted>() { ExitCode::from(130) } else { ExitCode::FAILURE }
         }
     }
 }

@@ -13,7 +13,7 @@ use hade_memo::{EarlierMemo, MemoInput, MemoOptions, Project, build};
 
 use crate::Failure;
 use crate::bar::Bar;
-use crate::cells::{cell_failure, seconds};
+use crate::cells::{Interrupted, cell_failure, seconds};
 
 /// Arguments of `hade memo`.
 #[derive(Debug, Args)]
@@ -54,10 +54,13 @@ pub(crate) fn run(args: &MemoArgs) -> Result<(), Failure> {
     }
 
     let mut bar = Bar::new();
-    let run_options = RunOptions { cell_timeout: args.cell_timeout, allow_errors: false };
+    let run_options = RunOptions { cell_timeout: args.cell_timeout, allow_errors: false, stop_on_ctrl_c: true };
     let run = run_notebook(&args.notebook, &run_options, &mut bar);
     bar.clear();
     let run = run?;
+    if run.interrupted {
+        return Err(Interrupted::of(&run, "no memo was written, and an earlier one stays as it was").into());
+    }
     if let Some(message) = failed_cell(&run) {
         return Err(message.into());
     }

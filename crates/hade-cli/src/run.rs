@@ -4,11 +4,14 @@ use std::path::{Path, PathBuf};
 use std::time::{Duration, Instant};
 
 use clap::Args;
-use hade_kernel::{NotebookRun, RunOptions, run_notebook};
+use hade_kernel::{NotebookFailure, NotebookRun, RunOptions, run_notebook};
 
 use crate::Failure;
 use crate::bar::Bar;
-use crate::cells::{cell_failure, seconds};
+use crate::cells::{Interrupted, cell_failure, seconds};
+
+/// So many failed cells are told with all that the compiler or the program said.
+const IN_FULL: usize = 3;
 
 /// Arguments of `hade run`.
 #[derive(Debug, Args)]
@@ -33,10 +36,13 @@ pub(crate) fn run(args: &RunArgs) -> Result<(), Failure> {
         check_target(target)?;
     }
     let mut bar = Bar::new();
-    let options = RunOptions { cell_timeout: args.cell_timeout, allow_errors: args.allow_errors };
+    let options = RunOptions { cell_timeout: args.cell_timeout, allow_errors: args.allow_errors, stop_on_ctrl_c: true };
     let run = run_notebook(&args.notebook, &options, &mut bar);
     bar.clear();
     let run = run?;
+    if run.interrupted {
+        return Err(Interrupted::of(&run, "nothing was written, and the notebook stays as it was").into());
+    }
     let target = args.output.as_ref().unwrap_or(&args.notebook);
     run.notebook.save(target)?;
     if run.failure().is_some() {
@@ -64,11 +70,17 @@ fn check_target(target: &Path) -> Result<(), Failure> {
 /// The message for a notebook with cells that failed.
 fn failures(run: &NotebookRun, target: &str) -> String {
     let mut message = String::new();
-    for cell in &run.cells {
-        let Some(error) = &cell.outcome.error else {
-            continue;
-        };
-        message.push_str(&cell_failure(&hade_kernel::NotebookFailure { number: cell.number, error: error.clone() }));
+    let failed = run.cells.iter().filter_map(|cell| {
+        let error = cell.outcome.error.clone()?;
+        Some(NotebookFailure { number: cell.number, error })
+    });
+    for (number, failure) in failed.enumerate() {
+        // With --allow-errors there may be many; the notebook holds all of each.
+        if number < IN_FULL {
+            message.push_str(&cell_failure(&failure));
+        } else {
+            message.push_str(&format!("{failure}\n"));
+        }
     }
     let all = run.notebook.code_cells().len();
     if run.cells.len() < all {

@@ -2,7 +2,7 @@
 
 use std::fs::{self, File, OpenOptions, TryLockError};
 use std::path::{Path, PathBuf};
-use std::time::Duration;
+use std::time::{Duration, SystemTime};
 use std::{env, io, thread};
 
 use crate::error::{Error, Result};
@@ -15,8 +15,14 @@ const CACHE_VAR: &str = "HADE_CACHE";
 /// path: what is compiled does not survive a move.
 const STAMP: &str = "complete";
 
-/// Held (shared) by every running session.
+/// Held (shared) by every running session, in the cache and in the session folder it started from.
 const IN_USE: &str = "in-use";
+
+/// Where the whole text of cells goes that print too much.
+pub(crate) const OUTPUTS: &str = "outputs";
+
+/// A session folder for another compiler, not used for so long, is removed.
+const LONG_UNUSED: Duration = Duration::from_secs(30 * 24 * 3600);
 
 /// The folder with everything that is compiled once: `$HADE_CACHE`, or `hade` in the user's cache
 /// folder.
@@ -74,7 +80,7 @@ pub fn clean() -> Result<CacheReport> {
 fn name_is_ours(path: &Path) -> bool {
     path.file_name().is_some_and(|name| {
         let name = name.to_string_lossy();
-        name.starts_with("libraries-") || name.starts_with("session-")
+        name.starts_with("libraries-") || name.starts_with("session-") || name == OUTPUTS
     })
 }
 
@@ -106,16 +112,52 @@ pub(crate) fn lock(cache: &Path, progress: &mut dyn Progress) -> Result<File> {
     Ok(file)
 }
 
-/// Says that a session uses the cache until the returned file is dropped.
-pub(crate) fn hold(cache: &Path) -> Result<File> {
-    let path = cache.join(IN_USE);
-    let file = open(&path)?;
+/// Says that a session uses a folder until the returned file is dropped.
+pub(crate) fn hold(folder: &Path) -> Result<File> {
+    let path = folder.join(IN_USE);
+    let file = match open(&path) {
+        // Somebody else's cache, which is not to be written, can be used all the same.
+        Err(_) if path.exists() => File::open(&path).map_err(Error::file("open", &path))?,
+        opened => opened?,
+    };
     file.lock_shared().map_err(Error::file("lock", &path))?;
+    // Says when it was last used.
+    let _ = file.set_modified(SystemTime::now());
     Ok(file)
 }
 
 fn open(path: &Path) -> Result<File> {
     OpenOptions::new().create(true).truncate(false).write(true).open(path).map_err(Error::file("open", path))
+}
+
+/// Removes what a newer version of `hade` has left behind: session folders that nobody holds, of the same compiler at
+/// once and of others after a month, and libraries that no session folder names. The caller holds the cache's lock.
+pub(crate) fn prune(cache: &Path, session: &Path, libraries: &Path) {
+    let named = |beginning: &str| -> Vec<PathBuf> {
+        let entries = fs::read_dir(cache).into_iter().flatten().flatten();
+        let begins =
+            |path: &PathBuf| path.file_name().is_some_and(|name| name.to_string_lossy().starts_with(beginning));
+        entries.map(|entry| entry.path()).filter(begins).collect()
+    };
+    let mut needed = vec![libraries.to_path_buf()];
+    let all_libraries = named("libraries-");
+    for folder in named("session-").into_iter().filter(|folder| folder != session) {
+        let plan = fs::read_to_string(folder.join("plan")).unwrap_or_default();
+        let own = all_libraries.iter().find(|libraries| plan.contains(&*libraries.to_string_lossy()));
+        let unused = fs::metadata(folder.join(IN_USE)).and_then(|meta| meta.modified()).ok();
+        let unused = unused.and_then(|used| used.elapsed().ok()).unwrap_or(LONG_UNUSED);
+        let old = own.is_none_or(|own| own == libraries) || unused >= LONG_UNUSED;
+        let held = open(&folder.join(IN_USE)).map(|file| (file.try_lock().is_err(), file));
+        match held {
+            Ok((false, _lock)) if old => {
+                let _ = fs::remove_dir_all(&folder);
+            }
+            _ => needed.extend(own.cloned()),
+        }
+    }
+    for folder in all_libraries.iter().filter(|folder| !needed.contains(folder)) {
+        let _ = fs::remove_dir_all(folder);
+    }
 }
 
 /// Whether a folder of the cache was finished, at the place where it is.
@@ -189,6 +231,45 @@ mod tests {
         let moved = dir.path().join("session-y");
         fs::rename(&folder, &moved).map_err(Error::file("move", &folder))?;
         assert!(!is_whole(&moved));
+        Ok(())
+    }
+
+    #[test]
+    fn older_sessions_go_unless_they_are_held() -> Result<()> {
+        let dir = tempfile::tempdir().map_err(Error::file("make", "a folder"))?;
+        let cache = dir.path();
+        let make = |session: &str, libraries: &str| -> Result<PathBuf> {
+            let (folder, libraries) = (cache.join(session), cache.join(libraries));
+            for folder in [&folder, &libraries] {
+                fs::create_dir_all(folder).map_err(Error::file("make", folder))?;
+            }
+            fs::write(folder.join("plan"), format!("cell -Ldependency={}/lib", libraries.display()))
+                .map_err(Error::file("write", &folder))?;
+            hold(&folder).map(|_| folder)
+        };
+        let (old, held, new) =
+            (make("session-1", "libraries-1")?, make("session-2", "libraries-1")?, make("session-3", "libraries-1")?);
+        let (recent, long) = (make("session-4", "libraries-2")?, make("session-5", "libraries-3")?);
+        let ago = SystemTime::now() - LONG_UNUSED;
+        open(&long.join(IN_USE))?.set_modified(ago).map_err(Error::file("date", &long))?;
+        let holding = hold(&held)?;
+        // A process that another test starts has every lock of this one for a moment.
+        let gone = |folders: &[&PathBuf]| {
+            for _ in 0..100 {
+                prune(cache, &new, &cache.join("libraries-1"));
+                if folders.iter().all(|folder| !folder.exists()) {
+                    break;
+                }
+                thread::sleep(Duration::from_millis(20));
+            }
+        };
+        gone(&[&old, &long]);
+        assert!(!old.exists() && held.exists() && new.exists() && recent.exists() && !long.exists());
+        assert!(cache.join("libraries-1").exists() && cache.join("libraries-2").exists());
+        assert!(!cache.join("libraries-3").exists());
+        drop(holding);
+        gone(&[&held]);
+        assert!(!held.exists());
         Ok(())
     }
 

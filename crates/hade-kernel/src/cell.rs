@@ -40,7 +40,8 @@ pub enum Output {
 #[derive(Debug, Clone, PartialEq, Eq)]
 pub struct CellError {
     /// A short name: `Error` (an `Err` met by `?`), `Panic`, a compiler code such as `E0308`,
-    /// `CompileError`, `ProcessDied` or `Timeout`.
+    /// `CompileError`, `SyntaxError`, `CommandError`, `DependencyError`, `Interrupted`, `Timeout`, `ProcessDied`,
+    /// `DiskFull` or `SessionError`.
     pub name: String,
     /// What happened, in a sentence.
     pub sentence: String,

@@ -1,6 +1,7 @@
 //! Gathers what a cell puts out while the engine runs it.
 
 use std::mem;
+use std::sync::atomic::{AtomicBool, Ordering};
 use std::sync::{Arc, Condvar, Mutex, MutexGuard, PoisonError};
 use std::thread;
 use std::time::{Duration, Instant};
@@ -38,12 +39,13 @@ impl Gathered {
                     self.outputs.push(Output::Display(bundle));
                 }
             }
-            Record::Panic => self.stop = Some(Stop::Panic(self.last_words())),
+            Record::Panic => self.stop = Some(Stop::Panic(self.panic_words())),
             Record::Early => self.stop = Some(Stop::Early(self.last_words())),
-            Record::Cut(bytes) => self.text(
-                Stream::Stderr,
-                &format!("[{} kB more were printed and are left out here]\n", bytes.div_ceil(1024)),
-            ),
+            Record::Cut { bytes, file, whole } => self.text(Stream::Stderr, &cut(bytes, file.as_deref(), whole)),
+            Record::NotShown(values) => {
+                self.text(Stream::Stderr, &format!("[{values} more values were displayed and are left out here]\n"));
+            }
+            Record::Begin => {}
             Record::Done => self.done = true,
         }
     }
@@ -66,11 +68,40 @@ impl Gathered {
             None => String::new(),
         }
     }
+
+    /// The message of a panic: the end of the standard error text there. A cell that the library stops panics without
+    /// one, and what it printed stays.
+    fn panic_words(&mut self) -> String {
+        let Some(Output::Text { stream: Stream::Stderr, text }) = self.outputs.last_mut() else {
+            return String::new();
+        };
+        let Some(start) = text.rfind("' panicked at ").or_else(|| text.rfind(") panicked at ")) else {
+            return String::new();
+        };
+        let line = text[..start].rfind('\n').map_or(0, |at| at + 1);
+        let words = text.split_off(line).trim_end().to_owned();
+        text.truncate(text.strip_suffix('\n').map_or(text.len(), str::len));
+        if text.is_empty() {
+            self.outputs.pop();
+        }
+        words
+    }
+}
+
+/// What to say under a text that was cut.
+fn cut(bytes: u64, file: Option<&str>, whole: bool) -> String {
+    let left = format!("{} kB more were printed and are left out here", bytes.div_ceil(1024));
+    match file {
+        Some(file) if whole => format!("[{left}; the whole text is in {file}]\n"),
+        Some(file) => format!("[{left}; the first part of the text is in {file}]\n"),
+        None => format!("[{left}]\n"),
+    }
 }
 
 /// Reads the engine's channels for as long as the session lives.
 pub(crate) struct Collector {
     shared: Arc<(Mutex<Gathered>, Condvar)>,
+    begun: Arc<AtomicBool>,
     nothing_waits: Box<dyn Fn() -> bool + Send>,
 }
 
@@ -79,10 +110,16 @@ impl Collector {
         let shared = Arc::new((Mutex::new(Gathered::default()), Condvar::new()));
         let EvalContextOutputs { stdout, stderr } = outputs;
         let waiting = stdout.clone();
+        let begun = Arc::new(AtomicBool::new(false));
+        let cell_begins = Arc::clone(&begun);
         let out = Arc::clone(&shared);
         thread::spawn(move || {
             for line in stdout {
                 let record = Record::from_line(&line).unwrap_or_else(|| Record::Out(format!("{line}\n")));
+                if record == Record::Begin {
+                    cell_begins.store(true, Ordering::Relaxed);
+                    continue;
+                }
                 lock(&out.0).take(record);
                 out.1.notify_all();
             }
@@ -93,7 +130,12 @@ impl Collector {
                 lock(&err.0).take(Record::Err(format!("{line}\n")));
             }
         });
-        Collector { shared, nothing_waits: Box::new(move || waiting.is_empty()) }
+        Collector { shared, begun, nothing_waits: Box::new(move || waiting.is_empty()) }
+    }
+
+    /// Becomes true when a cell has been compiled and begins to run.
+    pub(crate) fn begun(&self) -> Arc<AtomicBool> {
+        Arc::clone(&self.begun)
     }
 
     /// What has come since the last call, once the cell's last record is in. A cell whose process
@@ -141,6 +183,21 @@ mod tests {
         gathered.take(Record::Early);
         assert_eq!(gathered.stop, Some(Stop::Early("the depth is negative".into())));
         assert_eq!(gathered.outputs.len(), 1);
+    }
+
+    #[test]
+    fn what_was_printed_before_a_panic_stays() {
+        let mut gathered = Gathered::default();
+        gathered.take(Record::Err("mine\n\nthread 'main' (7) panicked at src/lib.rs:9:5:\nno rock\n".into()));
+        gathered.take(Record::Panic);
+        let text = |text: &str| Output::Text { stream: Stream::Stderr, text: text.to_owned() };
+        assert_eq!(gathered.outputs, [text("mine\n")]);
+        let words = "thread 'main' (7) panicked at src/lib.rs:9:5:\nno rock";
+        assert_eq!(gathered.stop, Some(Stop::Panic(words.to_owned())));
+        let mut gathered = Gathered::default();
+        gathered.take(Record::Err("50 %\n".into()));
+        gathered.take(Record::Panic);
+        assert_eq!((gathered.outputs, gathered.stop), (vec![text("50 %\n")], Some(Stop::Panic(String::new()))));
     }
 
     #[test]

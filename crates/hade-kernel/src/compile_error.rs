@@ -5,18 +5,14 @@ use std::fmt::Write as _;
 use evcxr::CompilationError;
 
 use crate::cell::CellError;
-use crate::syntax;
+use crate::hints::{self, Hint};
+use crate::ledger::Ledger;
 
 /// Shown at most; the rest usually follows from these.
 const MOST: usize = 8;
 
 /// One error for everything the compiler said about a cell.
-pub(crate) fn render(errors: &[CompilationError], cell: &str) -> CellError {
-    let engine_words =
-        errors.iter().any(|error| error.message().contains("evcxr_") || error.message().contains("<end of input>"));
-    if engine_words && let Some((line, what)) = syntax::outline(cell).problem {
-        return unreadable(line, &what, cell);
-    }
+pub(crate) fn render(errors: &[CompilationError], cell: &str, ledger: &Ledger) -> CellError {
     let shown: Vec<&CompilationError> = errors.iter().filter(|error| error.level() == "error").take(MOST).collect();
     let Some(first) = shown.first() else {
         return CellError {
@@ -26,9 +22,13 @@ pub(crate) fn render(errors: &[CompilationError], cell: &str) -> CellError {
             line: None,
         };
     };
+    let hints: Vec<Option<Hint>> = shown.iter().map(|error| hints::hint(error, cell, ledger)).collect();
     let mut detail = String::new();
-    for error in &shown {
+    for (error, hint) in shown.iter().zip(&hints) {
         one(error, cell, &mut detail);
+        if let Some(hint) = hint {
+            let _ = writeln!(detail, "  help: {}", hint.words);
+        }
     }
     let left = errors.len().saturating_sub(shown.len());
     if left > 0 {
@@ -36,16 +36,19 @@ pub(crate) fn render(errors: &[CompilationError], cell: &str) -> CellError {
     }
     CellError {
         name: first.code().unwrap_or("CompileError").to_owned(),
-        sentence: one_line(&first.message()),
+        sentence: match hints.into_iter().next().flatten().filter(|hint| hint.first) {
+            Some(hint) => hint.words,
+            None => one_line(&first.message()),
+        },
         detail: detail.trim_end().to_owned(),
         line: first.primary_spanned_message().and_then(|message| message.span).map(|span| span.start_line),
     }
 }
 
-/// A cell that is not Rust.
-fn unreadable(line: usize, what: &str, cell: &str) -> CellError {
+/// A cell that cannot be read as Rust.
+pub(crate) fn unreadable(line: usize, what: &str, cell: &str) -> CellError {
     let text = cell.lines().nth(line - 1).unwrap_or_default();
-    let sentence = format!("the code is not complete: {what}");
+    let sentence = hints::decimal_comma(text).unwrap_or_else(|| format!("the cell cannot be read: {what}"));
     CellError {
         name: "SyntaxError".to_owned(),
         detail: format!("{sentence}\n  line {line}: {text}"),

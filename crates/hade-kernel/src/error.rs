@@ -21,6 +21,16 @@ pub enum Error {
         /// What the system said.
         source: io::Error,
     },
+    /// The cache folder cannot be used.
+    #[error("{why}; {}", cache_advice(path, *full))]
+    Cache {
+        /// The cache folder.
+        path: PathBuf,
+        /// What could not be done there.
+        why: String,
+        /// There is no room.
+        full: bool,
+    },
     /// The file is not a notebook.
     #[error("{} is not a Jupyter notebook: {why}", path.display())]
     NotANotebook {
@@ -81,6 +91,57 @@ impl Error {
     pub(crate) fn file(doing: &'static str, path: impl AsRef<Path>) -> impl FnOnce(io::Error) -> Error {
         let path = path.as_ref().to_path_buf();
         move |source| Error::File { doing, path, source }
+    }
+
+    /// An error met while the cache was filled, with what to do about the cache.
+    pub(crate) fn in_cache(self, cache: &Path) -> Error {
+        let (why, full) = match &self {
+            Error::File { path, source, .. } if path.starts_with(cache) => {
+                (self.to_string(), says_full(&plain(source)))
+            }
+            Error::Build { why } | Error::Start { why } if says_full(why) => (self.to_string(), true),
+            _ => return self,
+        };
+        let why =
+            if full { "the libraries a session needs could not be stored: the disk is full".to_owned() } else { why };
+        Error::Cache { path: cache.to_path_buf(), why, full }
+    }
+
+    /// An error met while a session's folder was made, with what to do about the place.
+    pub(crate) fn in_temporary(self, place: &Path) -> Error {
+        let (full, denied) = match &self {
+            Error::File { source, .. } if says_full(&plain(source)) => (true, false),
+            Error::File { path, source, .. } => {
+                (false, path.starts_with(place) && source.kind() == io::ErrorKind::PermissionDenied)
+            }
+            Error::Start { why } => (says_full(why), false),
+            _ => (false, false),
+        };
+        let folder = place.display();
+        let why = if full {
+            format!("the disk is full; free some 200 MB in {folder}, or set TMPDIR to a folder on another disk")
+        } else if denied {
+            format!("{self}; make {folder} a folder you can write, or set TMPDIR to another")
+        } else {
+            return self;
+        };
+        Error::Start { why }
+    }
+}
+
+/// Whether the words of some program mean that the disk is full.
+pub(crate) fn says_full(words: &str) -> bool {
+    ["No space left on device", "os error 28", "the disk is full", "Disk quota exceeded", "File too large"]
+        .iter()
+        .any(|sign| words.contains(sign))
+}
+
+fn cache_advice(path: &Path, full: bool) -> String {
+    let path = path.display();
+    if full {
+        format!("free some 700 MB in {path}, or set HADE_CACHE to a folder on another disk")
+    } else {
+        format!("make {path} a folder you can write, or set HADE_CACHE to another")
     }
 }
 

@@ -17,13 +17,20 @@
 //! [`Progress`] and shows what it is told. Sessions run on Unix systems only.
 
 mod cache;
+mod carry_out;
 mod cell;
+mod children;
 mod collect;
+mod commands;
 mod compile_error;
+mod ctrl_c;
 mod error;
 #[cfg(unix)]
 mod filter;
+mod hints;
 mod hook;
+mod interrupt;
+mod ledger;
 mod notebook;
 mod outcome;
 mod packed;
@@ -36,14 +43,15 @@ mod session;
 mod source_map;
 mod syntax;
 mod third_party;
-mod timer;
 mod toolchain;
+mod variables;
 mod wrapper;
 
 pub use cache::{CacheReport, cache_folder, clean};
 pub use cell::{CellError, CellOutcome, Output, Stream};
 pub use error::{Error, Result};
 pub use hook::runtime_hook;
+pub use interrupt::InterruptHandle;
 pub use notebook::Notebook;
 pub use prepare::{Prepared, prepare};
 pub use progress::{Progress, Silent, Step};

@@ -1,11 +1,20 @@
 //! Why a cell failed, said so that its author can act on it.
 
 use std::path::Path;
-use std::time::Duration;
 
-use crate::cell::{CellError, Output, Stream};
+use crate::cell::{CellError, CellOutcome, Output, Stream};
 use crate::collect::Stop;
-use crate::{compile_error, source_map};
+use crate::error::says_full;
+use crate::interrupt::{Stopped, Why};
+use crate::ledger::Ledger;
+use crate::{commands, compile_error, source_map};
+
+/// The sentence for a panic that says nothing, as the one by which the library stops a cell.
+const SILENT: &str = "the cell panicked";
+
+/// A sentence, and the whole story, are not longer than so many bytes.
+const SENTENCE_LIMIT: usize = 600;
+const DETAIL_LIMIT: usize = 20_000;
 
 /// A cell that ended early.
 pub(crate) fn stopped(stop: Stop, crate_folder: &Path, cell: &str) -> CellError {
@@ -16,32 +25,70 @@ pub(crate) fn stopped(stop: Stop, crate_folder: &Path, cell: &str) -> CellError 
         }
         Stop::Panic(words) => {
             let (message, line) = source_map::panic(&words, crate_folder, cell);
-            let message = if message.is_empty() { "the cell panicked".to_owned() } else { message };
+            let message = if message.is_empty() { SILENT.to_owned() } else { message };
             CellError { name: "Panic".to_owned(), sentence: first_line(&message, ""), detail: message, line }
         }
     }
 }
 
-/// A cell the engine could not run to its end.
-pub(crate) fn failed(error: &evcxr::Error, cell: &str, before: &[String], outputs: &mut Vec<Output>) -> CellError {
+/// A cell the engine could not run to its end. `loss` says what was lost if its process died.
+pub(crate) fn failed(
+    error: &evcxr::Error,
+    cell: &str,
+    loss: &str,
+    outputs: &mut Vec<Output>,
+    ledger: &Ledger,
+) -> CellError {
     match error {
-        evcxr::Error::CompilationErrors(errors) => compile_error::render(errors, cell),
-        evcxr::Error::SubprocessTerminated(words) => died(words, before, outputs),
-        evcxr::Error::TypeRedefinedVariablesLost(names) => {
-            let sentence = format!("a type was defined anew, so these variables are lost: {}", names.join(", "));
-            CellError { name: "CompileError".to_owned(), detail: sentence.clone(), sentence, line: None }
+        evcxr::Error::CompilationErrors(errors) => {
+            let error = compile_error::render(errors, cell, ledger);
+            match commands::dependency_failure(&error.detail).filter(|_| cell.contains(":dep")) {
+                Some(sentence) => CellError {
+                    name: "DependencyError".to_owned(),
+                    detail: format!("{sentence}\n{}", error.detail),
+                    sentence,
+                    line: error.line,
+                },
+                None => error,
+            }
         }
-        evcxr::Error::Message(words) => CellError {
-            name: "CompileError".to_owned(),
-            sentence: first_line(words, "the cell cannot be run"),
-            detail: words.clone(),
-            line: None,
-        },
+        evcxr::Error::SubprocessTerminated(words) => died(words, loss, outputs),
+        evcxr::Error::TypeRedefinedVariablesLost(names) => {
+            plain("CompileError", format!("a type was defined anew, so these variables are lost: {}", names.join(", ")))
+        }
+        evcxr::Error::Message(words) if says_full(words) => {
+            plain("DiskFull", "the disk is full, so the cell could not be compiled; free some space and run it again")
+        }
+        evcxr::Error::Message(words) => {
+            // What Cargo said when it did not come to compiling.
+            let said = words.split_once("STDERR:\n").map_or(words.as_str(), |(_, rest)| rest);
+            let said = said.split("\nSTDOUT:").next().unwrap_or(said).trim();
+            let sentence = commands::dependency_gone(said).unwrap_or_else(|| {
+                let first = said.lines().find_map(|line| line.strip_prefix("error: "));
+                first.map_or_else(|| first_line(said, "the cell cannot be run"), str::to_owned)
+            });
+            CellError { name: "CompileError".to_owned(), sentence, detail: said.to_owned(), line: None }
+        }
     }
 }
 
+/// An error that is one sentence.
+pub(crate) fn plain(name: &str, sentence: impl Into<String>) -> CellError {
+    let sentence = sentence.into();
+    CellError { name: name.to_owned(), detail: sentence.clone(), sentence, line: None }
+}
+
+/// The variables whose type a cell defined anew, by what the engine printed of them.
+pub(crate) fn retyped(outcome: &CellOutcome) -> Vec<String> {
+    let printed = outcome.text(Stream::Stderr);
+    let lines = printed.lines().filter_map(|line| {
+        line.strip_prefix("The type of the variable ")?.strip_suffix(" was redefined, so was lost.").map(str::to_owned)
+    });
+    lines.collect()
+}
+
 /// The process that ran the cells is gone.
-fn died(words: &str, before: &[String], outputs: &mut Vec<Output>) -> CellError {
+fn died(words: &str, loss: &str, outputs: &mut Vec<Output>) -> CellError {
     let said = words.rsplit("status: ").next().unwrap_or(words).trim();
     let fault = cut_backtrace(outputs);
     let what = if words.contains("exit status: ") || words.contains("exit code: ") {
@@ -50,15 +97,34 @@ fn died(words: &str, before: &[String], outputs: &mut Vec<Output>) -> CellError 
         )
     } else if fault {
         "the cell touched memory that is not its own (segmentation fault); look for unsafe code".to_owned()
+    } else if let Some(wanted) = memory_wanted(outputs) {
+        format!(
+            "the cell asked for {wanted} of memory at once, and the machine has no more; look for a size that is too large"
+        )
     } else if said.starts_with("11 ") || said.starts_with("10 ") || said.contains("SIGSEGV") {
         "the cell used up its stack, as a function that calls itself without end does".to_owned()
     } else if said.contains("SIGKILL") {
         "the process of the cells was killed; the machine may be out of memory".to_owned()
+    } else if said.contains("SIGABRT") {
+        "the cell aborted the whole program, as a panic while another is handled does".to_owned()
     } else {
         format!("the process of the cells ended unexpectedly ({said})")
     };
-    let detail = format!("{what}.{}", lost(before));
-    CellError { name: "ProcessDied".to_owned(), sentence: what, detail, line: None }
+    CellError { name: "ProcessDied".to_owned(), detail: format!("{what}.{loss}"), sentence: what, line: None }
+}
+
+/// The size in the last words of a program that got no memory, which are taken away.
+fn memory_wanted(outputs: &mut Vec<Output>) -> Option<String> {
+    let Some(Output::Text { stream: Stream::Stderr, text }) = outputs.last_mut() else {
+        return None;
+    };
+    let start = text.rfind("memory allocation of ")?;
+    let bytes: f64 = text[start..].split(' ').nth(3)?.parse().ok()?;
+    text.truncate(start);
+    if text.trim().is_empty() {
+        outputs.pop();
+    }
+    Some(if bytes >= 1e9 { format!("{:.0} GB", bytes / 1e9) } else { format!("{:.0} MB", (bytes / 1e6).ceil()) })
 }
 
 /// Takes the engine's own backtrace away; whether there was one.
@@ -78,13 +144,50 @@ fn cut_backtrace(outputs: &mut Vec<Output>) -> bool {
     false
 }
 
-/// A cell that was stopped because it ran too long.
-pub(crate) fn timeout(limit: Duration, before: &[String]) -> CellError {
-    let sentence = format!(
-        "stopped after {} s; allow more with --cell-timeout, or look for a loop without end",
-        limit.as_secs_f64()
-    );
-    CellError { name: "Timeout".to_owned(), detail: format!("{sentence}.{}", lost(before)), sentence, line: None }
+/// What to say of a cell that was stopped; `None` if its own error says more. `loss` says what was lost with its
+/// process.
+pub(crate) fn interrupted(stopped: Stopped, error: Option<&CellError>, loss: &str) -> Option<CellError> {
+    let Stopped { why, killed, compiling } = stopped;
+    let how = match error {
+        _ if killed => "it did not stop when it was asked, so its process was ended",
+        None => "it had just run to its end, and what it defines is kept",
+        Some(error) if error.name == "Panic" && error.sentence == SILENT => "variables of earlier cells are kept",
+        Some(error) if error.name == "CompileError" && compiling => {
+            "it was still being compiled, so nothing of it ran, and all variables are kept"
+        }
+        Some(_) => return None,
+    };
+    let (name, sentence) = match why {
+        Why::Asked => ("Interrupted", format!("the cell was interrupted: {how}")),
+        Why::TooLong(limit) => (
+            "Timeout",
+            format!(
+                "the cell was stopped after {} s: {how}; allow more with --cell-timeout, or look for a loop without end",
+                limit.as_secs_f64()
+            ),
+        ),
+    };
+    let detail = if killed {
+        format!(
+            "{sentence}.{loss} A long loop of your own stops at once, and loses nothing, if it calls \
+             hade::interrupt::check()."
+        )
+    } else {
+        sentence.clone()
+    };
+    Some(CellError { name: name.to_owned(), sentence, detail, line: None })
+}
+
+/// An error of a length that can be shown.
+pub(crate) fn bounded(mut error: CellError) -> CellError {
+    for (text, limit) in [(&mut error.sentence, SENTENCE_LIMIT), (&mut error.detail, DETAIL_LIMIT)] {
+        if text.len() > limit {
+            let left = text.len() - limit;
+            text.truncate(text.floor_char_boundary(limit));
+            text.push_str(&format!("… [{left} bytes more]"));
+        }
+    }
+    error
 }
 
 /// Variables whose types cannot be kept between cells.
@@ -106,12 +209,18 @@ pub(crate) fn unstorable(variables: &[(String, String)]) -> CellError {
 
 /// The engine itself failed.
 pub(crate) fn engine_failed() -> CellError {
-    let sentence = "the notebook engine failed on this cell; try to write it in smaller steps";
-    CellError { name: "EngineError".to_owned(), sentence: sentence.to_owned(), detail: sentence.to_owned(), line: None }
+    plain("EngineError", "the notebook engine failed on this cell; try to write it in smaller steps")
 }
 
-fn lost(before: &[String]) -> String {
-    if before.is_empty() { String::new() } else { format!(" All variables are lost: {}.", before.join(", ")) }
+/// What a session needs was removed while it ran.
+pub(crate) fn gone(folder: &Path) -> CellError {
+    plain(
+        "SessionError",
+        format!(
+            "{} was removed while the session ran, so nothing can be compiled; restart the kernel, and it is made anew",
+            folder.display()
+        ),
+    )
 }
 
 fn first_line(words: &str, otherwise: &str) -> String {
@@ -124,11 +233,40 @@ mod tests {
 
     #[test]
     fn an_end_is_explained() {
-        let error = |words: &str| died(words, &["a".to_owned()], &mut Vec::new());
+        let error = |words: &str| died(words, " All is lost.", &mut Vec::new());
         assert!(error("Subprocess terminated with status: exit status: 3").sentence.contains("exit status 3"));
         let overflow = error("Subprocess terminated with status: signal: 11 (SIGSEGV) (core dumped)");
         assert!(overflow.sentence.contains("stack"), "{}", overflow.sentence);
-        assert!(overflow.detail.ends_with("All variables are lost: a."));
+        assert!(overflow.detail.ends_with(". All is lost."));
+    }
+
+    #[test]
+    fn want_of_memory_is_named() {
+        let words = "mine\nmemory allocation of 70368744177664 bytes failed\n";
+        let mut outputs = vec![Output::Text { stream: Stream::Stderr, text: words.to_owned() }];
+        let error = died("Subprocess terminated with status: signal: 6 (SIGABRT)", "", &mut outputs);
+        assert!(error.sentence.contains("70369 GB"), "{}", error.sentence);
+        assert_eq!(outputs, [Output::Text { stream: Stream::Stderr, text: "mine\n".to_owned() }]);
+    }
+
+    #[test]
+    fn an_interrupt_does_not_hide_a_real_error() {
+        let asked = |killed| Stopped { why: Why::Asked, killed, compiling: false };
+        let silent = plain("Panic", SILENT);
+        let stopped = interrupted(asked(false), Some(&silent), "").map(|error| (error.name, error.sentence));
+        assert_eq!(
+            stopped,
+            Some(("Interrupted".into(), "the cell was interrupted: variables of earlier cells are kept".into()))
+        );
+        assert_eq!(interrupted(asked(false), Some(&plain("Error", "no depth datum")), ""), None);
+        let killed = interrupted(asked(true), Some(&plain("ProcessDied", "signal 9")), " Gone: a.").map(|e| e.detail);
+        assert!(killed.unwrap_or_default().contains("its process was ended. Gone: a."));
+    }
+
+    #[test]
+    fn a_long_message_is_cut() {
+        let error = bounded(plain("Panic", "é".repeat(1_000_000)));
+        assert!(error.sentence.len() < 1000 && error.detail.len() < 30_000);
     }
 
     #[test]

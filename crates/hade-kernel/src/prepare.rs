@@ -1,7 +1,8 @@
 //! Fills the cache: everything that is compiled once for a compiler and a version of `hade`.
 
-use std::fs;
+use std::fs::{self, File};
 use std::path::{Path, PathBuf};
+use std::sync::Arc;
 
 use crate::cache;
 use crate::error::{Error, Result};
@@ -19,12 +20,30 @@ const LAYOUT: &[u8] = b"session 2, evcxr 0.22";
 pub struct Prepared {
     folder: PathBuf,
     shared: PathBuf,
+    /// As long as it lives, nobody removes the folder.
+    held: Option<Arc<File>>,
 }
 
 impl Prepared {
     /// The cache folder.
     pub(crate) fn cache(&self) -> &Path {
         self.folder.parent().unwrap_or(&self.folder)
+    }
+
+    /// Keeps the folder from being removed.
+    fn hold(&mut self) -> Result<()> {
+        self.held = Some(Arc::new(cache::hold(&self.folder)?));
+        Ok(())
+    }
+
+    /// Whether everything is still there.
+    pub(crate) fn is_there(&self) -> bool {
+        self.plan().exists() && self.library().exists()
+    }
+
+    /// Where the whole text of cells goes that print too much.
+    pub(crate) fn outputs(&self) -> PathBuf {
+        self.cache().join(cache::OUTPUTS)
     }
 
     /// The folder of the compiler's shared standard library.
@@ -75,21 +94,37 @@ pub fn prepare(progress: &mut dyn Progress) -> Result<Prepared> {
             .chain(packed::pieces(packed::LIBRARY))
             .chain(packed::pieces(packed::MINISTD)),
     );
-    let prepared = Prepared { folder: cache.join(format!("session-{session_key}")), shared: toolchain.shared.clone() };
-    let whole = || cache::is_whole(&libraries) && cache::is_whole(&prepared.folder);
-    if whole() {
+    let mut prepared =
+        Prepared { folder: cache.join(format!("session-{session_key}")), shared: toolchain.shared.clone(), held: None };
+    let whole = |prepared: &Prepared| cache::is_whole(&libraries) && cache::is_whole(&prepared.folder);
+    if whole(&prepared) && prepared.hold().is_ok() && whole(&prepared) {
         return Ok(prepared);
     }
-    let _lock = cache::lock(&cache, progress)?;
-    if !cache::is_whole(&libraries) {
-        third_party::build(&libraries, &toolchain, progress)?;
+    prepared.held = None;
+    let filled = fill(&mut prepared, &cache, &libraries, &toolchain, progress);
+    filled.map_err(|error| error.in_cache(&cache))?;
+    progress.step(Step::Done);
+    Ok(prepared)
+}
+
+fn fill(
+    prepared: &mut Prepared,
+    cache: &Path,
+    libraries: &Path,
+    toolchain: &Toolchain,
+    progress: &mut dyn Progress,
+) -> Result<()> {
+    let _lock = cache::lock(cache, progress)?;
+    if !cache::is_whole(libraries) {
+        third_party::build(libraries, toolchain, progress)?;
     }
     if !cache::is_whole(&prepared.folder) {
         progress.step(Step::Library);
-        compile_library(&prepared, &libraries)?;
+        compile_library(prepared, libraries)?;
     }
-    progress.step(Step::Done);
-    Ok(prepared)
+    prepared.hold()?;
+    cache::prune(cache, &prepared.folder, libraries);
+    Ok(())
 }
 
 fn compile_library(prepared: &Prepared, libraries: &Path) -> Result<()> {

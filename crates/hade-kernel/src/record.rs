@@ -23,8 +23,13 @@ pub(crate) enum Record {
     Panic,
     /// `?` met an `Err`; its text is the standard error text just before.
     Early,
-    /// So many bytes were not passed on, because the cell printed too much.
-    Cut(u64),
+    /// The cell printed too much: how much was not passed on, the file that holds its whole text,
+    /// and whether it does.
+    Cut { bytes: u64, file: Option<String>, whole: bool },
+    /// So many displayed values were not passed on, because there were too many.
+    NotShown(usize),
+    /// The cell was compiled and begins to run.
+    Begin,
     /// The cell ended and everything it printed has been passed on.
     Done,
 }
@@ -54,7 +59,7 @@ mod tests {
         for record in [
             Record::Out(text.clone()),
             Record::Show(BTreeMap::from([("text/plain".to_owned(), text)])),
-            Record::Cut(7),
+            Record::Cut { bytes: 7, file: Some("a b".to_owned()), whole: true },
             Record::Done,
         ] {
             let line = record.to_line();

@@ -7,7 +7,9 @@ use std::time::Duration;
 use serde_json::Value;
 
 use crate::cell::{CellError, CellOutcome};
+use crate::ctrl_c::Keyboard;
 use crate::error::Result;
+use crate::interrupt::InterruptHandle;
 use crate::notebook::Notebook;
 use crate::prepare::prepare;
 use crate::progress::{Progress, Step};
@@ -20,6 +22,8 @@ pub struct RunOptions {
     pub cell_timeout: Option<Duration>,
     /// Go on after a cell that fails.
     pub allow_errors: bool,
+    /// Ctrl-C stops the running cell and the run; otherwise it does what it does in the program anyway.
+    pub stop_on_ctrl_c: bool,
 }
 
 /// What became of one cell that holds code.
@@ -62,6 +66,8 @@ pub struct NotebookRun {
     pub notebook: Notebook,
     /// What became of each cell that was run, in order.
     pub cells: Vec<CellReport>,
+    /// Ctrl-C ended the run.
+    pub interrupted: bool,
 }
 
 impl NotebookRun {
@@ -98,10 +104,16 @@ pub fn run_notebook(path: impl AsRef<Path>, options: &RunOptions, progress: &mut
     let mut notebook = Notebook::read(path)?;
     let prepared = prepare(progress)?;
     progress.step(Step::Starting);
+    let interrupt = InterruptHandle::default();
     let mut session = Session::start(
         &prepared,
-        SessionOptions { folder: Some(notebook.folder().to_path_buf()), cell_timeout: options.cell_timeout },
+        SessionOptions {
+            folder: Some(notebook.folder().to_path_buf()),
+            cell_timeout: options.cell_timeout,
+            interrupt: interrupt.clone(),
+        },
     )?;
+    let keyboard = Keyboard::listen(options.stop_on_ctrl_c, interrupt)?;
     notebook.clear_outputs();
     let sources = notebook.code_cells();
     let mut cells = Vec::new();
@@ -112,12 +124,12 @@ pub fn run_notebook(path: impl AsRef<Path>, options: &RunOptions, progress: &mut
         notebook.set_outcome(*index, number, &outcome);
         let failed = outcome.error.is_some();
         cells.push(CellReport { number, index: *index, outcome });
-        if failed && !options.allow_errors {
+        if (failed && !options.allow_errors) || keyboard.was_pressed() {
             break;
         }
     }
     progress.step(Step::Done);
-    Ok(NotebookRun { notebook, cells })
+    Ok(NotebookRun { notebook, cells, interrupted: keyboard.was_pressed() })
 }
 
 /// The first line that says something: not blank, not a comment unless there is nothing else.

@@ -12,13 +12,16 @@ use evcxr::{CommandContext, EvalContext, EvalOutputs};
 use crate::cache;
 use crate::cell::{CellError, CellOutcome, Output};
 use crate::collect::{Collector, Gathered};
+use crate::commands;
+use crate::compile_error;
 use crate::error::{Error, Result};
 use crate::hook::OPEN_FLAG_VAR;
+use crate::interrupt::{self, InterruptHandle, Interrupts};
+use crate::ledger::{End, Ledger, Loss, Variable};
 use crate::outcome;
 use crate::prepare::Prepared;
 use crate::probe::{self, Answer};
 use crate::syntax;
-use crate::timer::Timer;
 use crate::wrapper::PLAN_VAR;
 
 /// What every session has before its first cell.
@@ -36,8 +39,10 @@ const FLUSH: &str = "\nstd::io::Write::flush(&mut std::io::stdout()).ok();";
 pub struct SessionOptions {
     /// The folder in which the cells run: the notebook's own. `None`: the current one.
     pub folder: Option<PathBuf>,
-    /// A cell that runs longer is stopped, and its variables are lost.
+    /// A cell that runs longer is stopped.
     pub cell_timeout: Option<Duration>,
+    /// Stops cells of this session.
+    pub interrupt: InterruptHandle,
 }
 
 /// A notebook session with `hade` loaded.
@@ -48,7 +53,14 @@ pub struct Session {
     // Dropped in this order: the process that runs the cells ends before its folder goes.
     engine: Engine,
     options: SessionOptions,
-    _folder: SessionFolder,
+    interrupts: Interrupts,
+    ledger: Ledger,
+    /// The number of the cell that runs.
+    number: usize,
+    /// How long the last cell ran, once it was compiled.
+    ran_for: Duration,
+    prepared: Prepared,
+    folder: SessionFolder,
     _cache: File,
 }
 
@@ -58,38 +70,95 @@ impl Session {
     /// # Errors
     /// If the session's folder cannot be made or the engine does not start.
     pub fn start(prepared: &Prepared, options: SessionOptions) -> Result<Session> {
+        Session::begin(prepared, options).map_err(|error| error.in_temporary(&env::temp_dir()))
+    }
+
+    fn begin(prepared: &Prepared, options: SessionOptions) -> Result<Session> {
         sweep();
         let held = cache::hold(prepared.cache())?;
         let folder = SessionFolder::new()?;
         let work = folder.path().join("work");
         cache::copy_folder(&prepared.template(), &work)?;
         let engine = Engine::start(prepared, &work, folder.path(), options.folder.as_deref())?;
-        Ok(Session { engine, options, _folder: folder, _cache: held })
+        let interrupts = Interrupts::new(&options.interrupt, engine.target(folder.path()));
+        Ok(Session {
+            engine,
+            options,
+            interrupts,
+            ledger: Ledger::default(),
+            number: 0,
+            ran_for: Duration::ZERO,
+            prepared: prepared.clone(),
+            folder,
+            _cache: held,
+        })
     }
 
     /// Runs a cell. A cell that fails is an outcome with an error; the session goes on.
     pub fn execute(&mut self, cell: &str) -> CellOutcome {
         let started = Instant::now();
-        let timer = self.options.cell_timeout.map(|limit| Timer::start(self.engine.context.process_handle(), limit));
-        let before = self.engine.variables();
-        let result = self.engine.run(cell);
-        let timed_out = timer.is_some_and(Timer::stop);
-        let waits =
-            !matches!(result, Ran::Engine(Err(evcxr::Error::SubprocessTerminated(_)))) && self.engine.ran_code(&result);
-        let gathered = self.engine.collector.take(waits && !timed_out);
-        let mut outcome = self.outcome(result, gathered, cell, &before);
-        if timed_out {
-            if outcome.error.as_ref().is_none_or(|error| error.name != "ProcessDied") {
-                // Stopped just as it ended: the engine has not noticed yet.
-                let _ = self.engine.context.execute(":restart");
-            }
-            outcome.error = Some(outcome::timeout(self.options.cell_timeout.unwrap_or_default(), &before));
-        }
+        self.number += 1;
+        let mut outcome = match commands::split(cell) {
+            Ok(split) => self.carry_out(&split),
+            Err(error) => CellOutcome { error: Some(error), ..CellOutcome::default() },
+        };
         outcome.elapsed = started.elapsed();
         outcome
     }
 
-    fn outcome(&self, ran: Ran, gathered: Gathered, cell: &str, before: &[String]) -> CellOutcome {
+    /// The number by which messages name the next cell (Jupyter's `[n]`). Without it cells are counted from 1.
+    pub fn number_next(&mut self, number: usize) {
+        self.number = number.saturating_sub(1);
+    }
+
+    /// Runs the code of the cell.
+    pub(crate) fn run_code(&mut self, code: &str) -> CellOutcome {
+        self.run(code, code)
+    }
+
+    /// Runs code that is no cell: what it names and defines is not remembered.
+    pub(crate) fn run_aside(&mut self, code: &str) -> CellOutcome {
+        self.run(code, "")
+    }
+
+    fn run(&mut self, code: &str, remembered: &str) -> CellOutcome {
+        let before = self.engine.variables();
+        let watch = self.interrupts.watch(self.options.cell_timeout);
+        let ran = self.engine.run(code);
+        let stopped = watch.end();
+        let killed = stopped.is_some_and(|stopped| stopped.killed);
+        let died = matches!(ran, Ran::Engine(Err(evcxr::Error::SubprocessTerminated(_))));
+        let gathered = self.engine.collector.take(!died && !killed && self.engine.ran_code(&ran));
+        if killed && !died {
+            // Ended just as the cell did: the engine has not noticed yet.
+            let _ = self.engine.context.execute(":restart");
+        }
+        self.ran_for = ran.ran_for();
+        let end = match &ran {
+            _ if killed => End::Lost(Loss::Stopped),
+            _ if died => End::Lost(Loss::Crashed),
+            Ran::Engine(Ok(_)) if gathered.stop.is_none() => End::Whole,
+            _ => End::Early,
+        };
+        let after = self.engine.variables();
+        let mut loss = String::new();
+        if matches!(end, End::Lost(_)) {
+            self.ledger.note(self.number, remembered, &before, &after, end);
+            loss = self.ledger.loss(self.number);
+        }
+        let mut outcome = self.outcome(ran, gathered, code, &loss);
+        if let Some(error) = stopped.and_then(|stopped| outcome::interrupted(stopped, outcome.error.as_ref(), &loss)) {
+            outcome.error = Some(error);
+        }
+        outcome.error = outcome.error.map(outcome::bounded);
+        if !matches!(end, End::Lost(_)) {
+            self.ledger.note(self.number, remembered, &before, &after, end);
+        }
+        self.ledger.note_retyped(self.number, &outcome::retyped(&outcome));
+        outcome
+    }
+
+    fn outcome(&self, ran: Ran, gathered: Gathered, cell: &str, loss: &str) -> CellOutcome {
         let Gathered { mut outputs, stop, .. } = gathered;
         let error = match (ran, stop) {
             (_, Some(stop)) => Some(outcome::stopped(stop, &self.engine.work, cell)),
@@ -100,13 +169,35 @@ impl Session {
                 }
                 None
             }
-            (Ran::Engine(Err(error)), None) => Some(outcome::failed(&error, cell, before, &mut outputs)),
+            (Ran::Engine(Err(_)), None) if !self.engine.work.exists() => Some(outcome::gone(self.folder.path())),
+            (Ran::Engine(Err(_)), None) if !self.prepared.is_there() => Some(outcome::gone(self.prepared.cache())),
+            (Ran::Engine(Err(error)), None) => Some(outcome::failed(&error, cell, loss, &mut outputs, &self.ledger)),
         };
         CellOutcome { outputs, error, elapsed: Duration::ZERO }
     }
 
+    /// Forgets everything but `hade` itself.
+    pub(crate) fn start_over(&mut self) -> Result<()> {
+        let forgotten = self.engine.context.execute(":clear");
+        forgotten.map_err(|error| Error::Start { why: error.to_string() })?;
+        self.engine.load(&self.prepared)
+    }
+
+    pub(crate) fn ledger(&mut self) -> &mut Ledger {
+        &mut self.ledger
+    }
+
+    pub(crate) fn ran_for(&self) -> Duration {
+        self.ran_for
+    }
+
     /// The variables the cells so far left behind.
     pub fn variables(&self) -> Vec<String> {
+        self.engine.variables().into_iter().map(|(name, _)| name).collect()
+    }
+
+    /// The same with their types.
+    pub(crate) fn variables_and_types(&self) -> Vec<Variable> {
         self.engine.variables()
     }
 }
@@ -117,6 +208,18 @@ enum Ran {
     Engine(std::result::Result<EvalOutputs, evcxr::Error>),
     /// It could not be run, for a reason of ours.
     Refused(CellError),
+}
+
+impl Ran {
+    /// How long it ran once it was compiled.
+    fn ran_for(&self) -> Duration {
+        match self {
+            Ran::Engine(Ok(shown)) => {
+                shown.phases.iter().filter(|phase| phase.name == "Execution").map(|phase| phase.duration).sum()
+            }
+            _ => Duration::ZERO,
+        }
+    }
 }
 
 /// The embedded engine and what reads its output.
@@ -139,6 +242,8 @@ impl Engine {
         let program = env::current_exe().map_err(|error| failed(error.to_string()))?;
         let mut command = process::Command::new(&program);
         command.env(OPEN_FLAG_VAR, &flag);
+        command.env(interrupt::FLAG_VAR, config.join(INTERRUPT_FLAG));
+        outputs_folder(&mut command, &prepared.outputs());
         command.env(LOADER_PATH_VAR, loader_path(prepared.shared()));
         if let Some(cwd) = cwd {
             let cwd = fs::canonicalize(cwd).map_err(Error::file("find the folder", cwd))?;
@@ -153,6 +258,14 @@ impl Engine {
             collector: Collector::new(outputs),
             work: work.to_path_buf(),
         };
+        engine.load(prepared)?;
+        Ok(engine)
+    }
+
+    /// Loads `hade`.
+    fn load(&mut self, prepared: &Prepared) -> Result<()> {
+        let failed = |why: String| Error::Start { why };
+        let program = env::current_exe().map_err(|error| failed(error.to_string()))?;
         let load = format!(
             ":build_env RUSTC_WRAPPER={}\n:build_env {PLAN_VAR}={}\n:build_env CARGO_TERM_QUIET=true\n\
              :dep hade = {{ path = {} }}\n{PRELUDE}\n{QUESTION_MARK}",
@@ -160,23 +273,33 @@ impl Engine {
             prepared.plan().display(),
             toml_string(&prepared.library()),
         );
-        let loaded = engine.context.execute(&load);
-        let gathered = engine.collector.take(false);
-        match loaded {
-            Ok(_) => Ok(engine),
-            Err(error) => {
-                let error = outcome::failed(&error, &load, &[], &mut Vec::new());
-                let printed = CellOutcome { outputs: gathered.outputs, ..CellOutcome::default() }
-                    .text(crate::cell::Stream::Stderr);
-                Err(failed(format!("{}\n{printed}", error.detail).trim().to_owned()))
-            }
+        let loaded = self.context.execute(&load);
+        let gathered = self.collector.take(false);
+        let Err(error) = loaded else {
+            return Ok(());
+        };
+        let error = outcome::failed(&error, &load, "", &mut Vec::new(), &Ledger::default());
+        let printed =
+            CellOutcome { outputs: gathered.outputs, ..CellOutcome::default() }.text(crate::cell::Stream::Stderr);
+        Err(failed(format!("{}\n{printed}", error.detail).trim().to_owned()))
+    }
+
+    /// What stops a cell, in the session whose folder is given.
+    fn target(&self, folder: &Path) -> interrupt::Target {
+        interrupt::Target {
+            process: self.context.process_handle(),
+            work: fs::canonicalize(&self.work).unwrap_or_else(|_| self.work.clone()),
+            flag: folder.join(INTERRUPT_FLAG),
+            begun: self.collector.begun(),
         }
     }
 
-    fn variables(&self) -> Vec<String> {
-        let mut names: Vec<String> = self.context.variables_and_types().map(|(name, _)| name.to_owned()).collect();
-        names.sort();
-        names
+    /// The variables and their types, by name.
+    fn variables(&self) -> Vec<Variable> {
+        let known = self.context.variables_and_types();
+        let mut variables: Vec<Variable> = known.map(|(name, kind)| (name.to_owned(), kind.to_owned())).collect();
+        variables.sort();
+        variables
     }
 
     /// Whether the process that runs the cells ran anything, so that its last record will come.
@@ -186,8 +309,11 @@ impl Engine {
 
     fn run(&mut self, cell: &str) -> Ran {
         let outline = syntax::outline(cell);
+        if let Some((line, what)) = &outline.problem {
+            return Ran::Refused(compile_error::unreadable(*line, what, cell));
+        }
         let mut code = cell.to_owned();
-        if cell.contains("print!(") && !outline.ends_in_expression && outline.problem.is_none() {
+        if cell.contains("print!(") && !outline.ends_in_expression {
             code.push_str(FLUSH);
         }
         match self.guarded(&code) {
@@ -234,6 +360,9 @@ struct SessionFolder {
 const FOLDER_PREFIX: &str = "hade-session-";
 const FOLDER_LOCK: &str = "lock";
 
+/// In the session's folder: asks the running cell to stop.
+const INTERRUPT_FLAG: &str = "interrupt";
+
 impl SessionFolder {
     fn new() -> Result<SessionFolder> {
         let place = env::temp_dir();
@@ -266,6 +395,14 @@ fn sweep() {
 }
 
 #[cfg(unix)]
+fn outputs_folder(command: &mut process::Command, folder: &Path) {
+    command.env(crate::filter::OUTPUTS_VAR, folder);
+}
+
+#[cfg(not(unix))]
+fn outputs_folder(_: &mut process::Command, _: &Path) {}
+
+#[cfg(unix)]
 fn open_flag(flag: &Path) -> Result<()> {
     crate::filter::open(flag).map_err(Error::file("write", flag))
 }
@@ -280,8 +417,6 @@ fn toml_string(path: &Path) -> String {
     serde_json::to_string(&path.to_string_lossy()).unwrap_or_default()
 }
 
-/// The engine reads its settings from a variable of this process and, before that, from a file
-/// in the current folder, which must not be the user's.
 /// Where the loader looks for shared libraries first.
 const LOADER_PATH_VAR: &str = if cfg!(target_os = "macos") { "DYLD_LIBRARY_PATH" } else { "LD_LIBRARY_PATH" };
 
@@ -294,6 +429,8 @@ fn loader_path(shared: &Path) -> std::ffi::OsString {
     env::join_paths(folders).unwrap_or_else(|_| shared.as_os_str().to_owned())
 }
 
+/// The engine reads its settings from a variable of this process and, before that, from a file
+/// in the current folder, which must not be the user's.
 fn in_controlled_environment<T>(config: &Path, prepared: &Prepared, start: impl FnOnce() -> T) -> Result<T> {
     static ONE_AT_A_TIME: Mutex<()> = Mutex::new(());
     let _guard = ONE_AT_A_TIME.lock().unwrap_or_else(PoisonError::into_inner);

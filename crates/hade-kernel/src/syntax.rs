@@ -1,7 +1,9 @@
-//! Just enough parsing of a cell to find its `let` statements.
+//! Just enough parsing of a cell to find its `let` statements and where it is not complete.
+
+use std::collections::BTreeSet;
 
 use ra_ap_syntax::ast::{self, HasName};
-use ra_ap_syntax::{AstNode, Edition, SourceFile};
+use ra_ap_syntax::{AstNode, Edition, Parse, SourceFile, SyntaxToken, TextRange};
 
 /// What the parser needs around a cell.
 const BEFORE: &str = "fn f(){";
@@ -30,10 +32,7 @@ pub(crate) struct Outline {
 pub(crate) fn outline(code: &str) -> Outline {
     let rust = without_commands(code);
     let parsed = SourceFile::parse(&format!("{BEFORE}{rust}\n}}"), Edition::Edition2024);
-    let problem = parsed.errors().first().map(|error| {
-        let at = usize::from(error.range().start()).saturating_sub(BEFORE.len()).min(rust.len());
-        (line_of(&rust, at), error.to_string())
-    });
+    let problem = problem(&rust, &parsed);
     let mut outline = Outline { problem, ..Outline::default() };
     let statements = parsed
         .syntax_node()
@@ -68,17 +67,104 @@ pub(crate) fn outline(code: &str) -> Outline {
     outline
 }
 
-/// The cell with lines that are commands to the session blanked; every offset stays.
+/// The cell with the commands at its top blanked; every offset stays.
 fn without_commands(code: &str) -> String {
+    let mut at_top = true;
     code.split_inclusive('\n')
         .map(|line| {
-            if line.trim_start().starts_with([':', '!']) {
+            let text = line.trim();
+            let is_command = at_top && text.starts_with([':', '!']);
+            at_top &= is_command || text.is_empty() || text.starts_with("//");
+            if is_command {
                 line.chars().map(|c| if c == '\n' { "\n".to_owned() } else { " ".repeat(c.len_utf8()) }).collect()
             } else {
                 line.to_owned()
             }
         })
         .collect()
+}
+
+/// Every word of a cell that may be a name.
+pub(crate) fn words(code: &str) -> BTreeSet<String> {
+    code.split(|c: char| !(c.is_alphanumeric() || c == '_'))
+        .filter(|word| !word.is_empty())
+        .map(str::to_owned)
+        .collect()
+}
+
+/// Where a cell cannot be read as Rust.
+fn problem(rust: &str, parsed: &Parse<SourceFile>) -> Option<(usize, String)> {
+    let errors = parsed.errors();
+    // A text that is not ended swallows what would close the brackets.
+    let endless = errors.iter().find(|error| error.to_string().contains("terminate"));
+    let error = endless.or(errors.first())?;
+    let own = |range: TextRange| usize::from(range.start()).saturating_sub(BEFORE.len());
+    if endless.is_none()
+        && let Some(open) = unclosed(parsed)
+    {
+        let line = line_of(rust, own(open.text_range()));
+        return Some((line, format!("the `{}` that begins here is not closed", open.text())));
+    }
+    let at = own(error.range()).min(rust.trim_end().len());
+    let line = line_of(rust, at);
+    if rust.lines().nth(line - 1).is_some_and(|text| text.trim_start().starts_with([':', '!'])) {
+        return Some((
+            line,
+            "a line that begins with `:` must stand at the top of its cell, before any code".to_owned(),
+        ));
+    }
+    Some((line, plain(&error.to_string())))
+}
+
+/// A bracket of a cell that is opened and not closed.
+fn unclosed(parsed: &Parse<SourceFile>) -> Option<SyntaxToken> {
+    let mut open: Vec<SyntaxToken> = Vec::new();
+    let mut closed = None;
+    for token in parsed.syntax_node().descendants_with_tokens().filter_map(|element| element.into_token()) {
+        let opens = match token.text() {
+            "(" | "[" | "{" => {
+                open.push(token);
+                continue;
+            }
+            ")" => "(",
+            "]" => "[",
+            "}" => "{",
+            _ => continue,
+        };
+        closed = open.pop();
+        if closed.as_ref().is_none_or(|last| last.text() != opens) {
+            return closed;
+        }
+    }
+    // Our own brace stays open when the last one closes one of the cell's.
+    closed.filter(|last| !open.is_empty() && usize::from(last.text_range().start()) >= BEFORE.len())
+}
+
+/// The parser's words without its names for signs.
+fn plain(words: &str) -> String {
+    let signs = [
+        ("SEMICOLON", "`;`"),
+        ("COMMA", "`,`"),
+        ("R_PAREN", "`)`"),
+        ("L_PAREN", "`(`"),
+        ("R_BRACK", "`]`"),
+        ("L_BRACK", "`[`"),
+        ("R_CURLY", "`}`"),
+        ("L_CURLY", "`{`"),
+        ("R_ANGLE", "`>`"),
+        ("L_ANGLE", "`<`"),
+        ("COLON", "`:`"),
+        ("EQ", "`=`"),
+        ("R_ARROW", "`->`"),
+        ("FAT_ARROW", "`=>`"),
+        ("IDENT", "a name"),
+    ];
+    let words = words.strip_prefix("Syntax Error: ").unwrap_or(words);
+    words
+        .split(' ')
+        .map(|word| signs.iter().find(|(name, _)| *name == word).map_or(word, |(_, sign)| sign))
+        .collect::<Vec<_>>()
+        .join(" ")
 }
 
 /// The line, from 1, at a byte offset.
@@ -109,7 +195,34 @@ mod tests {
 
     #[test]
     fn unfinished_code_is_a_problem_with_its_line() {
-        let (line, _) = outline("let a = 1;\nlet b = std::;").problem.unwrap_or_default();
-        assert_eq!(line, 2);
+        for (code, line, words) in [
+            ("let a = 1;\nlet b = std::;", 2, "expected"),
+            ("let a = 1;\nlet b = std::", 2, "expected"),
+            ("let a = 1;\nlet b = f(1,\n  2;\n", 2, "the `(` that begins here is not closed"),
+            ("if true {\n  1;\n", 1, "the `{` that begins here is not closed"),
+            ("let a = 1;\nlet s = \"abc;\n", 2, "string"),
+            ("let a = 1\nlet b = 2;", 1, "expected `;`"),
+            ("let a = 1;\n:vars", 2, "must stand at the top"),
+        ] {
+            let (found, said) = outline(code).problem.unwrap_or_default();
+            assert_eq!(found, line, "{code}: {said}");
+            assert!(said.contains(words), "{code}: {said}");
+        }
+    }
+
+    #[test]
+    fn whole_code_is_no_problem() {
+        for code in [
+            ":vars\n\n// a note\n:dep x = \"1\"\nlet a = 1;",
+            "let pi =\n    ::std::f64::consts::PI;",
+            "let s = \"(\"; let c = '{'; // [",
+            "macro_rules! two { ($x:expr) => { ($x, $x) } }\ntwo!(1)",
+            "#![allow(unused)]\nlet a = 1;",
+            "let Some(x) = y else { panic!() };\nif let Some(a) = b && a > 1 { 2 } else { 3 }",
+            "async { 1 }.await",
+            "",
+        ] {
+            assert_eq!(outline(code).problem, None, "{code}");
+        }
     }
 }

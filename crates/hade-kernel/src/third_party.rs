@@ -224,6 +224,19 @@ mod tests {
     use super::*;
 
     #[test]
+    fn another_compiler_gets_libraries_of_its_own() {
+        let toolchain = |version: &str| Toolchain {
+            cargo: "cargo".into(),
+            rustc: "rustc".into(),
+            version: version.to_owned(),
+            host: String::new(),
+            shared: PathBuf::new(),
+        };
+        assert_eq!(key(&toolchain("rustc 1.95.0")), key(&toolchain("rustc 1.95.0")));
+        assert_ne!(key(&toolchain("rustc 1.95.0")), key(&toolchain("rustc 1.96.0")));
+    }
+
+    #[test]
     fn causes_are_said_plainly() {
         let folder = Path::new("/cache/libraries-x");
         let full = plain("error: No space left on device (os error 28)".into(), folder);

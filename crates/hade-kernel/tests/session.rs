@@ -3,6 +3,19 @@
 //! The test program is started again by the session as the process that runs the cells, so it has
 //! a `main` of its own that begins with the hook.
 
+#[path = "session/commands.rs"]
+mod commands;
+#[path = "session/crashes.rs"]
+mod crashes;
+#[path = "session/errors.rs"]
+mod errors;
+#[path = "session/floods.rs"]
+mod floods;
+#[path = "session/interrupts.rs"]
+mod interrupts;
+#[path = "session/robustness.rs"]
+mod robustness;
+
 use std::collections::BTreeMap;
 use std::path::Path;
 use std::time::Duration;
@@ -23,7 +36,6 @@ const TESTS: &[(&str, Test)] = &[
     ("unfinished_code_is_named", unfinished_code_is_named),
     ("a_closure_cannot_stay", a_closure_cannot_stay),
     ("text_without_a_line_end_is_kept", text_without_a_line_end_is_kept),
-    ("a_flood_is_cut", a_flood_is_cut),
     ("an_exit_is_explained", an_exit_is_explained),
     ("a_stack_overflow_is_explained", a_stack_overflow_is_explained),
     ("a_segfault_is_explained", a_segfault_is_explained),
@@ -31,21 +43,31 @@ const TESTS: &[(&str, Test)] = &[
     ("an_endless_loop_is_stopped", an_endless_loop_is_stopped),
     ("a_notebook_runs_in_its_folder", a_notebook_runs_in_its_folder),
     ("a_notebook_stops_at_the_first_failure", a_notebook_stops_at_the_first_failure),
-    ("nothing_is_left_behind", nothing_is_left_behind),
 ];
+
+/// In the order in which they run; the last looks at what the others leave.
+fn all() -> impl Iterator<Item = &'static (&'static str, Test)> {
+    let last: &[(&str, Test)] = &[("nothing_is_left_behind", nothing_is_left_behind)];
+    [TESTS, errors::TESTS, commands::TESTS, floods::TESTS, crashes::TESTS, interrupts::TESTS, robustness::TESTS, last]
+        .into_iter()
+        .flatten()
+}
 
 fn main() {
     hade_kernel::runtime_hook();
     let args: Vec<String> = env::args().skip(1).collect();
     if args.iter().any(|arg| arg == "--list") {
-        for (name, _) in TESTS {
+        for (name, _) in all() {
             println!("{name}: test");
         }
         return;
     }
+    if let Some(role) = env::var_os(robustness::ROLE_VAR) {
+        return robustness::play(&role.to_string_lossy());
+    }
     let wanted: Vec<&String> = args.iter().filter(|arg| !arg.starts_with('-')).collect();
     let mut bench = Bench::new();
-    for (name, test) in TESTS {
+    for (name, test) in all() {
         if wanted.is_empty() || wanted.iter().any(|part| name.contains(part.as_str())) {
             let started = std::time::Instant::now();
             test(&mut bench);
@@ -200,16 +222,6 @@ fn text_without_a_line_end_is_kept(bench: &mut Bench) {
     assert_eq!((outcome.error.as_ref(), outcome.text(Stream::Stdout).as_str()), (None, "as a value"));
 }
 
-fn a_flood_is_cut(bench: &mut Bench) {
-    let outcome = bench.run("for i in 0..1_000_000 { println!(\"line {i}\"); }");
-    assert_eq!(outcome.error, None);
-    let text = outcome.text(Stream::Stdout);
-    assert_eq!(text.len(), 2 * 1024 * 1024);
-    assert!(text.starts_with("line 0\nline 1\n"));
-    assert!(outcome.text(Stream::Stderr).contains("kB more were printed"));
-    assert_eq!(bench.value("3"), "3");
-}
-
 fn an_exit_is_explained(bench: &mut Bench) {
     bench.ok("let lost_one = 1;");
     let outcome = bench.run("println!(\"last words\");\nstd::process::exit(3)");
@@ -247,7 +259,8 @@ fn a_dependency_beside_ours(bench: &mut Bench) {
 }
 
 fn an_endless_loop_is_stopped(bench: &mut Bench) {
-    let mut session = bench.start(SessionOptions { folder: None, cell_timeout: Some(Duration::from_secs(6)) });
+    let mut session =
+        bench.start(SessionOptions { cell_timeout: Some(Duration::from_secs(6)), ..SessionOptions::default() });
     let outcome = session.execute("println!(\"begun\");\nlet mut n = 0u64;\nloop { n = std::hint::black_box(n + 1); }");
     let error = outcome.error.clone().expect("an error");
     assert_eq!(error.name, "Timeout");

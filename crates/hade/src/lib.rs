@@ -7,6 +7,7 @@ pub mod error;
 pub mod faults;
 pub mod field;
 pub mod frames;
+pub mod interrupt;
 mod lines;
 pub mod prelude;
 pub mod replay;

@@ -1,8 +1,11 @@
 //! Cuts the output of the cells into records.
 
+use std::borrow::Cow;
 use std::collections::BTreeMap;
 use std::mem;
+use std::path::PathBuf;
 
+use super::overflow::Overflow;
 use crate::record::Record;
 
 /// The engine's words, each a line of its own.
@@ -12,10 +15,14 @@ const EARLY: &str = "EVCXR_ERROR_OCCURRED";
 const BEGIN: &str = "EVCXR_BEGIN_CONTENT ";
 const END: &str = "EVCXR_END_CONTENT";
 
-/// Text a cell may print on each stream; what is beyond is counted and dropped.
+/// Text a cell may print on both streams together; what is beyond goes to a file.
 const TEXT_LIMIT: usize = 2 * 1024 * 1024;
 /// What a cell may display in all.
 const SHOW_LIMIT: usize = 64 * 1024 * 1024;
+/// The plain text of one displayed value.
+const PLAIN_LIMIT: usize = 1024 * 1024;
+/// How many values a cell may display.
+const SHOWN_LIMIT: usize = 1000;
 /// The end of standard error is kept beyond the limit: it holds the message of a panic.
 const LAST_WORDS: usize = 16 * 1024;
 /// A line longer than this is passed on in pieces.
@@ -59,10 +66,15 @@ pub(super) struct Splitter {
     block: Option<Block>,
     /// Blocks that belong to one displayed value.
     bundle: BTreeMap<String, String>,
-    out_passed: usize,
-    err_passed: usize,
+    /// Text passed on, in bytes.
+    passed: usize,
+    /// Bytes displayed, and values.
     shown: usize,
+    values: usize,
+    /// Bytes of text and values not passed on.
     cut: u64,
+    not_shown: usize,
+    overflow: Overflow,
 }
 
 #[derive(Debug)]
@@ -74,12 +86,13 @@ struct Block {
 
 impl Splitter {
     /// Output passes unchanged until the first cell (the engine's own) has ended, unless `open`.
-    pub(super) fn new(open: bool) -> Splitter {
-        Splitter { open, ..Splitter::default() }
+    pub(super) fn new(open: bool, outputs: Option<PathBuf>) -> Splitter {
+        Splitter { open, overflow: Overflow::new(outputs), ..Splitter::default() }
     }
 
-    /// Takes what was read from both streams.
-    pub(super) fn take(&mut self, out: &[u8], err: &[u8]) -> Passed {
+    /// Takes what was read from both streams. Unless it is `settled`, text that was written before the last of
+    /// standard error may still come.
+    pub(super) fn take(&mut self, out: &[u8], err: &[u8], settled: bool) -> Passed {
         let mut passed = Passed::default();
         let mut rest = out;
         if !self.open {
@@ -92,20 +105,30 @@ impl Splitter {
         } else {
             self.err.extend_from_slice(err);
         }
-        self.partial.extend_from_slice(rest);
-        let bytes = mem::take(&mut self.partial);
-        let whole = bytes.iter().rposition(|&b| b == b'\n').map_or(0, |at| at + 1);
-        for line in bytes[..whole].split_inclusive(|&b| b == b'\n') {
-            let line = String::from_utf8_lossy(line);
-            self.line(line.trim_end_matches('\n'), &mut passed);
+        // A long line comes in many pieces; each is looked at once.
+        for piece in rest.split_inclusive(|&b| b == b'\n') {
+            self.partial.extend_from_slice(piece);
+            if self.partial.last() == Some(&b'\n') {
+                let line = mem::take(&mut self.partial);
+                let line = String::from_utf8_lossy(&line[..line.len() - 1]);
+                self.line(&line, &mut passed);
+            }
         }
-        self.partial = bytes[whole..].to_vec();
-        if self.partial.len() > LINE_LIMIT {
-            self.pass_partial();
+        match &mut self.block {
+            Some(block) if self.partial.len() > SHOW_LIMIT => block.lost += mem::take(&mut self.partial).len(),
+            None if self.partial.len() > LINE_LIMIT => self.pass_partial(),
+            _ => {}
         }
         self.pass_out(&mut passed);
-        self.pass_err(&mut passed, false);
+        if settled || self.err.len() > LAST_WORDS {
+            self.pass_err(&mut passed, false);
+        }
         passed
+    }
+
+    /// Whether the cell prints much.
+    pub(super) fn floods(&self) -> bool {
+        self.passed > LINE_LIMIT
     }
 
     /// Nothing came for a while: what is held back is passed on.
@@ -190,7 +213,8 @@ impl Splitter {
                 self.pass_err(passed, true);
                 if word == COMPLETE {
                     self.pass_cut(passed);
-                    *self = Splitter { open: true, ..Splitter::default() };
+                    let overflow = mem::take(&mut self.overflow);
+                    *self = Splitter { open: true, overflow, ..Splitter::default() };
                 }
                 passed.record(&record);
                 passed.raw(word);
@@ -212,6 +236,11 @@ impl Splitter {
             if block.lost > 0 {
                 block.mime = "text/plain".to_owned();
                 block.content = format!("[a display of more than {} MB was left out]", SHOW_LIMIT / 1024 / 1024);
+            } else if block.mime == "text/plain" && block.content.len() > PLAIN_LIMIT {
+                let end = block.content.floor_char_boundary(PLAIN_LIMIT);
+                let left = block.content.len() - end;
+                block.content.truncate(end);
+                block.content.push_str(&format!("\n[{} kB more of this value are left out]", left.div_ceil(1024)));
             }
             self.shown += block.content.len();
             self.bundle.insert(block.mime, block.content);
@@ -226,11 +255,25 @@ impl Splitter {
         if !self.bundle.is_empty() {
             self.pass_bundle(passed);
         }
-        let room = TEXT_LIMIT.saturating_sub(self.out_passed);
-        let kept = &text[..text.floor_char_boundary(room)];
-        self.out.push_str(kept);
-        self.out_passed += kept.len();
-        self.cut += (text.len() - kept.len()) as u64;
+        let kept = self.within_limit(text, 0);
+        self.out.push_str(&kept);
+    }
+
+    /// As much of a text as may be shown, and its last bytes whatever comes; all of it is kept.
+    fn within_limit<'a>(&mut self, text: &'a str, last: usize) -> Cow<'a, str> {
+        let head = text.floor_char_boundary(TEXT_LIMIT.saturating_sub(self.passed));
+        let tail = text.ceil_char_boundary(text.len().saturating_sub(last)).max(head);
+        self.overflow.keep(text.as_bytes());
+        if tail > head {
+            self.overflow.spill();
+        }
+        self.cut += (tail - head) as u64;
+        let kept = match tail == text.len() {
+            true => Cow::from(&text[..head]),
+            false => Cow::from([&text[..head], &text[tail..]].concat()),
+        };
+        self.passed += kept.len();
+        kept
     }
 
     /// Passes an unfinished line on, unless it may be one of the engine's words.
@@ -255,8 +298,19 @@ impl Splitter {
     }
 
     fn pass_bundle(&mut self, passed: &mut Passed) {
-        if !self.bundle.is_empty() {
-            passed.record(&Record::Show(mem::take(&mut self.bundle)));
+        if self.bundle.is_empty() {
+            return;
+        }
+        let bundle = mem::take(&mut self.bundle);
+        if bundle.len() == 1 && bundle.get("text/plain").is_some_and(|text| text == "()") {
+            // What a cell that ends in no value shows.
+            return;
+        }
+        self.values += 1;
+        if self.values <= SHOWN_LIMIT {
+            passed.record(&Record::Show(bundle));
+        } else {
+            self.not_shown += 1;
         }
     }
 
@@ -265,25 +319,30 @@ impl Splitter {
             return;
         }
         self.pass_bundle(passed);
-        let text = String::from_utf8_lossy(&mem::take(&mut self.err)).into_owned();
-        let room = TEXT_LIMIT.saturating_sub(self.err_passed);
-        let head = text.floor_char_boundary(room);
-        let tail = if at_marker {
-            text.ceil_char_boundary(text.len().saturating_sub(LAST_WORDS)).max(head)
-        } else {
-            text.len()
-        };
-        let kept = format!("{}{}", &text[..head], &text[tail..]);
-        self.cut += (tail - head) as u64;
-        self.err_passed += kept.len();
+        let mut bytes = mem::take(&mut self.err);
+        if !at_marker && self.passed + bytes.len() > TEXT_LIMIT {
+            // The end waits: it may be the message of a marker that has not come yet.
+            let mut end = bytes.len().saturating_sub(LAST_WORDS);
+            while bytes.get(end).is_some_and(|byte| byte & 0xc0 == 0x80) {
+                end += 1;
+            }
+            self.err = bytes.split_off(end);
+        }
+        let text = String::from_utf8_lossy(&bytes).into_owned();
+        let kept = self.within_limit(&text, if at_marker { LAST_WORDS } else { 0 });
         if !kept.is_empty() {
-            passed.record(&Record::Err(kept));
+            passed.record(&Record::Err(kept.into_owned()));
         }
     }
 
     fn pass_cut(&mut self, passed: &mut Passed) {
+        let kept = self.overflow.end();
+        if self.not_shown > 0 {
+            passed.record(&Record::NotShown(mem::take(&mut self.not_shown)));
+        }
         if self.cut > 0 {
-            passed.record(&Record::Cut(mem::take(&mut self.cut)));
+            let (file, whole) = kept.map_or((None, false), |(file, whole)| (Some(file), whole));
+            passed.record(&Record::Cut { bytes: mem::take(&mut self.cut), file, whole });
         }
     }
 }
@@ -310,24 +369,25 @@ mod tests {
     #[test]
     fn everything_passes_unchanged_until_the_first_cell_has_ended() {
         let start = b"EVCXR_BEGIN_CONTENT text/plain\n42\nEVCXR_END_CONTENT\nEVCXR_EXECUTION_COMPLETE\n";
-        let mut splitter = Splitter::new(false);
-        let mut passed = splitter.take(&start[..20], b"warning");
-        passed.extend(splitter.take(&start[20..], b""));
+        let mut splitter = Splitter::new(false, None);
+        let mut passed = splitter.take(&start[..20], b"warning", true);
+        passed.extend(splitter.take(&start[20..], b"", true));
         assert_eq!(passed.out, start);
         assert_eq!(passed.err, b"warning");
-        let passed = splitter.take(b"hello\n", b"");
+        let passed = splitter.take(b"hello\n", b"", true);
         assert_eq!(records(&passed), [Record::Out("hello\n".into())]);
     }
 
     #[test]
     fn displays_and_prints_keep_their_order() {
-        let mut splitter = Splitter::new(true);
+        let mut splitter = Splitter::new(true, None);
         let passed = splitter.take(
             b"a\nEVCXR_BEGIN_CONTENT text/html\n<b>\n</b>\nEVCXR_END_CONTENT\n\
               EVCXR_BEGIN_CONTENT text/plain\nb\nEVCXR_END_CONTENT\n\
               EVCXR_BEGIN_CONTENT text/plain\nc\nEVCXR_END_CONTENT\nno endEVCXR_BEGIN_CONTENT text/plain\nd\n\
               EVCXR_END_CONTENT\nEVCXR_EXECUTION_COMPLETE\n",
             b"",
+            true,
         );
         assert_eq!(
             records(&passed),
@@ -345,8 +405,8 @@ mod tests {
 
     #[test]
     fn a_marker_finds_the_message_written_before_it() {
-        let mut splitter = Splitter::new(true);
-        let passed = splitter.take(b"x\nEVCXR_ERROR_OCCURRED\nEVCXR_EXECUTION_COMPLETE\n", b"no such depth\n");
+        let mut splitter = Splitter::new(true, None);
+        let passed = splitter.take(b"x\nEVCXR_ERROR_OCCURRED\nEVCXR_EXECUTION_COMPLETE\n", b"no such depth\n", true);
         assert_eq!(
             records(&passed),
             [Record::Out("x\n".into()), Record::Err("no such depth\n".into()), Record::Early, Record::Done,]
@@ -354,42 +414,67 @@ mod tests {
     }
 
     #[test]
+    fn a_message_waits_for_the_text_before_it() {
+        let mut splitter = Splitter::new(true, None);
+        let mut passed = splitter.take(b"before\n", b"no such depth\n", false);
+        passed.extend(splitter.take(b"too\nEVCXR_ERROR_OCCURRED\n", b"", true));
+        let out = |text: &str| Record::Out(text.into());
+        assert_eq!(
+            records(&passed),
+            [out("before\n"), out("too\n"), Record::Err("no such depth\n".into()), Record::Early]
+        );
+    }
+
+    #[test]
+    fn a_message_after_a_flood_is_kept() {
+        let mut splitter = Splitter::new(true, None);
+        for _ in 0..100 {
+            splitter.take(b"", &[b'x'; LINE_LIMIT], true);
+        }
+        splitter.take(b"", "the depth is negative\u{2026}\n".as_bytes(), true);
+        let last = records(&splitter.take(b"EVCXR_ERROR_OCCURRED\n", b"", true));
+        let [Record::Err(words), Record::Early] = last.as_slice() else { panic!("{last:?}") };
+        assert!(words.ends_with("the depth is negative\u{2026}\n") && words.len() <= LAST_WORDS);
+    }
+
+    #[test]
     fn a_marker_after_unfinished_text_is_seen() {
-        let mut splitter = Splitter::new(true);
-        let passed = splitter.take(b"abcEVCXR_EXECUTION_COMPLETE\n", b"");
+        let mut splitter = Splitter::new(true, None);
+        let passed = splitter.take(b"abcEVCXR_EXECUTION_COMPLETE\n", b"", true);
         assert_eq!(records(&passed), [Record::Out("abc".into()), Record::Done]);
     }
 
     #[test]
     fn a_flood_is_cut_and_the_next_cell_is_whole() {
-        let mut splitter = Splitter::new(true);
+        let mut splitter = Splitter::new(true, None);
         let line = [vec![b'x'; 1023], vec![b'\n']].concat();
         let mut got = 0;
         for _ in 0..4096 {
-            for record in records(&splitter.take(&line, b"")) {
+            for record in records(&splitter.take(&line, b"", true)) {
                 if let Record::Out(text) = record {
                     got += text.len();
                 }
             }
         }
         assert_eq!(got, TEXT_LIMIT);
-        let end = records(&splitter.take(b"EVCXR_EXECUTION_COMPLETE\nnext\n", b""));
-        assert_eq!(end, [Record::Cut(2 * 1024 * 1024), Record::Done, Record::Out("next\n".into())]);
+        let end = records(&splitter.take(b"EVCXR_EXECUTION_COMPLETE\nnext\n", b"", true));
+        let cut = Record::Cut { bytes: 2 * 1024 * 1024, file: None, whole: false };
+        assert_eq!(end, [cut, Record::Done, Record::Out("next\n".into())]);
     }
 
     #[test]
     fn an_unfinished_line_passes_when_nothing_follows() {
-        let mut splitter = Splitter::new(true);
-        assert!(splitter.take("50 % \u{2026}".as_bytes(), b"").out.is_empty());
+        let mut splitter = Splitter::new(true, None);
+        assert!(splitter.take("50 % \u{2026}".as_bytes(), b"", true).out.is_empty());
         assert_eq!(records(&splitter.idle()), [Record::Out("50 % \u{2026}".into())]);
-        assert!(splitter.take(b"EVCXR_EXEC", b"").out.is_empty());
+        assert!(splitter.take(b"EVCXR_EXEC", b"", true).out.is_empty());
         assert!(splitter.idle().out.is_empty());
     }
 
     #[test]
     fn the_last_words_of_a_process_pass() {
-        let mut splitter = Splitter::new(true);
-        splitter.take(b"half", b"");
+        let mut splitter = Splitter::new(true, None);
+        splitter.take(b"half", b"", true);
         assert_eq!(records(&splitter.end()), [Record::Out("half".into())]);
     }
 }

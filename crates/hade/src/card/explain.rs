@@ -5,6 +5,7 @@ use serde::{Deserialize, Serialize};
 
 use super::{Check, Figure, Item, Method, Step};
 use crate::error::{Error, Result};
+use crate::interrupt;
 
 /// Typed data written as JSON, kept behind a type of our own.
 #[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
@@ -141,6 +142,7 @@ pub trait Explain: Sized + 'static {
 
     /// The card.
     fn card(&self) -> Card {
+        interrupt::check();
         let (inputs, outcome) = (self.inputs(), self.outcome());
         Card {
             kind: Self::KIND.to_owned(),

@@ -8,6 +8,7 @@ use super::shear::ShearWall;
 use crate::card::{Card, Explain, Item};
 use crate::error::Result;
 use crate::frames::Attitude;
+use crate::interrupt;
 use crate::rock::Strength;
 use crate::units::{Pressure, Quantity};
 
@@ -38,6 +39,7 @@ impl Wall {
     }
 
     pub(super) fn of(setup: WallSetup) -> Result<Self> {
+        interrupt::check();
         let attitude = setup.checked()?;
         let WallInputs { stress, pore, rock } = setup.inputs;
         let kirsch = Kirsch::new(stress.tensor(), rock.poisson).warmed(setup.thermal_stress());
@@ -122,6 +124,7 @@ impl Wall {
     }
 
     pub(super) fn at_pressure(&self, pressure: Pressure) -> Result<AtPressure> {
+        interrupt::check();
         pressure.finite("wall pressure")?;
         Ok(AtPressure { wall: self.setup, pressure })
     }

@@ -5,6 +5,7 @@ use serde::{Deserialize, Serialize};
 
 use crate::error::{Error, Result};
 use crate::frames::Attitude;
+use crate::interrupt;
 use crate::rock::Rock;
 use crate::stress::Stress;
 use crate::stress::tensor::Tensor;
@@ -60,6 +61,7 @@ impl DirectionMap {
         let turns: Vec<(f64, f64)> = (0..azimuths).map(|k| (k as f64 * inputs.step.si()).sin_cos()).collect();
         let mut lower = vec![None; (rows + 1) * azimuths];
         lower.par_chunks_mut(azimuths).enumerate().for_each(|(row, cells)| {
+            interrupt::check();
             let inclined = (row as f64 * inputs.step.si()).sin_cos();
             for (cell, turned) in cells.iter_mut().zip(&turns) {
                 let kirsch = Kirsch::new(in_hole(far, inclined, *turned), rock.poisson);

@@ -4,6 +4,7 @@ use serde::{Deserialize, Serialize};
 
 use super::limit::{Limit, LimitKind};
 use crate::error::Result;
+use crate::interrupt;
 use crate::units::{Angle, Pressure, Quantity, require_between};
 use crate::well::wall::Wall;
 use crate::well::wall::round::Peak;
@@ -76,6 +77,7 @@ impl Wall {
     }
 
     fn limits_within(&self, width: Angle) -> Limits {
+        interrupt::check();
         let window = self.shear.window();
         let none_safe = |kind, own_side| Limit::none_safe(self, kind, self.shear.least_bad(), own_side);
         let (lower, upper) = match window {
