@@ -26,7 +26,7 @@ enum Command {
     Run(run::RunArgs),
     /// Run a notebook from a clean start and write its calculation memo
     Memo(memo::MemoArgs),
-    /// Prepare or remove the compiled libraries that notebooks use
+    /// The Jupyter kernel, and the compiled libraries that notebooks use
     Kernel(kernel::KernelArgs),
 }
 

@@ -1,5 +1,6 @@
 //! Gathers what a cell puts out while the engine runs it.
 
+use std::collections::VecDeque;
 use std::mem;
 use std::sync::{Arc, Condvar, Mutex, MutexGuard, PoisonError};
 use std::thread;
@@ -8,7 +9,11 @@ use std::time::{Duration, Instant};
 use evcxr::EvalContextOutputs;
 
 use crate::cell::{Output, Stream};
+use crate::outcome;
 use crate::record::Record;
+
+/// Standard error waits so long before it is shown: the text just before a stop is the message.
+const LAST_WORDS_WAIT: Duration = Duration::from_millis(150);
 
 /// How a cell ended early.
 #[derive(Debug, Clone, PartialEq, Eq)]
@@ -25,13 +30,18 @@ pub(crate) struct Gathered {
     pub(crate) outputs: Vec<Output>,
     pub(crate) stop: Option<Stop>,
     done: bool,
+    /// When each piece of the standard error text at the end came, and its length.
+    recent: VecDeque<(Instant, usize)>,
 }
 
 impl Gathered {
     fn take(&mut self, record: Record) {
         match record {
             Record::Out(text) => self.text(Stream::Stdout, &text),
-            Record::Err(text) => self.text(Stream::Stderr, &text),
+            Record::Err(text) => {
+                self.text(Stream::Stderr, &text);
+                self.recent.push_back((Instant::now(), text.len()));
+            }
             Record::Show(bundle) => {
                 let unit = bundle.len() == 1 && bundle.get("text/plain").is_some_and(|text| text.trim() == "()");
                 if !unit {
@@ -53,6 +63,29 @@ impl Gathered {
             Some(Output::Text { stream: last, text }) if *last == stream => text.push_str(more),
             _ => self.outputs.push(Output::Text { stream, text: more.to_owned() }),
         }
+    }
+
+    /// What may be shown while the cell still runs: everything but standard error text at the end that
+    /// may yet become a message.
+    fn ready(&mut self) -> Vec<Output> {
+        let Some(Output::Text { stream: Stream::Stderr, text }) = self.outputs.last_mut() else {
+            self.recent.clear();
+            return mem::take(&mut self.outputs);
+        };
+        while self.recent.front().is_some_and(|(came, _)| came.elapsed() >= LAST_WORDS_WAIT) {
+            self.recent.pop_front();
+        }
+        let young: usize = self.recent.iter().map(|(_, length)| length).sum();
+        let old = text.floor_char_boundary(text.len().saturating_sub(young));
+        let kept = text.split_off(outcome::fault_at(text).map_or(old, |fault| old.min(fault)));
+        let mut ready = mem::take(&mut self.outputs);
+        if matches!(ready.last(), Some(Output::Text { text, .. }) if text.is_empty()) {
+            ready.pop();
+        }
+        if !kept.is_empty() {
+            self.outputs.push(Output::Text { stream: Stream::Stderr, text: kept });
+        }
+        ready
     }
 
     /// The standard error text at the end of the outputs; it becomes the message.
@@ -96,6 +129,11 @@ impl Collector {
         Collector { shared, nothing_waits: Box::new(move || waiting.is_empty()) }
     }
 
+    /// For showing outputs while the cell runs.
+    pub(crate) fn live(&self) -> Live {
+        Live(Arc::clone(&self.shared))
+    }
+
     /// What has come since the last call, once the cell's last record is in. A cell whose process
     /// died, or that did not compile, has no last record.
     pub(crate) fn take(&self, wait_for_done: bool) -> Gathered {
@@ -122,6 +160,16 @@ impl Collector {
     }
 }
 
+/// Takes outputs out while the cell runs; what it leaves is in [`Collector::take`].
+pub(crate) struct Live(Arc<(Mutex<Gathered>, Condvar)>);
+
+impl Live {
+    /// What may be shown by now.
+    pub(crate) fn ready(&self) -> Vec<Output> {
+        lock(&self.0.0).ready()
+    }
+}
+
 fn lock(shared: &Mutex<Gathered>) -> MutexGuard<'_, Gathered> {
     shared.lock().unwrap_or_else(PoisonError::into_inner)
 }
@@ -141,6 +189,26 @@ mod tests {
         gathered.take(Record::Early);
         assert_eq!(gathered.stop, Some(Stop::Early("the depth is negative".into())));
         assert_eq!(gathered.outputs.len(), 1);
+    }
+
+    #[test]
+    fn outputs_are_ready_at_once_but_last_words_wait() {
+        let text = |stream, text: &str| Output::Text { stream, text: text.to_owned() };
+        let mut gathered = Gathered::default();
+        gathered.take(Record::Out("a\n".into()));
+        gathered.take(Record::Err("old\n".into()));
+        assert_eq!(gathered.ready(), [text(Stream::Stdout, "a\n")]);
+        thread::sleep(LAST_WORDS_WAIT);
+        gathered.take(Record::Err("thread panicked\n".into()));
+        assert_eq!(gathered.ready(), [text(Stream::Stderr, "old\n")]);
+        assert!(gathered.ready().is_empty());
+        gathered.take(Record::Panic);
+        assert_eq!(gathered.stop, Some(Stop::Panic("thread panicked".into())));
+        gathered.take(Record::Err("Segmentation fault.\n".into()));
+        thread::sleep(LAST_WORDS_WAIT);
+        assert!(gathered.ready().is_empty());
+        gathered.take(Record::Out("b".into()));
+        assert_eq!(gathered.ready().len(), 2);
     }
 
     #[test]

@@ -61,13 +61,16 @@ fn died(words: &str, before: &[String], outputs: &mut Vec<Output>) -> CellError 
     CellError { name: "ProcessDied".to_owned(), sentence: what, detail, line: None }
 }
 
+/// Where in standard error the engine begins to tell of a fault in memory.
+pub(crate) fn fault_at(text: &str) -> Option<usize> {
+    ["Segmentation fault.\n", "Bus error.\n", "Illegal instruction.\n"].iter().find_map(|words| text.find(words))
+}
+
 /// Takes the engine's own backtrace away; whether there was one.
 fn cut_backtrace(outputs: &mut Vec<Output>) -> bool {
     for at in 0..outputs.len() {
         if let Some(Output::Text { stream: Stream::Stderr, text }) = outputs.get_mut(at)
-            && let Some(start) = ["Segmentation fault.\n", "Bus error.\n", "Illegal instruction.\n"]
-                .iter()
-                .find_map(|words| text.find(words))
+            && let Some(start) = fault_at(text)
         {
             text.truncate(start);
             let keep = if text.is_empty() { at } else { at + 1 };
@@ -85,6 +88,19 @@ pub(crate) fn timeout(limit: Duration, before: &[String]) -> CellError {
         limit.as_secs_f64()
     );
     CellError { name: "Timeout".to_owned(), detail: format!("{sentence}.{}", lost(before)), sentence, line: None }
+}
+
+/// A cell that was interrupted while it ran.
+pub(crate) fn interrupted(before: &[String]) -> CellError {
+    let sentence = "interrupted; the cell did not run to its end";
+    let detail = format!("{sentence}.{}", lost(before));
+    CellError { name: "Interrupted".to_owned(), sentence: sentence.to_owned(), detail, line: None }
+}
+
+/// A cell that waits for something to be typed.
+pub(crate) fn asks_for_input() -> CellError {
+    let sentence = "a cell cannot read standard input (stdin); write the value in the cell";
+    CellError { name: "NoInput".to_owned(), sentence: sentence.to_owned(), detail: sentence.to_owned(), line: None }
 }
 
 /// Variables whose types cannot be kept between cells.

@@ -100,7 +100,11 @@ pub fn run_notebook(path: impl AsRef<Path>, options: &RunOptions, progress: &mut
     progress.step(Step::Starting);
     let mut session = Session::start(
         &prepared,
-        SessionOptions { folder: Some(notebook.folder().to_path_buf()), cell_timeout: options.cell_timeout },
+        SessionOptions {
+            folder: Some(notebook.folder().to_path_buf()),
+            cell_timeout: options.cell_timeout,
+            ..SessionOptions::default()
+        },
     )?;
     notebook.clear_outputs();
     let sources = notebook.code_cells();

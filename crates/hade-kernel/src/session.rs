@@ -1,5 +1,7 @@
 //! A session: one notebook engine with `hade` loaded.
 
+mod live;
+
 use std::fs::{self, File};
 use std::panic::{AssertUnwindSafe, catch_unwind};
 use std::path::{Path, PathBuf};
@@ -14,6 +16,7 @@ use crate::cell::{CellError, CellOutcome, Output};
 use crate::collect::{Collector, Gathered};
 use crate::error::{Error, Result};
 use crate::hook::OPEN_FLAG_VAR;
+use crate::interrupt::InterruptHandle;
 use crate::outcome;
 use crate::prepare::Prepared;
 use crate::probe::{self, Answer};
@@ -38,6 +41,8 @@ pub struct SessionOptions {
     pub folder: Option<PathBuf>,
     /// A cell that runs longer is stopped, and its variables are lost.
     pub cell_timeout: Option<Duration>,
+    /// Stops cells of this session.
+    pub interrupt: InterruptHandle,
 }
 
 /// A notebook session with `hade` loaded.
@@ -72,7 +77,9 @@ impl Session {
         let started = Instant::now();
         let timer = self.options.cell_timeout.map(|limit| Timer::start(self.engine.context.process_handle(), limit));
         let before = self.engine.variables();
+        self.options.interrupt.begin(self.engine.context.process_handle());
         let result = self.engine.run(cell);
+        let interrupted = self.options.interrupt.end();
         let timed_out = timer.is_some_and(Timer::stop);
         let waits =
             !matches!(result, Ran::Engine(Err(evcxr::Error::SubprocessTerminated(_)))) && self.engine.ran_code(&result);
@@ -84,6 +91,9 @@ impl Session {
                 let _ = self.engine.context.execute(":restart");
             }
             outcome.error = Some(outcome::timeout(self.options.cell_timeout.unwrap_or_default(), &before));
+        }
+        if interrupted && outcome.error.as_ref().is_some_and(|error| error.name == "ProcessDied") {
+            outcome.error = Some(outcome::interrupted(&before));
         }
         outcome.elapsed = started.elapsed();
         outcome
@@ -185,6 +195,10 @@ impl Engine {
     }
 
     fn run(&mut self, cell: &str) -> Ran {
+        if syntax::reads_input(cell) {
+            // It would wait for ever: its standard input carries the engine's own commands.
+            return Ran::Refused(outcome::asks_for_input());
+        }
         let outline = syntax::outline(cell);
         let mut code = cell.to_owned();
         if cell.contains("print!(") && !outline.ends_in_expression && outline.problem.is_none() {
@@ -231,6 +245,7 @@ struct SessionFolder {
     _lock: File,
 }
 
+/// Begins the name; after it comes the number of the process.
 const FOLDER_PREFIX: &str = "hade-session-";
 const FOLDER_LOCK: &str = "lock";
 
@@ -238,7 +253,7 @@ impl SessionFolder {
     fn new() -> Result<SessionFolder> {
         let place = env::temp_dir();
         let folder =
-            tempfile::Builder::new().prefix(FOLDER_PREFIX).tempdir().map_err(Error::file("make a folder in", place))?;
+            tempfile::Builder::new().prefix(&own_prefix()).tempdir().map_err(Error::file("make a folder in", place))?;
         let path = folder.path().join(FOLDER_LOCK);
         let lock = File::create(&path).map_err(Error::file("write", &path))?;
         lock.lock().map_err(Error::file("lock", &path))?;
@@ -247,6 +262,19 @@ impl SessionFolder {
 
     fn path(&self) -> &Path {
         self.folder.path()
+    }
+}
+
+fn own_prefix() -> String {
+    format!("{FOLDER_PREFIX}{}-", process::id())
+}
+
+/// Removes the folders of this process's sessions, when it ends before they do.
+pub(crate) fn remove_folders() {
+    for entry in fs::read_dir(env::temp_dir()).into_iter().flatten().flatten() {
+        if entry.file_name().to_string_lossy().starts_with(&own_prefix()) {
+            let _ = fs::remove_dir_all(entry.path());
+        }
     }
 }
 

@@ -247,7 +247,8 @@ fn a_dependency_beside_ours(bench: &mut Bench) {
 }
 
 fn an_endless_loop_is_stopped(bench: &mut Bench) {
-    let mut session = bench.start(SessionOptions { folder: None, cell_timeout: Some(Duration::from_secs(6)) });
+    let mut session =
+        bench.start(SessionOptions { cell_timeout: Some(Duration::from_secs(6)), ..SessionOptions::default() });
     let outcome = session.execute("println!(\"begun\");\nlet mut n = 0u64;\nloop { n = std::hint::black_box(n + 1); }");
     let error = outcome.error.clone().expect("an error");
     assert_eq!(error.name, "Timeout");
