@@ -1,8 +1,10 @@
-//! `hade kernel`: the compiled libraries that notebooks use.
-//!
-//! The Jupyter kernel itself (`hade kernel start`) has its place here later.
+//! `hade kernel`: the kernel Jupyter runs, and the compiled libraries that every notebook uses.
+
+use std::path::PathBuf;
+use std::time::{Duration, Instant, SystemTime};
 
 use clap::{Args, Subcommand};
+use hade_kernel::{CacheReport, KernelPlace};
 
 use crate::Failure;
 use crate::bar::Bar;
@@ -16,26 +18,87 @@ pub struct KernelArgs {
 
 #[derive(Debug, Subcommand)]
 enum KernelCommand {
-    /// Build the libraries now, so that the first notebook need not wait
-    Install,
+    /// Build the libraries now, so that the first notebook need not wait, and make Jupyter know the kernel
+    Install(InstallArgs),
+    /// Serve one notebook to Jupyter (Jupyter calls this)
+    Start(StartArgs),
     /// Remove everything that was built; the next run builds it anew
     Clean,
 }
 
+#[derive(Debug, Args)]
+struct InstallArgs {
+    /// Make it known to this user's Jupyter (the default)
+    #[arg(long, conflicts_with = "prefix")]
+    user: bool,
+    /// Make it known to the Jupyter of a Python environment, such as "$VIRTUAL_ENV"
+    #[arg(long, value_name = "DIR")]
+    prefix: Option<PathBuf>,
+}
+
+#[derive(Debug, Args)]
+struct StartArgs {
+    /// The file in which Jupyter says where to listen
+    #[arg(long, short = 'f', value_name = "FILE")]
+    connection_file: PathBuf,
+}
+
 /// Does what the arguments say.
 pub(crate) fn run(args: &KernelArgs) -> Result<(), Failure> {
-    match args.command {
-        KernelCommand::Install => {
-            let mut bar = Bar::new();
-            let prepared = hade_kernel::prepare(&mut bar);
-            bar.clear();
-            prepared?;
-            eprintln!("ready; libraries are in {}", hade_kernel::cache_folder()?.display());
-        }
+    match &args.command {
+        KernelCommand::Install(args) => install(args)?,
+        KernelCommand::Start(args) => hade_kernel::serve_kernel(&args.connection_file)?,
         KernelCommand::Clean => {
             let report = hade_kernel::clean()?;
-            eprintln!("removed {:.0} MB from {}", report.bytes as f64 / 1e6, report.folder.display());
+            eprintln!("removed {} from {}", megabytes(&report), report.folder.display());
         }
     }
     Ok(())
+}
+
+fn install(args: &InstallArgs) -> Result<(), Failure> {
+    let started = Instant::now();
+    let mut bar = Bar::new();
+    let prepared = hade_kernel::prepare(&mut bar);
+    bar.clear();
+    prepared?;
+    let report = hade_kernel::cache_report()?;
+    let built = match report.built.and_then(|when| SystemTime::now().duration_since(when).ok()) {
+        Some(age) if age > started.elapsed() => format!("built {} ago", rough(age)),
+        _ => format!("built now, in {}", rough(started.elapsed())),
+    };
+    eprintln!("libraries: {} in {}, {built}", megabytes(&report), report.folder.display());
+    let place = args.prefix.clone().map_or(KernelPlace::User, KernelPlace::Prefix);
+    let folder = hade_kernel::install_kernel(&place)?;
+    eprintln!("kernel: {}; Jupyter shows it as \"Hade (Rust)\"", folder.display());
+    Ok(())
+}
+
+fn megabytes(report: &CacheReport) -> String {
+    format!("{:.0} MB", report.bytes as f64 / 1e6)
+}
+
+/// A length of time in its largest unit.
+fn rough(time: Duration) -> String {
+    let seconds = time.as_secs();
+    let (count, unit) = match seconds {
+        0..120 => (seconds, "second"),
+        120..7_200 => (seconds / 60, "minute"),
+        7_200..172_800 => (seconds / 3_600, "hour"),
+        _ => (seconds / 86_400, "day"),
+    };
+    format!("{count} {unit}{}", if count == 1 { "" } else { "s" })
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn times_are_said_in_their_largest_unit() {
+        for (seconds, said) in [(1, "1 second"), (119, "119 seconds"), (125, "2 minutes"), (90_000, "25 hours")] {
+            assert_eq!(rough(Duration::from_secs(seconds)), said);
+        }
+        assert_eq!(rough(Duration::from_secs(200_000)), "2 days");
+    }
 }

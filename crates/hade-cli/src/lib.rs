@@ -32,7 +32,7 @@ enum Command {
     Memo(memo::MemoArgs),
     /// The templates of memos: list them, copy one, try one
     Template(template::TemplateArgs),
-    /// Prepare or remove the compiled libraries that notebooks use
+    /// The Jupyter kernel, and the compiled libraries that notebooks use
     Kernel(kernel::KernelArgs),
 }
 

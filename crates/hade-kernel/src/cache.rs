@@ -9,7 +9,7 @@ use crate::error::{Error, Result};
 use crate::progress::{Progress, Step};
 
 /// Overrides the place of the cache folder.
-const CACHE_VAR: &str = "HADE_CACHE";
+pub(crate) const CACHE_VAR: &str = "HADE_CACHE";
 
 /// Written last; a folder without it is not whole and is made anew. It holds the folder's own
 /// path: what is compiled does not survive a move.
@@ -44,13 +44,30 @@ pub fn cache_folder() -> Result<PathBuf> {
     })
 }
 
-/// What [`clean`] removed.
+/// What the cache folder holds, or held before [`clean`].
 #[derive(Debug, Clone, PartialEq, Eq)]
 pub struct CacheReport {
     /// The cache folder.
     pub folder: PathBuf,
-    /// How many bytes it held.
+    /// How many bytes are in it.
     pub bytes: u64,
+    /// When the last of it was finished.
+    pub built: Option<SystemTime>,
+}
+
+/// What the cache folder holds.
+///
+/// # Errors
+/// As [`cache_folder`].
+pub fn cache_report() -> Result<CacheReport> {
+    let folder = cache_folder()?;
+    let built = fs::read_dir(&folder)
+        .into_iter()
+        .flatten()
+        .flatten()
+        .filter_map(|entry| fs::metadata(entry.path().join(STAMP)).ok()?.modified().ok())
+        .max();
+    Ok(CacheReport { bytes: size_of(&folder), folder, built })
 }
 
 /// Removes everything in the cache folder; the next session makes it anew.
@@ -58,23 +75,23 @@ pub struct CacheReport {
 /// # Errors
 /// [`Error::Busy`] if a session is running, [`Error::File`] if something cannot be removed.
 pub fn clean() -> Result<CacheReport> {
-    let folder = cache_folder()?;
-    let bytes = size_of(&folder);
+    let report = cache_report()?;
+    let folder = &report.folder;
     if folder.is_dir() {
-        let _lock = lock(&folder, &mut crate::progress::Silent)?;
+        let _lock = lock(folder, &mut crate::progress::Silent)?;
         let in_use = open(&folder.join(IN_USE))?;
         if in_use.try_lock().is_err() {
-            return Err(Error::Busy { path: folder });
+            return Err(Error::Busy { path: folder.clone() });
         }
-        for entry in fs::read_dir(&folder).map_err(Error::file("read", &folder))? {
-            let path = entry.map_err(Error::file("read", &folder))?.path();
+        for entry in fs::read_dir(folder).map_err(Error::file("read", folder))? {
+            let path = entry.map_err(Error::file("read", folder))?.path();
             // Only what this program makes: the variable may name a folder with other things.
             if path.is_dir() && name_is_ours(&path) {
                 fs::remove_dir_all(&path).map_err(Error::file("remove", &path))?;
             }
         }
     }
-    Ok(CacheReport { folder, bytes })
+    Ok(report)
 }
 
 fn name_is_ours(path: &Path) -> bool {

@@ -36,6 +36,11 @@ pub enum Output {
     Display(BTreeMap<String, String>),
 }
 
+/// Whether an output may come after the cell's result: standard error has no sure place among the others.
+pub(crate) fn is_aside(output: &Output) -> bool {
+    matches!(output, Output::Text { stream: Stream::Stderr, .. })
+}
+
 /// Why a cell failed.
 #[derive(Debug, Clone, PartialEq, Eq)]
 pub struct CellError {

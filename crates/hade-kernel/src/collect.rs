@@ -1,5 +1,6 @@
 //! Gathers what a cell puts out while the engine runs it.
 
+use std::collections::VecDeque;
 use std::mem;
 use std::sync::atomic::{AtomicBool, Ordering};
 use std::sync::{Arc, Condvar, Mutex, MutexGuard, PoisonError};
@@ -9,7 +10,11 @@ use std::time::{Duration, Instant};
 use evcxr::EvalContextOutputs;
 
 use crate::cell::{Output, Stream};
+use crate::outcome;
 use crate::record::Record;
+
+/// Standard error waits so long before it is shown: the text just before a stop is the message.
+const LAST_WORDS_WAIT: Duration = Duration::from_millis(150);
 
 /// How a cell ended early.
 #[derive(Debug, Clone, PartialEq, Eq)]
@@ -26,13 +31,18 @@ pub(crate) struct Gathered {
     pub(crate) outputs: Vec<Output>,
     pub(crate) stop: Option<Stop>,
     done: bool,
+    /// When each piece of the standard error text at the end came, and its length.
+    recent: VecDeque<(Instant, usize)>,
 }
 
 impl Gathered {
     fn take(&mut self, record: Record) {
         match record {
             Record::Out(text) => self.text(Stream::Stdout, &text),
-            Record::Err(text) => self.text(Stream::Stderr, &text),
+            Record::Err(text) => {
+                self.text(Stream::Stderr, &text);
+                self.recent.push_back((Instant::now(), text.len()));
+            }
             Record::Show(bundle) => {
                 let unit = bundle.len() == 1 && bundle.get("text/plain").is_some_and(|text| text.trim() == "()");
                 if !unit {
@@ -55,6 +65,29 @@ impl Gathered {
             Some(Output::Text { stream: last, text }) if *last == stream => text.push_str(more),
             _ => self.outputs.push(Output::Text { stream, text: more.to_owned() }),
         }
+    }
+
+    /// What may be shown while the cell still runs: everything but standard error text at the end that
+    /// may yet become a message.
+    fn ready(&mut self) -> Vec<Output> {
+        let Some(Output::Text { stream: Stream::Stderr, text }) = self.outputs.last_mut() else {
+            self.recent.clear();
+            return mem::take(&mut self.outputs);
+        };
+        while self.recent.front().is_some_and(|(came, _)| came.elapsed() >= LAST_WORDS_WAIT) {
+            self.recent.pop_front();
+        }
+        let young: usize = self.recent.iter().map(|(_, length)| length).sum();
+        let old = text.floor_char_boundary(text.len().saturating_sub(young));
+        let kept = text.split_off(outcome::fault_at(text).map_or(old, |fault| old.min(fault)));
+        let mut ready = mem::take(&mut self.outputs);
+        if matches!(ready.last(), Some(Output::Text { text, .. }) if text.is_empty()) {
+            ready.pop();
+        }
+        if !kept.is_empty() {
+            self.outputs.push(Output::Text { stream: Stream::Stderr, text: kept });
+        }
+        ready
     }
 
     /// The standard error text at the end of the outputs; it becomes the message.
@@ -138,6 +171,11 @@ impl Collector {
         Arc::clone(&self.begun)
     }
 
+    /// For showing outputs while the cell runs.
+    pub(crate) fn live(&self) -> Live {
+        Live(Arc::clone(&self.shared))
+    }
+
     /// What has come since the last call, once the cell's last record is in. A cell whose process
     /// died, or that did not compile, has no last record.
     pub(crate) fn take(&self, wait_for_done: bool) -> Gathered {
@@ -161,6 +199,16 @@ impl Collector {
             gathered = lock(&self.shared.0);
         }
         mem::take(&mut *gathered)
+    }
+}
+
+/// Takes outputs out while the cell runs; what it leaves is in [`Collector::take`].
+pub(crate) struct Live(Arc<(Mutex<Gathered>, Condvar)>);
+
+impl Live {
+    /// What may be shown by now.
+    pub(crate) fn ready(&self) -> Vec<Output> {
+        lock(&self.0.0).ready()
     }
 }
 
@@ -198,6 +246,26 @@ mod tests {
         gathered.take(Record::Err("50 %\n".into()));
         gathered.take(Record::Panic);
         assert_eq!((gathered.outputs, gathered.stop), (vec![text("50 %\n")], Some(Stop::Panic(String::new()))));
+    }
+
+    #[test]
+    fn outputs_are_ready_at_once_but_last_words_wait() {
+        let text = |stream, text: &str| Output::Text { stream, text: text.to_owned() };
+        let mut gathered = Gathered::default();
+        gathered.take(Record::Out("a\n".into()));
+        gathered.take(Record::Err("old\n".into()));
+        assert_eq!(gathered.ready(), [text(Stream::Stdout, "a\n")]);
+        thread::sleep(LAST_WORDS_WAIT);
+        gathered.take(Record::Err("thread 'main' panicked at a\n".into()));
+        assert_eq!(gathered.ready(), [text(Stream::Stderr, "old\n")]);
+        assert!(gathered.ready().is_empty());
+        gathered.take(Record::Panic);
+        assert_eq!(gathered.stop, Some(Stop::Panic("thread 'main' panicked at a".into())));
+        gathered.take(Record::Err("Segmentation fault.\n".into()));
+        thread::sleep(LAST_WORDS_WAIT);
+        assert!(gathered.ready().is_empty());
+        gathered.take(Record::Out("b".into()));
+        assert_eq!(gathered.ready().len(), 2);
     }
 
     #[test]

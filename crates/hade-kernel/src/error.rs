@@ -69,6 +69,14 @@ pub enum Error {
         /// What happened.
         why: String,
     },
+    /// The connection file asks for what is not safe or not known.
+    #[error("{} cannot be used: {why}", path.display())]
+    Connection {
+        /// The file.
+        path: PathBuf,
+        /// What is wrong with it, and what to do.
+        why: String,
+    },
     /// The third-party crates could not be built.
     #[error("the libraries a session needs could not be built: {why}")]
     Build {

@@ -8,14 +8,16 @@
 //!   program starts itself again as the process that runs the cells, and as the compiler wrapper.
 //! - [`prepare`] fills the cache folder once for a compiler and a version of `hade`.
 //! - [`Session`] runs code and gives its outputs in order.
+//! - [`serve_kernel`] serves a session to Jupyter, and [`install_kernel`] makes Jupyter know it.
 //! - [`run_notebook`] runs a notebook from top to bottom in a fresh session.
 //!
 //! Nothing here knows any physics, and nothing knows how a memo is typeset.
 //!
 //! # What it does not do
-//! It speaks no Jupyter protocol, draws no progress bar and prints nothing: the caller passes a
-//! [`Progress`] and shows what it is told. Sessions run on Unix systems only.
+//! It draws no progress bar: the caller passes a [`Progress`] and shows what it is told. Only the served
+//! kernel prints, what went wrong with its client, on standard error. Sessions run on Unix systems only.
 
+mod bundle;
 mod cache;
 mod carry_out;
 mod cell;
@@ -30,6 +32,7 @@ mod filter;
 mod hints;
 mod hook;
 mod interrupt;
+mod jupyter;
 mod ledger;
 mod notebook;
 mod outcome;
@@ -47,11 +50,13 @@ mod toolchain;
 mod variables;
 mod wrapper;
 
-pub use cache::{CacheReport, cache_folder, clean};
+pub use bundle::DISPLAY_ID_MIME;
+pub use cache::{CacheReport, cache_folder, cache_report, clean};
 pub use cell::{CellError, CellOutcome, Output, Stream};
 pub use error::{Error, Result};
 pub use hook::runtime_hook;
 pub use interrupt::InterruptHandle;
+pub use jupyter::{KernelPlace, install_kernel, serve_kernel};
 pub use notebook::Notebook;
 pub use prepare::{Prepared, prepare};
 pub use progress::{Progress, Silent, Step};

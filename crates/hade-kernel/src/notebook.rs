@@ -10,7 +10,8 @@ use std::path::{Path, PathBuf};
 use serde::Serialize as _;
 use serde_json::{Map, Value, json};
 
-use crate::cell::{CellOutcome, Output};
+use crate::bundle;
+use crate::cell::{CellOutcome, Output, is_aside};
 use crate::error::{Error, Result};
 
 /// A notebook of format 4.
@@ -141,7 +142,7 @@ impl Notebook {
             .flat_map(|outputs| outputs.iter().rev())
             .find_map(|output| output["data"].get(mime))
             .map(|content| match joined(content) {
-                Some(text) if !is_json(mime) => Value::String(text),
+                Some(text) if !bundle::is_json(mime) => Value::String(text),
                 _ => content.clone(),
             })
     }
@@ -234,39 +235,49 @@ fn lines(text: &str) -> Value {
     text.split_inclusive('\n').collect()
 }
 
-fn is_json(mime: &str) -> bool {
-    mime == "application/json" || mime.ends_with("+json")
-}
-
 fn outputs(outcome: &CellOutcome, count: usize) -> Vec<Value> {
     let mut list: Vec<Value> = Vec::new();
-    let last = outcome.outputs.len().saturating_sub(1);
+    // Where the displays are that a later one of the same name replaces.
+    let mut named: Vec<(&str, usize)> = Vec::new();
+    let last = outcome.outputs.iter().rposition(|output| !is_aside(output));
+    let mut result = None;
     for (at, output) in outcome.outputs.iter().enumerate() {
-        list.push(match output {
-            Output::Text { stream, text } => json!({
+        match output {
+            Output::Text { stream, text } => list.push(json!({
                 "output_type": "stream",
                 "name": stream.name(),
                 "text": lines(text),
-            }),
+            })),
             Output::Display(bundle) => {
                 let data: Map<String, Value> =
-                    bundle.iter().map(|(mime, content)| (mime.clone(), content_value(mime, content))).collect();
+                    bundle::shown(bundle).map(|(mime, content)| (mime.to_owned(), stored(mime, content))).collect();
                 // The value a cell ends in is its result where it is text alone; anything richer
                 // is a display, which every client shows.
-                let plain = data.len() == 1 && data.contains_key("text/plain");
-                if plain && at == last && outcome.error.is_none() {
-                    json!({
+                if bundle::is_plain(bundle) && Some(at) == last && outcome.error.is_none() {
+                    result = Some(json!({
                         "output_type": "execute_result",
                         "execution_count": count,
                         "data": data,
                         "metadata": {},
-                    })
-                } else {
-                    json!({ "output_type": "display_data", "data": data, "metadata": {} })
+                    }));
+                    continue;
+                }
+                let display = json!({ "output_type": "display_data", "data": data, "metadata": {} });
+                let Some(id) = bundle::display_id(bundle) else {
+                    list.push(display);
+                    continue;
+                };
+                match named.iter().find(|(name, _)| *name == id) {
+                    Some((_, at)) => list[*at] = display,
+                    None => {
+                        named.push((id, list.len()));
+                        list.push(display);
+                    }
                 }
             }
-        });
+        }
     }
+    list.extend(result);
     if let Some(error) = &outcome.error {
         let traceback: Vec<&str> = error.detail.lines().collect();
         list.push(json!({
@@ -279,16 +290,11 @@ fn outputs(outcome: &CellOutcome, count: usize) -> Vec<Value> {
     list
 }
 
-fn content_value(mime: &str, content: &str) -> Value {
-    if is_json(mime)
-        && let Ok(value) = serde_json::from_str(content)
-    {
-        return value;
-    }
-    if mime.starts_with("text/") || mime == "image/svg+xml" {
-        lines(content)
-    } else {
-        Value::String(content.to_owned())
+/// Contents as a file holds them: text as lines.
+fn stored(mime: &str, content: &str) -> Value {
+    match bundle::json_value(mime, content) {
+        Value::String(text) if mime.starts_with("text/") || mime == "image/svg+xml" => lines(&text),
+        value => value,
     }
 }
 
@@ -341,6 +347,33 @@ mod tests {
         assert_eq!(notebook.json()["metadata"]["other"], json!(0.1));
         assert_eq!(notebook.json()["cells"][0]["source"], json!(["# a\n", "b"]));
         Ok(())
+    }
+
+    #[test]
+    fn a_result_is_one_though_standard_error_follows() {
+        let result = Output::Display(BTreeMap::from([("text/plain".into(), "3".into())]));
+        let text = |stream| Output::Text { stream, text: "a".into() };
+        let kinds = |output| {
+            let outcome = CellOutcome { outputs: vec![result.clone(), output], ..CellOutcome::default() };
+            outputs(&outcome, 1).iter().map(|o| o["output_type"].clone()).collect::<Vec<_>>()
+        };
+        assert_eq!(kinds(text(Stream::Stderr)), ["stream", "execute_result"]);
+        assert_eq!(kinds(text(Stream::Stdout)), ["display_data", "stream"]);
+    }
+
+    #[test]
+    fn a_display_replaces_an_earlier_one_of_its_name() {
+        let named = |text: &str| {
+            Output::Display(BTreeMap::from([
+                ("text/plain".into(), text.into()),
+                (crate::DISPLAY_ID_MIME.into(), "bar".into()),
+            ]))
+        };
+        let between = Output::Text { stream: Stream::Stdout, text: "a".into() };
+        let outcome = CellOutcome { outputs: vec![named("1"), between, named("2")], ..CellOutcome::default() };
+        let list = outputs(&outcome, 1);
+        assert_eq!(list.len(), 2);
+        assert_eq!(list[0]["data"], json!({"text/plain": ["2"]}));
     }
 
     #[test]

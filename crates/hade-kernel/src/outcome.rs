@@ -127,13 +127,16 @@ fn memory_wanted(outputs: &mut Vec<Output>) -> Option<String> {
     Some(if bytes >= 1e9 { format!("{:.0} GB", bytes / 1e9) } else { format!("{:.0} MB", (bytes / 1e6).ceil()) })
 }
 
+/// Where in standard error the engine begins to tell of a fault in memory.
+pub(crate) fn fault_at(text: &str) -> Option<usize> {
+    ["Segmentation fault.\n", "Bus error.\n", "Illegal instruction.\n"].iter().find_map(|words| text.find(words))
+}
+
 /// Takes the engine's own backtrace away; whether there was one.
 fn cut_backtrace(outputs: &mut Vec<Output>) -> bool {
     for at in 0..outputs.len() {
         if let Some(Output::Text { stream: Stream::Stderr, text }) = outputs.get_mut(at)
-            && let Some(start) = ["Segmentation fault.\n", "Bus error.\n", "Illegal instruction.\n"]
-                .iter()
-                .find_map(|words| text.find(words))
+            && let Some(start) = fault_at(text)
         {
             text.truncate(start);
             let keep = if text.is_empty() { at } else { at + 1 };
@@ -188,6 +191,12 @@ pub(crate) fn bounded(mut error: CellError) -> CellError {
         }
     }
     error
+}
+
+/// A cell that waits for something to be typed.
+pub(crate) fn asks_for_input() -> CellError {
+    let sentence = "a cell cannot read standard input (stdin); write the value in the cell";
+    CellError { name: "NoInput".to_owned(), sentence: sentence.to_owned(), detail: sentence.to_owned(), line: None }
 }
 
 /// Variables whose types cannot be kept between cells.

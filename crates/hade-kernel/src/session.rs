@@ -1,5 +1,7 @@
 //! A session: one notebook engine with `hade` loaded.
 
+mod live;
+
 use std::fs::{self, File};
 use std::panic::{AssertUnwindSafe, catch_unwind};
 use std::path::{Path, PathBuf};
@@ -308,6 +310,10 @@ impl Engine {
     }
 
     fn run(&mut self, cell: &str) -> Ran {
+        if syntax::reads_input(cell) {
+            // It would wait for ever: its standard input carries the engine's own commands.
+            return Ran::Refused(outcome::asks_for_input());
+        }
         let outline = syntax::outline(cell);
         if let Some((line, what)) = &outline.problem {
             return Ran::Refused(compile_error::unreadable(*line, what, cell));
@@ -357,6 +363,7 @@ struct SessionFolder {
     _lock: File,
 }
 
+/// Begins the name; after it comes the number of the process.
 const FOLDER_PREFIX: &str = "hade-session-";
 const FOLDER_LOCK: &str = "lock";
 
@@ -367,7 +374,7 @@ impl SessionFolder {
     fn new() -> Result<SessionFolder> {
         let place = env::temp_dir();
         let folder =
-            tempfile::Builder::new().prefix(FOLDER_PREFIX).tempdir().map_err(Error::file("make a folder in", place))?;
+            tempfile::Builder::new().prefix(&own_prefix()).tempdir().map_err(Error::file("make a folder in", place))?;
         let path = folder.path().join(FOLDER_LOCK);
         let lock = File::create(&path).map_err(Error::file("write", &path))?;
         lock.lock().map_err(Error::file("lock", &path))?;
@@ -376,6 +383,19 @@ impl SessionFolder {
 
     fn path(&self) -> &Path {
         self.folder.path()
+    }
+}
+
+fn own_prefix() -> String {
+    format!("{FOLDER_PREFIX}{}-", process::id())
+}
+
+/// Removes the folders of this process's sessions, when it ends before they do.
+pub(crate) fn remove_folders() {
+    for entry in fs::read_dir(env::temp_dir()).into_iter().flatten().flatten() {
+        if entry.file_name().to_string_lossy().starts_with(&own_prefix()) {
+            let _ = fs::remove_dir_all(entry.path());
+        }
     }
 }
 

@@ -1,9 +1,10 @@
-//! Just enough parsing of a cell to find its `let` statements and where it is not complete.
+//! Just enough parsing of a cell to find its `let` statements, whether it is whole and where not, and whether it asks for
+//! input.
 
 use std::collections::BTreeSet;
 
 use ra_ap_syntax::ast::{self, HasName};
-use ra_ap_syntax::{AstNode, Edition, Parse, SourceFile, SyntaxToken, TextRange};
+use ra_ap_syntax::{AstNode, Edition, NodeOrToken, Parse, SourceFile, SyntaxKind, SyntaxToken, TextRange};
 
 /// What the parser needs around a cell.
 const BEFORE: &str = "fn f(){";
@@ -65,6 +66,71 @@ pub(crate) fn outline(code: &str) -> Outline {
         }
     }
     outline
+}
+
+/// Whether a cell could be run as it stands.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub(crate) enum Wholeness {
+    /// It can be read as Rust.
+    Whole,
+    /// More text could make it whole.
+    Unfinished,
+    /// No text after it could make it whole.
+    Wrong,
+}
+
+/// Whether a cell could be run as it stands.
+pub(crate) fn wholeness(code: &str) -> Wholeness {
+    let rust = without_commands(code);
+    let rust = rust.trim_end();
+    let parsed = SourceFile::parse(&format!("{BEFORE}{rust}\n}}"), Edition::Edition2024);
+    let end = BEFORE.len() + rust.len();
+    let mut open = Vec::new();
+    for token in tokens(&parsed) {
+        let range = token.text_range();
+        let (from, to) = (usize::from(range.start()), usize::from(range.end()));
+        if from < BEFORE.len() || from >= end {
+            continue;
+        }
+        if to > end && token.kind() != SyntaxKind::WHITESPACE {
+            // A text or a comment that runs on into what is put behind the cell.
+            return Wholeness::Unfinished;
+        }
+        match token.kind() {
+            kind @ (SyntaxKind::L_CURLY | SyntaxKind::L_PAREN | SyntaxKind::L_BRACK) => open.push(kind),
+            SyntaxKind::R_CURLY if open.pop() != Some(SyntaxKind::L_CURLY) => return Wholeness::Wrong,
+            SyntaxKind::R_PAREN if open.pop() != Some(SyntaxKind::L_PAREN) => return Wholeness::Wrong,
+            SyntaxKind::R_BRACK if open.pop() != Some(SyntaxKind::L_BRACK) => return Wholeness::Wrong,
+            _ => {}
+        }
+    }
+    let errors = parsed.errors();
+    if errors.iter().any(|error| usize::from(error.range().start()) < end) && open.is_empty() {
+        Wholeness::Wrong
+    } else if !errors.is_empty() || !open.is_empty() {
+        Wholeness::Unfinished
+    } else {
+        Wholeness::Whole
+    }
+}
+
+/// The spaces to begin the next line of an unfinished cell with.
+pub(crate) fn indent_after(code: &str) -> String {
+    let line = code.trim_end().lines().last().unwrap_or_default();
+    let margin = line.len() - line.trim_start().len();
+    let deeper = if line.ends_with(['{', '(', '[']) { 4 } else { 0 };
+    " ".repeat(margin + deeper)
+}
+
+/// Whether a cell names `stdin` outside of texts and comments.
+pub(crate) fn reads_input(code: &str) -> bool {
+    code.contains("stdin")
+        && tokens(&SourceFile::parse(&format!("{BEFORE}{}\n}}", without_commands(code)), Edition::Edition2024))
+            .any(|token| token.kind() == SyntaxKind::IDENT && token.text() == "stdin")
+}
+
+fn tokens(parsed: &ra_ap_syntax::Parse<SourceFile>) -> impl Iterator<Item = SyntaxToken> {
+    parsed.syntax_node().descendants_with_tokens().filter_map(NodeOrToken::into_token)
 }
 
 /// The cell with the commands at its top blanked; every offset stays.
@@ -191,6 +257,46 @@ mod tests {
         assert!(names[2].2.ends_with("let c = 2;"));
         assert!(outline.ends_in_expression);
         assert_eq!(outline.problem, None);
+    }
+
+    #[test]
+    fn a_cell_is_whole_unfinished_or_wrong() {
+        for whole in
+            ["", "let a = 1;", "a + 1", "fn f() {\n    1;\n}", ":dep x", "struct A;\nimpl A {}\nA", "// a {", "\"{\""]
+        {
+            assert_eq!(wholeness(whole), Wholeness::Whole, "{whole}");
+        }
+        for unfinished in [
+            "fn f() {",
+            "let a = (1,\n 2",
+            "let a = \"one",
+            "let a = r#\"one\"",
+            "/* one",
+            "a /",
+            "a.",
+            "let a =",
+            "let a = 1",
+            "if a {\n    1\n} else {",
+            "let v = vec![1, 2,",
+        ] {
+            assert_eq!(wholeness(unfinished), Wholeness::Unfinished, "{unfinished}");
+        }
+        for wrong in ["}", "let a = 1);", "fn 1() {}", "let = 1;", "a b c;", "(1, 2]"] {
+            assert_eq!(wholeness(wrong), Wholeness::Wrong, "{wrong}");
+        }
+    }
+
+    #[test]
+    fn the_next_line_is_indented() {
+        assert_eq!(indent_after("fn f() {\n    let a = (\n"), " ".repeat(8));
+        assert_eq!(indent_after("fn f() {\n    a;"), " ".repeat(4));
+        assert_eq!(indent_after(""), "");
+    }
+
+    #[test]
+    fn only_code_that_names_stdin_asks_for_input() {
+        assert!(reads_input("std::io::stdin().read_line(&mut s)?;"));
+        assert!(!reads_input("// stdin\nlet a = \"stdin\"; let my_stdin = 1;"));
     }
 
     #[test]
