@@ -4,7 +4,9 @@ mod bar;
 mod cells;
 mod kernel;
 mod memo;
+mod rerun;
 mod run;
+mod verify;
 
 use std::process::ExitCode;
 
@@ -26,6 +28,8 @@ enum Command {
     Run(run::RunArgs),
     /// Run a notebook from a clean start and write its calculation memo
     Memo(memo::MemoArgs),
+    /// Say whether a memo is still what it was when it was made, and compute it again
+    Verify(verify::VerifyArgs),
     /// Prepare or remove the compiled libraries that notebooks use
     Kernel(kernel::KernelArgs),
 }
@@ -38,6 +42,8 @@ pub fn main() -> ExitCode {
     let done = match Cli::parse().command {
         Command::Run(args) => run::run(&args),
         Command::Memo(args) => memo::run(&args),
+        // Its exit code tells a memo that is refused from a file that is none.
+        Command::Verify(args) => return verify::run(&args),
         Command::Kernel(args) => kernel::run(&args),
     };
     match done {

@@ -10,6 +10,7 @@ use typst::foundations::Bytes;
 use crate::error::{Error, Result};
 use crate::project::{Person, Project, Revision};
 use crate::replay::{Judged, Replayer, by_library, judge};
+use crate::sign_off;
 use crate::template::Template;
 use crate::typeset::{Job, run};
 use crate::view::{Sources, make};
@@ -122,7 +123,8 @@ pub fn build_with(input: &MemoInput<'_>, options: &MemoOptions, replayer: Replay
     let identity = format!("{}/{}", project.number, project.revision);
     let typeset = run(Job { template: &template, own, identity, date })?;
     warnings.extend(typeset.warnings);
-    Ok(Memo { pdf: typeset.pdf, against_issue: against, warnings, pages: typeset.pages })
+    let pdf = sign_off::add(&typeset.pdf).map_err(|why| Error::SignOff { why })?;
+    Ok(Memo { pdf, against_issue: against, warnings, pages: typeset.pages })
 }
 
 /// The project file with texts that can be typeset.
