@@ -5,8 +5,10 @@ mod cells;
 mod kernel;
 mod memo;
 mod new;
+mod rerun;
 mod run;
 mod template;
+mod verify;
 
 use std::process::ExitCode;
 
@@ -30,6 +32,8 @@ enum Command {
     Run(run::RunArgs),
     /// Run a notebook from a clean start and write its calculation memo
     Memo(memo::MemoArgs),
+    /// Say whether a memo is still what it was when it was made, and compute it again
+    Verify(verify::VerifyArgs),
     /// The templates of memos: list them, copy one, try one
     Template(template::TemplateArgs),
     /// The Jupyter kernel, and the compiled libraries that notebooks use
@@ -46,6 +50,8 @@ pub fn main() -> ExitCode {
         Command::Run(args) => run::run(&args),
         Command::Memo(args) => memo::run(&args),
         Command::Template(args) => template::run(&args),
+        // Its exit code tells a memo that is refused from a file that is none.
+        Command::Verify(args) => return verify::run(&args),
         Command::Kernel(args) => kernel::run(&args),
     };
     match done {

@@ -13,6 +13,7 @@ use crate::earlier::EarlierMemo;
 use crate::error::{Error, Result};
 use crate::project::{Person, Project, Revision, Status};
 use crate::replay::{Judged, Replayer, by_library, judge};
+use crate::sign_off;
 use crate::template::Template;
 use crate::typeset::{Job, run};
 use crate::view::{Sources, make};
@@ -170,7 +171,8 @@ fn make_memo(input: &MemoInput<'_>, options: &MemoOptions, replayer: Replayer) -
     let identity = format!("{}/{}", project.number, project.revision);
     let typeset = run(Job { template: &template, own, identity, date })?;
     warnings.extend(typeset.warnings);
-    Ok(Memo { pdf: typeset.pdf, against_issue: against, changes, warnings, pages: typeset.pages })
+    let pdf = sign_off::add(&typeset.pdf).map_err(|why| Error::SignOff { why })?;
+    Ok(Memo { pdf, against_issue: against, changes, warnings, pages: typeset.pages })
 }
 
 /// The project file with texts that can be typeset.

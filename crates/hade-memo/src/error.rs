@@ -85,6 +85,12 @@ pub enum Error {
         /// What it says, with file and line.
         report: String,
     },
+    /// The sign-off boxes of the pages cannot become signature fields.
+    #[error("the sign-off boxes cannot become signature fields: {why}")]
+    SignOff {
+        /// What is wrong, and what to do.
+        why: String,
+    },
     /// A part of the program itself is broken.
     #[error("{what} of this program is broken ({why}); report it as a defect of Hade")]
     Defect {

@@ -12,10 +12,11 @@
 //! folder, no network and no clock, so the same inputs give the same bytes.
 //!
 //! The PDF is PDF/A-3a and PDF/UA-1 as enforced by the exporter. Record, notebook and data files
-//! are attached to it.
+//! are attached to it. Its sign-off boxes are signature fields, added in a revision that also holds
+//! the digest of all bytes before it; [`verify`] holds a memo against that.
 //!
 //! # What it does not do
-//! It signs nothing and puts no seal: the sign-off is boxes. It runs no notebook. It does not judge
+//! It signs nothing and puts no seal: the fields are empty. It runs no notebook. It does not judge
 //! an assumption; it prints each with its basis.
 
 mod against;
@@ -31,10 +32,13 @@ mod error;
 mod fonts;
 mod formula;
 mod notebook;
+mod pdf;
 mod project;
 mod replay;
+mod sign_off;
 mod template;
 mod typeset;
+mod verify;
 mod view;
 mod world;
 
@@ -44,8 +48,12 @@ pub use changes::{Change, Changes};
 pub use earlier::EarlierMemo;
 pub use error::{Error, Result};
 pub use formula::lint as lint_formula;
+pub use pdf::MOST_BYTES as MOST_VERIFIED_BYTES;
 pub use project::{Date, Person, Project, Revision, Role, Status};
 pub use template::{FoundTemplate, Place, check_template, copy_template, templates};
+pub use verify::{
+    Attached, Contents, Finding, LaterRevision, Report, SignatureFound, Standing, Unreadable, Verified, verify,
+};
 
 #[doc(hidden)]
 pub use assemble::build_with;

@@ -13,6 +13,9 @@ use crate::project::Date;
 use crate::template::Template;
 use crate::world::MemoWorld;
 
+/// This program, as the file's information names it.
+pub(crate) const CREATOR: &str = concat!("Hade ", env!("CARGO_PKG_VERSION"));
+
 /// What is to be typeset.
 pub(crate) struct Job<'a> {
     /// The template.
@@ -47,7 +50,7 @@ pub(crate) fn run(job: Job<'_>) -> Result<Typeset> {
         .map_err(|e| Error::Defect { what: "the choice of PDF standards", why: e.message().to_string() })?;
     let options = PdfOptions {
         ident: Smart::Custom(job.identity),
-        creator: Smart::Custom(Some(concat!("Hade ", env!("CARGO_PKG_VERSION")).to_owned())),
+        creator: Smart::Custom(Some(CREATOR.to_owned())),
         timestamp: Some(Timestamp::new_utc(date)),
         standards,
         ..PdfOptions::default()

@@ -2,6 +2,7 @@
 
 use std::path::{Path, PathBuf};
 use std::process::{Command, Output};
+use std::sync::OnceLock;
 
 use hade_tests::{hade_binary, root};
 use serde_json::{Value, json};
@@ -33,6 +34,24 @@ pub fn memo(folder: &Path, notebook: &str, out: &str) -> Output {
         .current_dir(folder)
         .output()
         .expect("the hade command runs")
+}
+
+/// The memo of the minimal notebook, made once.
+pub fn minimal_memo() -> &'static [u8] {
+    static MEMO: OnceLock<Vec<u8>> = OnceLock::new();
+    MEMO.get_or_init(|| {
+        let demo = demo_copy();
+        assert_success(&memo(demo.path(), "minimal.ipynb", "minimal.pdf"));
+        std::fs::read(demo.path().join("minimal.pdf")).expect("the memo")
+    })
+}
+
+/// `hade verify` of these bytes, in a folder of its own.
+pub fn verify(bytes: &[u8], options: &[&str]) -> Output {
+    let folder = tempfile::tempdir().expect("a temporary folder");
+    let path = folder.path().join("memo.pdf");
+    std::fs::write(&path, bytes).expect("a file");
+    Command::new(hade_binary()).arg("verify").arg(path).args(options).output().expect("the hade command runs")
 }
 
 /// Fails with what the command said unless it succeeded.

@@ -131,6 +131,7 @@ pub(crate) fn attachment(attachment: &Attachment) -> AttachmentView {
 #[derive(Serialize)]
 pub(crate) struct SignView {
     role: &'static str,
+    does: &'static str,
     field: String,
     name: String,
     named: bool,
@@ -148,6 +149,11 @@ pub(crate) fn signoff(project: &Project) -> Vec<SignView> {
             let or_line = |text: &str| if text.trim().is_empty() { "not stated".to_owned() } else { plain(text) };
             SignView {
                 role: role.word(),
+                does: match role {
+                    Role::Prepared => "made this calculation",
+                    Role::Checked => "checked it independently of its maker",
+                    Role::Approved => "approved it for its stated purpose",
+                },
                 field: role.word().to_lowercase(),
                 name: or_line(name),
                 named: !name.is_empty(),
