@@ -1,11 +1,14 @@
 //! What the checks of this workspace share: cases read from `data/`, and comparisons that fail on
 //! both sides and never pass what is not a number.
 
+mod python;
 pub mod splitmix;
 
 use std::path::PathBuf;
 
 use serde_json::Value;
+
+pub use python::python_with;
 
 /// One case worked out outside this project.
 pub struct Case {

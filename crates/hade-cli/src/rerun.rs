@@ -12,6 +12,7 @@ use hade_memo::Contents;
 
 use crate::Failure;
 use crate::bar::Bar;
+use crate::cells::Interrupted;
 
 /// What a rerun gave.
 pub(crate) struct Rerun {
@@ -42,10 +43,13 @@ pub(crate) fn rerun(contents: &Contents, cell_timeout: Option<Duration>) -> Resu
         put(folder.path(), path, bytes)?;
     }
     let mut bar = Bar::new();
-    let options = RunOptions { cell_timeout, allow_errors: false };
+    let options = RunOptions { cell_timeout, allow_errors: false, stop_on_ctrl_c: true };
     let run = run_notebook(&folder.path().join(name), &options, &mut bar);
     bar.clear();
     let run = run?;
+    if run.interrupted {
+        return Err(Interrupted::of(&run, "nothing was compared").into());
+    }
     if let Some(failure) = run.failure() {
         return Ok(Rerun { cells: run.cells.len(), differences: vec![failure.to_string()] });
     }

@@ -3,13 +3,9 @@
 use std::fs;
 use std::path::{Path, PathBuf};
 use std::process::{Command, Output};
-use std::sync::{Mutex, MutexGuard, OnceLock, PoisonError};
+use std::sync::{Mutex, MutexGuard, PoisonError};
 
-use hade_tests::{hade_binary, root};
-use sha2::{Digest, Sha256};
-
-/// What a machine that must run these tests sets.
-const REQUIRED_VAR: &str = "HADE_REQUIRE_CLIENTS";
+use hade_tests::{hade_binary, python_with, root};
 
 /// A Jupyter of its own, which one test has at a time: a kernel takes both cores.
 pub struct Jupyter {
@@ -22,21 +18,11 @@ impl Jupyter {
     /// `None`, and a word about it, where the clients cannot be had.
     pub fn new() -> Option<Jupyter> {
         static TURN: Mutex<()> = Mutex::new(());
-        static PYTHON: OnceLock<Result<PathBuf, String>> = OnceLock::new();
         let turn = TURN.lock().unwrap_or_else(PoisonError::into_inner);
-        match PYTHON.get_or_init(environment) {
-            Ok(python) => {
-                let jupyter =
-                    Jupyter { python: python.clone(), folder: tempfile::tempdir().expect("a folder"), _turn: turn };
-                jupyter.install();
-                Some(jupyter)
-            }
-            Err(why) => {
-                assert!(std::env::var_os(REQUIRED_VAR).is_none(), "the Jupyter clients are required: {why}");
-                eprintln!("SKIPPED: {why}");
-                None
-            }
-        }
+        let python = python_with("tests/clients/requirements.txt")?;
+        let jupyter = Jupyter { python, folder: tempfile::tempdir().expect("a folder"), _turn: turn };
+        jupyter.install();
+        Some(jupyter)
     }
 
     /// The folder all its files are in.
@@ -79,37 +65,4 @@ impl Jupyter {
 
 pub fn said(output: &Output) -> String {
     format!("{}{}", String::from_utf8_lossy(&output.stdout), String::from_utf8_lossy(&output.stderr))
-}
-
-/// The Python with the pinned clients: made once in the build folder, and anew when the pins change.
-fn environment() -> Result<PathBuf, String> {
-    let pins = root().join("tests/clients/requirements.txt");
-    let text = fs::read(&pins).map_err(|error| format!("{}: {error}", pins.display()))?;
-    let hash: String = Sha256::digest(&text).iter().take(6).map(|byte| format!("{byte:02x}")).collect();
-    let folder = Path::new(env!("CARGO_TARGET_TMPDIR")).join(format!("clients-{hash}"));
-    let python = folder.join("bin/python");
-    let stamp = folder.join("complete");
-    if stamp.is_file() && python.is_file() {
-        return Ok(python);
-    }
-    let base = std::env::var_os("PYTHON").unwrap_or_else(|| "python3".into());
-    run(Command::new(&base).args(["-c", "import sys; sys.exit(sys.version_info < (3, 10))"]))
-        .map_err(|why| format!("there is no Python 3.10 or newer ({why})"))?;
-    let _ = fs::remove_dir_all(&folder);
-    run(Command::new(&base).args(["-m", "venv"]).arg(&folder))
-        .map_err(|why| format!("no Python environment can be made ({why})"))?;
-    run(Command::new(&python)
-        .args(["-m", "pip", "install", "--quiet", "--disable-pip-version-check", "--no-input", "-r"])
-        .arg(&pins))
-    .map_err(|why| format!("the pinned clients cannot be installed, for want of a network perhaps ({why})"))?;
-    fs::write(&stamp, "").map_err(|error| error.to_string())?;
-    Ok(python)
-}
-
-fn run(command: &mut Command) -> Result<(), String> {
-    match command.output() {
-        Ok(output) if output.status.success() => Ok(()),
-        Ok(output) => Err(said(&output).lines().last().unwrap_or("it failed").to_owned()),
-        Err(error) => Err(error.to_string()),
-    }
 }
