@@ -186,7 +186,6 @@ fn pruned_lock(lock: &Table, standalone: &Table) -> Result<Table, Box<dyn Error>
 fn session_manifest(standalone: &Table) -> Table {
     let mut out = standalone.clone();
     out.insert("dependencies".into(), Value::Table(Table::new()));
-    out.remove("features");
     let kind = Value::Array(vec![Value::String("dylib".into())]);
     out.insert("lib".into(), Value::Table(Table::from_iter([("crate-type".to_owned(), kind)])));
     out

@@ -94,8 +94,13 @@ mod tests {
         outside.kill()?;
         outside.wait()?;
         for id in grandchildren {
-            let state = std::fs::read_to_string(format!("/proc/{id}/stat")).unwrap_or_default();
-            assert!(state.is_empty() || state.contains(") Z ") || state.contains(") X "), "{state}");
+            let state = || std::fs::read_to_string(format!("/proc/{id}/stat")).unwrap_or_default();
+            let gone = || state().is_empty() || state().contains(") Z ") || state().contains(") X ");
+            let limit = std::time::Instant::now() + std::time::Duration::from_secs(5);
+            while !gone() && std::time::Instant::now() < limit {
+                std::thread::sleep(std::time::Duration::from_millis(5));
+            }
+            assert!(gone(), "{}", state());
         }
         assert!(!kill_compilers(&work));
         Ok(())

@@ -85,8 +85,8 @@ pub enum Error {
         /// What it says, with file and line.
         report: String,
     },
-    /// The sign-off boxes of the pages cannot become signature fields.
-    #[error("the sign-off boxes cannot become signature fields: {why}")]
+    /// The memo cannot be made ready for signing.
+    #[error("the memo cannot be made ready for signing: {why}")]
     SignOff {
         /// What is wrong, and what to do.
         why: String,

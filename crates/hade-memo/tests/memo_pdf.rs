@@ -149,11 +149,16 @@ fn record_notebook_and_data_are_attached() {
 }
 
 #[test]
-fn no_annotation_is_written() {
+fn no_annotation_is_written_but_three_signature_fields() {
     let document = Document::load_mem(&made("annotations", |_| {}).pdf).unwrap();
+    let mut names = Vec::new();
     for page in document.get_pages().values() {
-        assert!(document.get_dictionary(*page).unwrap().get(b"Annots").is_err());
+        for field in document.get_page_annotations(*page).unwrap() {
+            assert_eq!(field.get(b"FT").and_then(lopdf::Object::as_name).unwrap(), b"Sig");
+            names.push(lopdf::decode_text_string(field.get(b"T").unwrap()).unwrap());
+        }
     }
+    assert_eq!(names, ["prepared", "checked", "approved"]);
 }
 
 #[test]

@@ -37,7 +37,8 @@ fn refused(template: &Path, words: &[&str]) {
 
 #[test]
 fn a_folder_of_ones_own_works() {
-    let mine = template("mine", MANIFEST, &format!("{HEAD}= #M.memo.title\n#M.conclusions.len() conclusions"));
+    let attach = "#for (n, a) in M.attachments.enumerate() { pdf.attach(a.name, read(\"attached/\" + str(n), encoding: none), relationship: a.relationship, mime-type: a.mime, description: a.description) }\n";
+    let mine = template("mine", MANIFEST, &format!("{HEAD}{attach}= #M.memo.title\n#M.conclusions.len() conclusions"));
     assert_eq!(with(&mine).unwrap().pages, 1);
     let copy = Path::new(env!("CARGO_MANIFEST_DIR")).join("../../templates/memo");
     assert!(with(&copy).unwrap().pages > 5, "the default template as a folder");
@@ -54,6 +55,7 @@ fn a_missing_part_is_named() {
     refused(&template("no-part", MANIFEST, &format!("{HEAD}#M.memo.nothing")), &["memo.typ:4:", "nothing"]);
     refused(&template("no-import", MANIFEST, "#import \"other.typ\": a"), &["memo.typ:1:", "other.typ"]);
     refused(&folder("no-manifest"), &["template.toml"]);
+    refused(&template("no-record", MANIFEST, &format!("{HEAD}= #M.memo.title")), &["attached files", "pdf.attach"]);
     refused(Path::new("/nowhere/at/all"), &["there is no such folder"]);
 }
 

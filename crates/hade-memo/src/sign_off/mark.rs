@@ -32,7 +32,11 @@ impl Mark {
     pub(crate) fn made(document: &Document, exported: &[u8]) -> Result<Self, String> {
         let information = pdf::dictionary(document, &document.trailer, b"Info");
         let stated = |key: &[u8]| information.and_then(|information| pdf::text(document, information, key));
-        let files = pdf::attachments(document)?;
+        let files = pdf::attachments(document).map_err(|why| {
+            format!(
+                "{why}; a template attaches every file of `attachments` by pdf.attach, as the program's memo.typ does"
+            )
+        })?;
         Ok(Mark {
             program: stated(b"Creator").ok_or("it does not say what made it")?,
             modified: stated(b"ModDate").ok_or("it has no date")?,
