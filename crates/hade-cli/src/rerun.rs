@@ -44,7 +44,7 @@ pub(crate) fn rerun(contents: &Contents, cell_timeout: Option<Duration>) -> Resu
     }
     let mut bar = Bar::new();
     let options = RunOptions { cell_timeout, allow_errors: false, stop_on_ctrl_c: true };
-    let run = run_notebook(&folder.path().join(name), &options, &mut bar);
+    let run = run_notebook(folder.path().join(name), &options, &mut bar);
     bar.clear();
     let run = run?;
     if run.interrupted {

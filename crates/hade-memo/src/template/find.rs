@@ -134,9 +134,12 @@ fn copy_files(from: &Path, to: &Path) -> Result<()> {
     Ok(())
 }
 
+/// What a folder of templates makes of a template's folder.
+type In = fn(PathBuf) -> Place;
+
 /// The folders that hold templates, the nearest first.
-fn bases(folder: &Path) -> Vec<(PathBuf, fn(PathBuf) -> Place)> {
-    let mut bases: Vec<(PathBuf, fn(PathBuf) -> Place)> = vec![(folder.join("templates"), Place::Project)];
+fn bases(folder: &Path) -> Vec<(PathBuf, In)> {
+    let mut bases: Vec<(PathBuf, In)> = vec![(folder.join("templates"), Place::Project)];
     if let Some(data) = user_data() {
         bases.push((data.join("hade").join("templates"), Place::User));
     }
