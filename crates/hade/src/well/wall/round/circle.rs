@@ -53,6 +53,11 @@ pub(crate) trait OnCircle {
         self.value(c, s)
     }
     fn jet(&self, piece: usize, c: f64, s: f64) -> Jet;
+    /// The value of one piece.
+    #[inline(always)]
+    fn piece(&self, piece: usize, c: f64, s: f64) -> f64 {
+        self.jet(piece, c, s).value
+    }
     /// The rough value at every sample.
     #[inline(always)]
     fn scan(&self, circle: &Circle) -> [f64; SAMPLES] {
@@ -174,6 +179,10 @@ pub(crate) fn greatest_beside(f: &impl OnCircle, scale: f64, known: Option<Top>)
             continue;
         }
         for (piece, top) in tops.iter_mut().take(f.pieces()).enumerate() {
+            // Most pieces are far below the worst; their derivatives are not asked for.
+            if several && f.piece(piece, *c, *s) < enough {
+                continue;
+            }
             let jet = f.jet(piece, *c, *s);
             if jet.value < enough {
                 continue;

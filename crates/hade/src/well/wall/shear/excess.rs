@@ -86,6 +86,14 @@ impl<C: Criterion> OnCircle for Excess<'_, C> {
             Some(plane) => intact.larger(plane.slip(c, s, &place)),
         }
     }
+    #[inline(always)]
+    fn piece(&self, piece: usize, c: f64, s: f64) -> f64 {
+        let place = self.wall.place(c, s, self.x);
+        match self.plane {
+            Some(plane) if piece == Self::intact_pieces() => plane.slip(c, s, &place),
+            _ => self.intact(piece, &place),
+        }
+    }
     /// The plane is asked after once, not at every sample: only then does the processor take several at a
     /// time.
     #[inline(always)]
