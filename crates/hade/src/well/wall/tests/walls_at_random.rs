@@ -178,8 +178,8 @@ impl Plain {
 pub(super) struct Numbers(u64);
 
 impl Numbers {
-    pub fn new(seed: u64) -> Self {
-        Numbers(seed)
+    pub fn new(start: u64) -> Self {
+        Numbers(start)
     }
 
     pub fn next_number(&mut self) -> f64 {
