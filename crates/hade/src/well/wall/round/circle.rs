@@ -47,21 +47,16 @@ pub(crate) trait OnCircle {
         1
     }
     fn value(&self, c: f64, s: f64) -> f64;
-    /// The value to a millionth of its size: enough to see where a climb may begin.
-    #[inline(always)]
-    fn rough(&self, c: f64, s: f64) -> f64 {
-        self.value(c, s)
-    }
     fn jet(&self, piece: usize, c: f64, s: f64) -> Jet;
     /// The value of one piece.
     #[inline(always)]
     fn piece(&self, piece: usize, c: f64, s: f64) -> f64 {
         self.jet(piece, c, s).value
     }
-    /// The rough value at every sample.
+    /// The value at every sample, to a millionth of its size: enough to see where a climb may begin.
     #[inline(always)]
     fn scan(&self, circle: &Circle) -> [f64; SAMPLES] {
-        circle.each(|c, s| self.rough(c, s))
+        circle.each(|c, s| self.value(c, s))
     }
 }
 
@@ -76,10 +71,6 @@ impl<F: OnCircle> OnCircle for Below<F> {
     #[inline(always)]
     fn value(&self, c: f64, s: f64) -> f64 {
         -self.0.value(c, s)
-    }
-    #[inline(always)]
-    fn rough(&self, c: f64, s: f64) -> f64 {
-        -self.0.rough(c, s)
     }
     #[inline(always)]
     fn jet(&self, piece: usize, c: f64, s: f64) -> Jet {
