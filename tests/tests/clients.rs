@@ -9,3 +9,5 @@ mod life;
 mod notebook;
 #[path = "clients/protocol.rs"]
 mod protocol;
+#[path = "clients/standby.rs"]
+mod standby;

@@ -22,6 +22,9 @@ enum KernelCommand {
     Install(InstallArgs),
     /// Serve one notebook to Jupyter (Jupyter calls this)
     Start(StartArgs),
+    /// Keep one session ready for the next notebook (`hade kernel start --standby` calls this)
+    #[command(hide = true)]
+    Standby(StandbyArgs),
     /// Remove everything that was built; the next run builds it anew
     Clean,
 }
@@ -34,6 +37,10 @@ struct InstallArgs {
     /// Make it known to the Jupyter of a Python environment, such as "$VIRTUAL_ENV"
     #[arg(long, value_name = "DIR")]
     prefix: Option<PathBuf>,
+    /// Let a notebook begin within a second: keep one session ready in the background for half an hour after a
+    /// kernel starts (about 0.5 GB of memory)
+    #[arg(long)]
+    standby: bool,
 }
 
 #[derive(Debug, Args)]
@@ -41,14 +48,32 @@ struct StartArgs {
     /// The file in which Jupyter says where to listen
     #[arg(long, short = 'f', value_name = "FILE")]
     connection_file: PathBuf,
+    /// Take over the session that stands by, if there is one, and have the next one made ready
+    #[arg(long)]
+    standby: bool,
+}
+
+#[derive(Debug, Args)]
+struct StandbyArgs {
+    /// Begin after so many seconds
+    #[arg(long, value_name = "SECONDS", default_value_t = 0)]
+    after: u64,
+    /// Leave when no notebook came for so many seconds
+    #[arg(long, value_name = "SECONDS")]
+    idle: Option<u64>,
 }
 
 /// Does what the arguments say.
 pub(crate) fn run(args: &KernelArgs) -> Result<(), Failure> {
     match &args.command {
         KernelCommand::Install(args) => install(args)?,
+        KernelCommand::Start(args) if args.standby => hade_kernel::serve_kernel_by_standby(&args.connection_file)?,
         KernelCommand::Start(args) => hade_kernel::serve_kernel(&args.connection_file)?,
+        KernelCommand::Standby(args) => {
+            hade_kernel::stand_by(Duration::from_secs(args.after), args.idle.map(Duration::from_secs))?;
+        }
         KernelCommand::Clean => {
+            hade_kernel::send_standby_away()?;
             let report = hade_kernel::clean()?;
             eprintln!("removed {} from {}", megabytes(&report), report.folder.display());
         }
@@ -58,6 +83,7 @@ pub(crate) fn run(args: &KernelArgs) -> Result<(), Failure> {
 
 fn install(args: &InstallArgs) -> Result<(), Failure> {
     let started = Instant::now();
+    hade_kernel::send_standby_away()?;
     let mut bar = Bar::new();
     let prepared = hade_kernel::prepare(&mut bar);
     bar.clear();
@@ -69,7 +95,7 @@ fn install(args: &InstallArgs) -> Result<(), Failure> {
     };
     eprintln!("libraries: {} in {}, {built}", megabytes(&report), report.folder.display());
     let place = args.prefix.clone().map_or(KernelPlace::User, KernelPlace::Prefix);
-    let folder = hade_kernel::install_kernel(&place)?;
+    let folder = hade_kernel::install_kernel(&place, args.standby)?;
     eprintln!("kernel: {}; Jupyter shows it as \"Hade (Rust)\"", folder.display());
     Ok(())
 }

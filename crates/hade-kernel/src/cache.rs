@@ -18,6 +18,9 @@ const STAMP: &str = "complete";
 /// Held (shared) by every running session, in the cache and in the session folder it started from.
 const IN_USE: &str = "in-use";
 
+/// Where processes that stand by are found.
+pub(crate) const STANDBY: &str = "standby";
+
 /// Where the whole text of cells goes that print too much.
 pub(crate) const OUTPUTS: &str = "outputs";
 
@@ -97,7 +100,7 @@ pub fn clean() -> Result<CacheReport> {
 fn name_is_ours(path: &Path) -> bool {
     path.file_name().is_some_and(|name| {
         let name = name.to_string_lossy();
-        name.starts_with("libraries-") || name.starts_with("session-") || name == OUTPUTS
+        name.starts_with("libraries-") || name.starts_with("session-") || name == OUTPUTS || name == STANDBY
     })
 }
 

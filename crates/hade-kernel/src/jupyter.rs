@@ -18,17 +18,25 @@ mod desk;
 mod display;
 mod ending;
 mod execution;
+#[cfg(unix)]
+mod handover;
 mod history;
 mod inspection;
 mod iopub;
 mod kernel_info;
 mod kernelspec;
+#[cfg(unix)]
+mod meeting;
 mod message;
+#[cfg(not(unix))]
+mod no_standby;
 mod offsets;
 mod preparing;
 mod queue;
 mod replies;
 mod sockets;
+#[cfg(unix)]
+mod standby;
 mod worker;
 
 use std::path::Path;
@@ -41,9 +49,15 @@ use self::desk::Desk;
 use self::ending::Ending;
 use self::history::SharedHistory;
 use self::sockets::Sockets;
-use self::worker::Worker;
+use self::worker::{Ready, Worker};
 
 pub use self::kernelspec::{KernelPlace, install_kernel};
+#[cfg(unix)]
+pub use self::meeting::send_standby_away;
+#[cfg(not(unix))]
+pub use self::no_standby::{send_standby_away, serve_kernel_by_standby, stand_by};
+#[cfg(unix)]
+pub use self::standby::{serve_kernel_by_standby, stand_by};
 
 /// Serves one notebook until its client ends the kernel.
 ///
@@ -51,25 +65,40 @@ pub use self::kernelspec::{KernelPlace, install_kernel};
 /// If the connection file cannot be read, names another machine or gives no key, or if a port is taken.
 /// Everything later, a missing compiler too, is told to the client.
 pub fn serve_kernel(connection_file: impl AsRef<Path>) -> Result<()> {
-    let info = connection::read(connection_file.as_ref())?;
-    let runtime = tokio::runtime::Builder::new_multi_thread()
-        .worker_threads(2)
-        .enable_all()
-        .build()
-        .map_err(|error| Error::Start { why: error.to_string() })?;
-    let served = runtime.block_on(serve(&info));
+    let runtime = runtime()?;
+    let served = runtime.block_on(serve_here(connection_file.as_ref()));
     // A task may wait for a client that is gone.
     runtime.shutdown_background();
     served
 }
 
-async fn serve(info: &jupyter_protocol::ConnectionInfo) -> Result<()> {
-    let sockets = Sockets::bind(info).await?;
+fn runtime() -> Result<tokio::runtime::Runtime> {
+    tokio::runtime::Builder::new_multi_thread()
+        .worker_threads(2)
+        .enable_all()
+        .build()
+        .map_err(|error| Error::Start { why: error.to_string() })
+}
+
+/// Serves the notebook of a connection file in this process, from the start of a session on.
+async fn serve_here(connection_file: &Path) -> Result<()> {
+    let info = connection::read(connection_file)?;
+    let sockets = Sockets::bind(&info).await?;
+    serve(sockets, InterruptHandle::default(), None, |_| ()).await
+}
+
+/// Serves the sockets by a session that is ready, or by one that is started now. `also` is given what ends it.
+async fn serve<T>(
+    sockets: Sockets,
+    interrupt: InterruptHandle,
+    ready: Option<Ready>,
+    also: impl FnOnce(Arc<Ending>) -> T,
+) -> Result<()> {
     let (queue, waiting) = queue::new();
     let history = SharedHistory::default();
-    let interrupt = InterruptHandle::default();
     let ending = Arc::new(Ending::new(interrupt.clone(), queue.clone()));
-    let worker = Worker::new(waiting, sockets.iopub.clone(), history.clone(), interrupt, Arc::clone(&ending));
+    let _also = also(Arc::clone(&ending));
+    let worker = Worker::new(waiting, sockets.iopub.clone(), history.clone(), interrupt, Arc::clone(&ending), ready);
     let worker = worker.spawn()?;
     let desk = Desk { iopub: sockets.iopub.clone(), queue, history, ending: Arc::clone(&ending) };
     let serving = sockets.serve(desk);

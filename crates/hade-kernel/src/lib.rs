@@ -56,11 +56,11 @@ pub use cell::{CellError, CellOutcome, Output, Stream};
 pub use error::{Error, Result};
 pub use hook::runtime_hook;
 pub use interrupt::InterruptHandle;
-pub use jupyter::{KernelPlace, install_kernel, serve_kernel};
+pub use jupyter::{KernelPlace, install_kernel, send_standby_away, serve_kernel, serve_kernel_by_standby, stand_by};
 pub use notebook::Notebook;
 pub use prepare::{Prepared, prepare};
 pub use progress::{Progress, Silent, Step};
-pub use run::{CellReport, NotebookFailure, NotebookRun, RunOptions, run_notebook};
+pub use run::{CellReport, NotebookFailure, NotebookRun, RunOptions, run_notebook, run_notebooks};
 pub use session::{Session, SessionOptions};
 
 /// The mime type under which a cell hands over the record of a calculation sheet (JSON text).

@@ -1,4 +1,4 @@
-//! Runs a notebook from top to bottom in a fresh session.
+//! Runs notebooks from top to bottom in a fresh session.
 
 use std::fmt;
 use std::path::Path;
@@ -8,12 +8,12 @@ use serde_json::Value;
 
 use crate::cell::{CellError, CellOutcome};
 use crate::ctrl_c::Keyboard;
-use crate::error::Result;
+use crate::error::{Error, Result};
 use crate::interrupt::InterruptHandle;
 use crate::notebook::Notebook;
 use crate::prepare::prepare;
 use crate::progress::{Progress, Step};
-use crate::session::{Session, SessionOptions};
+use crate::session::{Place, Session, SessionOptions};
 
 /// How a notebook is run.
 #[derive(Debug, Clone, Default)]
@@ -29,7 +29,7 @@ pub struct RunOptions {
 /// What became of one cell that holds code.
 #[derive(Debug, Clone)]
 pub struct CellReport {
-    /// Its number among the cells that hold code, from 1 (Jupyter's `[n]`).
+    /// Its number among the cells that hold code and that the session ran, from 1 (Jupyter's `[n]`).
     pub number: usize,
     /// Its place among all cells of the notebook, from 0.
     pub index: usize,
@@ -101,35 +101,95 @@ impl NotebookRun {
 /// # Errors
 /// If the file is not a notebook, the libraries cannot be built or the session does not start.
 pub fn run_notebook(path: impl AsRef<Path>, options: &RunOptions, progress: &mut dyn Progress) -> Result<NotebookRun> {
-    let mut notebook = Notebook::read(path)?;
-    let prepared = prepare(progress)?;
-    progress.step(Step::Starting);
-    let interrupt = InterruptHandle::default();
-    let mut session = Session::start(
-        &prepared,
-        SessionOptions {
-            folder: Some(notebook.folder().to_path_buf()),
-            cell_timeout: options.cell_timeout,
-            interrupt: interrupt.clone(),
-        },
-    )?;
-    let keyboard = Keyboard::listen(options.stop_on_ctrl_c, interrupt)?;
-    notebook.clear_outputs();
-    let sources = notebook.code_cells();
-    let mut cells = Vec::new();
-    for (at, (index, source)) in sources.iter().enumerate() {
-        let number = at + 1;
-        progress.step(Step::Cell { number, of: sources.len(), first_line: first_line(source) });
-        let outcome = session.execute(source);
-        notebook.set_outcome(*index, number, &outcome);
-        let failed = outcome.error.is_some();
-        cells.push(CellReport { number, index: *index, outcome });
-        if (failed && !options.allow_errors) || keyboard.was_pressed() {
+    let notebook = Notebook::read(path)?;
+    let mut engine = Runner::start(notebook.folder(), options, progress)?;
+    let run = engine.run(notebook, progress)?;
+    progress.step(Step::Done);
+    Ok(run)
+}
+
+/// Runs notebooks one after the other in one fresh session: what one leaves behind is there in the next, each
+/// runs in its own folder, and their cells are numbered on, as in a Jupyter session that several notebooks share.
+/// All are read before the first runs. After a cell that fails no other notebook runs (unless errors are allowed),
+/// so there may be fewer results than notebooks.
+///
+/// # Errors
+/// If a file is not a notebook, the libraries cannot be built or the session does not start, or a notebook's
+/// folder has gone.
+pub fn run_notebooks<P: AsRef<Path>>(
+    paths: &[P],
+    options: &RunOptions,
+    progress: &mut dyn Progress,
+) -> Result<Vec<NotebookRun>> {
+    let notebooks = paths.iter().map(Notebook::read).collect::<Result<Vec<_>>>()?;
+    let mut runs = Vec::with_capacity(notebooks.len());
+    let Some(first) = notebooks.first() else {
+        return Ok(runs);
+    };
+    let mut engine = Runner::start(first.folder(), options, progress)?;
+    for notebook in notebooks {
+        engine.enter(&notebook)?;
+        let run = engine.run(notebook, progress)?;
+        let ends = run.interrupted || (run.failure().is_some() && !options.allow_errors);
+        runs.push(run);
+        if ends {
             break;
         }
     }
     progress.step(Step::Done);
-    Ok(NotebookRun { notebook, cells, interrupted: keyboard.was_pressed() })
+    Ok(runs)
+}
+
+/// A session that works off notebooks.
+struct Runner<'a> {
+    session: Session,
+    keyboard: Keyboard,
+    options: &'a RunOptions,
+    /// How many cells it has run.
+    ran: usize,
+}
+
+impl<'a> Runner<'a> {
+    fn start(folder: &Path, options: &'a RunOptions, progress: &mut dyn Progress) -> Result<Runner<'a>> {
+        let prepared = prepare(progress)?;
+        progress.step(Step::Starting);
+        let interrupt = InterruptHandle::default();
+        let session = Session::start(
+            &prepared,
+            SessionOptions {
+                folder: Some(folder.to_path_buf()),
+                cell_timeout: options.cell_timeout,
+                interrupt: interrupt.clone(),
+            },
+        )?;
+        let keyboard = Keyboard::listen(options.stop_on_ctrl_c, interrupt)?;
+        Ok(Runner { session, keyboard, options, ran: 0 })
+    }
+
+    /// Goes to the folder of a notebook.
+    fn enter(&mut self, notebook: &Notebook) -> Result<()> {
+        let folder = notebook.folder();
+        self.session.move_to(Place::folder(folder.to_path_buf())).map_err(Error::file("enter the folder", folder))
+    }
+
+    fn run(&mut self, mut notebook: Notebook, progress: &mut dyn Progress) -> Result<NotebookRun> {
+        notebook.clear_outputs();
+        let sources = notebook.code_cells();
+        let mut cells = Vec::new();
+        for (at, (index, source)) in sources.iter().enumerate() {
+            progress.step(Step::Cell { number: at + 1, of: sources.len(), first_line: first_line(source) });
+            self.ran += 1;
+            self.session.number_next(self.ran);
+            let outcome = self.session.execute(source);
+            notebook.set_outcome(*index, self.ran, &outcome);
+            let failed = outcome.error.is_some();
+            cells.push(CellReport { number: self.ran, index: *index, outcome });
+            if (failed && !self.options.allow_errors) || self.keyboard.was_pressed() {
+                break;
+            }
+        }
+        Ok(NotebookRun { notebook, cells, interrupted: self.keyboard.was_pressed() })
+    }
 }
 
 /// The first line that says something: not blank, not a comment unless there is nothing else.

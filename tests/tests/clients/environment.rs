@@ -21,7 +21,14 @@ impl Jupyter {
         let turn = TURN.lock().unwrap_or_else(PoisonError::into_inner);
         let python = python_with("tests/clients/requirements.txt")?;
         let jupyter = Jupyter { python, folder: tempfile::tempdir().expect("a folder"), _turn: turn };
-        jupyter.install();
+        jupyter.install(&[]);
+        Some(jupyter)
+    }
+
+    /// One whose kernels are taken over by a process that stands by.
+    pub fn with_standby() -> Option<Jupyter> {
+        let jupyter = Jupyter::new()?;
+        jupyter.install(&["--standby"]);
         Some(jupyter)
     }
 
@@ -30,10 +37,11 @@ impl Jupyter {
         self.folder.path()
     }
 
-    fn install(&self) {
-        let installed = self.hade(&["kernel", "install", "--prefix"], &[self.folder()]);
+    fn install(&self, options: &[&str]) {
+        let words = [&["kernel", "install"], options, &["--prefix"]].concat();
+        let installed = self.hade(&words, &[self.folder()]);
         assert!(installed.status.success(), "{}", said(&installed));
-        fs::create_dir(self.folder().join("tmp")).expect("a folder");
+        fs::create_dir_all(self.folder().join("tmp")).expect("a folder");
     }
 
     /// Runs the command of this build.

@@ -14,7 +14,7 @@ use crate::session;
 const PATIENCE: Duration = Duration::from_millis(1200);
 
 /// Set by the client to its own process when the kernel is to end with it.
-const PARENT_VAR: &str = "JPY_PARENT_PID";
+pub(super) const PARENT_VAR: &str = "JPY_PARENT_PID";
 
 /// Stops the cell that runs, and the kernel.
 pub(super) struct Ending {
@@ -69,31 +69,47 @@ impl Ending {
         }
     }
 
-    #[cfg(unix)]
     async fn signals(&self) {
-        use tokio::signal::unix::{SignalKind, signal};
-        let streams = (signal(SignalKind::interrupt()), signal(SignalKind::terminate()), signal(SignalKind::hangup()));
-        let (Ok(mut interrupt), Ok(mut terminate), Ok(mut hangup)) = streams else {
-            return std::future::pending().await;
-        };
-        loop {
-            tokio::select! {
-                _ = interrupt.recv() => self.interrupt(),
-                _ = terminate.recv() => return,
-                _ = hangup.recv() => return,
-            }
+        tokio::select! {
+            () = terminated() => {}
+            () = async {
+                loop {
+                    interrupted().await;
+                    self.interrupt();
+                }
+            } => {}
         }
     }
+}
 
-    #[cfg(not(unix))]
-    async fn signals(&self) {
+/// Waits for Ctrl-C.
+pub(super) async fn interrupted() {
+    if tokio::signal::ctrl_c().await.is_err() {
         std::future::pending().await
     }
 }
 
+/// Waits for a signal that asks this process to end.
+#[cfg(unix)]
+pub(super) async fn terminated() {
+    use tokio::signal::unix::{SignalKind, signal};
+    let (Ok(mut terminate), Ok(mut hangup)) = (signal(SignalKind::terminate()), signal(SignalKind::hangup())) else {
+        return std::future::pending().await;
+    };
+    tokio::select! {
+        _ = terminate.recv() => {}
+        _ = hangup.recv() => {}
+    }
+}
+
+#[cfg(not(unix))]
+pub(super) async fn terminated() {
+    std::future::pending().await
+}
+
 /// Waits until the client that started this kernel has died.
 #[cfg(unix)]
-async fn parent_is_gone() {
+pub(super) async fn parent_is_gone() {
     if std::env::var_os(PARENT_VAR).is_none() {
         return std::future::pending().await;
     }
@@ -104,7 +120,7 @@ async fn parent_is_gone() {
 }
 
 #[cfg(not(unix))]
-async fn parent_is_gone() {
+pub(super) async fn parent_is_gone() {
     std::future::pending().await
 }
 

@@ -51,24 +51,29 @@ impl KernelPlace {
 }
 
 /// Makes this program known to Jupyter as the kernel `hade`, and returns the folder that says so. An
-/// earlier one is replaced.
+/// earlier one is replaced. With `standby` one session is kept ready for the next notebook.
 ///
 /// # Errors
 /// If the folder cannot be written.
-pub fn install_kernel(place: &KernelPlace) -> Result<PathBuf> {
+pub fn install_kernel(place: &KernelPlace, standby: bool) -> Result<PathBuf> {
     let program = env::current_exe().map_err(|error| Error::Start { why: error.to_string() })?;
-    write(&place.data_folder()?, &spec(&program))
+    write(&place.data_folder()?, &spec(&program, standby))
 }
 
 /// The kernel as Jupyter's file describes it.
-fn spec(program: &Path) -> Value {
+fn spec(program: &Path, standby: bool) -> Value {
     // The kernel must find the libraries that are prepared now.
     let cache = env::var_os(CACHE_VAR)
         .filter(|value| !value.is_empty())
         .and_then(|folder| std::path::absolute(folder).ok())
         .map(|folder| json!({ CACHE_VAR: folder }));
+    let program = program.to_string_lossy();
+    let mut words = vec![&*program, "kernel", "start", "--connection-file", "{connection_file}"];
+    if standby {
+        words.push("--standby");
+    }
     json!({
-        "argv": [program, "kernel", "start", "--connection-file", "{connection_file}"],
+        "argv": words,
         "display_name": "Hade (Rust)",
         "language": "rust",
         "interrupt_mode": "message",
@@ -110,9 +115,9 @@ mod tests {
         let place = KernelPlace::Prefix(folder.path().to_path_buf());
         let data = place.data_folder()?;
         assert_eq!(data, folder.path().join("share/jupyter"));
-        let target = write(&data, &spec(Path::new("/old/hade")))?;
+        let target = write(&data, &spec(Path::new("/old/hade"), true))?;
         fs::write(target.join("left-over"), "x").map_err(Error::file("write", &target))?;
-        assert_eq!(write(&data, &spec(Path::new("/new/hade")))?, target);
+        assert_eq!(write(&data, &spec(Path::new("/new/hade"), false))?, target);
         let text = fs::read(target.join("kernel.json")).map_err(Error::file("read", &target))?;
         let spec: Value = serde_json::from_slice(&text).unwrap_or_default();
         assert_eq!(spec["argv"], json!(["/new/hade", "kernel", "start", "--connection-file", "{connection_file}"]));

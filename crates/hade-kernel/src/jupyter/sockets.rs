@@ -1,6 +1,6 @@
 //! The five sockets and the tasks that serve them.
 
-use std::time::Duration;
+use std::time::{Duration, Instant};
 
 use jupyter_protocol::{ConnectionInfo, JupyterMessage};
 use jupyter_zmq_client::{
@@ -20,6 +20,9 @@ use crate::error::{Error, Result};
 
 /// How long the last messages may take to leave.
 const LAST_MESSAGES: Duration = Duration::from_millis(300);
+
+/// How long a port may be taken.
+const PORT_PATIENCE: Duration = Duration::from_secs(2);
 
 /// The sockets, bound and not yet served.
 pub(super) struct Sockets {
@@ -52,11 +55,19 @@ impl Sockets {
         let sockets = Sockets {
             iopub: IoPub::new(sender),
             published,
-            heartbeat: create_kernel_heartbeat_connection(info).await.map_err(failed(info.hb_port))?,
-            iopub_socket: create_kernel_iopub_xpub_connection(info, &session).await.map_err(failed(info.iopub_port))?,
-            control: create_kernel_control_connection(info, &session).await.map_err(failed(info.control_port))?,
-            stdin: create_kernel_stdin_connection(info, &session).await.map_err(failed(info.stdin_port))?,
-            shell: create_kernel_shell_connection(info, &session).await.map_err(failed(info.shell_port))?,
+            heartbeat: patiently(|| create_kernel_heartbeat_connection(info)).await.map_err(failed(info.hb_port))?,
+            iopub_socket: patiently(|| create_kernel_iopub_xpub_connection(info, &session))
+                .await
+                .map_err(failed(info.iopub_port))?,
+            control: patiently(|| create_kernel_control_connection(info, &session))
+                .await
+                .map_err(failed(info.control_port))?,
+            stdin: patiently(|| create_kernel_stdin_connection(info, &session))
+                .await
+                .map_err(failed(info.stdin_port))?,
+            shell: patiently(|| create_kernel_shell_connection(info, &session))
+                .await
+                .map_err(failed(info.shell_port))?,
         };
         Ok(sockets)
     }
@@ -95,6 +106,19 @@ impl Serving {
             tokio::time::sleep(Duration::from_millis(50)).await;
         };
         let _ = tokio::time::timeout(LAST_MESSAGES, all).await;
+    }
+}
+
+/// Tries again for a while: on a restart the kernel that had the port may need a moment to leave it.
+async fn patiently<T, F: Future<Output = std::result::Result<T, RuntimeError>>>(
+    bind: impl Fn() -> F,
+) -> std::result::Result<T, RuntimeError> {
+    let started = Instant::now();
+    loop {
+        match bind().await {
+            Err(_) if started.elapsed() < PORT_PATIENCE => tokio::time::sleep(Duration::from_millis(50)).await,
+            done => return done,
+        }
     }
 }
 

@@ -18,7 +18,13 @@ use super::{completion, inspection};
 use crate::cell::CellError;
 use crate::error::{Error, Result};
 use crate::interrupt::InterruptHandle;
-use crate::session::{Session, SessionOptions};
+use crate::session::{Place, Session, SessionOptions};
+
+/// A session that is warm, and where it is to run.
+pub(super) struct Ready {
+    pub(super) session: Session,
+    pub(super) place: Place,
+}
 
 /// Owns the session.
 pub(super) struct Worker {
@@ -28,6 +34,7 @@ pub(super) struct Worker {
     interrupt: InterruptHandle,
     ending: Arc<Ending>,
     session: Option<Session>,
+    ready: Option<Ready>,
     /// Why there is none, until it has been told.
     trouble: Option<Error>,
     /// The number of the last cell that counts.
@@ -43,9 +50,10 @@ impl Worker {
         history: SharedHistory,
         interrupt: InterruptHandle,
         ending: Arc<Ending>,
+        ready: Option<Ready>,
     ) -> Worker {
         let (session, trouble, count, displays) = (None, None, 0, HashSet::new());
-        Worker { waiting, iopub, history, interrupt, ending, session, trouble, count, displays }
+        Worker { waiting, iopub, history, interrupt, ending, session, ready, trouble, count, displays }
     }
 
     /// Starts the thread. What is returned hears when the session has ended.
@@ -65,9 +73,11 @@ impl Worker {
     }
 
     fn run(mut self) {
+        let was_ready = self.ready.is_some();
         match self.start() {
             Ok(()) => {
-                if self.waiting.is_empty()
+                if !was_ready
+                    && self.waiting.is_empty()
                     && let Some(session) = &mut self.session
                 {
                     session.warm();
@@ -94,6 +104,13 @@ impl Worker {
     }
 
     fn start(&mut self) -> Result<()> {
+        if let Some(Ready { mut session, place }) = self.ready.take() {
+            self.ending.watch(session.process());
+            let folder = place.folder.clone();
+            session.move_to(place).map_err(Error::file("enter the folder", &folder))?;
+            self.session = Some(session);
+            return Ok(());
+        }
         let prepared = prepare_visibly(&mut self.waiting, &self.iopub, self.count + 1)?;
         let options = SessionOptions { interrupt: self.interrupt.clone(), ..SessionOptions::default() };
         let session = Session::start(&prepared, options)?;
