@@ -1,6 +1,7 @@
 //! What the checks of this workspace share: cases read from `data/`, and comparisons that fail on
 //! both sides and never pass what is not a number.
 
+mod prelude;
 mod python;
 pub mod splitmix;
 
@@ -8,6 +9,7 @@ use std::path::PathBuf;
 
 use serde_json::Value;
 
+pub use prelude::prelude_names;
 pub use python::python_with;
 
 /// One case worked out outside this project.

@@ -4,6 +4,8 @@
 mod clients;
 #[path = "memo/demo.rs"]
 mod demo;
+#[path = "memo/every_name.rs"]
+mod every_name;
 #[path = "memo/new_project.rs"]
 mod new_project;
 #[path = "memo/python.rs"]

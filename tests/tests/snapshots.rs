@@ -6,18 +6,7 @@ use hade::show::card_text;
 
 #[test]
 fn the_prelude_exports_these_names() {
-    let text = std::fs::read_to_string(hade_tests::root().join("crates/hade/src/prelude.rs")).expect("the prelude");
-    let code: String = text.lines().filter(|l| !l.trim_start().starts_with("//")).collect::<Vec<_>>().join(" ");
-    let mut names: Vec<String> = code
-        .split(';')
-        .filter(|statement| statement.contains("pub use"))
-        .flat_map(|statement| {
-            let (_, list) = statement.rsplit_once("::").expect("a path");
-            list.trim_matches(|c| "{} ".contains(c)).split(',').map(|n| n.trim().to_owned()).collect::<Vec<_>>()
-        })
-        .filter(|name| !name.is_empty())
-        .collect();
-    names.sort();
+    let names = hade_tests::prelude_names();
     for forbidden in ["Result", "Error", "Ok", "Err", "Option", "Some", "None"] {
         assert!(!names.iter().any(|n| n == forbidden), "{forbidden} would break a notebook's own code");
     }
