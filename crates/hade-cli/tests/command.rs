@@ -103,3 +103,15 @@ fn ctrl_c_stops_a_run_and_writes_nothing() {
         fs::remove_dir_all(&folder).expect("the folder can be removed");
     }
 }
+
+#[test]
+fn where_several_notebooks_go_is_checked_first() {
+    for (arguments, said_so) in [
+        (["run", "a.ipynb", "b.ipynb", "-o", "nowhere"].as_slice(), "nowhere is no folder"),
+        (&["run", "a.ipynb", "a.ipynb"], "a.ipynb would be written twice"),
+        (&["run"], "<NOTEBOOK>"),
+    ] {
+        let output = hade(arguments);
+        assert!(!output.status.success() && said(&output).contains(said_so), "{arguments:?}: {}", said(&output));
+    }
+}

@@ -23,6 +23,7 @@ use std::{env, fs, process};
 
 use hade_kernel::{
     CellOutcome, Output, Prepared, RunOptions, Session, SessionOptions, Silent, Stream, prepare, run_notebook,
+    run_notebooks,
 };
 
 type Test = fn(&mut Bench);
@@ -43,6 +44,7 @@ const TESTS: &[(&str, Test)] = &[
     ("an_endless_loop_is_stopped", an_endless_loop_is_stopped),
     ("a_notebook_runs_in_its_folder", a_notebook_runs_in_its_folder),
     ("a_notebook_stops_at_the_first_failure", a_notebook_stops_at_the_first_failure),
+    ("notebooks_share_a_session", notebooks_share_a_session),
 ];
 
 /// In the order in which they run; the last looks at what the others leave.
@@ -302,6 +304,39 @@ fn a_notebook_runs_in_its_folder(_: &mut Bench) {
         (&serde_json::Value::Null, &serde_json::json!(2))
     );
     assert_eq!(run.last_output(hade_kernel::RECORD_MIME), Some(serde_json::json!({"x": 0.1})));
+}
+
+/// What one leaves is there in the next; each runs in its own folder, also after its process has ended.
+fn notebooks_share_a_session(_: &mut Bench) {
+    let (one, other) = (tempfile::tempdir().expect("a folder"), tempfile::tempdir().expect("a folder"));
+    for (folder, text) in [(&one, "first"), (&other, "second")] {
+        fs::write(folder.path().join("data.txt"), text).expect("a file");
+    }
+    let read = "println!(\"{}\", std::fs::read_to_string(\"data.txt\")?);";
+    let paths = [
+        notebook(one.path(), &["let depth = 2950.0;", read]),
+        notebook(other.path(), &["println!(\"{depth}\");", read, "std::process::exit(3)", read, "depth"]),
+    ];
+    let options = RunOptions { allow_errors: true, ..RunOptions::default() };
+    let runs = run_notebooks(&paths, &options, &mut Silent).expect("they run");
+    let text = |run: usize, cell: usize| {
+        let outputs = &runs[run].notebook.json()["cells"][cell]["outputs"];
+        outputs[0]["text"][0].as_str().unwrap_or_default().trim().to_owned()
+    };
+    assert_eq!([text(0, 1), text(1, 0), text(1, 1), text(1, 3)], ["first", "2950", "second", "second"]);
+    let numbers: Vec<usize> = runs.iter().flat_map(|run| run.cells.iter().map(|cell| cell.number)).collect();
+    assert_eq!(numbers, [1, 2, 3, 4, 5, 6, 7]);
+    assert_eq!(runs[1].notebook.json()["cells"][0]["execution_count"], 3);
+    let lost = runs[1].cells[4].outcome.error.as_ref().expect("an error");
+    assert!(lost.sentence.contains("cell 5"), "{}", lost.sentence);
+
+    // Nothing of the second runs after a failure in the first, and a file that is none stops both.
+    let failing = notebook(one.path(), &["depth"]);
+    let runs = run_notebooks(&[&failing, &paths[1]], &RunOptions::default(), &mut Silent).expect("they run");
+    assert_eq!(runs.len(), 1);
+    fs::write(one.path().join("none.ipynb"), "{}").expect("a file");
+    let none = one.path().join("none.ipynb");
+    assert!(run_notebooks(&[&paths[1], &none], &RunOptions::default(), &mut Silent).is_err());
 }
 
 fn a_notebook_stops_at_the_first_failure(_: &mut Bench) {
