@@ -3,6 +3,8 @@
 
 #[path = "clients/environment.rs"]
 mod environment;
+#[path = "clients/lab.rs"]
+mod lab;
 #[path = "clients/life.rs"]
 mod life;
 #[path = "clients/notebook.rs"]

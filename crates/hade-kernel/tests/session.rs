@@ -15,6 +15,8 @@ mod floods;
 mod interrupts;
 #[path = "session/robustness.rs"]
 mod robustness;
+#[path = "session/stock.rs"]
+mod stock;
 
 use std::collections::BTreeMap;
 use std::path::Path;
@@ -50,9 +52,19 @@ const TESTS: &[(&str, Test)] = &[
 /// In the order in which they run; the last looks at what the others leave.
 fn all() -> impl Iterator<Item = &'static (&'static str, Test)> {
     let last: &[(&str, Test)] = &[("nothing_is_left_behind", nothing_is_left_behind)];
-    [TESTS, errors::TESTS, commands::TESTS, floods::TESTS, crashes::TESTS, interrupts::TESTS, robustness::TESTS, last]
-        .into_iter()
-        .flatten()
+    [
+        TESTS,
+        errors::TESTS,
+        commands::TESTS,
+        floods::TESTS,
+        crashes::TESTS,
+        interrupts::TESTS,
+        robustness::TESTS,
+        stock::TESTS,
+        last,
+    ]
+    .into_iter()
+    .flatten()
 }
 
 fn main() {

@@ -17,9 +17,14 @@ pub struct Jupyter {
 impl Jupyter {
     /// `None`, and a word about it, where the clients cannot be had.
     pub fn new() -> Option<Jupyter> {
+        Jupyter::with("tests/clients/requirements.txt")
+    }
+
+    /// With the packages of a file of pins.
+    pub fn with(pins: &str) -> Option<Jupyter> {
         static TURN: Mutex<()> = Mutex::new(());
         let turn = TURN.lock().unwrap_or_else(PoisonError::into_inner);
-        let python = python_with("tests/clients/requirements.txt")?;
+        let python = python_with(pins)?;
         let jupyter = Jupyter { python, folder: tempfile::tempdir().expect("a folder"), _turn: turn };
         jupyter.install(&[]);
         Some(jupyter)
