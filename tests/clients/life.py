@@ -84,6 +84,30 @@ def a_display_is_replaced_by_its_name():
         assert last["transient"] == {"display_id": "bar"} and last["data"] == {"text/plain": "2"}, last
 
 
+def long_work_shows_how_far_it_is():
+    code = (
+        'let work = hade::progress::Progress::new("places", 60);\n'
+        "for _ in 0..60 { std::thread::sleep(std::time::Duration::from_millis(50)); work.advance(1); }\ndrop(work);\n"
+    )
+    with kernel() as k:
+        k.run("let a = 1;")
+        reply, shown = k.run(code + '"end".to_string()')
+        assert reply["status"] == "ok", reply
+        bars = [(kind, content["data"]["text/plain"]) for _, kind, content in shown if "display" in kind]
+        assert [kind for kind, _ in bars[:2]] == ["display_data", "update_display_data"], bars
+        assert 3 <= len(bars) <= 8, bars
+        assert bars[0][1].startswith("places ▰") and "left" in bars[0][1], bars
+        assert bars[-1][1].startswith("places: done after 3."), bars
+        assert shown[-1][1] == "execute_result" and shown[-1][2]["data"]["text/plain"] == '"end"', shown[-1]
+        # One that is stopped says so.
+        message = k.send(code.replace("from_millis(50)", "from_millis(500)"))
+        time.sleep(4)
+        k.manager.interrupt_kernel()
+        last = [content for _, kind, content in k.outputs(message) if kind == "update_display_data"][-1]
+        assert last["data"]["text/plain"].startswith("places: stopped after"), last
+        assert k.text('println!("{a}");') == "1\n"
+
+
 def every_failure_has_its_name():
     with kernel() as k:
         for code, name, word in [

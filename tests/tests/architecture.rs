@@ -7,9 +7,10 @@ use hade_tests::root;
 
 /// Each module with its place in `error · interrupt · units ← card, sheet ← … ← prelude`. A module imports only
 /// from places before its own, or from itself.
-const ORDER: [(&str, u32); 17] = [
+const ORDER: [(&str, u32); 18] = [
     ("error", 0),
     ("interrupt", 0),
+    ("progress", 1),
     ("units", 1),
     ("lines", 2),
     ("card", 2),

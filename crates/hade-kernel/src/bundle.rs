@@ -17,6 +17,11 @@ pub(crate) fn display_id(bundle: &BTreeMap<String, String>) -> Option<&str> {
     bundle.get(DISPLAY_ID_MIME).map(|id| id.trim()).filter(|id| !id.is_empty())
 }
 
+/// Whether a value says how far some work is: it is shown while the work lasts and is no output of the cell.
+pub(crate) fn is_passing(bundle: &BTreeMap<String, String>) -> bool {
+    display_id(bundle).is_some_and(|id| id.starts_with("progress-"))
+}
+
 /// What is shown of a value.
 pub(crate) fn shown(bundle: &BTreeMap<String, String>) -> impl Iterator<Item = (&str, &str)> {
     bundle.iter().map(|(mime, content)| (mime.as_str(), content.as_str())).filter(|(mime, _)| *mime != DISPLAY_ID_MIME)
@@ -51,7 +56,7 @@ mod tests {
         ]);
         assert_eq!(display_id(&bundle), Some("bar"));
         assert_eq!(shown(&bundle).collect::<Vec<_>>(), [("text/plain", "1")]);
-        assert!(!is_plain(&bundle));
+        assert!(!is_plain(&bundle) && !is_passing(&bundle));
         assert_eq!(json_value(crate::RECORD_MIME, "{\"x\":0.1}"), json!({"x": 0.1}));
         assert_eq!(json_value("application/json", "no json"), json!("no json"));
         assert_eq!(json_value("text/plain", "1"), json!("1"));

@@ -27,6 +27,9 @@ pub(crate) const OUTPUTS: &str = "outputs";
 /// A session folder for another compiler, not used for so long, is removed.
 const LONG_UNUSED: Duration = Duration::from_secs(30 * 24 * 3600);
 
+/// The same for this compiler. Two versions of `hade` in use at a time do not take each other's away.
+const UNUSED: Duration = Duration::from_secs(3600);
+
 /// The folder with everything that is compiled once: `$HADE_CACHE`, or `hade` in the user's cache
 /// folder.
 ///
@@ -150,8 +153,8 @@ fn open(path: &Path) -> Result<File> {
     OpenOptions::new().create(true).truncate(false).write(true).open(path).map_err(Error::file("open", path))
 }
 
-/// Removes what a newer version of `hade` has left behind: session folders that nobody holds, of the same compiler at
-/// once and of others after a month, and libraries that no session folder names. The caller holds the cache's lock.
+/// Removes what a newer version of `hade` has left behind: session folders that nobody holds, of the same compiler
+/// after an hour and of others after a month, and libraries that no session folder names. The caller holds the cache's lock.
 pub(crate) fn prune(cache: &Path, session: &Path, libraries: &Path) {
     let named = |beginning: &str| -> Vec<PathBuf> {
         let entries = fs::read_dir(cache).into_iter().flatten().flatten();
@@ -166,7 +169,8 @@ pub(crate) fn prune(cache: &Path, session: &Path, libraries: &Path) {
         let own = all_libraries.iter().find(|libraries| plan.contains(&*libraries.to_string_lossy()));
         let unused = fs::metadata(folder.join(IN_USE)).and_then(|meta| meta.modified()).ok();
         let unused = unused.and_then(|used| used.elapsed().ok()).unwrap_or(LONG_UNUSED);
-        let old = own.is_none_or(|own| own == libraries) || unused >= LONG_UNUSED;
+        let ours = own.is_none_or(|own| own == libraries);
+        let old = unused >= if ours { UNUSED } else { LONG_UNUSED };
         let held = open(&folder.join(IN_USE)).map(|file| (file.try_lock().is_err(), file));
         match held {
             Ok((false, _lock)) if old => {
@@ -270,9 +274,14 @@ mod tests {
         let (old, held, new) =
             (make("session-1", "libraries-1")?, make("session-2", "libraries-1")?, make("session-3", "libraries-1")?);
         let (recent, long) = (make("session-4", "libraries-2")?, make("session-5", "libraries-3")?);
-        let ago = SystemTime::now() - LONG_UNUSED;
-        open(&long.join(IN_USE))?.set_modified(ago).map_err(Error::file("date", &long))?;
+        let in_time = make("session-6", "libraries-1")?;
         let holding = hold(&held)?;
+        let back_date = |folder: &Path, by: Duration| {
+            open(&folder.join(IN_USE))?.set_modified(SystemTime::now() - by).map_err(Error::file("date", folder))
+        };
+        for (folder, by) in [(&old, UNUSED), (&held, UNUSED), (&recent, UNUSED), (&long, LONG_UNUSED)] {
+            back_date(folder, by)?;
+        }
         // A process that another test starts has every lock of this one for a moment.
         let gone = |folders: &[&PathBuf]| {
             for _ in 0..100 {
@@ -285,6 +294,7 @@ mod tests {
         };
         gone(&[&old, &long]);
         assert!(!old.exists() && held.exists() && new.exists() && recent.exists() && !long.exists());
+        assert!(in_time.exists());
         assert!(cache.join("libraries-1").exists() && cache.join("libraries-2").exists());
         assert!(!cache.join("libraries-3").exists());
         drop(holding);

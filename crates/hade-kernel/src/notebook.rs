@@ -239,7 +239,8 @@ fn outputs(outcome: &CellOutcome, count: usize) -> Vec<Value> {
     let mut list: Vec<Value> = Vec::new();
     // Where the displays are that a later one of the same name replaces.
     let mut named: Vec<(&str, usize)> = Vec::new();
-    let last = outcome.outputs.iter().rposition(|output| !is_aside(output));
+    let passes = |output: &Output| matches!(output, Output::Display(bundle) if bundle::is_passing(bundle));
+    let last = outcome.outputs.iter().rposition(|output| !is_aside(output) && !passes(output));
     let mut result = None;
     for (at, output) in outcome.outputs.iter().enumerate() {
         match output {
@@ -248,6 +249,7 @@ fn outputs(outcome: &CellOutcome, count: usize) -> Vec<Value> {
                 "name": stream.name(),
                 "text": lines(text),
             })),
+            Output::Display(bundle) if bundle::is_passing(bundle) => {}
             Output::Display(bundle) => {
                 let data: Map<String, Value> =
                     bundle::shown(bundle).map(|(mime, content)| (mime.to_owned(), stored(mime, content))).collect();
@@ -374,6 +376,18 @@ mod tests {
         let list = outputs(&outcome, 1);
         assert_eq!(list.len(), 2);
         assert_eq!(list[0]["data"], json!({"text/plain": ["2"]}));
+    }
+
+    #[test]
+    fn a_bar_is_no_output() {
+        let bar = Output::Display(BTreeMap::from([
+            ("text/plain".into(), "half".into()),
+            (crate::DISPLAY_ID_MIME.into(), "progress-1".into()),
+        ]));
+        let value = Output::Display(BTreeMap::from([("text/plain".into(), "1".into())]));
+        let outcome = CellOutcome { outputs: vec![value, bar], ..CellOutcome::default() };
+        let list = outputs(&outcome, 1);
+        assert_eq!((list.len(), &list[0]["output_type"]), (1, &json!("execute_result")));
     }
 
     #[test]

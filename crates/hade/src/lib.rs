@@ -10,6 +10,7 @@ pub mod frames;
 pub mod interrupt;
 mod lines;
 pub mod prelude;
+pub mod progress;
 pub mod replay;
 pub mod rock;
 #[cfg(any(test, feature = "samples"))]

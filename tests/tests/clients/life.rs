@@ -34,6 +34,7 @@ cases! {
     outputs_come_while_the_cell_runs
     much_text_comes_in_few_messages
     a_display_is_replaced_by_its_name
+    long_work_shows_how_far_it_is
     every_failure_has_its_name
     cells_behind_a_failure_are_aborted
     cells_are_counted_unless_they_are_silent

@@ -20,7 +20,7 @@ pub(super) fn reply(session: Option<&mut Session>, request: &Request) -> Unknown
     let reply = InspectReply { found: found.is_some(), ..InspectReply::default() };
     let mut content = serde_json::to_value(reply).unwrap_or_default();
     content["data"] = match found {
-        Some((plain, html)) => json!({"text/plain": plain, "text/html": without_links(&html)}),
+        Some((plain, html)) => json!({"text/plain": plain, "text/html": small_headings(&without_links(&html))}),
         None => json!({}),
     };
     untyped("inspect_reply", content)
@@ -34,6 +34,15 @@ fn without_links(html: &str) -> String {
         text.push_str(part.split_once('>').map_or("", |(_, rest)| rest));
     }
     text.replace("</a>", "")
+}
+
+/// Headings as bold lines: a note beside a cell is no page.
+fn small_headings(html: &str) -> String {
+    let mut text = html.to_owned();
+    for level in 1..=6 {
+        text = text.replace(&format!("<h{level}>"), "<p><b>").replace(&format!("</h{level}>"), "</b></p>");
+    }
+    text
 }
 
 /// The end of the name at the cursor, with an opening parenthesis after it: the engine looks at what
@@ -52,6 +61,7 @@ mod tests {
     fn links_are_left_out() {
         let html = "<p>See <a href=\"x\"><code>A</code></a>, <a href=\"y\">B</a>.</p>";
         assert_eq!(without_links(html), "<p>See <code>A</code>, B.</p>");
+        assert_eq!(small_headings("<h1>Errors</h1><p>No</p>"), "<p><b>Errors</b></p><p>No</p>");
     }
 
     #[test]
