@@ -167,8 +167,15 @@ let survey = Survey::read_csv("data/kf3-survey.csv")?.named("KF-3");
 let deepest: Station = *survey.stations().last().ok_or("no stations")?;
 assert_eq!(deepest.md, survey.last_md());
 let here: Position = survey.at_tvd(depth)?;
+let shoe = survey.at(survey.stations()[20].md)?;
+let below_shoe = Survey::from_stations(&survey.stations()[20..])?.tied_in(TieIn {
+    north: shoe.north,
+    east: shoe.east,
+    tvd: shoe.tvd,
+})?;
+assert!((below_shoe.at_tvd(depth)?.md - here.md).abs() < 0.001.m());
 let column: MudPressure = MudColumn { density: mud, tvd_below_rotary: depth }.pressure()?;
-[here.card(), column.card()]
+(here, column)
 // ---
 // The wall, in the planned attitude: stress at one tool face, all round it, and where it fails at this mud weight.
 let stress: Stress<Borehole> = to_hole.carry(&s);
@@ -202,6 +209,7 @@ let trace: PlaneTrace = image.plane().ok_or("no plane")?;
 // Limits of the pressure, for this hole and for holes in every direction.
 let limits: Limits = wall.limits();
 let lower: Limit = limits.lower_shear;
+assert_eq!(lower.kind(), LimitKind::LowerShear);
 let map = DirectionMap::over(MapInputs { stress: s, pore, rock, step: 5.deg() })?;
 let vertical = Attitude { inclination: 0.deg(), azimuth: Azimuth::from_true_north(0.deg()) };
 (limits, lower.pressure(), map.lower_shear(vertical)?)
@@ -213,12 +221,14 @@ let range: RecommendedRange = wall.recommended(RangeChoices {
     margin_top: 1.5.mpa(),
     tvd_below_rotary: depth,
 })?;
+assert_eq!(range.bottom.ok_or("no bottom")?.governed_by, Governs::LowerShear);
 let held: MudHeld = range.hold(MudPlan {
     static_density: mud,
     swab: Some(0.6.mpa()),
     circulating_density: Some(1.47.sg()),
     surge: None,
 })?;
+assert_eq!(held.not_stated(), [MudState::Surged]);
 let others: RangesBeside = range
     .beside(&[Alternative::criterion(Strength::mogi_coulomb(11.7.mpa(), 29.6.deg())), Alternative::permeable(0.8)])?;
 let sensitivity: Sensitivity =

@@ -3,6 +3,7 @@
 use evcxr::CompilationError;
 
 use crate::ledger::Ledger;
+use crate::mismatch;
 
 /// A sentence that says more than the compiler can know, or says it plainer.
 pub(crate) fn hint(error: &CompilationError, cell: &str, ledger: &Ledger) -> Option<Hint> {
@@ -24,8 +25,27 @@ pub(crate) fn hint(error: &CompilationError, cell: &str, ledger: &Ledger) -> Opt
         return Some(Hint { words: COMPILER_CHANGED.to_owned(), first: true });
     }
     let lines = error.spanned_messages().iter().filter_map(|part| part.span.as_ref()).map(|span| span.start_line);
-    let words = lines.filter_map(|line| cell.lines().nth(line.checked_sub(1)?)).find_map(decimal_comma)?;
-    Some(Hint { words, first: matches!(error.code(), None | Some("E0061" | "E0308")) })
+    if let Some(words) = lines.filter_map(|line| cell.lines().nth(line.checked_sub(1)?)).find_map(decimal_comma) {
+        return Some(Hint { words, first: matches!(error.code(), None | Some("E0061" | "E0308")) });
+    }
+    let words = match error.code()? {
+        "E0308" => error.spanned_messages().iter().find_map(|part| {
+            let span = part.span.as_ref()?;
+            let to = (span.start_line == span.end_line).then_some(span.end_column);
+            mismatch::advice(&part.label, piece(cell, span.start_line, span.start_column, to))
+        }),
+        "E0277" => mismatch::sum(&message),
+        _ => None,
+    };
+    words.map(|words| Hint { words, first: true })
+}
+
+/// The code from one column of a line to another, or to the line's end; lines and columns count from 1.
+fn piece(cell: &str, line: usize, from: usize, to: Option<usize>) -> &str {
+    let text = cell.lines().nth(line.saturating_sub(1)).unwrap_or_default();
+    let byte = |column: usize| text.char_indices().nth(column.saturating_sub(1)).map_or(text.len(), |(at, _)| at);
+    let start = byte(from);
+    text.get(start..to.map_or(text.len(), byte).max(start)).unwrap_or_default()
 }
 
 /// Words of ours about an error.
@@ -94,6 +114,15 @@ mod tests {
         {
             assert_eq!(decimal_comma(line), None, "{line}");
         }
+    }
+
+    #[test]
+    fn a_piece_of_a_cell_counts_characters() {
+        let cell = "let σ = 1;\nlet p: Pressure = 41.0;";
+        assert_eq!(piece(cell, 1, 5, Some(6)), "σ");
+        assert_eq!(piece(cell, 2, 19, Some(23)), "41.0");
+        assert_eq!(piece(cell, 2, 19, None), "41.0;");
+        assert_eq!([piece(cell, 2, 99, Some(100)), piece(cell, 9, 1, Some(2)), piece(cell, 2, 9, Some(3))], [""; 3]);
     }
 
     #[test]

@@ -34,6 +34,7 @@ mod hook;
 mod interrupt;
 mod jupyter;
 mod ledger;
+mod mismatch;
 mod notebook;
 mod outcome;
 mod packed;

@@ -59,6 +59,9 @@ pub(crate) fn failed(
         evcxr::Error::Message(words) if says_full(words) => {
             plain("DiskFull", "the disk is full, so the cell could not be compiled; free some space and run it again")
         }
+        evcxr::Error::Message(words) if not_persisted(words).is_some() => {
+            unstorable(&not_persisted(words).into_iter().collect::<Vec<_>>())
+        }
         evcxr::Error::Message(words) => {
             // What Cargo said when it did not come to compiling.
             let said = words.split_once("STDERR:\n").map_or(words.as_str(), |(_, rest)| rest);
@@ -199,14 +202,36 @@ pub(crate) fn asks_for_input() -> CellError {
     CellError { name: "NoInput".to_owned(), sentence: sentence.to_owned(), detail: sentence.to_owned(), line: None }
 }
 
+/// The variable that the engine says it cannot keep, with its type.
+fn not_persisted(words: &str) -> Option<(String, String)> {
+    let parts: Vec<&str> = words.lines().next()?.split('`').collect();
+    match parts.as_slice() {
+        ["The variable ", name, " is a closure, which cannot be persisted."] => {
+            Some(((*name).to_owned(), "closure".to_owned()))
+        }
+        ["The variable ", name, " has type ", kind, " which cannot be persisted."] => {
+            Some(((*name).to_owned(), (*kind).to_owned()))
+        }
+        _ => None,
+    }
+}
+
 /// Variables whose types cannot be kept between cells.
 pub(crate) fn unstorable(variables: &[(String, String)]) -> CellError {
     let names: Vec<String> = variables.iter().map(|(name, _)| format!("`{name}`")).collect();
-    let sentence = format!(
-        "{} cannot be kept for the next cell: {} a closure, an iterator or a borrow. Keep an owned value instead (.collect::<Vec<_>>(), .clone(), .to_vec()), use a fn for a closure, or put the code in braces",
-        names.join(", "),
-        if names.len() == 1 { "it is" } else { "they are" }
-    );
+    let (names, one) = (names.join(", "), variables.len() == 1);
+    let sentence = if variables.iter().all(|(_, kind)| kind.contains("closure")) {
+        format!(
+            "{names} cannot be kept for the next cell: {}. Write a `fn` instead, `fn name(x: f64) -> f64 {{ … }}`, that takes \
+             as arguments what the closure took from around it, or put the code in braces",
+            if one { "it is a closure" } else { "they are closures" }
+        )
+    } else {
+        format!(
+            "{names} cannot be kept for the next cell: {} a closure, an iterator or a borrow. Keep an owned value instead (.collect::<Vec<_>>(), .clone(), .to_vec()), use a fn for a closure, or put the code in braces",
+            if one { "it is" } else { "they are" }
+        )
+    };
     let types: Vec<String> = variables.iter().map(|(name, kind)| format!("  {name}: {kind}")).collect();
     CellError {
         name: "CompileError".to_owned(),
@@ -247,6 +272,22 @@ mod tests {
         let overflow = error("Subprocess terminated with status: signal: 11 (SIGSEGV) (core dumped)");
         assert!(overflow.sentence.contains("stack"), "{}", overflow.sentence);
         assert!(overflow.detail.ends_with(". All is lost."));
+    }
+
+    #[test]
+    fn what_cannot_be_kept_is_told_what_to_be_instead() {
+        let said = |words: &str| not_persisted(words).map(|variable| unstorable(&[variable]).sentence);
+        let closure = "The variable `double` is a closure, which cannot be persisted.\nYou can however persist closures if you box them. e.g.:";
+        let closure = said(closure).unwrap_or_default();
+        assert!(
+            closure.starts_with("`double` cannot be kept") && closure.contains("Write a `fn` instead"),
+            "{closure}"
+        );
+        assert!(!closure.contains("Box"), "{closure}");
+        let borrow =
+            "The variable `parts` has type `std::slice::Iter<'_, i32>` which cannot be persisted.\nYou might be able";
+        assert!(said(borrow).is_some_and(|said| said.contains("a closure, an iterator or a borrow")));
+        assert_eq!(said("Couldn't automatically determine type of variable `a`."), None);
     }
 
     #[test]

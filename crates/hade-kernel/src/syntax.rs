@@ -68,6 +68,39 @@ pub(crate) fn outline(code: &str) -> Outline {
     outline
 }
 
+/// The cell with the variables that its last value lists, `(here, there)`, only looked at: what is no copy would
+/// be given away, and gone. `None` where nothing is to be changed.
+pub(crate) fn listed_by_reference(code: &str, is_variable: impl Fn(&str) -> bool) -> Option<String> {
+    let rust = without_commands(code);
+    let parsed = SourceFile::parse(&format!("{BEFORE}{rust}\n}}"), Edition::Edition2024);
+    let function = parsed.syntax_node().children().find_map(ast::Fn::cast)?;
+    let is_named = |part: &ast::Expr| {
+        matches!(part, ast::Expr::PathExpr(_)) && is_variable(part.syntax().text().to_string().as_str())
+    };
+    let last = function.body()?.stmt_list()?.tail_expr()?;
+    // What another part may change must not be looked at meanwhile.
+    let text = last.syntax().text().to_string();
+    if text.contains("&mut") || text.contains('{') {
+        return None;
+    }
+    let named: Vec<ast::Expr> = match last {
+        ast::Expr::TupleExpr(tuple) => tuple.fields().filter(|part| is_named(part)).collect(),
+        // The entries of a list are of one type, so all or none of them.
+        ast::Expr::ArrayExpr(list) if list.semicolon_token().is_none() && list.exprs().all(|part| is_named(&part)) => {
+            list.exprs().collect()
+        }
+        _ => Vec::new(),
+    };
+    let mut places: Vec<usize> =
+        named.iter().map(|part| usize::from(part.syntax().text_range().start()).saturating_sub(BEFORE.len())).collect();
+    places.sort_unstable_by(|a, b| b.cmp(a));
+    let mut rewritten = code.to_owned();
+    for place in &places {
+        rewritten.insert(*place, '&');
+    }
+    (!places.is_empty()).then_some(rewritten)
+}
+
 /// Whether a cell could be run as it stands.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
 pub(crate) enum Wholeness {
@@ -257,6 +290,25 @@ mod tests {
         assert!(names[2].2.ends_with("let c = 2;"));
         assert!(outline.ends_in_expression);
         assert_eq!(outline.problem, None);
+    }
+
+    #[test]
+    fn variables_in_a_list_at_the_end_are_only_looked_at() {
+        let shown = |code: &str| listed_by_reference(code, |name| ["a", "b"].contains(&name));
+        for (code, wanted) in [
+            (":dep x\nlet σ = 1;\n(a, b)", ":dep x\nlet σ = 1;\n(&a, &b)"),
+            ("(a, f(b), 2.0, c,\n b)", "(&a, f(b), 2.0, c,\n &b)"),
+            ("[a, b]", "[&a, &b]"),
+        ] {
+            assert_eq!(shown(code).as_deref(), Some(wanted));
+        }
+        for code in
+            ["(a, b);", "a", "(a)", "[a, f(b)]", "[a; 2]", "(c, d)", "f(a, b)", "let t = (a, b);", "(&a, &b)", "", "()"]
+                .into_iter()
+                .chain(["(a, { a += 1; a })", "(a, f(&mut a))"])
+        {
+            assert_eq!(shown(code), None, "{code}");
+        }
     }
 
     #[test]

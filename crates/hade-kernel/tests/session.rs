@@ -38,6 +38,8 @@ const TESTS: &[(&str, Test)] = &[
     ("a_compile_error_is_plain", a_compile_error_is_plain),
     ("unfinished_code_is_named", unfinished_code_is_named),
     ("a_closure_cannot_stay", a_closure_cannot_stay),
+    ("variables_listed_at_the_end_stay", variables_listed_at_the_end_stay),
+    ("a_number_without_a_unit_is_told_so", a_number_without_a_unit_is_told_so),
     ("text_without_a_line_end_is_kept", text_without_a_line_end_is_kept),
     ("an_exit_is_explained", an_exit_is_explained),
     ("a_stack_overflow_is_explained", a_stack_overflow_is_explained),
@@ -224,9 +226,26 @@ fn unfinished_code_is_named(bench: &mut Bench) {
 
 fn a_closure_cannot_stay(bench: &mut Bench) {
     let error = bench.failure("let double = |x: f64| 2.0 * x;");
-    assert!(error.detail.contains("double"), "{}", error.detail);
+    assert!(error.detail.contains("double") && error.sentence.contains("Write a `fn`"), "{}", error.detail);
     let error = bench.failure("let data = vec![1, 2];\nlet parts = data.chunks_exact(2);");
     assert!(error.sentence.contains("parts"), "{}", error.sentence);
+}
+
+fn variables_listed_at_the_end_stay(bench: &mut Bench) {
+    let outcome = bench.run("let one = vec![1.0];\nlet two = vec![2.0, 3.0];\n(one, two)");
+    assert_eq!(outcome.error, None);
+    assert_eq!(bench.value("one.len() + two.len()"), "3");
+    assert_eq!(bench.run("[one, two]").error, None);
+    assert_eq!(bench.value("one.len() + two.len()"), "3");
+}
+
+fn a_number_without_a_unit_is_told_so(bench: &mut Bench) {
+    let error = bench.failure("let p: Pressure = 41.0;");
+    assert!(error.sentence.contains("`41.0.mpa()`"), "{}", error.sentence);
+    let error = bench.failure("let hole = Attitude { inclination: 42.deg(), azimuth: 120.deg() };");
+    assert!(error.sentence.contains("`Azimuth::from_true_north(120.deg())`"), "{}", error.sentence);
+    let error = bench.failure("let p = 3.mpa() + 41.0;\nlet q = 41.0 + p;");
+    assert!(error.sentence.contains("`41.0.mpa()`"), "{}", error.sentence);
 }
 
 fn text_without_a_line_end_is_kept(bench: &mut Bench) {

@@ -53,7 +53,7 @@ pub(crate) fn list(
     if recorded.iter().zip(lineage).any(|((_, written), traced)| *written != traced.as_slice()) {
         list.push("The origins of inputs that the record states are not those that were traced again.".to_owned());
     }
-    list.extend(record.conflicts.iter().map(|conflict| format!("{conflict}.")));
+    list.extend(record.conflicts.iter().chain(&record.no_numbers).map(|said| format!("{said}.")));
     for given in record.givens.iter().filter(|g| g.source.grade == Grade::Unsourced) {
         list.push(format!("Given {} ({}) has no source.", given.item.symbol, given.item.name));
     }

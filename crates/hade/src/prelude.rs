@@ -26,7 +26,7 @@ pub use crate::stress::{
 pub use crate::units::{Angle, Density, Expansion, FluxDensity, Gradient, Length, Pressure, Uncertain, Units, Warming};
 pub use crate::well::{
     Alternative, Breakout, CrackArc, CrackPlace, DeepestFailure, DirectionMap, FailingArcs, FailureDepth, FieldStress,
-    Limit, Limits, MapInputs, MudColumn, MudHeld, MudPlan, MudPressure, PlaneTrace, Position, RadialProfile,
-    RangeChoices, RangesBeside, RecommendedRange, Sensitivity, Station, Survey, TensileCracks, Thermal, Vary, Wall,
-    WallAround, WallImage, WallInputs, WallStress, WeakPlane,
+    Governs, Limit, LimitKind, Limits, MapInputs, MudColumn, MudHeld, MudPlan, MudPressure, MudState, PlaneTrace,
+    Position, RadialProfile, RangeChoices, RangesBeside, RecommendedRange, Sensitivity, Station, Survey, TensileCracks,
+    Thermal, TieIn, Vary, Wall, WallAround, WallImage, WallInputs, WallStress, WeakPlane,
 };

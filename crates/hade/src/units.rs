@@ -23,6 +23,10 @@ pub const PCF: f64 = 0.453_592_37 / (FOOT * FOOT * FOOT);
 pub const SG: f64 = 1000.0;
 
 /// What every quantity can do: say its kind and unit, and give or take its SI number.
+#[diagnostic::on_unimplemented(
+    message = "`{Self}` is no quantity, so it cannot be given to a sheet",
+    label = "a sheet takes a quantity (`31.2.mpa()`), a plain number (`0.25`), an azimuth, a depth, a survey, planes or a pressure profile; give a strength or a rock by its numbers, one at a time"
+)]
 pub trait Quantity: Copy + PartialEq + std::fmt::Debug + 'static {
     /// The kind, as the record writes it ("pressure").
     const KIND: &'static str;

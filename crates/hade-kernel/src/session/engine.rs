@@ -149,7 +149,11 @@ impl Engine {
         if let Some((line, what)) = &outline.problem {
             return Ran::Refused(compile_error::unreadable(*line, what, cell));
         }
-        let mut code = cell.to_owned();
+        let known = self.variables();
+        let is_variable = |name: &str| {
+            known.iter().any(|(known, _)| known == name) || outline.bindings.iter().any(|bound| bound.name == name)
+        };
+        let mut code = syntax::listed_by_reference(cell, is_variable).unwrap_or_else(|| cell.to_owned());
         if cell.contains("print!(") && !outline.ends_in_expression {
             code.push_str(FLUSH);
         }

@@ -385,6 +385,7 @@ pub fn record(folder: &Path) -> Record {
             PROBE,
         ]),
         conflicts: Vec::new(),
+        no_numbers: Vec::new(),
     }
 }
 

@@ -116,6 +116,21 @@ pub struct Table {
     pub rows: Vec<Vec<String>>,
 }
 
+impl Table {
+    /// The first and the last of many rows, `most` of them at most, with a row of dots between.
+    pub(crate) fn ends(count: usize, most: usize, row: impl Fn(usize) -> Vec<String>) -> Vec<Vec<String>> {
+        if count <= most {
+            return (0..count).map(row).collect();
+        }
+        let (first, last) = (most.div_ceil(2), most / 2);
+        let mut rows: Vec<Vec<String>> = (0..first).map(&row).collect();
+        let columns = rows.first().map_or(0, Vec::len);
+        rows.push(vec!["…".to_owned(); columns]);
+        rows.extend((count - last..count).map(row));
+        rows
+    }
+}
+
 /// A column of a table.
 #[derive(Clone, Debug, PartialEq, Eq, Serialize, Deserialize)]
 pub struct Column {

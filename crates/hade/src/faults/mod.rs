@@ -12,6 +12,8 @@ mod critical;
 mod critical_card;
 mod figure;
 mod friction;
+mod names;
+mod overview;
 mod ranked;
 mod ranked_card;
 mod read;

@@ -2,6 +2,7 @@
 
 use serde::{Deserialize, Serialize};
 
+use super::names::no_such;
 use super::set::{Fault, FaultSet, FaultSource, corrected_at, require};
 use super::slip::{Extremes, FaultSlip, FaultSlipInputs, FaultState, SlipOutcome, slip_of};
 use super::slip_check::slip_checks;
@@ -166,11 +167,10 @@ impl RankedFaults {
     /// # Errors
     /// When no plane of the ranking has the name.
     pub fn fault(&self, name: &str) -> Result<RankedFault> {
-        let place = self.inputs.faults.iter().position(|f| f.name.text() == name);
-        place.and_then(|i| self.row(i)).ok_or_else(|| Error::NoSolution {
-            what: format!("plane named \"{}\"", crate::lines::shown(name)),
-            tried: format!("among the {} of the ranking", self.order.len()),
-        })
+        let faults = &self.inputs.faults;
+        let place = faults.iter().position(|f| f.name.text() == name);
+        let found = place.and_then(|i| self.row(i));
+        found.ok_or_else(|| no_such(name, faults.iter().map(|f| f.name.text()), "of the ranking"))
     }
 
     /// How many planes the set has.

@@ -6,6 +6,7 @@ use std::sync::Arc;
 
 use serde::{Deserialize, Serialize};
 
+use super::names::no_such;
 use super::strength::{FaultStrength, require_friction};
 use crate::card::Item;
 use crate::error::{Error, Result};
@@ -145,10 +146,9 @@ impl FaultSet {
     /// # Errors
     /// When no plane of the set has the name.
     pub fn fault(&self, name: &str) -> Result<Fault> {
-        self.data.faults.iter().find(|f| f.name.text() == name).copied().ok_or_else(|| Error::NoSolution {
-            what: format!("plane named \"{}\"", crate::lines::shown(name)),
-            tried: format!("among the {} of the set", self.len()),
-        })
+        let faults = &self.data.faults;
+        let found = faults.iter().find(|f| f.name.text() == name).copied();
+        found.ok_or_else(|| no_such(name, faults.iter().map(|f| f.name.text()), "of the set"))
     }
 
     pub(super) fn data(&self) -> &SetData {
@@ -264,7 +264,10 @@ mod tests {
     fn a_plane_is_found_by_its_name() {
         let set = FaultSet::from_planes(&[("A", plane(1.0, 2.0)), ("B", plane(3.0, 4.0))]).unwrap();
         assert_eq!(set.fault("B").unwrap().plane, plane(3.0, 4.0));
-        assert_eq!(set.fault("C").unwrap_err().to_string(), "No plane named \"C\" was found among the 2 of the set.");
+        assert_eq!(
+            set.fault("C").unwrap_err().to_string(),
+            "No plane named \"C\" was found among the 2 of the set; their names are \"A\", \"B\", so ask for one of these."
+        );
         assert_eq!((set.len(), set.is_empty()), (2, false));
     }
 }

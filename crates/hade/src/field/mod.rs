@@ -11,6 +11,7 @@ mod las;
 mod las_header;
 mod overburden;
 mod overburden_card;
+mod overview;
 mod profile;
 #[cfg(test)]
 mod readers_alike;

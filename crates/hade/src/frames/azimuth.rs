@@ -188,6 +188,11 @@ impl Azimuth {
         Ok(Angle::from_si(within_a_circle(whole)))
     }
 
+    /// "035.0° from true north" when that is known, otherwise what was measured: "127° from magnetic north".
+    pub fn words(self) -> String {
+        self.item("", "").shown
+    }
+
     /// The azimuth as an input or a result, by its true bearing when that is known.
     pub(crate) fn item(self, symbol: &str, name: &str) -> Item {
         match self.true_north() {

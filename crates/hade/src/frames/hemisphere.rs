@@ -79,10 +79,8 @@ impl Drawn {
                 line.trend.item(&format!("T_{n}"), &format!("trend of {name}")),
                 Item::typed(&format!("P_{n}"), format!("plunge of {name}"), line.plunge),
             ],
-            Drawn::Plane { plane, .. } | Drawn::Pole { plane, .. } => [
-                plane.strike.item(&format!("s_{n}"), &format!("strike of {name}")),
-                Item::typed(&format!("d_{n}"), format!("dip of {name}"), plane.dip),
-            ],
+            Drawn::Plane { plane, .. } => plane_items(plane, n, name.text()),
+            Drawn::Pole { plane, .. } => plane_items(plane, n, &format!("the plane whose pole is \"{name}\"")),
         }
     }
 
@@ -93,6 +91,28 @@ impl Drawn {
             Drawn::Pole { plane, .. } => format!("pole of the plane {}", plane.words()),
         }
     }
+}
+
+fn plane_items(plane: Plane, n: usize, of: &str) -> [Item; 2] {
+    [
+        plane.strike.item(&format!("s_{n}"), &format!("strike of {of}")),
+        Item::typed(&format!("d_{n}"), format!("dip of {of}"), plane.dip),
+    ]
+}
+
+/// "1 line, 2 planes, 1 pole".
+fn counted(drawn: &[Drawn]) -> String {
+    let count = |is: fn(&Drawn) -> bool| drawn.iter().filter(|thing| is(thing)).count();
+    let counts = [
+        (count(|d| matches!(d, Drawn::Line { .. })), "line"),
+        (count(|d| matches!(d, Drawn::Plane { .. })), "plane"),
+        (count(|d| matches!(d, Drawn::Pole { .. })), "pole"),
+    ];
+    let some = counts.iter().filter(|(n, _)| *n > 0).map(|(n, one)| match n {
+        1 => format!("1 {one}"),
+        n => format!("{n} {one}s"),
+    });
+    some.reduce(|a, b| format!("{a}, {b}")).unwrap_or_else(|| "nothing".to_owned())
 }
 
 impl LowerHemisphere {
@@ -238,19 +258,9 @@ impl Explain for LowerHemisphere {
             Projection::EqualArea => ("r = sqrt(2) sin((90 degree - P) / 2)", "r = √2 sin((90° − P)/2)"),
             _ => ("r = tan((90 degree - P) / 2)", "r = tan((90° − P)/2)"),
         };
-        let lines = drawn.iter().filter(|d| matches!(d, Drawn::Line { .. })).count();
-        let some = |count: usize, one: &str| match count {
-            1 => format!("1 {one}"),
-            n => format!("{n} {one}s"),
-        };
-        let what = match (lines, drawn.len() - lines) {
-            (n, 0) => some(n, "line"),
-            (0, n) => some(n, "plane"),
-            (n, m) => format!("{}, {}", some(n, "line"), some(m, "plane")),
-        };
         Explanation {
             title: title.clone(),
-            headline: format!("{what}; {} projection", projection.words()),
+            headline: format!("{}; {} projection", counted(drawn), projection.words()),
             inputs: drawn.iter().zip(1..).flat_map(|(thing, n)| thing.items(n)).collect(),
             method: Method {
                 words: "Each line is drawn where its lower end lies, a plane as the circle of its lines; r counts from the centre in radii of the circle, towards the trend.".to_owned(),
@@ -320,7 +330,11 @@ mod tests {
             assert!(net.places()[1][0] < -0.5);
             // The upper end of a line is turned to its lower one.
             assert!(net.places()[2][1] > 0.5);
-            assert!(net.card().passed());
+            let card = net.card();
+            assert!(card.passed());
+            let begins = card.explanation.headline.split(';').next();
+            assert_eq!(begins, Some("1 line, 1 plane, 1 pole"));
+            assert_eq!(card.explanation.inputs[2].name, "strike of the plane whose pole is \"F\"");
         }
         let bad = Plane { dip: 120.deg(), ..plane };
         assert!(LowerHemisphere::new("t", Projection::EqualArea).plane("F", bad).unwrap_err().is_range());

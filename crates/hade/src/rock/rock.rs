@@ -5,7 +5,7 @@ use serde::{Deserialize, Serialize};
 use super::Strength;
 use crate::card::Item;
 use crate::error::Result;
-use crate::units::{Pressure, require_between, require_not_negative};
+use crate::units::{Pressure, as_typed, require_between, require_not_negative, with_typed_unit};
 
 /// The rock of a wall: isotropic, linear elastic up to its strength. Nothing of it is defaulted.
 #[derive(Clone, Copy, Debug, PartialEq, Serialize, Deserialize)]
@@ -26,6 +26,12 @@ impl Rock {
         require_not_negative("tensile strength T₀", self.tensile_strength)?;
         self.strength.checked()?;
         Ok(self)
+    }
+
+    /// "Mohr–Coulomb, c 10 MPa, φ 30°; ν 0.25, T_0 2 MPa".
+    pub(crate) fn words(self) -> String {
+        let tensile = with_typed_unit(self.tensile_strength);
+        format!("{}; ν {}, T_0 {tensile}", self.strength.words(), as_typed(self.poisson))
     }
 
     /// Its numbers as inputs of a card, as they were typed.

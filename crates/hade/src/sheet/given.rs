@@ -138,7 +138,8 @@ pub struct DataFile {
     pub bytes: u64,
 }
 
-/// What can be a given: a quantity, a plain number, an azimuth, each with or without uncertainty.
+/// What can be a given: a quantity, a plain number, an azimuth, each with or without uncertainty; a depth, a survey,
+/// planes, a pressure profile. What it is not is said where it is no [`Quantity`].
 pub trait IntoGiven {
     /// What `Sheet::given` hands back for the computation.
     type Value;

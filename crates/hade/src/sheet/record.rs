@@ -89,6 +89,9 @@ pub struct Record {
     /// Symbols that were given two meanings, each in a sentence.
     #[serde(default, skip_serializing_if = "Vec::is_empty")]
     pub conflicts: Vec<String>,
+    /// Givens and results that were left out because they are no numbers, each in a sentence.
+    #[serde(default, skip_serializing_if = "Vec::is_empty")]
+    pub no_numbers: Vec<String>,
 }
 
 impl Record {

@@ -22,6 +22,8 @@ pub struct Sheet {
     entries: Vec<Written>,
     conclusions: Vec<String>,
     conflicts: Vec<String>,
+    /// What was left out because it is no number: its symbol or title, and the sentence that says so.
+    no_numbers: Vec<(String, String)>,
 }
 
 #[derive(Clone, Debug)]
@@ -42,11 +44,14 @@ impl Sheet {
             entries: Vec::new(),
             conclusions: Vec::new(),
             conflicts: Vec::new(),
+            no_numbers: Vec::new(),
         }
     }
 
     /// States a value with its source, and hands it back for the computation. A symbol that is
-    /// given again with another meaning replaces the first, and the sheet says so.
+    /// given again with another meaning replaces the first, and the sheet says so. What is no number is
+    /// handed back too, for the first operation that can refuse it; the sheet says that it left it out, and
+    /// makes no memo until it is given anew.
     pub fn given<G: IntoGiven>(&mut self, symbol: &str, meaning: &str, value: G, source: Source) -> G::Value {
         let (value, item, sd) = value.into_given(symbol, meaning);
         let given = Given {
@@ -55,12 +60,13 @@ impl Sheet {
             sd: sd.map(|(si, _)| si),
             source,
         };
+        self.no_numbers.retain(|(of, _)| of != symbol);
         if given.item.si.iter().any(|v| !v.is_finite()) {
-            let conflict = format!(
+            let said = format!(
                 "{symbol}, \"{meaning}\", is given as {}, which is no number, and is left out",
                 given.item.shown
             );
-            replace_or_push(&mut self.conflicts, conflict.clone(), |c| *c == conflict);
+            self.no_numbers.push((symbol.to_owned(), said));
             return value;
         }
         let twice = |old: &&Given| {
@@ -97,14 +103,15 @@ impl Sheet {
     pub fn add<E: Explain>(&mut self, result: &E) {
         let card = result.card();
         let numbers = card.explanation.inputs.iter().chain(&card.explanation.results);
+        self.no_numbers.retain(|(of, _)| of != card.title());
         if let Some(item) = numbers.clone().find(|item| item.si.iter().any(|v| !v.is_finite())) {
-            let conflict = format!(
+            let said = format!(
                 "the result \"{}\" is left out, because its {} ({}) is no number",
                 card.title(),
                 item.name,
                 item.shown
             );
-            replace_or_push(&mut self.conflicts, conflict.clone(), |c| *c == conflict);
+            self.no_numbers.push((card.title().to_owned(), said));
             return;
         }
         let mut place = self.place_of(&card).unwrap_or(self.entries.len());
@@ -245,6 +252,7 @@ impl Sheet {
             entries,
             conclusions: self.conclusions.clone(),
             conflicts: self.conflicts.clone(),
+            no_numbers: self.no_numbers.iter().map(|(_, said)| said.clone()).collect(),
         }
     }
 }
@@ -360,11 +368,23 @@ mod tests {
         }
         assert!(sheet.record().conflicts.is_empty());
         sheet.given("P_p", "cohesion", 6.mpa(), Source::measured("a core"));
-        sheet.given("q", "nothing", f64::NAN.mpa(), Source::measured("a core"));
-        assert!(sheet.record().conflicts.pop().is_some_and(|c| c.contains("no number")));
-        let said = &sheet.record().conflicts[..1];
+        let said = sheet.record().conflicts;
         assert_eq!(said.len(), 1);
         assert!(said[0].contains("\"pore pressure\" (31 MPa) and as \"cohesion\" (6 MPa)"), "{said:?}");
+    }
+
+    #[test]
+    fn what_is_no_number_is_left_out_and_said_until_it_is_one() {
+        let mut sheet = Sheet::new("test");
+        assert!(sheet.given("q", "cohesion", f64::NAN.mpa(), Source::measured("a core")).in_mpa().is_nan());
+        let said = "q, \"cohesion\", is given as NaN MPa, which is no number, and is left out";
+        assert_eq!(sheet.record().no_numbers, [said]);
+        assert_eq!((sheet.record().givens.len(), sheet.record().conflicts.len()), (0, 0));
+        assert!(sheet.text().contains(said) && sheet.html().contains("is no number, and is left out"));
+        let read = Record::from_json(&sheet.record().to_json().unwrap()).unwrap();
+        assert_eq!(read, sheet.record());
+        sheet.given("q", "cohesion", 6.mpa(), Source::measured("a core"));
+        assert_eq!((sheet.record().no_numbers.len(), sheet.record().givens.len()), (0, 1));
     }
 
     #[test]

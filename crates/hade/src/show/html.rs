@@ -18,11 +18,12 @@ use crate::card::{Card, Column, Figure, Item, Method, Step, Table};
 use crate::sheet::{Basis, Entry, Record};
 use crate::units::fixed;
 
-const TEMPLATES: [(&str, &str); 4] = [
+const TEMPLATES: [(&str, &str); 5] = [
     ("parts.html", include_str!("templates/parts.html")),
     ("card.html", include_str!("templates/card.html")),
     ("sheet.html", include_str!("templates/sheet.html")),
     ("figure.html", include_str!("templates/figure.html")),
+    ("table.html", include_str!("templates/table.html")),
 ];
 
 /// A card as HTML: the answer first and large, then results and figures; inputs, method, steps and
@@ -39,6 +40,17 @@ pub fn sheet_html(record: &Record) -> String {
 /// A figure as HTML, with its caption and text alternative.
 pub fn figure_html(figure: &Figure) -> String {
     render("figure.html", &FigureView { figure: Picture::of(figure) }).unwrap_or_else(|_| preformatted(&figure.alt))
+}
+
+/// A table as HTML.
+pub(super) fn table_html(table: &Table) -> String {
+    render("table.html", &TableView { table: Grid::of(table) })
+        .unwrap_or_else(|_| preformatted(&text::table_text(table)))
+}
+
+/// Lines of text as HTML.
+pub(super) fn lines_html(lines: &str) -> String {
+    lines.lines().map(line_html).collect()
 }
 
 /// A line of text as HTML.
@@ -176,6 +188,11 @@ fn in_line(cell: &str, most: usize) -> String {
 }
 
 #[derive(Serialize)]
+struct TableView {
+    table: Grid,
+}
+
+#[derive(Serialize)]
 struct MatrixView {
     name: String,
     rows: Vec<Vec<String>>,
@@ -286,6 +303,7 @@ struct SheetView {
     title: String,
     counts: String,
     failed: Vec<String>,
+    no_numbers: Vec<String>,
     unmatched: Vec<String>,
     conclusions: Vec<String>,
     givens: Option<Grid>,
@@ -323,6 +341,7 @@ impl SheetView {
             title: record.title.clone(),
             counts: text::counts(record),
             failed: text::failed(record),
+            no_numbers: record.no_numbers.iter().map(|said| format!("{said}.")).collect(),
             unmatched: text::unmatched(record),
             conclusions: record.conclusions.clone(),
             givens: (!record.givens.is_empty()).then(|| givens(record)),
@@ -386,6 +405,7 @@ mod tests {
         render("card.html", &CardView::of(&sample::card())).unwrap();
         render("sheet.html", &SheetView::of(&sample::sheet().record())).unwrap();
         render("figure.html", &FigureView { figure: Picture::of(&sample::figure()) }).unwrap();
+        render("table.html", &TableView { table: Grid::of(&sample::table()) }).unwrap();
     }
 
     #[test]

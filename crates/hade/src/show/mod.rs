@@ -12,14 +12,17 @@
 mod base64;
 mod cividis;
 mod html;
+mod lists;
 mod notebook;
 mod quantities;
+mod results;
 #[cfg(test)]
 mod sample;
 mod svg;
 mod text;
 mod theme;
 mod typeset;
+mod values;
 
 pub use html::{card_html, figure_html, sheet_html};
 pub use notebook::{NotebookDisplay, Show};

@@ -7,10 +7,10 @@ use super::html::{card_html, error_html, figure_html, line_html, sheet_html};
 use super::svg::svg;
 use super::text::{card_text, sheet_text};
 use super::theme::Theme;
-use crate::card::{Card, Explain, Figure};
+use crate::card::{Card, Figure};
 use crate::sheet::{RECORD_MIME, Record, Sheet};
 
-/// What shows itself: every result that [explains itself](Explain), by its card.
+/// What shows itself: a result by its card, a value in words with its unit, and lists of them.
 pub trait Show {
     /// As plain text.
     fn text(&self) -> String;
@@ -59,18 +59,6 @@ const MARK: &str = "EVCXR_";
 
 fn block(mime: &str, data: &str) -> String {
     format!("EVCXR_BEGIN_CONTENT {mime}\n{data}\nEVCXR_END_CONTENT\n")
-}
-
-impl<T: Explain> Show for T {
-    fn text(&self) -> String {
-        self.card().text()
-    }
-    fn html(&self) -> String {
-        self.card().html()
-    }
-    fn svg(&self) -> Option<String> {
-        self.card().svg()
-    }
 }
 
 impl Show for Card {
@@ -160,57 +148,6 @@ impl<T: Show> Show for Option<T> {
 /// How an absent value is shown.
 const NOTHING: &str = "none";
 
-impl<T: Show> Show for [T] {
-    fn text(&self) -> String {
-        if self.is_empty() {
-            return "empty list".to_owned();
-        }
-        self.iter().map(Show::text).collect::<Vec<_>>().join("\n")
-    }
-    fn html(&self) -> String {
-        if self.is_empty() {
-            return line_html("empty list");
-        }
-        self.iter().map(Show::html).collect()
-    }
-}
-
-impl<T: Show> Show for Vec<T> {
-    fn text(&self) -> String {
-        self.as_slice().text()
-    }
-    fn html(&self) -> String {
-        self.as_slice().html()
-    }
-}
-
-impl<T: Show, const N: usize> Show for [T; N] {
-    fn text(&self) -> String {
-        self.as_slice().text()
-    }
-    fn html(&self) -> String {
-        self.as_slice().html()
-    }
-}
-
-impl<A: Show, B: Show> Show for (A, B) {
-    fn text(&self) -> String {
-        format!("{}\n{}", self.0.text(), self.1.text())
-    }
-    fn html(&self) -> String {
-        format!("{}{}", self.0.html(), self.1.html())
-    }
-}
-
-impl<A: Show, B: Show, C: Show> Show for (A, B, C) {
-    fn text(&self) -> String {
-        format!("{}\n{}\n{}", self.0.text(), self.1.text(), self.2.text())
-    }
-    fn html(&self) -> String {
-        format!("{}{}{}", self.0.html(), self.1.html(), self.2.html())
-    }
-}
-
 #[cfg(test)]
 mod tests {
     use super::*;
@@ -248,14 +185,11 @@ mod tests {
     }
 
     #[test]
-    fn refusals_absence_and_lists_show_too() {
+    fn refusals_and_absence_show_too() {
         let refused: Result<Pressure, Error> = Err(Error::out_of_range("dip", "95°", "between 0° and 90°"));
         assert_eq!(refused.text(), "Error: dip is 95°, but it must be between 0° and 90°.");
         assert!(refused.html().contains("<strong>Error:</strong> dip is 95°"));
         assert_eq!(None::<Pressure>.text(), "none");
-        assert_eq!(vec![1.mpa(), 2.mpa()].text().lines().count(), 2);
-        assert_eq!([Some(1.mpa()), None].text().lines().count(), 2);
-        assert_eq!((1.deg(), 2.m()).text(), "1°\n2 m (6.56168 ft)");
     }
 
     #[test]

@@ -3,7 +3,7 @@
 
 use super::html::line_html;
 use super::notebook::Show;
-use crate::frames::{Attitude, Depth, Line, Plane, Site};
+use crate::frames::Azimuth;
 use crate::units::{
     Angle, Density, Expansion, FluxDensity, Gradient, Length, Pressure, Quantity, Uncertain, Warming, as_typed,
 };
@@ -50,20 +50,6 @@ shows! {
     FluxDensity: ;
 }
 
-macro_rules! shows_words {
-    ($($value:ident),*) => { $(
-        impl Show for $value {
-            fn text(&self) -> String {
-                self.words()
-            }
-            fn html(&self) -> String {
-                line_html(&self.text())
-            }
-        }
-    )* };
-}
-shows_words!(Attitude, Line, Plane, Site, Depth);
-
 impl Show for f64 {
     fn text(&self) -> String {
         as_typed(*self)
@@ -75,12 +61,24 @@ impl Show for f64 {
 
 impl<Q: Quantity, D: Quantity> Show for Uncertain<Q, D> {
     fn text(&self) -> String {
-        let sd = with(self.give_or_take.shown(), D::SHOWN_IN);
-        format!("{} ± {sd} (one standard deviation)", with(self.value.shown(), Q::SHOWN_IN))
+        format!("{} ± {}", with(self.value.shown(), Q::SHOWN_IN), one_sd(self.give_or_take))
     }
     fn html(&self) -> String {
         line_html(&self.text())
     }
+}
+
+impl<D: Quantity> Show for Uncertain<Azimuth, D> {
+    fn text(&self) -> String {
+        format!("{} ± {}", self.value.words(), one_sd(self.give_or_take))
+    }
+    fn html(&self) -> String {
+        line_html(&self.text())
+    }
+}
+
+fn one_sd<D: Quantity>(one_sd: D) -> String {
+    format!("{} (one standard deviation)", with(one_sd.shown(), D::SHOWN_IN))
 }
 
 #[cfg(test)]
@@ -94,6 +92,12 @@ mod tests {
         assert_eq!(35.deg().text(), "35°");
         assert_eq!(1.25.sg().text(), "1.25 sg (1250 kg/m³, 10.4318 ppg)");
         assert_eq!(66.9.mpa().give_or_take(1.3.mpa()).text(), "66.9 MPa ± 1.3 MPa (one standard deviation)");
+        let az = |azimuth: Azimuth| azimuth.give_or_take(5.deg()).text();
+        assert_eq!(az(Azimuth::from_true_north(35.deg())), "035.0° from true north ± 5° (one standard deviation)");
+        assert_eq!(
+            az(Azimuth::from_magnetic_north(127.deg())),
+            "127° from magnetic north ± 5° (one standard deviation)"
+        );
         assert!((-3).mpa().html().contains("−3 MPa"));
         assert_eq!(f64::NAN.mpa().text().matches("NaN").count(), 3);
     }

@@ -88,7 +88,7 @@ impl Explain for Limit {
     }
 }
 
-fn table() -> Table {
+pub fn table() -> Table {
     Table {
         caption: "Lower shear limit against allowed width".into(),
         columns: vec![

@@ -7,7 +7,7 @@ use crate::sheet::{Entry, Origin, Record};
 /// A card as plain text: the answer first, then results, inputs and checks in aligned columns.
 pub fn card_text(card: &Card) -> String {
     let e = &card.explanation;
-    let mut out = vec![e.title.clone()];
+    let mut out = vec![true_minus(&e.title)];
     if !e.headline.is_empty() {
         out.push(format!("  {}", true_minus(&e.headline)));
     }
@@ -52,8 +52,9 @@ pub fn sheet_text(record: &Record) -> String {
     }
     out.push("Results".to_owned());
     for (i, (card, _)) in record.cards().iter().enumerate() {
-        out.push(format!("  {}. {}: {}", i + 1, card.title(), true_minus(&card.explanation.headline)));
+        out.push(format!("  {}. {}", i + 1, true_minus(&format!("{}: {}", card.title(), card.explanation.headline))));
     }
+    out.extend(record.no_numbers.iter().map(|said| format!("Left out: {said}.")));
     out.extend(unmatched(record).into_iter().map(|line| format!("Unmatched input: {line}")));
     out.extend(failed(record).into_iter().map(|line| format!("FAILED check: {line}")));
     out.join("\n")
@@ -190,6 +191,13 @@ fn table(out: &mut Vec<String>, table: &Table) {
     rows.extend(table.rows.iter().map(|r| r.iter().map(|c| true_minus(c)).collect()));
     let numeric: Vec<bool> = table.columns.iter().map(|c| c.numeric).collect();
     aligned(out, rows, &numeric);
+}
+
+/// A table as plain text, its caption first.
+pub(super) fn table_text(shown: &Table) -> String {
+    let mut out = Vec::new();
+    table(&mut out, shown);
+    out.join("\n")
 }
 
 /// Rows in aligned columns of words.

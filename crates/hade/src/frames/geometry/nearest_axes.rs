@@ -218,14 +218,16 @@ impl Explain for FittedAxes {
                 fixed(self.misfits[i].in_deg(), 2),
             ]);
         }
-        results.push(Item::computed("m", "largest angle from a measured line to its fitted axis", self.misfit()));
+        let misfit = format!("{}°", fixed(self.misfit().in_deg(), 2));
+        let name = "largest angle from a measured line to its fitted axis";
+        results.push(Item::new("m", name, Angle::KIND, vec![self.misfit().si()], misfit.clone()));
         let mut notes = Vec::new();
         if is_left_handed(&vectors) {
             notes.push("In the order given the lines make a left-handed set. Lines have no sign, so this says nothing about the measurement; the third was turned round.".to_owned());
         }
         Explanation {
             title: format!("Nearest axes at right angles to {}", measured.map(short).join(", ")),
-            headline: format!("fitted within {}° of the measured lines", fixed(self.misfit().in_deg(), 2)),
+            headline: format!("fitted within {misfit} of the measured lines"),
             inputs,
             results,
             method: Method {
@@ -298,6 +300,7 @@ mod tests {
         let card = fitted.card();
         assert!(card.passed(), "{:#?}", card.checks);
         assert_eq!(card.explanation.headline, "fitted within 2.00° of the measured lines");
+        assert_eq!(card.explanation.results.last().map(|item| item.shown.as_str()), Some("2.00°"));
     }
 
     #[test]

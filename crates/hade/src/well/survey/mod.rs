@@ -9,6 +9,7 @@
 //! uncertainty of the tool.
 
 mod arc;
+mod overview;
 mod position;
 mod position_card;
 mod position_check;

@@ -280,12 +280,13 @@ fn find_tvd(survey: &Survey, tvd: Length) -> Result<(Leg, f64, Length)> {
         [] => {
             let depths = survey.data().places.iter().map(|p| p[2]);
             let (least, most) = depths.fold((f64::INFINITY, f64::NEG_INFINITY), |(l, m), d| (l.min(d), m.max(d)));
-            Err(Error::NoSolution {
-                what: format!("measured depth at TVD {}", with_typed_unit(tvd)),
-                tried: format!(
-                    "in the survey, whose stations reach from TVD {least:.1} m to {most:.1} m (nothing is extrapolated)"
+            Err(Error::out_of_range(
+                "true vertical depth",
+                with_typed_unit(tvd),
+                format!(
+                    "between {least:.1} m and {most:.1} m, where the stations lie (nothing is extrapolated): ask within them, or survey the hole further"
                 ),
-            })
+            ))
         }
         several => {
             let depths: Vec<String> = several.iter().take(4).map(|(_, _, md)| format!("{md:.1}")).collect();
@@ -458,9 +459,9 @@ mod tests {
         );
         assert!(survey.at((-1).m()).is_err());
         assert!(survey.at(f64::NAN.m()).is_err());
-        assert!(
-            survey.at_tvd(5000.m()).unwrap_err().to_string().starts_with("No measured depth at TVD 5000 m was found")
-        );
+        let said = survey.at_tvd(5000.m()).unwrap_err().to_string();
+        assert!(said.starts_with("true vertical depth is 5000 m, but it must be between 0.0 m and "), "{said}");
+        assert!(said.ends_with(": ask within them, or survey the hole further."), "{said}");
         assert!(survey.at_tvd(f64::NAN.m()).is_err());
     }
 

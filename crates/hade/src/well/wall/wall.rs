@@ -137,6 +137,18 @@ impl Wall {
         if self.setup == plain { place } else { format!("{place}, {}", self.setup.model_words()) }
     }
 
+    /// Where it is, which criterion and model it has, and everything it was made of, in two lines.
+    pub(crate) fn words(&self) -> String {
+        let place = self.setup.inputs.stress.name().map_or_else(|| self.attitude.words(), |name| name.to_string());
+        let made_of: Vec<String> = self.items().iter().map(|i| format!("{} {}", i.symbol, i.shown)).collect();
+        format!(
+            "Wall of {place}: {}, judged by {}\n{}",
+            self.setup.model_words(),
+            self.strength().name(),
+            made_of.join("; ")
+        )
+    }
+
     /// Everything it was made of as inputs of a card.
     pub(super) fn items(&self) -> Vec<Item> {
         self.setup.items()

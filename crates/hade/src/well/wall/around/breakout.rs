@@ -7,7 +7,7 @@ use crate::error::Result;
 use crate::units::{Angle, Pressure, Quantity, fixed, with_typed_unit};
 use crate::well::wall::round::on_circle;
 use crate::well::wall::second_route::{ByVectors, bearing_check, outside};
-use crate::well::wall::shear::{Arcs, MOST_ARCS, Mode, WallDirection, mode_of};
+use crate::well::wall::shear::{Arcs, MOST_ARCS, Mode, mode_of};
 use crate::well::wall::{AtPressure, Wall, direction, method, pressure_item};
 
 /// An arc of the wall that fails in shear. It stands for two: the same fails on the far side.
@@ -82,9 +82,7 @@ impl Breakout {
     /// "shear: σ'_1 hoop, σ'_2 axial, σ'_3 radial", or slip on the plane of weakness.
     pub fn words(&self) -> String {
         let how = if self.on_weak_plane { "slip on the plane of weakness" } else { "shear" };
-        let [a, b, c] = self.mode.directions.map(WallDirection::word);
-        let near = if self.mode.turned { "nearest " } else { "" };
-        format!("{how}: σ'_1 {near}{a}, σ'_2 {b}, σ'_3 {c}")
+        format!("{how}: {}", self.mode.words())
     }
 }
 

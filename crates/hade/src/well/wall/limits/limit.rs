@@ -3,7 +3,7 @@
 use serde::{Deserialize, Serialize};
 
 use crate::units::{Angle, Pressure, Quantity};
-use crate::well::wall::shear::{LeastBad, Mode, WallDirection, mode_of};
+use crate::well::wall::shear::{LeastBad, Mode, mode_of};
 use crate::well::wall::{Wall, direction};
 
 /// Which limit.
@@ -115,10 +115,8 @@ impl Limit {
     /// What happens at the limit, in words.
     pub fn words(&self) -> String {
         let directions = self.mode.map_or_else(String::new, |mode| {
-            let [a, b, c] = mode.directions.map(WallDirection::word);
-            let near = if mode.turned { "nearest " } else { "" };
             let at = if self.pressure.is_none() { "at the least bad, " } else { "" };
-            format!("; {at}σ'_1 {near}{a}, σ'_2 {b}, σ'_3 {c}")
+            format!("; {at}{}", mode.words())
         });
         let mark = if self.in_tension() { " (in tension)" } else { "" };
         let slip = matches!(self.kind, LimitKind::LowerShear | LimitKind::UpperShear) && self.slips;

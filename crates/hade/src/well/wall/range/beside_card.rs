@@ -1,14 +1,12 @@
 //! The card of ranges beside each other.
 
 use super::beside::{BesideInputs, BesideOutcome, RangeBeside, RangesBeside, check, words};
-use super::ends::{GovernedPressure, RangeEnd};
+use super::ends::{GovernedPressure, Governs, RangeEnd};
 use super::parts::{end_cells, end_item, pressure_columns, rule, signed};
 use super::recommended::RecommendedRange;
-use crate::card::{
-    Card, ChartRow, Check, Column, Explain, Explanation, Figure, Item, Method, Role, RowChart, Step, Table,
-};
+use crate::card::{Card, ChartRow, Check, Column, Explain, Explanation, Figure, Method, Role, RowChart, Step, Table};
 use crate::error::Result;
-use crate::units::{Pressure, fixed};
+use crate::units::Pressure;
 use crate::well::wall::{direction, method};
 
 impl Explain for RangesBeside {
@@ -49,11 +47,9 @@ impl Explain for RangesBeside {
                 }));
             }
         }
-        for (end, symbol, name) in [
-            (self.outcome.highest_bottom, "p_b*", "highest bottom of all"),
-            (self.outcome.lowest_top, "p_t*", "lowest top of all"),
-        ] {
-            results.extend(end.map(|p| Item::computed(symbol, name, p)));
+        let [highest, lowest] = self.innermost();
+        for (end, symbol, name) in [(highest, "p_b*", "highest bottom of all"), (lowest, "p_t*", "lowest top of all")] {
+            results.extend(end.map(|end| end_item(end, symbol, name.to_owned(), end.pressure, 2)));
         }
         Explanation {
             title: format!("Ranges by other criteria and walls beside that for {}", self.range.wall.place()),
@@ -80,6 +76,19 @@ impl RangesBeside {
         RangeEnd::new(end.pressure, end.governed_by, &self.range.choices)
     }
 
+    /// The highest bottom and the lowest top of all, as the ends of the ranges they are.
+    fn innermost(&self) -> [Option<RangeEnd>; 2] {
+        let of = |stated: Option<Pressure>, ends: Vec<Option<GovernedPressure>>| {
+            let found = ends.into_iter().flatten().find(|end| Some(end.pressure) == stated);
+            found.map(|end| self.end(end))
+        };
+        let rows = &self.outcome.rows;
+        [
+            of(self.outcome.highest_bottom, rows.iter().map(|row| row.bottom).collect()),
+            of(self.outcome.lowest_top, rows.iter().map(|row| row.top).collect()),
+        ]
+    }
+
     /// "40.18 to 48.00 MPa" or "no range".
     fn row_words(&self, row: &RangeBeside) -> String {
         match (row.bottom, row.top) {
@@ -98,9 +107,11 @@ impl RangesBeside {
         let (Some(row), Some(wall)) = (self.outcome.rows.get(tightest), self.walls.get(tightest)) else {
             return String::new();
         };
-        let shared = match self.shared() {
-            Some((bottom, top)) => format!("all share {bottom} to {top}"),
-            None => "they share no pressure".to_owned(),
+        let shared = match (self.shared(), self.innermost()) {
+            (Some(_), [Some(b), Some(t)]) => {
+                format!("all share {} to {}", b.inward(b.pressure, 2), t.inward(t.pressure, 2))
+            }
+            _ => "they share no pressure".to_owned(),
         };
         format!("tightest is {}: {}; {shared}", words(wall), self.row_words(row))
     }
@@ -197,10 +208,16 @@ impl RangesBeside {
     }
 
     fn limits_table(&self) -> Table {
-        let cell = |p: Option<Pressure>| p.map_or_else(|| "none".to_owned(), |p| fixed(p.in_mpa(), 2));
+        let cell = |p: Option<Pressure>, governed_by: Governs| match p {
+            Some(pressure) => {
+                let [cell, ..] = end_cells(self.end(GovernedPressure { pressure, governed_by }));
+                cell
+            }
+            None => "none".to_owned(),
+        };
         let s3 = self.range.limits.least_stress.pressure();
         Table {
-            caption: "What each range is made of: the lower shear limit at the allowed width, initiation and the upper shear limit; S_3 and the pore pressure are the same for all".to_owned(),
+            caption: "What each range is made of: the lower shear limit at the allowed width, initiation and the upper shear limit; S_3 and the pore pressure are the same for all; rounded to the safe side".to_owned(),
             columns: vec![
                 Column::text("range"),
                 Column::text("criterion, wall"),
@@ -216,10 +233,10 @@ impl RangesBeside {
                     vec![
                         format!("{n}"),
                         words(wall),
-                        if any { "any holds".to_owned() } else { cell(row.lower_shear) },
-                        cell(row.initiation),
-                        cell(row.upper_shear),
-                        cell(s3),
+                        if any { "any holds".to_owned() } else { cell(row.lower_shear, Governs::LowerShear) },
+                        cell(row.initiation, Governs::Initiation),
+                        cell(row.upper_shear, Governs::UpperShear),
+                        cell(s3, Governs::LeastStress),
                     ]
                 })
                 .collect(),

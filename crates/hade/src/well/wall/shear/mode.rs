@@ -37,6 +37,16 @@ pub struct Mode {
     pub turned: bool,
 }
 
+impl Mode {
+    /// "σ'_1 hoop, σ'_2 axial, σ'_3 radial"; with "nearest" before the first where a shear stress in the
+    /// wall turns them.
+    pub fn words(self) -> String {
+        let [a, b, c] = self.directions.map(WallDirection::word);
+        let near = if self.turned { "nearest " } else { "" };
+        format!("σ'_1 {near}{a}, σ'_2 {b}, σ'_3 {c}")
+    }
+}
+
 /// The directions of the principal stresses, largest first. Stresses closer than rounding keep the
 /// order hoop, axial, radial, so that the words do not turn on a last bit.
 pub(crate) fn mode_of(at: AtWall, scale: f64) -> Mode {

@@ -34,18 +34,20 @@ pub(crate) fn crack_method(wall: &Wall, words: &str) -> Method {
     method
 }
 
-/// "turned 12.3° clockwise from the hole's axis", "along the hole".
-pub(super) fn tilt_words(tilt: Option<Angle>) -> String {
-    let Some(tilt) = tilt else { return "in no preferred direction".to_owned() };
-    let degrees = tilt.in_deg();
-    if degrees.abs() < 0.05 {
-        return "along the hole".to_owned();
+impl CrackPlace {
+    /// "turned 12.3° clockwise from the hole's axis", "along the hole".
+    pub(crate) fn tilt_words(&self) -> String {
+        let Some(tilt) = self.tilt else { return "in no preferred direction".to_owned() };
+        let degrees = tilt.in_deg();
+        if degrees.abs() < 0.05 {
+            return "along the hole".to_owned();
+        }
+        if degrees.abs() > 89.95 {
+            return "across the hole".to_owned();
+        }
+        let sense = if degrees > 0.0 { "clockwise" } else { "anticlockwise" };
+        format!("turned {} {sense} from the hole's axis", tilt.abs())
     }
-    if degrees.abs() > 89.95 {
-        return "across the hole".to_owned();
-    }
-    let sense = if degrees > 0.0 { "clockwise" } else { "anticlockwise" };
-    format!("turned {} {sense} from the hole's axis", tilt.abs())
 }
 
 /// The tool face, bearing and tilt of a place as results.
@@ -97,7 +99,7 @@ impl TensileCracks {
                     Some(first) => format!(
                         "{extent}, first at tool face {}, the crack {} (the other way at +180°)",
                         direction::words(attitude, first.toolface),
-                        tilt_words(first.tilt)
+                        first.tilt_words()
                     ),
                 }
             }

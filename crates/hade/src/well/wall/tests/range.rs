@@ -247,6 +247,9 @@ fn trap_13_a_permeable_wall_stands_beside_the_impermeable_one_and_has_no_range()
     assert!(beside.shared().is_none());
     let card = passes(&beside);
     assert!(card.explanation.headline.starts_with("tightest is Mohr–Coulomb, permeable wall (α = 1): no range"));
+    // One top is rounded one way, wherever it stands.
+    let shown = |symbol: &str| card.explanation.results.iter().find(|i| i.symbol == symbol).map(|i| i.shown.as_str());
+    assert!(shown("p_t*").is_some() && shown("p_t*") == shown("p_t2"), "{:?}", shown("p_t*"));
     // And the other way round.
     let wet = b(0.0, 0.0).wall().permeable(1.0).unwrap().recommended(choices(0.0)).unwrap();
     let beside = wet.beside(&[Alternative::impermeable()]).unwrap();
