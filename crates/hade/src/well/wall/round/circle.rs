@@ -53,6 +53,15 @@ pub(crate) trait OnCircle {
     fn piece(&self, piece: usize, c: f64, s: f64) -> f64 {
         self.jet(piece, c, s).value
     }
+    /// Of how many functions without an edge it takes its values: its pieces, unless one of these is the smaller
+    /// of two.
+    fn parts(&self) -> usize {
+        self.pieces()
+    }
+    /// One of them.
+    fn part(&self, part: usize, c: f64, s: f64) -> Jet {
+        self.jet(part, c, s)
+    }
     /// The value at every sample, to a millionth of its size: enough to see where a climb may begin.
     #[inline(always)]
     fn scan(&self, circle: &Circle) -> [f64; SAMPLES] {
@@ -75,6 +84,12 @@ impl<F: OnCircle> OnCircle for Below<F> {
     #[inline(always)]
     fn jet(&self, piece: usize, c: f64, s: f64) -> Jet {
         -self.0.jet(piece, c, s)
+    }
+    fn parts(&self) -> usize {
+        self.0.parts()
+    }
+    fn part(&self, part: usize, c: f64, s: f64) -> Jet {
+        -self.0.part(part, c, s)
     }
 }
 

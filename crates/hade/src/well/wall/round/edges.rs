@@ -20,65 +20,67 @@ impl Edges {
     }
 }
 
-/// The zeros of every piece of a function; those of the function are among them. A hill or a hollow
-/// between samples of one sign is climbed, so that a narrow arc or gap is not missed.
+/// The zeros of every part of a function that has no edge; those of the function are among them, also where two of
+/// its edges lie between two samples. A hill or a hollow of a part between samples of one sign is climbed, so that a
+/// narrow arc or gap is not missed.
 pub(crate) fn edges(f: &impl OnCircle, scale: f64) -> Edges {
     let mut found = Edges { places: [0.0; Edges::MOST], count: 0 };
-    for piece in 0..f.pieces() {
+    for part in 0..f.parts() {
+        let only = &Only(f, part);
         let mut values = [0.0; SAMPLES];
         for ((value, c), s) in values.iter_mut().zip(&CIRCLE.cos).zip(&CIRCLE.sin) {
-            *value = f.jet(piece, *c, *s).value;
+            *value = only.value(*c, *s);
         }
         let at = |k: usize| values.get(k % SAMPLES).copied().unwrap_or_default();
         for k in 0..SAMPLES {
             let (x, here, after) = (k as f64 * STEP, at(k), at(k + 1));
             if (here > 0.0) != (after > 0.0) {
-                found.push(root_between(f, piece, x, x + STEP));
+                found.push(root_between(only, x, x + STEP));
             }
             let before = at(k + SAMPLES - 1);
-            // A sample nearest to zero among neighbours of its own sign: does the piece turn beyond zero?
+            // A sample nearest to zero among neighbours of its own sign: does the part turn beyond zero?
             let alike = (here > 0.0) == (before > 0.0) && (here > 0.0) == (after > 0.0);
             if !alike || here.abs() > before.abs() || here.abs() > after.abs() {
                 continue;
             }
             let (s, c) = x.sin_cos();
-            let jet = f.jet(piece, c, s);
+            let jet = only.jet(0, c, s);
             let turn = if here > 0.0 {
-                let hill = climb(&Below(Only(f, piece)), 0, x, -jet, scale);
+                let hill = climb(&Below(only), 0, x, -jet, scale);
                 (hill.phi, -hill.value)
             } else {
-                let hill = climb(f, piece, x, jet, scale);
+                let hill = climb(&only, 0, x, jet, scale);
                 (hill.phi, hill.value)
             };
             // The turning point, given round the circle, brought beside the sample.
             let beside =
                 x + (turn.0 - x + std::f64::consts::PI).rem_euclid(std::f64::consts::TAU) - std::f64::consts::PI;
             if (turn.1 > 0.0) != (here > 0.0) && (beside - x).abs() <= STEP {
-                found.push(root_between(f, piece, x - STEP, beside));
-                found.push(root_between(f, piece, beside, x + STEP));
+                found.push(root_between(only, x - STEP, beside));
+                found.push(root_between(only, beside, x + STEP));
             }
         }
     }
     found
 }
 
-/// One piece of a function by itself.
+/// One part of a function by itself.
 struct Only<'a, F>(&'a F, usize);
 
-impl<F: OnCircle> OnCircle for Only<'_, F> {
+impl<F: OnCircle> OnCircle for &Only<'_, F> {
     fn value(&self, c: f64, s: f64) -> f64 {
-        self.0.jet(self.1, c, s).value
+        self.0.part(self.1, c, s).value
     }
-    fn jet(&self, _piece: usize, c: f64, s: f64) -> crate::rock::Jet {
-        self.0.jet(self.1, c, s)
+    fn jet(&self, _: usize, c: f64, s: f64) -> crate::rock::Jet {
+        self.0.part(self.1, c, s)
     }
 }
 
-/// The one zero of a piece between two places of opposite sign: Newton, halving where it leaves them.
-fn root_between(f: &impl OnCircle, piece: usize, mut left: f64, mut right: f64) -> f64 {
+/// The one zero between two places of opposite sign: Newton, halving where it leaves them.
+fn root_between(f: impl OnCircle, mut left: f64, mut right: f64) -> f64 {
     let at = |x: f64| {
         let (s, c) = x.sin_cos();
-        f.jet(piece, c, s)
+        f.jet(0, c, s)
     };
     let left_positive = at(left).value > 0.0;
     let mut x = 0.5 * (left + right);

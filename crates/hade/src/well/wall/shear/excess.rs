@@ -38,12 +38,30 @@ impl<C: Criterion> Excess<'_, C> {
         let (e1, e2) = place.in_the_wall();
         let (r, c) = (place.across, &self.criterion);
         match (C::ORDER, piece) {
-            (Order::Any, _) | (Order::Extremes, 0) => c.excess([e1, e2, r]),
-            (Order::Extremes, 1) => c.excess([e1, r, e2]),
-            (Order::Extremes, _) => c.excess([r, e1, e2]),
             // The middle one is the larger of e2 and the smaller of r and e1.
-            (Order::Middle, 0) => c.excess([e1, e2, r]),
-            (Order::Middle, _) => c.excess([e1, r, e2]).smaller(c.excess([r, e1, e2])),
+            (Order::Middle, 1) => c.excess([e1, r, e2]).smaller(c.excess([r, e1, e2])),
+            _ => self.intact_part(piece, place),
+        }
+    }
+
+    /// Into how many parts without an edge: as the pieces, but the order of all three stresses counts.
+    #[inline(always)]
+    fn intact_parts() -> usize {
+        match C::ORDER {
+            Order::Extremes | Order::Middle => 3,
+            Order::Any => 1,
+        }
+    }
+
+    /// One of them.
+    #[inline(always)]
+    fn intact_part<N: Number>(&self, part: usize, place: &Place<N>) -> N {
+        let (e1, e2) = place.in_the_wall();
+        let (r, c) = (place.across, &self.criterion);
+        match (C::ORDER, part) {
+            (Order::Any, _) | (_, 0) => c.excess([e1, e2, r]),
+            (_, 1) => c.excess([e1, r, e2]),
+            (_, _) => c.excess([r, e1, e2]),
         }
     }
 
@@ -111,6 +129,16 @@ impl<C: Criterion> OnCircle for Excess<'_, C> {
         match self.plane {
             Some(plane) if piece == Self::intact_pieces() => plane.slip_round(c, s, &place),
             _ => self.intact(piece, &place),
+        }
+    }
+    fn parts(&self) -> usize {
+        Self::intact_parts() + usize::from(self.plane.is_some())
+    }
+    fn part(&self, part: usize, c: f64, s: f64) -> Jet {
+        let place = self.wall.round(c, s, self.x);
+        match self.plane {
+            Some(plane) if part == Self::intact_parts() => plane.slip_round(c, s, &place),
+            _ => self.intact_part(part, &place),
         }
     }
 }

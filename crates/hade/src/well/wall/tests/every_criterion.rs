@@ -56,6 +56,43 @@ proptest! {
     }
 }
 
+/// Mogi–Coulomb where the stress across the wall becomes the largest: three edges within 2.5° of tool face, of which the
+/// samples saw one.
+#[test]
+fn a_narrow_arc_beside_a_wide_one() {
+    let plain = Plain {
+        six: [
+            70.4821240195416,
+            33.721938193752756,
+            41.12446569361184,
+            2.96863368714666,
+            -5.429027297366765,
+            -0.032627131858775194,
+        ],
+        inclination: 124.53551035864639,
+        azimuth: 129.29089228039814,
+        pore: 23.128076047021242,
+        poisson: 0.0797339922822111,
+        tensile: 0.0,
+        rock: PlainRock::MogiCoulomb { c: 8.119519714422735, phi: 14.415030296730233 },
+        seepage: Some([0.164902826418692, 0.9061539576878241]),
+        thermal: None,
+        weak: None,
+    };
+    let pressure = 68.91160640132973;
+    let arcs = plain.wall().failing_arcs(pressure.mpa()).unwrap().arcs();
+    assert_eq!(arcs.len(), 2, "{arcs:?}");
+    let force = Force::new(&plain);
+    for arc in arcs {
+        for side in [-1.0, 1.0] {
+            let edge = arc.centre.in_deg() + side * 0.5 * arc.width.in_deg();
+            assert!(
+                force.excess(edge - side * 1e-4, pressure) > 0.0 && force.excess(edge + side * 1e-4, pressure) < 0.0
+            );
+        }
+    }
+}
+
 proptest! {
     #![proptest_config(ProptestConfig::with_cases(1500))]
 
