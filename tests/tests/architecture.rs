@@ -7,7 +7,7 @@ use hade_tests::root;
 
 /// Each module with its place in `error · interrupt · units ← card, sheet ← … ← prelude`. A module imports only
 /// from places before its own, or from itself.
-const ORDER: [(&str, u32); 17] = [
+const ORDER: [(&str, u32); 18] = [
     ("error", 0),
     ("interrupt", 0),
     ("units", 1),
@@ -20,11 +20,12 @@ const ORDER: [(&str, u32); 17] = [
     ("faults", 6),
     ("well", 7),
     ("field", 8),
-    ("show", 9),
-    ("replay", 9),
-    ("prelude", 10),
-    ("samples", 11),
-    ("lib", 12),
+    ("along", 9),
+    ("show", 10),
+    ("replay", 10),
+    ("prelude", 11),
+    ("samples", 12),
+    ("lib", 13),
 ];
 
 /// The Rust files of the library with the module each belongs to.
