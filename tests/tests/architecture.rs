@@ -21,11 +21,12 @@ const ORDER: [(&str, u32); 18] = [
     ("faults", 6),
     ("well", 7),
     ("field", 8),
-    ("show", 9),
-    ("replay", 9),
-    ("prelude", 10),
-    ("samples", 11),
-    ("lib", 12),
+    ("along", 9),
+    ("show", 10),
+    ("replay", 10),
+    ("prelude", 11),
+    ("samples", 12),
+    ("lib", 13),
 ];
 
 /// The Rust files of the library with the module each belongs to.

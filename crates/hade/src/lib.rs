@@ -2,6 +2,7 @@
 //! results that explain themselves. Conventions: compression positive; north, east, down; see
 //! [`frames`].
 
+pub mod along;
 pub mod card;
 pub mod error;
 pub mod faults;

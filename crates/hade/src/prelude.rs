@@ -1,6 +1,11 @@
 //! What a notebook imports: `use hade::prelude::*;`. Neither `Result` nor `Error` is here, because
 //! a notebook's own code means std's.
 
+pub use crate::along::{
+    Depletion, DrillingEvent, DrillingEvents, EventKind, Ground, GroundInputs, GroundState, Hindcast, HindcastRow,
+    HoleSection, HorizontalProfiles, Layer, LimitLog, LogChoices, LogRow, MaxPath, MinPath, Narrowest, SectionRange,
+    TopPlane,
+};
 pub use crate::card::{Card, Explain, Projection};
 pub use crate::faults::{
     BoundsInputs, CriticalPlanes, Fault, FaultSet, FaultSlip, FaultState, FaultStrength, FrictionLimit,

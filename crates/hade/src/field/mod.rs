@@ -6,6 +6,7 @@
 //! It does not correct logs for the hole's condition, nor match depths between logs.
 
 mod column;
+mod declared;
 mod density_log;
 mod las;
 mod las_header;
@@ -13,11 +14,11 @@ mod overburden;
 mod overburden_card;
 mod overview;
 mod profile;
-#[cfg(test)]
-mod readers_alike;
 mod reduce;
 
 pub use column::DensityColumn;
+pub(crate) use declared::{DEPTHS, PRESSURES, declared_datum};
 pub use density_log::{DensityLog, Gap, LogSource};
 pub use overburden::{Layer, Overburden, OverburdenInputs, OverburdenOutcome, OverburdenRecord, Top};
+pub(crate) use profile::{InHole, ProfileRecord};
 pub use profile::{PressureAtDepth, PressureAtDepthInputs, PressureAtDepthOutcome, PressureProfile};

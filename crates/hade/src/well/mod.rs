@@ -10,4 +10,5 @@ pub use survey::{
     Asked, Position, PositionInputs, PositionOutcome, Station, StationPosition, Survey, SurveySource, SurveyTable,
     SurveyTableInputs, TablePlace, TieIn,
 };
+pub(crate) use survey::{Place, stated_items};
 pub use wall::*;

@@ -127,7 +127,7 @@ impl Explain for PressureAtDepth {
         } else {
             below(about.hole_tie(), Datum::RotaryTable)
         };
-        let psi = by_another_route(inputs, Length::m(in_law)).map_or(nan, Pressure::in_psi);
+        let psi = by_another_route(&inputs.law, about.tie, Length::m(in_law)).map_or(nan, Pressure::in_psi);
         let size = psi.abs().max(1e-3);
         let mut checks = vec![
             Check::compare(
@@ -183,8 +183,8 @@ impl Explain for PressureAtDepth {
 }
 
 /// The pressure at a depth below the profile's datum, by a route the computation does not take.
-fn by_another_route(inputs: &PressureAtDepthInputs, depth: Length) -> Option<Pressure> {
-    match &inputs.law {
+pub(super) fn by_another_route(law: &Law, tie: Option<DatumTie>, depth: Length) -> Option<Pressure> {
+    match law {
         Law::Table { points, .. } => {
             // The ends of the segment by a search from the bottom up.
             let (z1, p1) = *points.iter().rev().find(|p| p.0.si() <= depth.si() + MEET)?;
@@ -196,7 +196,7 @@ fn by_another_route(inputs: &PressureAtDepthInputs, depth: Length) -> Option<Pre
             let begin = match start {
                 Start::Stated { pressure } => pressure.in_psi(),
                 Start::Sea { density } => {
-                    let sea = -inputs.about.tie?.elevation(Datum::Mudline).ok()?.in_ft();
+                    let sea = -tie?.elevation(Datum::Mudline).ok()?.in_ft();
                     PSI_PER_FOOT * density.in_sg() * sea
                 }
             };

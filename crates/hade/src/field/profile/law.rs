@@ -139,6 +139,20 @@ impl Law {
         }
     }
 
+    /// The law as a record of many depths holds it: of a table the points next to each depth.
+    pub fn about(&self, depths: &[f64]) -> Self {
+        let Law::Table { datum, points, count, ends } = self else { return self.clone() };
+        let mut wanted = std::collections::BTreeSet::new();
+        for depth in depths {
+            let here = points.partition_point(|p| p.0.si() < *depth);
+            wanted.extend(here.saturating_sub(2)..(here + 3).min(points.len()));
+        }
+        let kept: Vec<Point> = wanted.into_iter().filter_map(|k| points.get(k).copied()).collect();
+        // A record that is read again must be a table.
+        let kept = if kept.len() < 2 { points.iter().take(2).copied().collect() } else { kept };
+        Law::Table { datum: *datum, points: kept, count: *count, ends: *ends }
+    }
+
     /// The point at a depth, or the two around it.
     pub fn around(&self, depth: Length) -> Result<(Point, Point)> {
         let Law::Table { points, ends: [first, last], datum, .. } = self else {

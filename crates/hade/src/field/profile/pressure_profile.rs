@@ -189,7 +189,7 @@ impl PressureProfile {
         PressureProfile::build(about, law)
     }
 
-    fn build(about: ProfileAbout, law: Law) -> Self {
+    pub(super) fn build(about: ProfileAbout, law: Law) -> Self {
         PressureProfile { data: Arc::new(ProfileData { about, law }) }
     }
 

@@ -6,8 +6,9 @@ use std::path::Path;
 use super::law::{Law, Point, require_point};
 use super::pressure_profile::{PressureProfile, ProfileSource};
 use crate::error::{Error, Result};
+use crate::field::declared::{DEPTHS, PRESSURES, declared_datum};
 use crate::frames::{Datum, LEVEL_KEYS, Name, declared_tie};
-use crate::lines::{Column, Declarations, Expected, Lines, Row, Table, Unit, Units, heading, reason, shown};
+use crate::lines::{Column, Expected, Lines, Row, Table, Unit, heading, reason, shown};
 use crate::units::{Length, Pressure};
 
 /// More rows than this are no table of pressures but a log.
@@ -21,26 +22,6 @@ const EXPECTED: Expected = Expected {
     rows: ["row", "rows"],
     most: MOST_ROWS,
     fewer: "keep a row every few metres; straight lines run between them",
-};
-
-const DEPTHS: Units<Length> = Units {
-    key: "depth_unit",
-    what: "its depth unit",
-    known: &[("m", Length::m), ("ft", Length::ft)],
-    fix: "write m or ft",
-};
-
-const PRESSURES: Units<Pressure> = Units {
-    key: "pressure_unit",
-    what: "its pressure unit",
-    known: &[
-        ("MPa", Pressure::mpa),
-        ("kPa", Pressure::kpa),
-        ("Pa", Pressure::pa),
-        ("bar", Pressure::bar),
-        ("psi", Pressure::psi),
-    ],
-    fix: "write one of MPa, kPa, Pa, bar, psi",
 };
 
 /// The two columns that are read, and what their numbers are.
@@ -83,7 +64,7 @@ fn columns<R: Read>(table: &Table<R>, column: &str) -> Result<Columns> {
     )?;
     let pressure = table.column_or(&[&heading(column).0], "ask for one of the columns of the file")?;
     let declared = table.declared();
-    let datum = datum(declared)?;
+    let datum = declared_datum(declared)?;
     if table.is_named(&depth, "tvdss") && datum != Datum::MeanSeaLevel {
         return Err(table.bad_in(
             &depth,
@@ -97,29 +78,6 @@ fn columns<R: Read>(table: &Table<R>, column: &str) -> Result<Columns> {
         depth,
         pressure,
         datum,
-    })
-}
-
-fn datum(declared: &Declarations) -> Result<Datum> {
-    let words = "rotary table, mean sea level, ground or mudline";
-    let mut found: Option<Datum> = None;
-    for key in ["datum", "depth_datum"] {
-        let Some(text) = declared.get(key) else { continue };
-        let Some(here) = Datum::from_words(text) else {
-            let why = format!("\"{}\" is no datum that is known here", shown(text));
-            return Err(declared.bad(key, why, format!("write {words}")));
-        };
-        if let Some(other) = found.filter(|other| *other != here) {
-            let why = format!("it says {}, and \"datum\" says {}", here.words(), other.words());
-            return Err(declared.bad(key, why, "keep one"));
-        }
-        found = Some(here);
-    }
-    found.ok_or_else(|| {
-        declared.bad_together(
-            "the file does not say which level its depths count from",
-            format!("declare it with a line \"# datum: …\" above the column names: {words}"),
-        )
     })
 }
 

@@ -20,7 +20,9 @@ mod station;
 mod survey;
 mod table;
 
+pub(crate) use position::Place;
 pub use position::{Asked, Position, PositionInputs, PositionOutcome};
+pub(crate) use position_card::stated_items;
 pub use station::{Station, TieIn};
 pub use survey::{Survey, SurveySource};
 pub use table::{StationPosition, SurveyTable, SurveyTableInputs, TablePlace};

@@ -82,6 +82,43 @@ const LEVEL: f64 = 1e-9;
 /// Depths closer than this along the hole are one crossing, metres.
 const ONE_CROSSING: f64 = 1e-6;
 
+/// Where a hole is at a measured depth, in metres and radians: for logs along it.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub(crate) struct Place {
+    pub md: f64,
+    /// North, east, down.
+    pub at: V3,
+    pub inclination: f64,
+    pub azimuth: f64,
+}
+
+impl Place {
+    /// How the hole lies there.
+    pub fn attitude(&self) -> Attitude {
+        Attitude {
+            inclination: Angle::from_si(self.inclination),
+            azimuth: Azimuth::from_true_north(Angle::from_si(self.azimuth)),
+        }
+    }
+}
+
+impl Survey {
+    /// The place at a measured depth, as [`Survey::at`] finds it.
+    pub(crate) fn place(&self, md: Length) -> Result<Place> {
+        let (leg, share) = find_md(self, md)?;
+        let at_bottom = md.si() == leg.bottom.md;
+        let part = if at_bottom { leg.arc } else { leg.arc.up_to(share) };
+        let at = if at_bottom { leg.end } else { add(leg.start, part.displacement()) };
+        let (inclination, azimuth) = attitude(&leg, share, md.si(), part.to);
+        Ok(Place { md: md.si(), at, inclination, azimuth })
+    }
+
+    /// The first measured depth.
+    pub(crate) fn first_md(&self) -> Length {
+        Length::m(self.data().direct.first().map_or(0.0, |s| s.md))
+    }
+}
+
 impl Position {
     pub(super) fn locate(survey: &Survey, asked: Asked) -> Result<Self> {
         let (leg, share, md, tvd) = match asked {

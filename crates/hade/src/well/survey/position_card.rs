@@ -114,7 +114,7 @@ fn inputs(p: &Position) -> Vec<Item> {
 }
 
 /// What the notebook stated beside the stations.
-pub(super) fn stated_items(survey: &Survey) -> Vec<Item> {
+pub(crate) fn stated_items(survey: &Survey) -> Vec<Item> {
     let meta = &survey.data().meta;
     let mut items = Vec::new();
     if let (Some((_, north)), Some(c)) =

@@ -3,6 +3,7 @@
 
 use super::position::{Asked, PositionInputs, PositionOutcome, SEVERITY_LENGTH, VERTICAL};
 use super::station::Direct;
+use super::survey::Survey;
 use crate::card::Check;
 use crate::frames::vector::{V3, add, cross, dot, norm, scale};
 use crate::frames::{Datum, Depth};
@@ -63,6 +64,30 @@ pub(super) fn places_by_quadrature(stations: &[Direct], start: V3, md: f64) -> V
         }
     }
     places
+}
+
+impl Survey {
+    /// The true vertical depths at measured depths that do not fall, by Simpson's rule over the turning
+    /// direction; not a number outside the stations.
+    pub(crate) fn depths_by_quadrature(&self, mds: &[f64]) -> Vec<f64> {
+        let data = self.data();
+        let mut here = data.places.first().map_or(f64::NAN, |place| place[2]);
+        let mut legs = data.direct.windows(2).peekable();
+        let mut depths = Vec::with_capacity(mds.len());
+        for md in mds {
+            while let Some([top, bottom]) = legs.next_if(|leg| matches!(leg, [_, bottom] if bottom.md < *md)) {
+                here += along(top.t, bottom.t, bottom.md - top.md, 1.0)[2];
+            }
+            depths.push(match legs.peek() {
+                Some([top, bottom]) if top.md <= *md => {
+                    let length = bottom.md - top.md;
+                    here + along(top.t, bottom.t, length, (md - top.md) / length)[2]
+                }
+                _ => f64::NAN,
+            });
+        }
+        depths
+    }
 }
 
 pub(super) fn check(inputs: &PositionInputs, outcome: &PositionOutcome) -> Vec<Check> {

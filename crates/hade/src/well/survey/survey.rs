@@ -260,7 +260,7 @@ impl Survey {
     }
 
     /// The levels that TVD can be counted from.
-    pub(super) fn datum(&self) -> Result<Datum> {
+    pub(crate) fn datum(&self) -> Result<Datum> {
         if self.is_tied_in() {
             return Ok(Datum::RotaryTable);
         }
@@ -306,7 +306,7 @@ impl Survey {
     }
 
     /// The survey as an input of a card: its file, or its stations as they were typed.
-    pub(super) fn item(&self) -> Item {
+    pub(crate) fn item(&self) -> Item {
         let d = &self.data;
         match &d.meta.source {
             SurveySource::File { path, sha256 } => Item::file("survey", path.clone(), sha256.clone()),
@@ -321,7 +321,7 @@ impl Survey {
     }
 
     /// The card of the site's convergence or declination, where that corrects the stations.
-    pub(super) fn upstream(&self) -> Vec<Card> {
+    pub(crate) fn upstream(&self) -> Vec<Card> {
         self.corrected_at().and_then(|(site, north)| site.correction_card(north)).into_iter().collect()
     }
 

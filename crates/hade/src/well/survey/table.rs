@@ -65,6 +65,18 @@ impl Survey {
     }
 }
 
+impl Survey {
+    /// As a record holds it.
+    pub(crate) fn record(&self) -> SurveyTableInputs {
+        SurveyTableInputs { survey: self.data().meta.clone(), stations: self.data().stations.clone() }
+    }
+
+    /// From a record.
+    pub(crate) fn from_record(record: SurveyTableInputs) -> Result<Self> {
+        Survey::build(record.stations, record.survey)
+    }
+}
+
 impl SurveyTable {
     /// The rows, from the top.
     pub fn rows(&self) -> Vec<StationPosition> {
@@ -131,11 +143,10 @@ impl Explain for SurveyTable {
     type Outcome = Vec<TablePlace>;
 
     fn compute(inputs: SurveyTableInputs) -> Result<Self> {
-        Survey::build(inputs.stations, inputs.survey)?.table()
+        Survey::from_record(inputs)?.table()
     }
     fn inputs(&self) -> SurveyTableInputs {
-        let data = self.survey.data();
-        SurveyTableInputs { survey: data.meta.clone(), stations: data.stations.clone() }
+        self.survey.record()
     }
     fn outcome(&self) -> Vec<TablePlace> {
         let row = |r: StationPosition| TablePlace { north: r.north, east: r.east, tvd: r.tvd, dogleg: r.dogleg };

@@ -48,13 +48,16 @@ mod wall;
 
 pub use around::{ArcsOutcome, AroundOutcome, Breakout, FailingArcs, WallAround};
 pub use failure_depth::{DeepestFailure, DepthOutcome, FailureDepth};
+pub(crate) use limits::shown as limit_shown;
 pub use limits::{DirectionMap, Limit, LimitKind, Limits, LimitsInputs, LimitsOutcome, MapInputs};
 pub use range::{
     Alternative, BesideInputs, BesideOutcome, GovernedPressure, Governs, HeldInputs, HeldOutcome, HeldPressure,
     MudHeld, MudPlan, MudState, RaisedTop, RangeBeside, RangeChoices, RangeEnd, RangeInputs, RangeOutcome,
     RangesBeside, RecommendedRange,
 };
+pub(crate) use range::{Conditions, Ends, nearest_to_failing, pushed_out_above};
 pub use sensitivity::{ChangedEnds, ChangedRange, Sensitivity, SensitivityInputs, SensitivityOutcome, Vary};
+pub(crate) use setup::Seepage;
 pub use setup::{Thermal, WallInputs, WallSetup, WeakPlane};
 pub use shear::{Mode, WallDirection};
 pub use stress::{

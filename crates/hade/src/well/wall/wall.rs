@@ -38,7 +38,7 @@ impl Wall {
         Wall::of(WallSetup::plain(inputs))
     }
 
-    pub(super) fn of(setup: WallSetup) -> Result<Self> {
+    pub(crate) fn of(setup: WallSetup) -> Result<Self> {
         interrupt::check();
         let attitude = setup.checked()?;
         let WallInputs { stress, pore, rock } = setup.inputs;

@@ -3,7 +3,7 @@
 
 use serde::{Deserialize, Serialize};
 
-use super::check::{Conditions, nearest_to_failing};
+use super::check::Conditions;
 use super::ends::{Ends, GovernedPressure, pushed_out_above};
 use super::recommended::{RangeInputs, RecommendedRange};
 use crate::card::{Check, Item};
@@ -243,37 +243,11 @@ pub(super) fn check(inputs: &BesideInputs, outcome: &BesideOutcome) -> Vec<Check
     let mut unit = 1e-6;
     for (n, (row, setup)) in (1..).zip(outcome.rows.iter().zip(setups)) {
         let Some(conditions) = Conditions::new(&setup, choices) else { return Vec::new() };
-        let route = &conditions.route;
-        let size = route.size();
-        unit = (size * 1e-6).max(unit);
+        unit = (conditions.route.size() * 1e-6).max(unit);
         let name = format!("range {n}");
         checks.push(conditions.ends(&name, row.bottom, row.top));
-        if let Some(lower) = row.lower_shear {
-            checks.push(nearest_to_failing(
-                format!("{name}, lower shear limit: arcs are within the width just above it, and not just below"),
-                conditions.lower("it", lower, choices.allowed_width).to_vec(),
-            ));
-        }
-        if let Some(initiation) = row.initiation {
-            checks.push(Check::compare(
-                format!("{name}, initiation: the least effective principal stress round the hole"),
-                &[route.least_round(initiation.si()) * 1e-6],
-                &[-conditions.tensile * 1e-6],
-                unit * 1e-8,
-                "MPa",
-            ));
-        }
-        if let Some(upper) = row.upper_shear.map(Quantity::si) {
-            let nudge = 1e-7 * size;
-            let [inside, outside] = [upper - nudge, upper + nudge].map(|p| route.worst_of_side(p, 1.0) * 1e-6);
-            checks.push(nearest_to_failing(
-                format!("{name}, upper shear: nothing is pushed out just below it, and something is just above"),
-                vec![
-                    Check::holds("pushed out just below", inside, unit * 1e-9, "MPa"),
-                    Check::holds("not pushed out just above", -outside, 0.0, "MPa"),
-                ],
-            ));
-        }
+        checks
+            .extend(conditions.limits(&name, [row.lower_shear, row.initiation, row.upper_shear]).into_iter().flatten());
         for (change, end, of, first) in [
             (row.bottom_change, row.bottom, "bottom", first.and_then(|f| f.bottom)),
             (row.top_change, row.top, "top", first.and_then(|f| f.top)),

@@ -192,6 +192,42 @@ impl Conditions {
         nearest_to_failing(format!("{name}: {ends}"), checks)
     }
 
+    /// The limits behind the ends, one check each: arcs are within the allowed width just above the lower
+    /// shear limit and not just below; the least effective principal stress is −T₀ at initiation; nothing
+    /// is pushed out just below the upper shear limit, and something is just above.
+    pub fn limits(&self, name: &str, [lower, initiation, upper]: [Option<Pressure>; 3]) -> [Option<Check>; 3] {
+        let route = &self.route;
+        let size = route.size();
+        let unit = (size * 1e-6).max(1e-6);
+        let lower = lower.map(|lower| {
+            nearest_to_failing(
+                format!("{name}, lower shear limit: arcs are within the width just above it, and not just below"),
+                self.lower("it", lower, self.choices.allowed_width).to_vec(),
+            )
+        });
+        let initiation = initiation.map(|initiation| {
+            Check::compare(
+                format!("{name}, initiation: the least effective principal stress round the hole"),
+                &[route.least_round(initiation.si()) * 1e-6],
+                &[-self.tensile * 1e-6],
+                unit * 1e-8,
+                "MPa",
+            )
+        });
+        let upper = upper.map(Quantity::si).map(|upper| {
+            let nudge = 1e-7 * size;
+            let [inside, outside] = [upper - nudge, upper + nudge].map(|p| route.worst_of_side(p, 1.0) * 1e-6);
+            nearest_to_failing(
+                format!("{name}, upper shear: nothing is pushed out just below it, and something is just above"),
+                vec![
+                    Check::holds("pushed out just below", inside, unit * 1e-9, "MPa"),
+                    Check::holds("not pushed out just above", -outside, 0.0, "MPa"),
+                ],
+            )
+        });
+        [lower, initiation, upper]
+    }
+
     /// No pressure of many keeps the arcs within the allowed width: by how much the tightest misses it.
     pub fn no_bottom(&self, name: &str, looks: u32) -> Check {
         let width = self.choices.allowed_width.si();
@@ -221,7 +257,7 @@ pub(super) fn check_weights(choices: &RangeChoices, name: &str, end: &RangeEnd) 
 }
 
 /// Several checks as one, with the numbers of the one nearest to failing; one that fails is named.
-pub(super) fn nearest_to_failing(what: String, checks: Vec<Check>) -> Check {
+pub(crate) fn nearest_to_failing(what: String, checks: Vec<Check>) -> Check {
     let share = |check: &Check| match check.difference {
         _ if !check.passed => f64::INFINITY,
         Some(difference) if difference > 0.0 => difference / check.tolerance,

@@ -13,7 +13,7 @@ mod raised;
 mod recommended;
 
 pub use beside::{Alternative, BesideInputs, BesideOutcome, RangeBeside, RangesBeside};
-pub(crate) use check::Conditions;
+pub(crate) use check::{Conditions, nearest_to_failing};
 pub(crate) use ends::{Ends, pushed_out_above};
 pub use ends::{GovernedPressure, Governs, RangeEnd};
 pub use mud_held::{HeldInputs, HeldOutcome, HeldPressure, MudHeld, MudPlan, MudState};

@@ -1,7 +1,9 @@
 //! The readers of CSV files read the same spellings, and say the same of the same mistake.
+#![cfg(test)]
 
-use super::PressureProfile;
+use crate::along::DrillingEvents;
 use crate::faults::FaultSet;
+use crate::field::PressureProfile;
 use crate::frames::Site;
 use crate::well::Survey;
 
@@ -14,7 +16,7 @@ struct Sample {
     last: [&'static str; 2],
 }
 
-const SAMPLES: [Sample; 3] = [
+const SAMPLES: [Sample; 4] = [
     Sample {
         declared: "# north: magnetic, declination: 2.5\n# angle_unit: deg\n# depth_datum: rotary table\n# depth_unit: m\n",
         names: "MD,Azimuth,Inclination",
@@ -33,6 +35,12 @@ const SAMPLES: [Sample; 3] = [
         rows: ["0,x,0", "100,y,1"],
         last: ["hole", "P"],
     },
+    Sample {
+        declared: "# depth_datum: rotary table\n# a remark\n# mud_weight_unit: sg\n# depth_unit: m\n",
+        names: "MD,Kind,Mud_Weight",
+        rows: ["0,gain,1", "100,losses,1"],
+        last: ["depth_unit", "Mud_Weight"],
+    },
 ];
 
 /// What each reader says of a text, with the words that are its own made common ones. All samples
@@ -49,6 +57,7 @@ fn said(samples: &[Sample], site: Option<Site>, text: impl Fn(&Sample) -> String
             ("Inclination", Some(site)) => Survey::read_csv_at(&path, site).map(|_| ()),
             ("Dip", None) => FaultSet::read_csv(&path).map(|_| ()),
             ("Dip", Some(site)) => FaultSet::read_csv_at(&path, site).map(|_| ()),
+            ("Mud_Weight", _) => DrillingEvents::read_csv(&path).map(|_| ()),
             _ => PressureProfile::read_csv(&path, "P").map(|_| ()),
         };
         let mut said = result.map_or_else(|e| e.to_string(), |()| "read".to_owned());
@@ -60,6 +69,7 @@ fn said(samples: &[Sample], site: Option<Site>, text: impl Fn(&Sample) -> String
             (&format!("column \"{lower}\""), "column"),
             ("station", "row"),
             ("plane", "row"),
+            ("event", "row"),
             ("its strikes", "its azimuths"),
             ("FaultSet::", "Survey::"),
         ] {

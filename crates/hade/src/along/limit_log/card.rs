@@ -1,0 +1,247 @@
+//! The card of a log.
+
+use super::check::check;
+use super::figure::{against_md, figures};
+use super::limit_log::{LimitLog, LogInputs};
+use super::row::{LogRow, ends};
+use super::steps::{governing, steps, stretch_words, stretches_words};
+use super::summary::LogOutcome;
+use crate::card::{Card, Check, Explain, Explanation, Figure, Formula, Item, Method, Reference};
+use crate::error::Result;
+use crate::units::{Angle, Quantity, as_typed, fixed};
+use crate::well::stated_items;
+
+impl Explain for LimitLog {
+    const KIND: &'static str = "limit-log";
+    /// The limits rest on iterations.
+    const REPLAY_TOLERANCE: f64 = 1e-8;
+    type Inputs = LogInputs;
+    type Outcome = LogOutcome;
+
+    fn compute(inputs: LogInputs) -> Result<Self> {
+        LimitLog::from_record(inputs)
+    }
+    fn inputs(&self) -> LogInputs {
+        self.record().clone()
+    }
+    fn outcome(&self) -> LogOutcome {
+        LogOutcome::of(self.printed().iter().map(|(row, _)| *row).collect(), &self.sections)
+    }
+    fn check(inputs: &LogInputs, outcome: &LogOutcome) -> Vec<Check> {
+        check(inputs, outcome)
+    }
+
+    fn explain(&self) -> Explanation {
+        let outcome = self.outcome();
+        let mut inputs = self.input_items();
+        inputs.extend(self.sections.iter().flat_map(|section| section.items()));
+        let width = self.choices.allowed_width;
+        Explanation {
+            title: format!(
+                "Pressure limits against depth along {}, {}{}",
+                self.hole(),
+                stretch_words([self.choices.from, self.choices.to]),
+                if width > Angle::default() {
+                    format!(", arcs up to {}° allowed to fail", as_typed(width.in_deg()))
+                } else {
+                    String::new()
+                }
+            ),
+            headline: headline(&outcome),
+            inputs,
+            results: results(&outcome),
+            method: self.method(&outcome),
+            steps: steps(self, &outcome),
+            figures: figures(self, &outcome),
+            notes: self.notes(&outcome),
+            topics: self.topics(),
+        }
+    }
+
+    fn upstream(&self) -> Vec<Card> {
+        let mut cards = self.survey.upstream();
+        cards.extend(self.ground.azimuth().upstream());
+        cards.extend(self.ground.layers().into_iter().filter_map(|l| l.sh_max_azimuth).flat_map(|a| a.upstream()));
+        cards
+    }
+}
+
+impl LimitLog {
+    /// Survey, ground and choices as inputs of a card.
+    pub(crate) fn input_items(&self) -> Vec<Item> {
+        let mut items = vec![self.survey.item()];
+        items.extend(stated_items(&self.survey));
+        items.extend(self.ground.items());
+        items.extend(self.choices.items());
+        items
+    }
+
+    /// The figure of mud weights against measured depth.
+    pub(crate) fn figure(&self) -> Figure {
+        against_md(self, &self.outcome())
+    }
+}
+
+fn headline(outcome: &LogOutcome) -> String {
+    let section = |section: &super::section::SectionRange| match section.common() {
+        Some((bottom, top)) => {
+            format!("{} {} to {} sg", section.name, fixed(bottom.in_sg(), 3), fixed(top.in_sg(), 3))
+        }
+        None if section.conflicts.is_empty() => format!("{} no common mud weight", section.name),
+        None => format!("{} no common mud weight ({})", section.name, stretches_words(&section.conflicts)),
+    };
+    let sections: Vec<String> = outcome.sections.iter().map(section).collect();
+    match outcome.narrowest {
+        Some(narrowest) => format!(
+            "narrowest at MD {} m in {}, {} MPa; {}",
+            fixed(narrowest.md.si(), 1),
+            narrowest.layer,
+            fixed(narrowest.breadth.in_mpa(), 2),
+            sections.join("; ")
+        ),
+        None => format!("no range at any depth; {}", sections.join("; ")),
+    }
+}
+
+fn results(outcome: &LogOutcome) -> Vec<Item> {
+    let mut items = Vec::new();
+    if let Some(narrowest) = outcome.narrowest {
+        items.push(Item::computed("MD_n", "measured depth where the range is narrowest", narrowest.md));
+        items.push(Item::computed("Δp_n", "top less bottom there", narrowest.breadth));
+    }
+    for section in &outcome.sections {
+        for (symbol, words, end) in [("ρ_b", "highest bottom", section.bottom), ("ρ_t", "lowest top", section.top)] {
+            let Some(end) = end else { continue };
+            items.push(Item::computed(symbol, format!("{words} of {}", section.name), end.mud_weight));
+        }
+        for held in &section.mud {
+            let against = if held.against_bottom { "bottom" } else { "top" };
+            items.push(Item::computed(
+                "Δp",
+                format!("least left of the mud {} to the {against}, {}", held.state.words(), section.name),
+                held.margin,
+            ));
+        }
+    }
+    items
+}
+
+impl LimitLog {
+    /// The method of the wall where the log is narrowest, with what the log adds.
+    fn method(&self, outcome: &LogOutcome) -> Method {
+        let wall = governing(self, outcome).and_then(|(_, state)| ends(&state, &self.choices).ok());
+        let mut method = wall.map(|found| found.limits.explain().method).unwrap_or_default();
+        method.words = format!(
+            "At each depth the survey gives the place and direction of the hole, and the ground the stress, pore pressure and rock there; the wall is worked out as at a single depth. Contacts are looked at on both sides. {}",
+            method.words
+        );
+        let mut formulas = vec![
+            Formula::new("K = (S - P_p) / (S_upright(v) - P_p)", "K = (S − P_p) / (S_v − P_p)"),
+            Formula::new(
+                "S = P_p + K (S_upright(v) - P_p) - A Delta P_p",
+                "S = P_p + K (S_v − P_p) − A ΔP_p; K straight between points of a layer, held to its contacts",
+            ),
+        ];
+        formulas.append(&mut method.formulas);
+        method.formulas = formulas;
+        method.formulas.extend([
+            Formula::new("p_b = max(p_(l s)(w), P_p + m_b)", "p_b = max(p_ls(w), P_p + m_b)"),
+            Formula::new("p_t = min(S_3, p_i, p_(u s)) - m_t", "p_t = min(S_3, p_i, p_us) − m_t"),
+            Formula::new("rho = p / (g \"TVD\")", "ρ = p / (g TVD)"),
+        ]);
+        if self.ground.layers().iter().any(|layer| layer.depletion.is_some()) {
+            method.formulas.push(Formula::new(
+                "A = alpha (1 - 2 nu) / (1 - nu)",
+                "A = α (1 − 2ν) / (1 − ν) of a wide, thin, elastic layer, where it is not measured",
+            ));
+            method.references.push(Reference::new(
+                "Zoback, M.D. (2007) Reservoir Geomechanics, Cambridge University Press, ch. 12 (stress change with depletion; cited from memory)",
+            ));
+            method
+                .assumptions
+                .push("Depletion leaves the vertical stress as it was: no arching over the depleted layer.".to_owned());
+        }
+        method.assumptions.push(
+            "The vertical is a principal direction of the far-field stress at every depth; a profile of another hole holds at equal elevation.".to_owned(),
+        );
+        method
+    }
+
+    fn notes(&self, outcome: &LogOutcome) -> Vec<String> {
+        let mut notes = Vec::new();
+        let all: Vec<&LogRow> = outcome.rows.iter().collect();
+        for section in outcome.sections.iter().filter(|section| section.common().is_none()) {
+            notes.push(match (section.bottom, section.top) {
+                (Some(bottom), Some(top)) => format!(
+                    "{}: no common mud weight. {} at MD {} m needs {} sg ({}), and {} at MD {} m bears only {} sg ({}); {}.",
+                    section.name,
+                    bottom.layer,
+                    fixed(bottom.md.si(), 1),
+                    fixed(bottom.mud_weight.in_sg(), 3),
+                    bottom.governed_by.short(),
+                    top.layer,
+                    fixed(top.md.si(), 1),
+                    fixed(top.mud_weight.in_sg(), 3),
+                    top.governed_by.short(),
+                    stretches_words(&section.conflicts)
+                ),
+                _ => format!("{}: no common mud weight, because some depth has no range.", section.name),
+            });
+        }
+        if !outcome.empty.is_empty() {
+            notes.push(format!("No pressure is recommended at {}.", stretches_words(&outcome.empty)));
+        }
+        let depleted = super::section::stretches(&all, |row| row.depleted);
+        if !depleted.is_empty() {
+            notes.push(format!(
+                "Depleted: {}. The stress path stated for it holds for the state it was measured in.",
+                stretches_words(&depleted)
+            ));
+        }
+        for layer in self.ground.layers() {
+            if let Some(depletion) = layer.depletion {
+                notes.push(format!("{}: {}.", layer.name(), depletion.words()));
+            }
+            if layer.creeps && outcome.rows.iter().any(|row| row.layer == layer.name) {
+                notes.push(format!(
+                    "WARNING: {} creeps. Elastic limits are NOT VALID in it; its rows only show what an elastic rock would do.",
+                    layer.name()
+                ));
+            }
+        }
+        for section in &outcome.sections {
+            for held in section.mud.iter().filter(|held| held.margin.si() < 0.0) {
+                notes.push(format!(
+                    "{}: the mud {} passes the {} by {} MPa at MD {} m.",
+                    section.name,
+                    held.state.words(),
+                    if held.against_bottom { "bottom" } else { "top" },
+                    fixed(-held.margin.in_mpa(), 2),
+                    fixed(held.md.si(), 1)
+                ));
+            }
+        }
+        if self.looked() > outcome.rows.len() {
+            notes.push(format!(
+                "{} depths were looked at, {} are printed: those that govern, both sides of contacts, and others at even distances. The whole log is written with .write_csv(path)?.",
+                self.looked(),
+                outcome.rows.len()
+            ));
+        }
+        if self.choices.margin_top.si() == 0.0 && self.choices.margin_bottom.si() == 0.0 {
+            notes.push("No margin is kept at either end: these are bare limits, not a recommendation.".to_owned());
+        }
+        notes
+    }
+
+    fn topics(&self) -> Vec<String> {
+        let mut topics = vec!["mud-weight", "limits", "breakout", "wall", "elastic", "survey"];
+        let layers = self.ground.layers();
+        let mut when = |holds: bool, topic: &'static str| topics.extend(holds.then_some(topic));
+        when(layers.iter().any(|layer| layer.creeps), "creep");
+        when(layers.iter().any(|layer| layer.seepage.is_some_and(|seepage| seepage.sealing < 1.0)), "permeable-wall");
+        when(layers.iter().any(|layer| layer.thermal.is_some()), "thermal");
+        when(layers.iter().any(|layer| layer.weak_plane.is_some()), "weak-plane");
+        topics.into_iter().map(str::to_owned).collect()
+    }
+}

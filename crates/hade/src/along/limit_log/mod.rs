@@ -1,0 +1,21 @@
+//! The pressures that limit the wall of a hole, all along it.
+
+mod card;
+mod check;
+mod choices;
+mod csv;
+mod figure;
+#[allow(clippy::module_inception)]
+mod limit_log;
+mod printed;
+mod row;
+mod sample;
+mod section;
+mod steps;
+mod summary;
+
+pub use choices::LogChoices;
+pub use limit_log::{LimitLog, LogInputs};
+pub use row::LogRow;
+pub use section::{HoleSection, SectionEnd, SectionMud, SectionRange};
+pub use summary::{LogOutcome, Narrowest};

@@ -1,0 +1,52 @@
+//! What tables by depth declare above their columns: units, and the level that depths count from.
+
+use crate::error::Result;
+use crate::frames::Datum;
+use crate::lines::{Declarations, Units, shown};
+use crate::units::{Length, Pressure};
+
+/// The units of depths.
+pub(crate) const DEPTHS: Units<Length> = Units {
+    key: "depth_unit",
+    what: "its depth unit",
+    known: &[("m", Length::m), ("ft", Length::ft)],
+    fix: "write m or ft",
+};
+
+/// The units of pressures and stresses.
+pub(crate) const PRESSURES: Units<Pressure> = Units {
+    key: "pressure_unit",
+    what: "its pressure unit",
+    known: &[
+        ("MPa", Pressure::mpa),
+        ("kPa", Pressure::kpa),
+        ("Pa", Pressure::pa),
+        ("bar", Pressure::bar),
+        ("psi", Pressure::psi),
+    ],
+    fix: "write one of MPa, kPa, Pa, bar, psi",
+};
+
+/// The level that the depths of a file count from.
+pub(crate) fn declared_datum(declared: &Declarations) -> Result<Datum> {
+    let words = "rotary table, mean sea level, ground or mudline";
+    let mut found: Option<Datum> = None;
+    for key in ["datum", "depth_datum"] {
+        let Some(text) = declared.get(key) else { continue };
+        let Some(here) = Datum::from_words(text) else {
+            let why = format!("\"{}\" is no datum that is known here", shown(text));
+            return Err(declared.bad(key, why, format!("write {words}")));
+        };
+        if let Some(other) = found.filter(|other| *other != here) {
+            let why = format!("it says {}, and \"datum\" says {}", here.words(), other.words());
+            return Err(declared.bad(key, why, "keep one"));
+        }
+        found = Some(here);
+    }
+    found.ok_or_else(|| {
+        declared.bad_together(
+            "the file does not say which level its depths count from",
+            format!("declare it with a line \"# datum: …\" above the column names: {words}"),
+        )
+    })
+}
