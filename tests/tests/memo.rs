@@ -10,8 +10,12 @@ mod every_name;
 mod new_project;
 #[path = "memo/python.rs"]
 mod python;
+#[path = "memo/records.rs"]
+mod records;
 #[path = "memo/refusals.rs"]
 mod refusals;
+#[path = "memo/rerun.rs"]
+mod rerun;
 #[path = "memo/sign_off.rs"]
 mod sign_off;
 #[path = "memo/states.rs"]

@@ -51,6 +51,10 @@ pub(crate) fn rerun(contents: &Contents, cell_timeout: Option<Duration>) -> Resu
         return Err(Interrupted::of(&run, "nothing was compared").into());
     }
     if let Some(failure) = run.failure() {
+        // The reader's own limit says nothing about the memo.
+        if failure.error.name == "Timeout" {
+            return Err(failure.to_string().into());
+        }
         return Ok(Rerun { cells: run.cells.len(), differences: vec![failure.to_string()] });
     }
     let differences = match run.last_output(RECORD_MIME) {

@@ -9,19 +9,27 @@ use std::time::Duration;
 use clap::Args;
 use hade_memo::{Report, Standing, verify};
 
-use crate::cells::seconds;
+use crate::Failure;
+use crate::cells::{Interrupted, seconds};
 use crate::rerun::{rerun, warning};
 
 /// Exit code of a memo that is refused.
 const REFUSED: u8 = 1;
 /// Exit code of a file that is no memo, or cannot be read.
 const UNREADABLE: u8 = 2;
+/// Exit code when the memo holds, and its notebook could not be run again.
+const NOT_RUN_AGAIN: u8 = 3;
+/// Exit code after Ctrl-C, as a shell has it.
+const INTERRUPTED: u8 = 130;
 /// Largest file that is taken into memory.
 const MOST_BYTES: u64 = hade_memo::MOST_VERIFIED_BYTES as u64;
 
 /// Arguments of `hade verify`.
 #[derive(Debug, Args)]
-#[command(after_help = "Exit code: 0 accepted, 1 refused, 2 the file cannot be read as a memo.")]
+#[command(
+    after_help = "Exit code: 0 accepted, 1 refused, 2 the file cannot be read as a memo, 3 accepted but its notebook \
+    could not be run again."
+)]
 pub struct VerifyArgs {
     /// The memo
     memo: PathBuf,
@@ -38,8 +46,8 @@ pub struct VerifyArgs {
 
 /// Verifies the memo and says what was found.
 pub(crate) fn run(args: &VerifyArgs) -> ExitCode {
-    let report = match looked_at(args) {
-        Ok(report) => report,
+    let (report, not_run) = match looked_at(args) {
+        Ok(found) => found,
         Err(why) => {
             match args.json {
                 true => println!("{}", serde_json::json!({ "accepted": false, "unreadable": why })),
@@ -52,11 +60,16 @@ pub(crate) fn run(args: &VerifyArgs) -> ExitCode {
         true => println!("{}", serde_json::to_string_pretty(&report).unwrap_or_default()),
         false => print!("{}", told(&report)),
     }
-    if report.accepted { ExitCode::SUCCESS } else { ExitCode::from(REFUSED) }
+    match not_run {
+        _ if !report.accepted => ExitCode::from(REFUSED),
+        Some(why) if why.is::<Interrupted>() => ExitCode::from(INTERRUPTED),
+        Some(_) => ExitCode::from(NOT_RUN_AGAIN),
+        None => ExitCode::SUCCESS,
+    }
 }
 
-/// What is found of the memo.
-fn looked_at(args: &VerifyArgs) -> Result<Report, String> {
+/// What is found of the memo, and why its notebook was not run again, where it was to be and was not.
+fn looked_at(args: &VerifyArgs) -> Result<(Report, Option<Failure>), String> {
     let bytes = read(&args.memo)?;
     // Should a parser fail on a hostile file, the verdict says so; its own words help nobody.
     std::panic::set_hook(Box::new(|_| {}));
@@ -68,10 +81,13 @@ fn looked_at(args: &VerifyArgs) -> Result<Report, String> {
         eprintln!("{}", plain(&warning(&contents)));
         match rerun(&contents, args.cell_timeout) {
             Ok(again) => report.take_in_rerun(again.cells, &again.differences),
-            Err(why) => report.take_in_rerun(0, &[format!("it cannot be run: {why}")]),
+            Err(why) => {
+                report.take_in_no_rerun(&why.to_string());
+                return Ok((report, Some(why)));
+            }
         }
     }
-    Ok(report)
+    Ok((report, None))
 }
 
 /// The bytes of a file that is not too long.

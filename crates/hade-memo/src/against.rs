@@ -1,7 +1,7 @@
 //! What stands against issue: the list on page 1, and what the command prints.
 
-use hade::card::Card;
-use hade::sheet::{Basis, Grade, Origin, Record};
+use hade::card::{Card, Item};
+use hade::sheet::{Basis, Grade, Origin, Record, misprints};
 
 use crate::project::{Project, Role};
 use crate::replay::Judged;
@@ -53,6 +53,8 @@ pub(crate) fn list(
     if recorded.iter().zip(lineage).any(|((_, written), traced)| *written != traced.as_slice()) {
         list.push("The origins of inputs that the record states are not those that were traced again.".to_owned());
     }
+    let inputs: Vec<&Item> = cards.iter().flat_map(|card| &card.explanation.inputs).collect();
+    list.extend(record.givens.iter().flat_map(|given| misprints(given, &inputs)).map(|words| format!("{words}.")));
     list.extend(record.conflicts.iter().chain(&record.no_numbers).map(|said| format!("{said}.")));
     for given in record.givens.iter().filter(|g| g.source.grade == Grade::Unsourced) {
         list.push(format!("Given {} ({}) has no source.", given.item.symbol, given.item.name));

@@ -92,7 +92,12 @@ fn words(what: &str, outcome: &str, passed: bool) -> CheckLine {
 /// A check passes when its own numbers say so, and the same check made again passes.
 fn line(check: &Check, again: Option<Option<&Check>>) -> CheckLine {
     let within = check.difference.is_some_and(|d| d.is_finite() && d <= check.tolerance);
-    let again = again.is_none_or(|same| same.is_some_and(|c| c.passed && c.what == check.what));
+    let alike = |c: &Check| {
+        c.what == check.what
+            && c.unit == check.unit
+            && (c.tolerance - check.tolerance).abs() <= WORDS_TOLERANCE * c.tolerance.abs()
+    };
+    let again = again.is_none_or(|same| same.is_some_and(|c| c.passed && alike(c)));
     let difference = match check.difference {
         Some(d) => number::small_with_unit(d, &check.unit),
         None => "not a number".to_owned(),

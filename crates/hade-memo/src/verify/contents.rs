@@ -1,7 +1,7 @@
 //! What the memo holds: attached files against their hashes, and the record against the library.
 
-use hade::card::Card;
-use hade::sheet::{Record, trace};
+use hade::card::{Card, Item};
+use hade::sheet::{Record, misprints, trace};
 use lopdf::Document;
 
 use super::printed::printed_hashes;
@@ -42,6 +42,7 @@ pub(super) fn check(memo: &Document, report: &mut Report) -> Option<Contents> {
         return None;
     };
     print(memo, [&json, notebook], report);
+    givens(&record, report);
     items(&record, report);
     lineage(&record, report);
     let notebook = (notebook.name.clone(), notebook.bytes.clone());
@@ -111,6 +112,17 @@ fn print(memo: &Document, files: [&File; 2], report: &mut Report) {
             Some((_, sheet)) => report.holds(PRINT, format!("sheet {sheet} prints the SHA-256 of the attached {name}")),
             None => report.fails(PRINT, format!("no sheet prints the SHA-256 of the attached {name}, {sha256}")),
         }
+    }
+}
+
+/// Writes every given again from its number.
+fn givens(record: &Record, report: &mut Report) {
+    let cards = record.cards();
+    let inputs: Vec<&Item> = cards.iter().flat_map(|(card, _)| &card.explanation.inputs).collect();
+    let wrong: Vec<String> = record.givens.iter().flat_map(|given| misprints(given, &inputs)).collect();
+    match wrong.is_empty() {
+        true => report.holds("givens", format!("{} print the values computed with", record.givens.len())),
+        false => wrong.into_iter().for_each(|words| report.fails("givens", words)),
     }
 }
 

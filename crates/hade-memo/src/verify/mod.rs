@@ -12,9 +12,9 @@
 //! The file may mean harm. It is read with bounds on memory and time, no path in it is followed,
 //! and nothing in it is run.
 
-mod changes;
 mod cms;
 mod contents;
+mod permitted;
 mod printed;
 mod report;
 mod revisions;

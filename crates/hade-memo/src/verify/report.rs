@@ -76,6 +76,9 @@ pub struct Attached {
     pub sha256: String,
 }
 
+/// What running the notebook again is called.
+const RERUN: &str = "notebook run again";
+
 /// What verifying a memo found.
 #[derive(Clone, Debug, Default, PartialEq, Eq, Serialize)]
 #[non_exhaustive]
@@ -117,12 +120,17 @@ impl Report {
 
     /// Takes in what running the notebook again gave, and draws the verdict anew.
     pub fn take_in_rerun(&mut self, cells: usize, differences: &[String]) {
-        const RERUN: &str = "notebook run again";
         if differences.is_empty() {
             self.holds(RERUN, format!("{cells} cells give the same outcomes and conclusions"));
         }
         differences.iter().for_each(|difference| self.fails(RERUN, difference));
         self.conclude();
+    }
+
+    /// Takes in that the notebook was to be run again and could not be: that says nothing against the memo.
+    pub fn take_in_no_rerun(&mut self, why: &str) {
+        self.note(RERUN, format!("nothing was compared: {why}"));
+        self.verdict.push_str(" The notebook was NOT run again.");
     }
 
     /// Draws the verdict.

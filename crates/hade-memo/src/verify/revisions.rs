@@ -2,7 +2,7 @@
 
 use lopdf::Document;
 
-use super::changes::{Fields, compare};
+use super::permitted::{Fields, compare};
 use super::report::{LaterRevision, Report};
 use super::signature;
 use crate::digest::sha256;

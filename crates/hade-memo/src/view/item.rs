@@ -9,7 +9,7 @@ use serde::Serialize;
 use super::Sources;
 use super::references::{ReferenceView, References};
 use super::table::{MatrixView, TableView, matrix, tables};
-use super::text::{Run, Symbol, plain, rich, symbol};
+use super::text::{Run, Symbol, first_sentence, plain, rich, symbol};
 use crate::draw;
 use crate::formula::lint;
 use crate::replay::CheckLine;
@@ -61,6 +61,8 @@ enum StepView {
 struct FigureView {
     file: String,
     caption: Vec<Run>,
+    /// The caption in a list of figures.
+    short: Vec<Run>,
     alt: String,
 }
 
@@ -255,7 +257,12 @@ impl<'a> Maker<'a> {
         let file = format!("figures/{number}-{place}.svg");
         self.figures.insert(file.clone(), draw::for_print(figure));
         let alt = if figure.alt.trim().is_empty() { &figure.caption } else { &figure.alt };
-        FigureView { file, caption: rich(&figure.caption), alt: crate::clean::lossy(alt) }
+        FigureView {
+            file,
+            caption: rich(&figure.caption),
+            short: rich(&first_sentence(&figure.caption)),
+            alt: crate::clean::lossy(alt),
+        }
     }
 }
 

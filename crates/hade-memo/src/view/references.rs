@@ -9,6 +9,8 @@ use super::text::plain;
 pub(crate) struct ReferenceView {
     number: usize,
     words: String,
+    /// Whether it was at hand when the method was written down.
+    seen: bool,
     items: Vec<usize>,
 }
 
@@ -42,9 +44,24 @@ impl References {
         self.list
             .into_iter()
             .enumerate()
-            .map(|(i, (words, items))| ReferenceView { number: i + 1, words: plain(&words), items })
+            .map(|(i, (words, items))| {
+                let (words, seen) = without_mark(&words);
+                ReferenceView { number: i + 1, words: plain(&words), seen, items }
+            })
             .collect()
     }
+}
+
+/// How the library marks a citation whose print was not looked at.
+const UNSEEN: &str = "cited from memory";
+
+/// The citation without the mark, and whether it had none.
+fn without_mark(citation: &str) -> (String, bool) {
+    let alone = format!(" ({UNSEEN})");
+    let last = format!("; {UNSEEN})");
+    let words = citation.replace(&alone, "").replace(&last, ")");
+    let seen = words == citation;
+    (words, seen)
 }
 
 #[cfg(test)]
@@ -60,5 +77,20 @@ mod tests {
         let done = references.done();
         assert_eq!(done.len(), 2);
         assert_eq!(done[0].items, [1, 3]);
+    }
+
+    #[test]
+    fn what_was_not_at_hand_is_marked() {
+        let (words, seen) = without_mark("Ewy (1999) SPE 14, 85 (SPE 56862; cited from memory)");
+        assert_eq!((words.as_str(), seen), ("Ewy (1999) SPE 14, 85 (SPE 56862)", false));
+        let (words, seen) = without_mark("Bradley (1979) J. Energy 101 (cited from memory)");
+        assert_eq!((words.as_str(), seen), ("Bradley (1979) J. Energy 101", false));
+        assert_eq!(without_mark("Zoback (2007)"), ("Zoback (2007)".to_owned(), true));
+        let mut citations = Vec::new();
+        for card in hade::samples::samples() {
+            citations.extend(card.explanation.method.references.into_iter().map(|r| r.citation));
+        }
+        let marked = citations.iter().filter(|c| c.contains("memory")).count();
+        assert!(marked > 10 && citations.iter().all(|c| !without_mark(c).0.contains("memory")), "{citations:#?}");
     }
 }

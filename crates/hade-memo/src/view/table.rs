@@ -4,7 +4,7 @@ use hade::card::{Column, Table};
 use serde::Serialize;
 
 use super::number::{Cell, cell, fixed, words};
-use super::text::{Run, Symbol, plain, rich, symbol};
+use super::text::{Run, Symbol, first_sentence, plain, rich, symbol};
 
 /// Width of the text on an upright page, in points, on the narrower of the two papers.
 const UPRIGHT: f64 = 465.0;
@@ -39,6 +39,8 @@ pub(crate) struct ColumnView {
 #[derive(Clone, Debug, Serialize)]
 pub(crate) struct TableView {
     caption: Vec<Run>,
+    /// The caption in a list of tables.
+    short: Vec<Run>,
     columns: Vec<ColumnView>,
     rows: Vec<Vec<Cell>>,
     /// Size of the face, in points.
@@ -50,6 +52,10 @@ pub(crate) struct TableView {
 /// A table of the record; in parts, each with the first column, when it is too wide even for a
 /// turned page.
 pub(crate) fn tables(table: &Table) -> Vec<TableView> {
+    if table.columns.is_empty() {
+        let nothing = Table { columns: vec![Column::text("no columns")], rows: Vec::new(), ..table.clone() };
+        return vec![view(&nothing, false, 8.0)];
+    }
     if let Some((turned, size)) = fit(table) {
         return vec![view(table, turned, size)];
     }
@@ -109,7 +115,14 @@ fn view(table: &Table, turned: bool, size: f64) -> TableView {
         numeric: c.numeric,
         share: share(table, i, c),
     });
-    TableView { caption: rich(&table.caption), columns: columns.collect(), rows, size, turned }
+    TableView {
+        caption: rich(&table.caption),
+        short: rich(&first_sentence(&table.caption)),
+        columns: columns.collect(),
+        rows,
+        size,
+        turned,
+    }
 }
 
 /// The share of the free width of a column: as its longest text, within reason.
@@ -214,6 +227,13 @@ mod tests {
             rows: vec![vec!["x".to_owned()], vec!["x".to_owned(), "1".to_owned(), "2".to_owned()]],
         };
         assert!(tables(&uneven)[0].rows.iter().all(|row| row.len() == 2));
+    }
+
+    #[test]
+    fn a_table_without_columns_says_so() {
+        let none = Table { columns: Vec::new(), ..of(3) };
+        let shown = tables(&none);
+        assert!(shown.len() == 1 && shown[0].columns.len() == 1 && shown[0].rows.is_empty());
     }
 
     #[test]

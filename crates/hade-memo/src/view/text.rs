@@ -57,6 +57,16 @@ pub(crate) fn shortened(text: &str, most: usize) -> String {
     format!("{}\u{2026}", kept.trim_end())
 }
 
+/// The first sentence of a caption, for a list of captions.
+pub(crate) fn first_sentence(text: &str) -> String {
+    let ends = |(at, _): &(usize, &str)| text.get(at + 2..).is_some_and(|rest| rest.starts_with(char::is_uppercase));
+    let end = text.match_indices(". ").find(ends).map_or(text.len(), |(at, _)| at);
+    shortened(text.get(..end).unwrap_or(text).trim_end_matches('.'), LISTED)
+}
+
+/// Most characters of a caption in a list.
+const LISTED: usize = 120;
+
 /// A symbol: what stands on the line, what stands below it, and what follows.
 #[derive(Clone, Debug, Default, PartialEq, Eq, Serialize)]
 pub(crate) struct Symbol {
@@ -118,8 +128,9 @@ pub(crate) fn rich(text: &str) -> Vec<Run> {
     let mut at = 0;
     while let Some(&c) = chars.get(at) {
         let before = at.checked_sub(1).and_then(|i| chars.get(i));
-        match symbol_at(&chars, at).filter(|_| !before.is_some_and(|b| b.is_alphanumeric() || "_./\\-@#".contains(*b)))
-        {
+        // A change of something is written before its letter.
+        let is_part = |b: &char| *b != 'Δ' && (b.is_alphanumeric() || "_./\\-@#".contains(*b));
+        match symbol_at(&chars, at).filter(|_| !before.is_some_and(is_part)) {
             Some((base, sub, next)) => {
                 if !words.is_empty() {
                     runs.push(Run::Words { words: plain(&std::mem::take(&mut words)) });
@@ -187,6 +198,7 @@ mod tests {
     #[test]
     fn symbols_in_a_sentence_get_their_subscripts() {
         assert_eq!(spelled("S_v = 66.9 MPa, σ_1' > T_0."), "<S|v> = 66.9 MPa, <σ′|1> > <T|0>.");
+        assert_eq!(spelled("Δp_b = 1 MPa"), "Δ<p|b> = 1 MPa");
         assert_eq!(spelled("(S_1 − P_p) / r_max"), "(<S|1> − <P|p>) / <r|max>");
         for same in [
             "kf3_survey.csv",
@@ -230,6 +242,14 @@ mod tests {
             plain("data/of/this/very/long/path/file.csv").replace(BREAK, ""),
             "data/of/this/very/long/path/file.csv"
         );
+    }
+
+    #[test]
+    fn a_caption_is_listed_by_its_first_sentence() {
+        assert_eq!(first_sentence("Side view, vert. exaggerated. The dot is KF-3."), "Side view, vert. exaggerated");
+        assert_eq!(first_sentence("Limits of 0.5 m."), "Limits of 0.5 m");
+        assert_eq!(first_sentence(""), "");
+        assert_eq!(first_sentence(&"x".repeat(500)).chars().count(), LISTED);
     }
 
     #[test]

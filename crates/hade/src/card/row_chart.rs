@@ -50,12 +50,12 @@ impl RowChart {
         let mut y = 0.0;
         for row in &self.rows {
             y -= 1.0;
-            layers.push(Layer::Words { text: row.words.clone(), at: [low + 0.006 * (high - low), y + 0.74] });
+            layers.push(Layer::Words { text: row.words.clone(), at: [low + 0.006 * (high - low), y + 0.72] });
             for (role, from, to) in &row.bars {
-                layers.push(Layer::Bar { role: *role, from: [*from, y + 0.12], to: [*to, y + 0.4] });
+                layers.push(Layer::Bar { role: *role, from: [*from, y + 0.05], to: [*to, y + 0.31] });
             }
             for (role, mark, at) in &row.marks {
-                let points = vec![[*at, y + 0.26]];
+                let points = vec![[*at, y + 0.18]];
                 layers.push(Layer::Points { label: String::new(), role: *role, mark: *mark, points });
             }
         }

@@ -116,7 +116,7 @@ pub(super) fn explain(sv: &Overburden) -> Explanation {
             Item::computed("S_v", "total vertical stress", sv.stress),
             Item::computed("G_v", "mean gradient of S_v below the rotary table", sv.gradient),
             Item::new(
-                "ρ_m",
+                "ρ_av",
                 "mean density of the rock above",
                 Density::KIND,
                 vec![sv.mean_density.si()],
@@ -135,7 +135,7 @@ fn depth_step(sv: &Overburden) -> Step {
     let record = sv.record();
     let point = record.hole.elevation(record.depth.below).unwrap_or_default() - record.depth.tvd;
     Step::worked(format!(
-        "{} m below {} of the hole asked about (its {}) = elevation {} m = {} m below {} of {} (its {})",
+        "{} m below {} of the hole asked about (its {}) = elevation {} m = {} m below {} of {} (stated with its log: {})",
         as_typed(record.depth.tvd.in_m()),
         record.depth.below.words(),
         record.hole.words(),

@@ -202,7 +202,9 @@ impl Azimuth {
     }
 
     fn measured_item(self, symbol: &str, name: &str) -> Item {
-        let shown = format!("{:0>3}° from {}", as_typed(self.measured.in_deg()), self.north.words());
+        let degrees = as_typed(self.measured.in_deg());
+        let figures = if degrees.starts_with('-') { degrees } else { format!("{degrees:0>3}") };
+        let shown = format!("{figures}° from {}", self.north.words());
         let kind = format!("azimuth from {}", self.north.words());
         Item::new(symbol, name, kind, vec![within_a_circle(self.measured.si())], shown)
     }

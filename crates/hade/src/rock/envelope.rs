@@ -68,8 +68,8 @@ impl FailureEnvelope {
             // UCS is the uniaxial strength below.
             StrengthConstants::MohrCoulomb { q, .. } => vec![plain("q", "slope of σ'_1 on σ'_3", q)],
             StrengthConstants::MogiCoulomb { a, b } => vec![
-                Item::computed("a", "octahedral shear stress borne at σ'_m2 = 0", a),
-                plain("b", "slope of τ_oct on σ'_m2", b),
+                Item::computed("a_M", "octahedral shear stress borne at σ'_m2 = 0", a),
+                plain("b_M", "slope of τ_oct on σ'_m2", b),
             ],
             StrengthConstants::ModifiedLade { shift, eta } => {
                 vec![

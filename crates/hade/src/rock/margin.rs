@@ -74,7 +74,10 @@ impl StrengthMargin {
         match self.inputs.strength.law().constants() {
             StrengthConstants::MohrCoulomb { .. } => ([("σ'_1", ""), ("σ'_1f", "σ'_1 at failure, UCS + q σ'_3")], true),
             StrengthConstants::MogiCoulomb { .. } => (
-                [("τ_oct", "octahedral shear stress"), ("τ_oct_f", "octahedral shear stress at failure, a + b σ'_m2")],
+                [
+                    ("τ_oct", "octahedral shear stress"),
+                    ("τ_oct_f", "octahedral shear stress at failure, a_M + b_M σ'_m2"),
+                ],
                 true,
             ),
             StrengthConstants::ModifiedLade { .. } => {

@@ -70,27 +70,30 @@ impl Criterion for MogiCoulomb {
 pub(super) fn account(line: MogiCoulomb, cohesion: Pressure, friction_angle: Angle) -> Account {
     let (s, c) = friction_angle.si().sin_cos();
     Account {
-        margin: "a + b σ'_m2 − τ_oct",
+        margin: "a_M + b_M σ'_m2 − τ_oct",
         domain: "It was fitted to polyaxial tests in compression. Where σ'_3 is tension the same line only goes on; rock parts there at its tensile strength, so that a margin in tension flatters it.",
         steps: vec![
             Step::worked(format!(
-                "a = (2 √2 / 3) c cos φ = 0.942809 · {} · {} = {} MPa",
+                "a_M = (2 √2 / 3) c cos φ = 0.942809 · {} · {} = {} MPa",
                 fixed(cohesion.in_mpa(), 4),
                 number(c),
                 fixed(line.a * 1e-6, 5)
             )),
-            Step::worked(format!("b = (2 √2 / 3) sin φ = 0.942809 · {} = {}", number(s), number(line.b))),
+            Step::worked(format!("b_M = (2 √2 / 3) sin φ = 0.942809 · {} = {}", number(s), number(line.b))),
         ],
         formulas: vec![
-            Formula::new("tau_upright(\"oct\") = a + b sigma'_(upright(m) 2)", "τ_oct = a + b σ'_m2"),
+            Formula::new(
+                "tau_upright(\"oct\") = a_upright(M) + b_upright(M) sigma'_(upright(m) 2)",
+                "τ_oct = a_M + b_M σ'_m2",
+            ),
             Formula::new(
                 "tau_upright(\"oct\") = 1/3 sqrt((sigma'_1 - sigma'_2)^2 + (sigma'_2 - sigma'_3)^2 + (sigma'_3 - sigma'_1)^2)",
                 "τ_oct = ⅓ √((σ'_1 − σ'_2)² + (σ'_2 − σ'_3)² + (σ'_3 − σ'_1)²)",
             ),
             Formula::new("sigma'_(upright(m) 2) = (sigma'_1 + sigma'_3) / 2", "σ'_m2 = (σ'_1 + σ'_3) / 2"),
             Formula::new(
-                "a = (2 sqrt(2)) / 3 c cos phi, quad b = (2 sqrt(2)) / 3 sin phi",
-                "a = (2 √2 / 3) c cos φ, b = (2 √2 / 3) sin φ",
+                "a_upright(M) = (2 sqrt(2)) / 3 c cos phi, quad b_upright(M) = (2 sqrt(2)) / 3 sin phi",
+                "a_M = (2 √2 / 3) c cos φ, b_M = (2 √2 / 3) sin φ",
             ),
         ],
         symbols: vec![
@@ -119,7 +122,7 @@ pub(super) fn worked(line: MogiCoulomb, stress: [f64; 3]) -> Vec<Step> {
         )),
         Step::worked(format!("σ'_m2 = ({s1} + {s3}) / 2 = {} MPa", mpa(mean))),
         Step::worked(format!(
-            "a + b σ'_m2 − τ_oct = {} + {} · {} − {} = {} MPa",
+            "a_M + b_M σ'_m2 − τ_oct = {} + {} · {} − {} = {} MPa",
             mpa(line.a),
             number(line.b),
             mpa(mean),

@@ -3,11 +3,13 @@
 
 mod given;
 mod lineage;
+mod misprint;
 mod record;
 #[allow(clippy::module_inception)]
 mod sheet;
 
 pub use given::{Basis, DataFile, Given, Grade, IntoGiven, Source};
 pub use lineage::{Origin, trace};
+pub use misprint::misprints;
 pub use record::{Assumption, Entry, Frontmatter, RECORD_MIME, RECORD_SCHEMA, Record};
 pub use sheet::Sheet;

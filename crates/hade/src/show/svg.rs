@@ -62,7 +62,7 @@ pub fn svg(figure: &Figure, theme: Theme) -> String {
         if plan.contours.is_some() {
             drawing.draw_edged(&mut canvas, &palette);
         }
-        drawing.draw(&mut canvas, &palette);
+        drawing.draw(&mut canvas, &palette, &label_areas);
     }
     let thin = Pen { width: 1.0, dash: &[], ..palette.pen(Role::Quiet) };
     let leaders: Vec<Vec<Px>> = plan.labels.iter().filter_map(|l| l.leader.map(|ends| ends.to_vec())).collect();

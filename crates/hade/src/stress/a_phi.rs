@@ -287,7 +287,7 @@ impl Explain for FaultingRegime {
                     ),
                 ],
                 references: vec![
-                    Reference::new("Simpson, R.W. (1997) Quantifying Anderson's fault types, J. Geophys. Res. 102 (B8), 17909–17919 (journal page cited from memory)"),
+                    Reference::new("Simpson, R.W. (1997) Quantifying Anderson's fault types, J. Geophys. Res. 102 (B8), 17909–17919 (cited from memory)"),
                     Reference::new("Anderson, E.M. (1951) The Dynamics of Faulting, 2nd ed., Oliver & Boyd (cited from memory)"),
                     Reference::new("Angelier, J. (1979) Determination of the mean principal directions of stresses for a given fault population, Tectonophysics 56, T17–T26 (φ; cited from memory)"),
                 ],

@@ -41,7 +41,7 @@ pub(super) fn band<'a>(layer: &'a Layer, frame: &Frame) -> Option<Band<'a>> {
 }
 
 impl Band<'_> {
-    /// Draws it, leaving its hatching out behind labels.
+    /// Draws it, leaving its hatching and its edges out behind labels.
     pub fn draw(&self, canvas: &mut Canvas, palette: &Palette, labels: &[Rect]) {
         let area = self.area;
         let pen = palette.pen(self.role);
@@ -53,7 +53,8 @@ impl Band<'_> {
         };
         let strokes: Vec<Vec<Px>> = strokes.iter().flat_map(|line| around(line, labels)).collect();
         canvas.strokes(&strokes, &Pen { width: 1.1, dash: &[], ..pen }, 0.75);
-        canvas.lines(&self.edges(), &Pen { width: 1.2, dash: &[], ..pen });
+        let edges: Vec<Vec<Px>> = self.edges().iter().flat_map(|line| around(line, labels)).collect();
+        canvas.lines(&edges, &Pen { width: 1.2, dash: &[], ..pen });
     }
 
     /// Its two long sides.
@@ -88,7 +89,7 @@ fn level(area: &Rect, apart: f64) -> Vec<Vec<Px>> {
 }
 
 /// The pieces of a straight line outside some rectangles.
-fn around(line: &[Px], keep_clear: &[Rect]) -> Vec<Vec<Px>> {
+pub(super) fn around(line: &[Px], keep_clear: &[Rect]) -> Vec<Vec<Px>> {
     if !line.iter().any(|_| keep_clear.iter().any(|k| meets(line, k))) {
         return vec![line.to_vec()];
     }

@@ -1,5 +1,6 @@
 //! A layer in pixels: its lines cut to the frame, its marks, its bars.
 
+use super::bands::around;
 use super::canvas::Canvas;
 use super::clip::{Px, Rect, clip, walk};
 use super::frame::Frame;
@@ -74,9 +75,13 @@ impl Drawing {
         }
     }
 
-    pub fn draw(&self, canvas: &mut Canvas, palette: &Palette) {
+    /// Draws it; a straight line is left out behind labels.
+    pub fn draw(&self, canvas: &mut Canvas, palette: &Palette, labels: &[Rect]) {
         match self {
-            Drawing::Lines { role, parts } => canvas.lines(parts, &palette.pen(*role)),
+            Drawing::Lines { role, parts } => {
+                let straight = |part: &Vec<Px>| if part.len() == 2 { around(part, labels) } else { vec![part.clone()] };
+                canvas.lines(&parts.iter().flat_map(straight).collect::<Vec<_>>(), &palette.pen(*role));
+            }
             Drawing::Strokes { role, parts } => {
                 // They may run along another line.
                 self.draw_edged(canvas, palette);

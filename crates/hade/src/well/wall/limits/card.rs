@@ -174,27 +174,7 @@ impl Limits {
             "top of hole, right, along the hole",
         ));
         for limit in [self.lower_shear, self.upper_shear, self.initiation] {
-            let Some(pressure) = limit.pressure().or(limit.least_bad()) else { continue };
-            let theta = limit.toolface().unwrap_or_default();
-            let place = limit
-                .toolface()
-                .map_or_else(|| "any tool face".to_owned(), |t| direction::words(self.wall.attitude, t));
-            steps.push(Step::words(format!(
-                "{} at {}, tool face {place}:",
-                capitalised(limit.kind().words()),
-                pressure
-            )));
-            steps.extend(method::worked(&self.wall, theta.si(), pressure.si()));
-            if limit.kind() == LimitKind::Initiation {
-                let [.., s3] = limit.effective().unwrap_or_default();
-                steps.push(Step::worked(format!(
-                    "least effective principal stress = {} MPa against −T₀ = −{} MPa",
-                    fixed(s3.in_mpa(), 4),
-                    as_typed(self.wall.setup.inputs.rock.tensile_strength.in_mpa())
-                )));
-            } else {
-                steps.extend(method::worked_strength(&self.wall, theta.si(), pressure.si()));
-            }
+            steps.extend(self.worked(&limit));
         }
         steps.push(Step::Table { table: self.table() });
         steps

@@ -7,6 +7,7 @@ mod direction_map;
 mod limit;
 #[allow(clippy::module_inception)]
 mod limits;
+mod worked;
 
 pub(crate) use card::{capitalised, shown};
 pub use direction_map::{DirectionMap, MapInputs};

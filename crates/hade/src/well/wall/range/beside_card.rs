@@ -2,7 +2,7 @@
 
 use super::beside::{BesideInputs, BesideOutcome, RangeBeside, RangesBeside, check, words};
 use super::ends::{GovernedPressure, Governs, RangeEnd};
-use super::parts::{end_cells, end_item, pressure_columns, rule, signed};
+use super::parts::{end_cells, end_item, pressure_columns, rule, rule_symbols, signed};
 use super::recommended::RecommendedRange;
 use crate::card::{Card, ChartRow, Check, Column, Explain, Explanation, Figure, Method, Role, RowChart, Step, Table};
 use crate::error::Result;
@@ -161,6 +161,7 @@ impl RangesBeside {
             }
         }
         method.formulas.extend(rule());
+        method.symbols.extend(rule_symbols());
         method
     }
 
@@ -203,6 +204,16 @@ impl RangesBeside {
             }
         }
         steps.push(Step::Table { table: self.limits_table() });
+        // Range 1 is worked on its own card.
+        for (n, (row, wall)) in (1..).zip(self.outcome.rows.iter().zip(&self.walls)).skip(1) {
+            let Ok(limits) = wall.limits_at_width(self.range.choices.allowed_width) else { continue };
+            let governs = |end: Option<GovernedPressure>| end.map(|end| end.governed_by);
+            let worked = limits.worked_ends(governs(row.bottom), governs(row.top));
+            if !worked.is_empty() {
+                steps.push(Step::words(format!("Range {n}, {}, where the wall sets its ends:", words(wall))));
+                steps.extend(worked);
+            }
+        }
         steps.push(Step::Table { table: self.ranges_table() });
         steps
     }

@@ -1,7 +1,7 @@
 //! The card of a recommended range.
 
 use super::ends::{RangeEnd, pushed_out_above};
-use super::parts::{end_cells, end_item, pressure_columns, rule};
+use super::parts::{end_cells, end_item, pressure_columns, rule, rule_symbols};
 use super::recommended::{RangeChoices, RangeInputs, RangeOutcome, RecommendedRange};
 use crate::card::{
     Axis, Card, Check, Column, Explain, Explanation, Figure, Formula, Item, Layer, Mark, Reference, Role, Step, Table,
@@ -61,6 +61,7 @@ impl Explain for RecommendedRange {
             "The limits of the wall, with the width of failing arc that is allowed and the margins that were chosen. Pressure, mean gradient and static mud weight refer to true vertical depth below the rotary table.",
         );
         method.formulas.extend(rule());
+        method.symbols.extend(rule_symbols());
         method.formulas.push(Formula::new("rho = p / (g \"TVD\")", "ρ = p / (g TVD)"));
         method.references.push(Reference::new(
             "Zoback, M.D. (2007) Reservoir Geomechanics, Cambridge University Press, ch. 10 (mud weights from limits of the wall)",
@@ -159,6 +160,8 @@ impl RecommendedRange {
         let c = &self.choices;
         let mut steps = self.wall.strength().steps();
         let mpa = |p: Pressure| fixed(p.in_mpa(), 4);
+        let governs = |end: Option<RangeEnd>| end.map(|end| end.governed_by);
+        steps.extend(self.limits.worked_ends(governs(self.bottom), governs(self.computed_top)));
         steps.push(Step::worked(format!(
             "p_b: lower shear limit at {}° = {}; P_p + m_b = {} + {} = {} MPa",
             as_typed(c.allowed_width.in_deg()),

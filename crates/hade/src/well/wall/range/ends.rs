@@ -3,6 +3,7 @@
 use serde::{Deserialize, Serialize};
 
 use super::recommended::RangeChoices;
+use crate::card::Step;
 use crate::error::Result;
 use crate::units::{Density, Gradient, Pressure, Quantity, with_unit};
 use crate::well::wall::Wall;
@@ -129,6 +130,21 @@ impl Wall {
             bottom: bottom(&limits, self.pore() + choices.margin_bottom).map(end),
             top: top(&limits).map(|(p, g)| end((p - choices.margin_top, g))),
         })
+    }
+}
+
+impl Limits {
+    /// The limits that set the ends of a range, each with its numbers put in at its place; nothing of an end that
+    /// the far field, the pore pressure or the engineer sets.
+    pub(super) fn worked_ends(&self, bottom: Option<Governs>, top: Option<Governs>) -> Vec<Step> {
+        let of = |end: Option<Governs>| match end? {
+            Governs::LowerShear => Some(self.lower_shear),
+            Governs::Initiation => Some(self.initiation),
+            Governs::UpperShear => Some(self.upper_shear),
+            Governs::PorePressure | Governs::LeastStress | Governs::Engineer => None,
+        };
+        let limits = [of(bottom), of(top)].into_iter().flatten();
+        limits.flat_map(|limit| self.worked(&limit)).collect()
     }
 }
 

@@ -17,6 +17,6 @@ pub(crate) use check::{Conditions, nearest_to_failing};
 pub(crate) use ends::{Ends, pushed_out_above};
 pub use ends::{GovernedPressure, Governs, RangeEnd};
 pub use mud_held::{HeldInputs, HeldOutcome, HeldPressure, MudHeld, MudPlan, MudState};
-pub(crate) use parts::{rule, signed};
+pub(crate) use parts::{rule, rule_symbols, signed};
 pub use raised::RaisedTop;
 pub use recommended::{RangeChoices, RangeInputs, RangeOutcome, RecommendedRange};

@@ -12,6 +12,21 @@ pub(crate) fn rule() -> [Formula; 2] {
     ]
 }
 
+/// What the symbols of the rule are.
+pub(crate) fn rule_symbols() -> Vec<(String, String)> {
+    [
+        (
+            "p_ls",
+            "lower shear limit at w: the lowest pressure at which no arc that fails in shear is wider than w. An arc's width is the tool face from edge to edge in one lobe; it fails on one side of the criterion or the other, by too little pressure or by too much, and both count: at a permeable wall, where the pressure supports the rock less, both may fail at every pressure",
+        ),
+        ("p_i", "fracture initiation"),
+        ("p_us", "upper shear limit, above which the hole is pushed out"),
+        ("S_3", "least principal stress of the far field"),
+    ]
+    .map(|(symbol, meaning)| (symbol.to_owned(), meaning.to_owned()))
+    .to_vec()
+}
+
 /// A number of an end, rounded into the range.
 pub(super) fn end_item<Q: Quantity>(end: RangeEnd, symbol: &str, name: String, value: Q, decimals: usize) -> Item {
     Item::new(symbol, name, Q::KIND, vec![value.si()], end.inward(value, decimals))

@@ -10,7 +10,9 @@ use crate::error::Result;
 use crate::units::{Pressure, fixed};
 use crate::well::wall::limits::shown;
 use crate::well::wall::method;
-use crate::well::wall::range::{Ends, GovernedPressure, RecommendedRange, pushed_out_above, rule, signed};
+use crate::well::wall::range::{
+    Ends, GovernedPressure, RecommendedRange, pushed_out_above, rule, rule_symbols, signed,
+};
 
 impl Explain for Sensitivity {
     const KIND: &'static str = "range-sensitivity";
@@ -172,6 +174,7 @@ impl Sensitivity {
         );
         method.formulas.push(Formula::new("Delta p = p(x plus.minus Delta x) - p(x)", "Δp = p(x ± Δx) − p(x)"));
         method.formulas.extend(rule());
+        method.symbols.extend(rule_symbols());
         method.references.push(Reference::new(
             "Saltelli, A. et al. (2008) Global Sensitivity Analysis: The Primer, Wiley, ch. 1–2 (one factor at a time, and what it leaves out; cited from memory)",
         ));
@@ -188,16 +191,23 @@ impl Sensitivity {
             "Each changed range from its limits; every limit is found as on the card of limits, with the changed input in place of the other:",
         ));
         steps.push(Step::Table { table: self.limits_table() });
+        steps.push(Step::words("The larger change of each end that an input moves:"));
         for (vary, row) in self.ranked() {
-            let (Some(base), Some(now)) = (self.outcome.bottom, row.more.bottom) else { continue };
-            steps.push(Step::worked(format!(
-                "{} + {}: Δp_b = {} − {} = {} MPa",
-                vary.symbol(),
-                vary.shown(vary.by()),
-                fixed(now.pressure.in_mpa(), 4),
-                fixed(base.pressure.in_mpa(), 4),
-                fixed((now.pressure - base.pressure).in_mpa(), 4)
-            )));
+            let ends = [
+                ("p_b", self.outcome.bottom, row.less.bottom, row.more.bottom),
+                ("p_t", self.outcome.top, row.less.top, row.more.top),
+            ];
+            for (symbol, base, less, more) in ends {
+                let Some((sign, base, now)) = larger(base, less, more) else { continue };
+                steps.push(Step::worked(format!(
+                    "{} {sign} {}: Δ{symbol} = {} − {} = {} MPa",
+                    vary.symbol(),
+                    vary.shown(vary.by()),
+                    fixed(now.in_mpa(), 4),
+                    fixed(base.in_mpa(), 4),
+                    signed((now - base).in_mpa(), 4)
+                )));
+            }
         }
         steps
     }
@@ -212,11 +222,12 @@ impl Sensitivity {
             end.map_or_else(|| "none".to_owned(), |end| fixed(end.pressure.in_mpa(), 2))
         };
         let change = |change: Option<Pressure>| change.map_or_else(|| "–".to_owned(), |p| signed(p.in_mpa(), 2));
+        let by = |base, less, more| larger(base, less, more).map_or("–", |(sign, ..)| sign).to_owned();
         let mut rows = vec![vec!["as recommended".to_owned(), String::new()]];
         if let Some(first) = rows.first_mut() {
             let (b, t) = (cell(self.outcome.bottom), cell(self.outcome.top));
             first.extend([b.clone(), b, t.clone(), t]);
-            first.extend(vec!["–".to_owned(); 2]);
+            first.extend(vec!["–".to_owned(); 4]);
         }
         for (vary, row) in self.ranked() {
             let (bottom, top) = self.largest_changes(&row);
@@ -228,11 +239,13 @@ impl Sensitivity {
                 cell(row.less.top),
                 cell(row.more.top),
                 change(bottom),
+                by(self.outcome.bottom, row.less.bottom, row.more.bottom),
                 change(top),
+                by(self.outcome.top, row.less.top, row.more.top),
             ]);
         }
         Table {
-            caption: "Ends of the range with one input less (−) and more (+), the largest effect first; the last two columns are the larger change of the two; to the nearest, not rounded into the range".to_owned(),
+            caption: "Ends of the range with one input less (−) and more (+), the largest effect first. Δ is the larger of the two changes, + where it lifts the end and − where it lowers it; beside it stands which way the input went. To the nearest, not rounded into the range".to_owned(),
             columns: vec![
                 Column::text("input"),
                 Column::text("value and amount"),
@@ -241,7 +254,9 @@ impl Sensitivity {
                 Column::number("top, −", "MPa"),
                 Column::number("top, +", "MPa"),
                 Column::number("Δ bottom", "MPa"),
+                Column::text("with"),
                 Column::number("Δ top", "MPa"),
+                Column::text("with"),
             ],
             rows,
         }
@@ -261,7 +276,8 @@ impl Sensitivity {
             line
         });
         Table {
-            caption: "The larger change of each end as gradient and mud weight at TVD below rotary".to_owned(),
+            caption: "The larger change of each end, signed as above, as gradient and mud weight at TVD below rotary"
+                .to_owned(),
             columns: vec![
                 Column::text("input"),
                 Column::number("Δ bottom", "MPa/km"),
@@ -288,7 +304,7 @@ impl Sensitivity {
             caption: "Limits behind each changed range".to_owned(),
             columns: vec![
                 Column::text("input"),
-                Column::text("p_ls(w)"),
+                Column::text("p_ls at w"),
                 Column::text("P_p + m_b"),
                 Column::text("S_3"),
                 Column::text("p_i"),
@@ -362,6 +378,18 @@ impl Sensitivity {
             ),
         ))
     }
+}
+
+/// The larger of the two changes of an end: which way the input went, the end before and after; `None` where an
+/// end is missing or does not move.
+fn larger(
+    base: Option<GovernedPressure>,
+    less: Option<GovernedPressure>,
+    more: Option<GovernedPressure>,
+) -> Option<(&'static str, Pressure, Pressure)> {
+    let [base, less, more] = [base?, less?, more?].map(|end| end.pressure);
+    let (sign, now) = if (more - base).abs() > (less - base).abs() { ("+", more) } else { ("−", less) };
+    ((now - base).abs() > Pressure::pa(1.0)).then_some((sign, base, now))
 }
 
 fn limits_row(vary: Vary, ends: &Ends, changed: &ChangedEnds, margin: Pressure) -> Vec<String> {

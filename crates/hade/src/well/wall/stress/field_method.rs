@@ -16,23 +16,23 @@ pub(crate) fn with_strength(wall: &Wall, words: &str) -> Method {
         [
             Formula::new("u = (R / r)^2", "u = (R / r)²"),
             Formula::new(
-                "D = (sigma_x - sigma_y) / 2 cos 2 theta + tau_(x y) sin 2 theta",
-                "D = (σ_x − σ_y) / 2 · cos 2θ + τ_xy sin 2θ",
+                "sigma_d = (sigma_x - sigma_y) / 2 cos 2 theta + tau_(x y) sin 2 theta",
+                "σ_d = (σ_x − σ_y) / 2 · cos 2θ + τ_xy sin 2θ",
             ),
             Formula::new(
-                "W = tau_(x y) cos 2 theta - (sigma_x - sigma_y) / 2 sin 2 theta",
-                "W = τ_xy cos 2θ − (σ_x − σ_y) / 2 · sin 2θ",
+                "tau_d = tau_(x y) cos 2 theta - (sigma_x - sigma_y) / 2 sin 2 theta",
+                "τ_d = τ_xy cos 2θ − (σ_x − σ_y) / 2 · sin 2θ",
             ),
             Formula::new(
-                "sigma_r = (sigma_x + sigma_y) / 2 (1 - u) + D (1 - 4 u + 3 u^2) + p u",
-                "σ_r = (σ_x + σ_y) / 2 · (1 − u) + D (1 − 4u + 3u²) + p u",
+                "sigma_r = (sigma_x + sigma_y) / 2 (1 - u) + sigma_d (1 - 4 u + 3 u^2) + p u",
+                "σ_r = (σ_x + σ_y) / 2 · (1 − u) + σ_d (1 − 4u + 3u²) + p u",
             ),
             Formula::new(
-                "sigma_theta = (sigma_x + sigma_y) / 2 (1 + u) - D (1 + 3 u^2) - p u",
-                "σ_θ = (σ_x + σ_y) / 2 · (1 + u) − D (1 + 3u²) − p u",
+                "sigma_theta = (sigma_x + sigma_y) / 2 (1 + u) - sigma_d (1 + 3 u^2) - p u",
+                "σ_θ = (σ_x + σ_y) / 2 · (1 + u) − σ_d (1 + 3u²) − p u",
             ),
-            Formula::new("sigma_(z r) = sigma_z - 4 nu D u", "σ_zr = σ_z − 4 ν D u"),
-            Formula::new("tau_(r theta) = W (1 + 2 u - 3 u^2)", "τ_rθ = W (1 + 2u − 3u²)"),
+            Formula::new("sigma_(z r) = sigma_z - 4 nu sigma_d u", "σ_zr = σ_z − 4 ν σ_d u"),
+            Formula::new("tau_(r theta) = tau_d (1 + 2 u - 3 u^2)", "τ_rθ = τ_d (1 + 2u − 3u²)"),
             Formula::new(
                 "tau_(theta z) = (tau_(y z) cos theta - tau_(x z) sin theta)(1 + u)",
                 "τ_θz = (τ_yz cos θ − τ_xz sin θ)(1 + u)",
@@ -46,6 +46,7 @@ pub(crate) fn with_strength(wall: &Wall, words: &str) -> Method {
     method.symbols.extend([
         ("r".to_owned(), "distance from the hole's axis; R is the hole's radius".to_owned()),
         ("σ_zr".to_owned(), "axial stress at that distance".to_owned()),
+        ("σ_d".to_owned(), "and τ_d: what the stresses across the hole differ by, seen along the tool face".to_owned()),
     ]);
     method.references.push(Reference::new(
         "Hiramatsu, Y. and Oka, Y. (1968) Determination of the stress in rock unaffected by boreholes or drifts, from measured strains or deformations, Int. J. Rock Mech. Min. Sci. 5, 337–353 (the whole field; cited from memory)",
@@ -107,7 +108,7 @@ pub(crate) fn worked(wall: &Wall, theta: f64, pressure: f64, ratio: f64) -> Vec<
             six(s)
         )),
         Step::worked(format!(
-            "D = {} · ({}) + ({}) · ({}) = {}; W = ({}) · ({}) − ({}) · ({}) = {} MPa",
+            "σ_d = {} · ({}) + ({}) · ({}) = {}; τ_d = ({}) · ({}) − ({}) · ({}) = {} MPa",
             four(half),
             six(c2),
             four(xy),

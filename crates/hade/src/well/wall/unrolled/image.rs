@@ -152,7 +152,7 @@ impl Explain for WallImage {
         let (pressure, diameter) = (self.inputs.pressure, self.inputs.hole_diameter);
         let mut inputs = self.wall.items();
         inputs.push(pressure_item(pressure));
-        inputs.push(Item::typed("D", "hole diameter", diameter));
+        inputs.push(Item::typed("d_h", "hole diameter", diameter));
         let words = "What an image of the wall should show: the arcs where the elastic stress is beyond the shear strength, the cracks where it is beyond −T₀ with their tilt, and the trace of the plane of weakness.";
         let mut method = method::with_strength(&self.wall, words);
         let cracks = crack_method(&self.wall, words);
@@ -313,7 +313,7 @@ impl WallImage {
         let [x, y, z] = apply(&q, axes.normal).map(|v| fixed(v, 6));
         let ends = match (plane.half_height, plane.toolface) {
             (Some(half), Some(at)) => format!(
-                "half-height D √(n_x² + n_y²) / (2 |n_z|) = {} m, lowest at tool face {}°",
+                "half-height d_h √(n_x² + n_y²) / (2 |n_z|) = {} m, lowest at tool face {}°",
                 fixed(half.si(), 4),
                 fixed(at.in_deg(), 3)
             ),
