@@ -2,6 +2,7 @@
 
 use super::html::lines_html;
 use super::notebook::Show;
+use crate::along::{Hindcast, LimitLog};
 use crate::card::Explain as _;
 use crate::faults::{CriticalPlanes, FaultSlip, FrictionLimit, FrictionalBounds, RankedFaults};
 use crate::field::{Overburden, PressureAtDepth};
@@ -57,8 +58,8 @@ shown_by_cards! {
     // The hole and its wall.
     FailingArcs, FailureDepth, FieldStress, Limits, MudHeld, MudPressure, Position, RadialProfile, RangesBeside,
     RecommendedRange, Sensitivity, SurveyTable, TensileCracks, WallAround, WallImage, WallStress,
-    // The field.
-    Overburden, PressureAtDepth,
+    // The field, and along the hole.
+    Hindcast, LimitLog, Overburden, PressureAtDepth,
 }
 shown_by_cards!(@ Stress<Geographic>;);
 shown_by_cards!(@ Stress<F>; F: Turned);
