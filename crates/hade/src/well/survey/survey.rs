@@ -306,7 +306,7 @@ impl Survey {
     }
 
     /// The survey as an input of a card: its file, or its stations as they were typed.
-    pub(super) fn item(&self) -> Item {
+    pub(crate) fn item(&self) -> Item {
         let d = &self.data;
         match &d.meta.source {
             SurveySource::File { path, sha256 } => Item::file("survey", path.clone(), sha256.clone()),

@@ -165,6 +165,13 @@ impl Limits {
     }
 
     fn steps(&self) -> Vec<Step> {
+        let mut steps = self.worked(&[self.lower_shear, self.upper_shear, self.initiation]);
+        steps.push(Step::Table { table: self.table() });
+        steps
+    }
+
+    /// Some of these limits with the numbers put in.
+    pub(crate) fn worked(&self, limits: &[Limit]) -> Vec<Step> {
         let mut steps = self.wall.strength().steps();
         steps.push(Step::matrix(
             "S'",
@@ -173,7 +180,7 @@ impl Limits {
             "MPa",
             "top of hole, right, along the hole",
         ));
-        for limit in [self.lower_shear, self.upper_shear, self.initiation] {
+        for limit in limits {
             let Some(pressure) = limit.pressure().or(limit.least_bad()) else { continue };
             let theta = limit.toolface().unwrap_or_default();
             let place = limit
@@ -196,7 +203,6 @@ impl Limits {
                 steps.extend(method::worked_strength(&self.wall, theta.si(), pressure.si()));
             }
         }
-        steps.push(Step::Table { table: self.table() });
         steps
     }
 
