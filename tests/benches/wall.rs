@@ -83,3 +83,19 @@ fn lower_limits_of_32760_directions(bencher: Bencher, criterion: &str) {
     let inputs = MapInputs { stress: stress(), pore: 22.mpa(), rock: rock(criterion), step: 1.deg() };
     bencher.bench_local(|| DirectionMap::over(black_box(inputs)));
 }
+
+/// 100 000 walls with seven inputs drawn, bottom and top, on all cores.
+#[divan::bench(sample_count = 10)]
+fn ensemble_of_100_000_draws(bencher: Bencher) {
+    let wall = wall("Mohr–Coulomb");
+    let drawn = [
+        Drawn::sv(Distribution::normal(60.mpa(), 1.5.mpa())),
+        Drawn::sh_max(Distribution::normal(55.mpa(), 3.mpa())),
+        Drawn::sh_min(Distribution::normal(42.mpa(), 2.mpa())),
+        Drawn::sh_max_azimuth(Distribution::normal(35.deg(), 8.deg())),
+        Drawn::pore(Distribution::normal(22.mpa(), 1.mpa())),
+        Drawn::ucs(Distribution::normal(30.mpa(), 4.mpa())),
+        Drawn::friction_angle(Distribution::normal(32.deg(), 2.deg())),
+    ];
+    bencher.bench_local(|| black_box(&wall).ensemble(Draws { count: 100_000, start: 1 }, black_box(&drawn)));
+}

@@ -32,5 +32,7 @@ mod wall;
 mod wall_depth;
 #[path = "reference/wall_field.rs"]
 mod wall_field;
+#[path = "reference/wall_map.rs"]
+mod wall_map;
 #[path = "reference/wall_traps.rs"]
 mod wall_traps;

@@ -19,6 +19,7 @@ pub mod rock;
 pub mod samples;
 pub mod sheet;
 pub mod show;
+pub mod spread;
 pub mod stress;
 pub mod units;
 pub mod well;

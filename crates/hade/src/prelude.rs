@@ -24,14 +24,16 @@ pub use crate::rock::{
 };
 pub use crate::sheet::{Basis, Sheet, Source};
 pub use crate::show::{NotebookDisplay, Show};
+pub use crate::spread::{Distribution, Draws, Quantiles};
 pub use crate::stress::{
     AxisComponents, Components, EffectiveStress, FaultingRegime, HorizontalStresses, Horizontals, Invariants,
     MohrCircles, Principals, Regime, Stress, Traction, TractionVector,
 };
 pub use crate::units::{Angle, Density, Expansion, FluxDensity, Gradient, Length, Pressure, Uncertain, Units, Warming};
 pub use crate::well::{
-    Alternative, Breakout, CrackArc, CrackPlace, DeepestFailure, DirectionMap, FailingArcs, FailureDepth, FieldStress,
-    Governs, Limit, LimitKind, Limits, MapInputs, MudColumn, MudHeld, MudPlan, MudPressure, MudState, PlaneTrace,
-    Position, RadialProfile, RangeChoices, RangesBeside, RecommendedRange, Sensitivity, Station, Survey, TensileCracks,
-    Thermal, TieIn, Vary, Wall, WallAround, WallImage, WallInputs, WallStress, WeakPlane,
+    Alternative, Breakout, CrackArc, CrackPlace, DeepestFailure, DirectionMap, Drawn, Ensemble, FailingArcs,
+    FailureDepth, FieldStress, Governs, Limit, LimitKind, Limits, MapInputs, MapOf, MappedDirection, MudColumn,
+    MudHeld, MudPlan, MudPressure, MudState, PlaneTrace, Position, RadialProfile, RangeChoices, RangesBeside,
+    RecommendedRange, Sensitivity, Station, Survey, TensileCracks, Thermal, TieIn, Vary, Wall, WallAround, WallImage,
+    WallInputs, WallStress, WeakPlane,
 };

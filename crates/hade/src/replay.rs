@@ -16,8 +16,9 @@ use crate::stress::{
     Traction,
 };
 use crate::well::{
-    FailingArcs, FailureDepth, FieldStress, Limits, MudHeld, MudPressure, Position, RadialProfile, RangesBeside,
-    RecommendedRange, Sensitivity, SurveyTable, TensileCracks, WallAround, WallImage, WallStress,
+    DirectionMap, Ensemble, FailingArcs, FailureDepth, FieldStress, Limits, MudHeld, MudPressure, Position,
+    RadialProfile, RangesBeside, RecommendedRange, Sensitivity, SurveyTable, TensileCracks, WallAround, WallImage,
+    WallStress,
 };
 
 /// A kind of card: how it is computed and checked.
@@ -118,6 +119,8 @@ pub const KINDS: &[Kind] = &[
     kind::<Sensitivity>(),
     kind::<LimitLog>(),
     kind::<Hindcast>(),
+    kind::<DirectionMap>(),
+    kind::<Ensemble>(),
 ];
 
 fn kind_of(card: &Card) -> Result<&'static Kind> {

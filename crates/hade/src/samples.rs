@@ -34,6 +34,7 @@ pub fn samples() -> Vec<Card> {
     cards.extend(field_samples(sh));
     cards.extend(range_samples(sh));
     cards.extend(along_samples());
+    cards.extend(map_samples(s));
     cards.extend(frame_samples(s, plane));
     cards.extend(depth_samples());
     cards.extend(norths_samples());
@@ -339,12 +340,60 @@ fn range_samples(sh: Stress<Borehole>) -> Vec<Card> {
     };
     let others = [Alternative::criterion(Strength::mogi_coulomb(12.mpa(), 32.deg())), Alternative::permeable(0.8)];
     let vary = [Vary::sh_max(4.mpa()), Vary::cohesion(1.2.mpa()), Vary::inclination(2.deg())];
+    let drawn = [
+        Drawn::sv(Distribution::uniform(64.mpa(), 70.mpa())),
+        Drawn::sh_max(Distribution::normal(58.2.mpa(), 3.mpa())),
+        Drawn::sh_min(Distribution::triangular(44.mpa(), 47.1.mpa(), 50.mpa())),
+        Drawn::cohesion(Distribution::lognormal(12.mpa(), 2.mpa()).within(8.mpa(), 18.mpa())),
+        Drawn::friction_angle(Distribution::normal(32.deg(), 2.deg())),
+    ];
+    let ensemble = wall.ensemble(Draws { count: 600, start: 3 }, &drawn).unwrap();
+    let weak = Wall::new(WallInputs {
+        rock: Rock { strength: Strength::mohr_coulomb_ucs(16.mpa(), 25.deg()), ..rock },
+        ..wall.inputs()
+    });
+    let weak = weak.unwrap().ensemble(
+        Draws { count: 500, start: 11 },
+        &[Drawn::sh_max(Distribution::normal(55.mpa(), 5.mpa())), Drawn::ucs(Distribution::normal(16.mpa(), 8.mpa()))],
+    );
     vec![
+        ensemble
+            .correlated("S_Hmax", "S_hmin", 0.5)
+            .unwrap()
+            .within_friction(0.8)
+            .unwrap()
+            .at_tvd(2950.m())
+            .unwrap()
+            .card(),
+        weak.unwrap().card(),
         raised.card(),
         range.hold(plan).unwrap().card(),
         raised.hold(MudPlan { swab: None, surge: None, ..plan }).unwrap().card(),
         range.beside(&others).unwrap().card(),
         range.sensitivity(&vary).unwrap().card(),
+    ]
+}
+
+/// Maps of every limit, with a path, with one planned direction and without, and with directions that have no safe
+/// pressure.
+fn map_samples(s: Stress) -> Vec<Card> {
+    let strength = Strength::mohr_coulomb(12.mpa(), 32.deg());
+    let rock = Rock { poisson: 0.25, tensile_strength: 2.mpa(), strength };
+    let map = DirectionMap::over(MapInputs { stress: s, pore: 31.2.mpa(), rock, step: 10.deg() }).unwrap();
+    let weak = Rock { strength: Strength::mohr_coulomb_ucs(14.mpa(), 25.deg()), ..rock };
+    let weak = DirectionMap::over(MapInputs { stress: s, pore: 31.2.mpa(), rock: weak, step: 15.deg() }).unwrap();
+    let azimuth = Azimuth::from_true_north(120.deg());
+    let station = |md: f64, i: f64| Station { md: md.m(), inclination: i.deg(), azimuth };
+    let path =
+        [station(0.0, 0.0), station(700.0, 0.5), station(1300.0, 24.0), station(2000.0, 42.0), station(3500.0, 97.0)];
+    let survey = Survey::from_stations(&path).unwrap();
+    vec![
+        map.with_path(&survey.named("KF-3")).unwrap().card(),
+        map.of(MapOf::UpperShear).unwrap().card(),
+        map.with_planned(Attitude { inclination: 42.deg(), azimuth }).unwrap().of(MapOf::Initiation).unwrap().card(),
+        map.of(MapOf::Width).unwrap().card(),
+        weak.card(),
+        weak.of(MapOf::Width).unwrap().card(),
     ]
 }
 

@@ -47,6 +47,7 @@ mod site;
 mod turn;
 pub(crate) mod vector;
 
+pub(crate) use attitude::borehole_axes;
 pub use attitude::{Attitude, NamedAttitude};
 pub use axes::Axes;
 pub(crate) use azimuth::three_figures;

@@ -7,6 +7,8 @@ use crate::card::{Axis, Figure, Layer, Mark, Projection, Role};
 /// The values along one side of a contoured quantity's grid: 841 numbers of four figures in the
 /// record (6 kB), one of them at the centre.
 const GRID: usize = 29;
+/// The same where some are missing: 3721 numbers.
+const FINE_GRID: usize = 61;
 /// Half the length of the arrow of a movement, in radii of the net.
 const ARROW: f64 = 0.13;
 /// How far a net's figure reaches beyond its circle to each side and up and down: room for labels.
@@ -29,12 +31,21 @@ impl Net {
         Net { projection, contoured: false, layers: vec![Layer::Net { projection }] }
     }
 
-    /// A quantity of planes, at the place of each plane's pole: the function takes the plane's unit
-    /// normal that points down. Where it is not finite the net stays blank. Beyond the circle, where
-    /// the poles repeat, the values are those of the same planes, so lines run out to the rim.
-    pub fn contours(mut self, label: &str, value: impl Fn(V3) -> f64) -> Self {
+    /// A quantity of lines, or of planes at the place of each plane's pole: the function takes the unit
+    /// vector that points down. Where it is not finite the net stays blank. Beyond the circle, where
+    /// lines repeat, the values are those of the same lines, so contours run out to the rim.
+    pub fn contours(self, label: &str, value: impl Fn(V3) -> f64) -> Self {
+        self.contours_on(GRID, label, value)
+    }
+
+    /// The same on a finer grid, for a quantity that is missing in places: the edge of a blank follows the grid.
+    pub fn contours_with_blanks(self, label: &str, value: impl Fn(V3) -> f64) -> Self {
+        self.contours_on(FINE_GRID, label, value)
+    }
+
+    fn contours_on(mut self, side: usize, label: &str, value: impl Fn(V3) -> f64) -> Self {
         let projection = self.projection;
-        self.layers.push(Layer::contours(label, GRID, |place| {
+        self.layers.push(Layer::contours(label, side, |place| {
             let n = projection.direction(place);
             value(if n[2] < 0.0 { scale(n, -1.0) } else { n })
         }));
@@ -60,6 +71,22 @@ impl Net {
         if let Some(arc) = great_circle(self.projection, normal) {
             self.layers.push(Layer::Line { label: label.to_owned(), role, points: arc });
         }
+        self
+    }
+
+    /// A line that runs through directions, broken where it leaves the rim and goes on at the other side.
+    pub fn path(mut self, role: Role, directions: &[V3]) -> Self {
+        let mut pieces: Vec<Vec<[f64; 2]>> = Vec::new();
+        for place in directions.iter().filter_map(|d| self.projection.place(*d)).map(rounded) {
+            match pieces.last_mut() {
+                Some(piece) if piece.last().is_some_and(|p| (p[0] - place[0]).hypot(p[1] - place[1]) < 0.5) => {
+                    piece.push(place);
+                }
+                _ => pieces.push(vec![place]),
+            }
+        }
+        let lines = pieces.into_iter().filter(|piece| piece.len() > 1);
+        self.layers.extend(lines.map(|piece| Layer::line("", role, piece)));
         self
     }
 

@@ -40,4 +40,5 @@ pub(crate) use number::{Jet, Number};
 pub use rock::Rock;
 pub use rock_mass::{RockMass, RockMassInputs, RockMassOutcome};
 pub use strength::Strength;
+pub(crate) use strength::StrengthNumber;
 pub use weak_rock::{PlaneStrength, WeakRock, WeakRockInputs, WeakRockMode, WeakRockOutcome};

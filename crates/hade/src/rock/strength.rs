@@ -33,6 +33,18 @@ enum Stated {
     HoekBrown(HoekBrown),
 }
 
+/// A number that a strength may be stated by.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub(crate) enum StrengthNumber {
+    Cohesion,
+    Ucs,
+    FrictionAngle,
+    SigmaCi,
+    IntactConstant,
+    Gsi,
+    Disturbance,
+}
+
 impl Strength {
     /// Mohr–Coulomb by cohesion (zero or more) and friction angle (0° or more, below 90°).
     pub fn mohr_coulomb(cohesion: Pressure, friction_angle: Angle) -> Self {
@@ -79,6 +91,35 @@ impl Strength {
     /// Hoek–Brown (2002 edition) of a rock mass; with GSI 100 and D 0, of intact rock.
     pub fn hoek_brown(rock_mass: HoekBrown) -> Self {
         Strength(Stated::HoekBrown(rock_mass))
+    }
+
+    /// The same with one of its numbers (in SI) in place of that which was stated; a number it was not stated by
+    /// changes nothing.
+    pub(crate) fn with(self, number: StrengthNumber, si: f64) -> Self {
+        let mut stated = self.0;
+        match &mut stated {
+            Stated::MohrCoulombUcs { ucs, friction_angle } => match number {
+                StrengthNumber::Ucs => *ucs = Pressure::from_si(si),
+                StrengthNumber::FrictionAngle => *friction_angle = Angle::from_si(si),
+                _ => {}
+            },
+            Stated::MohrCoulomb { cohesion, friction_angle }
+            | Stated::MogiCoulomb { cohesion, friction_angle }
+            | Stated::ModifiedLade { cohesion, friction_angle }
+            | Stated::DruckerPrager { cohesion, friction_angle, .. } => match number {
+                StrengthNumber::Cohesion => *cohesion = Pressure::from_si(si),
+                StrengthNumber::FrictionAngle => *friction_angle = Angle::from_si(si),
+                _ => {}
+            },
+            Stated::HoekBrown(mass) => match number {
+                StrengthNumber::SigmaCi => mass.sigma_ci = Pressure::from_si(si),
+                StrengthNumber::IntactConstant => mass.m_i = si,
+                StrengthNumber::Gsi => mass.gsi = si,
+                StrengthNumber::Disturbance => mass.disturbance = si,
+                _ => {}
+            },
+        }
+        Strength(stated)
     }
 
     /// How much more the rock bears, in the measure of its criterion (Mohr–Coulomb: UCS + q σ3' −
@@ -274,7 +315,8 @@ impl Strength {
                     ),
                 ));
             }
-            if !self.law().size().is_finite() || !self.law().excess([2.0, 1.0, 0.5]).is_finite() {
+            let law = self.law();
+            if !law.size().is_finite() || !law.excess([2.0, 1.0, 0.5]).is_finite() {
                 return Err(Error::out_of_range(
                     "friction angle",
                     with_typed_unit(phi),

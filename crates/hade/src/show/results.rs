@@ -17,8 +17,9 @@ use crate::stress::{
     Traction, TractionVector,
 };
 use crate::well::{
-    FailingArcs, FailureDepth, FieldStress, Limits, MudHeld, MudPressure, Position, RadialProfile, RangesBeside,
-    RecommendedRange, Sensitivity, SurveyTable, TensileCracks, WallAround, WallImage, WallStress,
+    DirectionMap, Ensemble, FailingArcs, FailureDepth, FieldStress, Limits, MudHeld, MudPressure, Position,
+    RadialProfile, RangesBeside, RecommendedRange, Sensitivity, SurveyTable, TensileCracks, WallAround, WallImage,
+    WallStress,
 };
 
 // By name and not for every `T: Explain`, because then no reference to something that shows itself could show
@@ -56,7 +57,7 @@ shown_by_cards! {
     CriticalPlanes, FailureEnvelope, FaultSlip, FrictionLimit, FrictionalBounds, RankedFaults, RockMass,
     StrengthMargin, WeakRock,
     // The hole and its wall.
-    FailingArcs, FailureDepth, FieldStress, Limits, MudHeld, MudPressure, Position, RadialProfile, RangesBeside,
+    DirectionMap, Ensemble, FailingArcs, FailureDepth, FieldStress, Limits, MudHeld, MudPressure, Position, RadialProfile, RangesBeside,
     RecommendedRange, Sensitivity, SurveyTable, TensileCracks, WallAround, WallImage, WallStress,
     // The field, and along the hole.
     Hindcast, LimitLog, Overburden, PressureAtDepth,

@@ -25,11 +25,13 @@
 //! steps that cards share in `direction.rs` and `method.rs`; the routes of the checks in `second_route`. Then
 //! the results, a folder each, with card, check and figure beside them. A folder imports only from those before it:
 //! `direction, round ← elastic ← shear ← setup ← wall, second_route ← method ← stress, around, tension ←
-//! failure_depth, limits, unrolled ← range ← sensitivity`.
+//! failure_depth, limits, unrolled ← direction_map, range ← sensitivity ← ensemble`.
 
 mod around;
 mod direction;
+mod direction_map;
 mod elastic;
+mod ensemble;
 mod failure_depth;
 mod limits;
 mod method;
@@ -47,9 +49,11 @@ mod unrolled;
 mod wall;
 
 pub use around::{ArcsOutcome, AroundOutcome, Breakout, FailingArcs, WallAround};
+pub use direction_map::{DirectionMap, DirectionMapInputs, MapInputs, MapOf, MapOutcome, MappedDirection};
+pub use ensemble::{Drawn, Effect, Ensemble, EnsembleInputs, EnsembleOutcome, FirstOrder};
 pub use failure_depth::{DeepestFailure, DepthOutcome, FailureDepth};
 pub(crate) use limits::shown as limit_shown;
-pub use limits::{DirectionMap, Limit, LimitKind, Limits, LimitsInputs, LimitsOutcome, MapInputs};
+pub use limits::{Limit, LimitKind, Limits, LimitsInputs, LimitsOutcome};
 pub use range::{
     Alternative, BesideInputs, BesideOutcome, GovernedPressure, Governs, HeldInputs, HeldOutcome, HeldPressure,
     MudHeld, MudPlan, MudState, RaisedTop, RangeBeside, RangeChoices, RangeEnd, RangeInputs, RangeOutcome,

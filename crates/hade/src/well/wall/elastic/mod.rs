@@ -2,8 +2,10 @@
 
 mod effective;
 mod field;
+mod in_hole;
 mod kirsch;
 
 pub(crate) use effective::{EffectiveWall, Place};
 pub(crate) use field::{AtPlace, ElasticField};
+pub(crate) use in_hole::in_hole;
 pub(crate) use kirsch::{AtWall, Kirsch};

@@ -165,6 +165,13 @@ impl Limits {
     }
 
     fn steps(&self) -> Vec<Step> {
+        let mut steps = self.worked_all(&[self.lower_shear, self.upper_shear, self.initiation]);
+        steps.push(Step::Table { table: self.table() });
+        steps
+    }
+
+    /// Some of these limits with the numbers put in.
+    pub(crate) fn worked_all(&self, limits: &[Limit]) -> Vec<Step> {
         let mut steps = self.wall.strength().steps();
         steps.push(Step::matrix(
             "S'",
@@ -173,10 +180,9 @@ impl Limits {
             "MPa",
             "top of hole, right, along the hole",
         ));
-        for limit in [self.lower_shear, self.upper_shear, self.initiation] {
-            steps.extend(self.worked(&limit));
+        for limit in limits {
+            steps.extend(self.worked(limit));
         }
-        steps.push(Step::Table { table: self.table() });
         steps
     }
 

@@ -4,6 +4,7 @@
 mod between;
 mod circle;
 mod edges;
+mod summit;
 mod wave;
 
 pub(crate) use between::{highest_between, root_between};
@@ -11,4 +12,5 @@ pub(crate) use circle::{
     Below, CIRCLE, Circle, OnCircle, Peak, SAME, SAMPLES, STEP, Top, greatest, greatest_beside, on_circle, smallest,
 };
 pub(crate) use edges::{Edges, edges};
+pub(crate) use summit::{Summit, climbed, only_touches};
 pub(crate) use wave::Wave;

@@ -8,4 +8,5 @@ mod varied_wall;
 mod vary;
 
 pub use sensitivity::{ChangedEnds, ChangedRange, Sensitivity, SensitivityInputs, SensitivityOutcome};
+pub(crate) use vary::Varied;
 pub use vary::Vary;

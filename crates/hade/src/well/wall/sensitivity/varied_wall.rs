@@ -30,13 +30,13 @@ impl Vary {
     ///
     /// # Errors
     /// When the wall has no such input.
-    pub(super) fn value(self, wall: &WallSetup) -> Result<f64> {
+    pub(crate) fn value(self, wall: &WallSetup) -> Result<f64> {
         let inputs = &wall.inputs;
         let horizontal = || geographic(wall).horizontal_stresses();
         let hole = inputs.stress.attitude();
         let missing = |instead: &str| {
             Error::not_physical(
-                format!("A sensitivity to the {} of {}", self.name(), inputs.rock.strength.name()),
+                format!("Varying the {} of {}", self.name(), inputs.rock.strength.name()),
                 instead.to_owned(),
             )
         };
@@ -55,7 +55,7 @@ impl Vary {
             Varied::HoleAzimuth => hole.map_or(Ok(f64::NAN), |hole| hole.azimuth.true_north().map(Quantity::si)),
             Varied::Biot => wall.seepage.map(|s| s.biot).ok_or_else(|| {
                 Error::not_physical(
-                    "A sensitivity to Biot's coefficient of an impermeable wall",
+                    "Varying Biot's coefficient of an impermeable wall",
                     "it has no part in it; make the wall permeable or leave it out.",
                 )
             }),
@@ -81,7 +81,7 @@ impl Vary {
             return Ok(*horizontal);
         }
         Err(Error::not_physical(
-            format!("A sensitivity to the {} where all horizontal stresses are equal", self.name()),
+            format!("Varying the {} where all horizontal stresses are equal", self.name()),
             "there is no larger or smaller one; vary the vertical stress, or state horizontal stresses that differ.",
         ))
     }

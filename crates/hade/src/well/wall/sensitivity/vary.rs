@@ -16,7 +16,7 @@ pub struct Vary {
 
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize)]
 #[serde(rename_all = "snake_case")]
-pub(super) enum Varied {
+pub(crate) enum Varied {
     VerticalStress,
     LargerHorizontal,
     SmallerHorizontal,
@@ -36,8 +36,48 @@ pub(super) enum Varied {
     Biot,
 }
 
+impl Varied {
+    /// Symbol and name of the input, and how its number is written.
+    pub(crate) fn about(self) -> (&'static str, &'static str, Measure) {
+        use Measure::{Angle, Number, Pressure};
+        match self {
+            Varied::VerticalStress => ("S_v", "vertical stress", Pressure),
+            Varied::LargerHorizontal => ("S_Hmax", "larger horizontal stress", Pressure),
+            Varied::SmallerHorizontal => ("S_hmin", "smaller horizontal stress", Pressure),
+            Varied::HorizontalAzimuth => ("A_Hmax", "azimuth of the larger horizontal stress", Angle),
+            Varied::PorePressure => ("P_p", "pore pressure", Pressure),
+            Varied::Poisson => ("ν", "Poisson's ratio", Number),
+            Varied::TensileStrength => ("T_0", "tensile strength", Pressure),
+            Varied::Cohesion => ("c", "cohesion", Pressure),
+            Varied::Ucs => ("UCS", "uniaxial compressive strength", Pressure),
+            Varied::FrictionAngle => ("φ", "friction angle", Angle),
+            Varied::SigmaCi => ("σ_ci", "uniaxial compressive strength of the intact rock", Pressure),
+            Varied::IntactConstant => ("m_i", "Hoek–Brown constant of the intact rock", Number),
+            Varied::Gsi => ("GSI", "geological strength index", Number),
+            Varied::Disturbance => ("D", "disturbance factor", Number),
+            Varied::Inclination => ("i", "inclination of the hole", Angle),
+            Varied::HoleAzimuth => ("a", "azimuth of the hole", Angle),
+            Varied::Biot => ("α", "Biot's coefficient", Number),
+        }
+    }
+
+    /// A number of this input with its unit.
+    pub(crate) fn shown(self, si: f64) -> String {
+        match self.about().2 {
+            Measure::Pressure => with_typed_unit(Pressure::from_si(si)),
+            Measure::Angle => with_typed_unit(Angle::from_si(si)),
+            Measure::Number => with_typed_unit(si),
+        }
+    }
+
+    /// This input varied by an amount in SI.
+    pub(crate) fn by(self, si: f64) -> Vary {
+        Vary { input: self, by: si }
+    }
+}
+
 /// How the number of an input is written.
-enum Measure {
+pub(crate) enum Measure {
     Pressure,
     Angle,
     Number,
@@ -118,26 +158,7 @@ impl Vary {
 
     /// Symbol and name of the input, and how its number is written.
     fn about(self) -> (&'static str, &'static str, Measure) {
-        use Measure::{Angle, Number, Pressure};
-        match self.input {
-            Varied::VerticalStress => ("S_v", "vertical stress", Pressure),
-            Varied::LargerHorizontal => ("S_Hmax", "larger horizontal stress", Pressure),
-            Varied::SmallerHorizontal => ("S_hmin", "smaller horizontal stress", Pressure),
-            Varied::HorizontalAzimuth => ("A_Hmax", "azimuth of the larger horizontal stress", Angle),
-            Varied::PorePressure => ("P_p", "pore pressure", Pressure),
-            Varied::Poisson => ("ν", "Poisson's ratio", Number),
-            Varied::TensileStrength => ("T_0", "tensile strength", Pressure),
-            Varied::Cohesion => ("c", "cohesion", Pressure),
-            Varied::Ucs => ("UCS", "uniaxial compressive strength", Pressure),
-            Varied::FrictionAngle => ("φ", "friction angle", Angle),
-            Varied::SigmaCi => ("σ_ci", "uniaxial compressive strength of the intact rock", Pressure),
-            Varied::IntactConstant => ("m_i", "Hoek–Brown constant of the intact rock", Number),
-            Varied::Gsi => ("GSI", "geological strength index", Number),
-            Varied::Disturbance => ("D", "disturbance factor", Number),
-            Varied::Inclination => ("i", "inclination of the hole", Angle),
-            Varied::HoleAzimuth => ("a", "azimuth of the hole", Angle),
-            Varied::Biot => ("α", "Biot's coefficient", Number),
-        }
+        self.input.about()
     }
 
     /// "S_Hmax".
@@ -161,11 +182,7 @@ impl Vary {
 
     /// A number of this input with its unit.
     pub(super) fn shown(self, si: f64) -> String {
-        match self.about().2 {
-            Measure::Pressure => with_typed_unit(Pressure::from_si(si)),
-            Measure::Angle => with_typed_unit(Angle::from_si(si)),
-            Measure::Number => with_typed_unit(si),
-        }
+        self.input.shown(si)
     }
 
     /// The amount, as a choice.

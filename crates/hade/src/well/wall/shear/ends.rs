@@ -9,7 +9,9 @@
 use super::shear_wall::Window;
 use crate::rock::{Jet, MohrCoulomb};
 use crate::well::wall::elastic::Kirsch;
-use crate::well::wall::round::{CIRCLE, OnCircle, Peak, SAME, Wave, greatest, on_circle, smallest};
+use crate::well::wall::round::{
+    CIRCLE, OnCircle, Peak, SAME, Summit, Wave, climbed, greatest, on_circle, only_touches, smallest,
+};
 
 /// A wall that is impermeable, of rock without a plane of weakness; Pa.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -28,33 +30,76 @@ impl ClosedForm {
 
     /// The pressures between which the whole wall holds.
     pub fn window(&self) -> Window {
-        if let (Some(lower), Some(upper)) = (self.plain_lower(), self.plain_upper()) {
+        if let Some((lower, upper)) = self.ends() {
             return Window::Open { lower: Some(lower), upper: Some(upper) };
         }
-        if !self.holds_somewhere() {
-            return Window::Closed { crossed: None };
+        // The two have a meaning by themselves only where no place is beyond help.
+        let each = || CIRCLE.cos.iter().zip(&CIRCLE.sin).all(|(c, s)| self.interval_at(*c, *s).is_some());
+        let crossed = (self.holds_somewhere() && each())
+            .then(|| (greatest(&self.lower_end(), self.scale).value, smallest(self.upper_end(), self.scale).value));
+        Window::Closed { crossed }
+    }
+
+    /// Both ends, where any pressure is safe for the whole wall.
+    pub fn ends(&self) -> Option<(Peak, Peak)> {
+        self.ends_beside(self.plain_lower())
+    }
+
+    /// The same where the lower end is known, or known not to be found plainly.
+    fn ends_beside(&self, lower: Option<Peak>) -> Option<(Peak, Peak)> {
+        // Mostly a closed wall shows it at one of few places.
+        if lower.is_none() && self.is_closed_at_a_crest() {
+            return None;
         }
-        let lower = greatest(&self.lower_end(), self.scale);
-        let upper = smallest(self.upper_end(), self.scale);
-        if lower.value <= upper.value {
-            Window::Open { lower: Some(lower), upper: Some(upper) }
-        } else {
-            // The two have a meaning by themselves only where no place is beyond help.
-            let each = CIRCLE.cos.iter().zip(&CIRCLE.sin).all(|(c, s)| self.interval_at(*c, *s).is_some());
-            Window::Closed { crossed: each.then_some((lower.value, upper.value)) }
+        let upper = self.plain_upper();
+        // Either end, where it is found plainly, shows that some pressure is safe.
+        let shown = lower.is_some() || upper.is_some();
+        if !shown && !self.holds_somewhere() {
+            return None;
         }
+        let lower = lower.unwrap_or_else(|| greatest(&self.lower_end(), self.scale));
+        let upper = upper.unwrap_or_else(|| smallest(self.upper_end(), self.scale));
+        (shown || lower.value <= upper.value).then_some((lower, upper))
     }
 
     /// The lower end alone.
     #[inline]
     pub fn lower(&self) -> Option<f64> {
-        if let Some(lower) = self.plain_lower() {
-            return Some(lower.value);
+        match self.plain_lower() {
+            Some(lower) => Some(lower.value),
+            None => self.ends_beside(None).map(|(lower, _)| lower.value),
         }
-        match self.window() {
-            Window::Open { lower, .. } => lower.map(|peak| peak.value),
-            Window::Closed { .. } => None,
+    }
+
+    /// Whether the ends at the crests and troughs of the hoop stress and of the shear stress already leave no pressure
+    /// between them.
+    fn is_closed_at_a_crest(&self) -> bool {
+        let (ends, upper_ends) = (self.lower_end(), self.upper_end());
+        let (within, discriminant) = (self.within(), self.discriminant());
+        let (mut low, mut high) = (f64::NEG_INFINITY, f64::INFINITY);
+        for wave in [self.kirsch.hoop, self.kirsch.shear_squared] {
+            let swing = wave.amplitude();
+            if swing <= SAME * self.scale {
+                continue;
+            }
+            for sign in [1.0, -1.0] {
+                let (c, s) = (sign * wave.cos / swing, sign * wave.sin / swing);
+                if within.at(c, s) < 0.0 || discriminant.value(c, s) < 0.0 {
+                    return true;
+                }
+                low = low.max(ends.value(c, s));
+                high = high.min(upper_ends.value(c, s));
+            }
         }
+        low > high
+    }
+
+    /// Whether by bounds on the whole wall nothing fails at a pressure, and it does not part with a tensile strength.
+    /// Where they do not say so, it may still hold.
+    #[inline]
+    pub fn surely_holds(&self, pressure: f64, tensile: f64) -> bool {
+        let bounds = self.bounds(pressure);
+        bounds.closing && bounds.within && bounds.pushed && bounds.least >= -tensile
     }
 
     /// Both ends at one place, where any pressure holds there.
@@ -78,7 +123,10 @@ impl ClosedForm {
 
     /// The upper end where the hole is pushed out, likewise.
     fn plain_upper(&self) -> Option<Peak> {
-        let peak = smallest(self.upper_end().pushed(), self.scale);
+        let pushed = self.upper_end().pushed();
+        let lowest = pushed.root.turned_over().highest(self.kirsch.hoop.scaled(-1.0, 0.0), self.scale);
+        let peak =
+            lowest.map(|peak| Peak { value: -peak.value, ..peak }).unwrap_or_else(|| smallest(pushed, self.scale));
         let bounds = self.bounds(peak.value);
         (bounds.within && bounds.closing).then_some(peak)
     }
@@ -95,13 +143,14 @@ impl ClosedForm {
         let across = pressure - self.pore;
         let (m0, m1) = (mean.mean - 0.5 * pressure - self.pore, mean.amplitude());
         let (d0, d1) = (half.mean - 0.5 * pressure, half.amplitude());
-        let mut holds = Bounds { closing: true, within: true, pushed: true };
+        let mut holds = Bounds { closing: true, within: true, pushed: true, least: across };
         for u in [1.0, -1.0] {
             let (m, d) = (m0 + u * m1, d0 + u * d1);
             let radius = (d * d + shear).sqrt();
             holds.closing &= m + radius <= ucs + q * across;
             holds.within &= (1.0 + q) * radius <= ucs + (q - 1.0) * m;
             holds.pushed &= across + q * (radius - m) <= ucs;
+            holds.least = holds.least.min(m - radius);
         }
         holds
     }
@@ -159,6 +208,8 @@ struct Bounds {
     closing: bool,
     within: bool,
     pushed: bool,
+    /// The least effective principal stress is not below it.
+    least: f64,
 }
 
 /// ½ (x + y) ± √((½ (x − y))² + v), with x, y, v as waves.
@@ -184,55 +235,28 @@ impl Root {
     /// The highest place of the larger root, if Newton climbs to one from the crest of the hoop
     /// stress that is proved to be the highest of all: nothing is scanned.
     ///
-    /// With p the value there, (p − x)(p − y) − v is a trigonometric polynomial of degree two with a
-    /// double zero at that place: (1 − cos ψ)(A + B cos ψ + C sin ψ), ψ counted from it. It is nowhere
-    /// below zero, so p nowhere below the root, when A ≥ √(B² + C²) and p is above x and y all round.
+    /// With p the value there, (p − x)(p − y) − v has a double zero at that place; it is nowhere below zero, so p
+    /// nowhere below the root, when [`only_touches`] says so.
     #[inline]
     fn highest(&self, hoop: Wave, scale: f64) -> Option<Peak> {
         let swing = hoop.amplitude();
         if swing <= SAME * scale {
             return None;
         }
-        let (mut c, mut s) = (hoop.cos / swing, hoop.sin / swing);
-        let mut jet = self.jet(1.0, c, s);
-        let mut settled = false;
-        for _ in 0..8 {
-            if jet.bend >= 0.0 {
-                return None;
-            }
-            let step = -jet.slope / jet.bend;
-            if step.abs() > 1.0 {
-                return None;
-            }
-            // Turned by the step; a short one by its series.
-            let (sin, cos) = if step.abs() < 1e-3 {
-                let square = step * step;
-                (step * (1.0 - square / 6.0), 1.0 - square * (0.5 - square / 24.0))
-            } else {
-                step.sin_cos()
-            };
-            (c, s) = (c * cos - s * sin, s * cos + c * sin);
-            if step.abs() < 1e-9 {
-                settled = true;
-                break;
-            }
-            jet = self.jet(1.0, c, s);
-        }
+        let start = (hoop.cos / swing, hoop.sin / swing);
+        let Summit { jet, c, s } = climbed(|c, s| self.jet(1.0, c, s), start)?;
         let p = jet.value;
-        let apart = |w: Wave| [p - w.mean, -(w.cos * c + w.sin * s), w.cos * s - w.sin * c];
+        let below = |w: Wave| w.scaled(-1.0, p);
         let x = self.mean.joined(1.0, self.half, 1.0);
         let y = self.mean.joined(-1.0, self.half, 1.0);
-        let ([p0, p1, p2], [q0, q1, q2]) = (apart(x), apart(y));
-        let constant = p0 * q0 + 0.5 * (p1 * q1 + p2 * q2) - self.v.mean;
-        let (c2, s2) = (0.5 * (p1 * q1 - p2 * q2), 0.5 * (p1 * q2 + p2 * q1));
-        let rest = constant - c2;
-        let above = |[mean, cos, sin]: [f64; 3]| mean > 0.0 && mean * mean >= cos * cos + sin * sin;
-        let proved = rest > 0.0 && rest * rest > 4.0 * (c2 * c2 + s2 * s2) * (1.0 + 1e-9);
-        (settled && proved && above([p0, p1, p2]) && above([q0, q1, q2])).then(|| Peak {
-            phi: on_circle(s.atan2(c)),
-            value: p,
-            flat: false,
-        })
+        let proved = only_touches(below(x), below(y), self.v.mean, c, s);
+        proved.then(|| Peak { phi: on_circle(s.atan2(c)), value: p, flat: false })
+    }
+
+    /// The smaller root turned upside down is the larger root of this.
+    #[inline]
+    fn turned_over(&self) -> Root {
+        Root { mean: self.mean.scaled(-1.0, 0.0), ..*self }
     }
 
     /// The larger and the smaller.

@@ -118,15 +118,24 @@ impl ShearWall {
         if let Some(closed) = self.closed_form() {
             return closed.window();
         }
+        match self.ends() {
+            Some([lower, upper]) => Window::Open { lower, upper },
+            None => Window::Closed { crossed: self.crossed() },
+        }
+    }
+
+    /// Both ends of them, where any pressure is safe for the whole wall; an end that is `None` is none. For loops
+    /// over many walls: what it would take where none is safe is not looked for.
+    pub fn ends(&self) -> Option<[Option<Peak>; 2]> {
+        if let Some(closed) = self.closed_form() {
+            return closed.ends().map(|(lower, upper)| [Some(lower), Some(upper)]);
+        }
         if !self.is_convex() {
-            return match self.spans().first() {
-                Some(lowest) => Window::Open { lower: lowest.lower, upper: lowest.upper },
-                None => Window::Closed { crossed: self.crossed() },
-            };
+            return self.spans().first().map(|lowest| [lowest.lower, lowest.upper]);
         }
         match (self.searched(-1.0), self.searched(1.0)) {
-            (Side::Never, _) | (_, Side::Never) => Window::Closed { crossed: self.crossed() },
-            (lower, upper) => Window::Open { lower: lower.peak(), upper: upper.peak() },
+            (Side::Never, _) | (_, Side::Never) => None,
+            (lower, upper) => Some([lower.peak(), upper.peak()]),
         }
     }
 

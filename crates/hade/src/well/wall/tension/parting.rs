@@ -10,7 +10,7 @@
 
 use crate::rock::{Jet, Number};
 use crate::well::wall::elastic::EffectiveWall;
-use crate::well::wall::round::{OnCircle, Peak, greatest, smallest};
+use crate::well::wall::round::{OnCircle, Peak, SAME, Summit, climbed, greatest, on_circle, only_touches, smallest};
 
 /// At which pressure a wall parts.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -89,16 +89,35 @@ fn in_the_wall(wall: &EffectiveWall, tensile: f64, scale: f64) -> Option<Peak> {
     if wall.axial_falls <= 0.0 && room.mean - room.amplitude() <= 0.0 {
         return None;
     }
-    Some(smallest(Parts { wall, tensile }, scale + tensile))
+    let parts = Parts { wall, tensile };
+    Some(parts.lowest(scale).unwrap_or_else(|| smallest(parts, scale + tensile)))
 }
 
 /// The parting pressure round the hole.
+#[derive(Clone, Copy)]
 struct Parts<'a> {
     wall: &'a EffectiveWall,
     tensile: f64,
 }
 
 impl Parts<'_> {
+    /// The lowest place of an impermeable wall, if Newton climbs down to one from the trough of the hoop stress that is
+    /// proved to be the lowest of all: nothing is scanned. At the pressure x there (H + T₀ − x)(Z + T₀) − τθz² has a
+    /// double zero.
+    fn lowest(&self, scale: f64) -> Option<Peak> {
+        let Parts { wall, tensile } = *self;
+        let swing = wall.hoop.amplitude();
+        if wall.axial_falls > 0.0 || swing <= SAME * scale {
+            return None;
+        }
+        let trough = (-wall.hoop.cos / swing, -wall.hoop.sin / swing);
+        let Summit { jet, c, s } = climbed(|c, s| -self.jet(0, c, s), trough)?;
+        let x = -jet.value;
+        let room = wall.hoop.scaled(1.0, tensile - wall.hoop_falls * x);
+        let proved = only_touches(room, wall.axial.scaled(1.0, tensile), wall.shear_squared.mean, c, s);
+        proved.then(|| Peak { phi: on_circle(s.atan2(c)), value: x, flat: false })
+    }
+
     /// The smaller root x of (H + T₀ − h x)(Z + T₀ − k x) = τθz², in the form that also holds for
     /// k = 0.
     #[inline(always)]
