@@ -45,7 +45,7 @@ fn hole(inclination: f64, azimuth: f64) -> Attitude {
 
 fn maps() -> (DirectionMap, DirectionMap) {
     let base = Numbers { sv: 60.0, sh_max: 55.0, sh_min: 42.0, azimuth: 35.0, pore: 22.0, ucs: 30.0, phi: 32.0 };
-    let inputs = MapInputs { stress: base.stress(), pore: 22.mpa(), rock: base.rock(), step: 1.deg() };
+    let inputs = MapInputs { stress: base.stress(), pore: base.pore.mpa(), rock: base.rock(), step: 1.deg() };
     let lower = DirectionMap::over(inputs).expect("a map");
     let upper = lower.of(MapOf::UpperShear).expect("a map");
     (lower, upper)

@@ -8,7 +8,7 @@ use super::distribution::Spread;
 use super::normal;
 use super::philox::{block, uniform};
 use crate::error::{Error, Result};
-use crate::interrupt;
+use crate::progress::Progress;
 
 /// How many draws, and where the random numbers start. The same start gives the same draws.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize)]
@@ -133,11 +133,12 @@ pub(crate) fn for_each_draw<T: Send + Copy + Default>(
     of: impl Fn(&Draw) -> T + Sync,
 ) -> Vec<T> {
     let mut out = vec![T::default(); count as usize];
+    let progress = Progress::new(&format!("{count} draws"), out.len());
     out.par_chunks_mut(CHUNK).enumerate().for_each(|(chunk, cells)| {
-        interrupt::check();
         for (k, cell) in cells.iter_mut().enumerate() {
             *cell = of(&sampler.draw((chunk * CHUNK + k) as u64));
         }
+        progress.advance(cells.len());
     });
     out
 }

@@ -5,7 +5,7 @@ use rayon::prelude::*;
 use super::direction_map::MapInputs;
 use super::map_of::MapOf;
 use crate::error::{Error, Result};
-use crate::interrupt;
+use crate::progress::Progress;
 use crate::stress::tensor::Tensor;
 use crate::units::{Pressure, Quantity, with_typed_unit};
 use crate::well::wall::elastic::{Kirsch, in_hole};
@@ -77,14 +77,15 @@ impl Grid {
         let (law, pore, poisson) = (inputs.rock.strength.law(), inputs.pore.si(), inputs.rock.poisson);
         let turns: Vec<(f64, f64)> = (0..self.azimuths).map(|k| (k as f64 * self.step).sin_cos()).collect();
         let mut values = vec![None; self.rows * self.azimuths];
+        let progress = Progress::new(&format!("limits of {} directions", values.len()), values.len());
         values.par_chunks_mut(self.azimuths).enumerate().for_each(|(row, cells)| {
-            interrupt::check();
             let inclined = (row as f64 * self.step).sin_cos();
             for (cell, turned) in cells.iter_mut().zip(&turns) {
                 let kirsch = Kirsch::new(in_hole(far, inclined, *turned), poisson);
                 let wall = ShearWall::new(kirsch, law, None, pore, 0.0, 0.0);
                 *cell = value(&wall).map(Pressure::from_si);
             }
+            progress.advance(cells.len());
         });
         values
     }
