@@ -210,9 +210,67 @@ let trace: PlaneTrace = image.plane().ok_or("no plane")?;
 let limits: Limits = wall.limits();
 let lower: Limit = limits.lower_shear;
 assert_eq!(lower.kind(), LimitKind::LowerShear);
-let map = DirectionMap::over(MapInputs { stress: s, pore, rock, step: 5.deg() })?;
+let map = DirectionMap::over(MapInputs { stress: s, pore, rock, step: 5.deg() })?.with_path(&survey)?;
+let best: Option<MappedDirection> = map.of(MapOf::Initiation)?.best();
 let vertical = Attitude { inclination: 0.deg(), azimuth: Azimuth::from_true_north(0.deg()) };
-(limits, lower.pressure(), map.lower_shear(vertical)?)
+assert!(best.is_some());
+(limits, lower.pressure(), map.at(vertical)?, map)
+// ---
+// How sure that is: inputs drawn from distributions. A start gives the same draws again.
+let draws = Draws { count: 2000, start: 7 };
+let ensemble: Ensemble = wall
+    .ensemble(draws, &[
+        Drawn::sh_max(Distribution::normal(68.mpa(), 4.mpa())),
+        Drawn::pore(Distribution::triangular(30.mpa(), 31.2.mpa(), 32.mpa())),
+        Drawn::cohesion(Distribution::lognormal(11.7.mpa(), 1.2.mpa())),
+    ])?
+    .correlated("S_Hmax", "P_p", 0.3)?
+    .at_tvd(depth)?;
+let bottom: Option<Quantiles> = ensemble.bottom();
+assert!(bottom.is_some_and(|of| of.p10 < of.p90));
+ensemble
+// ---
+// Along the hole: stress, pore pressure and rock by depth, in layers, and the limits in each.
+let shale = Layer::from("Shale", Depth::below_rotary_table(2000.m()), rock)?.horizontal_ratios(0.52, 1.0)?;
+let sand_top = TopPlane {
+    depth: Depth::below_rotary_table(2640.m()),
+    north: 0.m(),
+    east: 0.m(),
+    plane: Plane { strike: Azimuth::from_true_north(20.deg()), dip: 2.deg() },
+};
+let drawn_down = Depletion { drawdown: 6.mpa(), sh_min: MinPath::Measured(0.64), sh_max: MaxPath::AsMin };
+let sand = Layer::below_plane("Grebe sand", sand_top, rock)?.horizontal_ratios(0.5, 0.97)?.depleted(drawn_down)?;
+let zero = Depth::below_rotary_table(0.m());
+let ground: Ground = Ground::new(GroundInputs {
+    sv: PressureProfile::from_gradient(vertical_gradient, zero, 0.mpa())?.of("S_v", "vertical stress"),
+    pore: PressureProfile::from_gradient(10.6.mpa_per_km(), zero, 0.mpa())?.of("P_p", "pore pressure"),
+    horizontals: None::<HorizontalProfiles>,
+    sh_max_azimuth: Azimuth::from_true_north(34.6.deg()),
+    layers: vec![shale, sand],
+})?;
+let state: GroundState = ground.at(&survey, 3500.m())?;
+let choices = LogChoices {
+    from: 2900.m(),
+    to: 3600.m(),
+    step: 20.m(),
+    allowed_width: 60.deg(),
+    margin_bottom: 1.mpa(),
+    margin_top: 1.mpa(),
+};
+let section = HoleSection::between("8½ in", 2900.m(), 3600.m());
+let log: LimitLog = LimitLog::with_choices(&survey, &ground, choices)?.with_sections(&[section])?;
+let row: LogRow = log.at(3000.m())?;
+let narrowest: Option<Narrowest> = log.narrowest();
+let in_section: Vec<SectionRange> = log.section_ranges();
+assert!(row.pore < row.sv && narrowest.is_some() && in_section.len() == 1 && state.layer() == "Grebe sand");
+log
+// ---
+// What was met while drilling, held against the limits.
+let met = DrillingEvent { md: 3000.m(), kind: EventKind::Losses, mud_weight: 1.4.sg(), circulating_density: None };
+let hindcast: Hindcast = log.hindcast(&DrillingEvents::from_events(&[met])?, 0.5.mpa())?;
+let first: Vec<HindcastRow> = hindcast.rows();
+assert_eq!(first.len(), 1);
+hindcast
 // ---
 // What to drill with: the range, the mud held against it, other criteria beside it, one input at a time.
 let range: RecommendedRange = wall.recommended(RangeChoices {

@@ -16,6 +16,8 @@ mod records;
 mod refusals;
 #[path = "memo/rerun.rs"]
 mod rerun;
+#[path = "memo/section.rs"]
+mod section;
 #[path = "memo/sign_off.rs"]
 mod sign_off;
 #[path = "memo/states.rs"]

@@ -51,7 +51,8 @@ impl Progress {
         }
     }
 
-    /// So many parts more are done. Ends the cell if it was asked to stop, see [`interrupt::check`].
+    /// So many parts more are done, or begin. Ends the cell if it was asked to stop, see [`interrupt::check`]; where
+    /// threads share the work it is called before a part, because each of those that wait still begins.
     pub fn advance(&self, parts: usize) {
         interrupt::check();
         let done = self.done.fetch_add(parts, Relaxed) + parts;

@@ -135,10 +135,10 @@ pub(crate) fn for_each_draw<T: Send + Copy + Default>(
     let mut out = vec![T::default(); count as usize];
     let progress = Progress::new(&format!("{count} draws"), out.len());
     out.par_chunks_mut(CHUNK).enumerate().for_each(|(chunk, cells)| {
+        progress.advance(cells.len());
         for (k, cell) in cells.iter_mut().enumerate() {
             *cell = of(&sampler.draw((chunk * CHUNK + k) as u64));
         }
-        progress.advance(cells.len());
     });
     out
 }

@@ -47,7 +47,7 @@ impl Explain for Hindcast {
             steps: self.steps(),
             figures: vec![self.figure()],
             notes: self.notes(),
-            topics: ["mud-weight", "limits", "wall", "elastic"].map(str::to_owned).to_vec(),
+            topics: ["mud-weight", "limits", "wall", "elastic", "hindcast"].map(str::to_owned).to_vec(),
         }
     }
 

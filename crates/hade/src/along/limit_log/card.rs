@@ -238,6 +238,7 @@ impl LimitLog {
         let mut topics = vec!["mud-weight", "limits", "breakout", "wall", "elastic", "survey"];
         let layers = self.ground.layers();
         let mut when = |holds: bool, topic: &'static str| topics.extend(holds.then_some(topic));
+        when(layers.iter().any(|layer| layer.depletion.is_some()), "depletion");
         when(layers.iter().any(|layer| layer.creeps), "creep");
         when(layers.iter().any(|layer| layer.seepage.is_some_and(|seepage| seepage.sealing < 1.0)), "permeable-wall");
         when(layers.iter().any(|layer| layer.thermal.is_some()), "thermal");

@@ -79,13 +79,13 @@ impl Grid {
         let mut values = vec![None; self.rows * self.azimuths];
         let progress = Progress::new(&format!("limits of {} directions", values.len()), values.len());
         values.par_chunks_mut(self.azimuths).enumerate().for_each(|(row, cells)| {
+            progress.advance(cells.len());
             let inclined = (row as f64 * self.step).sin_cos();
             for (cell, turned) in cells.iter_mut().zip(&turns) {
                 let kirsch = Kirsch::new(in_hole(far, inclined, *turned), poisson);
                 let wall = ShearWall::new(kirsch, law, None, pore, 0.0, 0.0);
                 *cell = value(&wall).map(Pressure::from_si);
             }
-            progress.advance(cells.len());
         });
         values
     }
