@@ -141,7 +141,6 @@ def standing_by(hade, folder):
 def soak(name):
     k = Kernel(name)
     k.run(CARD)
-    cells = ["let x_{0} = ({0} as f64 + 40.0).mpa();", "s.effective(({0}.0 / 50.0).mpa())?;\nx_{1}", "let x_{0} = x_{1};", "chain_{0}()"]
     took, memory = [], []
     for number in range(500):
         last = 4 * (number // 4)

@@ -13,7 +13,7 @@ fn a_depleted_sand_leaves_no_common_mud_weight() {
     let record = Record::from_json(std::str::from_utf8(&bytes).expect("UTF-8")).expect("a record");
     assert_eq!(record.conflicts, Vec::<String>::new());
     let kinds: Vec<&str> = record.cards().iter().map(|(card, _)| card.kind.as_str()).collect();
-    for kind in ["limit-log", "hindcast", "direction-map", "ensemble"] {
+    for kind in ["limit-log", "hindcast", "direction-map", "wall-ensemble"] {
         assert!(kinds.contains(&kind), "{kinds:?}");
     }
     for (card, _) in record.cards() {
@@ -32,7 +32,7 @@ fn a_depleted_sand_leaves_no_common_mud_weight() {
     assert!((result("limit-log", "lowest top") - top).abs() < 0.01, "{top}");
     assert!(result("limit-log", "highest bottom") > top);
     // P10 of the bottom lies below P90, and the planned direction between the best and the worst.
-    assert!(result("ensemble", "P10 of the bottom") < result("ensemble", "P90 of the bottom"));
+    assert!(result("wall-ensemble", "P10 of the bottom") < result("wall-ensemble", "P90 of the bottom"));
     let planned = result("direction-map", "in the planned direction");
     assert!(result("direction-map", "best") < planned && planned < result("direction-map", "worst"));
     let words = text(&pdf).split_whitespace().collect::<Vec<_>>().join(" ");
