@@ -117,7 +117,7 @@ fn first_and_last(places: &[String]) -> Vec<String> {
 fn a_text_of_a_megabyte_is_refused_wherever_it_stands() {
     let long = json!("x".repeat(1 << 20));
     for place in free_texts() {
-        let said = draft(&with(&place, long.clone())).unwrap_err().to_string();
+        let said = draft(&with(place, long.clone())).unwrap_err().to_string();
         assert!(said.contains(&format!("{place} is a text of 1048576 bytes")), "{place}: {said:.200}");
     }
 }
