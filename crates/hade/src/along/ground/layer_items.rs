@@ -5,6 +5,7 @@ use super::layer::{Layer, LayerTop, TopPlane};
 use crate::card::Item;
 use crate::frames::Depth;
 use crate::units::{Length, Quantity};
+use crate::well::items_beside_rock;
 
 impl Layer {
     /// Its file, or its numbers as they were typed, each with the name of the layer.
@@ -14,7 +15,7 @@ impl Layer {
             None => (self.stated_items(), None),
         };
         items.extend(self.depletion.iter().flat_map(Depletion::items));
-        items.extend(self.wall_items());
+        items.extend(items_beside_rock(self.seepage, self.thermal, self.weak_plane));
         let of = |item: Item| Item { name: format!("{} of {}", item.name, self.name), ..item };
         file.into_iter().chain(items.into_iter().map(of)).collect()
     }
@@ -36,26 +37,6 @@ impl Layer {
         if let Some([min, max]) = self.ratios {
             items.push(Item::typed("K_h", "ratio of effective stress of S_hmin", min));
             items.push(Item::typed("K_H", "ratio of effective stress of S_Hmax", max));
-        }
-        items
-    }
-
-    fn wall_items(&self) -> Vec<Item> {
-        let mut items = Vec::new();
-        if let Some(seepage) = self.seepage {
-            items.push(Item::typed("α", "Biot's coefficient", seepage.biot));
-            items.push(Item::typed("w_s", "sealing of the wall: 0 permeable, 1 impermeable", seepage.sealing).chosen());
-        }
-        if let Some(thermal) = self.thermal {
-            items.push(Item::typed("ΔT", "temperature of the wall less that of the formation", thermal.warming));
-            items.push(Item::typed("E", "Young's modulus", thermal.youngs_modulus));
-            items.push(Item::typed("α_T", "coefficient of linear thermal expansion", thermal.expansion));
-        }
-        if let Some(weak) = self.weak_plane {
-            items.push(weak.plane.strike.item("s_w", "strike of the plane of weakness, dip to its right"));
-            items.push(Item::typed("d_w", "dip of the plane of weakness", weak.plane.dip));
-            items.push(Item::typed("c_w", "cohesion of the plane of weakness", weak.cohesion));
-            items.push(Item::typed("φ_w", "friction angle of the plane of weakness", weak.friction_angle));
         }
         items
     }

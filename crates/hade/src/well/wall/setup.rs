@@ -152,21 +152,7 @@ impl WallSetup {
             Item::typed("P_p", "pore pressure", pore),
         ];
         items.extend(rock.items());
-        if let Some(seepage) = self.seepage {
-            items.push(Item::typed("α", "Biot's coefficient", seepage.biot));
-            items.push(Item::typed("w_s", "sealing of the wall: 0 permeable, 1 impermeable", seepage.sealing).chosen());
-        }
-        if let Some(thermal) = self.thermal {
-            items.push(Item::typed("ΔT", "temperature of the wall less that of the formation", thermal.warming));
-            items.push(Item::typed("E", "Young's modulus", thermal.youngs_modulus));
-            items.push(Item::typed("α_T", "coefficient of linear thermal expansion", thermal.expansion));
-        }
-        if let Some(weak) = self.weak_plane {
-            items.push(weak.plane.strike.item("s_w", "strike of the plane of weakness, dip to its right"));
-            items.push(Item::typed("d_w", "dip of the plane of weakness", weak.plane.dip));
-            items.push(Item::typed("c_w", "cohesion of the plane of weakness", weak.cohesion));
-            items.push(Item::typed("φ_w", "friction angle of the plane of weakness", weak.friction_angle));
-        }
+        items.extend(items_beside_rock(self.seepage, self.thermal, self.weak_plane));
         items
     }
 
@@ -224,4 +210,30 @@ impl WallSetup {
         }
         topics
     }
+}
+
+/// What a wall has beside its stress and rock as inputs of a card: how it is sealed, its temperature, a plane of
+/// weakness.
+pub(crate) fn items_beside_rock(
+    seepage: Option<Seepage>,
+    thermal: Option<Thermal>,
+    weak_plane: Option<WeakPlane>,
+) -> Vec<Item> {
+    let mut items = Vec::new();
+    if let Some(seepage) = seepage {
+        items.push(Item::typed("α", "Biot's coefficient", seepage.biot));
+        items.push(Item::typed("w_s", "sealing of the wall: 0 permeable, 1 impermeable", seepage.sealing).chosen());
+    }
+    if let Some(thermal) = thermal {
+        items.push(Item::typed("ΔT", "temperature of the wall less that of the formation", thermal.warming));
+        items.push(Item::typed("E", "Young's modulus", thermal.youngs_modulus));
+        items.push(Item::typed("α_T", "coefficient of linear thermal expansion", thermal.expansion));
+    }
+    if let Some(weak) = weak_plane {
+        items.push(weak.plane.strike.item("s_w", "strike of the plane of weakness, dip to its right"));
+        items.push(Item::typed("d_w", "dip of the plane of weakness", weak.plane.dip));
+        items.push(Item::typed("c_w", "cohesion of the plane of weakness", weak.cohesion));
+        items.push(Item::typed("φ_w", "friction angle of the plane of weakness", weak.friction_angle));
+    }
+    items
 }
