@@ -194,8 +194,10 @@ pub(crate) fn givens(sources: &Sources<'_>) -> Vec<GivenView> {
         .givens
         .iter()
         .map(|given| {
-            let used: Vec<usize> =
-                users(sources, |origin| matches!(origin, Origin::Given { symbol } if *symbol == given.item.symbol));
+            let (symbol_of, file) = (&given.item.symbol, &given.source.file);
+            let used = users(sources, |origin| matches!(origin, Origin::Given { symbol } if symbol == symbol_of));
+            // A whole table is an input by the file that it stands in.
+            let by_file = users(sources, |origin| matches!(origin, Origin::Data { path } if path == file));
             GivenView {
                 symbol: symbol(&given.item.symbol),
                 name: rich(&given.item.name),
@@ -207,7 +209,10 @@ pub(crate) fn givens(sources: &Sources<'_>) -> Vec<GivenView> {
                     "" => plain(&given.source.words),
                     file => plain(&format!("{}; file {file}", given.source.words)),
                 },
-                used_in: numbers(&used),
+                used_in: match (used.as_slice(), by_file.as_slice()) {
+                    ([], [_, ..]) if given.item.si.len() > 1 => format!("{}, by the file", numbers(&by_file)),
+                    _ => numbers(&used),
+                },
             }
         })
         .collect()

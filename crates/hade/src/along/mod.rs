@@ -16,7 +16,8 @@ mod tests;
 
 pub use events::{DrillingEvent, DrillingEvents, EventKind, Hindcast, HindcastInputs, HindcastOutcome, HindcastRow};
 pub use ground::{
-    Depletion, Ground, GroundInputs, GroundRecord, GroundState, HorizontalProfiles, Layer, MaxPath, MinPath, TopPlane,
+    Depletion, Ground, GroundInputs, GroundRecord, GroundState, GroundStateInputs, GroundStateOutcome,
+    HorizontalProfiles, Layer, MaxPath, MinPath, TopPlane,
 };
 pub use limit_log::{
     HoleSection, LimitLog, LogChoices, LogInputs, LogOutcome, LogRow, Narrowest, SectionEnd, SectionMud, SectionRange,

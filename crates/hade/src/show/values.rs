@@ -4,12 +4,13 @@ use super::html::{lines_html, table_html};
 use super::notebook::Show;
 use super::text::table_text;
 use super::typeset::true_minus;
+use crate::along::{DrillingEvent, DrillingEvents, EventKind, Ground, Layer};
 use crate::card::{Explain as _, Projection};
 use crate::faults::{Fault, FaultSet, FaultState, FaultStrength, RankedFault};
-use crate::field::DensityLog;
+use crate::field::{DensityLog, PressureProfile};
 use crate::frames::{Attitude, Axes, Datum, DatumTie, Depth, Line, NamedAttitude, Plane, Site, three_figures};
 use crate::rock::{HoekBrown, Rock, Strength, WeakRockMode};
-use crate::stress::{EffectiveStress, Regime};
+use crate::stress::{Components, EffectiveStress, Horizontals, Regime};
 use crate::units::{Angle, Pressure, fixed, with_typed_unit};
 use crate::well::{
     Breakout, CrackArc, CrackPlace, DeepestFailure, GovernedPressure, Governs, HeldPressure, Limit, LimitKind,
@@ -43,6 +44,14 @@ shows_words! {
     Depth: |depth| depth.words();
     Projection: |projection| projection.words();
     // Stress, rock, faults.
+    Horizontals: |given| format!(
+        "S_v {}, S_Hmax {}, S_hmin {}; azimuth of S_Hmax: {}",
+        with_typed_unit(given.sv),
+        with_typed_unit(given.sh_max),
+        with_typed_unit(given.sh_min),
+        given.sh_max_azimuth.words()
+    );
+    Components: |given| components(given);
     EffectiveStress: |stress| effective(stress);
     Regime: |regime| regime.to_string();
     Strength: |strength| strength.words();
@@ -83,8 +92,12 @@ shows_words! {
     HeldPressure: |held| held_pressure(held);
     MudState: |state| state.words();
     MapInputs: |inputs| map_inputs(inputs);
-    // The field.
+    // The field, and along the hole.
     DensityLog: |log| log.words();
+    PressureProfile: |profile| profile.words();
+    Layer: |layer| layer.words();
+    DrillingEvent: |event| event.words();
+    EventKind: |kind| kind.words();
 }
 
 /// Tables that were read or typed, by their words and their first and last rows.
@@ -100,7 +113,13 @@ macro_rules! shows_tables {
         }
     )* };
 }
-shows_tables!(FaultSet, Survey);
+shows_tables!(DrillingEvents, FaultSet, Ground, Survey);
+
+fn components(given: &Components) -> String {
+    let Components { nn, ee, dd, ne, nd, ed } = *given;
+    let all = [("nn", nn), ("ee", ee), ("dd", dd), ("ne", ne), ("nd", nd), ("ed", ed)];
+    all.map(|(name, stress)| format!("S_{name} {}", with_typed_unit(stress))).join(", ")
+}
 
 fn effective(stress: &EffectiveStress) -> String {
     let [s1, s2, s3] = stress.principal();
@@ -395,5 +414,31 @@ mod tests {
             held[0].text(),
             "static: 41.08 MPa (1.420 sg, 13.93 MPa/km), 0.91 MPa above the bottom, 6.92 MPa below the top"
         );
+    }
+
+    #[test]
+    fn the_ground_and_what_was_met_say_their_layers_and_events() {
+        let data = |name: &str| format!("{}/../../notebooks-demo/data/{name}", env!("CARGO_MANIFEST_DIR"));
+        let pore = PressureProfile::read_csv(data("kf3-pressures.csv"), "pore_pressure").unwrap();
+        let sv = PressureProfile::read_csv(data("kf3-pressures.csv"), "sv").unwrap().of("S_v", "vertical stress");
+        let layers = Ground::read_layers(data("kf3-layers.csv")).unwrap();
+        assert!(
+            layers[2].text().starts_with("Siltstone from 2685 m below the rotary table: Mohr–Coulomb"),
+            "{}",
+            layers[2].text()
+        );
+        let ground = GroundInputs { sv, pore, horizontals: None, sh_max_azimuth: north(34.6), layers };
+        let ground = Ground::new(ground).unwrap();
+        let text = ground.text();
+        assert!(text.starts_with("vertical stress against depth of KF-3: 6 points, TVD 2200 m"), "{text}");
+        assert!(text.contains("azimuth of S_Hmax: 034.6° from true north") && text.contains("Mohr–Coulomb"), "{text}");
+        assert!(ground.html().contains("<table"));
+        let events = DrillingEvents::read_csv(data("kf3-events.csv")).unwrap().text();
+        assert!(events.starts_with("6 drilling events, ") && events.contains("losses"), "{events}");
+        let given = Horizontals { sv: 66.9.mpa(), sh_max: 68.mpa(), sh_min: 49.5.mpa(), sh_max_azimuth: north(35.0) };
+        assert!(given.text().starts_with("S_v 66.9 MPa, S_Hmax 68 MPa, S_hmin 49.5 MPa; azimuth of S_Hmax: 035"));
+        let zero = 0.mpa();
+        let given = Components { nn: 62.mpa(), ee: 55.mpa(), dd: 66.9.mpa(), ne: (-8.5).mpa(), nd: zero, ed: zero };
+        assert_eq!(given.text(), "S_nn 62 MPa, S_ee 55 MPa, S_dd 66.9 MPa, S_ne −8.5 MPa, S_nd 0 MPa, S_ed 0 MPa");
     }
 }

@@ -3,7 +3,7 @@
 
 use super::event::EventKind;
 use super::hindcast::{Against, HindcastInputs, HindcastOutcome, HindcastRow};
-use crate::along::ground::{GroundInHole, GroundState};
+use crate::along::ground::{AtPlace, GroundInHole};
 use crate::card::Check;
 use crate::units::{Pressure, Quantity};
 use crate::well::Conditions;
@@ -87,13 +87,7 @@ fn pressures(name: &str, row: &HindcastRow, within: Pressure) -> Vec<Check> {
 }
 
 /// The limit by another route.
-fn limit(
-    name: &str,
-    row: &HindcastRow,
-    state: &GroundState,
-    inputs: &HindcastInputs,
-    in_hole: &GroundInHole<'_>,
-) -> Check {
+fn limit(name: &str, row: &HindcastRow, state: &AtPlace, inputs: &HindcastInputs, in_hole: &GroundInHole<'_>) -> Check {
     let what = format!("{name}: {} by another route", row.against.words());
     let place = &state.place;
     let conditions = state.wall().ok().and_then(|wall| Conditions::new(&wall, &inputs.log.choices.at(place.at[2])));

@@ -4,6 +4,7 @@ mod card;
 mod check;
 mod event;
 mod hindcast;
+mod overview;
 mod read;
 
 pub use event::{DrillingEvent, DrillingEvents, EventKind};

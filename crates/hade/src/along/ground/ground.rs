@@ -4,6 +4,7 @@ use std::path::Path;
 
 use serde::{Deserialize, Serialize};
 
+use super::at_place::AtPlace;
 use super::in_hole::GroundInHole;
 use super::layer::Layer;
 use super::state::GroundState;
@@ -168,8 +169,14 @@ impl Ground {
     /// below.
     ///
     /// # Errors
-    /// Where the ground says nothing of the depth, or what it says together cannot be.
+    /// Where the ground says nothing of the depth, or what it says together cannot be; of a survey of more
+    /// than 2000 stations, which no record holds.
     pub fn at(&self, survey: &Survey, md: Length) -> Result<GroundState> {
+        GroundState::of(self, survey, md)
+    }
+
+    /// The same as the logs use it.
+    pub(crate) fn at_place(&self, survey: &Survey, md: Length) -> Result<AtPlace> {
         let in_hole = GroundInHole::new(self, survey)?;
         let place = survey.place(md)?;
         in_hole.state(&place, in_hole.layer_at(&place)?)

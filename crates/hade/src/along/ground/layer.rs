@@ -6,7 +6,7 @@ use super::depletion::Depletion;
 use crate::error::{Error, Result};
 use crate::frames::{Azimuth, Depth, Name, Plane};
 use crate::rock::Rock;
-use crate::units::{Angle, Length, Quantity, require_between};
+use crate::units::{Angle, Length, Quantity, require_between, with_typed_unit};
 use crate::well::{Seepage, Thermal, WeakPlane};
 
 /// A dipping top: a plane through a point.
@@ -189,6 +189,21 @@ impl Layer {
         let made = self.ratios.map_or(Ok(made), |[min, max]| made.horizontal_ratios(min, max))?;
         self.depletion.map_or(Ok(made), |depletion| made.depleted(depletion))?;
         Ok(self)
+    }
+
+    /// "from TVD 2865 m below the rotary table".
+    pub(crate) fn top_words(&self) -> String {
+        match self.top {
+            LayerTop::Level(depth) => format!("from {}", depth.words()),
+            LayerTop::Plane(top) => format!(
+                "from {} at {} north and {} east of the wellhead, {}",
+                top.depth.words(),
+                with_typed_unit(top.north),
+                with_typed_unit(top.east),
+                top.plane.words()
+            ),
+            LayerTop::ByMeasuredDepth => "by measured depth".to_owned(),
+        }
     }
 
     /// Its name.

@@ -6,21 +6,26 @@
 //! it is held to the contact. Where the pore pressure has been drawn down, a stated path says what
 //! that took from the horizontal stresses.
 
+mod at_place;
 mod depletion;
 #[allow(clippy::module_inception)]
 mod ground;
 mod in_hole;
 mod layer;
 mod layer_items;
+mod method;
+mod overview;
 mod read;
 mod record;
 mod second_route;
 mod state;
+mod state_card;
+mod worked;
 
+pub(crate) use at_place::AtPlace;
 pub use depletion::{Depletion, MaxPath, MinPath};
 pub use ground::{Ground, GroundInputs, HorizontalProfiles};
 pub(crate) use in_hole::GroundInHole;
 pub use layer::{Layer, TopPlane};
 pub use record::GroundRecord;
-pub use state::GroundState;
-pub(crate) use state::HorizontalBy;
+pub use state::{GroundState, GroundStateInputs, GroundStateOutcome};

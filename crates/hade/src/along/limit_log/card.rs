@@ -6,7 +6,7 @@ use super::limit_log::{LimitLog, LogInputs};
 use super::row::{LogRow, ends};
 use super::steps::{governing, steps, stretch_words, stretches_words};
 use super::summary::LogOutcome;
-use crate::card::{Card, Check, Explain, Explanation, Figure, Formula, Item, Method, Reference};
+use crate::card::{Card, Check, Explain, Explanation, Figure, Formula, Item, Method};
 use crate::error::Result;
 use crate::units::{Angle, Quantity, as_typed, fixed};
 use crate::well::stated_items;
@@ -135,35 +135,15 @@ impl LimitLog {
             "At each depth the survey gives the place and direction of the hole, and the ground the stress, pore pressure and rock there; the wall is worked out as at a single depth. Contacts are looked at on both sides. {}",
             method.words
         );
-        let mut formulas = vec![
-            Formula::new("K = (S - P_p) / (S_upright(v) - P_p)", "K = (S − P_p) / (S_v − P_p)"),
-            Formula::new(
-                "S = P_p + K (S_upright(v) - P_p) - A Delta P_p",
-                "S = P_p + K (S_v − P_p) − A ΔP_p; K straight between points of a layer, held to its contacts",
-            ),
-        ];
-        formulas.append(&mut method.formulas);
-        method.formulas = formulas;
+        let ground = self.ground.method();
+        method.formulas.splice(0..0, ground.formulas);
         method.formulas.extend([
             Formula::new("p_b = max(p_(l s)(w), P_p + m_b)", "p_b = max(p_ls(w), P_p + m_b)"),
             Formula::new("p_t = min(S_3, p_i, p_(u s)) - m_t", "p_t = min(S_3, p_i, p_us) − m_t"),
             Formula::new("rho = p / (g \"TVD\")", "ρ = p / (g TVD)"),
         ]);
-        if self.ground.layers().iter().any(|layer| layer.depletion.is_some()) {
-            method.formulas.push(Formula::new(
-                "A = alpha (1 - 2 nu) / (1 - nu)",
-                "A = α (1 − 2ν) / (1 − ν) of a wide, thin, elastic layer, where it is not measured",
-            ));
-            method.references.push(Reference::new(
-                "Zoback, M.D. (2007) Reservoir Geomechanics, Cambridge University Press, ch. 12 (stress change with depletion; cited from memory)",
-            ));
-            method
-                .assumptions
-                .push("Depletion leaves the vertical stress as it was: no arching over the depleted layer.".to_owned());
-        }
-        method.assumptions.push(
-            "The vertical is a principal direction of the far-field stress at every depth; a profile of another hole holds at equal elevation.".to_owned(),
-        );
+        method.references.extend(ground.references);
+        method.assumptions.extend(ground.assumptions);
         method
     }
 

@@ -7,7 +7,7 @@ use super::limit_log::LogInputs;
 use super::row::LogRow;
 use super::section::{HoleSection, SectionEnd, SectionRange};
 use super::summary::LogOutcome;
-use crate::along::ground::{GroundInHole, GroundState};
+use crate::along::ground::{AtPlace, GroundInHole};
 use crate::card::Check;
 use crate::error::Result;
 use crate::units::{Length, Pressure, Quantity};
@@ -30,7 +30,7 @@ pub(super) fn check(inputs: &LogInputs, outcome: &LogOutcome) -> Vec<Check> {
     checks
 }
 
-fn states(inputs: &LogInputs, survey: &Survey, in_hole: &GroundInHole<'_>) -> Result<Vec<GroundState>> {
+fn states(inputs: &LogInputs, survey: &Survey, in_hole: &GroundInHole<'_>) -> Result<Vec<AtPlace>> {
     inputs.printed.iter().map(|(md, layer)| in_hole.state(&survey.place(*md)?, *layer)).collect()
 }
 
@@ -68,7 +68,7 @@ fn places(inputs: &LogInputs, outcome: &LogOutcome, survey: &Survey, in_hole: &G
 }
 
 /// S_v, P_p, S_hmin and S_Hmax by shares.
-fn stresses(inputs: &LogInputs, outcome: &LogOutcome, states: &[GroundState], in_hole: &GroundInHole<'_>) -> Check {
+fn stresses(inputs: &LogInputs, outcome: &LogOutcome, states: &[AtPlace], in_hole: &GroundInHole<'_>) -> Check {
     let got: Vec<f64> =
         outcome.rows.iter().flat_map(|row| [row.sv, row.pore, row.sh_min, row.sh_max]).map(Pressure::in_mpa).collect();
     let other = states.iter().zip(&inputs.printed).flat_map(|(state, (_, layer))| {
@@ -86,10 +86,10 @@ fn stresses(inputs: &LogInputs, outcome: &LogOutcome, states: &[GroundState], in
 }
 
 /// Least stress, limits and ends of every row, by the second route of the wall under the row's stresses.
-fn walls(inputs: &LogInputs, outcome: &LogOutcome, states: &[GroundState]) -> Vec<Check> {
-    let of_row = |(row, state): (&LogRow, &GroundState)| -> Option<[Option<Check>; 5]> {
+fn walls(inputs: &LogInputs, outcome: &LogOutcome, states: &[AtPlace]) -> Vec<Check> {
+    let of_row = |(row, state): (&LogRow, &AtPlace)| -> Option<[Option<Check>; 5]> {
         let LogRow { sv, sh_max, sh_min, pore, .. } = *row;
-        let wall = GroundState { sv, sh_max, sh_min, pore, ..*state }.wall().ok()?;
+        let wall = AtPlace { sv, sh_max, sh_min, pore, ..*state }.wall().ok()?;
         let conditions = Conditions::new(&wall, &inputs.choices.at(state.place.at[2]))?;
         let name = format!("MD {:.2} m", row.md.in_m());
         let [.., s3] = conditions.route.far().values_by_invariants();
@@ -104,7 +104,7 @@ fn walls(inputs: &LogInputs, outcome: &LogOutcome, states: &[GroundState]) -> Ve
         let ends = conditions.ends(&name, row.bottom, row.top);
         Some([Some(least), lower, initiation, upper, Some(ends)])
     };
-    let pairs: Vec<(&LogRow, &GroundState)> = outcome.rows.iter().zip(states).collect();
+    let pairs: Vec<(&LogRow, &AtPlace)> = outcome.rows.iter().zip(states).collect();
     let found: Vec<Option<[Option<Check>; 5]>> = pairs.into_par_iter().map(of_row).collect();
     let broken = found.iter().any(Option::is_none) || outcome.rows.len() != states.len();
     let mut checks = vec![Check::holds("every printed row has a wall", if broken { f64::NAN } else { 0.0 }, 0.0, "")];

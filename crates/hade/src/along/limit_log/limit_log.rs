@@ -11,7 +11,7 @@ use super::row::LogRow;
 use super::sample::{Look, looks, whole};
 use super::section::{HoleSection, SectionRange};
 use super::summary::{LogOutcome, Narrowest};
-use crate::along::ground::{Ground, GroundInHole, GroundRecord, GroundState};
+use crate::along::ground::{AtPlace, Ground, GroundInHole, GroundRecord};
 use crate::error::{Error, Result};
 use crate::interrupt;
 use crate::units::{Angle, Length, Pressure, with_typed_unit};
@@ -191,9 +191,9 @@ impl LimitLog {
     }
 
     /// The ground at a measured depth of the log.
-    pub(crate) fn state_at(&self, md: Length) -> Result<GroundState> {
+    pub(crate) fn state_at(&self, md: Length) -> Result<AtPlace> {
         crate::units::require_between("measured depth in the log", md, self.choices.from, self.choices.to)?;
-        self.ground.at(&self.survey, md)
+        self.ground.at_place(&self.survey, md)
     }
 
     fn whole(&self) -> LogOutcome {

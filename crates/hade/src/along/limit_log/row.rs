@@ -3,7 +3,7 @@
 use serde::{Deserialize, Serialize};
 
 use super::choices::LogChoices;
-use crate::along::ground::GroundState;
+use crate::along::ground::AtPlace;
 use crate::error::{Error, Result};
 use crate::frames::Name;
 use crate::units::{Density, Length, Pressure, with_typed_unit};
@@ -45,7 +45,7 @@ pub struct LogRow {
 }
 
 impl LogRow {
-    pub(super) fn of(state: &GroundState, choices: &LogChoices) -> Result<Self> {
+    pub(super) fn of(state: &AtPlace, choices: &LogChoices) -> Result<Self> {
         let Ends { limits, bottom, top } = ends(state, choices)?;
         Ok(LogRow {
             md: state.md,
@@ -92,7 +92,7 @@ impl LogRow {
 }
 
 /// The ends of the range where the ground is in this state.
-pub(super) fn ends(state: &GroundState, choices: &LogChoices) -> Result<Ends> {
+pub(super) fn ends(state: &AtPlace, choices: &LogChoices) -> Result<Ends> {
     Wall::of(state.wall()?).and_then(|wall| wall.ends(&choices.at(state.place.at[2]))).map_err(|e| {
         Error::not_physical(
             format!("The wall at MD {} in {}", with_typed_unit(state.md), state.layer()),

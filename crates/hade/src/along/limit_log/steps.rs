@@ -4,7 +4,7 @@ use super::limit_log::LimitLog;
 use super::row::{LogRow, ends};
 use super::section::{SectionEnd, SectionRange};
 use super::summary::LogOutcome;
-use crate::along::ground::{GroundInHole, GroundState, HorizontalBy};
+use crate::along::ground::{AtPlace, GroundInHole};
 use crate::card::{Column, Explain, Step, Table};
 use crate::units::{GRAVITY, Length, Pressure, Quantity, as_typed, fixed};
 use crate::well::{GovernedPressure, limit_shown};
@@ -23,7 +23,9 @@ pub(super) fn steps(log: &LimitLog, outcome: &LogOutcome) -> Vec<Step> {
             row.layer(),
             if outcome.narrowest.is_some() { "the range is narrowest" } else { "the log begins" }
         )));
-        steps.extend(ground_steps(log, &state));
+        if let Ok(in_hole) = GroundInHole::new(&log.ground, &log.survey) {
+            steps.extend(in_hole.worked(&state));
+        }
         steps.extend(wall_steps(log, &state));
     }
     steps.push(Step::Table { table: ground_table(outcome) });
@@ -36,7 +38,7 @@ pub(super) fn steps(log: &LimitLog, outcome: &LogOutcome) -> Vec<Step> {
 }
 
 /// The printed row that is narrowest, or the first, with the ground there.
-pub(super) fn governing(log: &LimitLog, outcome: &LogOutcome) -> Option<(LogRow, GroundState)> {
+pub(super) fn governing(log: &LimitLog, outcome: &LogOutcome) -> Option<(LogRow, AtPlace)> {
     let narrowest = |row: &LogRow| {
         outcome.narrowest.is_none_or(|narrowest| row.md == narrowest.md && row.breadth() == Some(narrowest.breadth))
     };
@@ -45,84 +47,7 @@ pub(super) fn governing(log: &LimitLog, outcome: &LogOutcome) -> Option<(LogRow,
     Some((row, in_hole.state(&log.survey.place(row.md).ok()?, layer).ok()?))
 }
 
-fn ground_steps(log: &LimitLog, state: &GroundState) -> Vec<Step> {
-    let Ok(in_hole) = GroundInHole::new(&log.ground, &log.survey) else { return Vec::new() };
-    let tvd = state.tvd.si();
-    let mut steps = vec![Step::worked(format!(
-        "the survey puts MD {} m at TVD {} m below the rotary table; the hole lies there at {}",
-        fixed(state.md.si(), 2),
-        fixed(tvd, 3),
-        state.place.attitude().words()
-    ))];
-    let [sv, pore] = in_hole.vertical_worked(tvd);
-    steps.extend([Step::worked(sv), Step::worked(pore)]);
-    let virgin = in_hole.virgin_pore(tvd);
-    let effective = state.sv - virgin;
-    let drawdown = state.drawdown.unwrap_or_default();
-    for ((by, path), (name, total)) in state.by.iter().zip(state.paths).zip([("h", state.sh_min), ("H", state.sh_max)])
-    {
-        let before = total + drawdown * path;
-        steps.push(Step::worked(match by {
-            HorizontalBy::Ratio(k) => format!(
-                "S_{name} = P_p + K_{name} (S_v − P_p) = {} + {} · {} = {} MPa",
-                mpa(virgin),
-                as_typed(*k),
-                mpa(effective),
-                mpa(before)
-            ),
-            HorizontalBy::Gradient => format!("S_{name} = {} MPa by its gradient", mpa(before)),
-            HorizontalBy::Table { points, ratio } => format!(
-                "K_{name} = {} = {}; S_{name} = P_p + K_{name} (S_v − P_p) = {} + {} · {} = {} MPa",
-                ratio_words(points, tvd),
-                fixed(*ratio, 6),
-                mpa(virgin),
-                fixed(*ratio, 6),
-                mpa(effective),
-                mpa(before)
-            ),
-        }));
-        if state.drawdown.is_some() {
-            steps.push(Step::worked(format!(
-                "drawn down by {} MPa: S_{name} − A ΔP_p = {} − {} · {} = {} MPa",
-                as_typed(drawdown.in_mpa()),
-                mpa(before),
-                fixed(path, 4),
-                as_typed(drawdown.in_mpa()),
-                mpa(total)
-            )));
-        }
-    }
-    if state.drawdown.is_some() {
-        steps.push(Step::worked(format!(
-            "P_p − ΔP_p = {} − {} = {} MPa; S_v stays",
-            mpa(virgin),
-            as_typed(drawdown.in_mpa()),
-            mpa(state.pore)
-        )));
-    }
-    steps
-}
-
-/// "0.7 + (0.8 − 0.7) · (2500 − 2000) / (3000 − 2000)".
-fn ratio_words(points: &[Option<(f64, f64)>; 2], tvd: f64) -> String {
-    match points {
-        [Some((z1, k1)), Some((z2, k2))] => format!(
-            "{} + ({} − {}) · ({} − {z}) / ({} − {z})",
-            fixed(*k1, 6),
-            fixed(*k2, 6),
-            fixed(*k1, 6),
-            fixed(tvd, 2),
-            fixed(*z2, 2),
-            z = fixed(*z1, 2)
-        ),
-        [Some((z, k)), None] | [None, Some((z, k))] => {
-            format!("the ratio {} of the one point of the layer on that side, at TVD {} m", fixed(*k, 6), fixed(*z, 2))
-        }
-        [None, None] => String::new(),
-    }
-}
-
-fn wall_steps(log: &LimitLog, state: &GroundState) -> Vec<Step> {
+fn wall_steps(log: &LimitLog, state: &AtPlace) -> Vec<Step> {
     let Ok(found) = ends(state, &log.choices) else { return Vec::new() };
     let (limits, choices) = (found.limits, log.choices);
     let mut steps = limits.explain().steps;

@@ -177,3 +177,28 @@ fn what_cannot_be_a_ground_or_a_log_is_refused() {
     let drained = by_ratios(vec![layer("a", 100.0).depleted(deep).unwrap()]);
     assert!(drained.at(&survey, 1000.m()).unwrap_err().to_string().contains("drawdown 90 MPa"));
 }
+
+/// The state at a depth is a result of its own: its card is made again from its record, and what comes out is what a
+/// stress made of it takes in, bit for bit.
+#[test]
+fn the_state_at_a_depth_explains_itself() {
+    let sand = Layer::from("sand", at_rt(2000.0), sand()).unwrap().horizontal_ratios(0.5, 0.7).unwrap();
+    let depletion = Depletion { drawdown: 6.mpa(), sh_min: MinPath::Measured(0.64), sh_max: MaxPath::AsMin };
+    let ground = by_ratios(vec![sand.depleted(depletion).unwrap()]);
+    let survey = survey(120.0);
+    let state = ground.at(&survey, 2600.m()).unwrap();
+    let card = state.card();
+    assert!(card.passed(), "{:#?}", card.checks);
+    assert_eq!(GroundState::compute(state.inputs()).unwrap().card(), card);
+    // By hand: K = 0.5 of the effective vertical stress, less 0.64 · 6 MPa.
+    let (sv, pore) = (22.6e-3 * state.tvd.in_m(), 10.4e-3 * state.tvd.in_m());
+    assert!((state.sh_min.in_mpa() - (pore + 0.5 * (sv - pore) - 3.84)).abs() < 1e-9);
+    assert!((state.pore.in_mpa() - (pore - 6.0)).abs() < 1e-9);
+    let stress = state.stress().unwrap().card();
+    for name in ["vertical stress", "larger horizontal stress", "smaller horizontal stress"] {
+        let taken = stress.explanation.inputs.iter().find(|input| input.name == name).unwrap();
+        let given = card.explanation.results.iter().find(|result| result.name == name).unwrap();
+        assert!(taken.same_value(given), "{name}");
+    }
+    assert!(card.explanation.title.ends_with("along the hole at MD 2600 m"));
+}

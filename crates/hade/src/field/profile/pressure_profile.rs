@@ -293,6 +293,14 @@ pub(super) fn whole_item(about: &ProfileAbout, law: &Law) -> Item {
     }
 }
 
+impl PressureProfile {
+    /// "pore pressure against depth of KF-1: 6 points, TVD 2200 m to 3100 m below the rotary table".
+    pub(crate) fn words(&self) -> String {
+        let item = whole_item(&self.data.about, &self.data.law);
+        format!("{}: {}", item.name, item.shown)
+    }
+}
+
 impl IntoGiven for PressureProfile {
     type Value = PressureProfile;
     /// As one given; the profile takes over the symbol and the meaning.
