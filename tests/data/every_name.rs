@@ -272,6 +272,15 @@ let first: Vec<HindcastRow> = hindcast.rows();
 assert_eq!(first.len(), 1);
 hindcast
 // ---
+// How sure it is that one mud weight keeps the section: its depths drawn together.
+let chance: SectionEnsemble =
+    log.section_ensemble("8½ in", Draws { count: 500, start: 3 }, &[Vary::sh_max(4.mpa()), Vary::cohesion(1.2.mpa())])?;
+let at_best: Option<MudShare> = chance.best();
+let planned: Option<PlanShare> = chance.planned();
+let of_layers: Vec<LayerShare> = chance.layers();
+assert!(planned.is_none() && !of_layers.is_empty() && at_best.is_none_or(|best| best.by_layer <= 1.0));
+chance
+// ---
 // What to drill with: the range, the mud held against it, other criteria beside it, one input at a time.
 let range: RecommendedRange = wall.recommended(RangeChoices {
     allowed_width: 60.deg(),

@@ -3,8 +3,8 @@
 
 pub use crate::along::{
     Depletion, DrillingEvent, DrillingEvents, EventKind, Ground, GroundInputs, GroundState, Hindcast, HindcastRow,
-    HoleSection, HorizontalProfiles, Layer, LimitLog, LogChoices, LogRow, MaxPath, MinPath, Narrowest, SectionRange,
-    TopPlane,
+    HoleSection, HorizontalProfiles, Layer, LayerShare, LimitLog, LogChoices, LogRow, MaxPath, MinPath, MudShare,
+    Narrowest, PlanShare, SectionEnsemble, SectionRange, TopPlane,
 };
 pub use crate::card::{Card, Explain, Projection};
 pub use crate::faults::{

@@ -1,7 +1,7 @@
 //! Recomputing a card from its inputs: the table of every kind, used when a record becomes a memo
 //! and when a memo is verified.
 
-use crate::along::{GroundState, Hindcast, LimitLog};
+use crate::along::{GroundState, Hindcast, LimitLog, SectionEnsemble};
 use crate::card::{Card, Check, Data, Explain, Json};
 use crate::error::{Error, Result};
 use crate::faults::{CriticalPlanes, FaultSlip, FrictionLimit, FrictionalBounds, RankedFaults};
@@ -119,6 +119,7 @@ pub const KINDS: &[Kind] = &[
     kind::<Sensitivity>(),
     kind::<GroundState>(),
     kind::<LimitLog>(),
+    kind::<SectionEnsemble>(),
     kind::<Hindcast>(),
     kind::<DirectionMap>(),
     kind::<Ensemble>(),

@@ -3,7 +3,8 @@
 //! A [`Ground`] says stress, pore pressure and rock by depth, in layers; a [`LimitLog`] joins it with
 //! the path of a hole, and [`DrillingEvents`] are held against it. Nothing is extrapolated, nothing is
 //! smeared over the contact of two layers, and what is stated by measured depth stays at that measured
-//! depth. `events` imports from `limit_log`, and that from `ground`.
+//! depth. `events` and
+//! `section_ensemble` import from `limit_log`, and that from `ground`.
 //!
 //! It does not follow time: how the ground changes while it is drilled or produced is what the
 //! engineer states as depletion.
@@ -12,6 +13,7 @@ mod events;
 mod ground;
 mod limit_log;
 mod readers_alike;
+mod section_ensemble;
 mod tests;
 
 pub use events::{DrillingEvent, DrillingEvents, EventKind, Hindcast, HindcastInputs, HindcastOutcome, HindcastRow};
@@ -21,4 +23,7 @@ pub use ground::{
 };
 pub use limit_log::{
     HoleSection, LimitLog, LogChoices, LogInputs, LogOutcome, LogRow, Narrowest, SectionEnd, SectionMud, SectionRange,
+};
+pub use section_ensemble::{
+    LayerShare, MudShare, PlanShare, SectionEnsemble, SectionEnsembleInputs, SectionEnsembleOutcome,
 };

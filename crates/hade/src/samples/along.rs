@@ -124,5 +124,16 @@ pub(super) fn along_samples() -> Vec<Card> {
         log.with_sections(&sections).unwrap().card(),
         LimitLog::with_choices(&level, &lateral, bare).unwrap().card(),
         log.hindcast(&events, 0.3.mpa()).unwrap().card(),
+        log.with_sections(&sections)
+            .unwrap()
+            .section_ensemble(
+                "8½ in",
+                Draws { count: 200, start: 5 },
+                &[Vary::sh_max(2.mpa()), Vary::pore(0.5.mpa()), Vary::cohesion(0.8.mpa())],
+            )
+            .unwrap()
+            .correlated("S_Hmax", "P_p", 0.4)
+            .unwrap()
+            .card(),
     ]
 }

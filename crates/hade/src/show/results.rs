@@ -2,7 +2,7 @@
 
 use super::html::lines_html;
 use super::notebook::Show;
-use crate::along::{GroundState, Hindcast, LimitLog};
+use crate::along::{GroundState, Hindcast, LimitLog, SectionEnsemble};
 use crate::card::Explain as _;
 use crate::faults::{CriticalPlanes, FaultSlip, FrictionLimit, FrictionalBounds, RankedFaults};
 use crate::field::{Overburden, PressureAtDepth};
@@ -60,7 +60,7 @@ shown_by_cards! {
     DirectionMap, Ensemble, FailingArcs, FailureDepth, FieldStress, Limits, MudHeld, MudPressure, Position, RadialProfile, RangesBeside,
     RecommendedRange, Sensitivity, SurveyTable, TensileCracks, WallAround, WallImage, WallStress,
     // The field, and along the hole.
-    GroundState, Hindcast, LimitLog, Overburden, PressureAtDepth,
+    GroundState, Hindcast, LimitLog, Overburden, PressureAtDepth, SectionEnsemble,
 }
 shown_by_cards!(@ Stress<Geographic>;);
 shown_by_cards!(@ Stress<F>; F: Turned);

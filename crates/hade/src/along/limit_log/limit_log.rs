@@ -215,8 +215,21 @@ impl LimitLog {
         Ok(LimitLog { record: Arc::new(record), ..self.clone() })
     }
 
+    pub(crate) fn survey(&self) -> &Survey {
+        &self.survey
+    }
+
+    pub(crate) fn ground(&self) -> &Ground {
+        &self.ground
+    }
+
+    /// The sections as they were stated.
+    pub(crate) fn sections(&self) -> &[HoleSection] {
+        &self.sections
+    }
+
     /// The rows that are printed, with their layers.
-    pub(super) fn printed(&self) -> &[(LogRow, usize)] {
+    pub(crate) fn printed(&self) -> &[(LogRow, usize)] {
         &self.printed
     }
 

@@ -17,5 +17,6 @@ mod summary;
 pub use choices::LogChoices;
 pub use limit_log::{LimitLog, LogInputs};
 pub use row::LogRow;
+pub(crate) use section::pressure_of;
 pub use section::{HoleSection, SectionEnd, SectionMud, SectionRange};
 pub use summary::{LogOutcome, Narrowest};

@@ -31,6 +31,14 @@ impl HoleSection {
         HoleSection { mud: Some(mud), ..self }
     }
 
+    pub(crate) fn name(&self) -> &'static str {
+        self.name.text()
+    }
+
+    pub(crate) fn mud(&self) -> Option<MudPlan> {
+        self.mud
+    }
+
     pub(super) fn checked(&self, above: Option<&HoleSection>) -> Result<()> {
         let words =
             format!("The section {} from MD {} to {}", self.name, with_typed_unit(self.from), with_typed_unit(self.to));
@@ -70,7 +78,7 @@ impl HoleSection {
     }
 
     /// What was stated of its mud as inputs of a card.
-    pub(super) fn items(&self) -> Vec<Item> {
+    pub(crate) fn items(&self) -> Vec<Item> {
         let of = |what: &str| format!("{what} of {}", self.name);
         let mut items = vec![
             Item::typed("", of("beginning, measured depth,"), self.from).chosen(),
@@ -86,7 +94,7 @@ impl HoleSection {
     }
 
     /// The rows within it. Of a contact at its very end only the row above is.
-    pub(super) fn rows<'a>(&self, rows: &'a [LogRow]) -> impl Iterator<Item = &'a LogRow> + use<'a> {
+    pub(crate) fn rows<'a>(&self, rows: &'a [LogRow]) -> impl Iterator<Item = &'a LogRow> + use<'a> {
         let (from, to) = (self.from, self.to);
         let last = rows.iter().rposition(|row| row.md == to);
         rows.iter().enumerate().filter_map(move |(k, row)| {
@@ -99,7 +107,7 @@ impl HoleSection {
 }
 
 /// What a mud is called in a state, held at one depth.
-pub(super) fn pressure_of(mud: &MudPlan, state: MudState, tvd: Length) -> Option<Pressure> {
+pub(crate) fn pressure_of(mud: &MudPlan, state: MudState, tvd: Length) -> Option<Pressure> {
     let still = mud.static_density.column(tvd);
     match state {
         MudState::Static => Some(still),

@@ -5,15 +5,17 @@ mod events;
 mod ground;
 mod log;
 mod record;
+mod section_ensemble;
 
 use crate::along::*;
 use crate::card::Explain;
 use crate::field::PressureProfile;
 use crate::frames::{Azimuth, Datum, DatumTie, Depth, Plane};
 use crate::rock::{HoekBrown, Rock, Strength};
+use crate::spread::Draws;
 use crate::stress::{Horizontals, Stress};
 use crate::units::{Angle, Length, Pressure, Units};
-use crate::well::{MudPlan, RangeChoices, Station, Survey, Thermal, Wall, WallInputs, WeakPlane};
+use crate::well::{MudPlan, RangeChoices, Station, Survey, Thermal, Vary, Wall, WallInputs, WeakPlane};
 
 fn shale() -> Rock {
     Rock { poisson: 0.25, tensile_strength: 2.mpa(), strength: Strength::mohr_coulomb(8.mpa(), 30.deg()) }

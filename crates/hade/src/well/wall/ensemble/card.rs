@@ -202,6 +202,11 @@ impl Ensemble {
     /// The first draw that counts, with its numbers put in.
     fn one_draw(&self) -> Vec<Step> {
         let Some(k) = self.stands.iter().position(|stand| stand.left.is_none()) else { return Vec::new() };
+        self.worked(k, &format!("Every draw is worked as draw {}", k + 1))
+    }
+
+    /// A draw with its numbers put in, after words that begin a sentence.
+    pub(super) fn worked(&self, k: usize, begin: &str) -> Vec<Step> {
         let Ok(ready) = self.inputs.prepared() else { return Vec::new() };
         let draw = ready.sampler.draw(k as u64);
         let values: Vec<String> = self
@@ -211,7 +216,7 @@ impl Ensemble {
             .zip(draw.values())
             .map(|(one, value)| format!("{} = {}", one.symbol(), one.shown(*value)))
             .collect();
-        let mut steps = vec![Step::words(format!("Every draw is worked as draw {} ({}):", k + 1, values.join(", ")))];
+        let mut steps = vec![Step::words(format!("{begin} ({}):", values.join(", ")))];
         let numbers = self.inputs.numbers(&ready.base, &draw);
         if let Ok(wall) = wall_of(&self.inputs.wall, &ready.base.numbers, &numbers) {
             let limits = wall.limits();

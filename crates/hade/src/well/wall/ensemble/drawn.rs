@@ -3,9 +3,11 @@
 use serde::{Deserialize, Serialize};
 
 use crate::card::Item;
+use crate::error::Result;
 use crate::spread::{Distribution, Spread};
 use crate::units::{Angle, Pressure, Quantity};
-use crate::well::wall::sensitivity::Varied;
+use crate::well::wall::sensitivity::{Varied, Vary};
+use crate::well::wall::wall::Wall;
 
 /// An input of a wall and how it is distributed: `Drawn::sh_max(Distribution::normal(55.mpa(), 3.mpa()))`. Nothing is
 /// drawn that is not named.
@@ -111,5 +113,20 @@ impl Drawn {
     pub(super) fn item(self) -> Item {
         let name = format!("distribution of the {}", self.name());
         Item::new(&format!("~{}", self.symbol()), name, "distribution", self.spread.numbers(), self.words()).chosen()
+    }
+}
+
+impl Vary {
+    /// Normal about what a wall states, with the amount as standard deviation.
+    pub(crate) fn drawn(self, wall: &Wall) -> Result<Drawn> {
+        let distribution = Distribution::<f64>::normal(self.value(&wall.setup)?, self.by());
+        Ok(Drawn { input: self.input(), spread: distribution.plain() })
+    }
+
+    /// The standard deviation as an input of a card.
+    pub(crate) fn deviation_item(self) -> Item {
+        let input = self.input();
+        let name = format!("standard deviation of the {} at every depth", self.name());
+        Item::new(&format!("s_{}", self.symbol()), name, "standard deviation", vec![self.by()], input.shown(self.by()))
     }
 }

@@ -52,11 +52,21 @@ impl Wall {
     /// When there are not 100 to 2 000 000 draws, no or too many inputs, an input stands twice or is none of this
     /// wall's, a distribution is none, or every draw would be left out.
     pub fn ensemble(&self, draws: Draws, drawn: &[Drawn]) -> Result<Ensemble> {
+        self.ensemble_with(draws, drawn, &[])
+    }
+
+    /// The same with all rank correlations at once.
+    pub(crate) fn ensemble_with(
+        &self,
+        draws: Draws,
+        drawn: &[Drawn],
+        correlations: &[RankCorrelation],
+    ) -> Result<Ensemble> {
         Ensemble::build(EnsembleInputs {
             wall: self.setup,
             drawn: drawn.to_vec(),
             draws,
-            correlations: Vec::new(),
+            correlations: correlations.to_vec(),
             friction: None,
             tvd: None,
         })

@@ -4,6 +4,7 @@ mod card;
 mod check;
 mod drawn;
 mod effects;
+mod ends;
 #[allow(clippy::module_inception)]
 mod ensemble;
 mod figures;

@@ -172,8 +172,12 @@ impl Vary {
     }
 
     /// By how much, in SI.
-    pub(super) fn by(self) -> f64 {
+    pub(crate) fn by(self) -> f64 {
         self.by
+    }
+
+    pub(crate) fn input(self) -> Varied {
+        self.input
     }
 
     pub(super) fn same_input(self, other: Vary) -> bool {
