@@ -12,8 +12,9 @@ fn a_depleted_sand_leaves_no_common_mud_weight() {
     let (_, bytes) = attachments(&pdf).into_iter().find(|(name, _)| name == "record.json").expect("record.json");
     let record = Record::from_json(std::str::from_utf8(&bytes).expect("UTF-8")).expect("a record");
     assert_eq!(record.conflicts, Vec::<String>::new());
+    assert_eq!(record.unknown_inputs(), vec![], "every input is on the sheet");
     let kinds: Vec<&str> = record.cards().iter().map(|(card, _)| card.kind.as_str()).collect();
-    for kind in ["limit-log", "hindcast", "direction-map", "wall-ensemble"] {
+    for kind in ["limit-log", "hindcast", "ground-at-depth", "direction-map", "wall-ensemble", "section-ensemble"] {
         assert!(kinds.contains(&kind), "{kinds:?}");
     }
     for (card, _) in record.cards() {
@@ -35,10 +36,18 @@ fn a_depleted_sand_leaves_no_common_mud_weight() {
     assert!(result("wall-ensemble", "P10 of the bottom") < result("wall-ensemble", "P90 of the bottom"));
     let planned = result("direction-map", "in the planned direction");
     assert!(result("direction-map", "best") < planned && planned < result("direction-map", "worst"));
+    // One mud weight keeps the section in fewer draws when the layers move by themselves.
+    assert!(
+        result("section-ensemble", "share of draws it keeps 8½ in, each")
+            < result("section-ensemble", "share of draws it keeps 8½ in, all")
+    );
     let words = text(&pdf).split_whitespace().collect::<Vec<_>>().join(" ");
-    for wanted in
-        ["No single mud weight serves the section", "Depleted ground is not what it was", "Events met are no proof"]
-    {
+    for wanted in [
+        "No single mud weight serves the section",
+        "Depleted ground is not what it was",
+        "Events met are no proof",
+        "by the file",
+    ] {
         assert!(words.contains(wanted), "{wanted}");
     }
 }

@@ -5,7 +5,7 @@ use std::process::{Command, Output};
 
 use hade_tests::hade_binary;
 
-use super::support::{assert_success, notebook, said, text};
+use super::support::{assert_success, demo_copy, notebook, said, text};
 
 const PROJECT: &str = r#"
 [memo]
@@ -111,6 +111,26 @@ fn the_summary_has_two_sheets_and_the_same_conclusions() {
     }
     let unknown = run(folder, &["--template", "sumary"]);
     assert!(said(&unknown).contains("memo, summary"), "{}", said(&unknown));
+}
+
+/// Nineteen items, six critical cautions, three people.
+#[test]
+fn the_summary_of_the_demo_fits_on_two_sheets() {
+    let demo = demo_copy();
+    let made = Command::new(hade_binary())
+        .args(["memo", "kf3.ipynb", "-o", "summary.pdf", "--template", "summary"])
+        .current_dir(demo.path())
+        .output()
+        .expect("the hade command runs");
+    assert_success(&made);
+    assert!(said(&made).contains(": 2 sheets"), "{}", said(&made));
+    let pdf = demo.path().join("summary.pdf");
+    let printed = text(&pdf);
+    for words in
+        ["Sheet 2 of 2", "Every check of every item passed.", "Rules and responsible people go before", "Approved"]
+    {
+        assert!(printed.contains(words), "{words} in\n{printed}");
+    }
 }
 
 #[test]

@@ -9,7 +9,7 @@ use super::record::GroundRecord;
 use crate::error::Result;
 use crate::frames::{Azimuth, Name};
 use crate::stress::Stress;
-use crate::units::{Angle, Length, Pressure};
+use crate::units::{Angle, Length, Pressure, fixed};
 use crate::well::{Survey, SurveyTableInputs};
 
 /// Stress, pore pressure and rock where a hole is at a measured depth, from [`Ground::at`].
@@ -98,9 +98,9 @@ impl GroundState {
         self.there.stress()
     }
 
-    /// "KF-3 at MD 3455 m".
+    /// "KF-3 at MD 3455.00 m".
     pub(super) fn place_words(&self) -> String {
         let hole = self.survey.hole().map_or("the hole", |name| name.text());
-        format!("{hole} at MD {} m", crate::units::as_typed(self.md.in_m()))
+        format!("{hole} at MD {} m", fixed(self.md.in_m(), 2))
     }
 }

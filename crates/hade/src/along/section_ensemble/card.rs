@@ -62,7 +62,7 @@ impl SectionEnsemble {
         };
         let mut words = format!(
             "{} sg keeps the section in {} of the draws when all layers move alike, in {} when each moves by itself",
-            fixed(best.mud_weight.in_sg(), 2),
+            fixed(best.mud_weight.in_sg(), 3),
             percent(best.together),
             percent(best.by_layer)
         );
@@ -157,7 +157,7 @@ impl SectionEnsemble {
             let n = self.outcome.counted;
             steps.push(Step::worked(format!(
                 "all layers alike at {} sg: {} of the {} draws that count, P_1 = {}",
-                fixed(best.mud_weight.in_sg(), 2),
+                fixed(best.mud_weight.in_sg(), 3),
                 fixed(best.together * n, 0),
                 fixed(n, 0),
                 fixed(best.together, 4)

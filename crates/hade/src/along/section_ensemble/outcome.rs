@@ -67,7 +67,7 @@ pub struct SectionEnsembleOutcome {
 }
 
 /// A curve has at most so many places.
-pub(super) const MOST_PLACES: usize = 60;
+pub(super) const MOST_PLACES: usize = 32;
 /// Steps of mud weight that people use, kg/m³.
 const STEPS: [f64; 6] = [5.0, 10.0, 20.0, 50.0, 100.0, 200.0];
 

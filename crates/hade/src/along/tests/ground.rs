@@ -200,5 +200,5 @@ fn the_state_at_a_depth_explains_itself() {
         let given = card.explanation.results.iter().find(|result| result.name == name).unwrap();
         assert!(taken.same_value(given), "{name}");
     }
-    assert!(card.explanation.title.ends_with("along the hole at MD 2600 m"));
+    assert!(card.explanation.title.ends_with("along the hole at MD 2600.00 m"));
 }
