@@ -12,11 +12,13 @@ mod events;
 mod ground;
 mod limit_log;
 mod readers_alike;
+mod spans;
 mod tests;
 
 pub use events::{DrillingEvent, DrillingEvents, EventKind, Hindcast, HindcastInputs, HindcastOutcome, HindcastRow};
 pub use ground::{
-    Depletion, Ground, GroundInputs, GroundRecord, GroundState, HorizontalProfiles, Layer, MaxPath, MinPath, TopPlane,
+    Depletion, Ground, GroundInputs, GroundRecord, GroundState, HorizontalProfiles, Layer, LayerIntervals, MaxPath,
+    MinPath, TopPlane,
 };
 pub use limit_log::{
     HoleSection, LimitLog, LogChoices, LogInputs, LogOutcome, LogRow, Narrowest, SectionEnd, SectionMud, SectionRange,

@@ -4,23 +4,26 @@
 //! layer states its ratios of effective stress K = (S_h − P_p) / (S_v − P_p). Between two points of a
 //! table within one layer K runs straight, not the total stress; from the points nearest to a contact
 //! it is held to the contact. Where the pore pressure has been drawn down, a stated path says what
-//! that took from the horizontal stresses.
+//! that took from the horizontal stresses. Temperatures by depth warm or cool the wall.
 
 mod depletion;
 #[allow(clippy::module_inception)]
 mod ground;
 mod in_hole;
 mod layer;
+mod layer_intervals;
 mod layer_items;
 mod read;
 mod record;
 mod second_route;
 mod state;
+mod temperatures;
 
 pub use depletion::{Depletion, MaxPath, MinPath};
 pub use ground::{Ground, GroundInputs, HorizontalProfiles};
 pub(crate) use in_hole::GroundInHole;
 pub use layer::{Layer, TopPlane};
+pub use layer_intervals::LayerIntervals;
 pub use record::GroundRecord;
 pub use state::GroundState;
 pub(crate) use state::HorizontalBy;

@@ -5,6 +5,7 @@ mod events;
 mod ground;
 mod log;
 mod record;
+mod temperatures;
 
 use crate::along::*;
 use crate::card::Explain;
