@@ -11,7 +11,9 @@ pub use crate::faults::{
     BoundsInputs, CriticalPlanes, Fault, FaultSet, FaultSlip, FaultState, FaultStrength, FrictionLimit,
     FrictionalBounds, RankedFault, RankedFaults,
 };
-pub use crate::field::{DensityLog, Overburden, OverburdenInputs, PressureAtDepth, PressureProfile, Top};
+pub use crate::field::{
+    DensityLog, Overburden, OverburdenInputs, PressureAtDepth, PressureProfile, TemperatureProfile, Top,
+};
 pub use crate::frames::{
     ApparentDip, Attitude, Axes, Axis, Azimuth, BestRotation, Borehole, Chain, Convergence, Datum, DatumTie,
     Declination, Depth, DepthConversion, Direction, DirectionPair, Ellipsoid, FaultAxes, FittedAxes, Geographic, Line,
@@ -29,7 +31,10 @@ pub use crate::stress::{
     AxisComponents, Components, EffectiveStress, FaultingRegime, HorizontalStresses, Horizontals, Invariants,
     MohrCircles, Principals, Regime, Stress, Traction, TractionVector,
 };
-pub use crate::units::{Angle, Density, Expansion, FluxDensity, Gradient, Length, Pressure, Uncertain, Units, Warming};
+pub use crate::units::{
+    Angle, Density, Expansion, FluxDensity, Gradient, Length, Pressure, Temperature, TemperatureGradient, Uncertain,
+    Units, Warming,
+};
 pub use crate::well::{
     Alternative, Breakout, CrackArc, CrackPlace, DeepestFailure, DirectionMap, Drawn, Ensemble, FailingArcs,
     FailureDepth, FieldStress, Governs, Limit, LimitKind, Limits, MapInputs, MapOf, MappedDirection, MudColumn,

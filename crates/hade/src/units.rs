@@ -5,9 +5,12 @@
 //! (1 in = 0.0254 m, 1 lb = 0.453 592 37 kg, g = 9.806 65 m/s²). A literal never fails; the first
 //! operation that can return an error refuses NaN and infinity.
 
+mod temperature;
+
 use serde::{Deserialize, Serialize};
 
 use crate::error::{Error, Result};
+pub use temperature::Temperature;
 
 /// Standard acceleration of gravity, m/s² (exact, CGPM 1901; NIST SP 811).
 pub const GRAVITY: f64 = 9.806_65;
@@ -161,6 +164,14 @@ quantity! {
     kelvin / in_kelvin = 1.0;
 }
 quantity! {
+    /// A gradient of temperature with depth; inside, kelvin per metre.
+    TemperatureGradient, "temperature gradient", shown "K/km" = 1e-3, decimals 1;
+    /// Kelvin (or degrees Celsius of difference) per kilometre.
+    kelvin_per_km / in_kelvin_per_km = 1e-3;
+    /// Degrees Fahrenheit of difference per hundred feet.
+    fahrenheit_per_100_ft / in_fahrenheit_per_100_ft = 5.0 / 9.0 / (100.0 * FOOT);
+}
+quantity! {
     /// A coefficient of linear thermal expansion; inside, per kelvin.
     Expansion, "thermal expansion", shown "10⁻⁶/K" = 1e-6, decimals 2;
     /// Per kelvin: `1e-5.per_kelvin()`.
@@ -284,6 +295,14 @@ units_on_numbers! {
     kelvin -> Warming;
     /// Per kelvin.
     per_kelvin -> Expansion;
+    /// Degrees Celsius: a temperature, where `kelvin` makes a difference of two.
+    celsius -> Temperature;
+    /// Degrees Fahrenheit: a temperature.
+    fahrenheit -> Temperature;
+    /// Kelvin of difference per kilometre.
+    kelvin_per_km -> TemperatureGradient;
+    /// Degrees Fahrenheit of difference per hundred feet.
+    fahrenheit_per_100_ft -> TemperatureGradient;
 }
 macro_rules! numbers { ($($t:ty),*) => { $(impl Units for $t { fn number(self) -> f64 { self as f64 } })* } }
 numbers!(f64, f32, i8, i16, i32, i64, u8, u16, u32, u64, isize, usize);

@@ -14,12 +14,13 @@ mod ground;
 mod limit_log;
 mod readers_alike;
 mod section_ensemble;
+mod spans;
 mod tests;
 
 pub use events::{DrillingEvent, DrillingEvents, EventKind, Hindcast, HindcastInputs, HindcastOutcome, HindcastRow};
 pub use ground::{
     Depletion, Ground, GroundInputs, GroundRecord, GroundState, GroundStateInputs, GroundStateOutcome,
-    HorizontalProfiles, Layer, MaxPath, MinPath, TopPlane,
+    HorizontalProfiles, Layer, LayerIntervals, MaxPath, MinPath, TopPlane,
 };
 pub use limit_log::{
     HoleSection, LimitLog, LogChoices, LogInputs, LogOutcome, LogRow, Narrowest, SectionEnd, SectionMud, SectionRange,

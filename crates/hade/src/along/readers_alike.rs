@@ -1,9 +1,9 @@
 //! The readers of CSV files read the same spellings, and say the same of the same mistake.
 #![cfg(test)]
 
-use crate::along::DrillingEvents;
+use crate::along::{DrillingEvents, Ground, HoleSection};
 use crate::faults::FaultSet;
-use crate::field::PressureProfile;
+use crate::field::{PressureProfile, TemperatureProfile};
 use crate::frames::Site;
 use crate::well::Survey;
 
@@ -16,7 +16,7 @@ struct Sample {
     last: [&'static str; 2],
 }
 
-const SAMPLES: [Sample; 4] = [
+const SAMPLES: [Sample; 8] = [
     Sample {
         declared: "# north: magnetic, declination: 2.5\n# angle_unit: deg\n# depth_datum: rotary table\n# depth_unit: m\n",
         names: "MD,Azimuth,Inclination",
@@ -41,6 +41,30 @@ const SAMPLES: [Sample; 4] = [
         rows: ["0,gain,1", "100,losses,1"],
         last: ["depth_unit", "Mud_Weight"],
     },
+    Sample {
+        declared: "# depth_unit: m\n# a remark\n# datum: ground, temperature_unit: C\n# hole: X\n",
+        names: "note,tvd,Ground",
+        rows: ["x,0,0", "y,100,1"],
+        last: ["hole", "Ground"],
+    },
+    Sample {
+        declared: "# depth_unit: m\n# a remark\n# datum: mean sea level, angle_unit: deg\n# pressure_unit: MPa\n",
+        names: "Layer,Top,Poisson,T0,UCS,Friction_Angle",
+        rows: ["A,0,0.2,1,10,0", "B,100,0.2,1,10,1"],
+        last: ["pressure_unit", "Friction_Angle"],
+    },
+    Sample {
+        declared: "# depth_unit: m\n# a remark\n# datum: rotary table, angle_unit: deg\n# pressure_unit: MPa\n",
+        names: "From,To,Layer,Poisson,T0,Friction_Angle,UCS",
+        rows: ["0,100,A,0.2,1,30,0", "100,200,B,0.2,1,30,1"],
+        last: ["pressure_unit", "UCS"],
+    },
+    Sample {
+        declared: "# mud_weight_unit: sg\n# a remark\n# depth_unit: m\n# datum: rotary table\n",
+        names: "Section,Mud_Weight,From,To",
+        rows: ["A,1.3,0,0.5", "B,1.3,0.5,1"],
+        last: ["datum", "To"],
+    },
 ];
 
 /// What each reader says of a text, with the words that are its own made common ones. All samples
@@ -58,18 +82,27 @@ fn said(samples: &[Sample], site: Option<Site>, text: impl Fn(&Sample) -> String
             ("Dip", None) => FaultSet::read_csv(&path).map(|_| ()),
             ("Dip", Some(site)) => FaultSet::read_csv_at(&path, site).map(|_| ()),
             ("Mud_Weight", _) => DrillingEvents::read_csv(&path).map(|_| ()),
+            ("Ground", _) => TemperatureProfile::read_csv(&path, "Ground").map(|_| ()),
+            ("Friction_Angle", _) => Ground::read_layers(&path).map(|_| ()),
+            ("UCS", _) => Ground::read_intervals(&path).map(|_| ()),
+            ("To", _) => HoleSection::read_csv(&path).map(|_| ()),
             _ => PressureProfile::read_csv(&path, "P").map(|_| ()),
         };
         let mut said = result.map_or_else(|e| e.to_string(), |()| "read".to_owned());
         let lower = sample.last[1].to_lowercase();
+        let columns = sample.names.split(',').count();
         for (own, common) in [
             (path.to_str().unwrap(), "t.csv"),
             (&format!("\"{}\"", sample.last[0]), "KEY"),
             (&format!("column \"{}\"", sample.last[1]), "column"),
             (&format!("column \"{lower}\""), "column"),
+            (&format!("{} values for {columns} columns", columns + 1), "4 values for 3 columns"),
             ("station", "row"),
             ("plane", "row"),
             ("event", "row"),
+            ("layer", "row"),
+            ("interval", "row"),
+            ("section", "row"),
             ("its strikes", "its azimuths"),
             ("FaultSet::", "Survey::"),
         ] {

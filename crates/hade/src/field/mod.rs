@@ -17,8 +17,10 @@ mod profile;
 mod reduce;
 
 pub use column::DensityColumn;
-pub(crate) use declared::{DEPTHS, PRESSURES, declared_datum};
+pub(crate) use declared::{DEPTHS, MUD_WEIGHTS, PRESSURES, declared_datum, require_measured_depths};
 pub use density_log::{DensityLog, Gap, LogSource};
 pub use overburden::{Layer, Overburden, OverburdenInputs, OverburdenOutcome, OverburdenRecord, Top};
-pub(crate) use profile::{InHole, ProfileRecord};
-pub use profile::{PressureAtDepth, PressureAtDepthInputs, PressureAtDepthOutcome, PressureProfile};
+pub(crate) use profile::{InHole, ProfileRecord, TemperatureInHole, TemperatureRecord};
+pub use profile::{
+    PressureAtDepth, PressureAtDepthInputs, PressureAtDepthOutcome, PressureProfile, TemperatureProfile,
+};

@@ -83,18 +83,27 @@ pub(super) fn along_samples() -> Vec<Card> {
         Survey::from_stations(&[station(0.0, 0.0), station(2000.0, 0.0), station(2800.0, 90.0), station(3600.0, 90.0)])
             .unwrap();
     let begin = Depth::below_rotary_table(0.m());
+    let expanding = |layer: Layer| layer.thermal_properties(14.gpa(), 1.1e-5.per_kelvin()).unwrap();
     let lateral = Ground::new(GroundInputs {
         sv: PressureProfile::from_gradient(22.6.mpa_per_km(), begin, 0.mpa()).unwrap().of("S_v", "vertical stress"),
         pore: PressureProfile::from_gradient(10.4.mpa_per_km(), begin, 0.mpa()).unwrap().of("P_p", "pore pressure"),
         horizontals: None,
         sh_max_azimuth: Azimuth::from_true_north(35.deg()),
         layers: vec![
-            Layer::from("shale", begin, rock(8.0, 30.0)).unwrap().horizontal_ratios(0.62, 0.8).unwrap(),
-            Layer::by_measured_depth("sand", rock(12.0, 38.0)).unwrap().horizontal_ratios(0.55, 0.75).unwrap(),
+            expanding(Layer::from("shale", begin, rock(8.0, 30.0)).unwrap().horizontal_ratios(0.62, 0.8).unwrap()),
+            expanding(
+                Layer::by_measured_depth("sand", rock(12.0, 38.0)).unwrap().horizontal_ratios(0.55, 0.75).unwrap(),
+            ),
         ],
     })
     .unwrap()
     .with_intervals(&[(3000.m(), 3300.m(), "sand")])
+    .unwrap()
+    .with_temperatures(
+        &TemperatureProfile::from_gradient(29.kelvin_per_km(), begin, 9.celsius()).unwrap(),
+        &TemperatureProfile::from_points(&[(0.m(), 30.celsius()), (3000.m(), 62.celsius())], Datum::RotaryTable)
+            .unwrap(),
+    )
     .unwrap();
     let bare = LogChoices {
         from: 2900.m(),

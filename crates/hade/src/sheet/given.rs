@@ -3,7 +3,7 @@
 use serde::{Deserialize, Serialize};
 
 use crate::card::Item;
-use crate::units::{Quantity, Uncertain, with_typed_unit};
+use crate::units::{Quantity, Temperature, Uncertain, Warming, with_typed_unit};
 
 /// How good the evidence for a given is.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize)]
@@ -139,7 +139,7 @@ pub struct DataFile {
 }
 
 /// What can be a given: a quantity, a plain number, an azimuth, each with or without uncertainty; a depth, a survey,
-/// planes, a pressure profile. What it is not is said where it is no [`Quantity`].
+/// planes, a profile of pressure or temperature. What it is not is said where it is no [`Quantity`].
 pub trait IntoGiven {
     /// What `Sheet::given` hands back for the computation.
     type Value;
@@ -159,5 +159,13 @@ impl<Q: Quantity> IntoGiven for Uncertain<Q> {
     fn into_given(self, symbol: &str, meaning: &str) -> (Q, Item, Option<(f64, String)>) {
         let sd = (self.give_or_take.si(), with_typed_unit(self.give_or_take));
         (self.value, Item::typed(symbol, meaning, self.value), Some(sd))
+    }
+}
+
+impl IntoGiven for Uncertain<Temperature, Warming> {
+    type Value = Temperature;
+    fn into_given(self, symbol: &str, meaning: &str) -> (Temperature, Item, Option<(f64, String)>) {
+        let (value, item, _) = self.value.into_given(symbol, meaning);
+        (value, item, Some((self.give_or_take.si(), with_typed_unit(self.give_or_take))))
     }
 }

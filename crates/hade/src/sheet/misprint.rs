@@ -3,7 +3,8 @@
 use super::Given;
 use crate::card::Item;
 use crate::units::{
-    Angle, Density, Expansion, FluxDensity, Gradient, Length, Pressure, Quantity, Warming, with_typed_unit,
+    Angle, Density, Expansion, FluxDensity, Gradient, Length, Pressure, Quantity, Temperature, TemperatureGradient,
+    Warming, with_typed_unit,
 };
 
 /// How the number of a kind is written.
@@ -14,13 +15,15 @@ fn written<Q: Quantity>(si: f64) -> String {
 }
 
 /// The kinds whose text follows from their number.
-const QUANTITIES: [(&str, Writer); 9] = [
+const QUANTITIES: [(&str, Writer); 11] = [
     (Pressure::KIND, written::<Pressure>),
     (Angle::KIND, written::<Angle>),
     (Length::KIND, written::<Length>),
     (Density::KIND, written::<Density>),
     (Gradient::KIND, written::<Gradient>),
     (Warming::KIND, written::<Warming>),
+    (Temperature::KIND, written::<Temperature>),
+    (TemperatureGradient::KIND, written::<TemperatureGradient>),
     (Expansion::KIND, written::<Expansion>),
     (FluxDensity::KIND, written::<FluxDensity>),
     (f64::KIND, written::<f64>),
@@ -37,7 +40,11 @@ pub fn misprints(given: &Given, inputs: &[&Item]) -> Vec<String> {
     if !says(item, inputs) {
         found.push(format!("Given {} prints \"{}\", which is not the value computed with", item.symbol, item.shown));
     }
-    let kind = if item.kind.starts_with(AZIMUTH) { Angle::KIND } else { item.kind.as_str() };
+    let kind = match item.kind.as_str() {
+        kind if kind.starts_with(AZIMUTH) => Angle::KIND,
+        Temperature::KIND => Warming::KIND,
+        kind => kind,
+    };
     let again = match (given.sd, writer(kind)) {
         (None, _) => Some(String::new()),
         (Some(sd), Some(write)) => Some(write(sd)),
@@ -118,6 +125,8 @@ mod tests {
         holds(8.5.inch());
         holds(1e-5.per_kelvin());
         holds((-20).kelvin());
+        holds(68.5.celsius().give_or_take(2.kelvin()));
+        holds(30.kelvin_per_km());
         holds(Azimuth::from_magnetic_north(127.deg()).give_or_take(8.deg()));
         holds(Azimuth::from_grid_north(7.5.deg()));
         holds(Azimuth::from_true_north(361.25.deg()));

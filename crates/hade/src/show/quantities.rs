@@ -5,7 +5,8 @@ use super::html::line_html;
 use super::notebook::Show;
 use crate::frames::Azimuth;
 use crate::units::{
-    Angle, Density, Expansion, FluxDensity, Gradient, Length, Pressure, Quantity, Uncertain, Warming, as_typed,
+    Angle, Density, Expansion, FluxDensity, Gradient, Length, Pressure, Quantity, Temperature, TemperatureGradient,
+    Uncertain, Warming, as_typed,
 };
 
 /// How many figures a bare value is shown with; a record keeps every bit.
@@ -46,6 +47,8 @@ shows! {
     Density: "kg/m³" in_kg_m3, "ppg" in_ppg;
     Gradient: "psi/ft" in_psi_per_ft;
     Warming: ;
+    Temperature: "°F" in_fahrenheit;
+    TemperatureGradient: "°F/100 ft" in_fahrenheit_per_100_ft;
     Expansion: ;
     FluxDensity: ;
 }

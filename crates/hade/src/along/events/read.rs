@@ -5,10 +5,8 @@ use std::path::Path;
 
 use super::event::{DrillingEvent, DrillingEvents, EventKind, MOST};
 use crate::error::Result;
-use crate::field::{DEPTHS, declared_datum};
-use crate::frames::Datum;
-use crate::lines::{Expected, Lines, Table, Units, reason, shown};
-use crate::units::Density;
+use crate::field::{DEPTHS, MUD_WEIGHTS, require_measured_depths};
+use crate::lines::{Expected, Lines, Table, reason, shown};
 
 const EXPECTED: Expected = Expected {
     keys: &[&["hole", "datum", "depth_datum", "depth_unit", "mud_weight_unit"]],
@@ -18,19 +16,6 @@ const EXPECTED: Expected = Expected {
     rows: ["event", "events"],
     most: MOST,
     fewer: "keep the events of the section that is looked at",
-};
-
-const MUD_WEIGHTS: Units<Density> = Units {
-    key: "mud_weight_unit",
-    what: "the unit of its mud weights",
-    known: &[
-        ("sg", Density::sg),
-        ("kg/m3", Density::kg_m3),
-        ("g/cm3", Density::g_cm3),
-        ("ppg", Density::ppg),
-        ("pcf", Density::pcf),
-    ],
-    fix: "write one of sg, kg/m3, g/cm3, ppg, pcf",
 };
 
 pub(super) fn read_csv(path: &Path) -> Result<DrillingEvents> {
@@ -44,15 +29,7 @@ pub(super) fn read<R: Read>(lines: Lines<R>) -> Result<DrillingEvents> {
     let ecd = table.column_if_any(&["ecd", "circulating_density"])?;
     let declared = table.declared();
     let (depth, density) = (declared.unit(&DEPTHS, None)?, declared.unit(&MUD_WEIGHTS, None)?);
-    let datum = declared_datum(declared)?;
-    if datum != Datum::RotaryTable {
-        let key = if declared.get("datum").is_some() { "datum" } else { "depth_datum" };
-        return Err(declared.bad(
-            key,
-            format!("measured depths count from the rotary table, and the file declares {}", datum.words()),
-            "give the depths along the hole from the rotary table, and write rotary table",
-        ));
-    }
+    require_measured_depths(declared)?;
     let mut events = Vec::new();
     while let Some(row) = table.next_row()? {
         let words = table.text(&row, &kind)?;

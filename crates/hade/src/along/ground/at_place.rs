@@ -91,7 +91,7 @@ impl GroundInHole<'_> {
 
     fn state_there(&self, place: &Place, index: usize) -> Result<AtPlace> {
         let tvd = place.at[2];
-        let layer = *self.layer(index).ok_or_else(|| {
+        let mut layer = *self.layer(index).ok_or_else(|| {
             Error::not_physical("A layer of the record", "the ground has no such layer; make the record again.")
         })?;
         let (sv, pore) = (self.sv.at(tvd)?, self.pore.at(tvd)?);
@@ -113,6 +113,9 @@ impl GroundInHole<'_> {
                 ));
             }
         };
+        if let Some(both) = &self.temperatures {
+            layer.thermal = both.thermal(&layer, tvd)?;
+        }
         let (paths, drawdown) = match layer.depletion {
             Some(depletion) => (depletion.paths(layer.rock.poisson)?, depletion.drawdown.si()),
             None => ([0.0; 2], 0.0),

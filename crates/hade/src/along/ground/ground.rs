@@ -8,9 +8,10 @@ use super::at_place::AtPlace;
 use super::in_hole::GroundInHole;
 use super::layer::Layer;
 use super::state::GroundState;
+use super::temperatures::Temperatures;
 use crate::error::{Error, Result};
 use crate::field::PressureProfile;
-use crate::frames::Azimuth;
+use crate::frames::{Azimuth, Name};
 use crate::units::{Length, Quantity, with_typed_unit};
 use crate::well::Survey;
 
@@ -45,6 +46,9 @@ pub(crate) struct Interval {
     pub from: Length,
     pub to: Length,
     pub layer: usize,
+    /// The file it was read from, and its SHA-256.
+    #[serde(default, skip_serializing_if = "Option::is_none")]
+    pub file: Option<[Name; 2]>,
 }
 
 /// The ground along a hole: stress, pore pressure and rock, by depth and in layers.
@@ -52,6 +56,7 @@ pub(crate) struct Interval {
 pub struct Ground {
     pub(super) inputs: GroundInputs,
     pub(super) intervals: Vec<Interval>,
+    pub(super) temperatures: Option<Temperatures>,
 }
 
 /// More layers, or more intervals, are no list that a record can hold.
@@ -90,7 +95,7 @@ impl Ground {
                 azimuth.true_north()?;
             }
         }
-        Ok(Ground { inputs, intervals: Vec::new() })
+        Ok(Ground { inputs, intervals: Vec::new(), temperatures: None })
     }
 
     /// The same with intervals of measured depth (from, to, name of the layer) in which the hole is in a
@@ -135,7 +140,7 @@ impl Ground {
                     ),
                 ));
             }
-            found.push(Interval { from, to, layer });
+            found.push(Interval { from, to, layer, file: None });
         }
         Ok(Ground { intervals: found, ..self.clone() })
     }
@@ -154,9 +159,17 @@ impl Ground {
     /// layer,top,poisson,tensile_strength,ucs,friction_angle
     /// ```
     ///
-    /// `cohesion` may stand in place of `ucs`; rock is Mohr–Coulomb. Further columns, each optional:
-    /// `k_min` and `k_max` (ratios of effective stress), `sh_max_azimuth`, and `strike`, `dip`, `north`,
-    /// `east` of a dipping top. An empty top makes a layer that intervals of measured depth reach.
+    /// `cohesion` may stand in place of `ucs`; rock is Mohr–Coulomb. Further columns, each optional, their cells
+    /// empty where they do not apply:
+    ///
+    /// - `strike`, `dip`, `north`, `east` of a dipping top; an empty top makes a layer that intervals of measured
+    ///   depth reach;
+    /// - `sh_max_azimuth`, and `k_min`, `k_max` (ratios of effective stress);
+    /// - `drawdown`, `path_min` (A, or `uniaxial` with `biot`), `path_max` (A, or `as min`) of a depleted layer;
+    /// - `wall`: `impermeable`, `permeable` (with `biot`) or `partly sealed` (with `biot` and `sealing`); empty
+    ///   leaves it impermeable, as a layer is made;
+    /// - `youngs_modulus`, `thermal_expansion`, with `# modulus_unit: GPa | MPa | psi` and
+    ///   `# expansion_unit: 1/K | 1e-6/K`.
     ///
     /// # Errors
     /// With file, line, column and what to change: a missing declaration or column, decimal commas, tops
@@ -182,7 +195,7 @@ impl Ground {
         in_hole.state(&place, in_hole.layer_at(&place)?)
     }
 
-    /// What it was made of; intervals of measured depth are not of it.
+    /// What it was made of; intervals of measured depth and temperatures are not of it.
     pub fn inputs(&self) -> GroundInputs {
         self.inputs.clone()
     }

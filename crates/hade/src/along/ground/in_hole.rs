@@ -2,6 +2,7 @@
 
 use super::ground::{Ground, Interval};
 use super::layer::{Layer, LayerTop};
+use super::temperatures::TemperaturesInHole;
 use crate::error::{Error, Result};
 use crate::field::InHole;
 use crate::frames::vector::V3;
@@ -17,6 +18,7 @@ pub(crate) struct GroundInHole<'a> {
     pub(super) pore: InHole,
     /// S_hmin and S_Hmax.
     pub(super) horizontals: Option<[InHole; 2]>,
+    pub(super) temperatures: Option<TemperaturesInHole>,
     tops: Vec<Top>,
 }
 
@@ -46,6 +48,7 @@ const CLOSE: f64 = 1e-7;
 impl<'a> GroundInHole<'a> {
     pub fn new(ground: &'a Ground, survey: &Survey) -> Result<Self> {
         survey.datum()?;
+        ground.require_one_temperature()?;
         let levels = survey.tie().ok();
         let to_rotary = |depth: Depth| match depth.below {
             Datum::RotaryTable => Ok(depth.tvd.si()),
@@ -90,6 +93,7 @@ impl<'a> GroundInHole<'a> {
             sv: inputs.sv.in_hole(levels)?,
             pore: inputs.pore.in_hole(levels)?,
             horizontals,
+            temperatures: ground.temperatures.as_ref().map(|both| both.in_hole(levels)).transpose()?,
             tops,
         })
     }
@@ -122,6 +126,11 @@ impl<'a> GroundInHole<'a> {
     /// How vertical stress and pore pressure at a depth are found, with the numbers.
     pub fn vertical_worked(&self, tvd: f64) -> [String; 2] {
         [self.sv.worked(tvd), self.pore.worked(tvd)]
+    }
+
+    /// How the temperatures at a depth are found, with the numbers; nothing where none are stated by depth.
+    pub fn temperatures_worked(&self, tvd: f64) -> Vec<String> {
+        self.temperatures.iter().flat_map(|both| [both.ground.worked(tvd), both.mud.worked(tvd)]).collect()
     }
 
     /// The pore pressure before any depletion.
@@ -157,7 +166,8 @@ impl<'a> GroundInHole<'a> {
             }
             _ => true,
         };
-        profiles && self.sv.covers(tvd) && self.pore.covers(tvd) && tvd > 0.0
+        let warmed = self.temperatures.as_ref().is_none_or(|both| both.covers(tvd));
+        profiles && warmed && self.sv.covers(tvd) && self.pore.covers(tvd) && tvd > 0.0
     }
 
     /// Where the hole passes a top or the end of an interval strictly between two places, in order of

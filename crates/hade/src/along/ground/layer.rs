@@ -3,10 +3,11 @@
 use serde::{Deserialize, Serialize};
 
 use super::depletion::Depletion;
+use super::temperatures::ThermalProperties;
 use crate::error::{Error, Result};
 use crate::frames::{Azimuth, Depth, Name, Plane};
 use crate::rock::Rock;
-use crate::units::{Angle, Length, Quantity, require_between, with_typed_unit};
+use crate::units::{Angle, Expansion, Length, Pressure, Quantity, require_between, with_typed_unit};
 use crate::well::{Seepage, Thermal, WeakPlane};
 
 /// A dipping top: a plane through a point.
@@ -48,11 +49,32 @@ pub struct Layer {
     pub(crate) depletion: Option<Depletion>,
     pub(crate) seepage: Option<Seepage>,
     pub(crate) thermal: Option<Thermal>,
+    #[serde(default, skip_serializing_if = "Option::is_none")]
+    pub(crate) thermal_properties: Option<ThermalProperties>,
     pub(crate) weak_plane: Option<WeakPlane>,
     pub(crate) creeps: bool,
     /// The file it was read from, and its SHA-256.
     #[serde(default, skip_serializing_if = "Option::is_none")]
     pub(crate) file: Option<[Name; 2]>,
+    #[serde(default, skip_serializing_if = "InFile::is_nothing")]
+    pub(crate) in_file: InFile,
+}
+
+/// What of a layer stands in its file, beside its top and its rock.
+#[derive(Clone, Copy, Debug, Default, PartialEq, Serialize, Deserialize)]
+#[serde(default)]
+pub(crate) struct InFile {
+    pub azimuth: bool,
+    pub ratios: bool,
+    pub depletion: bool,
+    pub seepage: bool,
+    pub thermal_properties: bool,
+}
+
+impl InFile {
+    fn is_nothing(&self) -> bool {
+        *self == InFile::default()
+    }
 }
 
 /// A ratio of effective stresses beyond this was mistaken.
@@ -107,15 +129,17 @@ impl Layer {
             depletion: None,
             seepage: None,
             thermal: None,
+            thermal_properties: None,
             weak_plane: None,
             creeps: false,
             file: None,
+            in_file: InFile::default(),
         })
     }
 
     /// With its own azimuth of S_Hmax in place of the ground's.
     pub fn sh_max_towards(self, azimuth: Azimuth) -> Self {
-        Layer { sh_max_azimuth: Some(azimuth), ..self }
+        Layer { sh_max_azimuth: Some(azimuth), in_file: InFile { azimuth: false, ..self.in_file }, ..self }
     }
 
     /// With its ratios of effective stress, K = (S − P_p) / (S_v − P_p), of S_hmin and S_Hmax, in place
@@ -132,7 +156,7 @@ impl Layer {
                 "exchange the two, and turn the azimuth by 90° if it belongs to the other.",
             ));
         }
-        Ok(Layer { ratios: Some([sh_min, sh_max]), ..self })
+        Ok(Layer { ratios: Some([sh_min, sh_max]), in_file: InFile { ratios: false, ..self.in_file }, ..self })
     }
 
     /// Drawn down: the profiles say what was before.
@@ -141,7 +165,7 @@ impl Layer {
     /// When the drawdown is not above zero, or a stress path or Biot's coefficient is outside 0–1.
     pub fn depleted(self, depletion: Depletion) -> Result<Self> {
         depletion.paths(self.rock.poisson)?;
-        Ok(Layer { depletion: Some(depletion), ..self })
+        Ok(Layer { depletion: Some(depletion), in_file: InFile { depletion: false, ..self.in_file }, ..self })
     }
 
     /// With a permeable wall ([`Wall::permeable`](crate::well::Wall::permeable)).
@@ -159,13 +183,25 @@ impl Layer {
     pub fn partly_sealed(self, biot: f64, sealing: f64) -> Result<Self> {
         require_between("Biot's coefficient α", biot, 0.0, 1.0)?;
         require_between("sealing of the wall", sealing, 0.0, 1.0)?;
-        Ok(Layer { seepage: Some(Seepage { biot, sealing }), ..self })
+        let in_file = InFile { seepage: false, ..self.in_file };
+        Ok(Layer { seepage: Some(Seepage { biot, sealing }), in_file, ..self })
     }
 
     /// With a wall warmed or cooled by the mud, by as much all through the layer
     /// ([`Wall::thermal`](crate::well::Wall::thermal)).
     pub fn thermal(self, thermal: Thermal) -> Self {
         Layer { thermal: Some(thermal), ..self }
+    }
+
+    /// With Young's modulus E and the coefficient of linear thermal expansion α_T of its rock, for a wall that is
+    /// warmed or cooled by what [`Ground::with_temperatures`](super::Ground::with_temperatures) says.
+    ///
+    /// # Errors
+    /// When E is not above zero or α_T is negative.
+    pub fn thermal_properties(self, youngs_modulus: Pressure, expansion: Expansion) -> Result<Self> {
+        let properties = ThermalProperties { youngs_modulus, expansion }.checked()?;
+        let in_file = InFile { thermal_properties: false, ..self.in_file };
+        Ok(Layer { thermal_properties: Some(properties), in_file, ..self })
     }
 
     /// With a plane of weakness ([`Wall::weak_plane`](crate::well::Wall::weak_plane)).
@@ -188,6 +224,7 @@ impl Layer {
         };
         let made = self.ratios.map_or(Ok(made), |[min, max]| made.horizontal_ratios(min, max))?;
         self.depletion.map_or(Ok(made), |depletion| made.depleted(depletion))?;
+        self.thermal_properties.map_or(Ok(()), |properties| properties.checked().map(|_| ()))?;
         Ok(self)
     }
 

@@ -1,26 +1,40 @@
 //! What was stated of a layer as inputs of a card.
 
 use super::depletion::{Depletion, MaxPath, MinPath};
-use super::layer::{Layer, LayerTop, TopPlane};
+use super::layer::{InFile, Layer, LayerTop, TopPlane};
+use super::temperatures::ThermalProperties;
 use crate::card::Item;
 use crate::frames::Depth;
 use crate::units::{Length, Quantity};
 use crate::well::items_beside_rock;
 
 impl Layer {
-    /// Its file, or its numbers as they were typed, each with the name of the layer.
+    /// Its file, or its numbers as they were typed, each with the name of the layer. What stands in the file is
+    /// not stated again.
     pub(super) fn items(&self) -> Vec<Item> {
+        let InFile { azimuth, ratios, depletion, seepage, thermal_properties } = self.in_file;
         let (mut items, file) = match self.file {
             Some([path, sha256]) => (Vec::new(), Some(Item::file("layers", path.text(), sha256.text()))),
-            None => (self.stated_items(), None),
+            None => (self.top_and_rock(), None),
         };
-        items.extend(self.depletion.iter().flat_map(Depletion::items));
-        items.extend(items_beside_rock(self.seepage, self.thermal, self.weak_plane));
+        items.extend(self.sh_max_azimuth.filter(|_| !azimuth).map(|azimuth| azimuth.item("A", "azimuth of S_Hmax")));
+        if let Some([min, max]) = self.ratios.filter(|_| !ratios) {
+            items.push(Item::typed("K_h", "ratio of effective stress of S_hmin", min));
+            items.push(Item::typed("K_H", "ratio of effective stress of S_Hmax", max));
+        }
+        items.extend(self.depletion.iter().filter(|_| !depletion).flat_map(Depletion::items));
+        items.extend(items_beside_rock(self.seepage.filter(|_| !seepage), self.thermal, self.weak_plane));
+        if let Some(ThermalProperties { youngs_modulus, expansion }) =
+            self.thermal_properties.filter(|_| !thermal_properties)
+        {
+            items.push(Item::typed("E", "Young's modulus", youngs_modulus));
+            items.push(Item::typed("α_T", "coefficient of linear thermal expansion", expansion));
+        }
         let of = |item: Item| Item { name: format!("{} of {}", item.name, self.name), ..item };
         file.into_iter().chain(items.into_iter().map(of)).collect()
     }
 
-    fn stated_items(&self) -> Vec<Item> {
+    fn top_and_rock(&self) -> Vec<Item> {
         let mut items = match self.top {
             LayerTop::Level(top) => vec![depth_item(top)],
             LayerTop::Plane(TopPlane { depth, north, east, plane }) => vec![
@@ -33,11 +47,6 @@ impl Layer {
             LayerTop::ByMeasuredDepth => Vec::new(),
         };
         items.extend(self.rock.items());
-        items.extend(self.sh_max_azimuth.map(|azimuth| azimuth.item("A", "azimuth of S_Hmax")));
-        if let Some([min, max]) = self.ratios {
-            items.push(Item::typed("K_h", "ratio of effective stress of S_hmin", min));
-            items.push(Item::typed("K_H", "ratio of effective stress of S_Hmax", max));
-        }
         items
     }
 }

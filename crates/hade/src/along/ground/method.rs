@@ -28,6 +28,15 @@ impl Ground {
                 .assumptions
                 .push("Depletion leaves the vertical stress as it was: no arching over the depleted layer.".to_owned());
         }
+        if self.inputs.layers.iter().any(|layer| layer.thermal_properties.is_some()) {
+            method.formulas.push(Formula::new(
+                "Delta T = T_upright(m) - T_upright(g)",
+                "ΔT = T_m − T_g, mud at the wall less ground; it adds E α_T ΔT / (1 − ν) to hoop and axial stress",
+            ));
+            method.assumptions.push(
+                "The wall has the temperature of the mud beside it, and the rock expands as an elastic one.".to_owned(),
+            );
+        }
         method.assumptions.push(
             "The vertical is a principal direction of the far-field stress at every depth; a profile of another hole holds at equal elevation.".to_owned(),
         );

@@ -7,7 +7,7 @@ use super::in_hole::GroundInHole;
 use super::layer::Layer;
 use crate::card::Item;
 use crate::error::{Error, Result};
-use crate::field::{PressureProfile, ProfileRecord};
+use crate::field::{PressureProfile, ProfileRecord, TemperatureInHole, TemperatureProfile, TemperatureRecord};
 use crate::frames::Azimuth;
 use crate::well::Place;
 
@@ -20,6 +20,9 @@ pub struct GroundRecord {
     sh_max_azimuth: Azimuth,
     layers: Vec<Layer>,
     intervals: Vec<Interval>,
+    /// Of the ground and of the mud.
+    #[serde(default, skip_serializing_if = "Option::is_none")]
+    temperatures: Option<[TemperatureRecord; 2]>,
 }
 
 impl GroundInHole<'_> {
@@ -40,7 +43,13 @@ impl GroundInHole<'_> {
         let horizontals = inputs.horizontals.as_ref().zip(self.horizontals.as_ref()).map(|(stated, [min, max])| {
             [about(&stated.sh_min, &|depth| min.own_depth(depth)), about(&stated.sh_max, &|depth| max.own_depth(depth))]
         });
+        let own = |of: &TemperatureInHole| depths.iter().map(|depth| of.own_depth(*depth)).collect::<Vec<_>>();
+        let stated = self.ground.temperatures.as_ref().zip(self.temperatures.as_ref());
+        let temperatures = stated.map(|(stated, here)| {
+            [stated.ground.record_about(&own(&here.ground)), stated.mud.record_about(&own(&here.mud))]
+        });
         GroundRecord {
+            temperatures,
             sv: about(&inputs.sv, &|depth| self.sv.own_depth(depth)),
             pore: about(&inputs.pore, &|depth| self.pore.own_depth(depth)),
             horizontals,
@@ -78,7 +87,10 @@ impl Ground {
             sh_max_azimuth: record.sh_max_azimuth,
             layers,
         })?;
-        Ok(Ground { intervals: record.intervals, ..ground })
+        let ground = Ground { intervals: record.intervals, ..ground };
+        let Some([of_ground, of_mud]) = record.temperatures else { return Ok(ground) };
+        let temperature = TemperatureProfile::from_record;
+        ground.with_temperatures(&temperature(of_ground)?, &temperature(of_mud)?)
     }
 
     /// Everything it was made of as inputs of a card.
@@ -88,11 +100,16 @@ impl Ground {
         if let Some(both) = &inputs.horizontals {
             items.extend([both.sh_min.input_item(), both.sh_max.input_item()]);
         }
+        items.extend(self.temperatures.iter().flat_map(|both| [both.ground.input_item(), both.mud.input_item()]));
         items.push(inputs.sh_max_azimuth.item("A", "azimuth of S_Hmax"));
         for layer in &inputs.layers {
             items.extend(layer.items());
         }
         for interval in &self.intervals {
+            if let Some([path, sha256]) = interval.file {
+                items.push(Item::file("intervals of layers", path.text(), sha256.text()));
+                continue;
+            }
             let name = inputs.layers.get(interval.layer).map_or("", Layer::name);
             items.push(Item::typed("", format!("beginning of {name}, measured depth"), interval.from));
             items.push(Item::typed("", format!("end of {name}, measured depth"), interval.to));

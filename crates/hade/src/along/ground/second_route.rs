@@ -4,6 +4,7 @@ use super::depletion::{MaxPath, MinPath};
 use super::in_hole::GroundInHole;
 use super::layer::Layer;
 use crate::field::InHole;
+use crate::units::Warming;
 use crate::well::Place;
 
 impl GroundInHole<'_> {
@@ -28,6 +29,15 @@ impl GroundInHole<'_> {
         let (min, max) = (total(0)?, total(1)?);
         let [of_min, of_max, drawdown] = relief(layer);
         Some([sv, pore - drawdown, min - of_min, max - of_max])
+    }
+
+    /// How much a layer's wall is warmed at a place: as it states, or by the temperatures of the other route.
+    pub fn warming_by_another_route(&self, place: &Place, index: usize) -> Option<Warming> {
+        let layer = self.layer(index)?;
+        match (layer.thermal, &self.temperatures) {
+            (None, Some(both)) => both.warming_by_another_route(place.at[2]),
+            (own, _) => own.map(|thermal| thermal.warming),
+        }
     }
 
     /// The ratio by the distances to the points in the layer; `None` for a gradient.

@@ -9,7 +9,7 @@ use super::record::GroundRecord;
 use crate::error::Result;
 use crate::frames::{Azimuth, Name};
 use crate::stress::Stress;
-use crate::units::{Angle, Length, Pressure, fixed};
+use crate::units::{Angle, Length, Pressure, Warming, fixed};
 use crate::well::{Survey, SurveyTableInputs};
 
 /// Stress, pore pressure and rock where a hole is at a measured depth, from [`Ground::at`].
@@ -32,6 +32,8 @@ pub struct GroundState {
     pub sh_max_azimuth: Azimuth,
     /// By how much the pore pressure was drawn down.
     pub drawdown: Option<Pressure>,
+    /// By how much the mud warms the wall (cooling negative); `None` where nothing says it.
+    pub warming: Option<Warming>,
     pub(super) there: AtPlace,
     pub(super) record: GroundStateInputs,
     pub(super) survey: Survey,
@@ -58,6 +60,7 @@ pub struct GroundStateOutcome {
     /// From true north.
     pub(super) sh_max_azimuth: Angle,
     pub(super) drawdown: Option<Pressure>,
+    pub(super) warming: Option<Warming>,
 }
 
 impl GroundState {
@@ -78,6 +81,7 @@ impl GroundState {
             sh_max: there.sh_max,
             sh_max_azimuth: there.sh_max_azimuth,
             drawdown: there.drawdown,
+            warming: there.layer.thermal.map(|thermal| thermal.warming),
             there,
             record,
             survey: survey.clone(),

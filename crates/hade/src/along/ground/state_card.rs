@@ -6,7 +6,7 @@ use super::state::{GroundState, GroundStateInputs, GroundStateOutcome};
 use crate::along::Ground;
 use crate::card::{Card, Check, Explain, Explanation, Item};
 use crate::error::Result;
-use crate::units::{Length, Pressure, Quantity, fixed};
+use crate::units::{Length, Pressure, Quantity, Warming, fixed};
 use crate::well::{Survey, stated_items};
 
 /// Depths that must meet may differ by this, metres.
@@ -34,6 +34,7 @@ impl Explain for GroundState {
             sh_max: self.sh_max,
             sh_max_azimuth: self.sh_max_azimuth.true_north().unwrap_or_default(),
             drawdown: self.drawdown,
+            warming: self.warming,
         }
     }
     fn check(inputs: &GroundStateInputs, outcome: &GroundStateOutcome) -> Vec<Check> {
@@ -53,6 +54,7 @@ impl Explain for GroundState {
             Item::computed("P_p", "pore pressure", self.pore),
         ];
         results.push(self.sh_max_azimuth.item("A", "azimuth of S_Hmax"));
+        results.extend(self.warming.map(|warming| Item::computed("ΔT", "warming of the wall by the mud", warming)));
         let mut method = self.ground.method();
         method.words = "The survey gives the place of the hole, the tops or the stated intervals its layer; vertical stress and pore pressure come from their profiles, the horizontal stresses from the layer's ratios of effective stress or from their profiles.".to_owned();
         Explanation {
@@ -102,7 +104,8 @@ impl GroundState {
 
     fn topics(&self) -> Vec<String> {
         let depleted = self.drawdown.map(|_| "depletion");
-        ["survey", "stress"].into_iter().chain(depleted).map(str::to_owned).collect()
+        let warmed = self.warming.map(|_| "thermal");
+        ["survey", "stress"].into_iter().chain(depleted).chain(warmed).map(str::to_owned).collect()
     }
 }
 
@@ -165,6 +168,17 @@ fn checks(inputs: &GroundStateInputs, outcome: &GroundStateOutcome) -> Result<Ve
             &[virgin - other[1]],
             1e-9 * size,
             "MPa",
+        ));
+    }
+    let warming = in_hole.warming_by_another_route(&place, index);
+    if warming.is_some() || outcome.warming.is_some() {
+        let kelvin = |warming: Option<Warming>| warming.map_or(f64::NAN, Warming::in_kelvin);
+        checks.push(Check::compare(
+            "ΔT by the distances to the points of the temperatures, a gradient in °F and feet",
+            &[kelvin(outcome.warming)],
+            &[kelvin(warming)],
+            1e-9,
+            "K",
         ));
     }
     Ok(checks)

@@ -66,6 +66,10 @@ impl GroundInHole<'_> {
                 mpa(state.pore)
             )));
         }
+        steps.extend(self.temperatures_worked(tvd).into_iter().map(Step::worked));
+        if let Some(thermal) = state.layer.thermal.filter(|_| state.layer.thermal_properties.is_some()) {
+            steps.push(Step::worked(format!("ΔT = T_m − T_g = {} K", fixed(thermal.warming.in_kelvin(), 3))));
+        }
         steps
     }
 }

@@ -221,7 +221,7 @@ impl LimitLog {
         when(layers.iter().any(|layer| layer.depletion.is_some()), "depletion");
         when(layers.iter().any(|layer| layer.creeps), "creep");
         when(layers.iter().any(|layer| layer.seepage.is_some_and(|seepage| seepage.sealing < 1.0)), "permeable-wall");
-        when(layers.iter().any(|layer| layer.thermal.is_some()), "thermal");
+        when(layers.iter().any(|layer| layer.thermal.is_some() || layer.thermal_properties.is_some()), "thermal");
         when(layers.iter().any(|layer| layer.weak_plane.is_some()), "weak-plane");
         topics.into_iter().map(str::to_owned).collect()
     }

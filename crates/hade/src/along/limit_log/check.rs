@@ -10,7 +10,7 @@ use super::summary::LogOutcome;
 use crate::along::ground::{AtPlace, GroundInHole};
 use crate::card::Check;
 use crate::error::Result;
-use crate::units::{Length, Pressure, Quantity};
+use crate::units::{Length, Pressure, Quantity, Warming};
 use crate::well::{Conditions, GovernedPressure, MudState, Survey, nearest_to_failing};
 
 /// The static gradient of a fluid of specific gravity 1 in psi/ft, from the definitions of both units.
@@ -24,6 +24,7 @@ pub(super) fn check(inputs: &LogInputs, outcome: &LogOutcome) -> Vec<Check> {
     let Ok(states) = states(inputs, &survey, &in_hole) else { return Vec::new() };
     let mut checks = places(inputs, outcome, &survey, &in_hole);
     checks.push(stresses(inputs, outcome, &states, &in_hole));
+    checks.extend(warming(inputs, outcome, &states, &in_hole));
     checks.extend(walls(inputs, outcome, &states));
     checks.extend(whole(outcome));
     checks.extend(sections(inputs, outcome));
@@ -83,6 +84,26 @@ fn stresses(inputs: &LogInputs, outcome: &LogOutcome, states: &[AtPlace], in_hol
         1e-9 * size,
         "MPa",
     )
+}
+
+/// ΔT of every row by the distances to the points of the temperatures, a gradient in °F per 100 ft.
+fn warming(inputs: &LogInputs, outcome: &LogOutcome, states: &[AtPlace], in_hole: &GroundInHole<'_>) -> Option<Check> {
+    let looks = states.iter().zip(&inputs.printed);
+    let other: Vec<_> =
+        looks.map(|(state, (_, layer))| in_hole.warming_by_another_route(&state.place, *layer)).collect();
+    let got: Vec<_> = outcome.rows.iter().map(|row| row.warming).collect();
+    let any = other.iter().chain(&got).any(Option::is_some);
+    // No wall is cooled by 1000 K: it stands for one that is not warmed.
+    let kelvin = |all: &[Option<Warming>]| all.iter().map(|w| w.map_or(-1e3, Warming::in_kelvin)).collect::<Vec<_>>();
+    any.then(|| {
+        Check::compare(
+            "ΔT of every row by the distances to the points of the temperatures, a gradient in °F and feet",
+            &kelvin(&got),
+            &kelvin(&other),
+            1e-9,
+            "K",
+        )
+    })
 }
 
 /// Least stress, limits and ends of every row, by the second route of the wall under the row's stresses.

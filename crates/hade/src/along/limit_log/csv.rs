@@ -8,7 +8,7 @@ use crate::error::{Error, Result};
 use crate::units::{Length, Pressure, Quantity};
 use crate::well::GovernedPressure;
 
-const COLUMNS: [&str; 18] = [
+const COLUMNS: [&str; 19] = [
     "md",
     "tvd",
     "layer",
@@ -27,11 +27,13 @@ const COLUMNS: [&str; 18] = [
     "top_governed_by",
     "bottom_mud_weight",
     "top_mud_weight",
+    "warming",
 ];
 
 impl LimitLog {
     /// Writes every depth as a CSV file with full figures: depths in metres, pressures in MPa, mud
-    /// weights in sg, empty where there is no limit. The file is written aside and renamed, so that none is ever half written.
+    /// weights in sg, the warming of the wall in K, empty where there is none. The file is written aside and renamed,
+    /// so that none is ever half written.
     ///
     /// # Errors
     /// When the file cannot be written.
@@ -57,7 +59,7 @@ impl LimitLog {
 
     fn text(&self) -> std::result::Result<Vec<u8>, String> {
         let declared = format!(
-            "# hole: {}\n# depth_datum: rotary table\n# depth_unit: m\n# pressure_unit: MPa\n# mud_weight_unit: sg\n# allowed width of a failing arc, per lobe: {}\n# margin at the bottom: {}, at the top: {}\n",
+            "# hole: {}\n# depth_datum: rotary table\n# depth_unit: m\n# pressure_unit: MPa\n# mud_weight_unit: sg\n# warming_unit: K\n# allowed width of a failing arc, per lobe: {}\n# margin at the bottom: {}, at the top: {}\n",
             self.hole().replace(['\r', '\n'], " "),
             crate::units::with_typed_unit(self.choices.allowed_width),
             crate::units::with_typed_unit(self.choices.margin_bottom),
@@ -72,7 +74,7 @@ impl LimitLog {
     }
 }
 
-fn cells(row: &LogRow) -> [String; 18] {
+fn cells(row: &LogRow) -> [String; 19] {
     let m = |depth: Length| depth.si().to_string();
     let mpa = |pressure: Pressure| pressure.in_mpa().to_string();
     let some = |pressure: Option<Pressure>| pressure.map(mpa).unwrap_or_default();
@@ -101,5 +103,6 @@ fn cells(row: &LogRow) -> [String; 18] {
         governed(row.top),
         weight(row.bottom),
         weight(row.top),
+        row.warming.map(|warming| warming.in_kelvin().to_string()).unwrap_or_default(),
     ]
 }

@@ -9,7 +9,7 @@ use super::choices::LogChoices;
 use super::printed::printed;
 use super::row::LogRow;
 use super::sample::{Look, looks, whole};
-use super::section::{HoleSection, SectionRange};
+use super::section::{HoleSection, MOST_SECTIONS, SectionRange};
 use super::summary::{LogOutcome, Narrowest};
 use crate::along::ground::{AtPlace, Ground, GroundInHole, GroundRecord};
 use crate::error::{Error, Result};
@@ -45,9 +45,6 @@ pub struct LogInputs {
     pub(super) printed: Vec<(Length, usize)>,
     pub(super) looked: usize,
 }
-
-/// More sections than a hole has are a mistake.
-const MOST_SECTIONS: usize = 20;
 
 impl LimitLog {
     /// The bare limits along the whole hole, as far as the ground is known: no failing arc is allowed, no

@@ -8,6 +8,7 @@ mod figure;
 #[allow(clippy::module_inception)]
 mod limit_log;
 mod printed;
+mod read_sections;
 mod row;
 mod sample;
 mod section;

@@ -6,7 +6,7 @@ use super::choices::LogChoices;
 use crate::along::ground::AtPlace;
 use crate::error::{Error, Result};
 use crate::frames::Name;
-use crate::units::{Density, Length, Pressure, with_typed_unit};
+use crate::units::{Density, Length, Pressure, Warming, with_typed_unit};
 use crate::well::{Ends, GovernedPressure, Wall, pushed_out_above};
 
 /// The limits at one depth of a log. At a contact there are two rows, one for each layer.
@@ -28,6 +28,10 @@ pub struct LogRow {
     pub sh_min: Pressure,
     /// The pore pressure.
     pub pore: Pressure,
+    /// How much the mud warms the wall, cooling negative; `None` where the wall is at the temperature of the
+    /// ground.
+    #[serde(default, skip_serializing_if = "Option::is_none")]
+    pub warming: Option<Warming>,
     /// The least principal stress.
     pub least_stress: Pressure,
     /// The lower shear limit at the allowed width; `None` when no pressure keeps failing arcs within it,
@@ -56,6 +60,7 @@ impl LogRow {
             sh_max: state.sh_max,
             sh_min: state.sh_min,
             pore: state.pore,
+            warming: state.layer.thermal.map(|thermal| thermal.warming),
             least_stress: limits.least_stress.pressure().unwrap_or_default(),
             lower_shear: limits.lower_shear.pressure(),
             initiation: limits.initiation.pressure(),

@@ -17,18 +17,43 @@ pub struct HoleSection {
     pub(super) from: Length,
     pub(super) to: Length,
     pub(super) mud: Option<MudPlan>,
+    /// The file it was read from, and its SHA-256.
+    #[serde(default, skip_serializing_if = "Option::is_none")]
+    pub(super) file: Option<[Name; 2]>,
 }
+
+/// More sections than a hole has are a mistake.
+pub(super) const MOST_SECTIONS: usize = 20;
 
 impl HoleSection {
     /// A section by its name ("8½ in") and the measured depths it runs between.
     pub fn between(name: &str, from: Length, to: Length) -> Self {
-        HoleSection { name: Name::new(name.trim()), from, to, mud: None }
+        HoleSection { name: Name::new(name.trim()), from, to, mud: None, file: None }
     }
 
     /// With the mud it is to be drilled with. Swab and surge are the same pressure at every depth of the
     /// section: state those at its end, where they are largest.
     pub fn with_mud(self, mud: MudPlan) -> Self {
-        HoleSection { mud: Some(mud), ..self }
+        HoleSection { mud: Some(mud), file: None, ..self }
+    }
+
+    /// Sections with their muds from a CSV file, from the top down:
+    ///
+    /// ```text
+    /// # datum: rotary table
+    /// # depth_unit: m | ft
+    /// # mud_weight_unit: sg | kg/m3 | g/cm3 | ppg | pcf
+    /// # pressure_unit: MPa | kPa | Pa | bar | psi       (where swab or surge are stated)
+    /// section,from,to,mud_weight,ecd,swab,surge
+    /// ```
+    ///
+    /// The last four columns are optional and their cells may be empty: what is not known is not stated.
+    ///
+    /// # Errors
+    /// With file, line, column and what to change: a missing declaration or column, decimal commas, a row that
+    /// does not begin where the one before ends, more than 20 rows, a mud that cannot be.
+    pub fn read_csv(path: impl AsRef<std::path::Path>) -> Result<Vec<Self>> {
+        super::read_sections::read_csv(path.as_ref())
     }
 
     pub(crate) fn name(&self) -> &'static str {
@@ -84,6 +109,10 @@ impl HoleSection {
             Item::typed("", of("beginning, measured depth,"), self.from).chosen(),
             Item::typed("", of("end, measured depth,"), self.to).chosen(),
         ];
+        if let Some([path, sha256]) = self.file {
+            items.push(Item::file(format!("section {} and its mud", self.name), path.text(), sha256.text()));
+            return items;
+        }
         if let Some(mud) = self.mud {
             items.push(Item::typed("ρ_m", of("static mud weight"), mud.static_density));
             items.extend(mud.swab.map(|swab| Item::typed("Δp_sw", of("swab"), swab)));

@@ -101,9 +101,10 @@ fn end_cell(row: &LogRow, end: Option<GovernedPressure>) -> String {
 }
 
 fn ground_table(outcome: &LogOutcome) -> Table {
+    let warmed = outcome.rows.iter().any(|row| row.warming.is_some());
     let row = |row: &LogRow| {
         let mpa = |pressure: Pressure| fixed(pressure.in_mpa(), 2);
-        vec![
+        let mut cells = vec![
             fixed(row.md.si(), 1),
             fixed(row.tvd.si(), 1),
             format!("{}{}", row.layer(), if row.depleted { " (depleted)" } else { "" }),
@@ -111,19 +112,25 @@ fn ground_table(outcome: &LogOutcome) -> Table {
             mpa(row.sh_max),
             mpa(row.sh_min),
             mpa(row.pore),
-        ]
+        ];
+        if warmed {
+            cells.push(row.warming.map_or_else(|| "–".to_owned(), |warming| fixed(warming.in_kelvin(), 1)));
+        }
+        cells
     };
+    let mut columns = vec![
+        Column::number("MD", "m"),
+        Column::number("TVD", "m"),
+        Column::text("layer"),
+        Column::number("S_v", "MPa"),
+        Column::number("S_Hmax", "MPa"),
+        Column::number("S_hmin", "MPa"),
+        Column::number("P_p", "MPa"),
+    ];
+    columns.extend(warmed.then(|| Column::number("ΔT", "K")));
     Table {
         caption: "The ground at the printed depths; both sides of a contact are rows of their own".to_owned(),
-        columns: vec![
-            Column::number("MD", "m"),
-            Column::number("TVD", "m"),
-            Column::text("layer"),
-            Column::number("S_v", "MPa"),
-            Column::number("S_Hmax", "MPa"),
-            Column::number("S_hmin", "MPa"),
-            Column::number("P_p", "MPa"),
-        ],
+        columns,
         rows: outcome.rows.iter().map(row).collect(),
     }
 }

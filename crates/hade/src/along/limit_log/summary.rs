@@ -21,7 +21,7 @@ pub struct Narrowest {
 /// What came out: the rows that are printed, and what the log comes to.
 #[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
 pub struct LogOutcome {
-    pub(super) rows: Vec<LogRow>,
+    pub(in crate::along) rows: Vec<LogRow>,
     /// `None` when an end is missing at every depth.
     pub(super) narrowest: Option<Narrowest>,
     /// Where no pressure is recommended, by measured depth.

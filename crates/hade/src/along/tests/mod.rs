@@ -6,6 +6,7 @@ mod ground;
 mod log;
 mod record;
 mod section_ensemble;
+mod temperatures;
 
 use crate::along::*;
 use crate::card::Explain;

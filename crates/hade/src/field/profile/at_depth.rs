@@ -2,9 +2,10 @@
 
 use serde::{Deserialize, Serialize};
 
+use super::about::{ProfileAbout, ProfileSource};
 use super::at_depth_card::explain;
 use super::law::{Law, Start};
-use super::pressure_profile::{PressureProfile, ProfileAbout, ProfileSource};
+use super::pressure_profile::PressureProfile;
 use crate::card::{Check, Explain, Explanation};
 use crate::error::Result;
 use crate::frames::{Datum, DatumTie, Depth};
@@ -139,7 +140,7 @@ impl Explain for PressureAtDepth {
             ),
             Check::compare(
                 match inputs.law {
-                    Law::Table { .. } => "pressure by weighting the two points of the table with the distances to them",
+                    Law::Table(_) => "pressure by weighting the two points of the table with the distances to them",
                     Law::Gradient { .. } => "pressure from the gradient in psi/ft and the depths in feet",
                 },
                 &[outcome.pressure.in_psi()],
@@ -185,13 +186,7 @@ impl Explain for PressureAtDepth {
 /// The pressure at a depth below the profile's datum, by a route the computation does not take.
 pub(super) fn by_another_route(law: &Law, tie: Option<DatumTie>, depth: Length) -> Option<Pressure> {
     match law {
-        Law::Table { points, .. } => {
-            // The ends of the segment by a search from the bottom up.
-            let (z1, p1) = *points.iter().rev().find(|p| p.0.si() <= depth.si() + MEET)?;
-            let Some((z2, p2)) = points.iter().find(|p| p.0.si() > z1.si()) else { return Some(p1) };
-            let (to_lower, to_upper, length) = (z2.si() - depth.si(), depth.si() - z1.si(), z2.si() - z1.si());
-            Some(Pressure::from_si((p1.si() * to_lower + p2.si() * to_upper) / length))
-        }
+        Law::Table(table) => table.by_distances(depth),
         Law::Gradient { from, start, gradient } => {
             let begin = match start {
                 Start::Stated { pressure } => pressure.in_psi(),

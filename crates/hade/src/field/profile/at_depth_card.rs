@@ -1,9 +1,10 @@
 //! What the card of a pressure at a depth says: the depth in the datum of the profile, the two
 //! points or the gradient with their numbers, and the mud weight.
 
+use super::about::{ProfileAbout, ProfileSource};
 use super::at_depth::{PressureAtDepth, PressureAtDepthInputs};
 use super::law::{Law, Start};
-use super::pressure_profile::{ProfileAbout, ProfileSource, whole_item};
+use super::pressure_profile::whole_item;
 use crate::card::{Axis, Explanation, Figure, Formula, Item, Layer, Mark, Method, Reference, Role, Step};
 use crate::frames::{Datum, DatumTie, Depth, LevelSource, level_items, tvd_words};
 use crate::units::{GRAVITY, Length, Pressure, Quantity, as_typed, fixed, with_typed_unit};
@@ -35,7 +36,7 @@ pub(super) fn explain(at: &PressureAtDepth) -> Explanation {
     }
     let mut steps = depth_steps(at);
     match &record.law {
-        Law::Table { .. } => steps.extend(table_steps(at)),
+        Law::Table(_) => steps.extend(table_steps(at)),
         Law::Gradient { from, start, gradient } => {
             if let (Start::Sea { density }, Some(tie)) = (start, about.tie) {
                 let deep = -tie.elevation(Datum::Mudline).unwrap_or_default();
@@ -119,7 +120,8 @@ fn depth_steps(at: &PressureAtDepth) -> Vec<Step> {
 
 fn table_steps(at: &PressureAtDepth) -> Vec<Step> {
     let depth = at.law_depth();
-    let Ok(((z1, p1), (z2, p2))) = at.record().law.around(depth) else { return Vec::new() };
+    let Law::Table(table) = &at.record().law else { return Vec::new() };
+    let Ok(((z1, p1), (z2, p2))) = table.around(depth) else { return Vec::new() };
     if z1 == z2 {
         return vec![Step::words(format!("The table holds the value at TVD {} m: {} MPa.", metres(z1), mpa(p1)))];
     }
@@ -246,7 +248,7 @@ fn levels(about: &ProfileAbout, depth: Depth, mut used: Vec<Datum>, under_sea: b
 
 fn method(law: &Law) -> Method {
     let (words, formulas, symbols, assumption) = match law {
-        Law::Table { .. } => (
+        Law::Table(_) => (
             "A straight line between the two points of the table around the depth. Nothing is extrapolated. The mud weight is that of a static column from the rotary table down.",
             vec![Formula::new("P = P_1 + (P_2 - P_1) (z - z_1) / (z_2 - z_1)", "P = P₁ + (P₂ − P₁)(z − z₁)/(z₂ − z₁)")],
             vec![("z₁, P₁, z₂, P₂".to_owned(), "the points of the table above and below the depth".to_owned())],
@@ -312,7 +314,7 @@ fn figure(at: &PressureAtDepth) -> Figure {
     let record = at.record();
     let here = [at.pressure.in_mpa(), at.law_depth().si()];
     let points: Vec<[f64; 2]> = match &record.law {
-        Law::Table { points, .. } => points.iter().map(|(z, p)| [p.in_mpa(), z.si()]).collect(),
+        Law::Table(table) => table.points.iter().map(|(z, p)| [p.in_mpa(), z.si()]).collect(),
         Law::Gradient { from, start, .. } => {
             let begin = Law::start_pressure(*start, record.about.tie).unwrap_or_default();
             vec![[begin.in_mpa(), from.tvd.si()], here]
@@ -327,7 +329,7 @@ fn figure(at: &PressureAtDepth) -> Figure {
     let ((left, right), (top, bottom)) = (span(0, 0.5), span(1, 5.0));
     let below = record.law.datum().words();
     let mut layers = vec![Layer::line(&record.about.symbol, Role::First, points.iter().copied())];
-    if matches!(record.law, Law::Table { .. }) && points.len() <= 60 {
+    if matches!(record.law, Law::Table(_)) && points.len() <= 60 {
         layers.push(Layer::Points { label: String::new(), role: Role::Quiet, mark: Mark::Cross, points });
     }
     layers.push(Layer::Points {

@@ -2,12 +2,14 @@
 
 use serde::{Deserialize, Serialize};
 
+use super::about::{ProfileAbout, ProfileSource};
 use super::at_depth::by_another_route;
-use super::law::{Law, Point};
-use super::pressure_profile::{PressureProfile, ProfileAbout, ProfileData, ProfileSource, whole_item};
+use super::law::Law;
+use super::points::{Point, Points};
+use super::pressure_profile::{PressureProfile, ProfileData, whole_item};
 use crate::card::Item;
 use crate::error::{Error, Result};
-use crate::frames::{DatumTie, Depth};
+use crate::frames::DatumTie;
 use crate::units::{Length, Pressure, Quantity, as_typed, fixed};
 
 /// A profile in a hole.
@@ -29,19 +31,13 @@ impl PressureProfile {
     /// The profile in a hole with these levels. A profile that states levels of its own, of another
     /// hole, is carried over at equal elevation; one that states none is of this hole.
     pub(crate) fn in_hole(&self, levels: Option<DatumTie>) -> Result<InHole> {
-        let own = self.data().about.tie;
-        let profile = match (levels, own) {
-            (Some(levels), Some(own)) if own != levels => self.carried_to(levels),
-            (Some(levels), None) => self.tied(levels)?,
-            _ => self.clone(),
-        };
-        let data = profile.data();
-        let zero = Depth::below_rotary_table(Length::default());
-        let shift = data.about.in_datum(zero, data.law.datum())?.si();
-        if let Law::Gradient { start, .. } = &data.law {
-            Law::start_pressure(*start, data.about.tie)?;
+        let ProfileData { about, law } = self.data();
+        let about = about.clone().in_hole(levels);
+        let shift = about.shift(law.datum())?;
+        if let Law::Gradient { start, .. } = law {
+            Law::start_pressure(*start, about.tie)?;
         }
-        Ok(InHole { shift, profile })
+        Ok(InHole { shift, profile: PressureProfile::build(about, law.clone()) })
     }
 
     /// As a record holds it. Of a file, only the points about these depths below its datum: what
@@ -94,8 +90,8 @@ impl InHole {
         let at = self.at(tvd).map_or(f64::NAN, |p| p * 1e-6);
         let (z, mpa) = (|z: Length| fixed(z.si(), 2), |p: Pressure| fixed(p.in_mpa(), 4));
         let place = format!("at TVD {} m below {}", z(depth), data.law.datum().words());
-        match (&data.law, data.law.around(depth)) {
-            (Law::Gradient { from, start, gradient }, _) => format!(
+        match &data.law {
+            Law::Gradient { from, start, gradient } => format!(
                 "{symbol} {place} = {} + {} MPa/km · ({} − ({})) m / 1000 = {} MPa",
                 mpa(Law::start_pressure(*start, data.about.tie).unwrap_or_default()),
                 as_typed(gradient.in_mpa_per_km()),
@@ -103,16 +99,18 @@ impl InHole {
                 z(from.tvd),
                 fixed(at, 4)
             ),
-            (_, Ok(((z1, p1), (z2, p2)))) if z1 != z2 => format!(
-                "{symbol} {place} = {p} + ({} − {p}) · ({} − {t}) / ({} − {t}) = {} MPa",
-                mpa(p2),
-                z(depth),
-                z(z2),
-                fixed(at, 4),
-                p = mpa(p1),
-                t = z(z1)
-            ),
-            _ => format!("{symbol} {place} = {} MPa, a point of its table", fixed(at, 4)),
+            Law::Table(table) => match table.around(depth) {
+                Ok(((z1, p1), (z2, p2))) if z1 != z2 => format!(
+                    "{symbol} {place} = {p} + ({} − {p}) · ({} − {t}) / ({} − {t}) = {} MPa",
+                    mpa(p2),
+                    z(depth),
+                    z(z2),
+                    fixed(at, 4),
+                    p = mpa(p1),
+                    t = z(z1)
+                ),
+                _ => format!("{symbol} {place} = {} MPa, a point of its table", fixed(at, 4)),
+            },
         }
     }
 
@@ -126,8 +124,8 @@ impl InHole {
     /// The points of a table within an interval of depths below the rotary table, nearest to a depth:
     /// the one at or above it, and the one below it. `None` for a gradient, which has no points.
     pub fn points_about(&self, tvd: f64, [from, to]: [f64; 2]) -> Option<[Option<f64>; 2]> {
-        let Law::Table { points, .. } = &self.profile.data().law else { return None };
-        let back = |p: &Point| p.0.si() - self.shift;
+        let Law::Table(Points { points, .. }) = &self.profile.data().law else { return None };
+        let back = |p: &Point<Pressure>| p.0.si() - self.shift;
         let next = points.partition_point(|p| back(p) <= tvd);
         let above = next.checked_sub(1).and_then(|k| points.get(k)).map(back).filter(|z| *z >= from);
         let below = points.get(next).map(back).filter(|z| *z < to);

@@ -3,10 +3,10 @@
 use std::path::Path;
 use std::sync::Arc;
 
-use serde::{Deserialize, Serialize};
-
+use super::about::{ProfileAbout, ProfileSource};
 use super::at_depth::PressureAtDepth;
 use super::law::{Law, Start};
+use super::points::Points;
 use crate::card::Item;
 use crate::error::{Error, Result};
 use crate::frames::{Datum, DatumTie, Depth, Name};
@@ -28,91 +28,8 @@ pub(super) struct ProfileData {
     pub law: Law,
 }
 
-/// What a profile says about itself besides its numbers.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
-pub(super) struct ProfileAbout {
-    /// The symbol of the pressure ("S_hmin").
-    pub symbol: String,
-    /// What the pressure is.
-    pub meaning: String,
-    pub hole: Option<Name>,
-    pub source: ProfileSource,
-    /// The levels of the profile's own hole.
-    pub tie: Option<DatumTie>,
-    pub tie_in_file: bool,
-    /// The levels of the hole that depths are asked in, when it is another one.
-    pub other_hole: Option<DatumTie>,
-    /// Whether a gradient was handed to the sheet as one given.
-    pub one_given: bool,
-}
-
-/// Where the numbers of a profile came from.
-#[derive(Clone, Debug, PartialEq, Eq, Serialize, Deserialize)]
-#[serde(tag = "from", rename_all = "snake_case")]
-pub(super) enum ProfileSource {
-    Typed,
-    File { path: String, sha256: String, column: String },
-}
-
 /// A table that is typed holds no more points than this, so that the record can hold it.
 const MOST_TYPED: usize = 2000;
-
-impl ProfileAbout {
-    fn typed() -> Self {
-        ProfileAbout {
-            symbol: "P".to_owned(),
-            meaning: "pressure".to_owned(),
-            hole: None,
-            source: ProfileSource::Typed,
-            tie: None,
-            tie_in_file: false,
-            other_hole: None,
-            one_given: false,
-        }
-    }
-
-    /// The levels of the hole that depths are asked in.
-    pub fn hole_tie(&self) -> Option<DatumTie> {
-        self.other_hole.or(self.tie)
-    }
-
-    /// A depth of the hole asked in, below the datum of the profile.
-    pub fn in_datum(&self, depth: Depth, datum: Datum) -> Result<Length> {
-        let untied = |from: Datum, to: Datum| {
-            Error::undeclared(
-                format!(
-                    "Depths below {} and depths below {} are not tied together for this {}",
-                    from.words(),
-                    to.words(),
-                    self.meaning
-                ),
-                "state the levels of the hole with .tied(DatumTie::rotary_table_at(…)?.with_ground_at(…)?)?, or .with_mudline_at(…)? at sea.",
-            )
-        };
-        depth.tvd.finite("depth")?;
-        match (self.other_hole, self.tie) {
-            (None, _) if depth.below == datum => Ok(depth.tvd),
-            (None, Some(tie)) => Ok(tie.convert(depth, datum)?.tvd),
-            (None, None) => Err(untied(depth.below, datum)),
-            (Some(hole), own) => {
-                let sea = hole.convert(depth, Datum::MeanSeaLevel)?;
-                match own {
-                    Some(own) => Ok(own.convert(sea, datum)?.tvd),
-                    None if datum == Datum::MeanSeaLevel => Ok(sea.tvd),
-                    None => Err(untied(Datum::MeanSeaLevel, datum)),
-                }
-            }
-        }
-    }
-
-    /// A depth of the hole asked in, below its rotary table, where that is known.
-    pub fn below_rotary(&self, depth: Depth) -> Option<Length> {
-        match self.hole_tie() {
-            Some(tie) => tie.convert(depth, Datum::RotaryTable).ok().map(|d| d.tvd),
-            None => (depth.below == Datum::RotaryTable).then_some(depth.tvd),
-        }
-    }
-}
 
 impl PressureProfile {
     /// A table of at most 2000 points, in order of true vertical depth below a datum; straight lines
@@ -129,7 +46,10 @@ impl PressureProfile {
                 format!("at most {MOST_TYPED}, so that the record can hold them; put a longer table into a file"),
             ));
         }
-        Ok(PressureProfile::build(ProfileAbout::typed(), Law::table(datum, points.to_vec())?))
+        Ok(PressureProfile::build(
+            ProfileAbout::typed("P", "pressure"),
+            Law::Table(Points::new(datum, points.to_vec())?),
+        ))
     }
 
     /// A gradient from a level down: `pressure` at `from`, growing by `gradient` with depth below it.
@@ -140,7 +60,7 @@ impl PressureProfile {
     /// beyond 2 GPa.
     pub fn from_gradient(gradient: Gradient, from: Depth, pressure: Pressure) -> Result<Self> {
         let law = Law::gradient(from, Start::Stated { pressure }, gradient)?;
-        Ok(PressureProfile::build(ProfileAbout::typed(), law))
+        Ok(PressureProfile::build(ProfileAbout::typed("P", "pressure"), law))
     }
 
     /// At sea: a gradient from the mudline down, on top of the weight of the sea from mean sea level
@@ -151,7 +71,7 @@ impl PressureProfile {
     pub fn from_mudline(gradient: Gradient, sea_water: Density) -> Result<Self> {
         let from = Depth::below_mudline(Length::default());
         let law = Law::gradient(from, Start::Sea { density: sea_water }, gradient)?;
-        Ok(PressureProfile::build(ProfileAbout::typed(), law))
+        Ok(PressureProfile::build(ProfileAbout::typed("P", "pressure"), law))
     }
 
     /// Reads one column of a CSV file. Lines that begin with `#` above the column names declare what
@@ -185,7 +105,14 @@ impl PressureProfile {
         source: ProfileSource,
     ) -> Self {
         let meaning = column.trim().to_owned();
-        let about = ProfileAbout { meaning, hole, source, tie, tie_in_file: tie.is_some(), ..ProfileAbout::typed() };
+        let about = ProfileAbout {
+            meaning,
+            hole,
+            source,
+            tie,
+            tie_in_file: tie.is_some(),
+            ..ProfileAbout::typed("P", "pressure")
+        };
         PressureProfile::build(about, law)
     }
 
@@ -217,17 +144,8 @@ impl PressureProfile {
     /// # Errors
     /// When the file states other levels.
     pub fn tied(&self, tie: DatumTie) -> Result<Self> {
-        match self.data.about.tie {
-            Some(stated) if stated == tie => Ok(self.clone()),
-            Some(stated) if self.data.about.tie_in_file => Err(Error::not_physical(
-                format!("The levels of the table's hole ({})", tie.words()),
-                format!("its file states others: {}; correct one of the two.", stated.words()),
-            )),
-            _ => Ok(self.changed(|about| {
-                about.tie = Some(tie);
-                about.tie_in_file = false;
-            })),
-        }
+        let about = self.data.about.clone().tied(tie)?;
+        Ok(PressureProfile::build(about, self.data.law.clone()))
     }
 
     /// The same for another hole with its own levels: a depth of that hole is carried over at equal
@@ -245,7 +163,7 @@ impl PressureProfile {
     /// The depths it covers, below its datum; a gradient has no lower end.
     pub fn covers(&self) -> (Length, Option<Length>) {
         match &self.data.law {
-            Law::Table { ends: [first, last], .. } => (*first, Some(*last)),
+            Law::Table(Points { ends: [first, last], .. }) => (*first, Some(*last)),
             Law::Gradient { from, .. } => (from.tvd, None),
         }
     }
@@ -270,7 +188,7 @@ pub(super) fn whole_item(about: &ProfileAbout, law: &Law) -> Item {
     let below = law.datum().words();
     let hole = about.hole.map(|name| format!(" of {name}")).unwrap_or_default();
     match law {
-        Law::Table { points, count, ends: [first, last], .. } => Item::new(
+        Law::Table(Points { points, count, ends: [first, last], .. }) => Item::new(
             &about.symbol,
             format!("{} against depth{hole}", about.meaning),
             format!("pressure against depth below {below}"),

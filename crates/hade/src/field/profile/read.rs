@@ -1,20 +1,22 @@
-//! Reading one column of pressure against depth from CSV, strictly and line by line.
+//! Reading one column of pressure or temperature against depth from CSV, strictly and line by line.
 
 use std::io::Read;
 use std::path::Path;
 
-use super::law::{Law, Point, require_point};
-use super::pressure_profile::{PressureProfile, ProfileSource};
+use super::about::ProfileSource;
+use super::law::Law;
+use super::points::{AgainstDepth, Point, Points, require_point};
+use super::pressure_profile::PressureProfile;
 use crate::error::{Error, Result};
-use crate::field::declared::{DEPTHS, PRESSURES, declared_datum};
-use crate::frames::{Datum, LEVEL_KEYS, Name, declared_tie};
-use crate::lines::{Column, Expected, Lines, Row, Table, Unit, heading, reason, shown};
-use crate::units::{Length, Pressure};
+use crate::field::declared::{DEPTHS, PRESSURES, TEMPERATURES, declared_datum};
+use crate::frames::{Datum, DatumTie, LEVEL_KEYS, Name, declared_tie};
+use crate::lines::{Column, Expected, Lines, Row, Table, Unit, Units, heading, reason, shown};
+use crate::units::{Length, Temperature};
 
-/// More rows than this are no table of pressures but a log.
+/// More rows than this are no table by depth but a log.
 const MOST_ROWS: usize = 100_000;
 
-const EXPECTED: Expected = Expected {
+const OF_PRESSURE: Expected = Expected {
     keys: &[&["hole", "datum", "depth_datum", "depth_unit", "pressure_unit"], &LEVEL_KEYS],
     file: "a table with the columns tvd and pressure",
     names: "tvd, pressure",
@@ -24,12 +26,27 @@ const EXPECTED: Expected = Expected {
     fewer: "keep a row every few metres; straight lines run between them",
 };
 
+const OF_TEMPERATURE: Expected = Expected {
+    keys: &[&["hole", "datum", "depth_datum", "depth_unit", "temperature_unit"], &LEVEL_KEYS],
+    file: "a table with the columns tvd and temperature",
+    names: "tvd, temperature",
+    ..OF_PRESSURE
+};
+
+/// What a file says of one column.
+pub(super) struct ColumnByDepth<Q> {
+    pub points: Points<Q>,
+    pub hole: Option<Name>,
+    pub tie: Option<DatumTie>,
+    pub source: ProfileSource,
+}
+
 /// The two columns that are read, and what their numbers are.
-struct Columns {
+struct Columns<Q> {
     depth: Column,
-    pressure: Column,
+    value: Column,
     depth_unit: Unit<Length>,
-    pressure_unit: Unit<Pressure>,
+    value_unit: Unit<Q>,
     datum: Datum,
 }
 
@@ -37,11 +54,26 @@ pub(super) fn read_csv(path: &Path, column: &str) -> Result<PressureProfile> {
     read(Lines::open(path)?, column)
 }
 
-pub(super) fn read<R: Read>(lines: Lines<R>, column: &str) -> Result<PressureProfile> {
-    let mut table = Table::open(lines, &EXPECTED)?;
-    let columns = columns(&table, column)?;
+fn read<R: Read>(lines: Lines<R>, column: &str) -> Result<PressureProfile> {
+    let ColumnByDepth { points, hole, tie, source } = read_column(lines, column, &OF_PRESSURE, &PRESSURES)?;
+    Ok(PressureProfile::from_file(Law::Table(points), column, hole, tie, source))
+}
+
+/// A column of temperatures.
+pub(super) fn temperatures<R: Read>(lines: Lines<R>, column: &str) -> Result<ColumnByDepth<Temperature>> {
+    read_column(lines, column, &OF_TEMPERATURE, &TEMPERATURES)
+}
+
+fn read_column<R: Read, Q: AgainstDepth>(
+    lines: Lines<R>,
+    column: &str,
+    expected: &'static Expected,
+    units: &Units<Q>,
+) -> Result<ColumnByDepth<Q>> {
+    let mut table = Table::open(lines, expected)?;
+    let columns = columns(&table, column, units)?;
     let tie = declared_tie(table.declared())?;
-    let mut points: Vec<Point> = Vec::new();
+    let mut points: Vec<Point<Q>> = Vec::new();
     while let Some(row) = table.next_row()? {
         points.push(point(&table, &columns, &row, points.last())?);
     }
@@ -53,16 +85,16 @@ pub(super) fn read<R: Read>(lines: Lines<R>, column: &str) -> Result<PressurePro
     }
     let hole = table.declared().get("hole").map(|name| Name::new(&shown(name)));
     let (path, sha256) = table.source();
-    let source = ProfileSource::File { path, sha256, column: columns.pressure.name };
-    Ok(PressureProfile::from_file(Law::table(columns.datum, points)?, column, hole, tie, source))
+    let source = ProfileSource::File { path, sha256, column: columns.value.name };
+    Ok(ColumnByDepth { points: Points::new(columns.datum, points)?, hole, tie, source })
 }
 
-fn columns<R: Read>(table: &Table<R>, column: &str) -> Result<Columns> {
+fn columns<R: Read, Q>(table: &Table<R>, column: &str, units: &Units<Q>) -> Result<Columns<Q>> {
     let depth = table.column_or(
         &["tvd", "true vertical depth", "tvdss"],
         "name the column of true vertical depths tvd (measured depths are converted with a survey first)",
     )?;
-    let pressure = table.column_or(&[&heading(column).0], "ask for one of the columns of the file")?;
+    let value = table.column_or(&[&heading(column).0], "ask for one of the columns of the file")?;
     let declared = table.declared();
     let datum = declared_datum(declared)?;
     if table.is_named(&depth, "tvdss") && datum != Datum::MeanSeaLevel {
@@ -74,20 +106,24 @@ fn columns<R: Read>(table: &Table<R>, column: &str) -> Result<Columns> {
     }
     Ok(Columns {
         depth_unit: declared.unit(&DEPTHS, table.unit_in_name(&depth))?,
-        pressure_unit: declared.unit(&PRESSURES, table.unit_in_name(&pressure))?,
+        value_unit: declared.unit(units, table.unit_in_name(&value))?,
         depth,
-        pressure,
+        value,
         datum,
     })
 }
 
-fn point<R: Read>(table: &Table<R>, columns: &Columns, row: &Row, above: Option<&Point>) -> Result<Point> {
-    let Columns { depth, pressure, .. } = columns;
-    let point =
-        ((columns.depth_unit)(table.number(row, depth)?), (columns.pressure_unit)(table.number(row, pressure)?));
+fn point<R: Read, Q: AgainstDepth>(
+    table: &Table<R>,
+    columns: &Columns<Q>,
+    row: &Row,
+    above: Option<&Point<Q>>,
+) -> Result<Point<Q>> {
+    let Columns { depth, value, .. } = columns;
+    let point = ((columns.depth_unit)(table.number(row, depth)?), (columns.value_unit)(table.number(row, value)?));
     require_point(above.map(|p| p.0), point).map_err(|e| {
-        let of_pressure = matches!(&e, Error::OutOfRange { what, .. } if what.starts_with("pressure"));
-        table.bad_in(if of_pressure { pressure } else { depth }, reason(&e), "correct the row")
+        let of_value = matches!(&e, Error::OutOfRange { what, .. } if what.starts_with(Q::KIND));
+        table.bad_in(if of_value { value } else { depth }, reason(&e), "correct the row")
     })
 }
 
@@ -207,6 +243,28 @@ mod tests {
     }
 
     #[test]
+    fn reads_temperatures_on_either_scale_and_refuses_an_unstated_one() {
+        let header = HEADER.replace("pressure_unit: MPa", "temperature_unit: F");
+        let read = |text: &str| temperatures(Lines::over(text.as_bytes(), "t.csv"), "ground");
+        let column = read(&format!("{header}tvd,ground\n0,50\n1000,212\n")).unwrap();
+        assert!((column.points.points[1].1 - 100.celsius()).in_kelvin().abs() < 1e-12);
+        assert!((column.points.at(500.m()).unwrap() - 55.celsius()).in_kelvin().abs() < 1e-12);
+        let refused = |text: &str| read(text).map(|_| ()).unwrap_err().to_string();
+        assert!(
+            refused(&format!("{HEADER}tvd,ground\n0,50\n1000,212\n")).contains("# temperature_unit: C | °C | F | °F")
+        );
+        let named = read(&format!("{}tvd,ground (°C)\n0,5\n10,6\n", HEADER.replace("# pressure_unit: MPa\n", "")));
+        assert_eq!(named.unwrap().points.points[1].1, 6.celsius());
+        // Kelvin taken for Celsius (a slip of the scale).
+        let celsius = header.replace("temperature_unit: F", "temperature_unit: C");
+        assert_eq!(
+            refused(&format!("{celsius}tvd,ground\n0,5\n1000,1200\n")),
+            "t.csv, line 9, column \"ground\": temperature of the table is 1200 °C, but it must be between -60 °C and 600 °C; correct the row."
+        );
+        assert!(refused(&format!("{celsius}tvd,ground\n0,5\n0,6\n")).contains("keep one temperature for each depth"));
+    }
+
+    #[test]
     fn a_table_without_end_is_refused_in_bounded_memory() {
         let mut text = format!("{HEADER}tvd,pore pressure\n");
         for k in 0..=MOST_ROWS {
@@ -219,12 +277,15 @@ mod tests {
         #[test]
         fn never_panics_on_any_bytes(bytes in proptest::collection::vec(any::<u8>(), 0..2000)) {
             let _ = read(Lines::over(bytes.as_slice(), "x"), "p");
+            let _ = temperatures(Lines::over(bytes.as_slice(), "x"), "t");
         }
 
         #[test]
         fn never_panics_on_near_misses(table in "([a-z0-9,;.()\\[\\]\"\\-# :]{0,30}\n){0,12}") {
             let _ = parse(&format!("{HEADER}tvd,p\n{table}"), "p");
             let _ = parse(&table, "p");
+            let of_t = format!("{}tvd,t\n{table}", HEADER.replace("pressure_unit: MPa", "temperature_unit: C"));
+            let _ = temperatures(Lines::over(of_t.as_bytes(), "x"), "t");
         }
     }
 }

@@ -1,19 +1,19 @@
-//! Reading layers from CSV, strictly and line by line.
+//! Layers by their tops.
 
 use std::io::Read;
 use std::path::Path;
 
-use super::ground::MOST;
-use super::layer::{Layer, LayerTop, TopPlane};
-use crate::error::{Error, Result};
-use crate::field::{DEPTHS, PRESSURES, declared_datum};
-use crate::frames::{Datum, DatumTie, DeclaredNorth, Depth, LEVEL_KEYS, NORTH_KEYS, Name, Plane, declared_tie};
+use super::rock_columns::{ROCK_KEYS, RockColumns, together};
+use crate::along::ground::ground::MOST;
+use crate::along::ground::layer::{Layer, LayerTop, TopPlane};
+use crate::error::Result;
+use crate::field::{DEPTHS, declared_datum};
+use crate::frames::{Datum, DatumTie, Depth, LEVEL_KEYS, NORTH_KEYS, Name, Plane, declared_tie};
 use crate::lines::{Column, Expected, Lines, Row, Table, Unit, reason};
-use crate::rock::{Rock, Strength};
-use crate::units::{Angle, Length, Pressure};
+use crate::units::{Angle, Length};
 
 const EXPECTED: Expected = Expected {
-    keys: &[&["hole", "datum", "depth_datum", "depth_unit", "pressure_unit", "angle_unit"], &NORTH_KEYS, &LEVEL_KEYS],
+    keys: &[&["hole", "datum", "depth_datum", "depth_unit"], &ROCK_KEYS, &NORTH_KEYS, &LEVEL_KEYS],
     file: "a table of layers with the columns layer, top, poisson, tensile_strength, ucs or cohesion, friction_angle",
     names: "layer, top, poisson, tensile_strength, ucs, friction_angle",
     units_in_names: false,
@@ -22,52 +22,31 @@ const EXPECTED: Expected = Expected {
     fewer: "join thin layers of one rock",
 };
 
-/// The columns of a dipping top.
-struct PlaneColumns {
-    strike: Column,
-    dip: Column,
-    north: Column,
-    east: Column,
-}
-
-struct Columns {
-    layer: Column,
+/// Where a layer begins.
+struct TopColumns {
     top: Column,
-    poisson: Column,
-    tensile: Column,
-    strength: Column,
-    /// Whether the strength is stated as cohesion.
-    by_cohesion: bool,
-    friction: Column,
-    ratios: Option<[Column; 2]>,
-    azimuth: Option<Column>,
-    plane: Option<PlaneColumns>,
-}
-
-/// What the file declares.
-struct Declared {
+    /// Strike, dip, north and east of a dipping top.
+    plane: Option<[Column; 4]>,
     depth: Unit<Length>,
-    pressure: Unit<Pressure>,
     datum: Datum,
     tie: Option<DatumTie>,
-    north: Option<DeclaredNorth>,
 }
 
-pub(super) fn read_layers(path: &Path) -> Result<Vec<Layer>> {
+pub(crate) fn read_layers(path: &Path) -> Result<Vec<Layer>> {
     read(Lines::open(path)?)
 }
 
 fn read<R: Read>(lines: Lines<R>) -> Result<Vec<Layer>> {
     let mut table = Table::open(lines, &EXPECTED)?;
-    let columns = columns(&table)?;
-    let declared = declared(&table, &columns)?;
+    let tops = tops(&table)?;
+    let rock = RockColumns::of(&table, tops.plane.is_some())?;
     let mut layers: Vec<Layer> = Vec::new();
     let mut deepest: Option<Length> = None;
     while let Some(row) = table.next_row()? {
-        let layer = layer(&table, &columns, &declared, &row)?;
+        let layer = rock.layer(&table, &row, top(&table, &tops, &rock, &row)?)?;
         if layers.iter().any(|other| other.name == layer.name) {
             return Err(table.bad_in(
-                &columns.layer,
+                &rock.layer,
                 format!("the layer {} stands twice", layer.name),
                 "give each layer its own name; where the hole enters one again, say so with .with_intervals(…)?",
             ));
@@ -75,7 +54,7 @@ fn read<R: Read>(lines: Lines<R>) -> Result<Vec<Layer>> {
         if let LayerTop::Level(top) = layer.top {
             if let Some(above) = deepest.filter(|above| *above >= top.tvd) {
                 return Err(table.bad_in(
-                    &columns.top,
+                    &tops.top,
                     format!("the top {} is not deeper than the one before, {above}", top.tvd),
                     "list the layers from the top down",
                 ));
@@ -89,105 +68,29 @@ fn read<R: Read>(lines: Lines<R>) -> Result<Vec<Layer>> {
     Ok(layers.into_iter().map(|layer| Layer { file, ..layer }).collect())
 }
 
-fn columns<R: Read>(table: &Table<R>) -> Result<Columns> {
-    let (ucs, cohesion) = (table.column_if_any(&["ucs"])?, table.column_if_any(&["cohesion"])?);
-    let (strength, by_cohesion) = match (ucs, cohesion) {
-        (Some(_), Some(cohesion)) => {
-            return Err(table.bad_in(&cohesion, "the strength is stated as ucs too", "keep one of the two columns"));
-        }
-        (None, Some(cohesion)) => (cohesion, true),
-        (Some(ucs), None) => (ucs, false),
-        (None, None) => return Err(table.missing("ucs")),
-    };
-    let together = |names: &[&str]| -> Result<Option<Vec<Column>>> {
-        let found = names.iter().map(|name| table.column_if_any(&[name])).collect::<Result<Vec<_>>>()?;
-        if found.iter().all(Option::is_none) {
-            return Ok(None);
-        }
-        let missing = names.iter().zip(&found).find(|(_, column)| column.is_none()).map(|(name, _)| *name);
-        match missing {
-            Some(name) => {
-                table.column_or(&[name], &format!("give the columns {} together", names.join(", "))).map(|_| None)
-            }
-            None => Ok(Some(found.into_iter().flatten().collect())),
-        }
-    };
-    let ratios = together(&["k_min", "k_max"])?.and_then(|two| <[Column; 2]>::try_from(two).ok());
-    let plane = together(&["strike", "dip", "north", "east"])?.and_then(|four| <[Column; 4]>::try_from(four).ok());
-    Ok(Columns {
-        layer: table.column(&["layer", "name"])?,
-        top: table.column(&["top", "tvd"])?,
-        poisson: table.column(&["poisson", "poissons_ratio"])?,
-        tensile: table.column(&["tensile_strength", "t0"])?,
-        strength,
-        by_cohesion,
-        friction: table.column(&["friction_angle"])?,
-        ratios,
-        azimuth: table.column_if_any(&["sh_max_azimuth"])?,
-        plane: plane.map(|[strike, dip, north, east]| PlaneColumns { strike, dip, north, east }),
-    })
-}
-
-fn declared<R: Read>(table: &Table<R>, columns: &Columns) -> Result<Declared> {
+fn tops<R: Read>(table: &Table<R>) -> Result<TopColumns> {
     let declared = table.declared();
-    declared.require_degrees()?;
-    let north = match (&columns.azimuth, &columns.plane) {
-        (None, None) => None,
-        _ => Some(DeclaredNorth::read(declared, None, "azimuths", "Survey")?),
-    };
-    Ok(Declared {
+    Ok(TopColumns {
+        top: table.column(&["top", "tvd"])?,
+        plane: together(table, ["strike", "dip", "north", "east"])?,
         depth: declared.unit(&DEPTHS, None)?,
-        pressure: declared.unit(&PRESSURES, None)?,
         datum: declared_datum(declared)?,
         tie: declared_tie(declared)?,
-        north,
     })
 }
 
-fn layer<R: Read>(table: &Table<R>, columns: &Columns, declared: &Declared, row: &Row) -> Result<Layer> {
-    let pressure = |column: &Column| table.number(row, column).map(declared.pressure);
-    let stated = pressure(&columns.strength)?;
-    let friction =
-        Angle::deg(table.degrees(row, &columns.friction, [0.0, 90.0], "give the friction angle in degrees")?);
-    let strength = if columns.by_cohesion {
-        Strength::mohr_coulomb(stated, friction)
-    } else {
-        Strength::mohr_coulomb_ucs(stated, friction)
-    };
-    let rock =
-        Rock { poisson: table.number(row, &columns.poisson)?, tensile_strength: pressure(&columns.tensile)?, strength };
-    let refused = |e: Error| table.bad(reason(&e), "correct the row");
-    let name = table.text(row, &columns.layer)?;
-    let layer =
-        Layer::new(name, top(table, columns, declared, row)?, rock).and_then(Layer::checked).map_err(refused)?;
-    let layer = match &columns.azimuth {
-        Some(column) if !table.text(row, column)?.is_empty() => match declared.north {
-            Some(north) => layer.sh_max_towards(north.azimuth_in(table, row, column)?),
-            None => layer,
-        },
-        _ => layer,
-    };
-    let Some([min, max]) = &columns.ratios else { return Ok(layer) };
-    match [table.number_if_any(row, Some(min))?, table.number_if_any(row, Some(max))?] {
-        [None, None] => Ok(layer),
-        [Some(least), Some(most)] => layer.horizontal_ratios(least, most).map_err(refused),
-        [None, _] => Err(table.bad_in(min, "the value is missing", "fill in both ratios or neither")),
-        [_, None] => Err(table.bad_in(max, "the value is missing", "fill in both ratios or neither")),
-    }
-}
-
-fn top<R: Read>(table: &Table<R>, columns: &Columns, declared: &Declared, row: &Row) -> Result<LayerTop> {
-    let Some(tvd) = table.number_if_any(row, Some(&columns.top))? else { return Ok(LayerTop::ByMeasuredDepth) };
-    let depth = Depth { tvd: (declared.depth)(tvd), below: declared.datum };
+fn top<R: Read>(table: &Table<R>, tops: &TopColumns, rock: &RockColumns, row: &Row) -> Result<LayerTop> {
+    let Some(tvd) = table.number_if_any(row, Some(&tops.top))? else { return Ok(LayerTop::ByMeasuredDepth) };
+    let depth = Depth { tvd: (tops.depth)(tvd), below: tops.datum };
     // Tops of a hole whose levels the file states are of that hole, carried over at equal elevation.
-    let depth = match declared.tie {
+    let depth = match tops.tie {
         Some(tie) => tie
             .convert(depth, Datum::MeanSeaLevel)
-            .map_err(|e| table.bad_in(&columns.top, reason(&e), "declare the level of that datum"))?,
+            .map_err(|e| table.bad_in(&tops.top, reason(&e), "declare the level of that datum"))?,
         None => depth,
     };
-    let Some(PlaneColumns { strike, dip, north, east }) = &columns.plane else { return Ok(LayerTop::Level(depth)) };
-    let (Some(dip_here), Some(declared_north)) = (table.number_if_any(row, Some(dip))?, declared.north) else {
+    let Some([strike, dip, north, east]) = &tops.plane else { return Ok(LayerTop::Level(depth)) };
+    let (Some(dip_here), Some(declared_north)) = (table.number_if_any(row, Some(dip))?, rock.north) else {
         return Ok(LayerTop::Level(depth));
     };
     if !(0.0..=90.0).contains(&dip_here) {
@@ -199,8 +102,8 @@ fn top<R: Read>(table: &Table<R>, columns: &Columns, declared: &Declared, row: &
     }
     Ok(LayerTop::Plane(TopPlane {
         depth,
-        north: (declared.depth)(table.number(row, north)?),
-        east: (declared.depth)(table.number(row, east)?),
+        north: (tops.depth)(table.number(row, north)?),
+        east: (tops.depth)(table.number(row, east)?),
         plane: Plane { strike: declared_north.azimuth_in(table, row, strike)?, dip: Angle::deg(dip_here) },
     }))
 }
@@ -208,6 +111,8 @@ fn top<R: Read>(table: &Table<R>, columns: &Columns, declared: &Declared, row: &
 #[cfg(test)]
 mod tests {
     use super::*;
+    use crate::along::ground::layer::InFile;
+    use crate::rock::Strength;
     use crate::units::Units;
     use proptest::prelude::*;
 
@@ -280,6 +185,62 @@ mod tests {
         assert!(read_layers(Path::new("no/file.csv")).unwrap_err().to_string().contains("relative to the notebook"));
     }
 
+    const WALLS: &str = "layer,top,poisson,t0,ucs,friction_angle,drawdown,path_min,path_max,wall,biot,sealing,youngs_modulus,thermal_expansion\nshale,1000,0.25,2,28,30,,,,,,,9,12\nsand,2000,0.2,1,40,38,12,0.64,as min,permeable,0.9,,14,11\ncoal,2100,0.3,1,20,30,12,uniaxial,0.4,Partly_sealed,0.8,0.25,,\nlime,2200,0.3,1,90,40,,,,impermeable,1,,,\n";
+    const UNITS: &str = "# modulus_unit: GPa\n# expansion_unit: 1e-6/K\n";
+
+    /// Depletion, wall and thermal properties are those that the methods of a layer state.
+    #[test]
+    fn reads_what_a_layer_may_state_beside_its_rock() {
+        use crate::along::{Depletion, MaxPath, MinPath};
+        let layers = parse(&format!("{HEADER}{UNITS}{WALLS}")).unwrap();
+        let bare = |k: usize| Layer::new(layers[k].name(), layers[k].top, layers[k].rock).unwrap();
+        let told = |k: usize| Layer { file: None, in_file: InFile::default(), ..layers[k] };
+        let expanding =
+            |layer: Layer, e: f64, a: f64| layer.thermal_properties(e.gpa(), (a * 1e-6).per_kelvin()).unwrap();
+        assert_eq!(told(0), expanding(bare(0), 9.0, 12.0));
+        let drained = Depletion { drawdown: 12.mpa(), sh_min: MinPath::Measured(0.64), sh_max: MaxPath::AsMin };
+        let sand = bare(1).depleted(drained).unwrap().permeable(0.9).unwrap();
+        assert_eq!(told(1), expanding(sand, 14.0, 11.0));
+        let elastic = Depletion { sh_min: MinPath::Uniaxial { biot: 0.8 }, sh_max: MaxPath::Measured(0.4), ..drained };
+        assert_eq!(told(2), bare(2).depleted(elastic).unwrap().partly_sealed(0.8, 0.25).unwrap());
+        assert_eq!(told(3), bare(3));
+        // The file stands for all of it; what is typed afterwards stands for itself.
+        assert_eq!(layers[1].items().len(), 1);
+        let again = layers[1].depleted(elastic).unwrap().items();
+        assert_eq!(again.len(), 4, "{again:?}");
+    }
+
+    #[test]
+    fn what_a_layer_cannot_state_is_told() {
+        let with = |from: &str, to: &str| {
+            let text = format!("{HEADER}{UNITS}{WALLS}");
+            assert!(text.contains(from), "{from}");
+            refused(&text.replacen(from, to, 1))
+        };
+        assert_eq!(
+            with("12,0.64,as min", "12,,as min"),
+            "l.csv, line 10, column \"path_min\": the value is missing; fill in drawdown and both paths, or none."
+        );
+        assert!(with("12,0.64,as min", "12,1.64,as min").contains("line 10: stress path A of S_hmin is 1.64"));
+        assert!(with("12,0.64,as min", "-12,0.64,as min").contains("more than zero"));
+        assert!(with("12,0.64,as min", "12,0.64,like").contains("column \"path_max\": \"like\" is not a number"));
+        assert!(with("path_max,", "path,").contains("give the columns drawdown, path_min, path_max together"));
+        assert!(with("permeable,0.9", "permeable,").contains("line 10: a permeable wall needs Biot's coefficient"));
+        assert!(with("Partly_sealed,0.8", "impermeable,").contains("a uniaxial stress path needs Biot's coefficient"));
+        assert!(
+            with("permeable,0.9", "leaky,0.9")
+                .contains("\"leaky\" is no kind of wall that is known here; write impermeable")
+        );
+        assert!(with("0.8,0.25", "0.8,").contains("how far the wall seals is not stated"));
+        assert!(with("0.8,0.25", "0.8,25").contains("line 11: sealing of the wall is 25"));
+        assert!(with("permeable,0.9,,", "permeable,0.9,0.5,").contains("not partly sealed"));
+        assert!(with("wall,biot", "walls,biot").contains("column \"wall\": the column is missing"));
+        assert!(with("# modulus_unit: GPa\n", "").contains("# modulus_unit: GPa | MPa | psi"));
+        assert!(with("# expansion_unit: 1e-6/K\n", "").contains("# expansion_unit: 1/K | 1e-6/K"));
+        assert!(with(",9,12", ",9,").contains("fill in both values or neither"));
+        assert!(with(",9,12", ",0,12").contains("Young's modulus E is 0 MPa"));
+    }
+
     proptest! {
         #[test]
         fn never_panics_on_any_bytes(bytes in proptest::collection::vec(any::<u8>(), 0..2000)) {
@@ -288,8 +249,8 @@ mod tests {
 
         #[test]
         fn never_panics_on_near_misses(table in "([a-z0-9,;.()\\[\\]\"\\-# :]{0,40}\n){0,12}") {
-            let names = "layer,top,poisson,tensile_strength,ucs,friction_angle,k_min,k_max,sh_max_azimuth,strike,dip,north,east\n";
-            let _ = parse(&format!("{HEADER}{names}{table}"));
+            let names = "layer,top,poisson,tensile_strength,ucs,friction_angle,k_min,k_max,sh_max_azimuth,strike,dip,north,east,drawdown,path_min,path_max,wall,biot,sealing,youngs_modulus,thermal_expansion\n";
+            let _ = parse(&format!("{HEADER}{UNITS}{names}{table}"));
             let _ = parse(&table);
         }
     }
