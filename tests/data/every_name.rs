@@ -262,8 +262,25 @@ let log: LimitLog = LimitLog::with_choices(&survey, &ground, choices)?.with_sect
 let row: LogRow = log.at(3000.m())?;
 let narrowest: Option<Narrowest> = log.narrowest();
 let in_section: Vec<SectionRange> = log.section_ranges();
+let friction: Option<FrictionAlong> = log.with_friction(0.6)?.friction();
+assert!(friction.is_some_and(|limit| limit.beyond.is_empty()));
 assert!(row.pore < row.sv && narrowest.is_some() && in_section.len() == 1 && state.layer() == "Grebe sand");
 log
+// ---
+// A wall cooled by the mud: temperatures by depth, and what they do to the rock of each layer.
+let warmer_by: TemperatureGradient = 30.kelvin_per_km();
+let surface: Temperature = 8.celsius();
+let rock_temperature: TemperatureProfile = TemperatureProfile::from_gradient(warmer_by, zero, surface)?;
+let expanding: Vec<Layer> = ground
+    .layers()
+    .into_iter()
+    .map(|layer| layer.thermal_properties(12.gpa(), 1e-5.per_kelvin()))
+    .collect::<Result<_, _>>()?;
+let cooled = Ground::new(GroundInputs { layers: expanding, ..ground.inputs() })?
+    .with_temperatures(&rock_temperature, &TemperatureProfile::uniform(45.celsius())?)?;
+let cold: Option<Warming> = cooled.at(&survey, 3500.m())?.warming;
+assert!(cold.is_some_and(|warming| warming < 0.kelvin()));
+cooled.at(&survey, 3500.m())?
 // ---
 // What was met while drilling, held against the limits.
 let met = DrillingEvent { md: 3000.m(), kind: EventKind::Losses, mud_weight: 1.4.sg(), circulating_density: None };

@@ -26,6 +26,8 @@ mod tensor_measures;
 mod tensor_traps;
 #[path = "reference/turns.rs"]
 mod turns;
+#[path = "reference/two_layers.rs"]
+mod two_layers;
 #[path = "reference/wall.rs"]
 mod wall;
 #[path = "reference/wall_depth.rs"]

@@ -2,9 +2,9 @@
 //! a notebook's own code means std's.
 
 pub use crate::along::{
-    Depletion, DrillingEvent, DrillingEvents, EventKind, Ground, GroundInputs, GroundState, Hindcast, HindcastRow,
-    HoleSection, HorizontalProfiles, Layer, LayerShare, LimitLog, LogChoices, LogRow, MaxPath, MinPath, MudShare,
-    Narrowest, PlanShare, SectionEnsemble, SectionRange, TopPlane,
+    Depletion, DrillingEvent, DrillingEvents, EventKind, FrictionAlong, Ground, GroundInputs, GroundState, Hindcast,
+    HindcastRow, HoleSection, HorizontalProfiles, Layer, LayerShare, LimitLog, LogChoices, LogRow, MaxPath, MinPath,
+    MudShare, Narrowest, PlanShare, SectionEnsemble, SectionRange, TopPlane,
 };
 pub use crate::card::{Card, Explain, Projection};
 pub use crate::faults::{

@@ -23,7 +23,8 @@ pub use ground::{
     HorizontalProfiles, Layer, LayerIntervals, MaxPath, MinPath, TopPlane,
 };
 pub use limit_log::{
-    HoleSection, LimitLog, LogChoices, LogInputs, LogOutcome, LogRow, Narrowest, SectionEnd, SectionMud, SectionRange,
+    FrictionAlong, HoleSection, LimitLog, LogChoices, LogInputs, LogOutcome, LogRow, Narrowest, SectionEnd, SectionMud,
+    SectionRange,
 };
 pub use section_ensemble::{
     LayerShare, MudShare, PlanShare, SectionEnsemble, SectionEnsembleInputs, SectionEnsembleOutcome,

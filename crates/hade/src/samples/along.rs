@@ -130,7 +130,7 @@ pub(super) fn along_samples() -> Vec<Card> {
     let events = DrillingEvents::from_events(&events).unwrap();
     vec![
         ground.at(&survey, 2450.m()).unwrap().card(),
-        log.with_sections(&sections).unwrap().card(),
+        log.with_sections(&sections).unwrap().with_friction(0.6).unwrap().card(),
         LimitLog::with_choices(&level, &lateral, bare).unwrap().card(),
         log.hindcast(&events, 0.3.mpa()).unwrap().card(),
         log.with_sections(&sections)

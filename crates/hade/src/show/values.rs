@@ -7,7 +7,7 @@ use super::typeset::true_minus;
 use crate::along::{DrillingEvent, DrillingEvents, EventKind, Ground, Layer};
 use crate::card::{Explain as _, Projection};
 use crate::faults::{Fault, FaultSet, FaultState, FaultStrength, RankedFault};
-use crate::field::{DensityLog, PressureProfile};
+use crate::field::{DensityLog, PressureProfile, TemperatureProfile};
 use crate::frames::{Attitude, Axes, Datum, DatumTie, Depth, Line, NamedAttitude, Plane, Site, three_figures};
 use crate::rock::{HoekBrown, Rock, Strength, WeakRockMode};
 use crate::stress::{Components, EffectiveStress, Horizontals, Regime};
@@ -95,6 +95,7 @@ shows_words! {
     // The field, and along the hole.
     DensityLog: |log| log.words();
     PressureProfile: |profile| profile.words();
+    TemperatureProfile: |profile| profile.words();
     Layer: |layer| layer.words();
     DrillingEvent: |event| event.words();
     EventKind: |kind| kind.words();

@@ -2,6 +2,7 @@
 
 use super::check::check;
 use super::figure::{against_md, figures};
+use super::friction::FrictionAlong;
 use super::limit_log::{LimitLog, LogInputs};
 use super::row::{LogRow, ends};
 use super::steps::{governing, steps, stretch_words, stretches_words};
@@ -25,7 +26,7 @@ impl Explain for LimitLog {
         self.record().clone()
     }
     fn outcome(&self) -> LogOutcome {
-        LogOutcome::of(self.printed().iter().map(|(row, _)| *row).collect(), &self.sections)
+        LogOutcome::of(self.printed().iter().map(|(row, _)| *row).collect(), &self.sections, self.friction)
     }
     fn check(inputs: &LogInputs, outcome: &LogOutcome) -> Vec<Check> {
         check(inputs, outcome)
@@ -73,6 +74,7 @@ impl LimitLog {
         items.extend(stated_items(&self.survey));
         items.extend(self.ground.items());
         items.extend(self.choices.items());
+        items.extend(self.friction.map(FrictionAlong::input));
         items
     }
 
@@ -123,6 +125,7 @@ fn results(outcome: &LogOutcome) -> Vec<Item> {
             ));
         }
     }
+    items.extend(outcome.friction.iter().map(FrictionAlong::result));
     items
 }
 
@@ -142,6 +145,12 @@ impl LimitLog {
             Formula::new("p_t = min(S_3, p_i, p_(u s)) - m_t", "p_t = min(S_3, p_i, p_us) − m_t"),
             Formula::new("rho = p / (g \"TVD\")", "ρ = p / (g TVD)"),
         ]);
+        if self.friction.is_some() {
+            method.formulas.push(Formula::new(
+                "(S_1 - P_p) <= (sqrt(mu^2 + 1) + mu)^2 (S_3 - P_p)",
+                "friction bears the stress where S_1 − P_p ≤ (√(μ² + 1) + μ)² (S_3 − P_p)",
+            ));
+        }
         method.references.extend(ground.references);
         method.assumptions.extend(ground.assumptions);
         method
@@ -178,6 +187,7 @@ impl LimitLog {
                 stretches_words(&depleted)
             ));
         }
+        notes.extend(outcome.friction.iter().map(FrictionAlong::note));
         for layer in self.ground.layers() {
             if let Some(depletion) = layer.depletion {
                 notes.push(format!("{}: {}.", layer.name(), depletion.words()));
@@ -218,6 +228,7 @@ impl LimitLog {
         let mut topics = vec!["mud-weight", "limits", "breakout", "wall", "elastic", "survey"];
         let layers = self.ground.layers();
         let mut when = |holds: bool, topic: &'static str| topics.extend(holds.then_some(topic));
+        when(self.friction.is_some(), "friction");
         when(layers.iter().any(|layer| layer.depletion.is_some()), "depletion");
         when(layers.iter().any(|layer| layer.creeps), "creep");
         when(layers.iter().any(|layer| layer.seepage.is_some_and(|seepage| seepage.sealing < 1.0)), "permeable-wall");

@@ -3,6 +3,7 @@
 
 use rayon::prelude::*;
 
+use super::friction::FrictionAlong;
 use super::limit_log::LogInputs;
 use super::row::LogRow;
 use super::section::{HoleSection, SectionEnd, SectionRange};
@@ -28,6 +29,11 @@ pub(super) fn check(inputs: &LogInputs, outcome: &LogOutcome) -> Vec<Check> {
     checks.extend(walls(inputs, outcome, &states));
     checks.extend(whole(outcome));
     checks.extend(sections(inputs, outcome));
+    if let Some(friction) = inputs.friction {
+        checks.extend(FrictionAlong::check(outcome.friction.as_ref(), &outcome.rows, friction));
+    } else if outcome.friction.is_some() {
+        checks.push(Check::holds("no coefficient of friction was stated, and something is said of it", 1.0, 0.0, ""));
+    }
     checks
 }
 
@@ -174,7 +180,12 @@ fn whole(outcome: &LogOutcome) -> Vec<Check> {
 }
 
 /// Runs of rows of which something holds, found from below.
-fn same_stretches(what: &str, stated: &[[Length; 2]], rows: &[&LogRow], holds: impl Fn(&LogRow) -> bool) -> Check {
+pub(super) fn same_stretches(
+    what: &str,
+    stated: &[[Length; 2]],
+    rows: &[&LogRow],
+    holds: impl Fn(&LogRow) -> bool,
+) -> Check {
     let mut other: Vec<f64> = Vec::new();
     let flags: Vec<bool> = rows.iter().map(|row| holds(row)).collect();
     for (k, row) in rows.iter().enumerate().rev() {

@@ -6,6 +6,7 @@ use rayon::prelude::*;
 use serde::{Deserialize, Serialize};
 
 use super::choices::LogChoices;
+use super::friction::FrictionAlong;
 use super::printed::printed;
 use super::row::LogRow;
 use super::sample::{Look, looks, whole};
@@ -13,6 +14,7 @@ use super::section::{HoleSection, MOST_SECTIONS, SectionRange};
 use super::summary::{LogOutcome, Narrowest};
 use crate::along::ground::{AtPlace, Ground, GroundInHole, GroundRecord};
 use crate::error::{Error, Result};
+use crate::faults::frictional_ratio;
 use crate::interrupt;
 use crate::units::{Angle, Length, Pressure, with_typed_unit};
 use crate::well::{Survey, SurveyTableInputs};
@@ -26,6 +28,7 @@ pub struct LimitLog {
     pub(super) ground: Ground,
     pub(super) choices: LogChoices,
     pub(super) sections: Vec<HoleSection>,
+    pub(super) friction: Option<f64>,
     /// Every depth with the place of its layer in the list.
     all: Vec<(LogRow, usize)>,
     /// Those that are printed.
@@ -41,6 +44,8 @@ pub struct LogInputs {
     pub(super) ground: GroundRecord,
     pub(crate) choices: LogChoices,
     pub(super) sections: Vec<HoleSection>,
+    /// The coefficient of friction that the stress is held against.
+    pub(super) friction: Option<f64>,
     /// Measured depth and layer of each printed row.
     pub(super) printed: Vec<(Length, usize)>,
     pub(super) looked: usize,
@@ -74,7 +79,7 @@ impl LimitLog {
         let looks = looks(&in_hole, survey, &choices)?;
         let all = at_looks(&in_hole, &choices, &looks)?;
         let looked = all.len();
-        LimitLog::build((survey, ground), choices, Vec::new(), all, looked)
+        LimitLog::build((survey, ground), choices, (Vec::new(), None), all, looked)
     }
 
     /// With the rows that are printed, and what the record needs of them. A log from a record holds only
@@ -82,12 +87,12 @@ impl LimitLog {
     fn build(
         (survey, ground): (&Survey, &Ground),
         choices: LogChoices,
-        sections: Vec<HoleSection>,
+        (sections, friction): (Vec<HoleSection>, Option<f64>),
         all: Vec<(LogRow, usize)>,
         looked: usize,
     ) -> Result<Self> {
         let rows: Vec<LogRow> = all.iter().map(|(row, _)| *row).collect();
-        let numbers = if looked > rows.len() { (0..rows.len()).collect() } else { printed(&rows, &sections) };
+        let numbers = if looked > rows.len() { (0..rows.len()).collect() } else { printed(&rows, &sections, friction) };
         let printed: Vec<(LogRow, usize)> = numbers.iter().filter_map(|k| all.get(*k).copied()).collect();
         let place = |(row, layer): &(LogRow, usize)| Ok((survey.place(row.md)?, *layer));
         let looks = printed.iter().map(place).collect::<Result<Vec<Look>>>()?;
@@ -96,11 +101,12 @@ impl LimitLog {
             ground: GroundInHole::new(ground, survey)?.record(&looks),
             choices,
             sections: sections.clone(),
+            friction,
             printed: printed.iter().map(|(row, layer)| (row.md, *layer)).collect(),
             looked,
         };
         let (survey, ground, record) = (survey.clone(), ground.clone(), Arc::new(record));
-        Ok(LimitLog { survey, ground, choices, sections, all, printed, record })
+        Ok(LimitLog { survey, ground, choices, sections, friction, all, printed, record })
     }
 
     /// With the sections of the hole, each from casing point to casing point, and the muds they are to be
@@ -134,7 +140,13 @@ impl LimitLog {
         }
         let mut all = self.all.clone();
         let looked = self.record.looked + self.look_at_ends(sections, &mut all)?;
-        LimitLog::build((&self.survey, &self.ground), self.choices, sections.to_vec(), all, looked)
+        LimitLog::build((&self.survey, &self.ground), self.choices, (sections.to_vec(), self.friction), all, looked)
+    }
+
+    /// The same rows, held against another coefficient of friction.
+    pub(super) fn rebuilt(&self, friction: Option<f64>) -> Result<Self> {
+        let stated = (self.sections.clone(), friction);
+        LimitLog::build((&self.survey, &self.ground), self.choices, stated, self.all.clone(), self.record.looked)
     }
 
     /// The ends of sections are rows too: how many were added.
@@ -169,6 +181,11 @@ impl LimitLog {
         self.whole().narrowest
     }
 
+    /// The stress held against friction; `None` without [`LimitLog::with_friction`].
+    pub fn friction(&self) -> Option<FrictionAlong> {
+        self.whole().friction
+    }
+
     /// Where no pressure is recommended, by measured depth.
     pub fn empty(&self) -> Vec<[Length; 2]> {
         self.whole().empty
@@ -194,7 +211,7 @@ impl LimitLog {
     }
 
     fn whole(&self) -> LogOutcome {
-        LogOutcome::of(self.rows(), &self.sections)
+        LogOutcome::of(self.rows(), &self.sections, self.friction)
     }
 
     /// The same with a record whose ground says what there is at these depths too.
@@ -255,7 +272,8 @@ impl LimitLog {
             section.checked(above)?;
             above = Some(section);
         }
-        LimitLog::build((&survey, &ground), inputs.choices, inputs.sections, all, inputs.looked)
+        inputs.friction.map(frictional_ratio).transpose()?;
+        LimitLog::build((&survey, &ground), inputs.choices, (inputs.sections, inputs.friction), all, inputs.looked)
     }
 }
 

@@ -5,6 +5,7 @@ mod check;
 mod choices;
 mod csv;
 mod figure;
+mod friction;
 #[allow(clippy::module_inception)]
 mod limit_log;
 mod printed;
@@ -16,6 +17,7 @@ mod steps;
 mod summary;
 
 pub use choices::LogChoices;
+pub use friction::FrictionAlong;
 pub use limit_log::{LimitLog, LogInputs};
 pub use row::LogRow;
 pub(crate) use section::pressure_of;

@@ -12,15 +12,16 @@ const MOST: usize = 90;
 const EVEN: usize = 40;
 
 /// The numbers of the rows to print, rising.
-pub(super) fn printed(rows: &[LogRow], sections: &[HoleSection]) -> Vec<usize> {
+pub(super) fn printed(rows: &[LogRow], sections: &[HoleSection], friction: Option<f64>) -> Vec<usize> {
     let last = rows.len().saturating_sub(1);
     if rows.len() <= MOST {
         return (0..rows.len()).collect();
     }
     let mut kept = std::collections::BTreeSet::from([0, last]);
-    let outcome = LogOutcome::of(rows.to_vec(), sections);
+    let outcome = LogOutcome::of(rows.to_vec(), sections, friction);
     // What governs, whatever their number.
     let mut governing: Vec<Length> = outcome.narrowest.iter().map(|narrowest| narrowest.md).collect();
+    governing.extend(outcome.friction.iter().map(|friction| friction.md));
     for section in &outcome.sections {
         governing.extend([section.from, section.to]);
         governing.extend(section.bottom.iter().chain(&section.top).map(|end| end.md));
@@ -29,8 +30,10 @@ pub(super) fn printed(rows: &[LogRow], sections: &[HoleSection]) -> Vec<usize> {
     for md in governing {
         kept.extend(at(rows, md));
     }
-    // Where there is no range, or no common one: the last row before, the first and the last, the next.
-    let stretches = outcome.empty.iter().chain(outcome.sections.iter().flat_map(|section| &section.conflicts));
+    // Where there is no range, no common one, or stress beyond friction: the last row before, the first and the last, the next.
+    let conflicts = outcome.sections.iter().flat_map(|section| &section.conflicts);
+    let beyond = outcome.friction.iter().flat_map(|friction| &friction.beyond);
+    let stretches = outcome.empty.iter().chain(conflicts).chain(beyond);
     let mut wanted: Vec<usize> = Vec::new();
     for [from, to] in stretches {
         let (from, to) = (at(rows, *from), at(rows, *to));

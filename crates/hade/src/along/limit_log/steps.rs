@@ -28,6 +28,7 @@ pub(super) fn steps(log: &LimitLog, outcome: &LogOutcome) -> Vec<Step> {
         }
         steps.extend(wall_steps(log, &state));
     }
+    steps.extend(outcome.friction.as_ref().and_then(|friction| friction.step(&outcome.rows)));
     steps.push(Step::Table { table: ground_table(outcome) });
     steps.push(Step::Table { table: limits_table(outcome) });
     steps.push(Step::Table { table: sections_table(outcome) });

@@ -2,6 +2,7 @@
 
 use serde::{Deserialize, Serialize};
 
+use super::friction::FrictionAlong;
 use super::row::LogRow;
 use super::section::{HoleSection, SectionRange, stretches};
 use crate::frames::Name;
@@ -27,16 +28,18 @@ pub struct LogOutcome {
     /// Where no pressure is recommended, by measured depth.
     pub(super) empty: Vec<[Length; 2]>,
     pub(super) sections: Vec<SectionRange>,
+    pub(super) friction: Option<FrictionAlong>,
 }
 
 impl LogOutcome {
-    pub(super) fn of(rows: Vec<LogRow>, sections: &[HoleSection]) -> Self {
+    pub(super) fn of(rows: Vec<LogRow>, sections: &[HoleSection], friction: Option<f64>) -> Self {
         let whole = whole(&rows);
         let sections = if sections.is_empty() { whole.as_slice() } else { sections };
         LogOutcome {
             narrowest: narrowest(&rows),
             empty: stretches(&rows.iter().collect::<Vec<_>>(), |row| row.is_empty()),
             sections: sections.iter().filter_map(|section| SectionRange::of(section, &rows)).collect(),
+            friction: friction.and_then(|friction| FrictionAlong::of(&rows, friction)),
             rows,
         }
     }

@@ -196,3 +196,33 @@ fn a_vertical_hole_against_values_of_a_python_script() {
         }
     }
 }
+
+/// In normal faulting the ratio of effective stresses is 1/K: 3.03 for K = 0.33 and 3.33 for 0.30, and friction of 0.6 bears
+/// (√1.36 + 0.6)² = 3.12 (Zoback 2007, eq. 4.45, from memory).
+#[test]
+fn stress_beyond_friction_is_said_where_it_is() {
+    let layer = |name: &str, top: f64, k: f64| {
+        Layer::from(name, at_rt(top), sand()).unwrap().horizontal_ratios(k, k + 0.1).unwrap()
+    };
+    let ground = by_ratios(vec![layer("within", 500.0, 0.33), layer("beyond", 2000.0, 0.3)]);
+    let hole = Survey::from_stations(&[station(0.0, 0.0, 0.0), station(3000.0, 0.0, 0.0)]).unwrap();
+    let log = LimitLog::with_choices(&hole, &ground, choices(1500.0, 2500.0, 2.0, 0.0)).unwrap();
+    assert_eq!(log.friction(), None);
+    let log = log.with_friction(0.6).unwrap();
+    let friction = log.friction().unwrap();
+    assert_eq!((friction.beyond.clone(), friction.md), (vec![[2000.m(), 2500.m()]], 2500.m()));
+    // At 2500 m the effective vertical stress is 12.2 MPa/km · 2.5 km = 30.5 MPa.
+    let by = 30.5 * (1.0 - (1.36_f64.sqrt() + 0.6).powi(2) * 0.3);
+    assert!((friction.beyond_by.in_mpa() - by).abs() < 1e-9, "{friction:?} {by}");
+    let card = log.card();
+    assert!(card.passed(), "{:#?}", card.checks);
+    assert!(
+        card.explanation.notes.iter().any(|note| note.starts_with("WARNING: at MD 2000.0 to 2500.0 m the stress is"))
+    );
+    assert_eq!(LimitLog::compute(log.inputs()).unwrap().card(), card);
+    let strong = log.with_friction(0.7).unwrap().friction().unwrap();
+    assert!(strong.beyond.is_empty() && strong.beyond_by.in_mpa() < 0.0);
+    let sections = log.with_sections(&[HoleSection::between("a", 1500.m(), 2500.m())]).unwrap();
+    assert_eq!(sections.friction().unwrap().beyond, friction.beyond);
+    assert!(log.with_friction(-0.1).unwrap_err().to_string().contains("coefficient of friction"));
+}

@@ -228,6 +228,12 @@ impl TemperatureProfile {
         &self.data
     }
 
+    /// "temperature of the ground against depth: 30 K/km from the rotary table, 8 °C there".
+    pub(crate) fn words(&self) -> String {
+        let item = self.whole_item();
+        format!("{}: {}", item.name, item.shown)
+    }
+
     /// Its file, or its numbers, as an input of a card.
     pub(crate) fn input_item(&self) -> Item {
         let about = &self.data.about;
