@@ -45,7 +45,15 @@ impl RowChart {
             layers.push(Layer::ColumnBand { label: label.clone(), role: Role::Range, from: *from, to: *to });
         }
         for (label, role, at) in &self.levels {
-            layers.push(Layer::line(label, *role, [[*at, foot], [*at, 0.0]]));
+            if label.is_empty() {
+                // A line without a name stands at the bars only, and not through the words over them.
+                let bar = |k: usize| -(k as f64) - 1.0;
+                layers.extend(
+                    (0..self.rows.len()).map(|k| Layer::line("", *role, [[*at, bar(k)], [*at, bar(k) + 0.36]])),
+                );
+            } else {
+                layers.push(Layer::line(label, *role, [[*at, foot], [*at, 0.0]]));
+            }
         }
         let mut y = 0.0;
         for row in &self.rows {

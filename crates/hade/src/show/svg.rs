@@ -108,8 +108,8 @@ impl<'a> Plan<'a> {
         let contours = contours.filter(|_| net.is_some());
         let drawings: Vec<Drawing> = figure.layers.iter().map(|l| Drawing::of(l, &frame)).collect();
         let bands: Vec<Band<'_>> = figure.layers.iter().filter_map(|l| band(l, &frame)).collect();
-        let marks: Vec<Rect> = drawings.iter().flat_map(Drawing::mark_areas).collect();
-        let numbers = contours.as_ref().map_or_else(Vec::new, |c| c.numbers(&frame, &marks));
+        let covered: Vec<Rect> = drawings.iter().flat_map(Drawing::covers).collect();
+        let numbers = contours.as_ref().map_or_else(Vec::new, |c| c.numbers(&frame, &covered));
         let mut room = room(&frame, &drawings, &bands);
         if let Some(net) = &net {
             let (circle, texts) = net.outline();

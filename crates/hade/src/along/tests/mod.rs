@@ -2,6 +2,7 @@
 #![cfg(test)]
 
 mod events;
+mod files;
 mod ground;
 mod log;
 mod record;

@@ -136,10 +136,13 @@ impl Drawing {
         }
     }
 
-    /// The areas of its marks.
-    pub fn mark_areas(&self) -> Vec<Rect> {
+    /// What its marks and lines cover, for numbers that keep clear of them.
+    pub fn covers(&self) -> Vec<Rect> {
         match self {
             Drawing::Marks { places, .. } => places.iter().map(|p| square(*p, DOT + EDGE)).collect(),
+            Drawing::Lines { parts, .. } | Drawing::Strokes { parts, .. } => {
+                parts.iter().flat_map(|part| walk(part, 4.0)).map(|p| square(p, EDGE)).collect()
+            }
             _ => Vec::new(),
         }
     }
