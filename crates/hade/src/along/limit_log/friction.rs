@@ -12,6 +12,9 @@ use crate::faults::frictional_ratio;
 use crate::frames::Name;
 use crate::units::{Length, Pressure, Quantity, as_typed, fixed};
 
+/// A stress that is beyond the limit by less counts as at it, Pa: the last digits would decide.
+const AT_THE_LIMIT: f64 = 1.0;
+
 /// Where the stress along a log comes nearest to the frictional limit, or passes it.
 #[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
 #[non_exhaustive]
@@ -56,7 +59,7 @@ impl FrictionAlong {
             s1 - s3 * ratio
         };
         let worst = rows.iter().reduce(|a, b| if beyond_by(b) > beyond_by(a) { b } else { a })?;
-        let beyond = stretches(&rows.iter().collect::<Vec<_>>(), |row| beyond_by(row).si() > 0.0);
+        let beyond = stretches(&rows.iter().collect::<Vec<_>>(), |row| beyond_by(row).si() > AT_THE_LIMIT);
         Some(FrictionAlong { friction, md: worst.md, beyond_by: beyond_by(worst), beyond, layer: worst.layer })
     }
 
@@ -134,7 +137,7 @@ impl FrictionAlong {
                 "where the stress is beyond friction: beginnings and ends, counted from below",
                 &stated.beyond,
                 &all,
-                |row| off(row) > 0.0,
+                |row| off(row) > AT_THE_LIMIT * 1e-6,
             ),
         ]
     }
