@@ -282,6 +282,11 @@ impl Strength {
 
     /// Itself, or the error that says what no rock has.
     pub(crate) fn checked(self) -> Result<Self> {
+        self.checked_law().map(|_| self)
+    }
+
+    /// The law of a strength that can be.
+    pub(crate) fn checked_law(self) -> Result<Law> {
         match self.0 {
             Stated::MohrCoulomb { cohesion, .. }
             | Stated::MogiCoulomb { cohesion, .. }
@@ -323,8 +328,9 @@ impl Strength {
                     "far enough below 90° for a finite strength",
                 ));
             }
+            return Ok(law);
         }
-        Ok(self)
+        Ok(self.law())
     }
 
     /// The criterion with its constants worked out.

@@ -9,7 +9,7 @@ use super::effects::effects;
 use super::first_order::first_order;
 use super::numbers::{Base, Numbers};
 use super::outcome::EnsembleOutcome;
-use super::stand::{Left, Stand, left_out, stand_of};
+use super::stand::{Left, Stand, stand_by_numbers, stand_of};
 use crate::error::{Error, Result};
 use crate::faults::frictional_ratio;
 use crate::spread::{Draw, Draws, Quantiles, RankCorrelation, Sampler, for_each_draw};
@@ -118,13 +118,7 @@ impl Prepared {
             return Stand::left_out(Left::Outside(k as u8));
         }
         let numbers = inputs.numbers(&self.base, draw);
-        match left_out(&self.base, &numbers, self.ratio) {
-            Some(left) => Stand::left_out(left),
-            None => {
-                let (_, least) = self.base.extremes(&numbers);
-                stand_of(&self.base.wall(&numbers), numbers.tensile, least)
-            }
-        }
+        stand_by_numbers(&self.base, &numbers, self.ratio)
     }
 }
 
@@ -213,7 +207,7 @@ impl Ensemble {
                 });
             outcome.first_order = first_order(&self.inputs, &ready.base.numbers, |numbers| {
                 let (_, least) = ready.base.extremes(numbers);
-                stand_of(&ready.base.wall(numbers), numbers.tensile, least).bottom
+                stand_of(&ready.base.wall(numbers, numbers.strength.law()), numbers.tensile, least).bottom
             });
             outcome
         })

@@ -32,7 +32,7 @@ pub(super) fn first_order(
     for one in &inputs.drawn {
         means.set(one.input, one.spread.moments().0);
     }
-    if !means.are_possible() {
+    if means.law().is_none() {
         return None;
     }
     let mean = bottom(&means)?;

@@ -3,7 +3,7 @@
 use crate::error::Result;
 use crate::frames::borehole_axes;
 use crate::frames::vector::{V3, apply};
-use crate::rock::{Strength, StrengthNumber};
+use crate::rock::{Law, Strength, StrengthNumber};
 use crate::stress::tensor::Tensor;
 use crate::units::Quantity;
 use crate::well::wall::elastic::{Kirsch, in_hole};
@@ -40,6 +40,8 @@ pub(super) struct Base {
     upright: bool,
     /// The normal of the plane of weakness, north, east, down.
     normal: Option<V3>,
+    /// Sine and cosine of the inclination.
+    inclined: (f64, f64),
 }
 
 impl Base {
@@ -70,7 +72,15 @@ impl Base {
             None => None,
         };
         let upright = ed.abs().max(nd.abs()) <= 1e-12 * far.largest();
-        Ok(Base { setup: *setup, far, numbers, along: [dyad(c, s), dyad(-s, c)], upright, normal })
+        Ok(Base {
+            setup: *setup,
+            far,
+            numbers,
+            along: [dyad(c, s), dyad(-s, c)],
+            upright,
+            normal,
+            inclined: inclination.sin_cos(),
+        })
     }
 
     /// The stress in north, east, down, before the whole of it is turned to its azimuth.
@@ -92,10 +102,12 @@ impl Base {
         (s1, s3)
     }
 
-    /// The wall. Turning the stress is turning the hole the other way.
-    pub fn wall(&self, numbers: &Numbers) -> ShearWall {
+    /// The wall, of rock by this law. Turning the stress is turning the hole the other way.
+    pub fn wall(&self, numbers: &Numbers, law: Law) -> ShearWall {
         let turned = numbers.azimuth - self.numbers.azimuth;
-        let (inclined, hole) = (numbers.inclination.sin_cos(), (numbers.hole_azimuth - turned).sin_cos());
+        let drawn = numbers.inclination != self.numbers.inclination;
+        let inclined = if drawn { numbers.inclination.sin_cos() } else { self.inclined };
+        let hole = (numbers.hole_azimuth - turned).sin_cos();
         let local = in_hole(self.unturned(numbers), inclined, hole);
         let nu = numbers.poisson;
         let mut kirsch = Kirsch::new(local, nu);
@@ -109,7 +121,7 @@ impl Base {
             PlaneAtWall::new(apply(&axes, normal), yz, xz, weak.cohesion.si(), weak.friction_angle.si().tan())
         });
         let eta2 = numbers.biot * (1.0 - 2.0 * nu) / (1.0 - nu);
-        ShearWall::new(kirsch, numbers.strength.law(), plane, numbers.pore, self.setup.passes(), eta2)
+        ShearWall::new(kirsch, law, plane, numbers.pore, self.setup.passes(), eta2)
     }
 }
 
@@ -139,13 +151,11 @@ impl Numbers {
         }
     }
 
-    /// Whether a wall can have them.
-    pub fn are_possible(&self) -> bool {
+    /// The law of the rock; `None` where no wall can have them.
+    pub fn law(&self) -> Option<Law> {
         let Numbers { poisson, tensile, biot, strength, .. } = *self;
-        (0.0..=0.5).contains(&poisson)
-            && tensile >= 0.0
-            && (0.0..=1.0).contains(&biot)
-            && self.pore.is_finite()
-            && strength.checked().is_ok()
+        let possible =
+            (0.0..=0.5).contains(&poisson) && tensile >= 0.0 && (0.0..=1.0).contains(&biot) && self.pore.is_finite();
+        if possible { strength.checked_law().ok() } else { None }
     }
 }

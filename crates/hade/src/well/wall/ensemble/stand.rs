@@ -39,20 +39,20 @@ impl Stand {
     }
 }
 
-/// Why numbers are left out, if they are.
+/// The stand of the wall of some numbers.
 #[inline]
-pub(super) fn left_out(base: &Base, numbers: &Numbers, friction_ratio: Option<f64>) -> Option<Left> {
-    if !numbers.are_possible() {
-        return Some(Left::Impossible);
-    }
+pub(super) fn stand_by_numbers(base: &Base, numbers: &Numbers, friction_ratio: Option<f64>) -> Stand {
+    let Some(law) = numbers.law() else { return Stand::left_out(Left::Impossible) };
     if numbers.larger < numbers.smaller {
-        return Some(Left::Crossed);
+        return Stand::left_out(Left::Crossed);
     }
-    let ratio = friction_ratio?;
     let (s1, s3) = base.extremes(numbers);
     let least = s3 - numbers.pore;
     // An S3 at or below the pore pressure is beyond any friction.
-    (least <= 0.0 || s1 - numbers.pore > ratio * least).then_some(Left::BeyondFriction)
+    if friction_ratio.is_some_and(|ratio| least <= 0.0 || s1 - numbers.pore > ratio * least) {
+        return Stand::left_out(Left::BeyondFriction);
+    }
+    stand_of(&base.wall(numbers, law), numbers.tensile, s3)
 }
 
 /// The stand of one wall.

@@ -1,18 +1,29 @@
 //! The highest place of a function round the hole without a scan: Newton climbs to a summit, and a polynomial proves
 //! that no other place is higher.
 
+use super::circle::{Peak, on_circle};
 use super::wave::Wave;
 use crate::rock::Jet;
 
-/// A summit: the function with its derivatives there, and cos φ and sin φ.
+/// A summit: the function there, and cos φ and sin φ.
 pub(crate) struct Summit {
-    pub jet: Jet,
+    pub value: f64,
     pub c: f64,
     pub s: f64,
 }
 
-/// Newton's steps on the slope from a place near the top of a hill; `None` where it is not on one, or does not
-/// settle.
+impl Summit {
+    /// With its place as an angle.
+    pub fn peak(&self) -> Peak {
+        Peak { phi: on_circle(self.s.atan2(self.c)), value: self.value, flat: false }
+    }
+}
+
+/// A step whose sine is below this ends the climb: the next would be of the size of its square.
+const LAST: f64 = 1e-6;
+
+/// Steps to the crest of the wave that has the same slope and bend here, from a place near the top of a hill; close to
+/// the top they are Newton's. `None` where it is not on a hill, or does not settle.
 #[inline(always)]
 pub(crate) fn climbed(jet_at: impl Fn(f64, f64) -> Jet, (mut c, mut s): (f64, f64)) -> Option<Summit> {
     let mut jet = jet_at(c, s);
@@ -20,20 +31,12 @@ pub(crate) fn climbed(jet_at: impl Fn(f64, f64) -> Jet, (mut c, mut s): (f64, f6
         if jet.bend >= 0.0 {
             return None;
         }
-        let step = -jet.slope / jet.bend;
-        if step.abs() > 1.0 {
-            return None;
-        }
-        // Turned by the step; a short one by its series.
-        let (sin, cos) = if step.abs() < 1e-3 {
-            let square = step * step;
-            (step * (1.0 - square / 6.0), 1.0 - square * (0.5 - square / 24.0))
-        } else {
-            step.sin_cos()
-        };
+        let inverse = 1.0 / (jet.slope * jet.slope + jet.bend * jet.bend).sqrt();
+        let (sin, cos) = (jet.slope * inverse, -jet.bend * inverse);
         (c, s) = (c * cos - s * sin, s * cos + c * sin);
-        if step.abs() < 1e-9 {
-            return Some(Summit { jet, c, s });
+        if sin.abs() < LAST {
+            // What is left to rise over so short a step.
+            return Some(Summit { value: jet.value + 0.5 * jet.slope * sin, c, s });
         }
         jet = jet_at(c, s);
     }

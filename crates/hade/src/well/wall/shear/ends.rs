@@ -9,9 +9,7 @@
 use super::shear_wall::Window;
 use crate::rock::{Jet, MohrCoulomb};
 use crate::well::wall::elastic::Kirsch;
-use crate::well::wall::round::{
-    CIRCLE, OnCircle, Peak, SAME, Summit, Wave, climbed, greatest, on_circle, only_touches, smallest,
-};
+use crate::well::wall::round::{CIRCLE, OnCircle, Peak, SAME, Summit, Wave, climbed, greatest, only_touches, smallest};
 
 /// A wall that is impermeable, of rock without a plane of weakness; Pa.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -20,12 +18,14 @@ pub(crate) struct ClosedForm {
     line: MohrCoulomb,
     pore: f64,
     scale: f64,
+    /// Amplitudes of hoop and axial stress.
+    swings: [f64; 2],
 }
 
 impl ClosedForm {
     /// `scale` is the size of the numbers at hand, for tolerances.
     pub fn new(kirsch: &Kirsch, line: MohrCoulomb, pore: f64, scale: f64) -> Self {
-        ClosedForm { kirsch: *kirsch, line, pore, scale }
+        ClosedForm { kirsch: *kirsch, line, pore, scale, swings: [kirsch.hoop.amplitude(), kirsch.axial.amplitude()] }
     }
 
     /// The pressures between which the whole wall holds.
@@ -42,11 +42,7 @@ impl ClosedForm {
 
     /// Both ends, where any pressure is safe for the whole wall.
     pub fn ends(&self) -> Option<(Peak, Peak)> {
-        self.ends_beside(self.plain_lower())
-    }
-
-    /// The same where the lower end is known, or known not to be found plainly.
-    fn ends_beside(&self, lower: Option<Peak>) -> Option<(Peak, Peak)> {
+        let lower = self.plain_lower();
         // Mostly a closed wall shows it at one of few places.
         if lower.is_none() && self.is_closed_at_a_crest() {
             return None;
@@ -65,10 +61,8 @@ impl ClosedForm {
     /// The lower end alone.
     #[inline]
     pub fn lower(&self) -> Option<f64> {
-        match self.plain_lower() {
-            Some(lower) => Some(lower.value),
-            None => self.ends_beside(None).map(|(lower, _)| lower.value),
-        }
+        let plain = self.closing().highest(self.kirsch.hoop, self.swings[0], self.scale).map(|summit| summit.value);
+        plain.filter(|p| self.only_closes(*p)).or_else(|| self.ends().map(|(lower, _)| lower.value))
     }
 
     /// Whether the ends at the crests and troughs of the hoop stress and of the shear stress already leave no pressure
@@ -115,18 +109,26 @@ impl ClosedForm {
     fn plain_lower(&self) -> Option<Peak> {
         let closing = self.closing();
         let peak = closing
-            .highest(self.kirsch.hoop, self.scale)
-            .unwrap_or_else(|| greatest(&Signed { root: closing, sign: 1.0 }, self.scale));
-        let bounds = self.bounds(peak.value);
-        (bounds.within && bounds.pushed).then_some(peak)
+            .highest(self.kirsch.hoop, self.swings[0], self.scale)
+            .map_or_else(|| greatest(&Signed { root: closing, sign: 1.0 }, self.scale), |summit| summit.peak());
+        self.only_closes(peak.value).then_some(peak)
+    }
+
+    /// Whether by bounds on the whole wall nothing fails at a pressure but what closes in.
+    #[inline]
+    fn only_closes(&self, pressure: f64) -> bool {
+        let bounds = self.bounds(pressure);
+        bounds.within && bounds.pushed
     }
 
     /// The upper end where the hole is pushed out, likewise.
     fn plain_upper(&self) -> Option<Peak> {
         let pushed = self.upper_end().pushed();
-        let lowest = pushed.root.turned_over().highest(self.kirsch.hoop.scaled(-1.0, 0.0), self.scale);
-        let peak =
-            lowest.map(|peak| Peak { value: -peak.value, ..peak }).unwrap_or_else(|| smallest(pushed, self.scale));
+        let hoop = self.kirsch.hoop.scaled(-1.0, 0.0);
+        let peak = match pushed.root.turned_over().highest(hoop, self.swings[0], self.scale) {
+            Some(summit) => Peak { value: -summit.value, ..summit.peak() },
+            None => smallest(pushed, self.scale),
+        };
         let bounds = self.bounds(peak.value);
         (bounds.within && bounds.closing).then_some(peak)
     }
@@ -137,12 +139,12 @@ impl ClosedForm {
     #[inline]
     fn bounds(&self, pressure: f64) -> Bounds {
         let (q, ucs) = (self.line.q, self.line.ucs);
-        let mean = self.kirsch.hoop.joined(1.0, self.kirsch.axial, 0.5);
-        let half = self.kirsch.hoop.joined(-1.0, self.kirsch.axial, 0.5);
-        let shear = self.kirsch.shear_squared.mean + self.kirsch.shear_squared.amplitude();
+        let ([hoop1, axial1], hoop0, axial0) = (self.swings, self.kirsch.hoop.mean, self.kirsch.axial.mean);
+        // The square of one sine is nowhere above twice its mean.
+        let shear = 2.0 * self.kirsch.shear_squared.mean;
         let across = pressure - self.pore;
-        let (m0, m1) = (mean.mean - 0.5 * pressure - self.pore, mean.amplitude());
-        let (d0, d1) = (half.mean - 0.5 * pressure, half.amplitude());
+        let (m0, m1) = (0.5 * (hoop0 + axial0 - pressure) - self.pore, 0.5 * (hoop1 + axial1));
+        let (d0, d1) = (0.5 * (hoop0 - axial0 - pressure), 0.5 * (hoop1 - axial1));
         let mut holds = Bounds { closing: true, within: true, pushed: true, least: across };
         for u in [1.0, -1.0] {
             let (m, d) = (m0 + u * m1, d0 + u * d1);
@@ -232,25 +234,23 @@ impl Root {
         (m * m + if v > 0.0 { v } else { 0.0 }).sqrt()
     }
 
-    /// The highest place of the larger root, if Newton climbs to one from the crest of the hoop
-    /// stress that is proved to be the highest of all: nothing is scanned.
+    /// The highest place of the larger root, if a climb ends at one from the crest of the hoop stress (of amplitude
+    /// `swing`) that is proved to be the highest of all: nothing is scanned.
     ///
     /// With p the value there, (p − x)(p − y) − v has a double zero at that place; it is nowhere below zero, so p
     /// nowhere below the root, when [`only_touches`] says so.
     #[inline]
-    fn highest(&self, hoop: Wave, scale: f64) -> Option<Peak> {
-        let swing = hoop.amplitude();
+    fn highest(&self, hoop: Wave, swing: f64, scale: f64) -> Option<Summit> {
         if swing <= SAME * scale {
             return None;
         }
         let start = (hoop.cos / swing, hoop.sin / swing);
-        let Summit { jet, c, s } = climbed(|c, s| self.jet(1.0, c, s), start)?;
-        let p = jet.value;
-        let below = |w: Wave| w.scaled(-1.0, p);
+        let summit = climbed(|c, s| self.jet(1.0, c, s), start)?;
+        let below = |w: Wave| w.scaled(-1.0, summit.value);
         let x = self.mean.joined(1.0, self.half, 1.0);
         let y = self.mean.joined(-1.0, self.half, 1.0);
-        let proved = only_touches(below(x), below(y), self.v.mean, c, s);
-        proved.then(|| Peak { phi: on_circle(s.atan2(c)), value: p, flat: false })
+        let proved = only_touches(below(x), below(y), self.v.mean, summit.c, summit.s);
+        proved.then_some(summit)
     }
 
     /// The smaller root turned upside down is the larger root of this.
@@ -266,12 +266,14 @@ impl Root {
         (mean + r, mean - r)
     }
 
+    #[inline]
     pub fn jet(&self, sign: f64, c: f64, s: f64) -> Jet {
         let (m, m1, m2) = (self.half.at(c, s), self.half.slope(c, s), self.half.bend(c, s));
         let r = self.radius(c, s);
         let (r1, r2) = if r > 0.0 {
-            let r1 = (m * m1 + 0.5 * self.v.slope(c, s)) / r;
-            (r1, (m1 * m1 + m * m2 + 0.5 * self.v.bend(c, s) - r1 * r1) / r)
+            let inverse = 1.0 / r;
+            let r1 = (m * m1 + 0.5 * self.v.slope(c, s)) * inverse;
+            (r1, (m1 * m1 + m * m2 + 0.5 * self.v.bend(c, s) - r1 * r1) * inverse)
         } else {
             (0.0, 0.0)
         };

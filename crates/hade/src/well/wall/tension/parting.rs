@@ -10,7 +10,7 @@
 
 use crate::rock::{Jet, Number};
 use crate::well::wall::elastic::EffectiveWall;
-use crate::well::wall::round::{OnCircle, Peak, SAME, Summit, climbed, greatest, on_circle, only_touches, smallest};
+use crate::well::wall::round::{OnCircle, Peak, SAME, climbed, greatest, only_touches, smallest};
 
 /// At which pressure a wall parts.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -111,11 +111,11 @@ impl Parts<'_> {
             return None;
         }
         let trough = (-wall.hoop.cos / swing, -wall.hoop.sin / swing);
-        let Summit { jet, c, s } = climbed(|c, s| -self.jet(0, c, s), trough)?;
-        let x = -jet.value;
+        let summit = climbed(|c, s| -self.jet(0, c, s), trough)?;
+        let x = -summit.value;
         let room = wall.hoop.scaled(1.0, tensile - wall.hoop_falls * x);
-        let proved = only_touches(room, wall.axial.scaled(1.0, tensile), wall.shear_squared.mean, c, s);
-        proved.then(|| Peak { phi: on_circle(s.atan2(c)), value: x, flat: false })
+        let proved = only_touches(room, wall.axial.scaled(1.0, tensile), wall.shear_squared.mean, summit.c, summit.s);
+        proved.then(|| Peak { value: x, ..summit.peak() })
     }
 
     /// The smaller root x of (H + T₀ − h x)(Z + T₀ − k x) = τθz², in the form that also holds for
