@@ -278,11 +278,15 @@ let expanding: Vec<Layer> = ground
     .collect::<Result<_, _>>()?;
 let cooled = Ground::new(GroundInputs { layers: expanding, ..ground.inputs() })?
     .with_temperatures(&rock_temperature, &TemperatureProfile::uniform(45.celsius())?)?;
-let table = "# datum: rotary table\n# depth_unit: m\n# pressure_unit: MPa\n# angle_unit: deg
-from,to,layer,poisson,tensile_strength,ucs,friction_angle
-3600,3900,Grebe sand,0.2,1,40,38
-";
-std::fs::write("kf3-lateral.csv", table)?;
+let table = [
+    "# datum: rotary table",
+    "# depth_unit: m",
+    "# pressure_unit: MPa",
+    "# angle_unit: deg",
+    "from,to,layer,poisson,tensile_strength,ucs,friction_angle",
+    "3600,3900,Grebe sand,0.2,1,40,38",
+];
+std::fs::write("kf3-lateral.csv", table.join("\n"))?;
 let lateral: LayerIntervals = Ground::read_intervals("kf3-lateral.csv")?;
 assert_eq!(lateral.layers()[0].name(), "Grebe sand");
 let cold: Option<Warming> = cooled.at(&survey, 3500.m())?.warming;
