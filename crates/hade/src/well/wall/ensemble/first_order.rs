@@ -32,9 +32,8 @@ pub(super) fn first_order(
     for one in &inputs.drawn {
         means.set(one.input, one.spread.moments().0);
     }
-    if means.law().is_none() {
-        return None;
-    }
+    // None where no wall can have them.
+    means.law()?;
     let mean = bottom(&means)?;
     let mut changes = Vec::with_capacity(inputs.drawn.len());
     for one in &inputs.drawn {
