@@ -5,7 +5,7 @@ use serde::{Deserialize, Serialize};
 use super::ground::{Ground, GroundInputs, HorizontalProfiles, Interval};
 use super::in_hole::GroundInHole;
 use super::layer::Layer;
-use crate::card::Item;
+use crate::card::{Card, Item};
 use crate::error::{Error, Result};
 use crate::field::{PressureProfile, ProfileRecord, TemperatureInHole, TemperatureProfile, TemperatureRecord};
 use crate::frames::Azimuth;
@@ -64,6 +64,12 @@ impl Ground {
     /// The azimuth of S_Hmax.
     pub(crate) fn azimuth(&self) -> Azimuth {
         self.inputs.sh_max_azimuth
+    }
+
+    /// The cards that its azimuths stand on.
+    pub(crate) fn upstream(&self) -> Vec<Card> {
+        let own = self.inputs.layers.iter().filter_map(|layer| layer.sh_max_azimuth);
+        std::iter::once(self.inputs.sh_max_azimuth).chain(own).flat_map(|azimuth| azimuth.upstream()).collect()
     }
 
     /// From a record.

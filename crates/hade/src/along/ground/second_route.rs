@@ -4,8 +4,8 @@ use super::depletion::{MaxPath, MinPath};
 use super::in_hole::GroundInHole;
 use super::layer::Layer;
 use crate::field::InHole;
-use crate::units::Warming;
-use crate::well::Place;
+use crate::units::{Length, Quantity, Warming};
+use crate::well::{Place, Survey};
 
 impl GroundInHole<'_> {
     /// S_v, P_p, S_hmin, S_Hmax of a layer at a place: profiles by the distances to their points, the
@@ -29,6 +29,15 @@ impl GroundInHole<'_> {
         let (min, max) = (total(0)?, total(1)?);
         let [of_min, of_max, drawdown] = relief(layer);
         Some([sv, pore - drawdown, min - of_min, max - of_max])
+    }
+
+    /// The layers a millimetre of hole above and below a depth: one is that of the depth, both at a contact.
+    pub fn layers_beside(&self, survey: &Survey, md: Length) -> Vec<&Layer> {
+        let beside = |by: f64| {
+            let md = (md.si() + by).clamp(survey.first_md().si(), survey.last_md().si());
+            self.layer(self.layer_at(&survey.place(Length::m(md)).ok()?).ok()?)
+        };
+        [-1e-3, 1e-3].into_iter().filter_map(beside).collect()
     }
 
     /// How much a layer's wall is warmed at a place: as it states, or by the temperatures of the other route.
@@ -58,7 +67,6 @@ impl GroundInHole<'_> {
 
 /// What depletion took from S_hmin, S_Hmax and the pore pressure.
 fn relief(layer: &Layer) -> [f64; 3] {
-    use crate::units::Quantity;
     let Some(depletion) = layer.depletion else { return [0.0; 3] };
     let drawdown = depletion.drawdown.si();
     let nu = layer.rock.poisson;

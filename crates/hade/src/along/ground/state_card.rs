@@ -6,7 +6,7 @@ use super::state::{GroundState, GroundStateInputs, GroundStateOutcome};
 use crate::along::Ground;
 use crate::card::{Card, Check, Explain, Explanation, Item};
 use crate::error::Result;
-use crate::units::{Length, Pressure, Quantity, Warming, fixed};
+use crate::units::{Pressure, Quantity, Warming, fixed};
 use crate::well::{Survey, stated_items};
 
 /// Depths that must meet may differ by this, metres.
@@ -82,7 +82,7 @@ impl Explain for GroundState {
 
     fn upstream(&self) -> Vec<Card> {
         let mut cards = self.survey.upstream();
-        cards.extend(self.sh_max_azimuth.upstream());
+        cards.extend(self.ground.upstream());
         cards
     }
 }
@@ -124,11 +124,7 @@ fn checks(inputs: &GroundStateInputs, outcome: &GroundStateOutcome) -> Result<Ve
     let other = in_hole.by_another_route(&place, index).unwrap_or([f64::NAN; 4]).map(|p| p * 1e-6);
     let size = other.iter().fold(1.0_f64, |m, v| m.max(v.abs()));
     let got = [outcome.sv, outcome.pore, outcome.sh_min, outcome.sh_max].map(Pressure::in_mpa);
-    let named = |by: f64| {
-        let md = (inputs.md.si() + by).clamp(survey.first_md().si(), survey.last_md().si());
-        let layer = in_hole.layer(in_hole.layer_at(&survey.place(Length::m(md)).ok()?).ok()?)?;
-        Some(layer.name() == outcome.layer.text())
-    };
+    let same = in_hole.layers_beside(&survey, inputs.md).into_iter().any(|layer| layer.name == outcome.layer);
     let stated = in_hole.layer(index).and_then(|layer| layer.sh_max_azimuth).unwrap_or(ground.azimuth());
     let mut checks = vec![
         Check::compare(
@@ -154,7 +150,7 @@ fn checks(inputs: &GroundStateInputs, outcome: &GroundStateOutcome) -> Result<Ve
         ),
         Check::holds(
             "whether the layer is that of a millimetre of hole above or below (0 when it is)",
-            f64::from(![-1e-3, 1e-3].into_iter().filter_map(named).any(|same| same)),
+            f64::from(!same),
             0.0,
             "",
         ),

@@ -61,8 +61,7 @@ impl Explain for LimitLog {
 
     fn upstream(&self) -> Vec<Card> {
         let mut cards = self.survey.upstream();
-        cards.extend(self.ground.azimuth().upstream());
-        cards.extend(self.ground.layers().into_iter().filter_map(|l| l.sh_max_azimuth).flat_map(|a| a.upstream()));
+        cards.extend(self.ground.upstream());
         cards
     }
 }

@@ -8,7 +8,7 @@ use super::limit_log::LogInputs;
 use super::row::LogRow;
 use super::section::{HoleSection, SectionEnd, SectionRange};
 use super::summary::LogOutcome;
-use crate::along::ground::{AtPlace, GroundInHole};
+use crate::along::ground::{AtPlace, GroundInHole, Layer};
 use crate::card::Check;
 use crate::error::Result;
 use crate::units::{Length, Pressure, Quantity, Warming};
@@ -45,16 +45,9 @@ fn states(inputs: &LogInputs, survey: &Survey, in_hole: &GroundInHole<'_>) -> Re
 fn places(inputs: &LogInputs, outcome: &LogOutcome, survey: &Survey, in_hole: &GroundInHole<'_>) -> Vec<Check> {
     let asked: Vec<f64> = inputs.printed.iter().map(|(md, _)| md.si()).collect();
     let got = |of: fn(&LogRow) -> Length| outcome.rows.iter().map(|row| of(row).si()).collect::<Vec<_>>();
-    // A contact is where a millimetre more or less of hole changes the layer.
-    let beside = |md: f64, by: f64| {
-        let md = (md + by).clamp(survey.first_md().si(), survey.last_md().si());
-        in_hole.layer_at(&survey.place(Length::m(md)).ok()?).ok()
-    };
     let strange = outcome.rows.iter().zip(&inputs.printed).filter(|(row, (md, _))| {
-        let named = |k: usize| {
-            in_hole.layer(k).is_some_and(|l| l.name() == row.layer() && l.depletion.is_some() == row.depleted)
-        };
-        ![-1e-3, 1e-3].into_iter().filter_map(|by| beside(md.si(), by)).any(named)
+        let is = |layer: &Layer| layer.name == row.layer && layer.depletion.is_some() == row.depleted;
+        !in_hole.layers_beside(survey, *md).into_iter().any(is)
     });
     vec![
         Check::compare("measured depth of every printed row", &got(|row| row.md), &asked, MEET, "m"),

@@ -47,7 +47,7 @@ impl LimitLog {
     /// When the coefficient is negative or not finite.
     pub fn with_friction(&self, friction: f64) -> Result<Self> {
         frictional_ratio(friction)?;
-        self.rebuilt(Some(friction))
+        self.held_against(friction)
     }
 }
 

@@ -143,9 +143,9 @@ impl LimitLog {
         LimitLog::build((&self.survey, &self.ground), self.choices, (sections.to_vec(), self.friction), all, looked)
     }
 
-    /// The same rows, held against another coefficient of friction.
-    pub(super) fn rebuilt(&self, friction: Option<f64>) -> Result<Self> {
-        let stated = (self.sections.clone(), friction);
+    /// The same rows, their stress held against a coefficient of friction.
+    pub(super) fn held_against(&self, friction: f64) -> Result<Self> {
+        let stated = (self.sections.clone(), Some(friction));
         LimitLog::build((&self.survey, &self.ground), self.choices, stated, self.all.clone(), self.record.looked)
     }
 

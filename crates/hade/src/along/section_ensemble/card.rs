@@ -6,6 +6,7 @@ use super::outcome::SectionEnsembleOutcome;
 use super::section_ensemble::{SectionEnsemble, SectionEnsembleInputs};
 use crate::card::{Card, Check, Column, Explain, Explanation, Formula, Item, Method, Reference, Step, Table};
 use crate::error::Result;
+use crate::spread::Draws;
 use crate::units::{Density, Quantity as _, fixed};
 
 impl Explain for SectionEnsemble {
@@ -30,7 +31,11 @@ impl Explain for SectionEnsemble {
 
     fn explain(&self) -> Explanation {
         Explanation {
-            title: format!("Chance that one mud weight keeps {} of {}", self.section.name(), self.log.hole()),
+            title: format!(
+                "Chance that one mud weight keeps the section {} of {}",
+                self.section.name(),
+                self.log.hole()
+            ),
             headline: self.headline(),
             inputs: self.items(),
             results: self.results(),
@@ -46,6 +51,9 @@ impl Explain for SectionEnsemble {
         self.log.upstream()
     }
 }
+
+/// A draw that counts is looked for among so many.
+const FEW: u32 = 200;
 
 fn percent(share: f64) -> String {
     format!("{} %", fixed(100.0 * share, 1))
@@ -90,21 +98,16 @@ impl SectionEnsemble {
     }
 
     fn results(&self) -> Vec<Item> {
-        let name = self.section.name();
         let mut items = Vec::new();
         let share =
             |symbol: &str, words: String, share: f64| Item::new(symbol, words, "share", vec![share], percent(share));
         if let Some(best) = self.best() {
-            items.push(Item::computed(
-                "ρ_best",
-                format!("mud weight that keeps {name} in most draws"),
-                best.mud_weight,
-            ));
-            items.push(share("P_1", format!("share of draws it keeps {name}, all layers alike"), best.together));
-            items.push(share("P_2", format!("share of draws it keeps {name}, each layer by itself"), best.by_layer));
+            items.push(Item::computed("ρ_best", "mud weight that keeps the section in most draws", best.mud_weight));
+            items.push(share("P_1", "share of draws in which it does, all layers alike".to_owned(), best.together));
+            items.push(share("P_2", "share of draws in which it does, each layer by itself".to_owned(), best.by_layer));
         }
         if let Some(planned) = self.planned() {
-            let words = |how: &str| format!("share of draws the planned mud keeps {name}, {how}");
+            let words = |how: &str| format!("share of draws in which the planned mud keeps the section, {how}");
             items.push(share("P_3", words("all layers alike"), planned.together));
             items.push(share("P_4", words("each layer by itself"), planned.by_layer));
         }
@@ -114,7 +117,7 @@ impl SectionEnsemble {
             for (quantile, density) in ["P10", "P50", "P90"].iter().zip(three.into_iter().flatten()) {
                 items.push(Item::computed(
                     &format!("ρ_{symbol},{quantile}"),
-                    format!("{quantile} of the {what} of {name}"),
+                    format!("{quantile} of the {what} of the section"),
                     density,
                 ));
             }
@@ -183,13 +186,16 @@ impl SectionEnsemble {
     /// The first draw that counts, at the depth with the highest bottom in it.
     fn one_draw(&self) -> Vec<Step> {
         let depths = self.depths();
+        // Fewer draws are the first of more.
+        let few = Draws { count: self.draws.count.min(FEW), ..self.draws };
         let all: Vec<_> = depths
             .iter()
-            .filter_map(|depth| Some((depth, depth.ensemble(self.draws, &self.spreads, &self.correlations).ok()?)))
+            .filter_map(|depth| Some((depth, depth.ensemble(few, &self.spreads, &self.correlations).ok()?)))
             .collect();
         let ends: Vec<Vec<_>> = all.iter().map(|(_, ensemble)| ensemble.ends()).collect();
-        let count = self.draws.count as usize;
-        let Some(k) = (0..count).find(|k| ends.iter().all(|ends| ends.get(*k).is_some_and(Option::is_some))) else {
+        let Some(k) =
+            (0..few.count as usize).find(|k| ends.iter().all(|ends| ends.get(*k).is_some_and(Option::is_some)))
+        else {
             return Vec::new();
         };
         let bottom = |at: usize| -> f64 {

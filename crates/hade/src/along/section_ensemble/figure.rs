@@ -27,7 +27,7 @@ pub(super) fn figure(section: &SectionEnsemble) -> Option<Figure> {
     }
     Some(Figure {
         caption: format!(
-            "Share of draws in which one mud weight keeps the whole of {}, at rest, without margins.",
+            "Share of draws in which one mud weight keeps the whole section {}, at rest, without margins.",
             section.section.name()
         ),
         alt: format!(
