@@ -17,7 +17,7 @@ static PIPE: AtomicI32 = AtomicI32::new(-1);
 /// Whether Ctrl-C was pressed since somebody listens.
 static PRESSED: AtomicBool = AtomicBool::new(false);
 
-/// Turns Ctrl-C into an interrupt of the running cell until it is dropped. A second one ends the program.
+/// Turns Ctrl-C into an interrupt of the session, for good, until it is dropped. A second one ends the program.
 pub(crate) struct Keyboard {
     /// What Ctrl-C did before; `None` if nobody listens.
     before: Option<libc::sighandler_t>,
@@ -45,7 +45,8 @@ impl Keyboard {
         thread::spawn(move || {
             let mut byte = [0];
             while pipe.read(&mut byte).is_ok_and(|n| n == 1) {
-                handle.interrupt();
+                // The program ends after this cell, or after the one it was about to begin.
+                handle.interrupt_for_good();
             }
         });
         // SAFETY: the handler does only what a handler may.

@@ -39,6 +39,12 @@ impl InterruptHandle {
             self.switch.changed.notify_all();
         }
     }
+
+    /// Stops the running cell and every cell that begins later. Returns at once.
+    pub(crate) fn interrupt_for_good(&self) {
+        self.switch.lock().for_good = true;
+        self.interrupt();
+    }
 }
 
 /// Why a cell was stopped.
@@ -70,6 +76,8 @@ struct Switch {
 struct State {
     running: bool,
     why: Option<Why>,
+    /// Whether a cell that begins is stopped as well.
+    for_good: bool,
 }
 
 impl Switch {
@@ -110,11 +118,14 @@ impl Interrupts {
     }
 
     /// A cell is about to be compiled and run. It can be stopped until the watch ends, and no cell after it is
-    /// touched.
+    /// touched, unless the session was interrupted for good.
     pub(crate) fn watch(&self, limit: Option<Duration>) -> Watch {
         let _ = fs::remove_file(&self.target.flag);
         self.target.begun.store(false, Ordering::Relaxed);
-        *self.switch.lock() = State { running: true, why: None };
+        let mut state = self.switch.lock();
+        let why = state.for_good.then_some(Why::Asked);
+        *state = State { running: true, why, ..*state };
+        drop(state);
         let (switch, target) = (Arc::clone(&self.switch), self.target.clone());
         Watch { switch: Arc::clone(&self.switch), thread: thread::spawn(move || watch(&switch, &target, limit)) }
     }
@@ -220,6 +231,26 @@ mod tests {
         thread::sleep(PATIENCE + 5 * TICK);
         assert_eq!(watch.end(), None);
         assert!(is_alive(&interrupts), "the next cell was ended");
+        end(&interrupts);
+        Ok(())
+    }
+
+    #[test]
+    fn an_interrupt_for_good_reaches_a_cell_that_begins_after_it() -> std::io::Result<()> {
+        let dir = tempfile::tempdir()?;
+        let handle = InterruptHandle::default();
+        let interrupts = interrupts(&handle, dir.path())?;
+        handle.interrupt_for_good();
+        for _ in 0..2 {
+            let watch = interrupts.watch(None);
+            interrupts.target.begun.store(true, Ordering::Relaxed);
+            let start = Instant::now();
+            while !interrupts.target.flag.exists() {
+                assert!(start.elapsed() < PATIENCE, "the cell was not asked to stop");
+                thread::sleep(Duration::from_millis(1));
+            }
+            assert_eq!(watch.end(), Some(Stopped { why: Why::Asked, killed: false, compiling: false }));
+        }
         end(&interrupts);
         Ok(())
     }

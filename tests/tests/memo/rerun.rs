@@ -114,7 +114,7 @@ fn ctrl_c_ends_the_rerun_and_no_verdict_is_drawn_from_it() {
     let mut child = Command::new(hade_binary())
         .arg("verify")
         .arg(&path)
-        .args(["--rerun", "--json"])
+        .args(["--rerun", "--json", "--cell-timeout", "300"])
         .stdout(Stdio::piped())
         .stderr(Stdio::piped())
         .spawn()
