@@ -162,6 +162,15 @@ impl Spread {
         }
     }
 
+    /// The number below which a share u lies, with z below which it lies in the standard normal distribution.
+    #[inline]
+    pub fn at(&self, u: f64, z: f64) -> f64 {
+        match self.shape {
+            Shape::Normal { .. } | Shape::Lognormal { .. } => self.at_score(z),
+            Shape::Triangular { .. } | Shape::Uniform { .. } => self.at_share(u),
+        }
+    }
+
     pub fn median(&self) -> f64 {
         self.at_share(0.5)
     }

@@ -90,26 +90,22 @@ impl Sampler {
     #[inline]
     pub fn draw(&self, number: u64) -> Draw {
         let count = self.spreads.len();
-        let mut shares = [0.0; MOST];
-        for (k, four) in shares.chunks_mut(4).enumerate().take(count.div_ceil(4)) {
-            let bits = block([number, k as u64, 0, 0], [self.start, 0]);
-            for (share, bits) in four.iter_mut().zip(bits) {
-                *share = uniform(bits);
-            }
+        let (mut shares, mut scores) = ([0.0; MOST], [0.0; MOST]);
+        let fours = shares.as_chunks_mut().0.iter_mut().zip(scores.as_chunks_mut().0);
+        for (k, (shares, scores)) in fours.enumerate().take(count.div_ceil(4)) {
+            *shares = block([number, k as u64, 0, 0], [self.start, 0]).map(uniform);
+            *scores = normal::quantiles(*shares);
         }
         let mut values = [0.0; MOST];
         let mut outside = None;
+        let each = values.iter_mut().zip(&self.spreads);
         if let Some(factor) = &self.factor {
-            let mut scores = [0.0; MOST];
-            for (score, share) in scores.iter_mut().zip(&shares).take(count) {
-                *score = normal::quantile(*share);
-            }
-            for ((value, spread), row) in values.iter_mut().zip(&self.spreads).zip(factor) {
+            for ((value, spread), row) in each.zip(factor) {
                 *value = spread.at_score(row.iter().zip(&scores).map(|(l, z)| l * z).sum());
             }
         } else {
-            for ((value, spread), share) in values.iter_mut().zip(&self.spreads).zip(&shares) {
-                *value = spread.at_share(*share);
+            for ((value, spread), (share, score)) in each.zip(shares.iter().zip(&scores)) {
+                *value = spread.at(*share, *score);
             }
         }
         if let Some(k) = self.held

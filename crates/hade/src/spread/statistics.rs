@@ -25,6 +25,19 @@ impl Quantiles {
         Some(Quantiles { p10: at(0.1)?, p50: at(0.5)?, p90: at(0.9)? })
     }
 
+    /// Of numbers in any order, which it puts into another.
+    pub(crate) fn of(values: &mut [f64]) -> Option<Self> {
+        interrupt::check();
+        let at = |share: f64, values: &mut [f64]| {
+            let (below, part) = place(share, values.len())?;
+            let (_, low, above) = values.select_nth_unstable_by(below, f64::total_cmp);
+            let low = *low;
+            let high = above.iter().copied().min_by(f64::total_cmp).unwrap_or(low);
+            Some(Pressure::from_si(between(low, high, part)))
+        };
+        Some(Quantiles { p10: at(0.1, values)?, p50: at(0.5, values)?, p90: at(0.9, values)? })
+    }
+
     /// The three, lowest first.
     pub fn all(&self) -> [Pressure; 3] {
         [self.p10, self.p50, self.p90]
@@ -41,12 +54,21 @@ pub(crate) fn sorted(mut values: Vec<f64>) -> Vec<f64> {
 /// The number at or below which a share of numbers in rising order lies: number (n − 1) p, counted from 0, between two
 /// interpolated.
 pub(crate) fn quantile(sorted: &[f64], share: f64) -> Option<f64> {
-    let place = share * (sorted.len().checked_sub(1)?) as f64;
-    let below = place.floor() as usize;
+    let (below, part) = place(share, sorted.len())?;
     let low = *sorted.get(below)?;
     let high = sorted.get(below + 1).copied().unwrap_or(low);
-    // Both may be infinite.
-    Some(if low == high { low } else { low + (place - place.floor()) * (high - low) })
+    Some(between(low, high, part))
+}
+
+/// Its place among so many: the number below it and the part of the way to the next.
+fn place(share: f64, count: usize) -> Option<(usize, f64)> {
+    let place = share * (count.checked_sub(1)?) as f64;
+    Some((place.floor() as usize, place - place.floor()))
+}
+
+/// A part of the way from one number to another, which may both be infinite.
+fn between(low: f64, high: f64, part: f64) -> f64 {
+    if low == high { low } else { low + part * (high - low) }
 }
 
 /// Mean and standard deviation (of a sample: with n − 1).

@@ -46,19 +46,19 @@ pub struct EnsembleOutcome {
 }
 
 impl EnsembleOutcome {
-    /// One end in rising order, of the draws that have it.
-    fn sorted_ends(stands: &[Stand], end: impl Fn(&Stand) -> Option<f64>) -> Vec<f64> {
-        sorted(stands.iter().filter(|stand| stand.left.is_none()).filter_map(end).collect())
+    /// One end, of the draws that have it.
+    fn ends(stands: &[Stand], end: impl Fn(&Stand) -> Option<f64>) -> Vec<f64> {
+        stands.iter().filter(|stand| stand.left.is_none()).filter_map(end).collect()
     }
 
     pub(super) fn quantiles(stands: &[Stand], end: impl Fn(&Stand) -> Option<f64>) -> Option<Quantiles> {
-        Quantiles::of_sorted(&EnsembleOutcome::sorted_ends(stands, end))
+        Quantiles::of(&mut EnsembleOutcome::ends(stands, end))
     }
 
     /// Without the effects of the inputs.
     pub(super) fn of(stands: &[Stand], inputs: usize) -> Self {
-        let bottoms = EnsembleOutcome::sorted_ends(stands, |stand| stand.bottom);
-        let tops = EnsembleOutcome::sorted_ends(stands, |stand| stand.top);
+        let bottoms = sorted(EnsembleOutcome::ends(stands, |stand| stand.bottom));
+        let tops = sorted(EnsembleOutcome::ends(stands, |stand| stand.top));
         let (bottom, top) = (Quantiles::of_sorted(&bottoms), Quantiles::of_sorted(&tops));
         let count = |what: &dyn Fn(&Stand) -> bool| stands.iter().filter(|stand| what(stand)).count() as f64;
         let counted = count(&|s| s.left.is_none());

@@ -9,7 +9,7 @@
 use super::shear_wall::Window;
 use crate::rock::{Jet, MohrCoulomb};
 use crate::well::wall::elastic::Kirsch;
-use crate::well::wall::round::{CIRCLE, OnCircle, Peak, SAME, Summit, Wave, climbed, greatest, only_touches, smallest};
+use crate::well::wall::round::{CIRCLE, OnCircle, Peak, SAME, Summit, Wave, greatest, highest, smallest};
 
 /// A wall that is impermeable, of rock without a plane of weakness; Pa.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -234,23 +234,20 @@ impl Root {
         (m * m + if v > 0.0 { v } else { 0.0 }).sqrt()
     }
 
-    /// The highest place of the larger root, if a climb ends at one from the crest of the hoop stress (of amplitude
-    /// `swing`) that is proved to be the highest of all: nothing is scanned.
+    /// The highest place of the larger root, if a climb finds one that is proved to be the highest of all: nothing is
+    /// scanned. It begins at the crest of the hoop stress, whose amplitude is `swing`.
     ///
-    /// With p the value there, (p − x)(p − y) − v has a double zero at that place; it is nowhere below zero, so p
-    /// nowhere below the root, when [`only_touches`] says so.
+    /// With p the value there, (p − x)(p − y) − v has a double zero at that place, and where it is nowhere below zero p
+    /// is nowhere below the root.
     #[inline]
     fn highest(&self, hoop: Wave, swing: f64, scale: f64) -> Option<Summit> {
         if swing <= SAME * scale {
             return None;
         }
         let start = (hoop.cos / swing, hoop.sin / swing);
-        let summit = climbed(|c, s| self.jet(1.0, c, s), start)?;
-        let below = |w: Wave| w.scaled(-1.0, summit.value);
         let x = self.mean.joined(1.0, self.half, 1.0);
         let y = self.mean.joined(-1.0, self.half, 1.0);
-        let proved = only_touches(below(x), below(y), self.v.mean, summit.c, summit.s);
-        proved.then_some(summit)
+        highest(&Signed { root: *self, sign: 1.0 }, start, |p| [x, y].map(|w| w.scaled(-1.0, p)), self.v.mean)
     }
 
     /// The smaller root turned upside down is the larger root of this.

@@ -10,7 +10,7 @@
 
 use crate::rock::{Jet, Number};
 use crate::well::wall::elastic::EffectiveWall;
-use crate::well::wall::round::{OnCircle, Peak, SAME, climbed, greatest, only_touches, smallest};
+use crate::well::wall::round::{Below, OnCircle, Peak, SAME, greatest, highest, smallest};
 
 /// At which pressure a wall parts.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -101,9 +101,8 @@ struct Parts<'a> {
 }
 
 impl Parts<'_> {
-    /// The lowest place of an impermeable wall, if Newton climbs down to one from the trough of the hoop stress that is
-    /// proved to be the lowest of all: nothing is scanned. At the pressure x there (H + T₀ − x)(Z + T₀) − τθz² has a
-    /// double zero.
+    /// The lowest place of an impermeable wall, if a climb down finds one that is proved to be the lowest of all: nothing
+    /// is scanned. At the pressure x there (H + T₀ − x)(Z + T₀) − τθz² has a double zero.
     fn lowest(&self, scale: f64) -> Option<Peak> {
         let Parts { wall, tensile } = *self;
         let swing = wall.hoop.amplitude();
@@ -111,11 +110,10 @@ impl Parts<'_> {
             return None;
         }
         let trough = (-wall.hoop.cos / swing, -wall.hoop.sin / swing);
-        let summit = climbed(|c, s| -self.jet(0, c, s), trough)?;
-        let x = -summit.value;
-        let room = wall.hoop.scaled(1.0, tensile - wall.hoop_falls * x);
-        let proved = only_touches(room, wall.axial.scaled(1.0, tensile), wall.shear_squared.mean, summit.c, summit.s);
-        proved.then(|| Peak { value: x, ..summit.peak() })
+        let axial = wall.axial.scaled(1.0, tensile);
+        let waves = |top: f64| [wall.hoop.scaled(1.0, tensile + wall.hoop_falls * top), axial];
+        let summit = highest(&Below(*self), trough, waves, wall.shear_squared.mean)?;
+        Some(Peak { value: -summit.value, ..summit.peak() })
     }
 
     /// The smaller root x of (H + T₀ − h x)(Z + T₀ − k x) = τθz², in the form that also holds for
