@@ -7,9 +7,10 @@ use hade_tests::root;
 
 /// Each module with its place in `error · interrupt · units ← card, sheet ← … ← prelude`. A module imports only
 /// from places before its own, or from itself.
-const ORDER: [(&str, u32); 20] = [
+const ORDER: [(&str, u32); 21] = [
     ("error", 0),
     ("interrupt", 0),
+    ("lanes", 0),
     ("progress", 1),
     ("units", 1),
     ("lines", 2),

@@ -9,6 +9,7 @@ pub mod faults;
 pub mod field;
 pub mod frames;
 pub mod interrupt;
+mod lanes;
 mod lines;
 pub mod prelude;
 pub mod progress;

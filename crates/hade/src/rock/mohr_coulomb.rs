@@ -11,11 +11,11 @@ use crate::units::{Angle, Pressure, Quantity, fixed};
 
 /// The straight line in σ1', σ3'. Numbers in Pa; `q` has none.
 #[derive(Clone, Copy, Debug, PartialEq)]
-pub(crate) struct MohrCoulomb {
+pub(crate) struct MohrCoulomb<N = f64> {
     /// Uniaxial compressive strength.
-    pub ucs: f64,
+    pub ucs: N,
     /// Slope of σ1' on σ3', 1 or more.
-    pub q: f64,
+    pub q: N,
 }
 
 impl MohrCoulomb {

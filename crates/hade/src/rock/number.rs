@@ -63,6 +63,14 @@ pub(crate) struct Jet {
     pub bend: f64,
 }
 
+impl Jet {
+    /// Value, slope and bend.
+    #[inline(always)]
+    pub fn all(self) -> [f64; 3] {
+        [self.value, self.slope, self.bend]
+    }
+}
+
 impl Number for Jet {
     #[inline(always)]
     fn value(self) -> f64 {

@@ -25,6 +25,6 @@ pub(crate) use correlation::normal_scores_correlation;
 pub use distribution::Distribution;
 pub(crate) use distribution::Spread;
 pub use sampler::Draws;
-pub(crate) use sampler::{Draw, Sampler, for_each_draw};
+pub(crate) use sampler::{Draw, Sampler, for_each_draw, for_each_four};
 pub use statistics::Quantiles;
 pub(crate) use statistics::{mean_and_deviation, quantile, rank_correlation, sorted};

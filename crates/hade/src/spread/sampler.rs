@@ -21,7 +21,7 @@ pub struct Draws {
 
 /// Fewer draws say nothing of a tenth; more ask for more memory than a notebook should.
 const COUNTS: std::ops::RangeInclusive<u32> = 100..=2_000_000;
-/// Draws that a thread makes at a time.
+/// Draws that a thread makes at a time, four by four.
 const CHUNK: usize = 512;
 /// More uncertain numbers than this are a mistake.
 pub(super) const MOST: usize = 24;
@@ -87,38 +87,47 @@ impl Sampler {
     }
 
     /// A draw by its number: a function of the start and of that number alone.
-    #[inline]
     pub fn draw(&self, number: u64) -> Draw {
-        let count = self.spreads.len();
-        let (mut shares, mut scores) = ([0.0; MOST], [0.0; MOST]);
-        let fours = shares.as_chunks_mut().0.iter_mut().zip(scores.as_chunks_mut().0);
-        for (k, (shares, scores)) in fours.enumerate().take(count.div_ceil(4)) {
-            *shares = block([number, k as u64, 0, 0], [self.start, 0]).map(uniform);
-            *scores = normal::quantiles(*shares);
-        }
-        let mut values = [0.0; MOST];
-        let mut outside = None;
-        let each = values.iter_mut().zip(&self.spreads);
-        if let Some(factor) = &self.factor {
-            for ((value, spread), row) in each.zip(factor) {
-                *value = spread.at_score(row.iter().zip(&scores).map(|(l, z)| l * z).sum());
+        let mut draw = self.no_draw();
+        self.draw_into(number, &mut draw);
+        draw
+    }
+
+    fn no_draw(&self) -> Draw {
+        Draw { values: [0.0; MOST], count: self.spreads.len(), outside: None }
+    }
+
+    /// The same in the place of another draw.
+    #[inline]
+    fn draw_into(&self, number: u64, draw: &mut Draw) {
+        let fours = draw.values.as_chunks_mut::<4>().0.iter_mut().zip(self.spreads.chunks(4));
+        for (k, (values, spreads)) in fours.enumerate() {
+            let shares = block([number, k as u64, 0, 0], [self.start, 0]).map(uniform);
+            let scores = normal::quantiles(shares);
+            if self.factor.is_some() {
+                *values = scores;
+                continue;
             }
-        } else {
-            for ((value, spread), (share, score)) in each.zip(shares.iter().zip(&scores)) {
-                *value = spread.at(*share, *score);
+            for ((value, spread), (share, score)) in values.iter_mut().zip(spreads).zip(shares.into_iter().zip(scores))
+            {
+                *value = spread.at(share, score);
+            }
+        }
+        // Scores that go together: each row needs those before it only, so the last is the first to be replaced.
+        if let Some(factor) = &self.factor {
+            for (k, (row, spread)) in factor.iter().zip(&self.spreads).enumerate().rev() {
+                let score = row.iter().zip(&draw.values).take(k + 1).map(|(l, z)| l * z).sum();
+                if let Some(value) = draw.values.get_mut(k) {
+                    *value = spread.at_score(score);
+                }
             }
         }
         if let Some(k) = self.held
-            && let (Some(value), Some(spread)) = (values.get_mut(k), self.spreads.get(k))
+            && let (Some(value), Some(spread)) = (draw.values.get_mut(k), self.spreads.get(k))
         {
             *value = spread.median();
         }
-        for (k, (value, spread)) in values.iter().zip(&self.spreads).enumerate() {
-            if outside.is_none() && !spread.holds(*value) {
-                outside = Some(k);
-            }
-        }
-        Draw { values, count, outside }
+        draw.outside = self.spreads.iter().zip(&draw.values).position(|(spread, value)| !spread.holds(*value));
     }
 }
 
@@ -128,12 +137,26 @@ pub(crate) fn for_each_draw<T: Send + Copy + Default>(
     count: u32,
     of: impl Fn(&Draw) -> T + Sync,
 ) -> Vec<T> {
+    for_each_four(sampler, count, |draws| draws.each_ref().map(&of))
+}
+
+/// The same of four draws at once, in order; the last four may go beyond the count.
+pub(crate) fn for_each_four<T: Send + Copy + Default>(
+    sampler: &Sampler,
+    count: u32,
+    of: impl Fn(&[Draw; 4]) -> [T; 4] + Sync,
+) -> Vec<T> {
     let mut out = vec![T::default(); count as usize];
     let progress = Progress::new(&format!("{count} draws"), out.len());
     out.par_chunks_mut(CHUNK).enumerate().for_each(|(chunk, cells)| {
         progress.advance(cells.len());
-        for (k, cell) in cells.iter_mut().enumerate() {
-            *cell = of(&sampler.draw((chunk * CHUNK + k) as u64));
+        let mut draws = [sampler.no_draw(); 4];
+        for (k, cells) in cells.chunks_mut(4).enumerate() {
+            for (number, draw) in (chunk * CHUNK + 4 * k..).zip(&mut draws) {
+                sampler.draw_into(number as u64, draw);
+            }
+            let four = of(&draws);
+            cells.copy_from_slice(four.get(..cells.len()).unwrap_or_default());
         }
     });
     out

@@ -124,6 +124,9 @@ mod tests {
         for (share, want) in [(0.1, 1.5), (0.5, 5.5), (0.9, 13.5), (0.0, 1.0), (1.0, 16.0)] {
             assert!((quantile(&values, share).unwrap() - want).abs() < 1e-14);
         }
+        let of = |values: &mut [f64]| Quantiles::of(values).map(|all| all.all().map(Quantity::si));
+        assert_eq!(of(&mut [7.0, 1.0, 16.0, 2.0, 11.0, 4.0]), Some([1.5, 5.5, 13.5]));
+        assert_eq!((of(&mut []), of(&mut [2.0])), (None, Some([2.0; 3])));
         assert_eq!(quantile(&[], 0.5), None);
         assert_eq!(quantile(&[3.0, f64::INFINITY, f64::INFINITY], 0.9), Some(f64::INFINITY));
     }

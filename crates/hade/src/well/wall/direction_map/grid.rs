@@ -82,7 +82,7 @@ impl Grid {
             progress.advance(cells.len());
             let inclined = (row as f64 * self.step).sin_cos();
             for (cell, turned) in cells.iter_mut().zip(&turns) {
-                let kirsch = Kirsch::new(in_hole(far, inclined, *turned), poisson);
+                let kirsch = Kirsch::of(in_hole(far.0, inclined, *turned), poisson);
                 let wall = ShearWall::new(kirsch, law, None, pore, 0.0, 0.0);
                 *cell = value(&wall).map(Pressure::from_si);
             }
@@ -93,7 +93,7 @@ impl Grid {
 
 /// The wall of a hole of any direction (inclination and azimuth in radians).
 pub(super) fn wall_at(inputs: &MapInputs, (inclination, azimuth): (f64, f64)) -> ShearWall {
-    let local = in_hole(inputs.stress.tensor(), inclination.sin_cos(), azimuth.sin_cos());
-    let kirsch = Kirsch::new(local, inputs.rock.poisson);
+    let local = in_hole(inputs.stress.tensor().0, inclination.sin_cos(), azimuth.sin_cos());
+    let kirsch = Kirsch::of(local, inputs.rock.poisson);
     ShearWall::new(kirsch, inputs.rock.strength.law(), None, inputs.pore.si(), 0.0, 0.0)
 }

@@ -6,6 +6,7 @@
 //! the hole. In φ = 2θ the hoop and axial stresses and the *square* of the shear are each one wave
 //! round the hole, and every limit of the wall is found on that circle.
 
+use crate::lanes::Lanes;
 use crate::stress::tensor::Tensor;
 use crate::well::wall::round::Wave;
 
@@ -21,30 +22,32 @@ pub(crate) struct AtWall {
 
 /// The wall stresses of one far field.
 #[derive(Clone, Copy, Debug, PartialEq)]
-pub(crate) struct Kirsch {
+pub(crate) struct Kirsch<N = f64> {
     /// Hoop stress without its −p.
-    pub hoop: Wave,
+    pub hoop: Wave<N>,
     /// Axial stress.
-    pub axial: Wave,
+    pub axial: Wave<N>,
     /// τθz².
-    pub shear_squared: Wave,
-    yz: f64,
-    xz: f64,
+    pub shear_squared: Wave<N>,
+    /// The far field's.
+    pub yz: N,
+    pub xz: N,
 }
 
-impl Kirsch {
-    /// From the far field in the hole's axes and Poisson's ratio.
-    pub fn new(far: Tensor, poisson: f64) -> Self {
-        let [x, y, z, xy, yz, xz] = far.0;
-        let difference = 2.0 * (x - y);
+impl<N: Lanes> Kirsch<N> {
+    /// From the far field in the hole's axes (xx, yy, zz, xy, yz, xz) and Poisson's ratio.
+    #[inline(always)]
+    pub fn of([x, y, z, xy, yz, xz]: [N; 6], poisson: N) -> Self {
+        let (two, four) = (N::of(2.0), N::of(4.0));
+        let difference = two * (x - y);
         Kirsch {
-            hoop: Wave { mean: x + y, cos: -difference, sin: -4.0 * xy },
-            axial: Wave { mean: z, cos: -poisson * difference, sin: -poisson * 4.0 * xy },
+            hoop: Wave { mean: x + y, cos: -difference, sin: -four * xy },
+            axial: Wave { mean: z, cos: -poisson * difference, sin: -poisson * four * xy },
             // 4 (τyz cos θ − τxz sin θ)², written in 2θ.
             shear_squared: Wave {
-                mean: 2.0 * (yz * yz + xz * xz),
-                cos: 2.0 * (yz * yz - xz * xz),
-                sin: -4.0 * yz * xz,
+                mean: two * (yz * yz + xz * xz),
+                cos: two * (yz * yz - xz * xz),
+                sin: -four * yz * xz,
             },
             yz,
             xz,
@@ -52,8 +55,26 @@ impl Kirsch {
     }
 
     /// With a thermal stress on hoop and axial stress.
-    pub fn warmed(self, thermal: f64) -> Self {
-        Kirsch { hoop: self.hoop.scaled(1.0, thermal), axial: self.axial.scaled(1.0, thermal), ..self }
+    #[inline(always)]
+    pub fn warmed(self, thermal: N) -> Self {
+        Kirsch { hoop: self.hoop.scaled(N::of(1.0), thermal), axial: self.axial.scaled(N::of(1.0), thermal), ..self }
+    }
+
+    /// The size of the numbers at hand, for tolerances.
+    #[inline(always)]
+    pub fn scale(&self) -> N {
+        self.hoop.mean.abs()
+            + self.hoop.amplitude()
+            + self.axial.mean.abs()
+            + self.axial.amplitude()
+            + self.shear_squared.mean.abs().sqrt()
+    }
+}
+
+impl Kirsch {
+    /// From the far field in the hole's axes and Poisson's ratio.
+    pub fn new(far: Tensor, poisson: f64) -> Self {
+        Kirsch::of(far.0, poisson)
     }
 
     /// At tool face θ and wall pressure p.
@@ -66,15 +87,6 @@ impl Kirsch {
             axial: self.axial.at(c2, s2),
             shear: 2.0 * (self.yz * c - self.xz * s),
         }
-    }
-
-    /// The size of the numbers at hand, for tolerances.
-    pub fn scale(&self) -> f64 {
-        self.hoop.mean.abs()
-            + self.hoop.amplitude()
-            + self.axial.mean.abs()
-            + self.axial.amplitude()
-            + self.shear_squared.mean.abs().sqrt()
     }
 }
 

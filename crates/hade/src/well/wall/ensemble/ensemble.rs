@@ -9,10 +9,10 @@ use super::effects::effects;
 use super::first_order::first_order;
 use super::numbers::{Base, Numbers};
 use super::outcome::EnsembleOutcome;
-use super::stand::{Left, Stand, stand_by_numbers, stand_of};
+use super::stand::{Left, Stand, stand_of, stands_by_numbers};
 use crate::error::{Error, Result};
 use crate::faults::frictional_ratio;
-use crate::spread::{Draw, Draws, Quantiles, RankCorrelation, Sampler, for_each_draw};
+use crate::spread::{Draw, Draws, Quantiles, RankCorrelation, Sampler, for_each_four};
 use crate::units::{Length, Pressure, Quantity, with_typed_unit};
 use crate::well::wall::setup::WallSetup;
 use crate::well::wall::wall::Wall;
@@ -114,18 +114,27 @@ impl EnsembleInputs {
 
 impl Prepared {
     pub(super) fn stand(&self, inputs: &EnsembleInputs, draw: &Draw) -> Stand {
-        if let Some(k) = draw.outside {
-            return Stand::left_out(Left::Outside(k as u8));
+        let [stand, ..] = self.stands(inputs, &[*draw; 4]);
+        stand
+    }
+
+    /// The same of four draws at once.
+    pub(super) fn stands(&self, inputs: &EnsembleInputs, draws: &[Draw; 4]) -> [Stand; 4] {
+        let numbers = draws.each_ref().map(|draw| inputs.numbers(&self.base, draw));
+        let mut stands = stands_by_numbers(&self.base, &numbers, self.ratio);
+        for (stand, draw) in stands.iter_mut().zip(draws) {
+            if let Some(k) = draw.outside {
+                *stand = Stand::left_out(Left::Outside(k as u8));
+            }
         }
-        let numbers = inputs.numbers(&self.base, draw);
-        stand_by_numbers(&self.base, &numbers, self.ratio)
+        stands
     }
 }
 
 impl Ensemble {
     pub(super) fn build(inputs: EnsembleInputs) -> Result<Self> {
         let ready = inputs.prepared()?;
-        let stands = for_each_draw(&ready.sampler, inputs.draws.count, |draw| ready.stand(&inputs, draw));
+        let stands = for_each_four(&ready.sampler, inputs.draws.count, |draws| ready.stands(&inputs, draws));
         if stands.iter().all(|stand| stand.left.is_some()) {
             return Err(Error::not_physical(
                 "This ensemble",
@@ -203,7 +212,7 @@ impl Ensemble {
             let count = self.inputs.draws.count;
             outcome.effects =
                 effects(self.inputs.drawn.len(), &ready.sampler, count, &self.stands, |sampler, count| {
-                    for_each_draw(sampler, count, |draw| ready.stand(&self.inputs, draw))
+                    for_each_four(sampler, count, |draws| ready.stands(&self.inputs, draws))
                 });
             outcome.first_order = first_order(&self.inputs, &ready.base.numbers, |numbers| {
                 let (_, least) = ready.base.extremes(numbers);

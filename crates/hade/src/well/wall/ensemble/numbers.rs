@@ -3,6 +3,7 @@
 use crate::error::Result;
 use crate::frames::borehole_axes;
 use crate::frames::vector::{V3, apply};
+use crate::lanes::Lanes;
 use crate::rock::{Law, Strength, StrengthNumber};
 use crate::stress::tensor::Tensor;
 use crate::units::Quantity;
@@ -83,13 +84,48 @@ impl Base {
         })
     }
 
-    /// The stress in north, east, down, before the whole of it is turned to its azimuth.
-    fn unturned(&self, numbers: &Numbers) -> Tensor {
+    /// The stress in north, east, down of a vertical, a larger and a smaller horizontal stress, before the whole of it
+    /// is turned to its azimuth.
+    #[inline(always)]
+    fn unturned<N: Lanes>(&self, [sv, larger, smaller]: [N; 3]) -> [N; 6] {
         let base = &self.numbers;
-        let [larger, smaller] = self.along;
-        let down = Tensor([0.0, 0.0, numbers.sv - base.sv, 0.0, 0.0, 0.0]);
-        let level = larger.scale(numbers.larger - base.larger).add(smaller.scale(numbers.smaller - base.smaller));
-        self.far.add(down).add(level)
+        let ([along, across], far) = (self.along, self.far.0.map(N::of));
+        let (larger, smaller) = (larger - N::of(base.larger), smaller - N::of(base.smaller));
+        let level = |k: usize| far[k] + N::of(along.0[k]) * larger + N::of(across.0[k]) * smaller;
+        [level(0), level(1), far[2] + (sv - N::of(base.sv)), level(3), far[4], far[5]]
+    }
+
+    /// The elastic stresses of walls whose holes lean so, by sine and cosine of their inclination and of the azimuth
+    /// at which they find the unturned stress.
+    #[inline(always)]
+    pub fn kirsch<N: Lanes>(&self, stresses: [N; 3], inclined: (N, N), towards: (N, N), poisson: N) -> Kirsch<N> {
+        let kirsch = Kirsch::of(in_hole(self.unturned(stresses), inclined, towards), poisson);
+        match self.setup.thermal {
+            None => kirsch,
+            Some(thermal) => {
+                let full = thermal.youngs_modulus.si() * thermal.expansion.si() * thermal.warming.si();
+                kirsch.warmed(N::of(full) / (N::of(1.0) - poisson))
+            }
+        }
+    }
+
+    /// Sine and cosine of the inclination.
+    #[inline]
+    pub fn inclined(&self, numbers: &Numbers) -> (f64, f64) {
+        let drawn = numbers.inclination != self.numbers.inclination;
+        if drawn { numbers.inclination.sin_cos() } else { self.inclined }
+    }
+
+    /// The azimuth at which the hole finds the unturned stress: turning the stress is turning the hole the other way.
+    #[inline]
+    pub fn towards(&self, numbers: &Numbers) -> f64 {
+        numbers.hole_azimuth - (numbers.azimuth - self.numbers.azimuth)
+    }
+
+    /// Whether the wall has closed forms: impermeable, of rock by Mohr–Coulomb without a plane of weakness.
+    pub fn is_plain(&self) -> bool {
+        let line = matches!(self.numbers.strength.law(), Law::MohrCoulomb(_));
+        line && self.normal.is_none() && self.setup.passes() == 0.0
     }
 
     /// S1 and S3.
@@ -98,27 +134,19 @@ impl Base {
         if self.upright {
             return (sv.max(larger).max(smaller), sv.min(larger).min(smaller));
         }
-        let [s1, _, s3] = self.unturned(numbers).eigen().values;
+        let [s1, _, s3] = Tensor(self.unturned([sv, larger, smaller])).eigen().values;
         (s1, s3)
     }
 
-    /// The wall, of rock by this law. Turning the stress is turning the hole the other way.
+    /// The wall, of rock by this law.
     pub fn wall(&self, numbers: &Numbers, law: Law) -> ShearWall {
-        let turned = numbers.azimuth - self.numbers.azimuth;
-        let drawn = numbers.inclination != self.numbers.inclination;
-        let inclined = if drawn { numbers.inclination.sin_cos() } else { self.inclined };
-        let hole = (numbers.hole_azimuth - turned).sin_cos();
-        let local = in_hole(self.unturned(numbers), inclined, hole);
-        let nu = numbers.poisson;
-        let mut kirsch = Kirsch::new(local, nu);
-        if let Some(thermal) = self.setup.thermal {
-            kirsch =
-                kirsch.warmed(thermal.youngs_modulus.si() * thermal.expansion.si() * thermal.warming.si() / (1.0 - nu));
-        }
+        let Numbers { sv, larger, smaller, poisson: nu, .. } = *numbers;
+        let towards = self.towards(numbers).sin_cos();
+        let kirsch = self.kirsch([sv, larger, smaller], self.inclined(numbers), towards, nu);
         let plane = self.normal.zip(self.setup.weak_plane).map(|(normal, weak)| {
-            let [.., yz, xz] = local.0;
             let axes = borehole_axes(numbers.inclination, numbers.hole_azimuth);
-            PlaneAtWall::new(apply(&axes, normal), yz, xz, weak.cohesion.si(), weak.friction_angle.si().tan())
+            let (Kirsch { yz, xz, .. }, friction) = (kirsch, weak.friction_angle.si().tan());
+            PlaneAtWall::new(apply(&axes, normal), yz, xz, weak.cohesion.si(), friction)
         });
         let eta2 = numbers.biot * (1.0 - 2.0 * nu) / (1.0 - nu);
         ShearWall::new(kirsch, law, plane, numbers.pore, self.setup.passes(), eta2)

@@ -1,7 +1,10 @@
 //! Between which pressures one drawn wall stands, or why the draw is left out.
 
+use wide::f64x4;
+
 use super::numbers::{Base, Numbers};
-use crate::well::wall::shear::ShearWall;
+use crate::rock::{Law, MohrCoulomb};
+use crate::well::wall::shear::{ClosedForm, ShearWall};
 use crate::well::wall::tension::{Parting, parting};
 
 /// Why a draw is left out.
@@ -39,20 +42,73 @@ impl Stand {
     }
 }
 
-/// The stand of the wall of some numbers.
+/// The stands of the walls of four draws, side by side as far as that tells, one by one where it does not.
+pub(super) fn stands_by_numbers(base: &Base, numbers: &[Numbers; 4], friction_ratio: Option<f64>) -> [Stand; 4] {
+    let counted = numbers.each_ref().map(|numbers| counted(base, numbers, friction_ratio));
+    let told = side_by_side(base, numbers, &counted);
+    let mut stands = [Stand::default(); 4];
+    for (((stand, numbers), counted), told) in stands.iter_mut().zip(numbers).zip(counted).zip(told) {
+        *stand = match (counted, told) {
+            (Err(left), _) => Stand::left_out(left),
+            (Ok(Counted { least, .. }), Some(bottom)) => Stand { left: None, bottom: Some(bottom), top: Some(least) },
+            (Ok(Counted { law, least }), None) => stand_of(&base.wall(numbers, law), numbers.tensile, least),
+        };
+    }
+    stands
+}
+
+/// A draw that counts.
+#[derive(Clone, Copy)]
+struct Counted {
+    law: Law,
+    /// S3.
+    least: f64,
+}
+
 #[inline]
-pub(super) fn stand_by_numbers(base: &Base, numbers: &Numbers, friction_ratio: Option<f64>) -> Stand {
-    let Some(law) = numbers.law() else { return Stand::left_out(Left::Impossible) };
+fn counted(base: &Base, numbers: &Numbers, friction_ratio: Option<f64>) -> Result<Counted, Left> {
+    let law = numbers.law().ok_or(Left::Impossible)?;
     if numbers.larger < numbers.smaller {
-        return Stand::left_out(Left::Crossed);
+        return Err(Left::Crossed);
     }
     let (s1, s3) = base.extremes(numbers);
     let least = s3 - numbers.pore;
     // An S3 at or below the pore pressure is beyond any friction.
     if friction_ratio.is_some_and(|ratio| least <= 0.0 || s1 - numbers.pore > ratio * least) {
-        return Stand::left_out(Left::BeyondFriction);
+        return Err(Left::BeyondFriction);
     }
-    stand_of(&base.wall(numbers, law), numbers.tensile, s3)
+    Ok(Counted { law, least: s3 })
+}
+
+/// The bottoms of those of four walls that surely hold at S3, so that this is their top, and whose lower end is found
+/// by one climb: mostly all of them.
+#[inline]
+fn side_by_side(base: &Base, numbers: &[Numbers; 4], counted: &[Result<Counted, Left>; 4]) -> [Option<f64>; 4] {
+    if !base.is_plain() {
+        return [None; 4];
+    }
+    // A draw that is left out asks nothing, whatever is worked out for it.
+    let line = counted.map(|counted| match counted {
+        Ok(Counted { law: Law::MohrCoulomb(line), .. }) => line,
+        _ => MohrCoulomb { ucs: 0.0, q: 1.0 },
+    });
+    let line = MohrCoulomb { ucs: f64x4::new(line.map(|line| line.ucs)), q: f64x4::new(line.map(|line| line.q)) };
+    let least = f64x4::new(counted.map(|counted| counted.map_or(0.0, |counted| counted.least)));
+    let each = |of: fn(&Numbers) -> f64| f64x4::new(numbers.each_ref().map(of));
+    let inclined = numbers.each_ref().map(|numbers| base.inclined(numbers));
+    let inclined = (f64x4::new(inclined.map(|(sin, _)| sin)), f64x4::new(inclined.map(|(_, cos)| cos)));
+    let towards = f64x4::new(numbers.each_ref().map(|numbers| base.towards(numbers))).sin_cos();
+    let stresses = [each(|n| n.sv), each(|n| n.larger), each(|n| n.smaller)];
+    let (pore, tensile) = (each(|n| n.pore), each(|n| n.tensile));
+    let kirsch = base.kirsch(stresses, inclined, towards, each(|n| n.poisson));
+    let closed = ClosedForm::new(kirsch, line, pore, kirsch.scale() + line.ucs + pore.abs());
+    let (bottom, is_bottom) = closed.climbed_lower();
+    let told = (is_bottom & closed.surely_holds(least, tensile)).to_bitmask();
+    let mut bottoms = bottom.to_array().map(Some);
+    for (k, bottom) in bottoms.iter_mut().enumerate() {
+        *bottom = bottom.filter(|_| told >> k & 1 == 1);
+    }
+    bottoms
 }
 
 /// The stand of one wall.

@@ -125,6 +125,7 @@ fn walls() -> Vec<(Wall, Vec<Drawn>)> {
         (of(3.0, Strength::drucker_prager_inscribed(c, phi)), drawn(&c_phi)),
         (of(3.0, Strength::hoek_brown(mass)), drawn(&hoek)),
         (of(3.0, Strength::mohr_coulomb(c, phi)).weak_plane(weak).unwrap(), drawn(&c_phi)),
+        (of(3.0, Strength::mohr_coulomb(c, phi)).thermal(thermal).unwrap(), drawn(&c_phi)),
         (of(3.0, Strength::mohr_coulomb(c, phi)).permeable(0.8).unwrap().thermal(thermal).unwrap(), permeable),
     ]
 }

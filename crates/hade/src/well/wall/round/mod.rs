@@ -12,5 +12,5 @@ pub(crate) use circle::{
     Below, CIRCLE, Circle, OnCircle, Peak, SAME, SAMPLES, STEP, Top, greatest, greatest_beside, on_circle, smallest,
 };
 pub(crate) use edges::{Edges, edges};
-pub(crate) use summit::{Summit, highest};
+pub(crate) use summit::{Summit, Touch, climbed, highest};
 pub(crate) use wave::Wave;

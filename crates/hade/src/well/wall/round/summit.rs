@@ -3,12 +3,13 @@
 
 use super::circle::{CIRCLE, OnCircle, Peak, SAMPLES, on_circle};
 use super::wave::Wave;
+use crate::lanes::Lanes;
 
 /// A summit: the function there, and cos φ and sin φ.
-pub(crate) struct Summit {
-    pub value: f64,
-    pub c: f64,
-    pub s: f64,
+pub(crate) struct Summit<N = f64> {
+    pub value: N,
+    pub c: N,
+    pub s: N,
 }
 
 impl Summit {
@@ -33,16 +34,17 @@ pub(crate) fn highest(
     waves: impl Fn(f64) -> [Wave; 2],
     v_mean: f64,
 ) -> Option<Summit> {
-    let proof = |summit: &Summit| {
-        let [f, g] = waves(summit.value);
-        touch(f, g, v_mean, summit.c, summit.s)
+    let climb = |start| {
+        let (summit, settled) = climbed(|c, s| of.jet(0, c, s).all(), start);
+        settled.then_some(summit)
     };
-    let first = climbed(of, start).or_else(|| climbed(of, highest_sample(of)))?;
-    match proof(&first) {
-        Touch::Only => Some(first),
-        Touch::Below(place) => climbed(of, place).filter(|second| matches!(proof(second), Touch::Only)),
-        Touch::Unknown => None,
+    let first = climb(start).or_else(|| climb(highest_sample(of)))?;
+    let touch = |summit: &Summit| Touch::of(waves(summit.value), v_mean, summit);
+    let proof = touch(&first);
+    if proof.only() {
+        return Some(first);
     }
+    climb(proof.lowest(&first)?).filter(|second| touch(second).only())
 }
 
 #[cold]
@@ -61,54 +63,65 @@ fn highest_sample(of: &impl OnCircle) -> (f64, f64) {
 const LAST: f64 = 1e-6;
 
 /// Steps to the crest of the wave that has the same slope and bend here, from a place near the top of a hill; close to
-/// the top they are Newton's. `None` where it is not on a hill, or does not settle.
+/// the top they are Newton's. With it whether it settled on a hill.
 #[inline(always)]
-fn climbed(of: &impl OnCircle, (mut c, mut s): (f64, f64)) -> Option<Summit> {
-    let mut jet = of.jet(0, c, s);
-    for _ in 0..8 {
-        if jet.bend >= 0.0 {
-            return None;
-        }
-        let inverse = 1.0 / (jet.slope * jet.slope + jet.bend * jet.bend).sqrt();
-        let (sin, cos) = (jet.slope * inverse, -jet.bend * inverse);
+pub(crate) fn climbed<N: Lanes>(jet_at: impl Fn(N, N) -> [N; 3], (mut c, mut s): (N, N)) -> (Summit<N>, N::Mask) {
+    let (zero, last) = (N::of(0.0), N::of(LAST));
+    let mut steps = 0;
+    loop {
+        let [value, slope, bend] = jet_at(c, s);
+        let inverse = N::of(1.0) / (slope * slope + bend * bend).sqrt();
+        let (sin, cos) = (slope * inverse, -bend * inverse);
         (c, s) = (c * cos - s * sin, s * cos + c * sin);
-        if sin.abs() < LAST {
-            // What is left to rise over so short a step.
-            return Some(Summit { value: jet.value + 0.5 * jet.slope * sin, c, s });
+        let (on_hill, step) = (zero.above(bend), sin.abs());
+        steps += 1;
+        // Where there is no hill nothing is waited for.
+        if steps == 8 || N::all(last.above(N::where_so(on_hill, step, zero))) {
+            // With what is left to rise over so short a step.
+            return (Summit { value: value + N::of(0.5) * slope * sin, c, s }, on_hill & last.above(step));
         }
-        jet = of.jet(0, c, s);
     }
-    None
 }
 
-/// How f g − v lies beside zero, when it has a double zero at a place.
-enum Touch {
-    /// f and g are above zero all round and it is nowhere below zero.
-    Only,
-    /// It is below zero at this place.
-    Below((f64, f64)),
-    Unknown,
+/// How f g − v, two waves multiplied less a third, lies beside zero when it has a double zero at a place: it is a
+/// trigonometric polynomial of degree two, (1 − cos ψ)(A + B cos ψ + C sin ψ) with ψ counted from there, and is nowhere
+/// below zero when A ≥ √(B² + C²).
+pub(crate) struct Touch<N: Lanes = f64> {
+    /// Whether f and g are above zero all round.
+    above: N::Mask,
+    a: N,
+    /// −B / 2 and −C / 2.
+    b: N,
+    c: N,
 }
 
-/// f g − v for two waves f and g is a trigonometric polynomial of degree two. With a double zero at a place it is
-/// (1 − cos ψ)(A + B cos ψ + C sin ψ), ψ counted from there, and is nowhere below zero when A ≥ √(B² + C²).
-#[inline(always)]
-fn touch(f: Wave, g: Wave, v_mean: f64, c: f64, s: f64) -> Touch {
-    let from_there = |w: Wave| [w.mean, w.cos * c + w.sin * s, w.sin * c - w.cos * s];
-    let ([f0, f1, f2], [g0, g1, g2]) = (from_there(f), from_there(g));
-    let constant = f0 * g0 + 0.5 * (f1 * g1 + f2 * g2) - v_mean;
-    // B = −2 c2 and C = −2 s2.
-    let (c2, s2) = (0.5 * (f1 * g1 - f2 * g2), 0.5 * (f1 * g2 + f2 * g1));
-    let a = constant - c2;
-    let above = |[mean, cos, sin]: [f64; 3]| mean > 0.0 && mean * mean * (1.0 + 1e-12) >= cos * cos + sin * sin;
-    if !(above([f0, f1, f2]) && above([g0, g1, g2])) {
-        return Touch::Unknown;
+impl<N: Lanes> Touch<N> {
+    #[inline(always)]
+    pub fn of([f, g]: [Wave<N>; 2], v_mean: N, at: &Summit<N>) -> Self {
+        let (half, zero) = (N::of(0.5), N::of(0.0));
+        let from_there = |w: Wave<N>| [w.mean, w.cos * at.c + w.sin * at.s, w.sin * at.c - w.cos * at.s];
+        let ([f0, f1, f2], [g0, g1, g2]) = (from_there(f), from_there(g));
+        let constant = f0 * g0 + half * (f1 * g1 + f2 * g2) - v_mean;
+        let (b, c) = (half * (f1 * g1 - f2 * g2), half * (f1 * g2 + f2 * g1));
+        let above = |[mean, cos, sin]: [N; 3]| {
+            mean.above(zero) & (mean * mean * N::of(1.0 + 1e-12)).at_least(cos * cos + sin * sin)
+        };
+        Touch { above: above([f0, f1, f2]) & above([g0, g1, g2]), a: constant - b, b, c }
     }
-    let square = c2 * c2 + s2 * s2;
-    if a > 0.0 && a * a > 4.0 * square * (1.0 + 1e-9) {
-        return Touch::Only;
+
+    /// Whether it is nowhere below zero, and the two waves above it.
+    #[inline(always)]
+    pub fn only(&self) -> N::Mask {
+        let Touch { above, a, b, c } = *self;
+        above & a.above(N::of(0.0)) & (a * a).above(N::of(4.0 * (1.0 + 1e-9)) * (b * b + c * c))
     }
-    let inverse = 1.0 / square.sqrt();
-    let (cos, sin) = (c2 * inverse, s2 * inverse);
-    Touch::Below((c * cos - s * sin, s * cos + c * sin))
+}
+
+impl Touch {
+    /// Where it is lowest, if the two waves are above zero.
+    fn lowest(&self, at: &Summit) -> Option<(f64, f64)> {
+        let inverse = 1.0 / (self.b * self.b + self.c * self.c).sqrt();
+        let (cos, sin) = (self.b * inverse, self.c * inverse);
+        self.above.then_some((at.c * cos - at.s * sin, at.s * cos + at.c * sin))
+    }
 }

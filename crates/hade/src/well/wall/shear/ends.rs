@@ -6,28 +6,14 @@
 //!   G = UCS + (q − 1)(Z − P_p);
 //! - pushed out: the first with the roles of the stress across the wall and of those in it changed.
 
+use super::closed_form::ClosedForm;
+use super::root::Root;
 use super::shear_wall::Window;
 use crate::rock::{Jet, MohrCoulomb};
 use crate::well::wall::elastic::Kirsch;
-use crate::well::wall::round::{CIRCLE, OnCircle, Peak, SAME, Summit, Wave, greatest, highest, smallest};
-
-/// A wall that is impermeable, of rock without a plane of weakness; Pa.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub(crate) struct ClosedForm {
-    kirsch: Kirsch,
-    line: MohrCoulomb,
-    pore: f64,
-    scale: f64,
-    /// Amplitudes of hoop and axial stress.
-    swings: [f64; 2],
-}
+use crate::well::wall::round::{CIRCLE, OnCircle, Peak, SAME, Wave, greatest, smallest};
 
 impl ClosedForm {
-    /// `scale` is the size of the numbers at hand, for tolerances.
-    pub fn new(kirsch: &Kirsch, line: MohrCoulomb, pore: f64, scale: f64) -> Self {
-        ClosedForm { kirsch: *kirsch, line, pore, scale, swings: [kirsch.hoop.amplitude(), kirsch.axial.amplitude()] }
-    }
-
     /// The pressures between which the whole wall holds.
     pub fn window(&self) -> Window {
         if let Some((lower, upper)) = self.ends() {
@@ -88,14 +74,6 @@ impl ClosedForm {
         low > high
     }
 
-    /// Whether by bounds on the whole wall nothing fails at a pressure, and it does not part with a tensile strength.
-    /// Where they do not say so, it may still hold.
-    #[inline]
-    pub fn surely_holds(&self, pressure: f64, tensile: f64) -> bool {
-        let bounds = self.bounds(pressure);
-        bounds.closing && bounds.within && bounds.pushed && bounds.least >= -tensile
-    }
-
     /// Both ends at one place, where any pressure holds there.
     pub fn interval_at(&self, c: f64, s: f64) -> Option<(f64, f64)> {
         let (lower, upper) = (self.lower_end().value(c, s), self.upper_end().value(c, s));
@@ -110,51 +88,20 @@ impl ClosedForm {
         let closing = self.closing();
         let peak = closing
             .highest(self.kirsch.hoop, self.swings[0], self.scale)
-            .map_or_else(|| greatest(&Signed { root: closing, sign: 1.0 }, self.scale), |summit| summit.peak());
+            .map_or_else(|| greatest(&closing.larger(), self.scale), |summit| summit.peak());
         self.only_closes(peak.value).then_some(peak)
-    }
-
-    /// Whether by bounds on the whole wall nothing fails at a pressure but what closes in.
-    #[inline]
-    fn only_closes(&self, pressure: f64) -> bool {
-        let bounds = self.bounds(pressure);
-        bounds.within && bounds.pushed
     }
 
     /// The upper end where the hole is pushed out, likewise.
     fn plain_upper(&self) -> Option<Peak> {
-        let pushed = self.upper_end().pushed();
+        let pushed = self.upper_end().pushed;
         let hoop = self.kirsch.hoop.scaled(-1.0, 0.0);
-        let peak = match pushed.root.turned_over().highest(hoop, self.swings[0], self.scale) {
+        let peak = match pushed.turned_over().highest(hoop, self.swings[0], self.scale) {
             Some(summit) => Peak { value: -summit.value, ..summit.peak() },
-            None => smallest(pushed, self.scale),
+            None => smallest(pushed.smaller(), self.scale),
         };
         let bounds = self.bounds(peak.value);
         (bounds.within && bounds.closing).then_some(peak)
-    }
-
-    /// What certainly holds all round at a pressure. Hoop and axial stress have their crests at one
-    /// place, so both are straight lines in u, the cosine from there; with the largest τθz² all round
-    /// each condition is a convex function of u, and largest at u = 1 or −1.
-    #[inline]
-    fn bounds(&self, pressure: f64) -> Bounds {
-        let (q, ucs) = (self.line.q, self.line.ucs);
-        let ([hoop1, axial1], hoop0, axial0) = (self.swings, self.kirsch.hoop.mean, self.kirsch.axial.mean);
-        // The square of one sine is nowhere above twice its mean.
-        let shear = 2.0 * self.kirsch.shear_squared.mean;
-        let across = pressure - self.pore;
-        let (m0, m1) = (0.5 * (hoop0 + axial0 - pressure) - self.pore, 0.5 * (hoop1 + axial1));
-        let (d0, d1) = (0.5 * (hoop0 - axial0 - pressure), 0.5 * (hoop1 - axial1));
-        let mut holds = Bounds { closing: true, within: true, pushed: true, least: across };
-        for u in [1.0, -1.0] {
-            let (m, d) = (m0 + u * m1, d0 + u * d1);
-            let radius = (d * d + shear).sqrt();
-            holds.closing &= m + radius <= ucs + q * across;
-            holds.within &= (1.0 + q) * radius <= ucs + (q - 1.0) * m;
-            holds.pushed &= across + q * (radius - m) <= ucs;
-            holds.least = holds.least.min(m - radius);
-        }
-        holds
     }
 
     /// Within the wall: UCS + (q − 1)(σz − P_p), which bounds what the axial stress lets it bear.
@@ -165,19 +112,6 @@ impl ClosedForm {
 
     fn discriminant(&self) -> Discriminant {
         Discriminant { within: self.within(), shear_squared: self.kirsch.shear_squared, q4: 4.0 * self.line.q }
-    }
-
-    /// The pressures between which a place closes in by e1 and by e2.
-    #[inline(always)]
-    fn closing(&self) -> Root {
-        let (q, kirsch) = (self.line.q, &self.kirsch);
-        let b = self.line.ucs - (q - 1.0) * self.pore;
-        let (by_hoop, by_axial) = (1.0 / (1.0 + q), 1.0 / q);
-        Root::new(
-            kirsch.hoop.scaled(by_hoop, -b * by_hoop),
-            kirsch.axial.scaled(by_axial, -b * by_axial),
-            kirsch.shear_squared.scaled(by_hoop * by_axial, 0.0),
-        )
     }
 
     /// The lowest pressure that holds at each place, where any does.
@@ -202,100 +136,6 @@ impl ClosedForm {
             return true;
         }
         smallest(self.discriminant(), self.scale * self.scale).value >= 0.0
-    }
-}
-
-/// What certainly holds all round.
-struct Bounds {
-    closing: bool,
-    within: bool,
-    pushed: bool,
-    /// The least effective principal stress is not below it.
-    least: f64,
-}
-
-/// ½ (x + y) ± √((½ (x − y))² + v), with x, y, v as waves.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub(crate) struct Root {
-    mean: Wave,
-    half: Wave,
-    v: Wave,
-}
-
-impl Root {
-    pub fn new(x: Wave, y: Wave, v: Wave) -> Self {
-        Root { mean: x.joined(1.0, y, 0.5), half: x.joined(-1.0, y, 0.5), v }
-    }
-
-    /// The root itself. The square of a shear is not negative; its wave may be by a last bit.
-    #[inline(always)]
-    fn radius(&self, c: f64, s: f64) -> f64 {
-        let (m, v) = (self.half.at(c, s), self.v.at(c, s));
-        (m * m + if v > 0.0 { v } else { 0.0 }).sqrt()
-    }
-
-    /// The highest place of the larger root, if a climb finds one that is proved to be the highest of all: nothing is
-    /// scanned. It begins at the crest of the hoop stress, whose amplitude is `swing`.
-    ///
-    /// With p the value there, (p − x)(p − y) − v has a double zero at that place, and where it is nowhere below zero p
-    /// is nowhere below the root.
-    #[inline]
-    fn highest(&self, hoop: Wave, swing: f64, scale: f64) -> Option<Summit> {
-        if swing <= SAME * scale {
-            return None;
-        }
-        let start = (hoop.cos / swing, hoop.sin / swing);
-        let x = self.mean.joined(1.0, self.half, 1.0);
-        let y = self.mean.joined(-1.0, self.half, 1.0);
-        highest(&Signed { root: *self, sign: 1.0 }, start, |p| [x, y].map(|w| w.scaled(-1.0, p)), self.v.mean)
-    }
-
-    /// The smaller root turned upside down is the larger root of this.
-    #[inline]
-    fn turned_over(&self) -> Root {
-        Root { mean: self.mean.scaled(-1.0, 0.0), ..*self }
-    }
-
-    /// The larger and the smaller.
-    #[inline(always)]
-    pub fn both(&self, c: f64, s: f64) -> (f64, f64) {
-        let (mean, r) = (self.mean.at(c, s), self.radius(c, s));
-        (mean + r, mean - r)
-    }
-
-    #[inline]
-    pub fn jet(&self, sign: f64, c: f64, s: f64) -> Jet {
-        let (m, m1, m2) = (self.half.at(c, s), self.half.slope(c, s), self.half.bend(c, s));
-        let r = self.radius(c, s);
-        let (r1, r2) = if r > 0.0 {
-            let inverse = 1.0 / r;
-            let r1 = (m * m1 + 0.5 * self.v.slope(c, s)) * inverse;
-            (r1, (m1 * m1 + m * m2 + 0.5 * self.v.bend(c, s) - r1 * r1) * inverse)
-        } else {
-            (0.0, 0.0)
-        };
-        Jet {
-            value: self.mean.at(c, s) + sign * r,
-            slope: self.mean.slope(c, s) + sign * r1,
-            bend: self.mean.bend(c, s) + sign * r2,
-        }
-    }
-}
-
-/// One of the two values of a root.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub(crate) struct Signed {
-    root: Root,
-    sign: f64,
-}
-
-impl OnCircle for Signed {
-    #[inline(always)]
-    fn value(&self, c: f64, s: f64) -> f64 {
-        self.root.mean.at(c, s) + self.sign * self.root.radius(c, s)
-    }
-    fn jet(&self, _piece: usize, c: f64, s: f64) -> Jet {
-        self.root.jet(self.sign, c, s)
     }
 }
 
@@ -383,7 +223,7 @@ impl OnCircle for LowerEnd {
         2
     }
     fn jet(&self, piece: usize, c: f64, s: f64) -> Jet {
-        if piece == 0 { self.closing.jet(1.0, c, s) } else { self.within.jet(c, s) }
+        if piece == 0 { self.closing.larger().jet(0, c, s) } else { self.within.jet(c, s) }
     }
 }
 
@@ -408,11 +248,6 @@ impl UpperEnd {
             within: Within::new(kirsch, line, discriminant, 1.0),
         }
     }
-
-    /// The highest pressure at which the place is not pushed out.
-    pub fn pushed(&self) -> Signed {
-        Signed { root: self.pushed, sign: -1.0 }
-    }
 }
 
 impl OnCircle for UpperEnd {
@@ -425,7 +260,7 @@ impl OnCircle for UpperEnd {
         2
     }
     fn jet(&self, piece: usize, c: f64, s: f64) -> Jet {
-        if piece == 0 { self.pushed.jet(-1.0, c, s) } else { self.within.jet(c, s) }
+        if piece == 0 { self.pushed.smaller().jet(0, c, s) } else { self.within.jet(c, s) }
     }
 }
 
@@ -436,7 +271,7 @@ mod tests {
 
     fn wall(ucs: f64, q: f64) -> ClosedForm {
         let kirsch = Kirsch::new(Tensor([52.0, 44.0, 63.0, 3.0, 5.0, -4.0]), 0.27);
-        ClosedForm::new(&kirsch, MohrCoulomb { ucs, q }, 21.0, kirsch.scale() + ucs + 21.0)
+        ClosedForm::new(kirsch, MohrCoulomb { ucs, q }, 21.0, kirsch.scale() + ucs + 21.0)
     }
 
     /// Each end is where the criterion, by eigenvalues of the wall's tensor, is just met.

@@ -2,9 +2,11 @@
 //! which the whole wall holds, and the arcs that fail outside them.
 
 mod arcs;
+mod closed_form;
 mod ends;
 mod excess;
 mod mode;
+mod root;
 mod search;
 mod shear_wall;
 mod slip;
@@ -12,6 +14,7 @@ mod spans;
 mod width;
 
 pub(crate) use arcs::{Arcs, MOST_ARCS, arcs_between};
+pub(crate) use closed_form::ClosedForm;
 pub(crate) use mode::mode_of;
 pub use mode::{Mode, WallDirection};
 pub(crate) use shear_wall::{LeastBad, ShearWall, Window};

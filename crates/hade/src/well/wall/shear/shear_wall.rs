@@ -5,7 +5,7 @@
 //! Mohr–Coulomb at an impermeable wall has both ends of the safe pressures of a place in closed form
 //! (`ends.rs`); the other criteria, and other walls, are searched (`search.rs`).
 
-use super::ends::ClosedForm;
+use super::closed_form::ClosedForm;
 use super::excess::Excess;
 use super::search::{Look, LowerEnd, Search, lower_end, rise};
 use super::slip::PlaneAtWall;
@@ -78,7 +78,7 @@ impl ShearWall {
     pub fn closed_form(&self) -> Option<ClosedForm> {
         match (self.law, self.plane) {
             (Law::MohrCoulomb(line), None) if self.passes == 0.0 => {
-                Some(ClosedForm::new(&self.kirsch, line, self.pore, self.scale))
+                Some(ClosedForm::new(self.kirsch, line, self.pore, self.scale))
             }
             _ => None,
         }
