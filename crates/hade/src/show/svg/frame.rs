@@ -127,7 +127,8 @@ impl Frame {
         if self.downward { self.area.bottom + LINE / 2.0 + 3.0 } else { self.area.top - LINE / 2.0 - 3.0 }
     }
 
-    /// The axes through zero, where zero is within the frame.
+    /// The axes through zero, where zero is within the frame. A chart of rows, whose upright axis is hidden, has no line
+    /// there: it would run through the words over the bars.
     pub fn zero_lines(&self) -> Vec<Vec<Px>> {
         let area = self.area;
         let [x, y] = self.at([0.0, 0.0]);
@@ -135,7 +136,7 @@ impl Frame {
         if !self.hidden.1 && y > area.top + 1.0 && y < area.bottom - 1.0 {
             lines.push(vec![[area.left, y], [area.right, y]]);
         }
-        if !self.hidden.0 && x > area.left + 1.0 && x < area.right - 1.0 {
+        if self.hidden == (false, false) && x > area.left + 1.0 && x < area.right - 1.0 {
             lines.push(vec![[x, area.top], [x, area.bottom]]);
         }
         lines
