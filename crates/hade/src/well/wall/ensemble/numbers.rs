@@ -43,6 +43,8 @@ pub(super) struct Base {
     normal: Option<V3>,
     /// Sine and cosine of the inclination.
     inclined: (f64, f64),
+    /// Whether the wall has closed forms: impermeable, of rock by Mohr–Coulomb without a plane of weakness.
+    pub plain: bool,
 }
 
 impl Base {
@@ -81,6 +83,7 @@ impl Base {
             upright,
             normal,
             inclined: inclination.sin_cos(),
+            plain: matches!(numbers.strength.law(), Law::MohrCoulomb(_)) && normal.is_none() && setup.passes() == 0.0,
         })
     }
 
@@ -120,12 +123,6 @@ impl Base {
     #[inline]
     pub fn towards(&self, numbers: &Numbers) -> f64 {
         numbers.hole_azimuth - (numbers.azimuth - self.numbers.azimuth)
-    }
-
-    /// Whether the wall has closed forms: impermeable, of rock by Mohr–Coulomb without a plane of weakness.
-    pub fn is_plain(&self) -> bool {
-        let line = matches!(self.numbers.strength.law(), Law::MohrCoulomb(_));
-        line && self.normal.is_none() && self.setup.passes() == 0.0
     }
 
     /// S1 and S3.

@@ -84,7 +84,7 @@ fn counted(base: &Base, numbers: &Numbers, friction_ratio: Option<f64>) -> Resul
 /// by one climb: mostly all of them.
 #[inline]
 fn side_by_side(base: &Base, numbers: &[Numbers; 4], counted: &[Result<Counted, Left>; 4]) -> [Option<f64>; 4] {
-    if !base.is_plain() {
+    if !base.plain {
         return [None; 4];
     }
     // A draw that is left out asks nothing, whatever is worked out for it.
