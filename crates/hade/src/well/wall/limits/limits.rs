@@ -96,7 +96,7 @@ impl Wall {
             ),
         };
         let lower_shear = if width.si() > 0.0 {
-            match self.shear.lower_at_width(width.si()) {
+            match self.shear.lower_at_width(window, width.si()) {
                 AtWidth::At(pressure) => self.lower_with_arc(pressure),
                 AtWidth::Never => none_safe(LimitKind::LowerShear, None),
                 AtWidth::Unbounded => Limit::none_needed(LimitKind::LowerShear),

@@ -141,4 +141,17 @@ impl<C: Criterion> OnCircle for Excess<'_, C> {
             _ => self.intact_part(part, &place),
         }
     }
+    /// The part is chosen once, not at every sample: only then does the processor take several at a time.
+    fn scan_part(&self, part: usize, circle: &Circle) -> [f64; SAMPLES] {
+        let (wall, criterion, x) = (*self.wall, self.criterion, self.x);
+        let intact = Excess { wall: &wall, criterion, plane: None, x };
+        match (part, self.plane) {
+            (_, Some(plane)) if part == Self::intact_parts() => {
+                circle.each(|c, s| plane.slip(c, s, &wall.place(c, s, x)))
+            }
+            (0, _) => circle.each(|c, s| intact.intact_part(0, &wall.place(c, s, x))),
+            (1, _) => circle.each(|c, s| intact.intact_part(1, &wall.place(c, s, x))),
+            _ => circle.each(|c, s| intact.intact_part(2, &wall.place(c, s, x))),
+        }
+    }
 }

@@ -3,7 +3,7 @@
 use std::f64::consts::PI;
 
 use super::shear_wall::{ShearWall, Window};
-use crate::well::wall::round::CIRCLE;
+use crate::well::wall::round::{CIRCLE, OnCircle};
 
 /// What the search found.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -15,16 +15,20 @@ pub(crate) enum AtWidth {
     Unbounded,
 }
 
+/// The edge is found within this share of the scale, and its safe side given.
+const CLOSE: f64 = 1e-13;
+
 impl ShearWall {
     /// The lowest pressure at which the widest failing arc is at most `width` (tool face, radians,
-    /// more than zero). A wall that fails all round is wider than any width.
+    /// more than zero), by the [`window`](ShearWall::window) of this wall. A wall that fails all round is wider than
+    /// any width.
     ///
     /// Where the whole wall holds between two pressures, everything that fails below the lower of
     /// them fails there for want of pressure, and the arcs only grow as the pressure falls. Where the
     /// whole wall holds at no pressure, arcs of two kinds grow in opposite senses, so the pressures
     /// between which any place holds are looked through from below.
-    pub fn lower_at_width(&self, width: f64) -> AtWidth {
-        match self.window() {
+    pub fn lower_at_width(&self, window: Window, width: f64) -> AtWidth {
+        match window {
             Window::Open { lower: None, .. } => AtWidth::Unbounded,
             Window::Open { lower: Some(lower), .. } => {
                 let over = |p: f64| self.over(p, width);
@@ -54,37 +58,41 @@ impl ShearWall {
 
     /// Where each place has its ends in closed form: the arc between two places of equal lower ends, as wide
     /// as allowed, about the highest of all; as pressures just below and just above, where looking all round
-    /// confirms them.
+    /// confirms them. Mostly they are confirmed as close together as the edge is asked for, and the one above is it;
+    /// else farther apart, and the edge is searched for between them.
     fn by_ends(&self, crest: f64, width: f64) -> Option<((f64, f64), (f64, f64))> {
-        let closed = self.closed_form()?;
+        let ends = self.closed_form()?.lower_end();
         let lower = |phi: f64| {
             let (s, c) = phi.sin_cos();
-            closed.interval_at(c, s).map(|(lower, _)| lower)
+            ends.value(c, s)
         };
+        let gap = |phi: f64| lower(phi) - lower(phi + 2.0 * width);
         // From the crest at its end to the crest at its beginning, the arc passes from too high an end to
         // too high a beginning.
         let (mut low, mut high) = (crest - 2.0 * width, crest);
-        let (mut below, mut above) = (lower(low)? - lower(crest)?, lower(high)? - lower(crest + 2.0 * width)?);
+        let (mut below, mut above) = (gap(low), gap(high));
         let mut phi = 0.5 * (low + high);
         for _ in 0..60 {
             let step = (high * below - low * above) / (below - above);
             let next = if step > low && step < high { step } else { 0.5 * (low + high) };
             let moved = (next - phi).abs();
             phi = next;
-            let gap = lower(phi)? - lower(phi + 2.0 * width)?;
+            let here = gap(phi);
             // The end that stays counts half each time (Illinois).
-            if gap > 0.0 {
-                (high, above, below) = (phi, gap, 0.5 * below);
+            if here > 0.0 {
+                (high, above, below) = (phi, here, 0.5 * below);
             } else {
-                (low, below, above) = (phi, gap, 0.5 * above);
+                (low, below, above) = (phi, here, 0.5 * above);
             }
-            if moved < 1e-13 {
+            if moved < 1e-13 || here.abs() < 0.1 * CLOSE * self.scale() {
                 break;
             }
         }
-        let (at, nudge) = (lower(phi)?, 1e-11 * self.scale());
-        let [bad, good] = [at - nudge, at + nudge].map(|p| (p, self.over(p, width)));
-        (bad.1 > 0.0 && good.1 <= 0.0).then_some((bad, good))
+        let at = lower(phi);
+        [0.5 * CLOSE, 100.0 * CLOSE].into_iter().find_map(|nudge| {
+            let [bad, good] = [at - nudge * self.scale(), at + nudge * self.scale()].map(|p| (p, self.over(p, width)));
+            (bad.1 > 0.0 && good.1 <= 0.0).then_some((bad, good))
+        })
     }
 
     fn lower_of_closed(&self, width: f64) -> AtWidth {
@@ -126,7 +134,7 @@ impl ShearWall {
     /// memory).
     fn boundary(&self, bad: (f64, f64), good: (f64, f64), over: impl Fn(f64) -> f64) -> f64 {
         let ((mut bad, mut over_bad), (mut good, mut over_good)) = (bad, good);
-        let (whole, close) = (good - bad, 1e-13 * self.scale());
+        let (whole, close) = (good - bad, CLOSE * self.scale());
         // Of the widest interval that halving would have left one step later.
         let mut allowed = close * 2.0_f64.powf((whole / close).log2().ceil().max(0.0) + 1.0);
         for _ in 0..200 {

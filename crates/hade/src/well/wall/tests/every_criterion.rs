@@ -8,7 +8,9 @@ use super::by_force::Force;
 use super::walls_at_random::{CRITERIA, NUMBERS, Numbers, Plain, PlainRock};
 use super::{Wall, choices};
 use crate::card::{Card, Data, Explain};
+use crate::rock::with_law;
 use crate::units::{Pressure, Quantity, Units};
+use crate::well::wall::round::{CIRCLE, OnCircle};
 use crate::well::wall::shear::Window;
 
 fn any_plain() -> impl Strategy<Value = Plain> {
@@ -151,6 +153,21 @@ proptest! {
                 "{plain:?}: at {theta}, {pressure} MPa: {arcs:?}"
             );
         }
+    }
+
+    /// All samples of a part at once are those of its derivatives' values one by one.
+    #[test]
+    fn samples_of_a_part_are_its_values(plain in any_plain(), pressure in 0.0..80.0_f64) {
+        let shear = plain.wall().shear;
+        with_law!(shear.law, criterion => {
+            let excess = shear.excess(criterion, pressure * 1e6);
+            for part in 0..excess.parts() {
+                let one_by_one = CIRCLE.each(|c, s| excess.part(part, c, s).value);
+                for (at_once, alone) in excess.scan_part(part, &CIRCLE).into_iter().zip(one_by_one) {
+                    prop_assert!((at_once - alone).abs() <= 1e-13 * shear.scale(), "{plain:?}: {part}: {at_once} {alone}");
+                }
+            }
+        });
     }
 
     /// By force: stresses, effective stresses and slip at one place.
