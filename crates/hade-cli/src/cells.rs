@@ -40,17 +40,32 @@ impl std::error::Error for Interrupted {}
 /// The cell, its sentence, and under it what the compiler or the program said beyond that.
 pub(crate) fn cell_failure(failure: &NotebookFailure) -> String {
     let mut message = format!("{failure}\n");
-    if failure.error.detail.trim() != failure.error.sentence {
-        for line in failure.error.detail.lines() {
-            message.push_str(&format!("    {line}\n"));
-        }
+    let (sentence, detail) = (&failure.error.sentence, &failure.error.detail);
+    for line in detail.strip_prefix(sentence.as_str()).unwrap_or(detail).trim_matches('\n').lines() {
+        message.push_str(&format!("    {line}\n"));
     }
     message
 }
 
 #[cfg(test)]
 mod tests {
+    use hade_kernel::CellError;
+
     use super::*;
+
+    #[test]
+    fn a_sentence_is_not_said_twice() {
+        let error = |detail: &str| CellError {
+            name: "Error".into(),
+            sentence: "no depth".into(),
+            detail: detail.into(),
+            line: Some(2),
+        };
+        let said = |detail: &str| cell_failure(&NotebookFailure { number: 4, error: error(detail) });
+        assert_eq!(said("no depth"), "cell 4 (line 2): no depth\n");
+        assert_eq!(said("no depth\n  line 2: f()?;"), "cell 4 (line 2): no depth\n      line 2: f()?;\n");
+        assert_eq!(said("error[E0308]"), "cell 4 (line 2): no depth\n    error[E0308]\n");
+    }
 
     #[test]
     fn a_time_limit_is_a_positive_number() {

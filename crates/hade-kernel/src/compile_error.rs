@@ -5,16 +5,16 @@ use std::fmt::Write as _;
 use evcxr::CompilationError;
 
 use crate::cell::CellError;
-use crate::hints::{self, Hint};
-use crate::ledger::Ledger;
+use crate::hints::{self, Hint, Known};
+use crate::refused;
 
 /// Shown at most; the rest usually follows from these.
 const MOST: usize = 8;
 
 /// One error for everything the compiler said about a cell.
-pub(crate) fn render(errors: &[CompilationError], cell: &str, ledger: &Ledger) -> CellError {
-    let shown: Vec<&CompilationError> = errors.iter().filter(|error| error.level() == "error").take(MOST).collect();
-    let Some(first) = shown.first() else {
+pub(crate) fn render(errors: &[CompilationError], known: &mut Known<'_>) -> CellError {
+    let mut told: Vec<&CompilationError> = errors.iter().filter(|error| error.level() == "error").collect();
+    let Some(&first) = told.first() else {
         return CellError {
             name: "CompileError".to_owned(),
             sentence: "the cell does not compile".to_owned(),
@@ -22,26 +22,27 @@ pub(crate) fn render(errors: &[CompilationError], cell: &str, ledger: &Ledger) -
             line: None,
         };
     };
-    let hints: Vec<Option<Hint>> = shown.iter().map(|error| hints::hint(error, cell, ledger)).collect();
-    let mut detail = String::new();
-    for (error, hint) in shown.iter().zip(&hints) {
-        one(error, cell, &mut detail);
-        if let Some(hint) = hint {
-            let _ = writeln!(detail, "  help: {}", hint.words);
-        }
+    let mut hints = vec![hints::hint(first, known)];
+    if hints.iter().flatten().any(|hint| hint.alone) {
+        told.retain(|error| std::ptr::eq(*error, first) || !refused::follows(error));
     }
-    let left = errors.len().saturating_sub(shown.len());
+    let left = told.len().saturating_sub(MOST);
+    told.truncate(MOST);
+    hints.extend(told.iter().skip(1).map(|error| hints::hint(error, known)));
+    let mut detail = String::new();
+    for (error, hint) in told.iter().zip(&hints) {
+        one(error, known.cell, hint.as_ref(), &mut detail);
+    }
     if left > 0 {
         let _ = writeln!(detail, "and {left} more");
     }
+    let hint = hints.into_iter().next().flatten().filter(|hint| hint.first);
+    let line = first.primary_spanned_message().and_then(|message| message.span).map(|span| span.start_line);
     CellError {
         name: first.code().unwrap_or("CompileError").to_owned(),
-        sentence: match hints.into_iter().next().flatten().filter(|hint| hint.first) {
-            Some(hint) => hint.words,
-            None => one_line(&first.message()),
-        },
+        line: hint.as_ref().and_then(|hint| hint.line).or(line),
+        sentence: hint.map_or_else(|| one_line(&first.message()), |hint| hint.words),
         detail: detail.trim_end().to_owned(),
-        line: first.primary_spanned_message().and_then(|message| message.span).map(|span| span.start_line),
     }
 }
 
@@ -57,9 +58,10 @@ pub(crate) fn unreadable(line: usize, what: &str, cell: &str) -> CellError {
     }
 }
 
-fn one(error: &CompilationError, cell: &str, out: &mut String) {
+fn one(error: &CompilationError, cell: &str, hint: Option<&Hint>, out: &mut String) {
     let code = error.code().map(|code| format!("[{code}]")).unwrap_or_default();
-    let _ = writeln!(out, "error{code}: {}", error.message());
+    let said = one_line(&error.message());
+    let _ = writeln!(out, "error{code}: {said}");
     let lines: Vec<&str> = cell.lines().collect();
     for message in error.spanned_messages() {
         let Some(span) = message.span else {
@@ -80,19 +82,25 @@ fn one(error: &CompilationError, cell: &str, out: &mut String) {
             text.chars().count().saturating_sub(start)
         };
         let mark = if message.is_primary { "^" } else { "-" };
-        let _ = writeln!(
-            out,
-            "{}{} {}",
-            " ".repeat(head.chars().count() + start),
-            mark.repeat(length.max(1)),
-            message.label
-        );
+        let label = if message.label.strip_prefix("error: ") == Some(said.as_str()) { "" } else { &message.label };
+        let marked = format!("{}{} {label}", " ".repeat(head.chars().count() + start), mark.repeat(length.max(1)));
+        let _ = writeln!(out, "{}", marked.trim_end());
     }
-    for help in error.help() {
-        let _ = writeln!(out, "  help: {}", help.replace('\n', "\n        "));
+    if let Some(hint) = hint {
+        let _ = writeln!(out, "  help: {}", hint.words);
     }
-    if let Some(hint) = error.evcxr_extra_hint() {
-        let _ = writeln!(out, "  help: {hint}");
+    // Where our words say it all, the compiler's are left out.
+    for help in error.help().iter().filter(|_| hint.is_none_or(|hint| !hint.first)) {
+        let _ = writeln!(out, "  help: {}", with_replacement(help));
+    }
+}
+
+/// The compiler's advice with the code it would put in, on one line; a sign or a name alone says nothing.
+fn with_replacement(help: &str) -> String {
+    match help.split_once("\n\n") {
+        Some((words, code)) if code.contains([' ', '(', ':']) => format!("{}: `{}`", one_line(words), one_line(code)),
+        Some((words, _)) => one_line(words),
+        None => one_line(help),
     }
 }
 

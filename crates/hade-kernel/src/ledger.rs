@@ -161,6 +161,11 @@ impl Ledger {
         )
     }
 
+    /// The cell that makes a variable that is there.
+    pub(crate) fn cell_of(&self, name: &str) -> Option<usize> {
+        self.entries.get(name).filter(|entry| entry.fate == Fate::There).map(|entry| entry.cell)
+    }
+
     /// Why a variable that a cell names is not there, if the session knows.
     pub(crate) fn explain(&self, name: &str) -> Option<String> {
         let entry = self.entries.get(name)?;

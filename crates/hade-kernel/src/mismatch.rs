@@ -6,14 +6,6 @@ pub(crate) fn advice(label: &str, code: &str) -> Option<String> {
     let (wanted, found) = sides(label)?;
     let code = code.trim();
     let value = code.strip_prefix('&').unwrap_or(code).trim();
-    if found.starts_with("Result<") && !wanted.starts_with("Result<") {
-        return Some(format!("`{code}` may be refused; write `{code}?` to go on with what it gives"));
-    }
-    if found.starts_with("Option<") && !wanted.starts_with("Option<") {
-        return Some(format!(
-            "`{code}` may be absent; write `{code}.ok_or(\"why it must be there\")?` to go on with it"
-        ));
-    }
     if is_number(&found) {
         return number(&wanted, value);
     }
@@ -43,9 +35,16 @@ pub(crate) fn advice(label: &str, code: &str) -> Option<String> {
         ("f64", quantity) => {
             let reads = unit_of(quantity)?.replace('.', ".in_");
             format!(
-                "`{value}` carries a unit; `{}{reads}` is its number, say in which unit it is wanted",
+                "a number without a unit is wanted here, such as a ratio; `{value}` carries a unit, and `{}{reads}` is its \
+                 number in that unit",
                 operand(value)
             )
+        }
+        (wanted, found) if unit_of(found).is_some() => {
+            let (_, unit, others) = UNITS.iter().find(|(known, ..)| *known == wanted)?;
+            let or = if others.is_empty() { String::new() } else { format!(" (or {others})") };
+            let [wanted, found] = [wanted, found].map(|kind| with_article(&kind.to_lowercase()));
+            format!("{wanted} is wanted here, and `{value}` is {found}; write a value with `{unit}`{or}")
         }
         _ => return None,
     })
@@ -63,8 +62,32 @@ pub(crate) fn sum(message: &str) -> Option<String> {
     ))
 }
 
+/// How a value of a type of the library is made, where one is wanted: by its functions, else by its fields.
+pub(crate) fn made_so(wanted: &str, makers: &[String], fields: &[(String, String)]) -> Option<String> {
+    let ways: Vec<String> = makers.iter().take(MOST_WAYS).map(|maker| format!("`{wanted}::{maker}`")).collect();
+    let write = match ways.split_last() {
+        Some((only, [])) => only.clone(),
+        Some((last, before)) => format!("{} or {last}", before.join(", ")),
+        None if fields.is_empty() => return None,
+        None => {
+            let fields: Vec<String> = fields.iter().map(|(name, _)| format!("{name}: …")).collect();
+            format!("`{wanted} {{ {} }}`", fields.join(", "))
+        }
+    };
+    Some(format!("{} is wanted here; write {write}", with_article(&format!("`{wanted}`"))))
+}
+
+/// "an angle", "a `Source`".
+fn with_article(noun: &str) -> String {
+    let vowel = noun.trim_start_matches('`').starts_with(['a', 'e', 'i', 'o', 'A', 'E', 'I', 'O']);
+    format!("{} {noun}", if vowel { "an" } else { "a" })
+}
+
+/// Ways to make a value that are named at most.
+const MOST_WAYS: usize = 6;
+
 /// The types of "expected `A`, found `B`", without paths and references.
-fn sides(label: &str) -> Option<(String, String)> {
+pub(crate) fn sides(label: &str) -> Option<(String, String)> {
     let (wanted, found) = label.strip_prefix("expected ")?.split_once(", found ")?;
     let plain = |side: &str| {
         let side = side.trim().trim_matches('`').trim_start_matches('&').trim_start_matches("mut ");
@@ -156,7 +179,7 @@ fn made_by(axes: &str) -> &'static str {
 }
 
 /// A piece of code as it can stand before a point: in brackets, unless it is a name, a number or a call.
-fn operand(code: &str) -> String {
+pub(crate) fn operand(code: &str) -> String {
     let mut depth = 0_i32;
     let mut plain = !code.starts_with('-');
     for c in code.chars() {
@@ -224,12 +247,25 @@ mod tests {
     }
 
     #[test]
-    fn what_may_fail_or_be_absent_is_told_so() {
-        let said = |label: &str, code: &str| advice(label, code).unwrap_or_default();
-        let refused = said("expected `Pressure`, found `Result<EffectiveStress, Error>`", "s.effective(p)");
-        assert!(refused.contains("write `s.effective(p)?`"), "{refused}");
-        let absent = said("expected `Pressure`, found `Option<Pressure>`", "limit.pressure()");
-        assert!(absent.contains("`limit.pressure().ok_or(\"why it must be there\")?`"), "{absent}");
+    fn another_quantity_is_told_apart() {
+        let said = advice("expected `Angle`, found `Pressure`", "1.5.mpa()").unwrap_or_default();
+        assert_eq!(
+            said,
+            "an angle is wanted here, and `1.5.mpa()` is a pressure; write a value with `.deg()` (or .rad())"
+        );
+        let said = advice("expected `Pressure`, found `Density`", "0.05.sg()").unwrap_or_default();
+        assert!(said.starts_with("a pressure is wanted here, and `0.05.sg()` is a density"), "{said}");
+    }
+
+    #[test]
+    fn a_type_is_told_how_it_is_made() {
+        let makers = ["measured(\"…\")", "read(path)?"].map(str::to_owned);
+        let said = made_so("Source", &makers, &[]).unwrap_or_default();
+        assert_eq!(said, "a `Source` is wanted here; write `Source::measured(\"…\")` or `Source::read(path)?`");
+        let fields = [("sv".to_owned(), "Pressure".to_owned()), ("sh_max".to_owned(), "Pressure".to_owned())];
+        let said = made_so("Horizontals", &[], &fields).unwrap_or_default();
+        assert_eq!(said, "a `Horizontals` is wanted here; write `Horizontals { sv: …, sh_max: … }`");
+        assert_eq!(made_so("String", &[], &[]), None);
     }
 
     #[test]

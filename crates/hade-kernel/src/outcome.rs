@@ -5,9 +5,9 @@ use std::path::Path;
 use crate::cell::{CellError, CellOutcome, Output, Stream};
 use crate::collect::Stop;
 use crate::error::says_full;
+use crate::hints::Known;
 use crate::interrupt::{Stopped, Why};
-use crate::ledger::Ledger;
-use crate::{commands, compile_error, source_map};
+use crate::{commands, compile_error, early, source_map};
 
 /// The sentence for a panic that says nothing, as the one by which the library stops a cell.
 const SILENT: &str = "the cell panicked";
@@ -20,29 +20,34 @@ const DETAIL_LIMIT: usize = 20_000;
 pub(crate) fn stopped(stop: Stop, crate_folder: &Path, cell: &str) -> CellError {
     match stop {
         Stop::Early(words) => {
-            let sentence = first_line(&words, "the cell ended early with an error that says nothing");
-            CellError { name: "Error".to_owned(), sentence, detail: words, line: source_map::only_question_mark(cell) }
+            let (words, place) = early::words_and_place(&words);
+            let line = place.and_then(|place| source_map::line(place, crate_folder, cell));
+            let sentence = first_line(words, "the cell ended early with an error that says nothing");
+            CellError { name: "Error".to_owned(), sentence, detail: with_line(words, line, cell), line }
         }
         Stop::Panic(words) => {
             let (message, line) = source_map::panic(&words, crate_folder, cell);
             let message = if message.is_empty() { SILENT.to_owned() } else { message };
-            CellError { name: "Panic".to_owned(), sentence: first_line(&message, ""), detail: message, line }
+            let detail = with_line(&message, line, cell);
+            CellError { name: "Panic".to_owned(), sentence: first_line(&message, ""), detail, line }
         }
     }
 }
 
+/// Words with the line of the cell they are about.
+fn with_line(words: &str, line: Option<usize>, cell: &str) -> String {
+    match line.and_then(|line| Some((line, cell.lines().nth(line.checked_sub(1)?)?))) {
+        Some((line, text)) => format!("{}\n  line {line}: {}", words.trim_end(), text.trim()),
+        None => words.to_owned(),
+    }
+}
+
 /// A cell the engine could not run to its end. `loss` says what was lost if its process died.
-pub(crate) fn failed(
-    error: &evcxr::Error,
-    cell: &str,
-    loss: &str,
-    outputs: &mut Vec<Output>,
-    ledger: &Ledger,
-) -> CellError {
+pub(crate) fn failed(error: &evcxr::Error, known: &mut Known<'_>, loss: &str, outputs: &mut Vec<Output>) -> CellError {
     match error {
         evcxr::Error::CompilationErrors(errors) => {
-            let error = compile_error::render(errors, cell, ledger);
-            match commands::dependency_failure(&error.detail).filter(|_| cell.contains(":dep")) {
+            let error = compile_error::render(errors, known);
+            match commands::dependency_failure(&error.detail).filter(|_| known.cell.contains(":dep")) {
                 Some(sentence) => CellError {
                     name: "DependencyError".to_owned(),
                     detail: format!("{sentence}\n{}", error.detail),

@@ -16,6 +16,7 @@ use crate::cell::{CellOutcome, Output};
 use crate::collect::Gathered;
 use crate::commands;
 use crate::error::{Error, Result};
+use crate::hints::Known;
 use crate::interrupt::{InterruptHandle, Interrupts};
 use crate::ledger::{End, Ledger, Loss, Variable};
 use crate::outcome;
@@ -160,7 +161,7 @@ impl Session {
         outcome
     }
 
-    fn outcome(&self, ran: Ran, gathered: Gathered, cell: &str, loss: &str) -> CellOutcome {
+    fn outcome(&mut self, ran: Ran, gathered: Gathered, cell: &str, loss: &str) -> CellOutcome {
         let Gathered { mut outputs, stop, .. } = gathered;
         let error = match (ran, stop) {
             (_, Some(stop)) => Some(outcome::stopped(stop, &self.engine.work, cell)),
@@ -173,7 +174,21 @@ impl Session {
             }
             (Ran::Engine(Err(_)), None) if !self.engine.work.exists() => Some(outcome::gone(self.folder.path())),
             (Ran::Engine(Err(_)), None) if !self.prepared.is_there() => Some(outcome::gone(self.prepared.cache())),
-            (Ran::Engine(Err(error)), None) => Some(outcome::failed(&error, cell, loss, &mut outputs, &self.ledger)),
+            (Ran::Engine(Err(error)), None) => {
+                let (variables, library) = (self.engine.variables(), self.prepared.library());
+                let mut complete = |code: &str, at: usize| {
+                    let found = self.engine.complete(code, at).map(|found| found.completions).unwrap_or_default();
+                    found.into_iter().map(|item| item.code).collect()
+                };
+                let known = &mut Known {
+                    cell,
+                    ledger: &self.ledger,
+                    variables: &variables,
+                    library: &library,
+                    complete: &mut complete,
+                };
+                Some(outcome::failed(&error, known, loss, &mut outputs))
+            }
         };
         CellOutcome { outputs, error, elapsed: Duration::ZERO }
     }

@@ -4,7 +4,7 @@
 use std::collections::BTreeSet;
 
 use ra_ap_syntax::ast::{self, HasName};
-use ra_ap_syntax::{AstNode, Edition, NodeOrToken, Parse, SourceFile, SyntaxKind, SyntaxToken, TextRange};
+use ra_ap_syntax::{AstNode, Edition, NodeOrToken, Parse, SourceFile, SyntaxKind, SyntaxToken, TextRange, TextSize};
 
 /// What the parser needs around a cell.
 const BEFORE: &str = "fn f(){";
@@ -14,7 +14,8 @@ const BEFORE: &str = "fn f(){";
 pub(crate) struct Binding {
     pub(crate) name: String,
     pub(crate) mutable: bool,
-    /// Where the statement ends, as a byte offset in the cell.
+    /// Where the statement begins and ends, as byte offsets in the cell.
+    pub(crate) start: usize,
     pub(crate) end: usize,
 }
 
@@ -49,7 +50,8 @@ pub(crate) fn outline(code: &str) -> Outline {
         let ast::Stmt::LetStmt(statement) = statement else {
             continue;
         };
-        let end = usize::from(statement.syntax().text_range().end()).saturating_sub(BEFORE.len());
+        let range = statement.syntax().text_range();
+        let [start, end] = [range.start(), range.end()].map(|at| usize::from(at).saturating_sub(BEFORE.len()));
         let Some(pattern) = statement.pat() else {
             continue;
         };
@@ -62,10 +64,46 @@ pub(crate) fn outline(code: &str) -> Outline {
             };
             let name = name.text().to_string();
             outline.bindings.retain(|earlier| earlier.name != name);
-            outline.bindings.push(Binding { name, mutable: ident.mut_token().is_some(), end: end.min(code.len()) });
+            let end = end.min(code.len());
+            outline.bindings.push(Binding { name, mutable: ident.mut_token().is_some(), start, end });
         }
     }
     outline
+}
+
+/// The statements at the top of a cell that are run, and its last expression: byte offset and text.
+pub(crate) fn statements(code: &str) -> Vec<(usize, String)> {
+    let rust = without_commands(code);
+    let parsed = SourceFile::parse(&format!("{BEFORE}{rust}\n}}"), Edition::Edition2024);
+    let function = parsed.syntax_node().children().find_map(ast::Fn::cast);
+    let Some(list) = function.and_then(|function| function.body()).and_then(|body| body.stmt_list()) else {
+        return Vec::new();
+    };
+    let run = list.statements().filter(|statement| !matches!(statement, ast::Stmt::Item(_)));
+    run.map(|statement| statement.syntax().clone())
+        .chain(list.tail_expr().map(|last| last.syntax().clone()))
+        .map(|node| (usize::from(node.text_range().start()).saturating_sub(BEFORE.len()), node.text().to_string()))
+        .collect()
+}
+
+/// The value that a `let` at the top of a cell gives a variable, as it is written.
+pub(crate) fn initial_value(code: &str, name: &str) -> Option<String> {
+    let made = outline(code).bindings.into_iter().find(|binding| binding.name == name)?;
+    let statement = code.get(made.start..made.end)?;
+    Some(statement.split_once('=')?.1.trim().trim_end_matches(';').trim_end().to_owned())
+}
+
+/// What stands before the point of a method or field whose name begins at a byte offset.
+pub(crate) fn receiver(code: &str, at: usize) -> Option<String> {
+    let parsed = SourceFile::parse(&format!("{BEFORE}{}\n}}", without_commands(code)), Edition::Edition2024);
+    let at = TextSize::try_from(at + BEFORE.len()).ok()?;
+    let named = parsed.syntax_node().token_at_offset(at).right_biased()?.parent()?;
+    let whole = named.parent()?;
+    let before = match ast::MethodCallExpr::cast(whole.clone()) {
+        Some(call) => call.receiver(),
+        None => ast::FieldExpr::cast(whole)?.expr(),
+    };
+    before.map(|before| before.syntax().text().to_string())
 }
 
 /// The cell with the variables that its last value lists, `(here, there)`, only looked at: what is no copy would
@@ -259,6 +297,12 @@ fn plain(words: &str) -> String {
         ("IDENT", "a name"),
     ];
     let words = words.strip_prefix("Syntax Error: ").unwrap_or(words);
+    if words == "expected SEMICOLON" {
+        return "a `;` is missing at the end of this line".to_owned();
+    }
+    if words.contains("to terminate the string") {
+        return "the text that begins on this line has no `\"` at its end".to_owned();
+    }
     words
         .split(' ')
         .map(|word| signs.iter().find(|(name, _)| *name == word).map_or(word, |(_, sign)| sign))
@@ -339,6 +383,19 @@ mod tests {
     }
 
     #[test]
+    fn parts_of_a_statement_are_found() {
+        let code = ":dep x\nlet b: &f64 = &a.x;\nlet c = f(s.at(d)?.stress()?.zzz, e);";
+        assert_eq!(initial_value(code, "b").as_deref(), Some("&a.x"));
+        assert_eq!(initial_value(code, "d"), None);
+        let before = |name: &str| receiver(code, code.find(name).unwrap_or_default());
+        assert_eq!(before("zzz").as_deref(), Some("s.at(d)?.stress()?"));
+        assert_eq!(before("at(").as_deref(), Some("s"));
+        assert_eq!(before("let c"), None);
+        let texts: Vec<String> = statements(code).into_iter().map(|(at, text)| format!("{at} {text}")).collect();
+        assert_eq!(texts, ["7 let b: &f64 = &a.x;", "28 let c = f(s.at(d)?.stress()?.zzz, e);"]);
+    }
+
+    #[test]
     fn the_next_line_is_indented() {
         assert_eq!(indent_after("fn f() {\n    let a = (\n"), " ".repeat(8));
         assert_eq!(indent_after("fn f() {\n    a;"), " ".repeat(4));
@@ -358,8 +415,8 @@ mod tests {
             ("let a = 1;\nlet b = std::", 2, "expected"),
             ("let a = 1;\nlet b = f(1,\n  2;\n", 2, "the `(` that begins here is not closed"),
             ("if true {\n  1;\n", 1, "the `{` that begins here is not closed"),
-            ("let a = 1;\nlet s = \"abc;\n", 2, "string"),
-            ("let a = 1\nlet b = 2;", 1, "expected `;`"),
+            ("let a = 1;\nlet s = \"abc;\n", 2, "has no `\"` at its end"),
+            ("let a = 1\nlet b = 2;", 1, "a `;` is missing at the end of this line"),
             ("let a = 1;\n:vars", 2, "must stand at the top"),
         ] {
             let (found, said) = outline(code).problem.unwrap_or_default();

@@ -10,6 +10,8 @@ use std::path::Path;
 use std::process::Command;
 use std::{env, fs};
 
+use crate::{early, source_map};
+
 /// Set for the compiler wrapper: the path of the [`Plan`].
 pub(crate) const PLAN_VAR: &str = "HADE_RUSTC_PLAN";
 
@@ -100,6 +102,10 @@ pub(crate) fn run(plan: &Path) -> ! {
     let mut command = Command::new(args.remove(0));
     let is_cell = crate_name(&args) == Some(CELL_CRATE);
     command.args(plan.completed(args));
+    if is_cell {
+        // Without it an error is told without its line.
+        let _ = early::add_places(Path::new(source_map::MADE));
+    }
     if is_cell && Path::new(FULL_TYPES_FILE).exists() {
         // Names only how types are printed in the messages of this one check.
         command.arg("--verbose").arg("-Ztrim-diagnostic-paths=no").env("RUSTC_BOOTSTRAP", "1");

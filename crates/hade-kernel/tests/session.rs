@@ -3,6 +3,8 @@
 //! The test program is started again by the session as the process that runs the cells, so it has
 //! a `main` of its own that begins with the hook.
 
+#[path = "session/advice.rs"]
+mod advice;
 #[path = "session/commands.rs"]
 mod commands;
 #[path = "session/crashes.rs"]
@@ -57,6 +59,7 @@ fn all() -> impl Iterator<Item = &'static (&'static str, Test)> {
     [
         TESTS,
         errors::TESTS,
+        advice::TESTS,
         commands::TESTS,
         floods::TESTS,
         crashes::TESTS,

@@ -7,13 +7,14 @@ use std::sync::{Mutex, PoisonError};
 use std::time::Duration;
 use std::{env, process};
 
-use evcxr::{CommandContext, EvalContext, EvalOutputs};
+use evcxr::{CommandContext, Completions, EvalContext, EvalOutputs};
 
 use super::folder::SessionFolder;
 use crate::cell::{CellError, CellOutcome, Stream};
 use crate::collect::Collector;
 use crate::compile_error;
 use crate::error::{Error, Result};
+use crate::hints::Known;
 use crate::hook::OPEN_FLAG_VAR;
 use crate::interrupt;
 use crate::ledger::{Ledger, Variable};
@@ -112,7 +113,14 @@ impl Engine {
         let Err(error) = loaded else {
             return Ok(());
         };
-        let error = outcome::failed(&error, &load, "", &mut Vec::new(), &Ledger::default());
+        let known = &mut Known {
+            cell: &load,
+            ledger: &Ledger::default(),
+            variables: &[],
+            library: &prepared.library(),
+            complete: &mut |_, _| Vec::new(),
+        };
+        let error = outcome::failed(&error, known, "", &mut Vec::new());
         let printed = CellOutcome { outputs: gathered.outputs, ..CellOutcome::default() }.text(Stream::Stderr);
         Err(failed(format!("{}\n{printed}", error.detail).trim().to_owned()))
     }
@@ -133,6 +141,11 @@ impl Engine {
         let mut variables: Vec<Variable> = known.map(|(name, kind)| (name.to_owned(), kind.to_owned())).collect();
         variables.sort();
         variables
+    }
+
+    /// What could be written at a byte offset of a cell.
+    pub(super) fn complete(&mut self, cell: &str, at: usize) -> Option<Completions> {
+        catch_unwind(AssertUnwindSafe(|| self.context.completions(cell, at).ok())).ok().flatten()
     }
 
     /// Whether the process that runs the cells ran anything, so that its last record will come.

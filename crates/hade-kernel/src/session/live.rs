@@ -45,7 +45,7 @@ impl Session {
 
     /// What could be written at a byte offset of a cell.
     pub(crate) fn complete(&mut self, cell: &str, at: usize) -> Option<evcxr::Completions> {
-        catch_unwind(AssertUnwindSafe(|| self.engine.context.completions(cell, at).ok())).ok().flatten()
+        self.engine.complete(cell, at)
     }
 
     /// What is known about the name before a byte offset of a cell: as plain text and as HTML.

@@ -49,7 +49,11 @@ fn a_variable_of_a_failed_cell_is_explained(bench: &mut Bench) {
     let error = bench.failure("never + 1.0");
     assert!(error.sentence.starts_with("cell 2, which defines `never`, did not run to its end"), "{}", error.sentence);
     let error = bench.failure("let a = nowhere;");
-    assert!(error.sentence.starts_with("cannot find value `nowhere`"), "{}", error.sentence);
+    assert_eq!(
+        error.sentence,
+        "there is no variable `nowhere`; the variables are `fine`; run the cell that makes it first"
+    );
+    assert!(error.detail.contains("cannot find value `nowhere`"), "{}", error.detail);
 }
 
 fn a_variable_whose_type_changed_is_explained(bench: &mut Bench) {
