@@ -276,7 +276,9 @@ proptest! {
                 continue;
             }
             let now = limit.pressure().unwrap().si();
-            prop_assert!(now <= last + 1e-9 * wall.shear.scale(), "{plain:?}: {width}: {now} {last}");
+            // On a plane without cohesion that lies along the wall, two arcs are kept apart only by the pressure beyond
+            // the pore pressure: a gap of some 1e-8 rad is seen at one pressure and not at the next.
+            prop_assert!(now <= last + 1e-7 * wall.shear.scale(), "{plain:?}: {width}: {now} {last}");
             last = now;
         }
     }
