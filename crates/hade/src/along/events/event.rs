@@ -93,12 +93,12 @@ pub struct DrillingEvent {
 /// Drilling events along a hole.
 #[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
 pub struct DrillingEvents {
-    pub(super) events: Vec<DrillingEvent>,
+    pub(in crate::along) events: Vec<DrillingEvent>,
     /// The file they were read from, and its SHA-256.
-    pub(super) file: Option<(String, String)>,
+    pub(in crate::along) file: Option<(String, String)>,
     /// The hole that the file names.
     #[serde(default, skip_serializing_if = "Option::is_none")]
-    pub(super) hole: Option<Name>,
+    pub(in crate::along) hole: Option<Name>,
 }
 
 /// More events are no list that a record can hold.

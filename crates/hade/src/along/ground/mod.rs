@@ -27,7 +27,7 @@ mod worked;
 
 pub(crate) use at_place::AtPlace;
 pub use depletion::{Depletion, MaxPath, MinPath};
-pub(crate) use doubts::{doubts_of_overburden, doubts_of_path};
+pub(crate) use doubts::doubts_of_path;
 pub use ground::{Ground, GroundInputs, HorizontalProfiles};
 pub(crate) use in_hole::GroundInHole;
 pub use layer::{Layer, TopPlane};

@@ -1,12 +1,13 @@
 //! The card of stress and pore pressure at a depth of the ground, and its checks by another route.
 
-use super::doubts::{doubts_of_overburden, doubts_of_path};
+use super::doubts::doubts_of_path;
 use super::in_hole::GroundInHole;
 use super::layer::Layer;
 use super::state::{GroundState, GroundStateInputs, GroundStateOutcome};
 use crate::along::Ground;
 use crate::card::{Card, Check, Explain, Explanation, Item};
 use crate::error::Result;
+use crate::stress::doubts_of_overburden;
 use crate::units::{Pressure, Quantity, Warming, fixed};
 use crate::well::{Survey, stated_items};
 

@@ -7,9 +7,10 @@ use super::limit_log::{LimitLog, LogInputs};
 use super::row::{LogRow, ends};
 use super::steps::{governing, steps, stretch_words, stretches_words};
 use super::summary::LogOutcome;
-use crate::along::ground::{doubts_of_overburden, doubts_of_path};
+use crate::along::ground::doubts_of_path;
 use crate::card::{Card, Check, Explain, Explanation, Figure, Formula, Item, Method};
 use crate::error::Result;
+use crate::stress::doubts_of_overburden;
 use crate::units::{Angle, Quantity, as_typed, fixed};
 use crate::well::stated_items;
 

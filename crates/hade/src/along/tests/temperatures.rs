@@ -1,6 +1,7 @@
 //! Walls warmed or cooled by temperatures that change with depth.
 
 use super::*;
+use crate::card::Standing;
 use crate::field::TemperatureProfile;
 use crate::units::Temperature;
 
@@ -150,7 +151,7 @@ fn the_wall_of_a_state_is_cooled_sealed_and_weakened_as_its_layer() {
     let card = state.card();
     assert!(card.explanation.notes.iter().any(|note| note.contains("state.wall()?")));
     // Every number of the wall is a result of the state, so that the sheet knows where it comes from.
-    for item in wall.limits().explain().inputs.iter().skip(1).filter(|item| item.symbol != "w_s") {
+    for item in wall.limits().explain().inputs.iter().skip(1).filter(|item| item.standing == Standing::Value) {
         assert!(card.explanation.results.iter().any(|result| result.same_value(item)), "{item:?}");
     }
     let hot = layer.thermal_properties(12.gpa(), 12.per_kelvin()).unwrap_err().to_string();

@@ -229,7 +229,7 @@ pub(crate) fn require_expansion(expansion: Expansion) -> Result<Expansion> {
     }
     Err(Error::out_of_range(
         "thermal expansion α_T",
-        with_typed_unit(expansion),
+        format!("{} 1/K", as_typed(expansion.si())),
         format!("between 0 and {MOST} 1/K (rock has some 1e-5); a value in 1e-6/K is typed (12e-6).per_kelvin()"),
     ))
 }

@@ -267,7 +267,7 @@ fn a_map_of_cooled_walls() {
         assert!(card.passed(), "{:#?}", card.checks);
         assert_eq!(DirectionMap::compute(map.inputs.clone()).unwrap().card(), card);
         assert!(card.explanation.notes.iter().any(|note| note.contains("is cooled by 25 K")));
-        assert!(card.headline().contains("; end of the path "), "{}", card.headline());
+        assert!(card.explanation.headline.contains("; end of the path "), "{}", card.explanation.headline);
         assert!(card.explanation.topics.contains(&"thermal".to_owned()));
     }
     let hot = Thermal { expansion: 12.per_kelvin(), ..thermal };
