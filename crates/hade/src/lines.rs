@@ -13,7 +13,7 @@ mod declarations;
 mod table;
 
 pub(crate) use declarations::{Declarations, Unit, Units};
-pub(crate) use table::{Column, Expected, Row, Table, heading};
+pub(crate) use table::{Column, Expected, Row, Table, without_unit};
 
 /// The longest line that is read, in bytes. Survey and log files keep far below it; a binary file
 /// or a file without line ends does not.

@@ -15,9 +15,24 @@ use crate::units::{Pressure, Quantity, as_typed, fixed, with_typed_unit};
 /// # Errors
 /// When μ is not a finite number of zero or more.
 pub fn frictional_ratio(mu: f64) -> Result<f64> {
-    crate::units::require_not_negative("coefficient of friction", mu)?;
+    require_friction(mu)?;
     let root = (mu * mu + 1.0).sqrt() + mu;
     Ok(root * root)
+}
+
+/// No fault has more: a coefficient is the tangent of an angle, mostly 0.2 to 1 (Byerlee 1978, from memory).
+const MOST_FRICTION: f64 = 5.0;
+
+/// Refuses what no fault has.
+fn require_friction(mu: f64) -> Result<f64> {
+    if (0.0..=MOST_FRICTION).contains(&mu) {
+        return Ok(mu);
+    }
+    Err(Error::out_of_range(
+        "coefficient of friction",
+        crate::units::as_typed(mu),
+        format!("between 0 and {MOST_FRICTION}; of a friction angle it is the tangent, as 0.577 of 30°"),
+    ))
 }
 
 /// A stress held against the frictional limit.

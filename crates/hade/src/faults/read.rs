@@ -12,8 +12,10 @@ use crate::units::{Angle, Pressure};
 
 const EXPECTED: Expected = Expected {
     keys: &[&NORTH_KEYS, &["angle_unit", "cohesion_unit"]],
+    always: &[(&["north"], "# north: true | grid | magnetic"), (&["angle_unit"], "# angle_unit: deg")],
     file: "a table of planes with columns name, strike, dip",
     names: "name, strike (or dip_direction), dip",
+    besides: &["friction", "cohesion"],
     units_in_names: false,
     rows: ["plane", "planes"],
     most: MOST_PLANES,

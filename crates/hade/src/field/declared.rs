@@ -85,9 +85,7 @@ pub(crate) fn declared_datum(declared: &Declarations) -> Result<Datum> {
         found = Some(here);
     }
     found.ok_or_else(|| {
-        declared.bad_together(
-            "the file does not say which level its depths count from",
-            format!("declare it with a line \"# datum: …\" above the column names: {words}"),
-        )
+        declared
+            .lacking("which level its depths count from", "# datum: rotary table | mean sea level | ground | mudline")
     })
 }

@@ -3,6 +3,7 @@
 
 use std::io::Read;
 
+use super::table::NOT_READ;
 use super::{Lines, number, shown, unreadable};
 use crate::error::{Error, Result};
 use crate::units::Length;
@@ -10,11 +11,16 @@ use crate::units::Length;
 /// The declarations of one file as they stand: key, line, value.
 pub(crate) struct Declarations {
     keys: &'static [&'static [&'static str]],
+    /// What every such file declares, by any of some keys, and the line to write where it does not.
+    always: Always,
     path: String,
     found: Vec<(&'static str, usize, String)>,
     /// The line of the column names, once it is reached.
     names_at: Option<usize>,
 }
+
+/// What every file of a kind declares: by any of these keys, and the line to write where it does not.
+pub(crate) type Always = &'static [(&'static [&'static str], &'static str)];
 
 /// Makes a quantity of a number in the unit of a file.
 pub(crate) type Unit<Q> = fn(f64) -> Q;
@@ -32,9 +38,10 @@ pub(crate) struct Units<Q: 'static> {
 }
 
 impl Declarations {
-    /// None yet. Only these keys mean something; every other `#` line is a remark.
-    pub fn of(keys: &'static [&'static [&'static str]], path: &str) -> Self {
-        Declarations { keys, path: path.to_owned(), found: Vec::new(), names_at: None }
+    /// None yet. Only these keys mean something, and that of columns that are not to be read; every other `#` line is
+    /// a remark.
+    pub fn of(keys: &'static [&'static [&'static str]], always: Always, path: &str) -> Self {
+        Declarations { keys, always, path: path.to_owned(), found: Vec::new(), names_at: None }
     }
 
     /// Takes in a line that begins with `#`. A value may be followed by further declarations:
@@ -68,7 +75,7 @@ impl Declarations {
     fn declaration<'a>(&self, text: &'a str) -> Option<(&'static str, &'a str)> {
         let (key, value) = text.split_once(':')?;
         let key = key.trim().to_lowercase();
-        self.keys.iter().copied().flatten().find(|k| **k == key).map(|k| (*k, value))
+        self.keys.iter().copied().flatten().chain(&[NOT_READ]).find(|k| **k == key).map(|k| (*k, value))
     }
 
     fn put<R: Read>(&mut self, lines: &Lines<R>, key: &'static str, value: &str) -> Result<()> {
@@ -86,6 +93,11 @@ impl Declarations {
     /// Says that the column names stand in this line: nothing is declared below it.
     pub(super) fn end_at(&mut self, line: usize) {
         self.names_at = Some(line);
+    }
+
+    /// The line of the column names, once it is reached.
+    pub(super) fn names_at(&self) -> Option<usize> {
+        self.names_at
     }
 
     /// The value of a key.
@@ -108,11 +120,19 @@ impl Declarations {
         unreadable(&self.path, self.names_at, None, why, fix)
     }
 
-    /// An error for a declaration that is missing, with the line to write.
+    /// An error for a declaration that is missing, with the line to write, and what else is missing.
     pub fn lacking(&self, what: &str, write: &str) -> Error {
+        let (key, _) = write.split_once(':').unwrap_or((write, ""));
+        let missing =
+            |(keys, line): &&(&[&str], &str)| !line.starts_with(key) && keys.iter().all(|key| self.get(key).is_none());
+        let others: Vec<String> = self.always.iter().filter(missing).map(|(_, line)| format!("\"{line}\"")).collect();
+        let others = match others.is_empty() {
+            true => String::new(),
+            false => format!("; it lacks {} too", others.join(" and ")),
+        };
         self.bad_together(
             format!("the file does not say {what}"),
-            format!("add a line \"{write}\" above the column names"),
+            format!("add a line \"{write}\" above the column names{others}"),
         )
     }
 
@@ -188,9 +208,11 @@ mod tests {
 
     const KEYS: &[&[&str]] = &[&["north", "declination"], &["hole", "depth_unit"]];
 
+    const ALWAYS: Always = &[(&["depth_unit"], "# depth_unit: m | ft")];
+
     fn taken(text: &str) -> Result<Declarations> {
         let mut lines = Lines::over(text.as_bytes(), "x.csv");
-        let mut declared = Declarations::of(KEYS, "x.csv");
+        let mut declared = Declarations::of(KEYS, ALWAYS, "x.csv");
         while let Some(line) = lines.line()? {
             declared.take(&lines, &line)?;
         }
@@ -215,6 +237,17 @@ mod tests {
             "x.csv, line 1: \"north\" has no value; write the value after the colon."
         );
         assert!(said("# north: grid, declination:").contains("\"declination\" has no value"));
+    }
+
+    /// All at once, so that a file is mended once.
+    #[test]
+    fn everything_that_is_lacking_is_listed() {
+        let said = |text: &str| taken(text).unwrap().lacking("its north", "# north: true").to_string();
+        assert_eq!(
+            said("# hole: A"),
+            "x.csv, line 9: the file does not say its north; add a line \"# north: true\" above the column names; it lacks \"# depth_unit: m | ft\" too."
+        );
+        assert!(said("# depth_unit: m").ends_with("add a line \"# north: true\" above the column names."));
     }
 
     #[test]

@@ -1,5 +1,6 @@
 //! A table of a CSV file, row by row: declarations and remarks, the column names, the rows.
 
+use std::cell::Cell;
 use std::io::Read;
 
 use super::{Declarations, Lines, number, shown};
@@ -9,10 +10,15 @@ use crate::error::{Error, Result};
 pub(crate) struct Expected {
     /// The keys of the declarations that mean something; every other `#` line is a remark.
     pub keys: &'static [&'static [&'static str]],
+    /// What every such file declares, by any of some keys, and the line to write where it does not.
+    pub always: &'static [(&'static [&'static str], &'static str)],
     /// What to give in place of an empty file: "a survey with columns md, inclination, azimuth".
     pub file: &'static str,
     /// The columns: "md, inclination, azimuth".
     pub names: &'static str,
+    /// Columns that a file may have besides. Where there are any, a name that is none of the columns is refused,
+    /// for it may be one of them misspelt.
+    pub besides: &'static [&'static str],
     /// Whether a column name may carry a unit: "tvd (m)".
     pub units_in_names: bool,
     /// What a row is, one and many: "station", "stations".
@@ -39,6 +45,8 @@ struct Heading {
     written: String,
     name: String,
     unit: Option<String>,
+    /// Whether it was asked for.
+    known: Cell<bool>,
 }
 
 /// A column that was found.
@@ -54,7 +62,7 @@ pub(crate) struct Row(Vec<String>);
 impl<R: Read> Table<R> {
     /// Reads down to and with the column names.
     pub fn open(lines: Lines<R>, expected: &'static Expected) -> Result<Self> {
-        let declared = Declarations::of(expected.keys, lines.path());
+        let declared = Declarations::of(expected.keys, expected.always, lines.path());
         let mut table = Table { lines, expected, declared, headings: Vec::new(), rows: 0, blank: true };
         let Some(fields) = table.next_fields()? else {
             let Expected { file, names, rows: [_, rows], .. } = expected;
@@ -76,7 +84,7 @@ impl<R: Read> Table<R> {
         }
         let heading = |written: String| {
             let (name, unit) = if expected.units_in_names { heading(&written) } else { (plain(&written), None) };
-            Heading { written, name, unit }
+            Heading { written, name, unit, known: Cell::new(false) }
         };
         table.headings = fields.into_iter().map(heading).collect();
         table.declared.end_at(table.lines.number());
@@ -102,6 +110,7 @@ impl<R: Read> Table<R> {
     pub fn column_if_any(&self, names: &[&str]) -> Result<Option<Column>> {
         let names: Vec<String> = names.iter().map(|n| plain(n)).collect();
         let mut found = self.headings.iter().enumerate().filter(|(_, h)| names.contains(&h.name));
+        found.clone().for_each(|(_, h)| h.known.set(true));
         let first = found.next().map(|(place, h)| Column { place, name: shown(&h.written) });
         match (first, found.next()) {
             (Some(column), Some(_)) => Err(self.bad_in(&column, "two columns have this name", "keep one of them")),
@@ -128,7 +137,7 @@ impl<R: Read> Table<R> {
 
     fn missing_with(&self, name: &str, fix: String) -> Error {
         let all: Vec<&str> = self.headings.iter().map(|h| h.written.as_str()).collect();
-        self.lines.bad_in(name, format!("the column is missing; there are: {}", shown(&all.join(", "))), fix)
+        self.lines.bad_in(name, format!("the column is missing; there are: {}", listed(&all)), fix)
     }
 
     /// Whether a column goes by this name.
@@ -144,6 +153,9 @@ impl<R: Read> Table<R> {
     /// The next row, with no more cells than there are columns; `None` below the last.
     pub fn next_row(&mut self) -> Result<Option<Row>> {
         let Expected { rows: [row, rows], most, fewer, .. } = self.expected;
+        if self.rows == 0 {
+            self.require_known_names()?;
+        }
         let Some(fields) = self.next_fields()? else {
             return match self.rows {
                 0 => {
@@ -164,6 +176,35 @@ impl<R: Read> Table<R> {
             ));
         }
         Ok(Some(Row(fields)))
+    }
+
+    /// Refuses a column that nobody asked for, in a file some of whose columns need not be there.
+    fn require_known_names(&self) -> Result<()> {
+        let Expected { names, besides, .. } = self.expected;
+        if besides.is_empty() {
+            return Ok(());
+        }
+        let left_out = self.declared.get(NOT_READ).unwrap_or_default();
+        let left_out: Vec<String> = left_out.split(',').map(plain).collect();
+        let stray = |h: &&Heading| !h.known.get() && !REMARKS.contains(&h.name.as_str()) && !left_out.contains(&h.name);
+        let Some(heading) = self.headings.iter().filter(|h| !h.name.is_empty()).find(stray) else { return Ok(()) };
+        let meant = besides.iter().map(|name| (distance(&plain(name), &heading.name), name)).min();
+        let written = shown(&heading.written);
+        let fix = match meant {
+            Some((away, name)) if 2 * away <= heading.name.chars().count() => format!(
+                "write {name} if that is meant; if not, add a line \"# {NOT_READ}: {written}\" above the column names"
+            ),
+            _ => format!(
+                "correct the name, or add a line \"# {NOT_READ}: {written}\" above the column names; the columns are {names}, and may be {}",
+                besides.join(", ")
+            ),
+        };
+        Err(self.lines.bad_at(
+            Some(self.declared.names_at().unwrap_or(self.lines.number())),
+            Some(&written),
+            "no column of this name is known here, and nothing of it would be read",
+            fix,
+        ))
     }
 
     /// The text of a cell.
@@ -233,21 +274,60 @@ impl<R: Read> Table<R> {
     }
 }
 
+/// Column names one after the other, of many the first twenty.
+fn listed(names: &[&str]) -> String {
+    const MOST: usize = 20;
+    let mut words: Vec<String> = names.iter().take(MOST).map(|name| shown(name)).collect();
+    if names.len() > MOST {
+        words.push("…".to_owned());
+    }
+    words.join(", ")
+}
+
+/// The declaration that names columns which are not to be read.
+pub(crate) const NOT_READ: &str = "not_read";
+/// Columns for the reader of the file.
+const REMARKS: [&str; 8] = ["remark", "remarks", "note", "notes", "comment", "comments", "source", "reference"];
+
+/// How many letters must be put in, taken out or changed to make one name of another (Levenshtein 1966).
+fn distance(a: &str, b: &str) -> usize {
+    let b: Vec<char> = b.chars().collect();
+    let mut row: Vec<usize> = (0..=b.len()).collect();
+    for (i, letter) in a.chars().enumerate() {
+        let mut before = i;
+        let mut last = i + 1;
+        for (j, other) in b.iter().enumerate() {
+            let above = row.get(j + 1).copied().unwrap_or(usize::MAX - 1);
+            let here = (before + usize::from(letter != *other)).min(above + 1).min(last + 1);
+            if let Some(cell) = row.get_mut(j) {
+                *cell = last;
+            }
+            (before, last) = (above, here);
+        }
+        if let Some(cell) = row.last_mut() {
+            *cell = last;
+        }
+    }
+    row.last().copied().unwrap_or_default()
+}
+
 /// A column name as it is compared: "Dip_Direction" → "dip direction".
 fn plain(name: &str) -> String {
     name.trim().to_lowercase().replace('_', " ")
 }
 
 /// A column name as it is compared, without its unit, and the unit: "SHmin (psi)" → "shmin", "psi".
-pub(crate) fn heading(text: &str) -> (String, Option<String>) {
+fn heading(text: &str) -> (String, Option<String>) {
+    let name = without_unit(text);
+    let unit = text.trim().get(name.len()..).map(|unit| unit.trim().trim_matches(['(', '[', ')', ']']).trim());
+    (plain(name), unit.filter(|unit| !unit.is_empty()).map(str::to_owned))
+}
+
+/// A column name without the unit that stands in it: "SHmin (psi)" → "SHmin".
+pub(crate) fn without_unit(text: &str) -> &str {
     let text = text.trim();
-    let open = text.find(['(', '[']);
-    let unit = open.and_then(|at| text.get(at + 1..)).and_then(|rest| rest.strip_suffix([')', ']']));
-    let name = match (open, unit) {
-        (Some(at), Some(_)) => text.get(..at).unwrap_or(text),
-        _ => text,
-    };
-    (plain(name), unit.map(|u| u.trim().to_owned()))
+    let unit = text.find(['(', '[']).filter(|_| text.ends_with([')', ']']));
+    unit.and_then(|at| text.get(..at)).unwrap_or(text).trim_end()
 }
 
 /// The fields of a line by the rules of CSV: separated by commas, trimmed, in quotation marks where
@@ -275,8 +355,10 @@ mod tests {
 
     const EXPECTED: Expected = Expected {
         keys: &[&["north"]],
+        always: &[],
         file: "a table with columns name, dip",
         names: "name, dip",
+        besides: &[],
         units_in_names: true,
         rows: ["plane", "planes"],
         most: 3,
@@ -310,6 +392,30 @@ mod tests {
         assert!(table.is_named(&dip, "dip_angle") && !table.is_named(&dip, "dip"));
         assert_eq!(heading("SHmin (psi)"), ("shmin".to_owned(), Some("psi".to_owned())));
         assert_eq!(heading("a) (b"), ("a) (b".to_owned(), None));
+    }
+
+    /// A misspelt column that need not be there would be lost without a word.
+    #[test]
+    fn a_name_that_is_no_column_is_refused_where_columns_may_be_left_out() {
+        const MAY: Expected = Expected { besides: &["drawdown", "path_min"], ..EXPECTED };
+        let read = |text: &str| -> Result<()> {
+            let mut table = Table::open(Lines::over(text.as_bytes(), "x.csv"), &MAY)?;
+            table.column(&["dip"])?;
+            for name in MAY.besides {
+                table.column_if_any(&[name])?;
+            }
+            while table.next_row()?.is_some() {}
+            Ok(())
+        };
+        let said = |text: &str| read(text).unwrap_err().to_string();
+        assert_eq!(
+            said("Dip,Draw_Down\n1,2\n"),
+            "x.csv, line 1, column \"Draw_Down\": no column of this name is known here, and nothing of it would be read; write drawdown if that is meant; if not, add a line \"# not_read: Draw_Down\" above the column names."
+        );
+        assert!(said("# a\nDip,colour\n1,2\n").starts_with("x.csv, line 2, column \"colour\""));
+        assert!(said("Dip,colour\n1,2\n").contains("the columns are name, dip, and may be drawdown, path_min"));
+        read("# not_read: colour, Bed\nDip,Colour,bed,Remark,,PATH_MIN\n1,2\n").unwrap();
+        assert_eq!((distance("draw down", "drawdown"), distance("", "abc"), distance("kitten", "sitting")), (1, 3, 3));
     }
 
     #[test]

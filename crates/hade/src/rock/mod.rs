@@ -9,6 +9,7 @@ mod account;
 mod at_failure;
 mod constants;
 mod criterion;
+mod doubts;
 mod drucker_prager;
 mod eigenvalues;
 mod envelope;

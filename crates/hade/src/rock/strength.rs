@@ -93,6 +93,19 @@ impl Strength {
         Strength(Stated::HoekBrown(rock_mass))
     }
 
+    /// The pressure and the angle that it was stated by, and whether that pressure is the uniaxial strength; `None` of
+    /// a criterion without an angle.
+    pub(super) fn pressure_and_angle(self) -> Option<(Pressure, bool, Angle)> {
+        match self.0 {
+            Stated::MohrCoulombUcs { ucs, friction_angle } => Some((ucs, true, friction_angle)),
+            Stated::MohrCoulomb { cohesion, friction_angle }
+            | Stated::MogiCoulomb { cohesion, friction_angle }
+            | Stated::ModifiedLade { cohesion, friction_angle }
+            | Stated::DruckerPrager { cohesion, friction_angle, .. } => Some((cohesion, false, friction_angle)),
+            Stated::HoekBrown(_) => None,
+        }
+    }
+
     /// The same with one of its numbers (in SI) in place of that which was stated; a number it was not stated by
     /// changes nothing.
     pub(crate) fn with(self, number: StrengthNumber, si: f64) -> Self {

@@ -131,7 +131,14 @@ impl Hindcast {
     }
 
     fn notes(&self) -> Vec<String> {
-        let mut notes: Vec<String> = self
+        let mut notes: Vec<String> = Vec::new();
+        let holes = self.events.hole.zip(self.log.survey().hole());
+        if let Some((theirs, ours)) = holes.filter(|(theirs, ours)| theirs != ours) {
+            notes.push(format!(
+                "WARNING: the events are of {theirs} and are placed here at their measured depths in {ours}: the same measured depth of another hole lies at another depth and in another direction. Put them at the measured depths of {ours} where the same rock lies, or hold them against a log of {theirs}."
+            ));
+        }
+        let missed = self
             .rows
             .iter()
             .filter(|row| !row.hit)
@@ -143,8 +150,8 @@ impl Hindcast {
                     row.reason()
                 )
             })
-            .collect();
-        notes.truncate(12);
+            .take(12);
+        notes.extend(missed);
         if !self.rows.iter().any(|row| row.event.kind == EventKind::InGauge) {
             notes.push(
                 "No depth without trouble is among the events: limits that call everything unstable would do as well."

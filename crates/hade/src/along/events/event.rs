@@ -6,6 +6,7 @@ use serde::{Deserialize, Serialize};
 
 use crate::card::Item;
 use crate::error::{Error, Result};
+use crate::frames::Name;
 use crate::sheet::IntoGiven;
 use crate::units::{Density, Length, Quantity, with_typed_unit};
 
@@ -92,9 +93,12 @@ pub struct DrillingEvent {
 /// Drilling events along a hole.
 #[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
 pub struct DrillingEvents {
-    pub(super) events: Vec<DrillingEvent>,
+    pub(in crate::along) events: Vec<DrillingEvent>,
     /// The file they were read from, and its SHA-256.
-    pub(super) file: Option<(String, String)>,
+    pub(in crate::along) file: Option<(String, String)>,
+    /// The hole that the file names.
+    #[serde(default, skip_serializing_if = "Option::is_none")]
+    pub(in crate::along) hole: Option<Name>,
 }
 
 /// More events are no list that a record can hold.
@@ -146,7 +150,7 @@ impl DrillingEvents {
             ));
         }
         let events = events.iter().map(|event| event.checked()).collect::<Result<Vec<_>>>()?;
-        Ok(DrillingEvents { events, file: None })
+        Ok(DrillingEvents { events, file: None, hole: None })
     }
 
     /// Reads events from a CSV file. Lines that begin with `#` above the column names declare what a
@@ -160,14 +164,35 @@ impl DrillingEvents {
     /// ```
     ///
     /// `kind` is one of losses, gain, tight hole, pack-off, cavings, caliper enlarged, caliper in gauge,
-    /// leak-off test, formation-integrity test. The column `ecd`, or cells of it, may be left out.
-    /// Further columns are ignored.
+    /// leak-off test, formation-integrity test. The column `ecd`, or cells of it, may be left out. A column `remark`
+    /// is not read; any other needs a line `# not_read: its name`.
     ///
     /// # Errors
     /// With file, line, column and what to change: a missing declaration or column, an unknown kind,
     /// decimal commas, and what [`DrillingEvents::from_events`] refuses.
     pub fn read_csv(path: impl AsRef<Path>) -> Result<Self> {
         super::read::read_csv(path.as_ref())
+    }
+
+    /// Those between two measured depths, these included: for a log that does not reach all of them.
+    ///
+    /// # Errors
+    /// When there is none.
+    pub fn between(&self, from: Length, to: Length) -> Result<Self> {
+        let events: Vec<DrillingEvent> =
+            self.events.iter().filter(|event| event.md >= from && event.md <= to).copied().collect();
+        if events.is_empty() {
+            return Err(Error::not_physical(
+                format!(
+                    "The {} events between MD {} and {}",
+                    self.events.len(),
+                    with_typed_unit(from),
+                    with_typed_unit(to)
+                ),
+                "none of them lies there; give depths that hold one.",
+            ));
+        }
+        Ok(DrillingEvents { events, ..self.clone() })
     }
 
     /// The events, as they were given.

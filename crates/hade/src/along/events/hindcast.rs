@@ -97,7 +97,8 @@ impl LimitLog {
             let row = self.at(event.md).map_err(|e| {
                 Error::not_physical(
                     format!("The event \"{}\" at MD {}", event.kind.words(), with_typed_unit(event.md)),
-                    crate::lines::reason(&e) + ".",
+                    crate::lines::reason(&e)
+                        + "; make the log longer, or keep the events in it with events.between(from, to)?.",
                 )
             })?;
             rows.push(held(event, &row, within));

@@ -6,12 +6,19 @@ use std::path::Path;
 use super::event::{DrillingEvent, DrillingEvents, EventKind, MOST};
 use crate::error::Result;
 use crate::field::{DEPTHS, MUD_WEIGHTS, require_measured_depths};
+use crate::frames::Name;
 use crate::lines::{Expected, Lines, Table, reason, shown};
 
 const EXPECTED: Expected = Expected {
     keys: &[&["hole", "datum", "depth_datum", "depth_unit", "mud_weight_unit"]],
+    always: &[
+        (&["datum", "depth_datum"], "# datum: rotary table"),
+        (&["depth_unit"], "# depth_unit: m"),
+        (&["mud_weight_unit"], "# mud_weight_unit: sg"),
+    ],
     file: "a table of events with the columns md, kind, mud_weight",
     names: "md, kind, mud_weight, ecd",
+    besides: &["ecd"],
     units_in_names: false,
     rows: ["event", "events"],
     most: MOST,
@@ -54,7 +61,8 @@ pub(super) fn read<R: Read>(lines: Lines<R>) -> Result<DrillingEvents> {
         };
         events.push(event.checked().map_err(|e| table.bad(reason(&e), "correct the row"))?);
     }
-    Ok(DrillingEvents { events, file: Some(table.source()) })
+    let hole = table.declared().get("hole").map(|name| Name::new(&shown(name)));
+    Ok(DrillingEvents { events, file: Some(table.source()), hole })
 }
 
 #[cfg(test)]

@@ -2,12 +2,13 @@
 
 use super::in_hole::GroundInHole;
 use super::layer::Layer;
+use crate::card::Item;
 use crate::error::{Error, Result};
 use crate::field::InHole;
 use crate::frames::{Azimuth, Borehole, Name};
 use crate::stress::{Horizontals, Stress};
 use crate::units::{Length, Pressure, Quantity, fixed, with_typed_unit};
-use crate::well::{Place, WallInputs, WallSetup};
+use crate::well::{Place, WallInputs, WallSetup, items_beside_rock};
 
 /// Stress, pore pressure and rock at a place of a hole.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -55,6 +56,15 @@ impl AtPlace {
 
     pub(crate) fn layer_name(&self) -> Name {
         self.layer.name
+    }
+
+    /// What the layer states of rock and wall, as results: so that a wall made of these is known to come from here.
+    pub(crate) fn rock_items(&self) -> Vec<Item> {
+        let Layer { rock, seepage, thermal, weak_plane, .. } = self.layer;
+        let mut items = rock.items();
+        // The warming is a result by itself.
+        items.extend(items_beside_rock(seepage, thermal, weak_plane).into_iter().filter(|item| item.symbol != "ΔT"));
+        items
     }
 
     /// The wall of the hole there.

@@ -8,6 +8,7 @@
 
 mod at_place;
 mod depletion;
+mod doubts;
 #[allow(clippy::module_inception)]
 mod ground;
 mod in_hole;
@@ -26,6 +27,7 @@ mod worked;
 
 pub(crate) use at_place::AtPlace;
 pub use depletion::{Depletion, MaxPath, MinPath};
+pub(crate) use doubts::doubts_of_path;
 pub use ground::{Ground, GroundInputs, HorizontalProfiles};
 pub(crate) use in_hole::GroundInHole;
 pub use layer::{Layer, TopPlane};

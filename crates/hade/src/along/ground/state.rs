@@ -10,7 +10,7 @@ use crate::error::Result;
 use crate::frames::{Azimuth, Name};
 use crate::stress::Stress;
 use crate::units::{Angle, Length, Pressure, Warming, fixed};
-use crate::well::{Survey, SurveyTableInputs};
+use crate::well::{Survey, SurveyTableInputs, Wall};
 
 /// Stress, pore pressure and rock where a hole is at a measured depth, from [`Ground::at`].
 #[derive(Clone, Debug, PartialEq)]
@@ -100,6 +100,15 @@ impl GroundState {
     /// When S_Hmax is smaller than S_hmin.
     pub fn stress(&self) -> Result<Stress> {
         self.there.stress()
+    }
+
+    /// The wall of the hole there: this stress carried into the axes of the hole, the layer's rock, and what else is
+    /// said of the layer: how its wall is sealed, warmed or cooled, a plane of weakness, that it creeps.
+    ///
+    /// # Errors
+    /// When a number of the layer is out of its range.
+    pub fn wall(&self) -> Result<Wall> {
+        Wall::of(self.there.wall()?)
     }
 
     /// "KF-3 at MD 3455.00 m".

@@ -1,11 +1,13 @@
 //! The card of stress and pore pressure at a depth of the ground, and its checks by another route.
 
+use super::doubts::doubts_of_path;
 use super::in_hole::GroundInHole;
 use super::layer::Layer;
 use super::state::{GroundState, GroundStateInputs, GroundStateOutcome};
 use crate::along::Ground;
 use crate::card::{Card, Check, Explain, Explanation, Item};
 use crate::error::Result;
+use crate::stress::doubts_of_overburden;
 use crate::units::{Pressure, Quantity, Warming, fixed};
 use crate::well::{Survey, stated_items};
 
@@ -55,6 +57,7 @@ impl Explain for GroundState {
         ];
         results.push(self.sh_max_azimuth.item("A", "azimuth of S_Hmax"));
         results.extend(self.warming.map(|warming| Item::computed("ΔT", "warming of the wall by the mud", warming)));
+        results.extend(self.there.rock_items());
         let mut method = self.ground.method();
         method.words = "The survey gives the place of the hole, the tops or the stated intervals its layer; vertical stress and pore pressure come from their profiles, the horizontal stresses from the layer's ratios of effective stress or from their profiles.".to_owned();
         Explanation {
@@ -90,16 +93,23 @@ impl Explain for GroundState {
 impl GroundState {
     fn notes(&self) -> Vec<String> {
         let Layer { depletion, .. } = self.there.layer;
-        depletion
-            .map(|depletion| {
-                format!(
-                    "{}: {}. The stress path stated for it holds for the state it was measured in.",
-                    self.layer(),
-                    depletion.words()
-                )
-            })
-            .into_iter()
-            .collect()
+        let mut notes = Vec::new();
+        if let Some(depletion) = depletion {
+            notes.push(format!(
+                "{}: {}. The stress path stated for it holds for the state it was measured in.",
+                self.layer(),
+                depletion.words()
+            ));
+        }
+        if let Some(warming) = self.warming {
+            notes.push(format!(
+                "These stresses are those of the ground away from the hole. What the mud does to the wall (ΔT {warming}) is in state.wall()?, not in a wall or a map that is made of the stress alone."
+            ));
+        }
+        notes.extend(doubts_of_overburden(&[(self.tvd, self.sv)]));
+        notes.extend(doubts_of_path(&self.survey, [self.md, self.md]));
+        notes.extend(self.ground.doubts_of(|name| name == self.layer()));
+        notes
     }
 
     fn topics(&self) -> Vec<String> {

@@ -8,7 +8,7 @@ use crate::error::{Error, Result};
 use crate::field::{TemperatureInHole, TemperatureProfile};
 use crate::frames::DatumTie;
 use crate::units::{Expansion, Pressure, Quantity, Warming, with_typed_unit};
-use crate::well::Thermal;
+use crate::well::{Thermal, require_expansion};
 
 /// Both temperatures by depth.
 #[derive(Clone, Debug, PartialEq)]
@@ -31,7 +31,7 @@ impl ThermalProperties {
         if !(e.si().is_finite() && e.si() > 0.0) {
             return Err(Error::out_of_range("Young's modulus E", with_typed_unit(e), "above zero"));
         }
-        crate::units::require_not_negative("thermal expansion α_T", self.expansion)?;
+        require_expansion(self.expansion)?;
         Ok(self)
     }
 }

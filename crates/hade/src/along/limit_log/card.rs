@@ -7,8 +7,10 @@ use super::limit_log::{LimitLog, LogInputs};
 use super::row::{LogRow, ends};
 use super::steps::{governing, steps, stretch_words, stretches_words};
 use super::summary::LogOutcome;
+use crate::along::ground::doubts_of_path;
 use crate::card::{Card, Check, Explain, Explanation, Figure, Formula, Item, Method};
 use crate::error::Result;
+use crate::stress::doubts_of_overburden;
 use crate::units::{Angle, Quantity, as_typed, fixed};
 use crate::well::stated_items;
 
@@ -187,6 +189,30 @@ impl LimitLog {
             ));
         }
         notes.extend(outcome.friction.iter().map(FrictionAlong::note));
+        for section in &self.sections {
+            if section.from < self.choices.from || section.to > self.choices.to {
+                notes.push(format!(
+                    "WARNING: {} runs from MD {} to {} m, and the log only over {} of it: nothing is said of the rest.",
+                    section.name(),
+                    fixed(section.from.si(), 1),
+                    fixed(section.to.si(), 1),
+                    stretch_words([
+                        if section.from < self.choices.from { self.choices.from } else { section.from },
+                        if section.to > self.choices.to { self.choices.to } else { section.to },
+                    ])
+                ));
+            }
+        }
+        if self.ground.is_warmed() {
+            notes.push(
+                "The wall is warmed or cooled by the mud as stated at every state of the mud, at rest and swabbed too; mud at rest comes towards the temperature of the ground, and a wall that is no longer cooled carries more hoop stress."
+                    .to_owned(),
+            );
+        }
+        let overburden: Vec<_> = outcome.rows.iter().map(|row| (row.tvd, row.sv)).collect();
+        notes.extend(doubts_of_overburden(&overburden));
+        notes.extend(doubts_of_path(&self.survey, [self.choices.from, self.choices.to]));
+        notes.extend(self.ground.doubts_of(|name| outcome.rows.iter().any(|row| row.layer() == name)));
         for layer in self.ground.layers() {
             if let Some(depletion) = layer.depletion {
                 notes.push(format!("{}: {}.", layer.name(), depletion.words()));
@@ -201,7 +227,7 @@ impl LimitLog {
         for section in &outcome.sections {
             for held in section.mud.iter().filter(|held| held.margin.si() < 0.0) {
                 notes.push(format!(
-                    "{}: the mud {} passes the {} by {} MPa at MD {} m.",
+                    "WARNING: {}: the mud {} lies outside the range, past its {} by {} MPa at MD {} m.",
                     section.name,
                     held.state.words(),
                     if held.against_bottom { "bottom" } else { "top" },

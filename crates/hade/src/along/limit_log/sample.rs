@@ -4,7 +4,7 @@ use super::choices::LogChoices;
 use crate::along::ground::GroundInHole;
 use crate::error::{Error, Result};
 use crate::interrupt;
-use crate::units::{Length, Quantity, with_typed_unit};
+use crate::units::{Length, Quantity, require_between, with_typed_unit};
 use crate::well::{Place, Survey};
 
 /// A depth of the log, and the layer that is looked at there.
@@ -13,6 +13,9 @@ pub(super) type Look = (Place, usize);
 /// Every look from the beginning of a log to its end. A contact is looked at twice, in the layer above
 /// and in the one below.
 pub(super) fn looks(ground: &GroundInHole<'_>, survey: &Survey, choices: &LogChoices) -> Result<Vec<Look>> {
+    let (first, last) = (survey.first_md(), survey.last_md());
+    require_between("beginning of the log, measured depth", choices.from, first, last)?;
+    require_between("end of the log, measured depth", choices.to, first, last)?;
     let mut places = Vec::new();
     for md in at_step(choices) {
         interrupt::check();

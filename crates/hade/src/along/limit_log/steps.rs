@@ -2,7 +2,7 @@
 
 use super::limit_log::LimitLog;
 use super::row::{LogRow, ends};
-use super::section::{SectionEnd, SectionRange};
+use super::section::{HoleSection, SectionEnd, SectionRange};
 use super::summary::LogOutcome;
 use crate::along::ground::{AtPlace, GroundInHole};
 use crate::card::{Column, Explain, Step, Table};
@@ -29,9 +29,11 @@ pub(super) fn steps(log: &LimitLog, outcome: &LogOutcome) -> Vec<Step> {
         steps.extend(wall_steps(log, &state));
     }
     steps.extend(outcome.friction.as_ref().and_then(|friction| friction.step(&outcome.rows)));
+    steps.push(Step::Table { table: log.ground.table() });
     steps.push(Step::Table { table: ground_table(outcome) });
     steps.push(Step::Table { table: limits_table(outcome) });
     steps.push(Step::Table { table: sections_table(outcome) });
+    steps.extend(muds_table(log).map(|table| Step::Table { table }));
     if outcome.sections.iter().any(|section| !section.mud.is_empty()) {
         steps.push(Step::Table { table: mud_table(&outcome.sections) });
     }
@@ -223,6 +225,39 @@ fn sections_table(outcome: &LogOutcome) -> Table {
     }
 }
 
+/// The muds as they were stated; `None` where none was.
+fn muds_table(log: &LimitLog) -> Option<Table> {
+    let stated =
+        |pressure: Option<Pressure>| pressure.map_or_else(|| "–".to_owned(), |pressure| as_typed(pressure.in_mpa()));
+    let row = |section: &HoleSection| {
+        let mud = section.mud?;
+        let ecd = mud.circulating_density.map_or_else(|| "–".to_owned(), |density| as_typed(density.in_sg()));
+        Some(vec![
+            section.name().to_owned(),
+            as_typed(section.from.in_m()),
+            as_typed(section.to.in_m()),
+            as_typed(mud.static_density.in_sg()),
+            ecd,
+            stated(mud.swab),
+            stated(mud.surge),
+        ])
+    };
+    let rows: Vec<Vec<String>> = log.sections.iter().filter_map(row).collect();
+    (!rows.is_empty()).then(|| Table {
+        caption: "The muds that the sections are to be drilled with, as stated".to_owned(),
+        columns: vec![
+            Column::text("section"),
+            Column::number("from MD", "m"),
+            Column::number("to MD", "m"),
+            Column::number("mud weight", "sg"),
+            Column::number("ECD", "sg"),
+            Column::number("swab", "MPa"),
+            Column::number("surge", "MPa"),
+        ],
+        rows,
+    })
+}
+
 fn mud_table(sections: &[SectionRange]) -> Table {
     let rows = sections.iter().flat_map(|section| {
         section.mud.iter().map(|held| {
@@ -232,7 +267,7 @@ fn mud_table(sections: &[SectionRange]) -> Table {
                 if held.against_bottom { "bottom" } else { "top" }.to_owned(),
                 fixed(held.margin.in_mpa(), 2),
                 fixed(held.md.si(), 1),
-                if held.margin.si() < 0.0 { "passed" } else { "kept" }.to_owned(),
+                if held.margin.si() < 0.0 { "outside" } else { "inside" }.to_owned(),
             ]
         })
     });
@@ -244,7 +279,7 @@ fn mud_table(sections: &[SectionRange]) -> Table {
             Column::text("against"),
             Column::number("left to it", "MPa"),
             Column::number("at MD", "m"),
-            Column::text("end"),
+            Column::text("of the range"),
         ],
         rows: rows.collect(),
     }

@@ -256,7 +256,7 @@ impl SectionEnsemble {
         let left = f64::from(self.draws.count) - outcome.counted;
         if left > 0.0 {
             notes.push(format!(
-                "{} of {} draws are left out, because at some depth no wall can have their numbers.",
+                "{} of {} draws are left out, because at some depth they have S_Hmax less than S_hmin, a strength below zero or a Poisson's ratio outside 0 to 0.5; where these are many, look at the standard deviations, and at the correlation of S_Hmax and S_hmin.",
                 fixed(left, 0),
                 self.draws.count
             ));
@@ -268,6 +268,7 @@ impl SectionEnsemble {
         if self.log.choices().allowed_width.si() > 0.0 {
             notes.push("The log allows failing arcs and may keep margins; here nothing is allowed to fail and no margin is kept.".to_owned());
         }
+        notes.push("Bottom and top are bare limits of shear and parting; balance with the pore pressure is not part of keeping a depth.".to_owned());
         notes.push("Other depths than those printed are not drawn; the log prints those that govern.".to_owned());
         notes.push(
             "The draws say what the stated standard deviations say, no more: where these are guesses, so is every share."

@@ -49,7 +49,30 @@ fn events_are_told_on_their_side_of_the_limit() {
     let events = DrillingEvents::from_events(&[outside]).unwrap();
     let e = log.hindcast(&events, 0.mpa()).unwrap_err().to_string();
     assert!(e.contains("\"gain\" at MD 2500 m") && e.contains("between 1000 m and 2000 m"), "{e}");
+    assert!(e.contains("events.between(from, to)?"), "{e}");
     assert!(log.hindcast(&events, (-1).mpa()).is_err());
+}
+
+#[test]
+fn events_between_two_depths_and_of_another_hole() {
+    let at =
+        |md: f64| DrillingEvent { md: md.m(), kind: EventKind::Gain, mud_weight: 1.2.sg(), circulating_density: None };
+    let events = DrillingEvents::from_events(&[at(900.0), at(1000.0), at(1500.0), at(2500.0)]).unwrap();
+    let some = events.between(1000.m(), 2000.m()).unwrap();
+    assert_eq!(some.events(), [at(1000.0), at(1500.0)]);
+    let said = events.between(1001.m(), 1002.m()).unwrap_err().to_string();
+    assert!(said.contains("none of them lies there"), "{said}");
+    let ground =
+        by_ratios(vec![Layer::from("rock", at_rt(300.0), shale()).unwrap().horizontal_ratios(0.6, 0.75).unwrap()]);
+    let log =
+        LimitLog::with_choices(&survey(120.0).named("KF-9"), &ground, choices(1000.0, 2000.0, 200.0, 60.0)).unwrap();
+    let warned = |hole: Option<&str>| {
+        let events = DrillingEvents { hole: hole.map(crate::frames::Name::new), ..some.clone() };
+        let hindcast = log.hindcast(&events, 0.5.mpa()).unwrap();
+        assert_eq!(Hindcast::compute(hindcast.inputs()).unwrap().card(), hindcast.card());
+        hindcast.card().explanation.notes.iter().any(|note| note.contains("the events are of KF-7"))
+    };
+    assert!(warned(Some("KF-7")) && !warned(Some("KF-9")) && !warned(None));
 }
 
 /// Every input of a log and of a hindcast is found on the sheet.

@@ -226,3 +226,36 @@ fn stress_beyond_friction_is_said_where_it_is() {
     assert_eq!(sections.friction().unwrap().beyond, friction.beyond);
     assert!(log.with_friction(-0.1).unwrap_err().to_string().contains("coefficient of friction"));
 }
+
+/// What can be but seldom is, and what the log leaves out, is said on its card.
+#[test]
+fn doubtful_input_and_what_is_left_out_are_said() {
+    let rock = |strength| Rock { strength, ..shale() };
+    let layer =
+        |strength| Layer::from("rock", at_rt(300.0), rock(strength)).unwrap().horizontal_ratios(0.6, 0.75).unwrap();
+    let notes = |ground: &Ground, survey: &Survey, sections: &[HoleSection]| {
+        let log = LimitLog::with_choices(survey, ground, choices(1000.0, 2000.0, 100.0, 0.0)).unwrap();
+        let log = if sections.is_empty() { log } else { log.with_sections(sections).unwrap() };
+        assert_eq!(LimitLog::compute(log.inputs()).unwrap().card(), log.card());
+        log.card().explanation.notes.join("\n")
+    };
+    let plain = by_ratios(vec![layer(shale().strength)]);
+    assert!(!notes(&plain, &survey(120.0), &[]).contains("DOUBTFUL"));
+    let exchanged = by_ratios(vec![layer(Strength::mohr_coulomb(24.mpa(), 6.2.deg()))]);
+    assert!(notes(&exchanged, &survey(120.0), &[]).contains("rock: DOUBTFUL: the friction angle 6.2°"));
+    // Stresses in bar, read as MPa.
+    let inputs = GroundInputs { sv: gradient("S_v", 226.0), ..plain.inputs() };
+    let said = notes(&Ground::new(inputs).unwrap(), &survey(120.0), &[]);
+    assert!(said.contains("is 226.0 kPa for each metre"), "{said}");
+    let sharp = [(0.0, 0.0), (1400.0, 0.0), (1430.0, 15.0), (4000.0, 15.0)].map(|(md, i)| station(md, i, 80.0));
+    let said = notes(&plain, &Survey::from_stations(&sharp).unwrap(), &[]);
+    assert!(said.contains("between the stations at MD 1400.0 and 1430.0 m the hole turns by 15.0° in 30 m"), "{said}");
+    let said = notes(&plain, &survey(120.0), &[HoleSection::between("8½ in", 1500.m(), 2600.m())]);
+    assert!(
+        said.contains("8½ in runs from MD 1500.0 to 2600.0 m, and the log only over MD 1500.0 to 2000.0 m"),
+        "{said}"
+    );
+    let beyond = LimitLog::with_choices(&survey(120.0), &plain, choices(1000.0, 4200.0, 100.0, 0.0));
+    let said = beyond.unwrap_err().to_string();
+    assert!(said.contains("end of the log, measured depth is 4200 m"), "{said}");
+}

@@ -1,6 +1,7 @@
 //! Walls warmed or cooled by temperatures that change with depth.
 
 use super::*;
+use crate::card::Standing;
 use crate::field::TemperatureProfile;
 use crate::units::Temperature;
 
@@ -105,7 +106,11 @@ fn what_says_two_differences_or_none_is_refused() {
     assert!(at(expanding().thermal(own)).contains("keep one of the two"));
     assert!(layer().thermal_properties(0.gpa(), 1e-5.per_kelvin()).unwrap_err().to_string().contains("above zero"));
     assert!(
-        layer().thermal_properties(1.gpa(), (-1e-5).per_kelvin()).unwrap_err().to_string().contains("zero or more")
+        layer()
+            .thermal_properties(1.gpa(), (-1e-5).per_kelvin())
+            .unwrap_err()
+            .to_string()
+            .contains("between 0 and 0.001 1/K")
     );
     // Nothing is extrapolated, and the whole log ends where the temperatures do.
     let points = |points: &[(f64, f64)]| {
@@ -118,4 +123,38 @@ fn what_says_two_differences_or_none_is_refused() {
     assert!(e.contains("MD 2000 m") && e.contains("temperature of the mud at the wall") && e.contains("1500 m"), "{e}");
     let log = LimitLog::along(&vertical(), &ground).unwrap();
     assert_eq!((log.choices().from, log.choices().to), (500.m(), 1500.m()));
+}
+
+/// The wall of the state is that of the log; a wall of the stress alone is not, and the card says so.
+#[test]
+fn the_wall_of_a_state_is_cooled_sealed_and_weakened_as_its_layer() {
+    let weak = WeakPlane {
+        plane: Plane { strike: azimuth(20.0), dip: 35.deg() },
+        cohesion: 1.mpa(),
+        friction_angle: 22.deg(),
+    };
+    let layer = expanding().partly_sealed(0.9, 0.5).unwrap().weak_plane(weak);
+    let ground = by_ratios(vec![layer]).with_temperatures(&geothermal(), &mud(45.0)).unwrap();
+    let survey = survey(120.0);
+    let state = ground.at(&survey, 2400.m()).unwrap();
+    let wall = state.wall().unwrap();
+    let log = LimitLog::with_choices(&survey, &ground, choices(500.0, 3000.0, 100.0, 0.0)).unwrap();
+    let row = log.at(2400.m()).unwrap();
+    assert_eq!(wall.limits().initiation.pressure(), row.initiation);
+    assert_eq!(wall.limits().lower_shear.pressure(), row.lower_shear);
+    let thermal = Thermal { warming: state.warming.unwrap(), youngs_modulus: 12.gpa(), expansion: 1e-5.per_kelvin() };
+    let chain = survey.at(2400.m()).unwrap().attitude.chain().unwrap();
+    let stress = chain.carry(&state.stress().unwrap());
+    let by_hand = Wall::new(WallInputs { stress, pore: state.pore, rock: shale() }).unwrap();
+    let by_hand = by_hand.partly_sealed(0.9, 0.5).unwrap().thermal(thermal).unwrap().weak_plane(weak).unwrap();
+    assert_eq!(by_hand.limits().initiation.pressure(), row.initiation);
+    let card = state.card();
+    assert!(card.explanation.notes.iter().any(|note| note.contains("state.wall()?")));
+    // Every number of the wall is a result of the state, so that the sheet knows where it comes from.
+    for item in wall.limits().explain().inputs.iter().skip(1).filter(|item| item.standing == Standing::Value) {
+        assert!(card.explanation.results.iter().any(|result| result.same_value(item)), "{item:?}");
+    }
+    let hot = layer.thermal_properties(12.gpa(), 12.per_kelvin()).unwrap_err().to_string();
+    assert!(hot.contains("between 0 and 0.001 1/K"), "{hot}");
+    assert!(log.card().explanation.notes.iter().any(|note| note.contains("at rest and swabbed too")));
 }

@@ -10,7 +10,7 @@ use super::pressure_profile::PressureProfile;
 use crate::error::{Error, Result};
 use crate::field::declared::{DEPTHS, PRESSURES, TEMPERATURES, declared_datum};
 use crate::frames::{Datum, DatumTie, LEVEL_KEYS, Name, declared_tie};
-use crate::lines::{Column, Expected, Lines, Row, Table, Unit, Units, heading, reason, shown};
+use crate::lines::{Column, Expected, Lines, Row, Table, Unit, Units, reason, shown, without_unit};
 use crate::units::{Length, Temperature};
 
 /// More rows than this are no table by depth but a log.
@@ -18,8 +18,10 @@ const MOST_ROWS: usize = 100_000;
 
 const OF_PRESSURE: Expected = Expected {
     keys: &[&["hole", "datum", "depth_datum", "depth_unit", "pressure_unit"], &LEVEL_KEYS],
+    always: &[(&["datum", "depth_datum"], "# datum: rotary table"), (&["depth_unit"], "# depth_unit: m")],
     file: "a table with the columns tvd and pressure",
     names: "tvd, pressure",
+    besides: &[],
     units_in_names: true,
     rows: ["row", "rows"],
     most: MOST_ROWS,
@@ -94,7 +96,7 @@ fn columns<R: Read, Q>(table: &Table<R>, column: &str, units: &Units<Q>) -> Resu
         &["tvd", "true vertical depth", "tvdss"],
         "name the column of true vertical depths tvd (measured depths are converted with a survey first)",
     )?;
-    let value = table.column_or(&[&heading(column).0], "ask for one of the columns of the file")?;
+    let value = table.column_or(&[without_unit(column)], "ask for one of the columns of the file")?;
     let declared = table.declared();
     let datum = declared_datum(declared)?;
     if table.is_named(&depth, "tvdss") && datum != Datum::MeanSeaLevel {
@@ -178,7 +180,7 @@ mod tests {
     fn an_undeclared_datum_or_unit_is_refused() {
         assert_eq!(
             with("# datum: rotary table\n", ""),
-            "p.csv, line 6: the file does not say which level its depths count from; declare it with a line \"# datum: …\" above the column names: rotary table, mean sea level, ground or mudline."
+            "p.csv, line 6: the file does not say which level its depths count from; add a line \"# datum: rotary table | mean sea level | ground | mudline\" above the column names."
         );
         assert!(with("datum: rotary table", "datum: sea").contains("is no datum"));
         assert!(with("# hole: X-1", "# depth_datum: mudline").contains("keep one"));

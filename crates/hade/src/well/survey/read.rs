@@ -13,8 +13,15 @@ use crate::units::{Angle, Length};
 
 const EXPECTED: Expected = Expected {
     keys: KEYS,
+    always: &[
+        (&["north"], "# north: true | grid | magnetic"),
+        (&["depth_datum", "datum"], "# depth_datum: rotary table"),
+        (&["depth_unit"], "# depth_unit: m"),
+        (&["angle_unit"], "# angle_unit: deg"),
+    ],
     file: "a survey with columns md, inclination, azimuth",
     names: "md, inclination, azimuth",
+    besides: &[],
     units_in_names: false,
     rows: ["station", "stations"],
     most: MOST_STATIONS,

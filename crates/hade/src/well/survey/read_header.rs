@@ -8,7 +8,7 @@ use crate::units::Length;
 
 /// The keys that mean something; every other `#` line is a remark.
 pub(super) const KEYS: &[&[&str]] =
-    &[&["hole", "depth_unit", "angle_unit", "depth_datum"], &NORTH_KEYS, &LEVEL_KEYS, &TIE_IN_KEYS];
+    &[&["hole", "depth_unit", "angle_unit", "depth_datum", "datum"], &NORTH_KEYS, &LEVEL_KEYS, &TIE_IN_KEYS];
 const TIE_IN_KEYS: [&str; 3] = ["tie_in_north", "tie_in_east", "tie_in_tvd"];
 
 const DEPTHS: Units<Length> = Units {
@@ -33,12 +33,13 @@ pub(super) fn settle(declared: &Declarations, site: Option<Site>) -> Result<Head
     let north = DeclaredNorth::read(declared, site, "azimuths", "Survey")?;
     let depth = declared.unit(&DEPTHS, None)?;
     declared.require_degrees()?;
-    match declared.get("depth_datum") {
+    let key = if declared.get("datum").is_some() { "datum" } else { "depth_datum" };
+    match declared.get(key) {
         None => return Err(declared.lacking("where its depths count from", "# depth_datum: rotary table")),
         Some(datum) if ["rotary table", "drill floor"].contains(&datum.to_lowercase().as_str()) => {}
         Some(datum) => {
             return Err(declared.bad(
-                "depth_datum",
+                key,
                 format!("measured depths from \"{}\" are not read", shown(datum)),
                 "give them from the rotary table (or drill floor)",
             ));

@@ -13,7 +13,7 @@ use crate::error::{Error, Result};
 use crate::frames::vector::{V3, add};
 use crate::frames::{Datum, DatumTie, Name, North, Site};
 use crate::sheet::IntoGiven;
-use crate::units::{Length, Quantity, as_typed, with_typed_unit};
+use crate::units::{Angle, Length, Quantity, as_typed, with_typed_unit};
 
 /// More stations than this are no survey but a continuous log.
 pub(super) const MOST_STATIONS: usize = 100_000;
@@ -283,6 +283,15 @@ impl Survey {
             let arc = Arc { from: top.t, to: bottom.t, beta: *beta, length: bottom.md - top.md };
             Some(Leg { above, arc, top: *top, bottom: *bottom, start: *start, end: *end })
         })
+    }
+
+    /// The two stations between which the hole turns most for its length, where these overlap a stretch of measured
+    /// depth, and by how much in 30 m.
+    pub(crate) fn sharpest_turn(&self, from: Length, to: Length) -> Option<(Length, Length, Angle)> {
+        let inside = self.legs().filter(|leg| leg.bottom.md >= from.si() && leg.top.md <= to.si());
+        let turns = inside.map(|leg| (leg.top.md, leg.bottom.md, leg.arc.beta / leg.arc.length * 30.0));
+        let sharpest = turns.max_by(|a, b| a.2.total_cmp(&b.2))?;
+        Some((Length::m(sharpest.0), Length::m(sharpest.1), Angle::from_si(sharpest.2)))
     }
 
     /// The leg that holds a measured depth; at a station, the leg above it.

@@ -61,7 +61,7 @@ pub use range::{
 };
 pub(crate) use range::{Conditions, Ends, nearest_to_failing, pushed_out_above};
 pub use sensitivity::{ChangedEnds, ChangedRange, Sensitivity, SensitivityInputs, SensitivityOutcome, Vary};
-pub(crate) use setup::{Seepage, items_beside_rock};
+pub(crate) use setup::{Seepage, items_beside_rock, require_expansion};
 pub use setup::{Thermal, WallInputs, WallSetup, WeakPlane};
 pub use shear::{Mode, WallDirection};
 pub use stress::{

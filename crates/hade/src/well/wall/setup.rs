@@ -36,6 +36,28 @@ pub struct Thermal {
     pub expansion: Expansion,
 }
 
+impl Thermal {
+    /// Refuses what no rock and no mud has.
+    pub(crate) fn checked(self) -> Result<Self> {
+        self.warming.finite("temperature difference")?;
+        let e = self.youngs_modulus;
+        if !(e.si().is_finite() && e.si() > 0.0) {
+            return Err(Error::out_of_range(
+                "Young's modulus E",
+                with_typed_unit(e),
+                "above zero; a thermal stress cannot be had without it",
+            ));
+        }
+        require_expansion(self.expansion)?;
+        Ok(self)
+    }
+
+    /// E α_T ΔT / (1 − ν), what it adds to hoop and axial stress, Pa.
+    pub(crate) fn stress(&self, poisson: f64) -> f64 {
+        self.youngs_modulus.si() * self.expansion.si() * self.warming.si() / (1.0 - poisson)
+    }
+}
+
 /// A plane of weakness through the wall, such as bedding: it slips before the rock beside it fails.
 #[derive(Clone, Copy, Debug, PartialEq, Serialize, Deserialize)]
 pub struct WeakPlane {
@@ -86,9 +108,7 @@ impl WallSetup {
 
     /// E α_T ΔT / (1 − ν), what heating adds to hoop and axial stress.
     pub(crate) fn thermal_stress(&self) -> f64 {
-        self.thermal.map_or(0.0, |t| {
-            t.youngs_modulus.si() * t.expansion.si() * t.warming.si() / (1.0 - self.inputs.rock.poisson)
-        })
+        self.thermal.map_or(0.0, |thermal| thermal.stress(self.inputs.rock.poisson))
     }
 
     /// Refuses what no wall has.
@@ -109,18 +129,7 @@ impl WallSetup {
             require_between("Biot's coefficient α", seepage.biot, 0.0, 1.0)?;
             require_between("sealing of the wall", seepage.sealing, 0.0, 1.0)?;
         }
-        if let Some(thermal) = self.thermal {
-            thermal.warming.finite("temperature difference")?;
-            let e = thermal.youngs_modulus;
-            if !(e.si().is_finite() && e.si() > 0.0) {
-                return Err(Error::out_of_range(
-                    "Young's modulus E",
-                    with_typed_unit(e),
-                    "above zero; a thermal stress cannot be had without it",
-                ));
-            }
-            require_not_negative("thermal expansion α_T", thermal.expansion)?;
-        }
+        self.thermal.map(Thermal::checked).transpose()?;
         if let Some(weak) = self.weak_plane {
             weak.plane.axes()?;
             require_not_negative("cohesion of the plane of weakness", weak.cohesion)?;
@@ -210,6 +219,19 @@ impl WallSetup {
         }
         topics
     }
+}
+
+/// Refuses what no rock expands by: in 1/K rock has some 10⁻⁵, and a number of some units is that of another unit.
+pub(crate) fn require_expansion(expansion: Expansion) -> Result<Expansion> {
+    const MOST: f64 = 1e-3;
+    if (0.0..=MOST).contains(&expansion.si()) {
+        return Ok(expansion);
+    }
+    Err(Error::out_of_range(
+        "thermal expansion α_T",
+        format!("{} 1/K", as_typed(expansion.si())),
+        format!("between 0 and {MOST} 1/K (rock has some 1e-5); a value in 1e-6/K is typed (12e-6).per_kelvin()"),
+    ))
 }
 
 /// What a wall has beside its stress and rock as inputs of a card: how it is sealed, its temperature, a plane of

@@ -8,6 +8,7 @@ use super::shear::ShearWall;
 use crate::card::{Card, Explain, Item};
 use crate::error::Result;
 use crate::frames::Attitude;
+use crate::frames::vector::dot;
 use crate::interrupt;
 use crate::rock::Strength;
 use crate::units::{Pressure, Quantity};
@@ -121,6 +122,13 @@ impl Wall {
 
     pub(super) fn pore(&self) -> Pressure {
         self.setup.inputs.pore
+    }
+
+    /// The total normal stress on a level plane, in the far field.
+    pub(super) fn vertical_stress(&self) -> Pressure {
+        let down = self.attitude.matrix().map_or([0.0; 3], |rows| rows.map(|row| row[2]));
+        let stress = self.setup.inputs.stress.tensor();
+        Pressure::from_si(dot(down, stress.times(down)))
     }
 
     pub(super) fn at_pressure(&self, pressure: Pressure) -> Result<AtPressure> {

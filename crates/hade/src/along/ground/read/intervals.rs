@@ -15,8 +15,27 @@ use crate::units::Length;
 
 const EXPECTED: Expected = Expected {
     keys: &[&["hole", "datum", "depth_datum", "depth_unit"], &ROCK_KEYS, &NORTH_KEYS],
+    always: &[
+        (&["datum", "depth_datum"], "# datum: rotary table"),
+        (&["depth_unit"], "# depth_unit: m"),
+        (&["pressure_unit"], "# pressure_unit: MPa"),
+        (&["angle_unit"], "# angle_unit: deg"),
+    ],
     file: "a table of intervals with the columns from, to, layer, poisson, tensile_strength, ucs or cohesion, friction_angle",
-    names: "from, to, layer, poisson, tensile_strength, ucs, friction_angle",
+    names: "from, to, layer, poisson, tensile_strength, ucs or cohesion, friction_angle",
+    besides: &[
+        "k_min",
+        "k_max",
+        "sh_max_azimuth",
+        "drawdown",
+        "path_min",
+        "path_max",
+        "wall",
+        "biot",
+        "sealing",
+        "youngs_modulus",
+        "thermal_expansion",
+    ],
     units_in_names: false,
     rows: ["interval", "intervals"],
     most: MOST,

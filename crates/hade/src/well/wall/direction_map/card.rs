@@ -8,10 +8,10 @@ use super::map_of::MapOf;
 use crate::card::{Card, Check, Column, Explain, Explanation, Item, Method, Step, Table};
 use crate::error::Result;
 use crate::frames::{Attitude, Azimuth};
-use crate::units::{Angle, Pressure, Quantity, as_typed, fixed};
+use crate::units::{Angle, Pressure, Quantity, Warming, as_typed, fixed, with_typed_unit};
 use crate::well::wall::limits::{Limits, capitalised};
 use crate::well::wall::method;
-use crate::well::wall::setup::WallSetup;
+use crate::well::wall::setup::{WallSetup, items_beside_rock};
 
 /// A table of the map prints these inclinations and every 30° of azimuth.
 const PRINTED: [f64; 7] = [0.0, 15.0, 30.0, 45.0, 60.0, 75.0, 90.0];
@@ -45,6 +45,7 @@ impl Explain for DirectionMap {
         let mut inputs =
             vec![map.stress.item("S", "stress in north, east, down"), Item::typed("P_p", "pore pressure", map.pore)];
         inputs.extend(map.rock.items());
+        inputs.extend(items_beside_rock(None, self.inputs.thermal, None));
         inputs.push(Item::typed("Δ", "step of the map in inclination and azimuth", map.step).chosen());
         inputs.push(Item::choice("", "what is mapped", self.shows().words()));
         inputs.extend(self.inputs.path.iter().flat_map(|path| path.items.clone()));
@@ -57,7 +58,11 @@ impl Explain for DirectionMap {
             steps: self.steps(&outcome),
             figures: vec![figure(self, &outcome, &found)],
             notes: self.notes(&outcome, &found),
-            topics: ["wall", "limits", "elastic", "stress"].map(str::to_owned).to_vec(),
+            topics: ["wall", "limits", "elastic", "stress"]
+                .into_iter()
+                .chain(self.inputs.thermal.map(|_| "thermal"))
+                .map(str::to_owned)
+                .collect(),
         }
     }
 
@@ -107,8 +112,8 @@ impl DirectionMap {
                 self.named(&found.worst)
             )
         };
-        if let Some(planned) = outcome.on_path.last() {
-            said.push_str(&format!("; planned direction {}", shown(*planned)));
+        if let Some((path, planned)) = self.inputs.path.as_ref().zip(outcome.on_path.last()) {
+            said.push_str(&format!("; {} {}", path.last_words(), shown(*planned)));
         }
         if outcome.share_without > 0.0 {
             said.push_str(&format!(
@@ -129,8 +134,12 @@ impl DirectionMap {
             let name = format!("{word} of the mapped directions ({words})");
             items.extend(direction.limit.map(|p| Item::computed(&format!("{symbol},{word}"), name, p)));
         }
-        if let Some(Some(planned)) = outcome.on_path.last() {
-            items.push(Item::computed(&format!("{symbol},planned"), "in the planned direction", *planned));
+        if let Some((path, Some(planned))) = self.inputs.path.as_ref().zip(outcome.on_path.last()) {
+            let (of, name) = match path.directions.len() {
+                1 => ("planned", "in the planned direction"),
+                _ => ("end", "in the direction of the end of the path"),
+            };
+            items.push(Item::computed(&format!("{symbol},{of}"), name, *planned));
         }
         let share = fixed(100.0 * outcome.share_without, 2);
         items.push(Item::new(
@@ -152,7 +161,7 @@ impl DirectionMap {
         );
         // The method of one wall is that of all.
         let direction = self.shown_direction(&self.worked_out());
-        let mut method = match wall_of(map, direction) {
+        let mut method = match wall_of(&self.inputs, direction) {
             Ok(wall) => method::with_strength(&wall, &words),
             Err(_) => Method { words, ..Method::default() },
         };
@@ -185,7 +194,7 @@ impl DirectionMap {
     fn steps(&self, outcome: &MapOutcome) -> Vec<Step> {
         let (i, a) = self.shown_direction(outcome);
         let hole = Attitude { inclination: Angle::from_si(i), azimuth: Azimuth::from_true_north(Angle::from_si(a)) };
-        let which = if self.inputs.path.is_some() { "planned" } else { "best" };
+        let which = self.inputs.path.as_ref().map_or("best of the mapped directions", |path| path.last_words());
         let mut steps = vec![
             Step::words(format!("Every direction is worked as this one, the {which} ({}):", hole.words())),
             Step::matrix("S", &self.inputs.map.stress.rows_in_mpa(), 4, "MPa", "north, east, down"),
@@ -194,7 +203,7 @@ impl DirectionMap {
             steps.push(Step::matrix("Q", &chain.matrix(), 6, "", "rows: top of hole, right, along the hole"));
             steps.push(Step::worked("S' = Q S Qᵀ".to_owned()));
         }
-        if let Ok(wall) = wall_of(&self.inputs.map, (i, a)) {
+        if let Ok(wall) = wall_of(&self.inputs, (i, a)) {
             let limits = wall.limits();
             let worked = match self.shows() {
                 MapOf::LowerShear => vec![limits.lower_shear],
@@ -245,7 +254,9 @@ impl DirectionMap {
             vec![i, a, value.map_or_else(|| "none".to_owned(), |p| fixed(p.in_mpa(), 2))]
         });
         Some(Table {
-            caption: "Along the path, downward; directions that hardly differ are left out, the last is the planned direction".to_owned(),
+            caption:
+                "Along the path, downward; directions that hardly differ are left out, the last is that of its end"
+                    .to_owned(),
             columns: vec![
                 Column::number("inclination", "°"),
                 Column::number("azimuth", "°"),
@@ -274,7 +285,7 @@ impl DirectionMap {
             }
         }
         notes.push(format!(
-            "Best and worst are of the mapped directions, {}° apart; between them the limit may be a little better or worse. The planned direction is exact.",
+            "Best and worst are of the mapped directions, {}° apart; between them the limit may be a little better or worse. The directions of a path are exact.",
             as_typed(self.inputs.map.step.in_deg())
         ));
         notes.push(match of {
@@ -286,11 +297,22 @@ impl DirectionMap {
                 "Where the path rises it is shown at the lower end of its line, which has the same wall.".to_owned(),
             );
         }
-        notes.push("The wall is impermeable and has the temperature of the rock; the stress, pore pressure and rock are the same for every direction. The least stress S_3 does not depend on it.".to_owned());
-        let map = &self.inputs.map;
-        if let Ok(wall) = wall_of(map, (0.0, 0.0)) {
+        let temperature = match self.inputs.thermal {
+            None => "has the temperature of the rock".to_owned(),
+            Some(thermal) => format!(
+                "is {} by {}",
+                if thermal.warming.si() < 0.0 { "cooled" } else { "warmed" },
+                with_typed_unit(Warming::from_si(thermal.warming.si().abs()))
+            ),
+        };
+        notes.push(format!("The wall is impermeable and {temperature}; the stress, pore pressure and rock are the same for every direction. The least stress S_3 does not depend on it."));
+        if self.inputs.path.as_ref().is_some_and(|path| path.directions.len() > 1) {
+            notes.push("Along the path too the stress, pore pressure and rock are those of the one place that is mapped; for the limits at every depth of the path there is the log.".to_owned());
+        }
+        if let Ok(wall) = wall_of(&self.inputs, (0.0, 0.0)) {
             notes.extend(WallSetup::notes(&wall.setup));
-            notes.extend(map.rock.strength.warning().map(str::to_owned));
+            notes.extend(self.inputs.map.rock.strength.warning().map(str::to_owned));
+            notes.extend(self.inputs.map.rock.doubts());
         }
         notes
     }

@@ -20,10 +20,12 @@ use crate::well::wall::wall::Wall;
 const LOOKS: usize = 5;
 
 /// The wall of a hole of any direction, by the chain of its attitude.
-pub(super) fn wall_of(inputs: &MapInputs, (inclination, azimuth): (f64, f64)) -> Result<Wall> {
+pub(super) fn wall_of(inputs: &DirectionMapInputs, (inclination, azimuth): (f64, f64)) -> Result<Wall> {
     let azimuth = Azimuth::from_true_north(Angle::from_si(azimuth));
     let hole = Attitude { inclination: Angle::from_si(inclination), azimuth };
-    Wall::new(WallInputs { stress: hole.chain()?.carry(&inputs.stress), pore: inputs.pore, rock: inputs.rock })
+    let MapInputs { stress, pore, rock, .. } = inputs.map;
+    let wall = Wall::new(WallInputs { stress: hole.chain()?.carry(&stress), pore, rock })?;
+    inputs.thermal.map_or(Ok(wall), |thermal| wall.thermal(thermal))
 }
 
 /// What a map shows, from the limits of one wall.
@@ -98,7 +100,7 @@ pub(super) fn check(inputs: &DirectionMapInputs, outcome: &MapOutcome) -> Vec<Ch
     let path = inputs.path.iter().flat_map(|path| &path.directions);
     let on_path: Vec<Option<Pressure>> = path
         .clone()
-        .map(|direction| wall_of(map, *direction).ok().and_then(|wall| of_limits(of, &wall.limits())))
+        .map(|direction| wall_of(inputs, *direction).ok().and_then(|wall| of_limits(of, &wall.limits())))
         .collect();
     if !on_path.is_empty() || !outcome.on_path.is_empty() {
         let [stated, by_walls] =
@@ -112,7 +114,8 @@ pub(super) fn check(inputs: &DirectionMapInputs, outcome: &MapOutcome) -> Vec<Ch
         ));
     }
     if let (Some(end), Some(value)) = (path.last(), outcome.on_path.last()) {
-        looks.push(("planned direction".to_owned(), *end, *value));
+        let name = inputs.path.as_ref().map_or("", |path| path.last_words());
+        looks.push((name.to_owned(), *end, *value));
     }
     for k in 1..=LOOKS {
         let at = ((k as f64 * 0.618_033_988_749_895).fract() * values.len() as f64) as usize;
@@ -133,7 +136,7 @@ fn by_turned_stress(grid: &Grid, inputs: &DirectionMapInputs) -> Vec<Option<Pres
     let (s, c) = (shift as f64 * grid.step).sin_cos();
     let turn: M3 = [[c, s, 0.0], [-s, c, 0.0], [0.0, 0.0, 1.0]];
     let far = inputs.map.stress.tensor().turned(&transpose(&turn));
-    let mut values = grid.values(&inputs.map, inputs.of, far);
+    let mut values = grid.values(inputs, far);
     values.chunks_mut(grid.azimuths).for_each(|row| row.rotate_left(shift % row.len().max(1)));
     values
 }
@@ -170,7 +173,7 @@ fn look(
     value: Option<Pressure>,
     unit: f64,
 ) -> [Check; 2] {
-    let limits = wall_of(&inputs.map, direction).map(|wall| wall.limits());
+    let limits = wall_of(inputs, direction).map(|wall| wall.limits());
     let by_wall = limits.as_ref().map_or(f64::NAN, |limits| number(of_limits(inputs.of, limits)));
     let failed = limits.map_or(f64::NAN, |limits| {
         Limits::check(&limits.inputs(), &limits.outcome()).iter().filter(|check| !check.passed).count() as f64

@@ -15,6 +15,7 @@ use crate::rock::Rock;
 use crate::stress::Stress;
 use crate::units::{Angle, Pressure, Quantity};
 use crate::well::survey::Survey;
+use crate::well::wall::setup::Thermal;
 
 /// What a map over hole directions is made of. Nothing of it is defaulted.
 #[derive(Clone, Copy, Debug, PartialEq, Serialize, Deserialize)]
@@ -49,6 +50,15 @@ pub struct DirectionMapInputs {
     pub(super) map: MapInputs,
     pub(super) of: MapOf,
     pub(super) path: Option<Path>,
+    #[serde(default, skip_serializing_if = "Option::is_none")]
+    pub(super) thermal: Option<Thermal>,
+}
+
+impl DirectionMapInputs {
+    /// What the mud's temperature adds to hoop and axial stress of every hole, Pa.
+    pub(super) fn thermal_stress(&self) -> f64 {
+        self.thermal.map_or(0.0, |thermal| thermal.stress(self.map.rock.poisson))
+    }
 }
 
 /// A direction of the map with its limit.
@@ -90,12 +100,13 @@ impl DirectionMap {
     /// When the step does not divide 90° or is below 0.1°, a number is not finite, or the rock is out
     /// of its range.
     pub fn over(inputs: MapInputs) -> Result<Self> {
-        DirectionMap::build(DirectionMapInputs { map: inputs, of: MapOf::LowerShear, path: None })
+        DirectionMap::build(DirectionMapInputs { map: inputs, of: MapOf::LowerShear, path: None, thermal: None })
     }
 
     pub(super) fn build(inputs: DirectionMapInputs) -> Result<Self> {
         let grid = Grid::of(&inputs.map)?;
-        let values = Arc::new(grid.values(&inputs.map, inputs.of, inputs.map.stress.tensor()));
+        inputs.thermal.map(Thermal::checked).transpose()?;
+        let values = Arc::new(grid.values(&inputs, inputs.map.stress.tensor()));
         Ok(DirectionMap { inputs, grid, values })
     }
 
@@ -110,8 +121,18 @@ impl DirectionMap {
         DirectionMap::build(DirectionMapInputs { of, ..self.inputs.clone() })
     }
 
+    /// The same map of walls that the mud warms or cools, every one by as much:
+    /// `map.thermal(Thermal { warming, youngs_modulus, expansion })?`.
+    ///
+    /// # Errors
+    /// When E is not above zero, α_T is outside 0–10⁻³ 1/K, or a number is not finite.
+    pub fn thermal(&self, thermal: Thermal) -> Result<Self> {
+        DirectionMap::build(DirectionMapInputs { thermal: Some(thermal), ..self.inputs.clone() })
+    }
+
     /// With a planned path drawn on it, and the limit at its directions. Of the survey's stations those are
-    /// kept whose directions differ; the last one is the planned direction.
+    /// kept whose directions differ; the square is at the end of the path. For the direction at a depth:
+    /// `map.with_planned(survey.at(depth)?.attitude)?`.
     ///
     /// # Errors
     /// When an azimuth has no true north.
@@ -153,9 +174,9 @@ impl DirectionMap {
 
     /// The value of a direction (inclination and azimuth in radians), in Pa.
     pub(super) fn value(&self, direction: (f64, f64)) -> Option<f64> {
-        let inputs = &self.inputs.map;
-        let [.., least] = inputs.stress.tensor().eigen().values;
-        self.inputs.of.of_wall(&wall_at(inputs, direction), inputs, least)
+        let map = &self.inputs.map;
+        let [.., least] = map.stress.tensor().eigen().values;
+        self.inputs.of.of_wall(&wall_at(&self.inputs, direction), map, least)
     }
 
     /// Every mapped direction with its limit, row by row from the vertical.

@@ -50,7 +50,7 @@ pub(super) fn figure(map: &DirectionMap, outcome: &MapOutcome, found: &Extremes)
         format!(
             "{} of holes in every direction: each place of the net is the hole that goes down there, a vertical hole at the centre and level holes on the rim. Diamond: best; cross: worst; {}numbers on the lines in MPa. Blank where no pressure is safe.",
             crate::well::wall::limits::capitalised(of.words()),
-            if map.inputs.path.is_some() { "square: the planned direction, at the end of the path; " } else { "" },
+            if map.inputs.path.is_some() { "square: the end of the path, or the planned direction; " } else { "" },
         ),
         format!(
             "Contours of the {} over hole directions. Best: {}; worst: {}.",

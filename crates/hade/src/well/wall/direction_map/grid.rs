@@ -2,7 +2,7 @@
 
 use rayon::prelude::*;
 
-use super::direction_map::MapInputs;
+use super::direction_map::{DirectionMapInputs, MapInputs};
 use super::map_of::MapOf;
 use crate::error::{Error, Result};
 use crate::progress::Progress;
@@ -57,24 +57,26 @@ impl Grid {
     }
 
     /// The values of all directions under a stress in north, east, down. They are shared out to the cores.
-    pub fn values(&self, inputs: &MapInputs, of: MapOf, far: Tensor) -> Vec<Option<Pressure>> {
-        match of {
+    pub fn values(&self, inputs: &DirectionMapInputs, far: Tensor) -> Vec<Option<Pressure>> {
+        match inputs.of {
             // By itself, so that the loop is as tight as can be.
             MapOf::LowerShear => self.filled(inputs, far, |wall| wall.lower()),
-            _ => {
+            of => {
                 let [.., least] = far.eigen().values;
-                self.filled(inputs, far, |wall| of.of_wall(wall, inputs, least))
+                self.filled(inputs, far, |wall| of.of_wall(wall, &inputs.map, least))
             }
         }
     }
 
     fn filled(
         &self,
-        inputs: &MapInputs,
+        inputs: &DirectionMapInputs,
         far: Tensor,
         value: impl Fn(&ShearWall) -> Option<f64> + Sync,
     ) -> Vec<Option<Pressure>> {
-        let (law, pore, poisson) = (inputs.rock.strength.law(), inputs.pore.si(), inputs.rock.poisson);
+        let MapInputs { pore, rock, .. } = inputs.map;
+        let (law, pore, poisson) = (rock.strength.law(), pore.si(), rock.poisson);
+        let warmed = inputs.thermal_stress();
         let turns: Vec<(f64, f64)> = (0..self.azimuths).map(|k| (k as f64 * self.step).sin_cos()).collect();
         let mut values = vec![None; self.rows * self.azimuths];
         let progress = Progress::new(&format!("limits of {} directions", values.len()), values.len());
@@ -82,7 +84,7 @@ impl Grid {
             progress.advance(cells.len());
             let inclined = (row as f64 * self.step).sin_cos();
             for (cell, turned) in cells.iter_mut().zip(&turns) {
-                let kirsch = Kirsch::of(in_hole(far.0, inclined, *turned), poisson);
+                let kirsch = Kirsch::of(in_hole(far.0, inclined, *turned), poisson).warmed(warmed);
                 let wall = ShearWall::new(kirsch, law, None, pore, 0.0, 0.0);
                 *cell = value(&wall).map(Pressure::from_si);
             }
@@ -92,8 +94,9 @@ impl Grid {
 }
 
 /// The wall of a hole of any direction (inclination and azimuth in radians).
-pub(super) fn wall_at(inputs: &MapInputs, (inclination, azimuth): (f64, f64)) -> ShearWall {
-    let local = in_hole(inputs.stress.tensor().0, inclination.sin_cos(), azimuth.sin_cos());
-    let kirsch = Kirsch::of(local, inputs.rock.poisson);
-    ShearWall::new(kirsch, inputs.rock.strength.law(), None, inputs.pore.si(), 0.0, 0.0)
+pub(super) fn wall_at(inputs: &DirectionMapInputs, (inclination, azimuth): (f64, f64)) -> ShearWall {
+    let MapInputs { stress, pore, rock, .. } = inputs.map;
+    let local = in_hole(stress.tensor().0, inclination.sin_cos(), azimuth.sin_cos());
+    let kirsch = Kirsch::of(local, rock.poisson).warmed(inputs.thermal_stress());
+    ShearWall::new(kirsch, rock.strength.law(), None, pore.si(), 0.0, 0.0)
 }

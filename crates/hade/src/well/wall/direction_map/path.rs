@@ -22,8 +22,7 @@ pub struct Path {
     pub(super) name: Option<String>,
     /// The survey as an input of the card.
     pub(super) items: Vec<Item>,
-    /// Inclination and azimuth from true north, radians, downward along the path; the last is the planned
-    /// direction.
+    /// Inclination and azimuth from true north, radians, downward along the path.
     pub(super) directions: Vec<(f64, f64)>,
 }
 
@@ -41,6 +40,11 @@ impl Path {
             survey.stations().iter().map(|station| station.attitude().angles()).collect();
         let directions = reduced(&all?);
         Ok(Path { name: survey.hole().map(|name| name.to_string()), items: vec![item], directions })
+    }
+
+    /// What its last direction is.
+    pub fn last_words(&self) -> &'static str {
+        if self.directions.len() > 1 { "end of the path" } else { "planned direction" }
     }
 
     pub fn of_attitude(hole: Attitude) -> Result<Self> {

@@ -9,7 +9,7 @@ use crate::frames::{Attitude, Azimuth};
 use crate::rock::{Rock, Strength};
 use crate::stress::{Components, Horizontals, Stress};
 use crate::units::{Angle, Pressure, Units};
-use crate::well::{Limits, Station, Survey, Wall, WallInputs};
+use crate::well::{Limits, Station, Survey, Thermal, Wall, WallInputs};
 
 const EVERY: [MapOf; 4] = [MapOf::LowerShear, MapOf::UpperShear, MapOf::Initiation, MapOf::Width];
 
@@ -241,6 +241,39 @@ proptest! {
             }
         }
     }
+}
+
+/// A cooled wall in every direction is the cooled wall of each hole; the card says so and replays.
+#[test]
+fn a_map_of_cooled_walls() {
+    let thermal = Thermal { warming: (-25).kelvin(), youngs_modulus: 12.gpa(), expansion: 1e-5.per_kelvin() };
+    let plain = DirectionMap::over(inputs(coulomb())).unwrap();
+    let survey = [(0.0, 0.0), (1000.0, 0.0), (2000.0, 55.0)].map(|(md, i)| Station {
+        md: f64::m(md),
+        inclination: f64::deg(i),
+        azimuth: Azimuth::from_true_north(70.deg()),
+    });
+    let path = Survey::from_stations(&survey).unwrap();
+    for of in EVERY {
+        let map = plain.of(of).unwrap().thermal(thermal).unwrap().with_path(&path).unwrap();
+        for direction in map.all().iter().step_by(7) {
+            let hole = direction.attitude();
+            let stress = hole.chain().unwrap().carry(&inputs(coulomb()).stress);
+            let wall = Wall::new(WallInputs { stress, pore: 20.mpa(), rock: inputs(coulomb()).rock }).unwrap();
+            let limits = wall.thermal(thermal).unwrap().limits();
+            assert_same(direction.limit, of_limits(of, &limits), "cooled");
+        }
+        let card = map.card();
+        assert!(card.passed(), "{:#?}", card.checks);
+        assert_eq!(DirectionMap::compute(map.inputs.clone()).unwrap().card(), card);
+        assert!(card.explanation.notes.iter().any(|note| note.contains("is cooled by 25 K")));
+        assert!(card.explanation.headline.contains("; end of the path "), "{}", card.explanation.headline);
+        assert!(card.explanation.topics.contains(&"thermal".to_owned()));
+    }
+    let hot = Thermal { expansion: 12.per_kelvin(), ..thermal };
+    let said = plain.thermal(hot).unwrap_err().to_string();
+    assert!(said.contains("thermal expansion α_T is 12 1/K") && said.contains("1e-6/K"), "{said}");
+    assert!(plain.thermal(Thermal { youngs_modulus: 0.gpa(), ..thermal }).is_err());
 }
 
 /// What the two share as types.

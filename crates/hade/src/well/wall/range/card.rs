@@ -7,6 +7,7 @@ use crate::card::{
     Axis, Card, Check, Column, Explain, Explanation, Figure, Formula, Item, Layer, Mark, Reference, Role, Step, Table,
 };
 use crate::error::Result;
+use crate::stress::doubts_of_overburden;
 use crate::units::{Angle, GRAVITY, Pressure, Quantity, as_typed, fixed, with_typed_unit};
 use crate::well::wall::limits::shown;
 use crate::well::wall::{Wall, method};
@@ -153,6 +154,7 @@ impl RecommendedRange {
                 .to_owned(),
         );
         notes.extend(method::notes(&self.wall));
+        notes.extend(doubts_of_overburden(&[(self.choices.tvd_below_rotary, self.wall.vertical_stress())]));
         notes
     }
 

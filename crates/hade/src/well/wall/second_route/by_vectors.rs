@@ -147,7 +147,8 @@ impl ByVectors {
     }
 
     /// The greatest value of a function over tool faces 0–180° and where, by looking everywhere and
-    /// closing in on every look that is higher than its neighbours and may be beside the greatest.
+    /// closing in on every look that is higher than its neighbours and may be beside the greatest. Beside it a narrower
+    /// hill may be higher: the looks about it are closer.
     pub fn greatest(&self, f: impl Fn(f64) -> f64) -> (f64, f64) {
         let step = PI / f64::from(LOOKS);
         let looks: Vec<(f64, f64)> = (0..LOOKS).map(|k| f64::from(k) * step).map(|t| (f(t), t)).collect();
@@ -157,7 +158,7 @@ impl ByVectors {
         let cyclic = looks.iter().zip(looks.iter().cycle().skip(1)).zip(looks.iter().cycle().skip(2));
         for (((a, _), (b, t)), (c, _)) in cyclic {
             if b >= a && b >= c && *b > top - 0.01 * (top - bottom) {
-                for (low, high) in [(t - step, *t), (*t, t + step)] {
+                for (low, high) in [(t - step, *t), (*t, t + step)].into_iter().chain(hills_beside(&f, *t, step)) {
                     let peak = peak_between(&f, low, high);
                     best = if peak.0 > best.0 { peak } else { best };
                 }
@@ -302,6 +303,19 @@ impl ByVectors {
 fn turned_about(v: V3, axis: V3, by: f64) -> V3 {
     let (s, c) = by.sin_cos();
     add(add(scale(v, c), scale(cross(axis, v), s)), scale(axis, dot(axis, v) * (1.0 - c)))
+}
+
+/// About a place, the stretches that hold a hill of their own, by looks a sixteenth of a step apart.
+fn hills_beside(f: &impl Fn(f64) -> f64, at: f64, step: f64) -> Vec<(f64, f64)> {
+    const CLOSER: i32 = 16;
+    let fine = step / f64::from(CLOSER);
+    let looks: Vec<(f64, f64)> =
+        (-2 * CLOSER..=2 * CLOSER).map(|k| at + f64::from(k) * fine).map(|t| (t, f(t))).collect();
+    let hill = |three: &[(f64, f64)]| match three {
+        [(low, a), (_, b), (high, c)] if b >= a && b >= c => Some((*low, *high)),
+        _ => None,
+    };
+    looks.windows(3).filter_map(hill).collect()
 }
 
 /// The greatest value between two places with one hill between them, and where (golden section).

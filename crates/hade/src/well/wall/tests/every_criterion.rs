@@ -95,6 +95,32 @@ fn a_narrow_arc_beside_a_wide_one() {
     }
 }
 
+/// Where the wall is least bad two hills are level, a degree apart: the checks see both.
+#[test]
+fn two_hills_within_a_degree() {
+    let plain = Plain {
+        six: [
+            72.54871085245588,
+            38.21232513990425,
+            24.80887266630914,
+            -0.5162330684517356,
+            1.656715875007448,
+            3.028634226614985,
+        ],
+        inclination: 0.0,
+        azimuth: 273.8655079995874,
+        pore: 0.0,
+        poisson: 0.5,
+        tensile: 0.0,
+        rock: PlainRock::MohrCoulomb { c: 1.0, phi: 41.674564020707166 },
+        seepage: None,
+        thermal: None,
+        weak: None,
+    };
+    let card = plain.wall().limits().card();
+    assert!(card.passed(), "{}", failed(&card));
+}
+
 proptest! {
     #![proptest_config(ProptestConfig::with_cases(1500))]
 
@@ -276,7 +302,9 @@ proptest! {
                 continue;
             }
             let now = limit.pressure().unwrap().si();
-            prop_assert!(now <= last + 1e-9 * wall.shear.scale(), "{plain:?}: {width}: {now} {last}");
+            // On a plane without cohesion that lies along the wall, two arcs are kept apart only by the pressure beyond
+            // the pore pressure: a gap of some 1e-8 rad is seen at one pressure and not at the next.
+            prop_assert!(now <= last + 1e-7 * wall.shear.scale(), "{plain:?}: {width}: {now} {last}");
             last = now;
         }
     }
