@@ -224,13 +224,13 @@ impl WallSetup {
 /// Refuses what no rock expands by: in 1/K rock has some 10⁻⁵, and a number of some units is that of another unit.
 pub(crate) fn require_expansion(expansion: Expansion) -> Result<Expansion> {
     const MOST: f64 = 1e-3;
-    if (0.0..=MOST).contains(&expansion.si()) {
+    if require_not_negative("thermal expansion α_T", expansion)?.si() <= MOST {
         return Ok(expansion);
     }
     Err(Error::out_of_range(
         "thermal expansion α_T",
         format!("{} 1/K", as_typed(expansion.si())),
-        format!("between 0 and {MOST} 1/K (rock has some 1e-5); a value in 1e-6/K is typed (12e-6).per_kelvin()"),
+        format!("at most {MOST} 1/K (rock has some 1e-5); a value in 1e-6/K is typed (12e-6).per_kelvin()"),
     ))
 }
 
