@@ -51,9 +51,27 @@ impl Explain for Hindcast {
         }
     }
 
+    fn warnings(&self) -> Vec<String> {
+        let missed: Vec<String> = self.rows.iter().filter(|row| !row.hit).map(named).collect();
+        if missed.is_empty() {
+            return Vec::new();
+        }
+        let shown = missed.iter().take(NAMED).cloned().collect::<Vec<_>>().join(", ");
+        let more = if missed.len() > NAMED { format!(" and {} more", missed.len() - NAMED) } else { String::new() };
+        vec![format!("{} of {} events are not told by the limits: {shown}{more}.", missed.len(), self.rows.len())]
+    }
+
     fn upstream(&self) -> Vec<Card> {
         self.log.upstream()
     }
+}
+
+/// Misses that a warning names.
+const NAMED: usize = 6;
+
+/// "tight hole at MD 2560.0 m".
+fn named(row: &HindcastRow) -> String {
+    format!("{} at MD {} m", row.event.kind.words(), fixed(row.event.md.si(), 1))
 }
 
 fn beyond_item(row: &HindcastRow) -> Option<Item> {
@@ -63,7 +81,7 @@ fn beyond_item(row: &HindcastRow) -> Option<Item> {
         row.event.md,
         row.against.words()
     );
-    Some(Item::computed("Δp", name, row.beyond?))
+    Some(Item::computed("Δp_e", name, row.beyond?))
 }
 
 fn method() -> Method {
@@ -135,14 +153,7 @@ impl Hindcast {
             .rows
             .iter()
             .filter(|row| !row.hit)
-            .map(|row| {
-                format!(
-                    "Not told: {} at MD {} m. {}.",
-                    row.event.kind.words(),
-                    fixed(row.event.md.si(), 1),
-                    row.reason()
-                )
-            })
+            .map(|row| format!("Not told: {}. {}.", named(row), row.reason()))
             .collect();
         notes.truncate(12);
         if !self.rows.iter().any(|row| row.event.kind == EventKind::InGauge) {

@@ -135,7 +135,7 @@ fn checks(inputs: &GroundStateInputs, outcome: &GroundStateOutcome) -> Result<Ve
             "m",
         ),
         Check::compare(
-            "S_v, P_p, S_hmin, S_Hmax by the distances to the points of the profiles, S = K S_v + (1 − K) P_p − A ΔP_p",
+            "S_v, P_p, S_hmin, S_Hmax by the distances to the points of the profiles, S = K S_v + (1 − K) P_p − κ ΔP_p",
             &got,
             &other,
             1e-9 * size,

@@ -59,6 +59,10 @@ impl Explain for LimitLog {
         }
     }
 
+    fn warnings(&self) -> Vec<String> {
+        self.against_the_plan(&self.outcome())
+    }
+
     fn upstream(&self) -> Vec<Card> {
         let mut cards = self.survey.upstream();
         cards.extend(self.ground.upstream());
@@ -116,9 +120,9 @@ fn results(outcome: &LogOutcome) -> Vec<Item> {
             items.push(Item::computed(symbol, format!("{words} of {}", section.name), end.mud_weight));
         }
         for held in &section.mud {
-            let against = if held.against_bottom { "bottom" } else { "top" };
+            let (symbol, against) = if held.against_bottom { ("Δp_mb", "bottom") } else { ("Δp_mt", "top") };
             items.push(Item::computed(
-                "Δp",
+                symbol,
                 format!("least left of the mud {} to the {against}, {}", held.state.words(), section.name),
                 held.margin,
             ));
@@ -155,11 +159,12 @@ impl LimitLog {
         method
     }
 
-    fn notes(&self, outcome: &LogOutcome) -> Vec<String> {
-        let mut notes = Vec::new();
-        let all: Vec<&LogRow> = outcome.rows.iter().collect();
+    /// Sections without a common mud weight, depths without a range, muds outside the range, a stress that faults
+    /// do not bear, rock that creeps.
+    fn against_the_plan(&self, outcome: &LogOutcome) -> Vec<String> {
+        let mut said = Vec::new();
         for section in outcome.sections.iter().filter(|section| section.common().is_none()) {
-            notes.push(match (section.bottom, section.top) {
+            said.push(match (section.bottom, section.top) {
                 (Some(bottom), Some(top)) => format!(
                     "{}: no common mud weight. {} at MD {} m needs {} sg ({}), and {} at MD {} m bears only {} sg ({}); {}.",
                     section.name,
@@ -177,8 +182,35 @@ impl LimitLog {
             });
         }
         if !outcome.empty.is_empty() {
-            notes.push(format!("No pressure is recommended at {}.", stretches_words(&outcome.empty)));
+            said.push(format!("No pressure is recommended at {}.", stretches_words(&outcome.empty)));
         }
+        for section in &outcome.sections {
+            for held in section.mud.iter().filter(|held| held.margin.si() < 0.0) {
+                let (side, end) = if held.against_bottom { ("below", "bottom") } else { ("above", "top") };
+                said.push(format!(
+                    "{}: the planned mud, {}, is {} MPa {side} the {end} of the range at MD {} m, where it misses most.",
+                    section.name,
+                    held.state.words(),
+                    fixed(-held.margin.in_mpa(), 2),
+                    fixed(held.md.si(), 1)
+                ));
+            }
+        }
+        said.extend(outcome.friction.iter().filter(|friction| friction.is_beyond()).map(FrictionAlong::note));
+        for layer in self.ground.layers() {
+            if layer.creeps && outcome.rows.iter().any(|row| row.layer == layer.name) {
+                said.push(format!(
+                    "{} creeps. Elastic limits are NOT VALID in it; its rows only show what an elastic rock would do.",
+                    layer.name()
+                ));
+            }
+        }
+        said
+    }
+
+    fn notes(&self, outcome: &LogOutcome) -> Vec<String> {
+        let mut notes = Vec::new();
+        let all: Vec<&LogRow> = outcome.rows.iter().collect();
         let depleted = super::section::stretches(&all, |row| row.depleted);
         if !depleted.is_empty() {
             notes.push(format!(
@@ -186,28 +218,10 @@ impl LimitLog {
                 stretches_words(&depleted)
             ));
         }
-        notes.extend(outcome.friction.iter().map(FrictionAlong::note));
+        notes.extend(outcome.friction.iter().filter(|friction| !friction.is_beyond()).map(FrictionAlong::note));
         for layer in self.ground.layers() {
             if let Some(depletion) = layer.depletion {
                 notes.push(format!("{}: {}.", layer.name(), depletion.words()));
-            }
-            if layer.creeps && outcome.rows.iter().any(|row| row.layer == layer.name) {
-                notes.push(format!(
-                    "WARNING: {} creeps. Elastic limits are NOT VALID in it; its rows only show what an elastic rock would do.",
-                    layer.name()
-                ));
-            }
-        }
-        for section in &outcome.sections {
-            for held in section.mud.iter().filter(|held| held.margin.si() < 0.0) {
-                notes.push(format!(
-                    "{}: the mud {} passes the {} by {} MPa at MD {} m.",
-                    section.name,
-                    held.state.words(),
-                    if held.against_bottom { "bottom" } else { "top" },
-                    fixed(-held.margin.in_mpa(), 2),
-                    fixed(held.md.si(), 1)
-                ));
             }
         }
         if self.looked() > outcome.rows.len() {

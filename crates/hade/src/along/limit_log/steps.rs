@@ -232,7 +232,7 @@ fn mud_table(sections: &[SectionRange]) -> Table {
                 if held.against_bottom { "bottom" } else { "top" }.to_owned(),
                 fixed(held.margin.in_mpa(), 2),
                 fixed(held.md.si(), 1),
-                if held.margin.si() < 0.0 { "passed" } else { "kept" }.to_owned(),
+                if held.margin.si() < 0.0 { "exceeded" } else { "kept" }.to_owned(),
             ]
         })
     });

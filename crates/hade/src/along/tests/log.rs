@@ -59,7 +59,7 @@ fn turning_path_and_stress_together_changes_nothing() {
     }
 }
 
-/// A sand drawn down by 12 MPa at A 0.64 between shales: S3 falls by 7.68 MPa in the sand only (12 · 0.64,
+/// A sand drawn down by 12 MPa at κ 0.64 between shales: S3 falls by 7.68 MPa in the sand only (12 · 0.64,
 /// by hand), and no mud weight serves all of the hole.
 #[test]
 fn a_depleted_sand_between_virgin_shales() {
@@ -112,7 +112,7 @@ fn a_depleted_sand_between_virgin_shales() {
         "{}",
         card.explanation.headline
     );
-    assert!(card.explanation.notes.iter().any(|note| note.contains("needs") && note.contains("sand at MD")));
+    assert!(card.warnings.iter().any(|note| note.contains("needs") && note.contains("sand at MD")));
     assert_eq!(card.title(), "Pressure limits against depth along the hole, MD 2300.0 to 2600.0 m");
 }
 
@@ -216,9 +216,7 @@ fn stress_beyond_friction_is_said_where_it_is() {
     assert!((friction.beyond_by.in_mpa() - by).abs() < 1e-9, "{friction:?} {by}");
     let card = log.card();
     assert!(card.passed(), "{:#?}", card.checks);
-    assert!(
-        card.explanation.notes.iter().any(|note| note.starts_with("WARNING: at MD 2000.0 to 2500.0 m the stress is"))
-    );
+    assert!(card.warnings.iter().any(|note| note.starts_with("At MD 2000.0 to 2500.0 m the stress is")));
     assert_eq!(LimitLog::compute(log.inputs()).unwrap().card(), card);
     let strong = log.with_friction(0.7).unwrap().friction().unwrap();
     assert!(strong.beyond.is_empty() && strong.beyond_by.in_mpa() < 0.0);

@@ -79,6 +79,15 @@ impl Explain for RecommendedRange {
         }
     }
 
+    fn warnings(&self) -> Vec<String> {
+        let mut said = Vec::new();
+        if self.is_empty() {
+            said.push("The range is empty: with these choices no mud weight is recommended. Change the hole's direction, the allowed width or a margin, or better the inputs; each is the engineer's decision.".to_owned());
+        }
+        said.extend(self.raised_past());
+        said
+    }
+
     fn upstream(&self) -> Vec<Card> {
         self.wall.upstream()
     }
@@ -132,9 +141,6 @@ impl RecommendedRange {
         notes.extend(self.raised_notes());
         if let Some(least) = self.least_bad() {
             notes.push(format!("The least bad pressure in shear is {least}; arcs wider than allowed fail at it."));
-        }
-        if self.is_empty() {
-            notes.push("The range is empty: with these choices no mud weight is recommended. Change the hole's direction, the allowed width or a margin, or better the inputs; each is the engineer's decision.".to_owned());
         }
         if self.limits.initiation.pressure().is_none() {
             notes.push("At no pressure is the wall safe from both parting and spalling.".to_owned());
@@ -219,7 +225,7 @@ impl RecommendedRange {
             caption: if self.is_empty() {
                 "Recommended range: EMPTY with these choices".to_owned()
             } else {
-                "Recommended range".to_owned()
+                "Recommended range; its ends are rounded into it, the bottom up and the top down".to_owned()
             },
             columns: vec![Column::text("end"), pressure, gradient, weight, Column::text("what governs")],
             rows: vec![row("top", self.top), row("bottom", self.bottom)],
