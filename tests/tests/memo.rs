@@ -6,6 +6,8 @@ mod clients;
 mod demo;
 #[path = "memo/every_name.rs"]
 mod every_name;
+#[path = "memo/guide.rs"]
+mod guide;
 #[path = "memo/new_project.rs"]
 mod new_project;
 #[path = "memo/python.rs"]

@@ -92,8 +92,7 @@ pub(crate) fn run(args: &MemoArgs) -> Result<(), Failure> {
     if let Some(changes) = &memo.changes {
         eprintln!("{}:", changes.words());
         for change in changes.conclusions.iter().chain(&changes.givens).chain(&changes.outcomes) {
-            let or_none = |value: &Option<String>| value.clone().unwrap_or_else(|| "not there".to_owned());
-            eprintln!("  - {}: {} → {}", change.what, or_none(&change.before), or_none(&change.after));
+            eprintln!("  - {}", change.words());
         }
     }
     if !memo.against_issue.is_empty() {

@@ -16,6 +16,18 @@ pub struct Change {
     pub after: Option<String>,
 }
 
+impl Change {
+    /// "conclusion 1: 30 MPa → 31 MPa"; what is new or gone is said to be.
+    pub fn words(&self) -> String {
+        match (&self.before, &self.after) {
+            (Some(before), Some(after)) => format!("{}: {before} → {after}", self.what),
+            (None, Some(after)) => format!("new: {}: {after}", self.what),
+            (Some(before), None) => format!("gone: {}, which was {before}", self.what),
+            (None, None) => self.what.clone(),
+        }
+    }
+}
+
 /// All that changed from one record to another.
 #[derive(Clone, Debug, Default, PartialEq, Eq)]
 #[non_exhaustive]
@@ -165,6 +177,17 @@ mod tests {
         sheet.add(&s.principals());
         sheet.conclude(words);
         sheet.record()
+    }
+
+    #[test]
+    fn what_is_new_or_gone_is_said_to_be() {
+        let change = |before: Option<&str>, after: Option<&str>| {
+            let [before, after] = [before, after].map(|value| value.map(str::to_owned));
+            Change { what: "p_b, bottom".to_owned(), before, after }.words()
+        };
+        assert_eq!(change(Some("30 MPa"), Some("31 MPa")), "p_b, bottom: 30 MPa → 31 MPa");
+        assert_eq!(change(None, Some("31 MPa")), "new: p_b, bottom: 31 MPa");
+        assert_eq!(change(Some("30 MPa"), None), "gone: p_b, bottom, which was 30 MPa");
     }
 
     #[test]

@@ -9,6 +9,7 @@ use lopdf::Document;
 use crate::attach::RECORD_NAME;
 use crate::error::{Error, Result};
 use crate::pdf;
+use crate::view::NOT_STATED;
 
 /// An earlier memo.
 #[derive(Clone, Debug)]
@@ -43,8 +44,13 @@ impl EarlierMemo {
             record.ok_or_else(|| bad(format!("no {RECORD_NAME} is attached to it, so it is no memo of Hade")))?;
         let text = String::from_utf8(record).map_err(|_| bad("its record is no text".to_owned()))?;
         let record = Record::from_json(&text)?;
-        let name = title.as_deref().and_then(|t| t.split_once(": ")).map(|(name, _)| name.to_owned());
-        Ok(EarlierMemo { name: name.unwrap_or_else(|| path.display().to_string()), record })
+        let stated = title.as_deref().and_then(|t| t.split_once(": ")).map(|(name, _)| name);
+        // Without a number only its file tells it from others.
+        let name = match stated {
+            Some(name) if !name.starts_with(NOT_STATED) => name.to_owned(),
+            _ => path.file_name().map_or_else(String::new, |file| file.to_string_lossy().into_owned()),
+        };
+        Ok(EarlierMemo { name, record })
     }
 }
 

@@ -70,6 +70,9 @@ pub(crate) fn judge(card: &Card, replayer: Replayer) -> Judged {
             Judged { checks, method: None }
         }
         Ok(again) => {
+            if card.warnings != again.card.warnings {
+                checks.push(words("warnings against those of the computation", "they are not the same", false));
+            }
             let printed = card.explanation.write().difference(&again.card.explanation.write(), WORDS_TOLERANCE);
             if again.difference.is_none() && printed.is_none() {
                 checks.push(words("computed again from its inputs: outcome, words and printed numbers", "agree", true));
@@ -127,6 +130,7 @@ mod tests {
             version: 1,
             inputs: Json::parse("{}").unwrap(),
             outcome: Json::parse("[1.0]").unwrap(),
+            warnings: Vec::new(),
             checks: vec![Check::compare("x by another route", &[1.0], &[1.0], 1e-9, "MPa")],
             explanation: Explanation { title: "T".to_owned(), ..Explanation::default() },
         }
@@ -159,6 +163,13 @@ mod tests {
             same(c).map(|a| Again { card, ..a })
         };
         assert_eq!(failed(&judge(&card(), reworded)), 1);
+        let silent = Card { warnings: vec!["the mud is too light".to_owned()], ..card() };
+        let unwarned = |c: &Card| {
+            let mut again = same(c)?;
+            again.card.warnings.clear();
+            Ok(again)
+        };
+        assert_eq!(failed(&judge(&silent, unwarned)), 1, "a warning that the computation does not give");
     }
 
     #[test]

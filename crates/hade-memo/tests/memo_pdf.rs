@@ -120,6 +120,27 @@ fn what_stands_against_issue_is_on_page_1_and_handed_back() {
 }
 
 #[test]
+fn what_came_out_against_the_plan_is_on_page_1_and_at_its_item() {
+    let said = "the planned mud is 2.34 MPa below the bottom, #panic()";
+    let memo = made("warned", |r| {
+        if let Some(Entry::Card { card, .. }) = r.entries.first_mut() {
+            card.warnings = (0..14).map(|k| format!("{k}: {said}")).collect();
+        }
+    });
+    let pages = pages(&memo.pdf);
+    for words in
+        ["What came out against the plan or the observations (14)", "Item 1: 11:", "2 more stand with their items."]
+    {
+        assert!(pages[0].contains(&squeezed(words)), "{words} in\n{}", pages[0]);
+    }
+    assert!(pages[0].contains(&squeezed(said)));
+    assert!(pages.iter().skip(1).any(|page| page.contains(&squeezed(&format!("13: {said}")))));
+    let silent = made("not-warned", |_| {});
+    assert_eq!(memo.against_issue, silent.against_issue, "it hinders no issue");
+    assert!(!self::pages(&silent.pdf)[0].contains(&squeezed("What came out against")));
+}
+
+#[test]
 fn text_from_a_record_is_set_as_it_is() {
     let pages = pages(&made("literal", |_| {}).pdf);
     let shown = pages.iter().filter(|p| p.contains(&squeezed(PROBE))).count();

@@ -173,7 +173,7 @@ quantity! {
 }
 quantity! {
     /// A coefficient of linear thermal expansion; inside, per kelvin.
-    Expansion, "thermal expansion", shown "10⁻⁶/K" = 1e-6, decimals 2;
+    Expansion, "thermal expansion", shown "× 10⁻⁶/K" = 1e-6, decimals 2;
     /// Per kelvin: `1e-5.per_kelvin()`.
     per_kelvin / in_per_kelvin = 1.0;
 }

@@ -2,7 +2,7 @@
 
 use hade::sheet::Record;
 
-use super::support::{assert_success, attachments, demo_copy, memo, text};
+use super::support::{assert_success, attachments, demo_copy, memo, sheet, text};
 
 #[test]
 fn a_depleted_sand_leaves_no_common_mud_weight() {
@@ -20,6 +20,18 @@ fn a_depleted_sand_leaves_no_common_mud_weight() {
     for (card, _) in record.cards() {
         assert!(card.passed(), "{}: {:#?}", card.title(), card.checks);
     }
+    // The first sheet says what came out against the plan, with the item, and so does the item.
+    let first = sheet(&pdf, 1);
+    assert!(first.contains("What came out against the plan or the observations"), "{first}");
+    for (number, (card, _)) in (1..).zip(record.cards()) {
+        for said in &card.warnings {
+            let begins: String = format!("Item {number}: {said}").chars().take(30).collect();
+            let plain = |text: &str| text.replace(['_', '\u{a0}'], "");
+            assert!(plain(&first).contains(&plain(&begins)), "{begins} in\n{first}");
+        }
+    }
+    let warned = |kind: &str| record.cards().iter().any(|(card, _)| card.kind == kind && !card.warnings.is_empty());
+    assert!(warned("limit-log") && warned("hindcast"));
     let result = |kind: &str, name: &str| {
         let (card, _) = record.cards().into_iter().find(|(card, _)| card.kind == kind).expect("an item");
         let results = &card.explanation.results;

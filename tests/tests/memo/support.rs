@@ -91,8 +91,19 @@ pub fn attachments(pdf: &Path) -> Vec<(String, Vec<u8>)> {
 
 /// The text of a PDF as pdftotext lays it out.
 pub fn text(pdf: &Path) -> String {
+    laid_out(pdf, &[])
+}
+
+/// The text of one of its sheets.
+pub fn sheet(pdf: &Path, number: usize) -> String {
+    let number = number.to_string();
+    laid_out(pdf, &["-f", &number, "-l", &number])
+}
+
+fn laid_out(pdf: &Path, pages: &[&str]) -> String {
     let output = Command::new("pdftotext")
         .args(["-layout", "-enc", "UTF-8"])
+        .args(pages)
         .arg(pdf)
         .arg("-")
         .output()

@@ -63,6 +63,13 @@ impl Mark {
         }
     }
 
+    /// Whether the bytes of a file that cannot be read hold what only a memo does: its mark's place, or the name of
+    /// the program that made it.
+    pub(crate) fn traces(bytes: &[u8]) -> bool {
+        let holds = |words: &[u8]| bytes.windows(words.len()).any(|window| window == words);
+        holds(b"/PieceInfo<</Hade") || holds(b"CreatorTool>Hade ")
+    }
+
     /// The mark of a document.
     pub(crate) fn of(document: &Document) -> Option<Self> {
         let catalog = document.catalog().ok()?;

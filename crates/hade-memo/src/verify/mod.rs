@@ -64,10 +64,18 @@ pub fn verify(bytes: Vec<u8>) -> Result<Verified, Unreadable> {
     }
 }
 
+/// A file that cannot be read: damaged, where something in it says that it was a memo.
+fn unreadable(bytes: &[u8], why: String) -> Unreadable {
+    match Mark::traces(bytes) {
+        true => Unreadable::damaged(why),
+        false => Unreadable::new(why),
+    }
+}
+
 fn check(bytes: &[u8]) -> Result<Verified, Unreadable> {
-    let document = pdf::load(bytes).map_err(Unreadable::new)?;
-    let mark = Mark::of(&document)
-        .ok_or_else(|| Unreadable::new("it carries no digest of a memo; only memos made with `hade memo` do"))?;
+    let document = pdf::load(bytes).map_err(|why| unreadable(bytes, why))?;
+    let none = "it carries no digest of a memo; only memos made with `hade memo` do";
+    let mark = Mark::of(&document).ok_or_else(|| unreadable(bytes, none.to_owned()))?;
     drop(document);
     let mut report = Report { bytes: bytes.len(), ..Report::default() };
     let contents = revisions::check(bytes, &mark, &mut report).and_then(|memo| contents::check(&memo, &mut report));

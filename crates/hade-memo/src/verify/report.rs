@@ -5,14 +5,20 @@ use serde::Serialize;
 
 /// Why a file cannot be verified at all.
 #[derive(Clone, Debug, PartialEq, Eq, thiserror::Error)]
-#[error("the file cannot be read as a memo: {why}")]
+#[error("{}: {why}", if *.damaged { DAMAGED } else { "the file cannot be read as a memo" })]
 pub struct Unreadable {
     why: String,
+    damaged: bool,
 }
+
+const DAMAGED: &str = "the file was a memo and is damaged; ask its maker for it again";
 
 impl Unreadable {
     pub(crate) fn new(why: impl Into<String>) -> Self {
-        Unreadable { why: why.into() }
+        Unreadable { why: why.into(), damaged: false }
+    }
+    pub(crate) fn damaged(why: impl Into<String>) -> Self {
+        Unreadable { why: why.into(), damaged: true }
     }
 }
 

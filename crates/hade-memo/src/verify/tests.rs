@@ -90,3 +90,18 @@ fn a_record_with_another_outcome_is_computed_again() {
     let against = against(&verified);
     assert!(against.iter().any(|line| line.starts_with("item 1")), "{against:?}");
 }
+
+#[test]
+fn a_damaged_memo_is_called_so_and_another_file_is_not() {
+    let bytes = memo(&record(), by_library);
+    let cut = bytes[..bytes.len() - 40].to_vec();
+    let mut torn = bytes.clone();
+    let middle = torn.len() / 2;
+    torn.drain(middle..middle + 100);
+    for damaged in [cut, torn] {
+        let said = verify(damaged).unwrap_err().to_string();
+        assert!(said.starts_with("the file was a memo and is damaged; ask its maker for it again: "), "{said}");
+    }
+    let said = verify(b"%PDF-1.7 something else".to_vec()).unwrap_err().to_string();
+    assert!(said.starts_with("the file cannot be read as a memo: "), "{said}");
+}

@@ -10,7 +10,7 @@ use crate::changes::{Change, Changes};
 use crate::project::Status;
 
 /// What is printed where nothing was stated.
-const NOT_STATED: &str = "not stated";
+pub(crate) const NOT_STATED: &str = "not stated";
 
 /// A field of the title block.
 #[derive(Serialize)]
@@ -44,12 +44,14 @@ fn first<'a>(one: &'a str, other: &'a str) -> &'a str {
     if one.trim().is_empty() { other } else { one }
 }
 
-/// The title block. What the sheet says of site and hole goes before what the project file says.
+/// The title block. What the sheet says of the site goes before what the project file says; of the hole the
+/// project file's name and the sheet's place stand beside each other where they differ.
 pub(crate) fn memo(sources: &Sources<'_>) -> MemoView {
     let (record, project) = (sources.record, sources.project);
     let title = first(&project.title, &record.title);
     let date = sources.date.to_string();
     let status = project.status.words();
+    let (hole, place) = (project.hole.trim(), record.front.place.trim());
     let mut fields: Vec<(&'static str, &str)> = vec![
         ("Memo no.", &project.number),
         ("Revision", &project.revision),
@@ -58,8 +60,11 @@ pub(crate) fn memo(sources: &Sources<'_>) -> MemoView {
         ("Project", &project.name),
         ("Client", &project.client),
         ("Site", first(&record.front.site, &project.site)),
-        ("Hole", first(&record.front.place, &project.hole)),
+        ("Hole", first(hole, place)),
     ];
+    if !hole.is_empty() && !place.is_empty() && hole != place {
+        fields.push(("Place", place));
+    }
     if !project.supersedes.trim().is_empty() {
         fields.push(("Supersedes", &project.supersedes));
     }
@@ -128,8 +133,8 @@ pub(crate) struct ChangesView {
 /// The changes, in tables of what, before, after.
 pub(crate) fn changes(changes: &Changes) -> ChangesView {
     let rows = |list: &[Change]| {
-        let or_none = |value: &Option<String>| rich(value.as_deref().unwrap_or("not there"));
-        list.iter().map(|c| [rich(&c.what), or_none(&c.before), or_none(&c.after)]).collect()
+        let or = |value: &Option<String>, none: &str| rich(value.as_deref().unwrap_or(none));
+        list.iter().map(|c| [rich(&c.what), or(&c.before, "– (new)"), or(&c.after, "– (gone)")]).collect()
     };
     ChangesView {
         since: plain(&changes.since),
@@ -137,6 +142,25 @@ pub(crate) fn changes(changes: &Changes) -> ChangesView {
         outcomes: rows(&changes.outcomes),
         conclusions: rows(&changes.conclusions),
     }
+}
+
+/// What came out against the plan or the observations, by item.
+#[derive(Serialize)]
+pub(crate) struct WarningView {
+    item: usize,
+    words: Vec<Run>,
+}
+
+/// Most warnings of the first sheet; the others stand with their items.
+const MOST_WARNINGS: usize = 12;
+
+/// The warnings of all items, in order, and how many more there are.
+pub(crate) fn warnings(sources: &Sources<'_>) -> (Vec<WarningView>, usize) {
+    let all = sources.cards.iter().enumerate();
+    let all = all.flat_map(|(i, card)| card.warnings.iter().map(move |words| (i + 1, words)));
+    let shown: Vec<_> = all.clone().take(MOST_WARNINGS).collect();
+    let more = all.count() - shown.len();
+    (shown.into_iter().map(|(item, words)| WarningView { item, words: rich(words) }).collect(), more)
 }
 
 /// A choice of the engineer.

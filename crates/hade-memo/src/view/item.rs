@@ -42,7 +42,8 @@ struct FormulaView {
 /// What a symbol is.
 #[derive(Serialize)]
 struct SymbolView {
-    symbol: Symbol,
+    /// One, or several that are explained together.
+    symbols: Vec<Symbol>,
     meaning: Vec<Run>,
 }
 
@@ -95,6 +96,8 @@ pub(crate) struct ItemView {
     figures: Vec<FigureView>,
     checks: Vec<CheckRow>,
     notes: Vec<Vec<Run>>,
+    /// What came out against the plan or the observations.
+    warnings: Vec<Vec<Run>>,
     passed: bool,
     trusted: bool,
 }
@@ -176,7 +179,7 @@ impl<'a> Maker<'a> {
             symbols: method
                 .symbols
                 .iter()
-                .map(|(s, meaning)| SymbolView { symbol: symbol(s), meaning: rich(meaning) })
+                .map(|(s, meaning)| SymbolView { symbols: s.split(", ").map(symbol).collect(), meaning: rich(meaning) })
                 .collect(),
             assumptions: method.assumptions.iter().map(|a| rich(a)).collect(),
             steps: said.steps.iter().map(step).collect(),
@@ -188,6 +191,7 @@ impl<'a> Maker<'a> {
             figures: said.figures.iter().enumerate().map(|(i, f)| self.figure(f, number, i + 1)).collect(),
             checks: judged.checks.iter().map(check).collect(),
             notes: said.notes.iter().map(|n| rich(n)).collect(),
+            warnings: card.warnings.iter().map(|w| rich(w)).collect(),
             passed: judged.checks.iter().all(|c| c.passed),
             trusted,
         })

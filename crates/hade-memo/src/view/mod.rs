@@ -9,6 +9,8 @@ mod references;
 mod table;
 mod text;
 
+pub(crate) use front::NOT_STATED;
+
 use std::collections::{BTreeMap, BTreeSet};
 
 use hade::card::Card;
@@ -81,6 +83,9 @@ struct Whole {
     whole_rows: bool,
     settings: BTreeMap<String, String>,
     against: Vec<Vec<text::Run>>,
+    /// What came out against the plan or the observations, and how many more such lines there are.
+    warnings: Vec<front::WarningView>,
+    more_warnings: usize,
     conclusions: Vec<Vec<text::Run>>,
     changes: Option<front::ChangesView>,
     front: front::FrontView,
@@ -128,11 +133,14 @@ pub(crate) fn make(sources: &Sources<'_>) -> Result<View> {
     }
     let item::Made { formulas, figures, references, warnings } = maker.done();
     let (cautions, withheld) = for_memo(&topics, &sources.project.cautions, &sources.project.withhold)?;
+    let (warnings_shown, more_warnings) = front::warnings(sources);
     let whole = Whole {
         memo: front::memo(sources),
         whole_rows: sources.longest <= LONGEST_IN_WHOLE_ROW,
         settings: sources.settings.clone(),
         against: sources.against.iter().map(|s| text::rich(s)).collect(),
+        warnings: warnings_shown,
+        more_warnings,
         conclusions: record.conclusions.iter().map(|s| text::rich(s)).collect(),
         changes: sources.changes.map(front::changes),
         front: front::front(&record.front),

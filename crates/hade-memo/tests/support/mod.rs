@@ -95,6 +95,7 @@ fn overburden(sha256: &str) -> Card {
             Check::compare("trapezoidal sum held against the sum of layer weights", &[66.9], &[66.9 + 3.2e-9], 1e-6, "MPa"),
             Check::holds("stress never falls with depth", -0.1, 0.0, "MPa"),
         ],
+        warnings: Vec::new(),
         explanation: Explanation {
             title: "Vertical stress from the density log".to_owned(),
             headline: "S_v = 66.90 MPa at 2950.0 m TVD below the rotary table (22.68 MPa/km).".to_owned(),
@@ -182,6 +183,7 @@ fn rotation() -> Card {
             1e-9,
             "MPa",
         )],
+        warnings: Vec::new(),
         explanation: Explanation {
             title: "Stress in the axes of the hole KF-3 at 2950 m".to_owned(),
             headline: "In borehole axes σx = 58.31, σy = 49.88, σz = 61.02 MPa.".to_owned(),
@@ -261,6 +263,7 @@ fn limits() -> Card {
             Check::compare("least effective wall stress at the limit equals −T₀", &[-2.0], &[-2.0 + 1e-7], 1e-4, "MPa"),
             Check::compare("full field at 50 radii gives S back", &[1.0], &[1.5], 1e-2, "MPa"),
         ],
+        warnings: Vec::new(),
         explanation: Explanation {
             title: "Limits of the wall".to_owned(),
             headline: "No shear failure anywhere from 36.12 MPa (1.249 sg) to 44.80 MPa (1.549 sg).".to_owned(),

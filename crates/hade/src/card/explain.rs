@@ -135,6 +135,11 @@ pub trait Explain: Sized + 'static {
     fn check(inputs: &Self::Inputs, outcome: &Self::Outcome) -> Vec<Check>;
     /// Title, named inputs and results, method, steps, figures.
     fn explain(&self) -> Explanation;
+    /// What came out against what was planned, stated or observed, or that there is no answer, a sentence each: it
+    /// stands before the result wherever the card is shown, and on a memo's first sheet.
+    fn warnings(&self) -> Vec<String> {
+        Vec::new()
+    }
     /// The cards this one stands on, as far as the value remembers how it was made.
     fn upstream(&self) -> Vec<Card> {
         Vec::new()
@@ -150,6 +155,7 @@ pub trait Explain: Sized + 'static {
             inputs: inputs.write(),
             outcome: outcome.write(),
             checks: Self::check(&inputs, &outcome),
+            warnings: self.warnings(),
             explanation: self.explain(),
         }
     }
@@ -191,6 +197,9 @@ pub struct Card {
     pub outcome: Json,
     /// The checks by other routes.
     pub checks: Vec<Check>,
+    /// What came out against what was planned, stated or observed ([`Explain::warnings`]).
+    #[serde(default, skip_serializing_if = "Vec::is_empty")]
+    pub warnings: Vec<String>,
     /// What it says.
     pub explanation: Explanation,
 }

@@ -18,7 +18,7 @@ impl Rock {
         let [least, most] = FRICTION_ANGLES.map(|angle| angle.to_radians());
         if angle.si() < least || angle.si() > most {
             doubts.push(format!(
-                "DOUBTFUL: the friction angle {} is outside {}° to {}°, where intact rock lies; see whether it was exchanged with the cohesion, or is another kind of angle.",
+                "Doubtful input: the friction angle {} is outside {}° to {}°, where intact rock lies; see whether it was exchanged with the cohesion, or is another kind of angle.",
                 with_typed_unit(angle),
                 FRICTION_ANGLES[0],
                 FRICTION_ANGLES[1]
@@ -31,7 +31,7 @@ impl Rock {
         };
         if let Some(what) = doubt {
             doubts.push(format!(
-                "DOUBTFUL: the {what} {} is {}; see whether its unit was mistaken.",
+                "Doubtful input: the {what} {} is {}; see whether its unit was mistaken.",
                 with_typed_unit(pressure),
                 if uniaxial { "beyond that of the strongest rock" } else { "that of rock which hardly holds together" }
             ));
@@ -53,7 +53,7 @@ mod tests {
         assert_eq!(
             doubts(Strength::mohr_coulomb(24.mpa(), 6.2.deg())),
             [
-                "DOUBTFUL: the friction angle 6.2° is outside 10° to 60°, where intact rock lies; see whether it was exchanged with the cohesion, or is another kind of angle."
+                "Doubtful input: the friction angle 6.2° is outside 10° to 60°, where intact rock lies; see whether it was exchanged with the cohesion, or is another kind of angle."
             ]
         );
         assert_eq!(doubts(Strength::mohr_coulomb(0.04.mpa(), 30.deg())).len(), 1);

@@ -237,6 +237,7 @@ struct CardView {
     title: String,
     headline: String,
     failed: Vec<String>,
+    warnings: Vec<String>,
     results: Vec<Row>,
     notes: Vec<String>,
     figures: Vec<Picture>,
@@ -270,6 +271,7 @@ impl CardView {
             title: e.title.clone(),
             headline: e.headline.clone(),
             failed: checks.iter().filter(|c| !c.passed).map(|c| c.what.clone()).collect(),
+            warnings: card.warnings.clone(),
             results: e.results.iter().map(Row::of).collect(),
             notes: e.notes.clone(),
             figures: e.figures.iter().map(Picture::of).collect(),
@@ -437,6 +439,8 @@ mod tests {
             evil.clone_into(text);
         }
         e.notes = vec![evil.to_owned()];
+        card.warnings = vec![evil.to_owned()];
+        let e = &mut card.explanation;
         e.inputs = vec![Item::new(evil, evil, evil, vec![1.0], evil)];
         e.results = e.inputs.clone();
         e.steps = vec![

@@ -11,6 +11,7 @@ pub fn card_text(card: &Card) -> String {
     if !e.headline.is_empty() {
         out.push(format!("  {}", true_minus(&e.headline)));
     }
+    out.extend(card.warnings.iter().map(|w| format!("  WARNING: {}", true_minus(w))));
     items(&mut out, "Results", &e.results);
     items(&mut out, "Inputs", &e.inputs);
     for step in &e.steps {

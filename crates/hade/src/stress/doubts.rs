@@ -17,7 +17,7 @@ pub(crate) fn doubts_of_overburden(rows: &[(Length, Pressure)]) -> Vec<String> {
     let far = |row: &(Length, Pressure)| (per_metre(row) / OVERBURDEN[1]).max(OVERBURDEN[0] / per_metre(row));
     if let Some(worst) = deep.filter(beyond).max_by(|a, b| far(a).total_cmp(&far(b))) {
         doubts.push(format!(
-            "DOUBTFUL: S_v {} at TVD {} m is {} kPa for each metre below the rotary table, and ground weighs {} to {}; see whether the unit of the stress or the level of the depths was mistaken.",
+            "Doubtful input: S_v {} at TVD {} m is {} kPa for each metre below the rotary table, and ground weighs {} to {}; see whether the unit of the stress or the level of the depths was mistaken.",
             worst.1,
             fixed(worst.0.si(), 1),
             fixed(per_metre(worst), 1),
@@ -33,7 +33,7 @@ pub(crate) fn doubts_of_overburden(rows: &[(Length, Pressure)]) -> Vec<String> {
     });
     if let Some((above, below)) = falls {
         doubts.push(format!(
-            "DOUBTFUL: S_v falls with depth, from {} at TVD {} m to {} at {} m; what lies between them would have to weigh less than nothing.",
+            "Doubtful input: S_v falls with depth, from {} at TVD {} m to {} at {} m; what lies between them would have to weigh less than nothing.",
             above.1,
             fixed(above.0.si(), 1),
             below.1,
@@ -55,7 +55,7 @@ mod tests {
         assert_eq!(
             doubts(&[(2218.m(), 468.mpa())]),
             [
-                "DOUBTFUL: S_v 468.00 MPa at TVD 2218.0 m is 211.0 kPa for each metre below the rotary table, and ground weighs 9 to 30; see whether the unit of the stress or the level of the depths was mistaken."
+                "Doubtful input: S_v 468.00 MPa at TVD 2218.0 m is 211.0 kPa for each metre below the rotary table, and ground weighs 9 to 30; see whether the unit of the stress or the level of the depths was mistaken."
             ]
         );
         assert!(doubts(&[(2218.m(), 4.68.mpa())])[0].contains("2.1 kPa"));

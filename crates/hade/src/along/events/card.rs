@@ -51,9 +51,35 @@ impl Explain for Hindcast {
         }
     }
 
+    fn warnings(&self) -> Vec<String> {
+        let mut said = Vec::new();
+        let holes = self.events.hole.zip(self.log.survey().hole());
+        if let Some((theirs, ours)) = holes.filter(|(theirs, ours)| theirs != ours) {
+            said.push(format!(
+                "The events are of {theirs} and are placed here at their measured depths in {ours}: the same measured depth of another hole lies at another depth and in another direction. Put them at the measured depths of {ours} where the same rock lies, or hold them against a log of {theirs}."
+            ));
+        }
+        let missed: Vec<String> = self.rows.iter().filter(|row| !row.hit).map(named).collect();
+        if missed.is_empty() {
+            return said;
+        }
+        let shown = missed.iter().take(NAMED).cloned().collect::<Vec<_>>().join(", ");
+        let more = if missed.len() > NAMED { format!(" and {} more", missed.len() - NAMED) } else { String::new() };
+        said.push(format!("{} of {} events are not told by the limits: {shown}{more}.", missed.len(), self.rows.len()));
+        said
+    }
+
     fn upstream(&self) -> Vec<Card> {
         self.log.upstream()
     }
+}
+
+/// Misses that a warning names.
+const NAMED: usize = 6;
+
+/// "tight hole at MD 2560.0 m".
+fn named(row: &HindcastRow) -> String {
+    format!("{} at MD {} m", row.event.kind.words(), fixed(row.event.md.si(), 1))
 }
 
 fn beyond_item(row: &HindcastRow) -> Option<Item> {
@@ -63,7 +89,7 @@ fn beyond_item(row: &HindcastRow) -> Option<Item> {
         row.event.md,
         row.against.words()
     );
-    Some(Item::computed("Δp", name, row.beyond?))
+    Some(Item::computed("Δp_e", name, row.beyond?))
 }
 
 fn method() -> Method {
@@ -132,24 +158,11 @@ impl Hindcast {
 
     fn notes(&self) -> Vec<String> {
         let mut notes: Vec<String> = Vec::new();
-        let holes = self.events.hole.zip(self.log.survey().hole());
-        if let Some((theirs, ours)) = holes.filter(|(theirs, ours)| theirs != ours) {
-            notes.push(format!(
-                "WARNING: the events are of {theirs} and are placed here at their measured depths in {ours}: the same measured depth of another hole lies at another depth and in another direction. Put them at the measured depths of {ours} where the same rock lies, or hold them against a log of {theirs}."
-            ));
-        }
         let missed = self
             .rows
             .iter()
             .filter(|row| !row.hit)
-            .map(|row| {
-                format!(
-                    "Not told: {} at MD {} m. {}.",
-                    row.event.kind.words(),
-                    fixed(row.event.md.si(), 1),
-                    row.reason()
-                )
-            })
+            .map(|row| format!("Not told: {}. {}.", named(row), row.reason()))
             .take(12);
         notes.extend(missed);
         if !self.rows.iter().any(|row| row.event.kind == EventKind::InGauge) {

@@ -5,13 +5,13 @@ use serde::{Deserialize, Serialize};
 use crate::error::{Error, Result};
 use crate::units::{Pressure, Quantity, as_typed, require_between, with_typed_unit};
 
-/// How the smaller horizontal stress followed the pore pressure: ΔS_hmin = A ΔP_p.
+/// How the smaller horizontal stress followed the pore pressure: ΔS_hmin = κ ΔP_p.
 #[derive(Clone, Copy, Debug, PartialEq, Serialize, Deserialize)]
 #[serde(rename_all = "snake_case")]
 pub enum MinPath {
-    /// A as measured, 0–1.
+    /// κ as measured, 0–1.
     Measured(f64),
-    /// A of a wide, thin, elastic layer that cannot strain sideways: α (1 − 2ν) / (1 − ν), with Biot's
+    /// κ of a wide, thin, elastic layer that cannot strain sideways: α (1 − 2ν) / (1 − ν), with Biot's
     /// coefficient α, 0–1, and the Poisson's ratio of the layer's rock.
     Uniaxial {
         /// Biot's coefficient α.
@@ -25,7 +25,7 @@ pub enum MinPath {
 pub enum MaxPath {
     /// By as much as the smaller one.
     AsMin,
-    /// By its own A, 0–1.
+    /// By its own κ, 0–1.
     Measured(f64),
 }
 
@@ -41,7 +41,7 @@ pub struct Depletion {
 }
 
 impl Depletion {
-    /// A of the smaller and of the larger horizontal stress, in rock of a Poisson's ratio.
+    /// κ of the smaller and of the larger horizontal stress, in rock of a Poisson's ratio.
     pub(super) fn paths(&self, poisson: f64) -> Result<[f64; 2]> {
         let drawdown = self.drawdown.finite("drawdown of the pore pressure")?;
         if drawdown.si() <= 0.0 {
@@ -52,29 +52,29 @@ impl Depletion {
             ));
         }
         let min = match self.sh_min {
-            MinPath::Measured(a) => require_between("stress path A of S_hmin", a, 0.0, 1.0)?,
+            MinPath::Measured(a) => require_between("stress path κ of S_hmin", a, 0.0, 1.0)?,
             MinPath::Uniaxial { biot } => {
                 require_between("Biot's coefficient α", biot, 0.0, 1.0)? * (1.0 - 2.0 * poisson) / (1.0 - poisson)
             }
         };
         let max = match self.sh_max {
             MaxPath::AsMin => min,
-            MaxPath::Measured(a) => require_between("stress path A of S_Hmax", a, 0.0, 1.0)?,
+            MaxPath::Measured(a) => require_between("stress path κ of S_Hmax", a, 0.0, 1.0)?,
         };
         Ok([min, max])
     }
 
-    /// "pore pressure drawn down by 12 MPa, A 0.64 of S_hmin, S_Hmax as S_hmin".
+    /// "pore pressure drawn down by 12 MPa, κ 0.64 of S_hmin, S_Hmax as S_hmin".
     pub(crate) fn words(&self) -> String {
         let min = match self.sh_min {
-            MinPath::Measured(a) => format!("A {} of S_hmin", as_typed(a)),
+            MinPath::Measured(a) => format!("κ {} of S_hmin", as_typed(a)),
             MinPath::Uniaxial { biot } => {
-                format!("A = α (1 − 2ν) / (1 − ν) of S_hmin with α {}", as_typed(biot))
+                format!("κ = α (1 − 2ν) / (1 − ν) of S_hmin with α {}", as_typed(biot))
             }
         };
         let max = match self.sh_max {
             MaxPath::AsMin => "S_Hmax by as much".to_owned(),
-            MaxPath::Measured(a) => format!("A {} of S_Hmax", as_typed(a)),
+            MaxPath::Measured(a) => format!("κ {} of S_Hmax", as_typed(a)),
         };
         format!("pore pressure drawn down by {}, {min}, {max}", with_typed_unit(self.drawdown))
     }
@@ -85,7 +85,7 @@ mod tests {
     use super::*;
     use crate::units::Units;
 
-    /// A sand drawn down by 12 MPa with A 0.64 loses 7.68 MPa; at α 1 and ν 0.25 A is 2/3.
+    /// A sand drawn down by 12 MPa with κ 0.64 loses 7.68 MPa; at α 1 and ν 0.25 κ is 2/3.
     #[test]
     fn paths_of_stress() {
         let measured = Depletion { drawdown: 12.mpa(), sh_min: MinPath::Measured(0.64), sh_max: MaxPath::AsMin };

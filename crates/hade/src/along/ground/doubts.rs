@@ -28,7 +28,7 @@ pub(crate) fn doubts_of_path(survey: &Survey, [from, to]: [Length; 2]) -> Vec<St
     sharpest
         .map(|(above, below, turn)| {
             format!(
-                "DOUBTFUL: between the stations at MD {} and {} m the hole turns by {}° in 30 m, and holes seldom turn by more than {SEVERE}°; look at the two stations.",
+                "Doubtful input: between the stations at MD {} and {} m the hole turns by {}° in 30 m, and holes seldom turn by more than {SEVERE}°; look at the two stations.",
                 fixed(above.si(), 1),
                 fixed(below.si(), 1),
                 fixed(turn.in_deg(), 1)

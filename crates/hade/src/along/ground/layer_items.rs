@@ -55,11 +55,11 @@ impl Depletion {
     fn items(&self) -> Vec<Item> {
         let mut items = vec![Item::typed("ΔP_p", "drawdown of the pore pressure", self.drawdown)];
         items.push(match self.sh_min {
-            MinPath::Measured(a) => Item::typed("A", "stress path of S_hmin", a),
+            MinPath::Measured(a) => Item::typed("κ_h", "stress path of S_hmin", a),
             MinPath::Uniaxial { biot } => Item::typed("α", "Biot's coefficient of the stress path", biot),
         });
         if let MaxPath::Measured(a) = self.sh_max {
-            items.push(Item::typed("A_H", "stress path of S_Hmax", a));
+            items.push(Item::typed("κ_H", "stress path of S_Hmax", a));
         }
         items
     }

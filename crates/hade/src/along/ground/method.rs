@@ -10,16 +10,16 @@ impl Ground {
             formulas: vec![
                 Formula::new("K = (S - P_p) / (S_upright(v) - P_p)", "K = (S − P_p) / (S_v − P_p)"),
                 Formula::new(
-                    "S = P_p + K (S_upright(v) - P_p) - A Delta P_p",
-                    "S = P_p + K (S_v − P_p) − A ΔP_p; K straight between points of a layer, held to its contacts",
+                    "S = P_p + K (S_upright(v) - P_p) - kappa Delta P_p",
+                    "S = P_p + K (S_v − P_p) − κ ΔP_p; K straight between points of a layer, held to its contacts",
                 ),
             ],
             ..Method::default()
         };
         if self.inputs.layers.iter().any(|layer| layer.depletion.is_some()) {
             method.formulas.push(Formula::new(
-                "A = alpha (1 - 2 nu) / (1 - nu)",
-                "A = α (1 − 2ν) / (1 − ν) of a wide, thin, elastic layer, where it is not measured",
+                "kappa = alpha (1 - 2 nu) / (1 - nu)",
+                "κ = α (1 − 2ν) / (1 − ν) of a wide, thin, elastic layer, where it is not measured",
             ));
             method.references.push(Reference::new(
                 "Zoback, M.D. (2007) Reservoir Geomechanics, Cambridge University Press, ch. 12 (stress change with depletion; cited from memory)",

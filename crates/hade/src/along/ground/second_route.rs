@@ -9,7 +9,7 @@ use crate::well::{Place, Survey};
 
 impl GroundInHole<'_> {
     /// S_v, P_p, S_hmin, S_Hmax of a layer at a place: profiles by the distances to their points, the
-    /// ratio by its distances to the ratios at the points, S = K S_v + (1 − K) P_p − A ΔP_p.
+    /// ratio by its distances to the ratios at the points, S = K S_v + (1 − K) P_p − κ ΔP_p.
     pub fn by_another_route(&self, place: &Place, index: usize) -> Option<[f64; 4]> {
         let layer = self.layer(index)?;
         let tvd = place.at[2];

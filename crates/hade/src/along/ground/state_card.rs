@@ -83,6 +83,13 @@ impl Explain for GroundState {
         }
     }
 
+    fn warnings(&self) -> Vec<String> {
+        let mut said = doubts_of_overburden(&[(self.tvd, self.sv)]);
+        said.extend(doubts_of_path(&self.survey, [self.md, self.md]));
+        said.extend(self.ground.doubts_of(|name| name == self.layer()));
+        said
+    }
+
     fn upstream(&self) -> Vec<Card> {
         let mut cards = self.survey.upstream();
         cards.extend(self.ground.upstream());
@@ -106,9 +113,6 @@ impl GroundState {
                 "These stresses are those of the ground away from the hole. What the mud does to the wall (ΔT {warming}) is in state.wall()?, not in a wall or a map that is made of the stress alone."
             ));
         }
-        notes.extend(doubts_of_overburden(&[(self.tvd, self.sv)]));
-        notes.extend(doubts_of_path(&self.survey, [self.md, self.md]));
-        notes.extend(self.ground.doubts_of(|name| name == self.layer()));
         notes
     }
 
@@ -145,7 +149,7 @@ fn checks(inputs: &GroundStateInputs, outcome: &GroundStateOutcome) -> Result<Ve
             "m",
         ),
         Check::compare(
-            "S_v, P_p, S_hmin, S_Hmax by the distances to the points of the profiles, S = K S_v + (1 − K) P_p − A ΔP_p",
+            "S_v, P_p, S_hmin, S_Hmax by the distances to the points of the profiles, S = K S_v + (1 − K) P_p − κ ΔP_p",
             &got,
             &other,
             1e-9 * size,

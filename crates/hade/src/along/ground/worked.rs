@@ -49,7 +49,7 @@ impl GroundInHole<'_> {
             }));
             if state.drawdown.is_some() {
                 steps.push(Step::worked(format!(
-                    "drawn down by {} MPa: S_{name} − A ΔP_p = {} − {} · {} = {} MPa",
+                    "drawn down by {} MPa: S_{name} − κ ΔP_p = {} − {} · {} = {} MPa",
                     as_typed(drawdown.in_mpa()),
                     mpa(before),
                     fixed(path, 4),

@@ -61,6 +61,13 @@ impl Explain for LimitLog {
         }
     }
 
+    fn warnings(&self) -> Vec<String> {
+        let outcome = self.outcome();
+        let mut said = self.against_the_plan(&outcome);
+        said.extend(self.doubts(&outcome));
+        said
+    }
+
     fn upstream(&self) -> Vec<Card> {
         let mut cards = self.survey.upstream();
         cards.extend(self.ground.upstream());
@@ -118,9 +125,9 @@ fn results(outcome: &LogOutcome) -> Vec<Item> {
             items.push(Item::computed(symbol, format!("{words} of {}", section.name), end.mud_weight));
         }
         for held in &section.mud {
-            let against = if held.against_bottom { "bottom" } else { "top" };
+            let (symbol, against) = if held.against_bottom { ("Δp_mb", "bottom") } else { ("Δp_mt", "top") };
             items.push(Item::computed(
-                "Δp",
+                symbol,
                 format!("least left of the mud {} to the {against}, {}", held.state.words(), section.name),
                 held.margin,
             ));
@@ -157,11 +164,12 @@ impl LimitLog {
         method
     }
 
-    fn notes(&self, outcome: &LogOutcome) -> Vec<String> {
-        let mut notes = Vec::new();
-        let all: Vec<&LogRow> = outcome.rows.iter().collect();
+    /// Sections without a common mud weight, depths without a range, muds outside the range, a stress that faults
+    /// do not bear, rock that creeps.
+    fn against_the_plan(&self, outcome: &LogOutcome) -> Vec<String> {
+        let mut said = Vec::new();
         for section in outcome.sections.iter().filter(|section| section.common().is_none()) {
-            notes.push(match (section.bottom, section.top) {
+            said.push(match (section.bottom, section.top) {
                 (Some(bottom), Some(top)) => format!(
                     "{}: no common mud weight. {} at MD {} m needs {} sg ({}), and {} at MD {} m bears only {} sg ({}); {}.",
                     section.name,
@@ -179,20 +187,39 @@ impl LimitLog {
             });
         }
         if !outcome.empty.is_empty() {
-            notes.push(format!("No pressure is recommended at {}.", stretches_words(&outcome.empty)));
+            said.push(format!("No pressure is recommended at {}.", stretches_words(&outcome.empty)));
         }
-        let depleted = super::section::stretches(&all, |row| row.depleted);
-        if !depleted.is_empty() {
-            notes.push(format!(
-                "Depleted: {}. The stress path stated for it holds for the state it was measured in.",
-                stretches_words(&depleted)
-            ));
+        for section in &outcome.sections {
+            for held in section.mud.iter().filter(|held| held.margin.si() < 0.0) {
+                let (side, end) = if held.against_bottom { ("below", "bottom") } else { ("above", "top") };
+                said.push(format!(
+                    "{}: the planned mud, {}, is {} MPa {side} the {end} of the range at MD {} m, where it misses most.",
+                    section.name,
+                    held.state.words(),
+                    fixed(-held.margin.in_mpa(), 2),
+                    fixed(held.md.si(), 1)
+                ));
+            }
         }
-        notes.extend(outcome.friction.iter().map(FrictionAlong::note));
+        said.extend(outcome.friction.iter().filter(|friction| friction.is_beyond()).map(FrictionAlong::note));
+        for layer in self.ground.layers() {
+            if layer.creeps && outcome.rows.iter().any(|row| row.layer == layer.name) {
+                said.push(format!(
+                    "{} creeps. Elastic limits are NOT VALID in it; its rows only show what an elastic rock would do.",
+                    layer.name()
+                ));
+            }
+        }
+        said
+    }
+
+    /// Sections that the log does not reach, and input that can be but seldom is.
+    fn doubts(&self, outcome: &LogOutcome) -> Vec<String> {
+        let mut said = Vec::new();
         for section in &self.sections {
             if section.from < self.choices.from || section.to > self.choices.to {
-                notes.push(format!(
-                    "WARNING: {} runs from MD {} to {} m, and the log only over {} of it: nothing is said of the rest.",
+                said.push(format!(
+                    "{} runs from MD {} to {} m, and the log only over {} of it: nothing is said of the rest.",
                     section.name(),
                     fixed(section.from.si(), 1),
                     fixed(section.to.si(), 1),
@@ -203,37 +230,33 @@ impl LimitLog {
                 ));
             }
         }
+        let overburden: Vec<_> = outcome.rows.iter().map(|row| (row.tvd, row.sv)).collect();
+        said.extend(doubts_of_overburden(&overburden));
+        said.extend(doubts_of_path(&self.survey, [self.choices.from, self.choices.to]));
+        said.extend(self.ground.doubts_of(|name| outcome.rows.iter().any(|row| row.layer() == name)));
+        said
+    }
+
+    fn notes(&self, outcome: &LogOutcome) -> Vec<String> {
+        let mut notes = Vec::new();
+        let all: Vec<&LogRow> = outcome.rows.iter().collect();
+        let depleted = super::section::stretches(&all, |row| row.depleted);
+        if !depleted.is_empty() {
+            notes.push(format!(
+                "Depleted: {}. The stress path stated for it holds for the state it was measured in.",
+                stretches_words(&depleted)
+            ));
+        }
+        notes.extend(outcome.friction.iter().filter(|friction| !friction.is_beyond()).map(FrictionAlong::note));
         if self.ground.is_warmed() {
             notes.push(
                 "The wall is warmed or cooled by the mud as stated at every state of the mud, at rest and swabbed too; mud at rest comes towards the temperature of the ground, and a wall that is no longer cooled carries more hoop stress."
                     .to_owned(),
             );
         }
-        let overburden: Vec<_> = outcome.rows.iter().map(|row| (row.tvd, row.sv)).collect();
-        notes.extend(doubts_of_overburden(&overburden));
-        notes.extend(doubts_of_path(&self.survey, [self.choices.from, self.choices.to]));
-        notes.extend(self.ground.doubts_of(|name| outcome.rows.iter().any(|row| row.layer() == name)));
         for layer in self.ground.layers() {
             if let Some(depletion) = layer.depletion {
                 notes.push(format!("{}: {}.", layer.name(), depletion.words()));
-            }
-            if layer.creeps && outcome.rows.iter().any(|row| row.layer == layer.name) {
-                notes.push(format!(
-                    "WARNING: {} creeps. Elastic limits are NOT VALID in it; its rows only show what an elastic rock would do.",
-                    layer.name()
-                ));
-            }
-        }
-        for section in &outcome.sections {
-            for held in section.mud.iter().filter(|held| held.margin.si() < 0.0) {
-                notes.push(format!(
-                    "WARNING: {}: the mud {} lies outside the range, past its {} by {} MPa at MD {} m.",
-                    section.name,
-                    held.state.words(),
-                    if held.against_bottom { "bottom" } else { "top" },
-                    fixed(-held.margin.in_mpa(), 2),
-                    fixed(held.md.si(), 1)
-                ));
             }
         }
         if self.looked() > outcome.rows.len() {

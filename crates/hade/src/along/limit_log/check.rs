@@ -77,7 +77,7 @@ fn stresses(inputs: &LogInputs, outcome: &LogOutcome, states: &[AtPlace], in_hol
     let other: Vec<f64> = other.collect();
     let size = other.iter().fold(1.0_f64, |m, v| m.max(v.abs()));
     Check::compare(
-        "S_v, P_p, S_hmin, S_Hmax by the distances to the points of the profiles, S = K S_v + (1 − K) P_p − A ΔP_p",
+        "S_v, P_p, S_hmin, S_Hmax by the distances to the points of the profiles, S = K S_v + (1 − K) P_p − κ ΔP_p",
         &got,
         &other,
         1e-9 * size,

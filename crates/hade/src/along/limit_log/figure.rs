@@ -69,8 +69,9 @@ pub(super) fn against_md(log: &LimitLog, outcome: &LogOutcome) -> Figure {
     }
     Figure {
         caption: format!(
-            "Pressure limits against depth along {}, as mud weights below the rotary table; hatched: no mud weight at all, or none in common with the rest of its section.",
-            log.hole()
+            "Pressure limits against depth along {}, as mud weights below the rotary table{}.",
+            log.hole(),
+            bands_words(outcome)
         ),
         alt: alt(log, outcome),
         x: Axis::new("mud weight (sg)", low, high),
@@ -119,22 +120,34 @@ fn lines(rows: &[LogRow], depth: impl Fn(&LogRow) -> f64, value: impl Fn(&LogRow
     layers
 }
 
+/// What the bands are, for the caption: words on them would lie over lines.
+fn bands_words(outcome: &LogOutcome) -> String {
+    let mut words = String::new();
+    if outcome.sections.iter().any(|section| section.common().is_none() && !section.conflicts.is_empty()) {
+        words.push_str("; hatched: no mud weight at all, or none in common with the rest of its section");
+    }
+    if outcome.rows.iter().any(|row| row.depleted) {
+        words.push_str("; tinted: depleted");
+    }
+    words
+}
+
 /// Where no mud weight serves, hatched; depleted stretches, tinted.
 fn bands(outcome: &LogOutcome) -> Vec<Layer> {
     let mut layers = Vec::new();
-    let band = |label: &str, role: Role, [from, to]: [Length; 2]| Layer::RowBand {
-        label: label.to_owned(),
+    let band = |role: Role, [from, to]: [Length; 2]| Layer::RowBand {
+        label: String::new(),
         role,
         from: from.si(),
         to: to.si(),
     };
     let all: Vec<&LogRow> = outcome.rows.iter().collect();
-    for (k, stretch) in super::section::stretches(&all, |row| row.depleted).into_iter().enumerate() {
-        layers.push(band(if k == 0 { "depleted" } else { "" }, Role::Quiet, stretch));
+    for stretch in super::section::stretches(&all, |row| row.depleted) {
+        layers.push(band(Role::Quiet, stretch));
     }
     let conflicts = outcome.sections.iter().filter(|section| section.common().is_none());
-    for (k, stretch) in conflicts.flat_map(|section| section.conflicts.clone()).enumerate() {
-        layers.push(band(if k == 0 { "no common mud weight" } else { "" }, Role::Failing, stretch));
+    for stretch in conflicts.flat_map(|section| section.conflicts.clone()) {
+        layers.push(band(Role::Failing, stretch));
     }
     layers
 }

@@ -74,9 +74,14 @@ impl FrictionAlong {
         Item::computed("Δσ_μ", name, self.beyond_by)
     }
 
+    /// Whether it is beyond friction anywhere.
+    pub(super) fn is_beyond(&self) -> bool {
+        !self.beyond.is_empty()
+    }
+
     pub(super) fn note(&self) -> String {
         let mu = as_typed(self.friction);
-        if self.beyond.is_empty() {
+        if !self.is_beyond() {
             return format!(
                 "The stress stays within what faults of μ = {mu} bear; it is nearest at MD {} m in {}, {} MPa of S_1 below.",
                 fixed(self.md.si(), 1),
@@ -85,7 +90,7 @@ impl FrictionAlong {
             );
         }
         format!(
-            "WARNING: at {} the stress is beyond what faults of μ = {mu} bear, most at MD {} m in {}, by {} MPa of S_1. A crust with such faults would slip first: look at the stresses and the pore pressure stated there.",
+            "At {} the stress is beyond what faults of μ = {mu} bear, most at MD {} m in {}, by {} MPa of S_1. A crust with such faults would slip first: look at the stresses and the pore pressure stated there.",
             stretches_words(&self.beyond),
             fixed(self.md.si(), 1),
             self.layer,

@@ -47,6 +47,11 @@ impl Explain for SectionEnsemble {
         }
     }
 
+    fn warnings(&self) -> Vec<String> {
+        let none = self.best().is_none().then(|| "In no draw has every depth of the section a range.".to_owned());
+        none.into_iter().collect()
+    }
+
     fn upstream(&self) -> Vec<Card> {
         self.log.upstream()
     }
@@ -92,7 +97,7 @@ impl SectionEnsemble {
             let name = format!("rank correlation of {} and {}", pair.one, pair.other);
             Item::typed("r_s", name, pair.rank).chosen()
         }));
-        items.push(Item::choice("N", "number of draws", self.draws.count.to_string()));
+        items.push(Item::choice("N_d", "number of draws", self.draws.count.to_string()));
         items.push(Item::choice("", "start of the random numbers", self.draws.start.to_string()));
         items
     }

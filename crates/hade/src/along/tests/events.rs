@@ -70,7 +70,7 @@ fn events_between_two_depths_and_of_another_hole() {
         let events = DrillingEvents { hole: hole.map(crate::frames::Name::new), ..some.clone() };
         let hindcast = log.hindcast(&events, 0.5.mpa()).unwrap();
         assert_eq!(Hindcast::compute(hindcast.inputs()).unwrap().card(), hindcast.card());
-        hindcast.card().explanation.notes.iter().any(|note| note.contains("the events are of KF-7"))
+        hindcast.card().warnings.iter().any(|warning| warning.contains("The events are of KF-7"))
     };
     assert!(warned(Some("KF-7")) && !warned(Some("KF-9")) && !warned(None));
 }

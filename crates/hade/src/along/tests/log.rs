@@ -59,7 +59,7 @@ fn turning_path_and_stress_together_changes_nothing() {
     }
 }
 
-/// A sand drawn down by 12 MPa at A 0.64 between shales: S3 falls by 7.68 MPa in the sand only (12 · 0.64,
+/// A sand drawn down by 12 MPa at κ 0.64 between shales: S3 falls by 7.68 MPa in the sand only (12 · 0.64,
 /// by hand), and no mud weight serves all of the hole.
 #[test]
 fn a_depleted_sand_between_virgin_shales() {
@@ -112,7 +112,7 @@ fn a_depleted_sand_between_virgin_shales() {
         "{}",
         card.explanation.headline
     );
-    assert!(card.explanation.notes.iter().any(|note| note.contains("needs") && note.contains("sand at MD")));
+    assert!(card.warnings.iter().any(|note| note.contains("needs") && note.contains("sand at MD")));
     assert_eq!(card.title(), "Pressure limits against depth along the hole, MD 2300.0 to 2600.0 m");
 }
 
@@ -216,9 +216,7 @@ fn stress_beyond_friction_is_said_where_it_is() {
     assert!((friction.beyond_by.in_mpa() - by).abs() < 1e-9, "{friction:?} {by}");
     let card = log.card();
     assert!(card.passed(), "{:#?}", card.checks);
-    assert!(
-        card.explanation.notes.iter().any(|note| note.starts_with("WARNING: at MD 2000.0 to 2500.0 m the stress is"))
-    );
+    assert!(card.warnings.iter().any(|note| note.starts_with("At MD 2000.0 to 2500.0 m the stress is")));
     assert_eq!(LimitLog::compute(log.inputs()).unwrap().card(), card);
     let strong = log.with_friction(0.7).unwrap().friction().unwrap();
     assert!(strong.beyond.is_empty() && strong.beyond_by.in_mpa() < 0.0);
@@ -237,12 +235,12 @@ fn doubtful_input_and_what_is_left_out_are_said() {
         let log = LimitLog::with_choices(survey, ground, choices(1000.0, 2000.0, 100.0, 0.0)).unwrap();
         let log = if sections.is_empty() { log } else { log.with_sections(sections).unwrap() };
         assert_eq!(LimitLog::compute(log.inputs()).unwrap().card(), log.card());
-        log.card().explanation.notes.join("\n")
+        log.card().warnings.join("\n")
     };
     let plain = by_ratios(vec![layer(shale().strength)]);
-    assert!(!notes(&plain, &survey(120.0), &[]).contains("DOUBTFUL"));
+    assert!(!notes(&plain, &survey(120.0), &[]).contains("Doubtful"));
     let exchanged = by_ratios(vec![layer(Strength::mohr_coulomb(24.mpa(), 6.2.deg()))]);
-    assert!(notes(&exchanged, &survey(120.0), &[]).contains("rock: DOUBTFUL: the friction angle 6.2°"));
+    assert!(notes(&exchanged, &survey(120.0), &[]).contains("rock: Doubtful input: the friction angle 6.2°"));
     // Stresses in bar, read as MPa.
     let inputs = GroundInputs { sv: gradient("S_v", 226.0), ..plain.inputs() };
     let said = notes(&Ground::new(inputs).unwrap(), &survey(120.0), &[]);

@@ -152,7 +152,7 @@ fn layers_of_every_wall_and_criterion() {
         let card = log.card();
         assert!(card.passed(), "{width} {:#?}", card.checks.iter().filter(|c| !c.passed).collect::<Vec<_>>());
         assert_eq!(LimitLog::compute(log.inputs()).unwrap().card(), card);
-        assert!(card.explanation.notes.iter().any(|note| note.contains("salt creeps")));
+        assert!(card.warnings.iter().any(|said| said.contains("salt creeps")));
         assert!(log.rows().iter().any(|row| row.bottom.is_none()), "the weakest rock holds at no pressure");
         assert!(!log.empty().is_empty() && log.section_ranges()[0].common().is_none());
     }

@@ -112,7 +112,6 @@ pub(super) fn wall_stresses(wall: &Wall) -> Method {
 pub(super) fn notes(wall: &Wall) -> Vec<String> {
     let mut notes = wall.setup.notes();
     notes.extend(wall.strength().warning().map(str::to_owned));
-    notes.extend(wall.setup.inputs.rock.doubts());
     notes.push(direction::reference(wall.attitude));
     notes
 }

@@ -244,7 +244,7 @@ mod tests {
             with("12,0.64,as min", "12,,as min"),
             "l.csv, line 10, column \"path_min\": the value is missing; fill in drawdown and both paths, or none."
         );
-        assert!(with("12,0.64,as min", "12,1.64,as min").contains("line 10: stress path A of S_hmin is 1.64"));
+        assert!(with("12,0.64,as min", "12,1.64,as min").contains("line 10: stress path κ of S_hmin is 1.64"));
         assert!(with("12,0.64,as min", "-12,0.64,as min").contains("more than zero"));
         assert!(with("12,0.64,as min", "12,0.64,like").contains("column \"path_max\": \"like\" is not a number"));
         assert!(with("path_max,", "path,").contains("give the columns drawdown, path_min, path_max together"));

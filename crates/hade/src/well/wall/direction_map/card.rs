@@ -66,6 +66,12 @@ impl Explain for DirectionMap {
         }
     }
 
+    fn warnings(&self) -> Vec<String> {
+        let none = self.worked_out().on_path.iter().any(Option::is_none);
+        let said = none.then(|| format!("At a direction of the planned path there is {}.", self.shows().none_words()));
+        said.into_iter().chain(self.inputs.map.rock.doubts()).collect()
+    }
+
     fn upstream(&self) -> Vec<Card> {
         let stress = self.inputs.map.stress;
         let mut cards = stress.upstream();
@@ -143,7 +149,7 @@ impl DirectionMap {
         }
         let share = fixed(100.0 * outcome.share_without, 2);
         items.push(Item::new(
-            "A_0",
+            "f_0",
             format!("share of the lower hemisphere with {}", self.shows().none_words()),
             "share",
             vec![outcome.share_without],
@@ -276,9 +282,6 @@ impl DirectionMap {
                 of.none_words()
             ));
         }
-        if outcome.on_path.iter().any(Option::is_none) {
-            notes.push(format!("WARNING: at a direction of the planned path there is {}.", of.none_words()));
-        }
         for (word, numbers) in [("best", &found.best), ("worst", &found.worst)] {
             if numbers.len() > 1 {
                 notes.push(format!("{} directions are equally the {word}: {}.", numbers.len(), self.named(numbers)));
@@ -312,7 +315,6 @@ impl DirectionMap {
         if let Ok(wall) = wall_of(&self.inputs, (0.0, 0.0)) {
             notes.extend(WallSetup::notes(&wall.setup));
             notes.extend(self.inputs.map.rock.strength.warning().map(str::to_owned));
-            notes.extend(self.inputs.map.rock.doubts());
         }
         notes
     }

@@ -61,6 +61,10 @@ impl Explain for Ensemble {
         }
     }
 
+    fn warnings(&self) -> Vec<String> {
+        Ensemble::without_an_end(self.worked_out())
+    }
+
     fn upstream(&self) -> Vec<Card> {
         self.stated().map_or_else(Vec::new, |wall| wall.upstream())
     }
@@ -105,7 +109,7 @@ impl Ensemble {
         }
         items.extend(inputs.friction.map(|mu| Item::typed("μ", "coefficient of friction of faults", mu).chosen()));
         items.extend(inputs.tvd.map(|tvd| Item::typed("z", "true vertical depth below the rotary table", tvd)));
-        items.push(Item::choice("N", "number of draws", inputs.draws.count.to_string()));
+        items.push(Item::choice("N_d", "number of draws", inputs.draws.count.to_string()));
         items.push(Item::choice("", "start of the random numbers", inputs.draws.start.to_string()));
         items
     }
@@ -145,15 +149,17 @@ impl Ensemble {
                 "p_b = p_(l s), quad p_t = min(p_(u s), p_i, S_3)",
                 "bottom p_b = p_ls, top p_t = min(p_us, p_i, S_3)",
             ),
-            Formula::new(
-                "(n - 1) P / 100",
-                "P10, P50, P90: number (n − 1) P/100 of the n values in rising order, counted from 0, between two interpolated",
-            ),
+            Formula::new("k = (n - 1) P / 100", "k = (n − 1) P/100"),
             Formula::new(
                 "s^2 = sum_i sum_j r_(i j) (partial p_b)/(partial x_i) s_i (partial p_b)/(partial x_j) s_j",
                 "first order: s² = Σ Σ r_ij (∂p_b/∂x_i) s_i (∂p_b/∂x_j) s_j, at the means",
             ),
         ]);
+        method.symbols.push((
+            "k".to_owned(),
+            "number, from 0, of the quantile of P % among n values in rising order; between two of them interpolated"
+                .to_owned(),
+        ));
         if self.inputs.friction.is_some() {
             method.formulas.push(Formula::new(
                 "(S_1 - P_upright(p)) / (S_3 - P_upright(p)) <= (sqrt(mu^2 + 1) + mu)^2",
@@ -249,7 +255,8 @@ impl Ensemble {
         )))
     }
 
-    fn notes(&self, outcome: &EnsembleOutcome, wall: Option<&Wall>) -> Vec<String> {
+    /// Draws that are left out, and why.
+    fn left_out(&self, outcome: &EnsembleOutcome) -> Vec<String> {
         let all = f64::from(self.inputs.draws.count);
         let mut notes = Vec::new();
         for (one, count) in self.inputs.drawn.iter().zip(&outcome.outside) {
@@ -275,20 +282,30 @@ impl Ensemble {
                 notes.push(format!("{share} of the draws ({}) {why} and are left out.", fixed(count, 0)));
             }
         }
-        if self.inputs.friction.is_none() {
-            notes.push("No coefficient of friction was stated: the drawn stresses are not held against the frictional limit of faults.".to_owned());
-        }
+        notes
+    }
+
+    /// Draws without a bottom or a top.
+    fn without_an_end(outcome: &EnsembleOutcome) -> Vec<String> {
+        let mut said = Vec::new();
         if outcome.without_shear > 0.0 {
-            notes.push(format!(
-                "WARNING: {} of the draws that count have no pressure that is safe in shear. P10, P50 and P90 are of the others; the starred quantiles count them as above any bottom and below any top.",
+            said.push(format!(
+                "{} of the draws that count have no pressure that is safe in shear. P10, P50 and P90 are of the others; the starred quantiles count them as above any bottom and below any top.",
                 percent(outcome.without_shear, outcome.counted)
             ));
         }
         if outcome.design_bottom.is_none() || outcome.design_top.is_none() {
-            notes.push(
-                "WARNING: more than 10 % of the draws have no such end, so that the design quantile is none."
-                    .to_owned(),
+            said.push(
+                "More than 10 % of the draws have no bottom or no top, so that the design quantile is none.".to_owned(),
             );
+        }
+        said
+    }
+
+    fn notes(&self, outcome: &EnsembleOutcome, wall: Option<&Wall>) -> Vec<String> {
+        let mut notes = self.left_out(outcome);
+        if self.inputs.friction.is_none() {
+            notes.push("No coefficient of friction was stated: the drawn stresses are not held against the frictional limit of faults.".to_owned());
         }
         notes.extend(self.departs(outcome));
         notes.push("The stated value of a drawn input plays no part. S_v, S_Hmax and S_hmin are the normal stresses down, along and across the azimuth of S_Hmax; the rest of the tensor stays, and the azimuth turns the whole of it.".to_owned());

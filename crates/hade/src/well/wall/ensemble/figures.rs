@@ -46,6 +46,15 @@ fn stable(ensemble: &Ensemble, outcome: &EnsembleOutcome) -> Option<Figure> {
     })
 }
 
+/// "narrows the spread by 12 %".
+fn narrowing(share: f64) -> String {
+    let percent = fixed(100.0 * share.abs(), 0);
+    match percent.as_str() {
+        "0" => "leaves the spread as it is".to_owned(),
+        _ => format!("{} the spread by {percent} %", if share < 0.0 { "widens" } else { "narrows" }),
+    }
+}
+
 /// Bars of the rank correlations with the bottom, the largest first.
 fn effects(ensemble: &Ensemble, outcome: &EnsembleOutcome) -> Option<Figure> {
     outcome.bottom?;
@@ -57,11 +66,10 @@ fn effects(ensemble: &Ensemble, outcome: &EnsembleOutcome) -> Option<Figure> {
             let role = if effect.on_bottom < 0.0 { Role::Second } else { Role::First };
             ChartRow {
                 words: format!(
-                    "{}: {}; certain, it {} the spread by {} %",
+                    "{}: {}; certain, it {}",
                     one.symbol(),
                     fixed(effect.on_bottom, 2),
-                    if effect.narrows < 0.0 { "widens" } else { "narrows" },
-                    fixed(100.0 * effect.narrows.abs(), 0)
+                    narrowing(effect.narrows)
                 ),
                 bars: vec![(role, 0.0, effect.on_bottom)],
                 marks: Vec::new(),

@@ -73,6 +73,10 @@ impl Explain for Limits {
         }
     }
 
+    fn warnings(&self) -> Vec<String> {
+        self.wall.setup.inputs.rock.doubts()
+    }
+
     fn upstream(&self) -> Vec<Card> {
         self.wall.upstream()
     }

@@ -80,6 +80,17 @@ impl Explain for RecommendedRange {
         }
     }
 
+    fn warnings(&self) -> Vec<String> {
+        let mut said = Vec::new();
+        if self.is_empty() {
+            said.push("The range is empty: with these choices no mud weight is recommended. Change the hole's direction, the allowed width or a margin, or better the inputs; each is the engineer's decision.".to_owned());
+        }
+        said.extend(self.raised_past());
+        said.extend(self.wall.setup.inputs.rock.doubts());
+        said.extend(doubts_of_overburden(&[(self.choices.tvd_below_rotary, self.wall.vertical_stress())]));
+        said
+    }
+
     fn upstream(&self) -> Vec<Card> {
         self.wall.upstream()
     }
@@ -134,9 +145,6 @@ impl RecommendedRange {
         if let Some(least) = self.least_bad() {
             notes.push(format!("The least bad pressure in shear is {least}; arcs wider than allowed fail at it."));
         }
-        if self.is_empty() {
-            notes.push("The range is empty: with these choices no mud weight is recommended. Change the hole's direction, the allowed width or a margin, or better the inputs; each is the engineer's decision.".to_owned());
-        }
         if self.limits.initiation.pressure().is_none() {
             notes.push("At no pressure is the wall safe from both parting and spalling.".to_owned());
         }
@@ -154,7 +162,6 @@ impl RecommendedRange {
                 .to_owned(),
         );
         notes.extend(method::notes(&self.wall));
-        notes.extend(doubts_of_overburden(&[(self.choices.tvd_below_rotary, self.wall.vertical_stress())]));
         notes
     }
 
@@ -221,7 +228,7 @@ impl RecommendedRange {
             caption: if self.is_empty() {
                 "Recommended range: EMPTY with these choices".to_owned()
             } else {
-                "Recommended range".to_owned()
+                "Recommended range; its ends are rounded into it, the bottom up and the top down".to_owned()
             },
             columns: vec![Column::text("end"), pressure, gradient, weight, Column::text("what governs")],
             rows: vec![row("top", self.top), row("bottom", self.bottom)],

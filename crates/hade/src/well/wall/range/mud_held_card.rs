@@ -69,11 +69,35 @@ impl Explain for MudHeld {
         }
     }
 
+    fn warnings(&self) -> Vec<String> {
+        let outside = |held: &&HeldPressure| !held.is_inside();
+        let mut said: Vec<String> = self.held.iter().flatten().filter(outside).map(stands).collect();
+        for state in self.not_stated() {
+            let end = if state == MudState::Swabbed { "bottom" } else { "top" };
+            said.push(format!(
+                "{} is not stated, so nothing of it was held against the {end}.",
+                capitalised(not_stated(state))
+            ));
+        }
+        if self.range.is_empty() {
+            said.push(format!("The range is empty: {}.", self.range.headline()));
+        }
+        if self.arcs.widest().is_some_and(|arc| arc.whole_wall) {
+            said.push("At rest the whole wall fails in shear.".to_owned());
+        }
+        said
+    }
+
     fn upstream(&self) -> Vec<Card> {
         let mut cards = self.range.upstream();
         cards.push(self.range.card());
         cards
     }
+}
+
+/// "Static (30.00 MPa): 1.00 MPa above the bottom; 2.00 MPa below the top."
+fn stands(held: &HeldPressure) -> String {
+    format!("{} ({}): {}.", capitalised(held.state.words()), held.pressure, verdict(held))
 }
 
 /// The subscript of a state's pressure.
@@ -131,41 +155,24 @@ impl MudHeld {
     }
 
     fn notes(&self) -> Vec<String> {
-        let mut notes: Vec<String> = self
-            .held
-            .iter()
-            .flatten()
-            .map(|held| {
-                let mark = if held.is_inside() { "" } else { "WARNING: " };
-                format!("{mark}{} ({}): {}.", capitalised(held.state.words()), held.pressure, verdict(held))
-            })
-            .collect();
-        for state in self.not_stated() {
-            let end = if state == MudState::Swabbed { "bottom" } else { "top" };
-            notes.push(format!(
-                "WARNING: {} is not stated, so nothing of it was held against the {end}.",
-                not_stated(state)
-            ));
-        }
+        let inside = |held: &&HeldPressure| held.is_inside();
+        let mut notes: Vec<String> = self.held.iter().flatten().filter(inside).map(stands).collect();
         let ends = [(self.range.bottom, "bottom"), (self.range.top, "top")];
         notes.extend(ends.into_iter().filter_map(|(end, name)| {
             let end = end?;
             Some(format!("At the {name}, {}, {}.", end.words(), end.governed_by.words()))
         }));
         notes.extend(self.range.raised_notes());
-        if self.range.is_empty() {
-            notes.push(format!("WARNING: the range is empty: {}.", self.range.headline()));
-        }
         let allowed = with_typed_unit(self.range.choices.allowed_width);
-        notes.push(match self.arcs.widest() {
-            None => "At rest the mud keeps the whole wall within its shear strength.".to_owned(),
-            Some(arc) if arc.whole_wall => "WARNING: at rest the whole wall fails in shear.".to_owned(),
-            Some(arc) => format!(
+        notes.extend(match self.arcs.widest() {
+            None => Some("At rest the mud keeps the whole wall within its shear strength.".to_owned()),
+            Some(arc) if arc.whole_wall => None,
+            Some(arc) => Some(format!(
                 "At rest arcs of up to {} fail in shear, {} the allowed {allowed}: middle at tool face {}, and at +180°.",
                 arc.width,
                 if arc.width <= self.range.choices.allowed_width { "within" } else { "WIDER than" },
                 direction::words(self.range.wall.attitude, arc.centre)
-            ),
+            )),
         });
         notes.extend(method::notes(&self.range.wall));
         notes

@@ -88,6 +88,25 @@ impl RecommendedRange {
         self.computed_top
     }
 
+    /// Limits that a raised top is above, in sentences.
+    pub(super) fn raised_past(&self) -> Vec<String> {
+        let Some(raised) = self.raised else { return Vec::new() };
+        let limits = [
+            (
+                self.limits.least_stress.pressure(),
+                "the least stress S_3",
+                "a fracture that is there, natural or made, runs on and mud is lost",
+            ),
+            (self.limits.initiation.pressure(), "initiation", "the wall parts"),
+            (pushed_out_above(&self.limits.upper_shear), "the upper shear limit", "the hole is pushed out"),
+        ];
+        let past = limits.into_iter().filter_map(|(limit, name, what)| {
+            let limit = limit.filter(|limit| raised.top > *limit)?;
+            Some(format!("The raised top is {} above {name}, {limit}: between them {what}.", raised.top - limit))
+        });
+        past.collect()
+    }
+
     /// What a raised top gives up, in sentences.
     pub(super) fn raised_notes(&self) -> Vec<String> {
         let (Some(raised), Some(computed)) = (self.raised, self.computed_top) else { return Vec::new() };
@@ -98,25 +117,7 @@ impl RecommendedRange {
             computed.governed_by.words(),
             raised.reason
         )];
-        let limits = [
-            (
-                self.limits.least_stress.pressure(),
-                "the least stress S_3",
-                "a fracture that is there, natural or made, runs on and mud is lost",
-            ),
-            (self.limits.initiation.pressure(), "initiation", "the wall parts"),
-            (pushed_out_above(&self.limits.upper_shear), "the upper shear limit", "the hole is pushed out"),
-        ];
-        let mut passed = false;
-        for (limit, name, what) in limits {
-            let Some(limit) = limit.filter(|limit| raised.top > *limit) else { continue };
-            passed = true;
-            notes.push(format!(
-                "WARNING: the raised top is {} above {name}, {limit}: between them {what}.",
-                raised.top - limit
-            ));
-        }
-        if !passed {
+        if self.raised_past().is_empty() {
             notes.push(format!(
                 "The raised top gives up {} of the {} of margin that was chosen.",
                 raised.top - computed.pressure,

@@ -57,6 +57,14 @@ impl Explain for Sensitivity {
         }
     }
 
+    fn warnings(&self) -> Vec<String> {
+        let lost = self.lost();
+        if lost.is_empty() || self.range.is_empty() {
+            return Vec::new();
+        }
+        vec![format!("With {} changed by its amount no range is left.", lost.join(", or with "))]
+    }
+
     fn upstream(&self) -> Vec<Card> {
         let mut cards = self.range.upstream();
         cards.push(self.range.card());
@@ -108,10 +116,6 @@ impl Sensitivity {
 
     fn notes(&self) -> Vec<String> {
         let mut notes = Vec::new();
-        let lost = self.lost();
-        if !lost.is_empty() && !self.range.is_empty() {
-            notes.push(format!("WARNING: with {} changed by its amount no range is left.", lost.join(", or with ")));
-        }
         let stress: Vec<&str> = self.vary.iter().filter_map(|vary| vary.on_stress()).collect();
         if !stress.is_empty() {
             notes.push(format!(

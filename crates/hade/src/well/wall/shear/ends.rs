@@ -7,11 +7,12 @@
 //! - pushed out: the first with the roles of the stress across the wall and of those in it changed.
 
 use super::closed_form::ClosedForm;
+use super::everywhere::everywhere;
 use super::root::Root;
 use super::shear_wall::Window;
 use crate::rock::{Jet, MohrCoulomb};
 use crate::well::wall::elastic::Kirsch;
-use crate::well::wall::round::{CIRCLE, OnCircle, Peak, SAME, Wave, greatest, smallest};
+use crate::well::wall::round::{OnCircle, Peak, SAME, Wave, greatest, smallest};
 
 impl ClosedForm {
     /// The pressures between which the whole wall holds.
@@ -20,7 +21,7 @@ impl ClosedForm {
             return Window::Open { lower: Some(lower), upper: Some(upper) };
         }
         // The two have a meaning by themselves only where no place is beyond help.
-        let each = || CIRCLE.cos.iter().zip(&CIRCLE.sin).all(|(c, s)| self.interval_at(*c, *s).is_some());
+        let each = || everywhere(|c, s| self.interval_at(c, s)).is_some();
         let crossed = (self.holds_somewhere() && each())
             .then(|| (greatest(&self.lower_end(), self.scale).value, smallest(self.upper_end(), self.scale).value));
         Window::Closed { crossed }

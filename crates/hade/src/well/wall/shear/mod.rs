@@ -4,6 +4,7 @@
 mod arcs;
 mod closed_form;
 mod ends;
+mod everywhere;
 mod excess;
 mod mode;
 mod root;

@@ -6,6 +6,7 @@
 //! (`ends.rs`); the other criteria, and other walls, are searched (`search.rs`).
 
 use super::closed_form::ClosedForm;
+use super::everywhere::everywhere;
 use super::excess::Excess;
 use super::search::{Look, LowerEnd, Search, lower_end, rise};
 use super::slip::PlaneAtWall;
@@ -235,10 +236,7 @@ impl ShearWall {
     /// Where no pressure is safe for the whole wall but some is for each place: the largest of their
     /// lower ends and the smallest of their upper ones, looked for round the hole.
     fn crossed(&self) -> Option<(f64, f64)> {
-        let mut ends = Vec::with_capacity(CIRCLE.cos.len());
-        for (c, s) in CIRCLE.cos.iter().zip(&CIRCLE.sin) {
-            ends.push(self.interval_at(*c, *s)?);
-        }
+        let ends = everywhere(|c, s| self.interval_at(c, s))?;
         let step = std::f64::consts::TAU / ends.len() as f64;
         let closer = |of: &dyn Fn((f64, f64)) -> f64| {
             let (mut best, mut at) = (f64::NEG_INFINITY, 0);

@@ -237,7 +237,7 @@ fn what_no_wall_has_is_refused_by_name() {
     }
     assert_eq!(
         text(wall.thermal(Thermal { expansion: (-1e-5).per_kelvin(), ..thermal })),
-        "thermal expansion α_T is -10 10⁻⁶/K, but it must be zero or more."
+        "thermal expansion α_T is -10 × 10⁻⁶/K, but it must be zero or more."
     );
     assert!(wall.thermal(Thermal { expansion: f64::NAN.per_kelvin(), ..thermal }).is_err());
     assert_eq!(

@@ -97,8 +97,8 @@ fn trap_1_the_upper_shear_limit_can_set_the_top() {
     passes(&range);
     // Raised above the upper shear limit it warns; S3 and initiation are both above it.
     let card = passes(&range.raised_to(47.9.mpa(), "the upper shear limit has not been seen to act here").unwrap());
-    let notes = card.explanation.notes.join("\n");
-    assert!(notes.contains("WARNING: the raised top is 0.57 MPa above the upper shear limit"), "{notes}");
+    let notes = card.warnings.join("\n");
+    assert!(notes.contains("The raised top is 0.57 MPa above the upper shear limit"), "{notes}");
     let s = range.sensitivity(&[Vary::ucs(0.3.mpa())]).unwrap();
     near(s.ranked()[0].1.more.top.unwrap().pressure, 64.0 - 49.7 / 3.0 - 1.0);
 }
@@ -136,8 +136,8 @@ fn the_top_is_raised_only_with_a_reason_and_never_to_where_the_wall_parts_and_th
 
     // Above S3 and below initiation it warns; above both it is refused.
     let card = passes(&range.raised_to(44.mpa(), "no natural fractures on the image log").unwrap());
-    let notes = card.explanation.notes.join("\n");
-    assert!(notes.contains("WARNING: the raised top is 4.00 MPa above the least stress S_3, 40.00 MPa"), "{notes}");
+    let notes = card.warnings.join("\n");
+    assert!(notes.contains("The raised top is 4.00 MPa above the least stress S_3, 40.00 MPa"), "{notes}");
     let said = |top: Pressure, reason: &str| range.raised_to(top, reason).unwrap_err().to_string();
     assert!(said(48.mpa(), "x").contains("above both initiation 47.00 MPa and the least stress 40.00 MPa"));
     assert!(said(40.mpa(), "  ").contains("without a reason"));
@@ -198,15 +198,16 @@ fn what_a_plan_does_not_state_is_said_and_warned_of() {
     assert_eq!(held.not_stated(), [MudState::Swabbed, MudState::Circulating, MudState::Surged]);
     let card = passes(&held);
     assert!(card.explanation.headline.ends_with("swab, circulating density, surge not stated"));
-    let warned = card.explanation.notes.iter().filter(|n| n.starts_with("WARNING") && n.contains("is not stated"));
-    assert_eq!(warned.count(), 3);
+    let warned = card.warnings.iter().filter(|said| said.contains("is not stated"));
+    assert_eq!((warned.count(), card.warnings.len()), (3, 3));
     // A static mud above the top is outside even where nothing else is stated.
     assert!(!range.hold(MudPlan { static_density: 1.5.sg(), ..bare }).unwrap().is_inside());
     // At rest below the bottom arcs fail, and the card says how wide against what is allowed.
     let thin = range.hold(MudPlan { static_density: 1.0.sg(), ..bare }).unwrap();
-    let notes = passes(&thin).explanation.notes.join("\n");
+    let thin = passes(&thin);
+    let (notes, warnings) = (thin.explanation.notes.join("\n"), thin.warnings.join("\n"));
     assert!(notes.contains("WIDER than the allowed 0°"), "{notes}");
-    assert!(notes.contains("WARNING: Static (28.93 MPa): OUTSIDE: 3.66 MPa below the bottom"), "{notes}");
+    assert!(warnings.contains("Static (28.93 MPa): OUTSIDE: 3.66 MPa below the bottom"), "{warnings}");
     // A mud weight read off the end is at the end.
     let at = range.hold(MudPlan { static_density: range.bottom.unwrap().mud_weight, ..bare }).unwrap();
     assert!(at.is_inside() && passes(&at).explanation.notes[0].contains("at the bottom"));

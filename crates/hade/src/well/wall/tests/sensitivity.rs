@@ -166,7 +166,7 @@ fn a_change_that_leaves_no_range_is_a_value_and_comes_first() {
     let s = range.sensitivity(&[Vary::sh_min(1.mpa()), Vary::sh_max(12.mpa()), Vary::cohesion(7.mpa())]).unwrap();
     let card = passes(&s);
     assert!(card.explanation.headline.contains("can leave no range"), "{}", card.explanation.headline);
-    assert!(card.explanation.notes.iter().any(|n| n.starts_with("WARNING: with")));
+    assert!(card.warnings.iter().any(|said| said.starts_with("With")));
 }
 
 #[test]
