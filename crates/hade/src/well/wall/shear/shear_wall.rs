@@ -12,7 +12,7 @@ use super::search::{Look, LowerEnd, Search, lower_end, rise};
 use super::slip::PlaneAtWall;
 use crate::rock::{Criterion, Law, with_law};
 use crate::well::wall::elastic::{AtWall, EffectiveWall, Kirsch};
-use crate::well::wall::round::{CIRCLE, OnCircle, Peak, STEP, Top, greatest, greatest_beside, on_circle};
+use crate::well::wall::round::{OnCircle, Peak, STEP, Top, greatest, greatest_beside, on_circle};
 
 /// A wall with its strength and pore pressure, in Pa.
 #[derive(Clone, Copy, Debug, PartialEq)]
