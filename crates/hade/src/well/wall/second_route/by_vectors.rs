@@ -174,7 +174,8 @@ impl ByVectors {
 
     /// The worst excess of one side round the hole: side −1 what too little pressure does (a little
     /// more makes it better), +1 what too much does. Where a place fails on the other side it counts
-    /// as holding on this one.
+    /// as holding on this one. What holds counts as holding by a little, so that an edge of the other side does not
+    /// count as one of this.
     pub fn worst_of_side(&self, pressure: f64, side: f64) -> f64 {
         self.greatest(|theta| self.excess_of_side(theta, pressure, side)).0
     }
@@ -182,7 +183,11 @@ impl ByVectors {
     fn excess_of_side(&self, theta: f64, pressure: f64, side: f64) -> f64 {
         let nudge = 1e-6 * self.size();
         let (here, more) = (self.excess(theta, pressure), self.excess(theta, pressure + nudge));
-        if here <= 0.0 || (more - here) * side > 0.0 { here } else { -here }
+        match here > 0.0 {
+            true if (more - here) * side > 0.0 => here,
+            true => -here,
+            false => here.min(-1e-10 * self.size()),
+        }
     }
 
     /// The least effective principal stress round the hole.
