@@ -392,7 +392,7 @@ mod tests {
         assert_eq!(before("at(").as_deref(), Some("s"));
         assert_eq!(before("let c"), None);
         let texts: Vec<String> = statements(code).into_iter().map(|(at, text)| format!("{at} {text}")).collect();
-        assert_eq!(texts, ["7 let b: &f64 = &a.x;", "28 let c = f(s.at(d)?.stress()?.zzz, e);"]);
+        assert_eq!(texts, ["7 let b: &f64 = &a.x;", "27 let c = f(s.at(d)?.stress()?.zzz, e);"]);
     }
 
     #[test]
