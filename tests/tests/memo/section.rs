@@ -44,10 +44,10 @@ fn a_depleted_sand_leaves_no_common_mud_weight() {
     let top = (in_sand - 1.0) * 1e6 / (9.80665 * 2640.0);
     assert!((result("limit-log", "lowest top") - top).abs() < 0.01, "{top}");
     assert!(result("limit-log", "highest bottom") > top);
-    // P10 of the bottom lies below P90, and the planned direction between the best and the worst.
+    // P10 of the bottom lies below P90, and the end of the path between the best and the worst.
     assert!(result("wall-ensemble", "P10 of the bottom") < result("wall-ensemble", "P90 of the bottom"));
-    let planned = result("direction-map", "in the planned direction");
-    assert!(result("direction-map", "best") < planned && planned < result("direction-map", "worst"));
+    let end = result("direction-map", "in the direction of the end of the path");
+    assert!(result("direction-map", "best") < end && end < result("direction-map", "worst"));
     // One mud weight keeps the section in fewer draws when the layers move by themselves.
     assert!(
         result("section-ensemble", "share of draws in which it does, each")

@@ -90,7 +90,7 @@ fn an_undeclared_datum_is_refused() {
     let table = "# depth_unit: m\n# pressure_unit: MPa\ntvd,pore pressure\n1200,12\n2400,25.5\n";
     std::fs::write(&file, table).unwrap();
     let e = PressureProfile::read_csv(&file, "pore pressure").unwrap_err().to_string();
-    assert!(e.contains("line 3") && e.contains("# datum: …") && e.contains("mudline"), "{e}");
+    assert!(e.contains("line 3") && e.contains("# datum: ") && e.contains("mudline"), "{e}");
     std::fs::write(&file, format!("# datum: mudline\n{table}")).unwrap();
     let read = PressureProfile::read_csv(&file, "pore pressure").unwrap();
     std::fs::remove_file(&file).unwrap();
