@@ -22,24 +22,8 @@ fn near(wanted: &str) -> usize {
 fn distance(wanted: &str, name: &str) -> usize {
     let (wanted, name) = (wanted.to_lowercase(), name.to_lowercase());
     let begins = wanted.len().min(name.len()) > 2 && (wanted.starts_with(&name) || name.starts_with(&wanted));
-    let steps = steps(&wanted, &name);
+    let steps = strsim::levenshtein(&wanted, &name);
     if begins { steps.min(near(&wanted)) } else { steps }
-}
-
-/// How many letters are to be put in, left out or exchanged to make one name of the other.
-fn steps(one: &str, other: &str) -> usize {
-    let other: Vec<char> = other.chars().collect();
-    let mut row: Vec<usize> = (0..=other.len()).collect();
-    for (i, a) in one.chars().enumerate() {
-        let mut above = i;
-        row[0] = i + 1;
-        for (j, b) in other.iter().enumerate() {
-            let kept = above + usize::from(a != *b);
-            above = row[j + 1];
-            row[j + 1] = kept.min(above + 1).min(row[j] + 1);
-        }
-    }
-    row[other.len()]
 }
 
 #[cfg(test)]
@@ -55,10 +39,7 @@ mod tests {
     }
 
     #[test]
-    fn letters_are_counted() {
-        for (one, other, wanted) in [("bars", "bar", 1), ("sorce", "source", 1), ("pore", "prop", 3), ("", "abc", 3)] {
-            assert_eq!([steps(one, other), steps(other, one)], [wanted; 2], "{one}, {other}");
-        }
-        assert!(is_near("Sorce", "Source") && !is_near("at", "pore"));
+    fn some_letters_may_differ() {
+        assert!(is_near("Sorce", "Source") && is_near("bars", "bar") && !is_near("at", "pore"));
     }
 }

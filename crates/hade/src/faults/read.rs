@@ -15,7 +15,7 @@ const EXPECTED: Expected = Expected {
     always: &[(&["north"], "# north: true | grid | magnetic"), (&["angle_unit"], "# angle_unit: deg")],
     file: "a table of planes with columns name, strike, dip",
     names: "name, strike (or dip_direction), dip",
-    besides: &["friction", "cohesion"],
+    besides: &[&["friction", "cohesion"]],
     units_in_names: false,
     rows: ["plane", "planes"],
     most: MOST_PLANES,

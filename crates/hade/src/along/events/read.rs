@@ -18,7 +18,7 @@ const EXPECTED: Expected = Expected {
     ],
     file: "a table of events with the columns md, kind, mud_weight",
     names: "md, kind, mud_weight, ecd",
-    besides: &["ecd"],
+    besides: &[&["ecd"]],
     units_in_names: false,
     rows: ["event", "events"],
     most: MOST,

@@ -17,7 +17,7 @@ const EXPECTED: Expected = Expected {
     always: &[(&["datum", "depth_datum"], "# datum: rotary table"), (&["depth_unit"], "# depth_unit: m")],
     file: "a table of sections with the columns section, from, to",
     names: "section, from, to, mud_weight, ecd, swab, surge",
-    besides: &["mud_weight", "ecd", "swab", "surge"],
+    besides: &[&["mud_weight", "ecd", "swab", "surge"]],
     units_in_names: false,
     rows: ["section", "sections"],
     most: MOST_SECTIONS,

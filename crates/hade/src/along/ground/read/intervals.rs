@@ -3,7 +3,7 @@
 use std::io::Read;
 use std::path::Path;
 
-use super::rock_columns::{ROCK_KEYS, RockColumns};
+use super::rock_columns::{ROCK_DECLARES, ROCK_KEYS, ROCK_MAY_HAVE, RockColumns};
 use crate::along::ground::ground::MOST;
 use crate::along::ground::layer::{Layer, LayerTop};
 use crate::along::ground::layer_intervals::LayerIntervals;
@@ -15,27 +15,10 @@ use crate::units::Length;
 
 const EXPECTED: Expected = Expected {
     keys: &[&["hole", "datum", "depth_datum", "depth_unit"], &ROCK_KEYS, &NORTH_KEYS],
-    always: &[
-        (&["datum", "depth_datum"], "# datum: rotary table"),
-        (&["depth_unit"], "# depth_unit: m"),
-        (&["pressure_unit"], "# pressure_unit: MPa"),
-        (&["angle_unit"], "# angle_unit: deg"),
-    ],
+    always: &ROCK_DECLARES,
     file: "a table of intervals with the columns from, to, layer, poisson, tensile_strength, ucs or cohesion, friction_angle",
     names: "from, to, layer, poisson, tensile_strength, ucs or cohesion, friction_angle",
-    besides: &[
-        "k_min",
-        "k_max",
-        "sh_max_azimuth",
-        "drawdown",
-        "path_min",
-        "path_max",
-        "wall",
-        "biot",
-        "sealing",
-        "youngs_modulus",
-        "thermal_expansion",
-    ],
+    besides: &[&ROCK_MAY_HAVE],
     units_in_names: false,
     rows: ["interval", "intervals"],
     most: MOST,

@@ -14,6 +14,29 @@ use crate::units::{Angle, Expansion, Pressure};
 /// The keys that these columns need, beside those of a north.
 pub(super) const ROCK_KEYS: [&str; 4] = ["pressure_unit", "angle_unit", "modulus_unit", "expansion_unit"];
 
+/// What every such file declares.
+pub(super) const ROCK_DECLARES: [(&[&str], &str); 4] = [
+    (&["datum", "depth_datum"], "# datum: rotary table"),
+    (&["depth_unit"], "# depth_unit: m"),
+    (&["pressure_unit"], "# pressure_unit: MPa"),
+    (&["angle_unit"], "# angle_unit: deg"),
+];
+
+/// The columns that may be left out.
+pub(super) const ROCK_MAY_HAVE: [&str; 11] = [
+    "k_min",
+    "k_max",
+    "sh_max_azimuth",
+    "drawdown",
+    "path_min",
+    "path_max",
+    "wall",
+    "biot",
+    "sealing",
+    "youngs_modulus",
+    "thermal_expansion",
+];
+
 const MODULI: Units<Pressure> = Units {
     key: "modulus_unit",
     what: "the unit of Young's moduli",

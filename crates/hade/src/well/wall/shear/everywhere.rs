@@ -2,7 +2,7 @@
 
 use std::f64::consts::TAU;
 
-use crate::well::wall::round::CIRCLE;
+use crate::well::wall::round::{CIRCLE, highest_between};
 
 /// Lower and upper end of the safe pressures at each look round the hole; `None` when a place has none, one between the
 /// looks too: there the interval of the narrowest look is followed to where it is narrowest.
@@ -15,17 +15,9 @@ pub(super) fn everywhere(interval_at: impl Fn(f64, f64) -> Option<(f64, f64)>) -
         let (s, c) = phi.sin_cos();
         interval_at(c, s).map_or(f64::NEG_INFINITY, |(lower, upper)| upper - lower)
     };
-    let (mut low, mut high) = ((narrowest.0 as f64 - 1.0) * step, (narrowest.0 as f64 + 1.0) * step);
-    let ratio = 0.5 * (5.0_f64.sqrt() - 1.0);
-    for _ in 0..40 {
-        let (a, b) = (high - ratio * (high - low), low + ratio * (high - low));
-        let (at_a, at_b) = (breadth(a), breadth(b));
-        if at_a.min(at_b) < 0.0 {
-            return None;
-        }
-        if at_a < at_b { high = b } else { low = a }
-    }
-    Some(looks)
+    let place = |away: f64| (narrowest.0 as f64 + away) * step;
+    let (_, overlap) = highest_between(|phi| -breadth(phi), place(-1.0), place(1.0));
+    (overlap <= 0.0).then_some(looks)
 }
 
 #[cfg(test)]
