@@ -40,7 +40,7 @@ impl Explain for Hindcast {
         inputs.push(Item::typed("", "tolerance of the hindcast", self.within).chosen());
         Explanation {
             title: format!("Drilling events of {} held against the limits", self.log.hole()),
-            headline: format!("{hits} of {} events are told by the limits, {misses} are not", hits + misses),
+            headline: format!("{hits} of {} events are told by the limits, {misses} not", hits + misses),
             inputs,
             results: self.rows.iter().filter_map(beyond_item).collect(),
             method: method(),
