@@ -158,7 +158,6 @@ fn room(frame: &Frame, drawings: &[Drawing], bands: &[Band<'_>]) -> Room {
         room.drawn.extend(places.into_iter().map(|p| (owner, p)));
     }
     let edges = frame.zero_lines().into_iter().chain(bands.iter().flat_map(Band::edges));
-    room.hatched = bands.iter().filter(|band| band.is_hatched()).map(|band| band.area).collect();
     room.edges = edges.flat_map(|line| walk(&line, 6.0)).collect();
     room
 }

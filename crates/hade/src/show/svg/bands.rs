@@ -57,11 +57,6 @@ impl Band<'_> {
         canvas.lines(&edges, &Pen { width: 1.2, dash: &[], ..pen });
     }
 
-    /// Whether lines are drawn all over it, among which words are hard to read.
-    pub fn is_hatched(&self) -> bool {
-        !matches!(Palette::hatch(self.role), Hatch::Plain)
-    }
-
     /// Its two long sides.
     pub fn edges(&self) -> Vec<Vec<Px>> {
         let area = self.area;

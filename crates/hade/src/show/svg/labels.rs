@@ -48,8 +48,6 @@ pub(super) struct Room {
     pub drawn: Vec<(usize, Px)>,
     /// Places along the axes through zero and the edges of bands.
     pub edges: Vec<Px>,
-    /// Bands that are hatched.
-    pub hatched: Vec<Rect>,
     /// The labels that have their place.
     pub taken: Vec<Rect>,
 }
@@ -138,13 +136,12 @@ impl Room {
         let crossed = if crossings > 0 { 60.0 + 6.0 * f64::from(crossings) } else { 0.0 };
         let edges = self.edges.iter().filter(|p| near.holds(**p)).count() as f64;
         let edged = if edges > 0.0 { 15.0 + 1.5 * edges } else { 0.0 };
-        let hatched = if self.hatched.iter().any(|band| band.meets(&near)) { 12.0 } else { 0.0 };
         let doubtful = match foreign - own {
             _ if tied => (8.0 - foreign).max(0.0),
             lead if lead < 0.0 => 40.0,
             lead => (12.0 - lead).max(0.0),
         };
-        400.0 * others + crossed + edged + hatched + doubtful
+        400.0 * others + crossed + edged + doubtful
     }
 }
 
